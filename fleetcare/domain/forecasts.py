@@ -1,0 +1,29 @@
+"""When a counted figure will be reached, and what that rests on."""
+
+from dataclasses import dataclass
+from datetime import date
+
+
+@dataclass(frozen=True, slots=True)
+class Clue:
+    """One way the engine's own past answers: `label` says which past, `days` how long the amount took, `weight` 0..1."""
+
+    label: str
+    days: float
+    weight: float
+
+
+@dataclass(frozen=True, slots=True)
+class Forecast:
+    """The days between which a figure is reached four times in five, and the likely day.
+
+    `late` None with a likely day means open: no honest last day. Without a likely day `reason` says why
+    there is none; with one it is None.
+    """
+
+    early: date | None
+    likely: date | None
+    late: date | None
+    readings_used: int
+    reason: str | None = None
+    clues: tuple[Clue, ...] = ()

@@ -1,0 +1,1 @@
+"""Pure rules: facts and a day in, lines and dates out. No database, no screen, no clock."""
