@@ -6,10 +6,14 @@ from datetime import date
 
 @dataclass(frozen=True, slots=True)
 class Clue:
-    """One way the engine's own past answers: `label` says which past, `days` how long the amount took, `weight` 0..1."""
+    """One way the engine's own past answers, and how far it is trusted.
+
+    `label` says which past, `days` how long the amount took or would take there (one figure a year for
+    "same date in 2021, 2022"), `weight` 0..1. A clue without days only says what is not known.
+    """
 
     label: str
-    days: float
+    days: tuple[float, ...]
     weight: float
 
 
