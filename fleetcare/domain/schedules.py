@@ -74,7 +74,7 @@ Trigger = CountedTrigger | CalendarTrigger
 class TaskVersion:
     """A task as it stands from `from_on` on; the first version holds on every earlier day too.
 
-    `anchor` None means `from done`. `covers` are ids of tasks of the same item. `ended` marks a removed task.
+    `anchor` None means `from done`. `covers` are ids of tasks of the same item.
     """
 
     from_on: date
@@ -95,7 +95,6 @@ class TaskVersion:
     parts: tuple[tuple[str, Decimal], ...] = ()
     caution: str = ""
     source: str = ""
-    ended: bool = False
 
     @property
     def effective_anchor(self) -> Anchor:
@@ -162,6 +161,7 @@ class Task:
     id: int
     name: str
     versions: tuple[TaskVersion, ...]
+    removed_on: date | None = None
     origin: Origin | None = None
     calls: tuple[Call, ...] = ()
     deferrals: tuple[Deferral, ...] = ()

@@ -1,0 +1,1 @@
+"""What each engine needs next: triggers, replay, combining, covering, deferral, states."""

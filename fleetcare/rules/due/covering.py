@@ -1,0 +1,82 @@
+"""Covering: the big job that does a small one along with it."""
+
+from collections.abc import Mapping, Sequence
+from dataclasses import replace
+from datetime import date
+from decimal import Decimal
+
+from fleetcare.domain.lines import DueLine, State, TriggerLine
+
+
+def closure(covers: Mapping[int, Sequence[int]], task_id: int) -> tuple[int, ...]:
+    """Give every task a task covers, directly or through another, in the order met."""
+    found: list[int] = []
+    waiting = list(covers.get(task_id, ()))
+    while waiting:
+        covered = waiting.pop(0)
+        if covered != task_id and covered not in found:
+            found.append(covered)
+            waiting.extend(covers.get(covered, ()))
+    return tuple(found)
+
+
+def find_cycle(covers: Mapping[int, Sequence[int]], task_id: int) -> tuple[int, ...]:
+    """Give the way from a task back to itself through covering, empty where there is none."""
+    waiting: list[tuple[int, ...]] = [(task_id,)]
+    seen: set[int] = set()
+    while waiting:
+        path = waiting.pop()
+        for covered in covers.get(path[-1], ()):
+            if covered == task_id:
+                return (*path, task_id)
+            if covered not in seen:
+                seen.add(covered)
+                waiting.append((*path, covered))
+    return ()
+
+
+def with_covering(lines: Sequence[DueLine]) -> list[DueLine]:
+    """Mark each line of one item that another line will do along with it, no later than it is due."""
+    covers = {line.task.id: line.version.covers for line in lines}
+    by_task = {line.task.id: line for line in lines}
+    coverers: dict[int, list[DueLine]] = {}
+    for big in lines:
+        for covered in closure(covers, big.task.id):
+            if covered in by_task:
+                coverers.setdefault(covered, []).append(big)
+    return [replace(line, covered_by=_covered_by(line, coverers.get(line.task.id, []))) for line in lines]
+
+
+def _covered_by(line: DueLine, coverers: Sequence[DueLine]) -> str:
+    if line.state in {State.OVERDUE, State.UNSET} or line.version.needs_sheet or line.deciding is None:
+        return ""
+    able = [big for big in coverers if _comes_in_time(big, line, line.deciding)]
+    best = min(able, key=lambda big: (big.likely_on or date.max, big.task.name), default=None)
+    return best.task.name if best is not None else ""
+
+
+def _comes_in_time(big: DueLine, line: DueLine, decider: TriggerLine) -> bool:
+    """Tell whether the big job is due no later than the small one.
+
+    Compared in the kind that decides the small one, else by likely dates, else not at all.
+    """
+    window = next((t.next for t in line.triggers if t.next is not None and t.next.opens is not None), None)
+    if window is not None and window.opens is not None and (big.likely_on is None or big.likely_on < window.opens):
+        return False
+    same_kind = next((t for t in big.triggers if t.kind is decider.kind and t.point is not None), None)
+    if same_kind is not None:
+        return _gap(same_kind, decider) <= _grace(decider)
+    return big.likely_on is not None and line.likely_on is not None and big.likely_on <= line.likely_on
+
+
+def _gap(big: TriggerLine, small: TriggerLine) -> Decimal:
+    """By how much the big job's point lies after the small one's; both of one kind."""
+    if isinstance(big.point, date) and isinstance(small.point, date):
+        return Decimal((big.point - small.point).days)
+    assert isinstance(big.point, Decimal)
+    assert isinstance(small.point, Decimal)
+    return big.point - small.point
+
+
+def _grace(line: TriggerLine) -> Decimal:
+    return Decimal(0) if line.deferred or line.next is None else line.next.grace

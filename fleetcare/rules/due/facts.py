@@ -1,0 +1,28 @@
+"""What the due rules are given: everything about one item, loaded once."""
+
+from dataclasses import dataclass, field
+from datetime import date
+from decimal import Decimal
+
+from fleetcare.domain.engines import Item
+from fleetcare.domain.log import Done
+from fleetcare.domain.quantities import Kind
+from fleetcare.domain.schedules import Task
+from fleetcare.rules.meters import CounterHistory
+
+
+@dataclass(frozen=True, slots=True)
+class ItemFacts:
+    """One item with its tasks, work done per task id (current entries only), and counters, seen up to a day.
+
+    `start_life` are the life totals at the start point, `stale_days` the setting that replaces
+    the engine's own reading rhythm, None for the rhythm.
+    """
+
+    item: Item
+    tasks: tuple[Task, ...]
+    done: dict[int, tuple[Done, ...]]
+    counters: dict[Kind, CounterHistory]
+    start_life: dict[Kind, Decimal] = field(default_factory=dict)
+    stale_days: int | None = None
+    on: date = date.min

@@ -1,0 +1,76 @@
+"""How the use of an item goes on: its latest figure per kind, how stale it is, and what it likely shows."""
+
+from dataclasses import dataclass
+from datetime import date
+from decimal import Decimal
+from statistics import median
+
+from fleetcare.domain.engines import Status, status_on
+from fleetcare.domain.forecasts import Forecast
+from fleetcare.domain.quantities import Kind
+from fleetcare.rules.due.facts import ItemFacts
+from fleetcare.rules.forecast import History
+from fleetcare.rules.meters import CounterHistory
+
+STALE_DAYS_UNTIL_A_RHYTHM_IS_KNOWN = 60
+_GAPS_FOR_A_RHYTHM = 3
+_GAPS_LOOKED_AT = 10
+
+LAID_UP = Forecast(None, None, None, 0, "laid up: what is run counts, what will be run is not known")
+
+
+@dataclass(frozen=True, slots=True)
+class Outlook:
+    """One counter's latest life total, its day, and the forecast of it.
+
+    `likely_now` is the figure expected on the day asked about, only where the latest reading is
+    stale or that day lies in the future; None otherwise, or without a forecast.
+    """
+
+    now: Decimal | None
+    read_on: date | None
+    is_stale: bool
+    likely_now: Decimal | None
+    history: History | None
+
+    def reach(self, target: Decimal) -> Forecast:
+        """Forecast the days on which a life total is reached."""
+        return LAID_UP if self.history is None else self.history.reach(target)
+
+
+def outlooks(facts: ItemFacts, is_future: bool) -> dict[Kind, Outlook]:
+    """Give the outlook of each counter of an item on the day of its facts."""
+    laid_up = status_on(facts.item.spells, facts.on) is Status.LAID_UP
+    return {
+        kind: _outlook(counter, facts.on, facts.stale_days, is_future, laid_up)
+        for kind, counter in facts.counters.items()
+    }
+
+
+def stale_after(days_read: list[date], stale_days: int | None) -> float:
+    """Give the age in days past which a latest reading is stale.
+
+    A set number of days; else twice the median gap of the last ten; 60 days under three gaps.
+    """
+    if stale_days is not None:
+        return stale_days
+    days = sorted(set(days_read))
+    gaps = [(later - earlier).days for earlier, later in zip(days, days[1:], strict=False)][-_GAPS_LOOKED_AT:]
+    if len(gaps) < _GAPS_FOR_A_RHYTHM:
+        return STALE_DAYS_UNTIL_A_RHYTHM_IS_KNOWN
+    return 2 * median(gaps)
+
+
+def _outlook(
+    counter: CounterHistory, on: date, stale_days: int | None, is_future: bool, laid_up: bool
+) -> Outlook:
+    latest = counter.latest
+    if latest is None:
+        return Outlook(None, None, False, None, History(()))
+    is_stale = (on - latest.on).days > stale_after([r.on for r in counter.readings], stale_days)
+    if laid_up:
+        return Outlook(latest.life, latest.on, is_stale, None, None)
+    history = History([(r.on, r.life) for r in counter.readings])
+    likely = history.likely_value(on) if is_stale or is_future else None
+    likely_now = Decimal(str(round(likely, 3))) if likely is not None else None
+    return Outlook(latest.life, latest.on, is_stale, likely_now, history)

@@ -1,0 +1,108 @@
+"""Facts with sane defaults: each test overrides the one thing it is about."""
+
+from collections.abc import Mapping, Sequence
+from dataclasses import replace
+from datetime import date, timedelta
+from decimal import Decimal
+
+from fleetcare.domain.engines import Item
+from fleetcare.domain.lines import DueLine
+from fleetcare.domain.log import Done
+from fleetcare.domain.meters import Counter, LifeFigure, Meter, MeterFit, Reading
+from fleetcare.domain.quantities import BASE_UNIT, Kind, Span, parse_interval
+from fleetcare.domain.schedules import CalendarTrigger, CountedTrigger, Origin, Task, TaskVersion, Trigger
+from fleetcare.rules.due.due_list import item_lines
+from fleetcare.rules.due.facts import ItemFacts
+from fleetcare.rules.meters import CounterHistory, counter_history
+
+START = date(2024, 1, 10)
+
+
+def day(text: str) -> date:
+    """Read an ISO day."""
+    return date.fromisoformat(text)
+
+
+def an_item(**changes: object) -> Item:
+    """An engine P-01, new on 2024-01-10."""
+    item = Item(id=1, tag="P-01", is_engine=True, site="North Sluice", in_service_on=START, as_new=True)
+    return replace(item, **changes)  # type: ignore[arg-type]
+
+
+def every(text: str, **changes: object) -> Trigger:
+    """A trigger from an interval as typed: every("250h"), every("12mo", grace=5)."""
+    interval = parse_interval(text)
+    if isinstance(interval, Span):
+        return CalendarTrigger(interval, **changes)  # type: ignore[arg-type]
+    figures = {name: Decimal(str(value)) for name, value in changes.items()}
+    return CountedTrigger(interval.kind, interval.base, **figures)
+
+
+def a_version(*triggers: Trigger, **changes: object) -> TaskVersion:
+    """A version in force from the start."""
+    return TaskVersion(from_on=START, triggers=triggers, **changes)  # type: ignore[arg-type]
+
+
+def a_task(*triggers: Trigger, id: int = 1, name: str = "Oil and filter", **changes: object) -> Task:
+    """A task of one version, without an origin; `origin`, `calls`, `deferrals` go to the task, the rest to its version."""
+    own = {key: changes.pop(key) for key in ("origin", "calls", "deferrals", "removed_on") if key in changes}
+    return Task(id=id, name=name, versions=(a_version(*triggers, **changes),), **own)  # type: ignore[arg-type]
+
+
+def new_at(life: float | str = 0, on: date = START, kind: Kind = Kind.HOURS) -> Origin:
+    """The origin of an item counted as new."""
+    return Origin(as_new=True, on=on, life={kind: Decimal(str(life))})
+
+
+def last_done(on: str | None = None, **life: float | str) -> Origin:
+    """Work done before the log began: last_done("2026-01-10", hours=900)."""
+    figures = {Kind(kind): Decimal(str(value)) for kind, value in life.items()}
+    return Origin(as_new=False, on=day(on) if on else None, life=figures)
+
+
+def done(on: str, entry: int = 1, **life: float | str) -> Done:
+    """One entry: done("2026-04-20", hours=1234)."""
+    figures = {Kind(kind): LifeFigure(Decimal(str(value))) for kind, value in life.items()}
+    return Done(entry_id=entry, number=entry, on=day(on), life=figures)
+
+
+def a_counter(*readings: tuple[str, float | str], kind: Kind = Kind.HOURS, on: date = date.max) -> CounterHistory:
+    """One meter read on some days: a_counter(("2026-05-01", 1250))."""
+    meter = Meter(1, kind, BASE_UNIT[kind])
+    rows = tuple(Reading(n, 1, day(when), Decimal(str(value))) for n, (when, value) in enumerate(readings, 1))
+    return counter_history(Counter(kind, Decimal(0), (MeterFit(meter, None, Decimal(0)),), rows), on)
+
+
+def facts(
+    *tasks: Task,
+    on: str,
+    done: Mapping[int, Sequence[Done]] | Sequence[Done] = (),
+    hours: float | str | Sequence[tuple[str, float | str]] | None = None,
+    item: Item | None = None,
+    **changes: object,
+) -> ItemFacts:
+    """An item's facts: `hours` is today's figure or dated readings; `done` the entries of task 1 or of each task id."""
+    counters = {}
+    if hours is not None:
+        readings = [(on, hours)] if isinstance(hours, int | float | str) else hours
+        counters[Kind.HOURS] = a_counter(*readings, on=day(on))
+    entries = done if isinstance(done, Mapping) else {1: done}
+    return ItemFacts(
+        item=item or an_item(),
+        tasks=tasks,
+        done={task: tuple(rows) for task, rows in entries.items()},
+        counters=counters,
+        on=day(on),
+        **changes,  # type: ignore[arg-type]
+    )
+
+
+def line(*tasks: Task, **kwargs: object) -> DueLine:
+    """The line of the first task given; arguments as for `facts`."""
+    found = {one.task.id: one for one in item_lines(facts(*tasks, **kwargs))}  # type: ignore[arg-type]
+    return found[tasks[0].id]
+
+
+def days_from(on: str, days: int) -> str:
+    """The ISO day some days later."""
+    return (day(on) + timedelta(days=days)).isoformat()
