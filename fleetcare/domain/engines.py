@@ -8,6 +8,15 @@ from enum import StrEnum
 from fleetcare.domain.quantities import Kind
 
 
+class Layout(StrEnum):
+    """How the cylinders stand."""
+
+    INLINE = "inline"
+    V = "v"
+    OPPOSED = "opposed"
+    SINGLE = "single"
+
+
 class Status(StrEnum):
     """What may be asked of an engine on a day."""
 

@@ -1,0 +1,33 @@
+"""Where the program starts, and where whatever went wrong becomes one line and an exit status."""
+
+import sys
+from collections.abc import Sequence
+
+INTERRUPTED = 130
+
+
+def main(arguments: Sequence[str] | None = None) -> int:
+    """Run a command line (the process's own by default) and give its exit status; never a traceback."""
+    from fleetcare.cli import main as command_line
+    from fleetcare.cli import output
+
+    try:
+        status = command_line.run(sys.argv[1:] if arguments is None else arguments)
+        output.finish()
+    except KeyboardInterrupt:
+        return INTERRUPTED
+    except BrokenPipeError:
+        output.abandon()
+        return 0  # the reader has seen enough; what the command had to do is done
+    except OSError as error:
+        output.abandon()
+        output.complain(f"{error}; check the path, its permissions and the space left")
+        return 1
+    except Exception as error:
+        output.complain(f"a fault in fleetcare itself ({type(error).__name__}: {error}); please report this line")
+        return 1
+    return status
+
+
+if __name__ == "__main__":
+    sys.exit(main())

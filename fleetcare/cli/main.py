@@ -1,0 +1,41 @@
+"""The command line as a tree of commands; each group stands in a file of its own and loads what it needs when run."""
+
+from collections.abc import Callable, Sequence
+
+from fleetcare import __version__
+from fleetcare.cli import calc, output
+from fleetcare.cli.parser import CommandParser, Commands
+from fleetcare.errors import FleetError, Misread
+
+GROUPS: tuple[Callable[[Commands], None], ...] = (calc.add_commands,)
+
+
+def build_parser() -> CommandParser:
+    """Give the parser of the whole command line; a parsed command carries its handler as `run`."""
+    parser = CommandParser(
+        prog="fleetcare",
+        description="What each engine of a small fleet needs next, with the working shown.",
+        epilog="Exit status: 0 done, 1 refused, 2 the command line is wrong, 3 no database, 130 interrupted.",
+    )
+    parser.add_argument("--version", action="version", version=f"fleetcare {__version__}")
+    commands = parser.add_subparsers(title="commands", metavar="COMMAND")
+    for add_commands in GROUPS:
+        add_commands(commands)
+    return parser
+
+
+def run(arguments: Sequence[str]) -> int:
+    """Run one command line and give its exit status. What is not a FleetError is a fault of ours and passes through."""
+    parser = build_parser()
+    try:
+        parsed = parser.parse_args(arguments)
+        if "run" not in parsed:
+            output.complain(*parser.format_help().splitlines())
+            return Misread.exit_code
+        parsed.run(parsed)
+    except FleetError as error:
+        output.complain(*error.lines())
+        return error.exit_code
+    except SystemExit as end:  # --help and --version
+        return int(end.code or 0)
+    return 0
