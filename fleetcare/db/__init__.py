@@ -1,0 +1,1 @@
+"""Storage: tables, the one way in and out of the file, the ledger, migrations."""

@@ -1,0 +1,179 @@
+"""The one way into the file: a connection to read by, or a session that writes all or nothing.
+
+Reading needs SQLAlchemy alone: it must not pay for loading the tables, their library or the migrations.
+"""
+
+import os
+import sqlite3
+from collections.abc import Callable, Iterator
+from contextlib import closing, contextmanager, suppress
+from datetime import datetime
+from pathlib import Path
+from typing import TYPE_CHECKING, Any
+
+from sqlalchemy import URL, Connection, Engine, NullPool, create_engine, event, text
+
+from fleetcare.db.failures import opening, using
+from fleetcare.errors import NoDatabase
+
+if TYPE_CHECKING:
+    from sqlalchemy.orm import Session
+
+HEAD = "20261201_first_tables"
+"""The newest revision in `migrations/`, kept here so that opening need not load them."""
+
+PATIENCE = 30.0
+"""Seconds to wait for another program's write to end."""
+
+
+@contextmanager
+def reading(path: Path) -> Iterator[Connection]:
+    """Give a connection on which every query sees the same state of the file; it cannot write.
+
+    An older file is upgraded first. Raises NoDatabase for a file that is missing, empty, newer or unusable.
+    """
+    with opening(path):
+        require(path)
+        make_current(path)
+        connection = engine(path, query_only=True).connect()
+    with using(path), connection:
+        yield connection
+
+
+@contextmanager
+def writing(path: Path, clock: Callable[[], datetime], uids: Callable[[], str]) -> Iterator["Session"]:
+    """Give a session that holds the write lock; all of it is stored on a clean exit, nothing otherwise.
+
+    A missing file is made, and is gone again where nothing was stored. Raises NoDatabase as `reading` does.
+    """
+    # Loading the tables is what writing costs and reading must not.
+    from fleetcare.db import migrate
+    from fleetcare.db.ledger import keep_ledger
+
+    with opening(path):
+        _make_or_upgrade(path)
+        session = _locked(path)
+    try:
+        with using(path), session:
+            session.info.update(clock=clock, uids=uids)
+            keep_ledger(session)
+            if revision(session.connection()) is None:
+                migrate.run(session.connection())
+            yield session
+            session.commit()
+    finally:
+        _drop_if_empty(path)
+
+
+def require(path: Path) -> None:
+    """Raise NoDatabase unless something stands at `path` that may be a database."""
+    if path.is_dir():
+        raise IsADirectoryError(path)
+    if not path.parent.is_dir():
+        raise FileNotFoundError(path)
+    if not path.exists():
+        raise NoDatabase(
+            f"there is no database at {path}", "name one with --db or FLEETCARE_DB, or enter an engine to make it"
+        )
+    if not path.stat().st_size:
+        raise NoDatabase(
+            f"{path} is empty", "name another file with --db or FLEETCARE_DB, or enter an engine to fill it"
+        )
+
+
+def make_current(path: Path) -> Path | None:
+    """Upgrade the file at `path` if it is older, and give the copy made before. Raises NoDatabase if it is newer."""
+    with engine(path, query_only=True).connect() as connection:
+        found = revision(connection)
+    if found == HEAD:
+        return None
+    from fleetcare.db import migrate  # loads for longer than most commands run, and is hardly ever needed
+
+    return migrate.bring_up(path, migrate.scripts_folder())
+
+
+def revision(connection: Connection) -> str | None:
+    """Give the schema revision of an open database, None where it has none of our tables yet."""
+    ours = text("SELECT count(*) FROM sqlite_master WHERE type = 'table' AND name IN ('alembic_version', 'ledger')")
+    if connection.execute(ours).scalar_one() < 2:
+        return None
+    found: str | None = connection.execute(text("SELECT max(version_num) FROM alembic_version")).scalar_one()
+    return found
+
+
+def engine(path: Path, *, query_only: bool = False, foreign_keys: bool = True) -> Engine:
+    """Give an engine for the existing file at `path`; unless `query_only` its transactions lock out other writers."""
+
+    def connect() -> sqlite3.Connection:
+        # mode=rw and not ro, because a reader may be the first to come after a power cut and must roll back.
+        # The driver's own transactions are off: they begin too late, and without the lock.
+        uri = f"{path.absolute().as_uri()}?mode=rw"
+        connection = sqlite3.connect(uri, uri=True, timeout=PATIENCE, isolation_level=None)
+        connection.execute(f"PRAGMA query_only = {query_only:d}")
+        connection.execute(f"PRAGMA foreign_keys = {foreign_keys:d}")
+        # In rollback-journal mode only EXTRA syncs the folder once the journal is gone, without which
+        # a power cut can bring the journal back and undo what was acknowledged.
+        connection.execute("PRAGMA synchronous = EXTRA")
+        return connection
+
+    made = create_engine(URL.create("sqlite", database=str(path)), creator=connect, poolclass=NullPool)
+    begin = "BEGIN" if query_only else "BEGIN IMMEDIATE"
+    event.listen(made, "begin", lambda connection: connection.exec_driver_sql(begin))
+    return made
+
+
+def copy(source: Path, target: Path) -> None:
+    """Copy a database, as of one moment, to a new file that is whole or not there at all."""
+    part = target.with_name(f"{target.name}.{os.getpid()}.part")
+    with opening(target):
+        try:
+            part.touch()
+            with engine(source, query_only=True).connect() as connection, closing(sqlite3.connect(part)) as out:
+                connection.execute(text("SELECT count(*) FROM sqlite_master"))  # takes the lock, with patience
+                driver: Any = connection.connection.driver_connection
+                driver.backup(out)
+            with part.open("rb") as written:
+                os.fsync(written.fileno())
+            part.replace(target)
+        finally:
+            part.unlink(missing_ok=True)
+
+
+def _make_or_upgrade(path: Path) -> None:
+    if path.exists() and path.stat().st_size:
+        require(path)
+        make_current(path)
+
+
+def _locked(path: Path) -> "Session":
+    """Give a session that holds the write lock of the file which stands at `path`, made empty if need be.
+
+    Somebody who made a file and then stored nothing removes it again; whoever waited for the lock of that
+    file must not write into what no longer has a name, and starts over.
+    """
+    from sqlalchemy.orm import Session
+
+    while True:
+        path.touch()
+        before = path.stat().st_ino
+        session = Session(engine(path), expire_on_commit=False)
+        try:
+            session.connection()
+            if path.exists() and path.stat().st_ino == before:
+                return session
+        except BaseException:
+            session.close()
+            raise
+        session.close()
+
+
+def _drop_if_empty(path: Path) -> None:
+    """Remove the file at `path` if it is empty, holding its lock so that nobody can be writing to it.
+
+    An empty file counts as missing for a writer, so it does no harm where it cannot be removed.
+    """
+    with suppress(Exception):
+        if path.stat().st_size == 0:
+            with engine(path).begin():
+                if path.stat().st_size == 0:
+                    path.unlink()
