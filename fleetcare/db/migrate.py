@@ -8,7 +8,7 @@ from alembic.script import ScriptDirectory
 from sqlalchemy import Connection, text
 
 import fleetcare
-from fleetcare.db.session import HEAD, copy, engine, revision
+from fleetcare.db.session import HEAD, copy, engine, require
 from fleetcare.errors import NoDatabase
 
 
@@ -34,13 +34,10 @@ def run(connection: Connection, scripts: Path | None = None) -> None:
 def bring_up(path: Path, scripts: Path) -> Path:
     """Upgrade an older file to the newest of `scripts`, and give the copy made before.
 
-    Raises NoDatabase, the file unchanged, where it is no database of ours, is newer, or would break.
+    Raises NoDatabase, the file unchanged, where it is newer or would break.
     """
-    with engine(path, query_only=True).connect() as connection:
-        found = revision(connection)
-    if found is None:
-        raise NoDatabase(f"{path} is not a fleetcare database", "name another file with --db or FLEETCARE_DB")
-    if found not in {script.revision for script in ScriptDirectory.from_config(config(scripts)).walk_revisions()}:
+    known = {script.revision for script in ScriptDirectory.from_config(config(scripts)).walk_revisions()}
+    if require(path) not in known:
         raise NoDatabase(f"{path} was made by a newer fleetcare", "update the program on this computer")
     backup = _free_name(path)
     copy(path, backup)

@@ -27,14 +27,17 @@ PATIENCE = 30.0
 
 
 @contextmanager
-def reading(path: Path) -> Iterator[Connection]:
+def reading(path: Path, *, as_is: bool = False) -> Iterator[Connection]:
     """Give a connection on which every query sees the same state of the file; it cannot write.
 
-    An older file is upgraded first. Raises NoDatabase for a file that is missing, empty, newer or unusable.
+    An older file is upgraded first, unless it is wanted `as_is`, and then a newer one is given too.
+    Raises NoDatabase for a file that is missing, empty, newer or unusable.
     """
     with opening(path):
-        require(path)
-        make_current(path)
+        if as_is:
+            require(path)
+        else:
+            current(path)
         connection = engine(path, query_only=True).connect()
     with using(path), connection:
         yield connection
@@ -51,7 +54,8 @@ def writing(path: Path, clock: Callable[[], datetime], uids: Callable[[], str]) 
     from fleetcare.db.ledger import keep_ledger
 
     with opening(path):
-        _make_or_upgrade(path)
+        if path.exists() and path.stat().st_size:
+            current(path)
         session = _locked(path)
     try:
         with using(path), session:
@@ -65,29 +69,33 @@ def writing(path: Path, clock: Callable[[], datetime], uids: Callable[[], str]) 
         _drop_if_empty(path)
 
 
-def require(path: Path) -> None:
-    """Raise NoDatabase unless something stands at `path` that may be a database."""
-    if path.is_dir():
-        raise IsADirectoryError(path)
-    if not path.parent.is_dir():
-        raise FileNotFoundError(path)
-    if not path.exists():
-        raise NoDatabase(
-            f"there is no database at {path}", "name one with --db or FLEETCARE_DB, or enter an engine to make it"
-        )
-    if not path.stat().st_size:
-        raise NoDatabase(
-            f"{path} is empty", "name another file with --db or FLEETCARE_DB, or enter an engine to fill it"
-        )
+def require(path: Path) -> str:
+    """Give the schema revision of the file at `path`; raise NoDatabase unless it is a database of ours."""
+    with opening(path):
+        if path.is_dir():
+            raise IsADirectoryError(path)
+        if not path.parent.is_dir():
+            raise FileNotFoundError(path)
+        if not path.exists():
+            raise NoDatabase(f"there is no database at {path}", "name one with --db, or add an engine to make it")
+        if not path.stat().st_size:
+            raise NoDatabase(f"{path} is empty", "name another file with --db, or add an engine to fill it")
+        with engine(path, query_only=True).connect() as connection:
+            found = revision(connection)
+    if found is None:
+        raise NoDatabase(f"{path} is not a fleetcare database", "name one with --db or FLEETCARE_DB")
+    return found
 
 
-def make_current(path: Path) -> Path | None:
-    """Upgrade the file at `path` if it is older, and give the copy made before. Raises NoDatabase if it is newer."""
-    with engine(path, query_only=True).connect() as connection:
-        found = revision(connection)
-    if found == HEAD:
+def current(path: Path) -> Path | None:
+    """Upgrade the file at `path` if it is older, and give the copy made before; None if it was current.
+
+    Raises NoDatabase for a newer one.
+    """
+    if require(path) == HEAD:
         return None
-    from fleetcare.db import migrate  # loads for longer than most commands run, and is hardly ever needed
+    # Takes longer to load than most commands run, and is hardly ever needed.
+    from fleetcare.db import migrate
 
     return migrate.bring_up(path, migrate.scripts_folder())
 
@@ -125,24 +133,27 @@ def engine(path: Path, *, query_only: bool = False, foreign_keys: bool = True) -
 def copy(source: Path, target: Path) -> None:
     """Copy a database, as of one moment, to a new file that is whole or not there at all."""
     part = target.with_name(f"{target.name}.{os.getpid()}.part")
-    with opening(target):
-        try:
-            part.touch()
-            with engine(source, query_only=True).connect() as connection, closing(sqlite3.connect(part)) as out:
-                connection.execute(text("SELECT count(*) FROM sqlite_master"))  # takes the lock, with patience
-                driver: Any = connection.connection.driver_connection
-                driver.backup(out)
-            with part.open("rb") as written:
-                os.fsync(written.fileno())
-            part.replace(target)
-        finally:
-            part.unlink(missing_ok=True)
+    with using(source), engine(source, query_only=True).connect() as connection:
+        # A first query waits for its turn; the copying itself would wait for ever.
+        connection.execute(text("SELECT count(*) FROM sqlite_master"))
+        driver: Any = connection.connection.driver_connection
+        with opening(target):
+            try:
+                with closing(sqlite3.connect(part)) as out:
+                    driver.backup(out)
+                _sync(part)
+                part.replace(target)
+                _sync(target.parent)
+            finally:
+                part.unlink(missing_ok=True)
 
 
-def _make_or_upgrade(path: Path) -> None:
-    if path.exists() and path.stat().st_size:
-        require(path)
-        make_current(path)
+def _sync(path: Path) -> None:
+    """Make a file, or the names in a folder, outlast a power cut."""
+    with suppress(PermissionError):  # where a folder cannot be opened, its file system keeps names by itself
+        opened = os.open(path, os.O_RDONLY)
+        os.fsync(opened)
+        os.close(opened)
 
 
 def _locked(path: Path) -> "Session":

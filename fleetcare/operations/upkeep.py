@@ -1,0 +1,51 @@
+"""Looking after the file: a copy of it, whether it is sound, and bringing it up to this program."""
+
+from dataclasses import dataclass
+from pathlib import Path
+from typing import TYPE_CHECKING
+
+from fleetcare.errors import Refused
+
+if TYPE_CHECKING:
+    from fleetcare.context import Context
+
+
+@dataclass(frozen=True, slots=True)
+class Soundness:
+    """What a check found: one sentence for each thing wrong, and SEQ:HASH of the ledger's newest entry."""
+
+    problems: tuple[str, ...]
+    head: str
+
+
+def backup(context: "Context", out: Path) -> Path:
+    """Copy the database, as of one moment, to the new file `out`, and give its path.
+
+    Raises Refused where that file is there already, NoDatabase where either file cannot be used.
+    """
+    from fleetcare.db.session import copy, require
+
+    require(context.path)
+    if out.exists():
+        raise Refused(f"{out} is already there", "name a file that is not")
+    copy(context.path, out)
+    return out
+
+
+def check(context: "Context", head: str | None = None) -> Soundness:
+    """Tell whether the database is sound, and its ledger reaches back to a `head` once printed.
+
+    The file is taken as it is: an older one is not upgraded. Raises Misread for an unreadable head.
+    """
+    from fleetcare.db import chain, session
+    from fleetcare.db.check import check as problems
+
+    with session.reading(context.path, as_is=True) as connection:
+        return Soundness(tuple(problems(connection, head)), chain.last_entry(connection).head)
+
+
+def upgrade(context: "Context") -> Path | None:
+    """Bring an older database up to this program, and give the copy made before; None if it is current."""
+    from fleetcare.db.session import current
+
+    return current(context.path)
