@@ -12,8 +12,11 @@ Every error says what is wrong and how to mend it, in one line each.
 from collections.abc import Sequence
 
 
-class FleetError(Exception):
-    """A failure a person can act on: `detail` says what and where, `remedy` how to mend it."""
+class FleetError(ValueError):
+    """A failure a person can act on: `detail` says what and where, `remedy` how to mend it.
+
+    A ValueError, so that the validation of drafts gathers every field's error before reporting.
+    """
 
     exit_code = 1
 
@@ -40,6 +43,7 @@ class Refusals(Refused):
     def __init__(self, errors: Sequence[FleetError]) -> None:
         super().__init__(errors[0].detail, errors[0].remedy)
         self.errors = tuple(errors)
+        self.exit_code = max(error.exit_code for error in errors)
 
     def lines(self) -> list[str]:
         """One printable line for each refusal, in the order found."""

@@ -77,6 +77,22 @@ class Amount:
 
 
 @dataclass(frozen=True, slots=True)
+class Figure:
+    """A dial figure as typed: a bare number takes the unit of the meter it is read off."""
+
+    value: Decimal
+    unit: str | None = None
+
+    @property
+    def kind(self) -> Kind | None:
+        """The kind of meter its unit belongs to, None for a bare number."""
+        return UNITS[self.unit].kind if self.unit else None
+
+    def __str__(self) -> str:
+        return f"{plain(self.value)} {self.unit}" if self.unit else plain(self.value)
+
+
+@dataclass(frozen=True, slots=True)
 class Span:
     """A calendar span as entered: 12 mo, 1 y, 2 w, 90 d."""
 
@@ -170,6 +186,14 @@ def parse_interval(text: str) -> Amount | Span:
     if unit in UNITS:
         return Amount(number, unit)
     return parse_span(text)
+
+
+def parse_dial(text: str) -> Figure:
+    """Read a dial figure: "1234", "1234.5h", "5600 km". Raises Misread for a span of time."""
+    number, unit = parse_figure(text)
+    if unit is not None and unit not in UNITS:
+        raise Misread(f"{text!r} is a span of time, not a dial figure", "write what the dial shows, such as 1234h")
+    return Figure(number, unit)
 
 
 def parse_span(text: str) -> Span:

@@ -1,0 +1,48 @@
+"""How a draft is read: every field's error gathered, each said in the words of errors.py."""
+
+from collections.abc import Callable, Mapping
+from typing import TypeVar
+
+from pydantic import BaseModel, ConfigDict, ValidationError
+
+from fleetcare.errors import FleetError, Misread, Refusals
+
+
+class Draft(BaseModel):
+    """What somebody wants written down, read and checked as far as it can be without the database."""
+
+    model_config = ConfigDict(frozen=True, extra="forbid", arbitrary_types_allowed=True)
+
+
+DraftT = TypeVar("DraftT", bound=Draft)
+
+
+def read_draft(
+    draft: type[DraftT], values: Mapping[str, object], label: Callable[[str], str] = lambda field: field
+) -> DraftT:
+    """Read a draft from named values; None and empty text stand for what was not given.
+
+    `label` turns a field's name into what the person knows it by: an option, a column. Raises the
+    one error, or Refusals with all of them.
+    """
+    given = {name: value for name, value in values.items() if value not in (None, "", [], ())}
+    try:
+        return draft.model_validate(given)
+    except ValidationError as caught:
+        errors = [_error(detail, label) for detail in caught.errors()]
+        raise errors[0] if len(errors) == 1 else Refusals(errors) from None
+
+
+def _error(detail: Mapping[str, object], label: Callable[[str], str]) -> FleetError:
+    """Turn one of pydantic's findings into an error that names its field."""
+    location = detail["loc"]
+    field = label(str(location[0])) if isinstance(location, tuple) and location else ""
+    context = detail.get("ctx")
+    inner = context.get("error") if isinstance(context, Mapping) else None
+    if isinstance(inner, FleetError):
+        return type(inner)(f"{field}: {inner.detail}" if field else inner.detail, inner.remedy)
+    if detail["type"] == "missing":
+        return Misread(f"{field} is missing", "give it")
+    if detail["type"] == "extra_forbidden":
+        return Misread(f"{field} is not known here", "leave it out, or check its spelling")
+    return Misread(f"{field}: {detail['msg']}", "correct it")

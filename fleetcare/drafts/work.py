@@ -1,0 +1,123 @@
+"""Work, readings, deferrals and corrections as somebody states them."""
+
+from datetime import date
+from typing import Annotated, Self
+
+from pydantic import BeforeValidator, model_validator
+
+from fleetcare.domain.quantities import Figure, parse_dial
+from fleetcare.drafts.fields import Day, DaysOrDials, Dial, Dials, Hours, Litres, MeterKind, Note, Parts, Text, Texts
+from fleetcare.drafts.reading_in import Draft
+from fleetcare.errors import Refused
+
+
+def _pair(value: object) -> tuple[Figure, Figure]:
+    assert isinstance(value, list | tuple)
+    old, new = (part if isinstance(part, Figure) else parse_dial(str(part)) for part in value)
+    return old, new
+
+
+Replaced = Annotated[tuple[Figure, Figure], BeforeValidator(_pair)]
+
+
+class ReadingDraft(Draft):
+    """A dial figure of a day, and what explains it where it breaks with the past."""
+
+    tag: Text
+    value: Dial
+    on: Day
+    meter: MeterKind | None = None
+    replaced: Replaced | None = None
+    unmetered: Dial | None = None
+    rolled_over: bool = False
+    sure: bool = False
+    note: Note = ""
+    by: Text | None = None
+    import_key: str | None = None
+
+    @model_validator(mode="after")
+    def _check_explanations(self) -> Self:
+        given = [self.replaced is not None, self.rolled_over, self.sure]
+        if sum(given) > 1:
+            raise Refused("one explanation is enough", "give only one of --replaced, --rolled-over and --sure")
+        if self.unmetered is not None and self.replaced is None:
+            raise Refused("--unmetered belongs to a replaced meter", "give --replaced OLD_LAST NEW_FIRST as well")
+        return self
+
+
+class LogDraft(Draft):
+    """What was done to an engine or machine on a day."""
+
+    tag: Text
+    task: Texts = ()
+    on: Day
+    at: Dials = ()
+    by: Text | None = None
+    note: Note = ""
+    top_up: Litres | None = None
+    repair: Text | None = None
+    defect: Text | None = None
+    follow_up: bool = False
+    until: Day | None = None
+    part_done: bool = False
+    part: Parts = ()
+    component: Note = ""
+    downtime: Hours | None = None
+    import_key: str | None = None
+
+    @model_validator(mode="after")
+    def _check_what(self) -> Self:
+        if not (self.task or self.top_up or self.repair or self.defect or self.note):
+            raise Refused("nothing to log", "name a task, or give --repair, --defect, --top-up or --note")
+        if self.follow_up and self.defect is None:
+            raise Refused("a follow-up is raised from a defect", "give --defect TEXT as well")
+        if self.until is not None and not self.follow_up:
+            raise Refused("--until says by when a follow-up is due", "give --follow-up as well")
+        if self.until is not None and self.until < self.on:
+            raise Refused(f"a follow-up cannot be due on {self.until}, before {self.on}", "give a later --until")
+        if self.part_done and not self.task:
+            raise Refused("--part-done says which task was done in part", "name the task")
+        return self
+
+
+class CorrectionDraft(Draft):
+    """What an entry should have said; what is not given stays as it was."""
+
+    entry: int
+    on: Day | None = None
+    at: Dials = ()
+    by: Text | None = None
+    note: Note | None = None
+    task: Texts = ()
+    part_done: bool | None = None
+    void: bool = False
+    why: Note = ""
+
+    @model_validator(mode="after")
+    def _check_why(self) -> Self:
+        if self.void and not self.why:
+            raise Refused("voiding an entry needs a reason", "give --why TEXT")
+        changed = self.on or self.at or self.by or self.note is not None or self.task or self.part_done is not None
+        if not self.void and not changed:
+            raise Refused("nothing to correct", "give what should stand instead, or --void --why TEXT")
+        return self
+
+
+class DeferralDraft(Draft):
+    """One due point to be moved: until a day, a dial figure, or the first of both."""
+
+    tag: Text
+    task: Text
+    until: DaysOrDials
+    why: Text
+    by: Text
+    on: Day
+
+    @model_validator(mode="after")
+    def _check_ends(self) -> Self:
+        days = [end for end in self.until if isinstance(end, date)]
+        if not self.until or len(self.until) > 2 or len(days) > 1 or len(self.until) - len(days) > 1:
+            raise Refused(
+                "a deferral ends on one day, at one dial figure, or at the first of both", "give --until once for each"
+            )
+        return self

@@ -1,0 +1,122 @@
+"""Find what somebody named: an item by tag, a task by name, a meter by kind; refuse with the nearest names."""
+
+from collections.abc import Sequence
+from dataclasses import dataclass
+from datetime import date
+from difflib import get_close_matches
+from typing import TYPE_CHECKING
+
+from fleetcare.domain.quantities import Figure, Kind
+from fleetcare.errors import Refused
+from fleetcare.operations.rows import fetch
+
+if TYPE_CHECKING:
+    from sqlalchemy import Connection
+
+
+@dataclass(frozen=True, slots=True)
+class FoundItem:
+    """An engine or machine by its tag."""
+
+    id: int
+    tag: str
+    is_engine: bool
+
+
+@dataclass(frozen=True, slots=True)
+class FoundMeter:
+    """The meter counting one kind for an item: its own, or its machine's."""
+
+    id: int
+    kind: Kind
+    unit: str
+    owner_id: int
+
+
+def find_item(connection: "Connection", tag: str) -> FoundItem:
+    """Find the engine or machine in use under a tag, whatever its case; refuses an unknown one."""
+    rows = fetch(
+        connection,
+        "select id, tag, is_engine from item where tag_key = :key order by withdrawn_on is not null, withdrawn_on desc",
+        key=tag.strip().casefold(),
+    )
+    if rows:
+        return FoundItem(rows[0][0], rows[0][1], bool(rows[0][2]))
+    tags = [row[0] for row in fetch(connection, "select tag from item where withdrawn_on is null order by tag")]
+    raise Refused(f"no engine or machine has the tag {tag!r}", _did_you_mean(tag, tags, "see fleetcare engine list"))
+
+
+def find_engine(connection: "Connection", tag: str) -> FoundItem:
+    """Find an engine by tag; refuses a machine."""
+    item = find_item(connection, tag)
+    if not item.is_engine:
+        raise Refused(f"{item.tag} is a machine, not an engine", "name one of its engines")
+    return item
+
+
+def find_machine(connection: "Connection", tag: str) -> FoundItem:
+    """Find a machine by tag; refuses an engine."""
+    item = find_item(connection, tag)
+    if item.is_engine:
+        raise Refused(
+            f"{item.tag} is an engine, not a machine", "name a machine, or add one with fleetcare machine add"
+        )
+    return item
+
+
+def find_task(connection: "Connection", item: FoundItem, name: str) -> int:
+    """Find a task of an item by name, whatever its case; refuses an unknown one with the nearest names."""
+    rows = fetch(
+        connection, "select id, name, name_key from task where item_id = :item and removed_on is null", item=item.id
+    )
+    key = " ".join(name.split()).casefold()
+    for task_id, _, name_key in rows:
+        if name_key == key:
+            return int(task_id)
+    names = [row[1] for row in rows]
+    remedy = _did_you_mean(name, names, f"add one with fleetcare task add {item.tag} NAME --every INTERVAL")
+    raise Refused(f"{item.tag} has no task {name!r}", remedy)
+
+
+def find_meters(connection: "Connection", item_id: int, on: date) -> list[FoundMeter]:
+    """Give the meters counting for an item on a day, its own and its machine's."""
+    rows = fetch(
+        connection,
+        "select meter.id, meter.kind, meter.unit, meter.item_id from meter_fit fit join meter on meter.id = fit.meter_id"
+        " where fit.item_id = :item and (fit.from_on is null or fit.from_on <= :on)"
+        " and (fit.to_on is null or fit.to_on > :on) order by meter.id",
+        item=item_id,
+        on=on.isoformat(),
+    )
+    return [FoundMeter(row[0], Kind(row[1]), row[2], row[3]) for row in rows]
+
+
+def pick_meter(meters: Sequence[FoundMeter], figure: Figure, tag: str, kind: Kind | None = None) -> FoundMeter:
+    """Give the meter a dial figure belongs to: by its unit, by a stated kind, or as the only one.
+
+    Refuses a figure that could be read off two meters, or off none.
+    """
+    wanted = kind or figure.kind
+    if kind is not None and figure.kind not in {None, kind}:
+        raise Refused(f"{figure} is not a figure of the {kind} meter", f"give it in the unit of {kind}")
+    fitting = [meter for meter in meters if wanted in {None, meter.kind}]
+    if not fitting:
+        what = f"{wanted} of {tag}" if wanted else f"anything of {tag}"
+        raise Refused(
+            f"no meter counts {what} on that day",
+            f"add one with fleetcare engine edit {tag} --meter {wanted or 'hours'}",
+        )
+    if len(fitting) > 1:
+        kinds = " and ".join(meter.kind for meter in fitting)
+        raise Refused(
+            f"{figure} could be {kinds} of {tag}", f"write its unit behind it, such as {figure.value}{fitting[0].unit}"
+        )
+    return fitting[0]
+
+
+def _did_you_mean(word: str, known: Sequence[str], otherwise: str) -> str:
+    by_key = {name.casefold(): name for name in known}
+    near = get_close_matches(word.strip().casefold(), by_key, n=3)
+    if near:
+        return f"did you mean {' or '.join(by_key[key] for key in near)}?"
+    return otherwise

@@ -1,0 +1,169 @@
+"""Add, edit, fit and follow engines and machines."""
+
+from datetime import date
+from decimal import Decimal
+from typing import TYPE_CHECKING, Any
+
+from sqlalchemy import select
+from sqlmodel import col
+
+from fleetcare.db.tables import Engine, Fitting, Item, LashSpec
+from fleetcare.drafts.items import EngineDraft, ItemDraft
+from fleetcare.errors import Refused
+from fleetcare.operations.find import FoundItem, find_machine
+from fleetcare.operations.fit_meters import add_meters, count_with_machine, restate_start, set_digits, stop_counting
+from fleetcare.operations.names import site_id
+from fleetcare.operations.rows import fetch
+
+if TYPE_CHECKING:
+    from sqlalchemy.orm import Session
+
+# Nameplate options of the command line and the columns they are kept in.
+NAMEPLATE = {
+    "duty": "duty",
+    "cylinders": "cylinders",
+    "layout": "layout",
+    "numbering": "numbering",
+    "firing_order": "firing_order",
+    "fuel": "fuel",
+    "bore": "bore_mm",
+    "stroke": "stroke_mm",
+    "rod": "rod_mm",
+    "compression_ratio": "compression_ratio",
+    "valves_per_cylinder": "valves_per_cylinder",
+    "intake_closes": "intake_closes_deg",
+    "adjuster": "adjuster",
+    "oil_grade": "oil_grade",
+    "sump": "sump_l",
+    "rated_rpm": "rated_rpm",
+    "rated_kw": "rated_kw",
+    "altitude": "altitude_m",
+}
+
+
+def add_item(session: "Session", draft: ItemDraft, today: date) -> FoundItem:
+    """Add an engine or machine with its meters, start figures and place. Refuses a tag in use."""
+    _refuse_taken(session, draft.tag)
+    is_engine = isinstance(draft, EngineDraft)
+    row = Item(
+        tag=draft.tag,
+        tag_key=draft.tag.casefold(),
+        is_engine=is_engine,
+        name=draft.name or "",
+        site_id=site_id(session, draft.site),
+        in_service_on=draft.in_service,
+        as_new=draft.as_new,
+    )
+    session.add(row)
+    session.flush()
+    item = FoundItem(row.id, row.tag, is_engine)
+    if isinstance(draft, EngineDraft):
+        session.add(Engine(item_id=item.id, **_nameplate(draft)))
+        _add_lash_spec(session, item.id, draft, draft.in_service or today)
+    add_meters(session, item, draft, draft.in_service)
+    if isinstance(draft, EngineDraft) and draft.machine is not None:
+        fit_engine(session, item, draft.machine, draft.in_service or today, draft.position or "")
+    restate_start(session, item, draft, is_new=True)
+    session.flush()
+    return item
+
+
+def stored_draft(session: "Session", item: FoundItem) -> dict[str, object]:
+    """Give the nameplate an engine has, under the names a draft knows, to lay an edit over."""
+    engine = session.scalars(select(Engine).where(col(Engine.item_id) == item.id)).one_or_none()
+    if engine is None:
+        return {}
+    return {field: value for field, column in NAMEPLATE.items() if (value := getattr(engine, column)) not in (None, "")}
+
+
+def edit_item(session: "Session", item: FoundItem, draft: ItemDraft, today: date) -> None:
+    """Change what a draft gives; what it leaves out stays. A new lash spec holds from `today` on."""
+    row = session.get_one(Item, item.id)
+    if draft.name is not None:
+        row.name = draft.name
+    if draft.site is not None:
+        row.site_id = site_id(session, draft.site)
+    if draft.in_service is not None:
+        row.in_service_on = draft.in_service
+    row.as_new = row.as_new or draft.as_new
+    if isinstance(draft, EngineDraft):
+        engine = session.scalars(select(Engine).where(col(Engine.item_id) == item.id)).one()
+        for column, value in _nameplate(draft).items():
+            setattr(engine, column, value)
+        _add_lash_spec(session, item.id, draft, today)
+    add_meters(session, item, draft, today)
+    set_digits(session, item, draft)
+    restate_start(session, item, draft, is_new=False)
+    session.flush()
+
+
+def fit_engine(session: "Session", engine: FoundItem, machine_tag: str | None, on: date, position: str = "") -> None:
+    """Fit an engine in a machine from a day on, or take it out of its machine where no machine is named.
+
+    What the old machine's meters counted for it ends that day; what the new one's count begins.
+    """
+    connection = session.connection()
+    machine = find_machine(connection, machine_tag) if machine_tag is not None else None
+    current = session.scalars(
+        select(Fitting).where(col(Fitting.engine_id) == engine.id, col(Fitting.to_on).is_(None))
+    ).one_or_none()
+    if current is None and machine is None:
+        raise Refused(f"{engine.tag} is in no machine", "nothing needs to be done")
+    if current is not None:
+        if machine is not None and current.machine_id == machine.id and current.position == position:
+            raise Refused(f"{engine.tag} is in {machine.tag} since {current.from_on}", "name another machine")
+        if on < current.from_on:
+            raise Refused(f"{engine.tag} is in its machine since {current.from_on}, after {on}", "give a later --on")
+        current.to_on = on
+        stop_counting(session, engine, current.machine_id, on)
+    if machine is not None:
+        session.add(Fitting(engine_id=engine.id, machine_id=machine.id, position=position, from_on=on))
+        count_with_machine(session, engine, machine, on)
+    session.flush()
+
+
+def _nameplate(draft: EngineDraft) -> dict[str, Any]:
+    return {column: value for field, column in NAMEPLATE.items() if (value := getattr(draft, field)) is not None}
+
+
+def _refuse_taken(session: "Session", tag: str) -> None:
+    rows = fetch(
+        session.connection(),
+        "select tag, is_engine from item where tag_key = :key and withdrawn_on is null",
+        key=tag.casefold(),
+    )
+    if rows:
+        what = "an engine" if rows[0][1] else "a machine"
+        raise Refused(f"the tag {rows[0][0]!r} belongs to {what} in use", "choose another tag")
+
+
+def _add_lash_spec(session: "Session", item_id: int, draft: EngineDraft, from_on: date) -> None:
+    """Add a lash spec from what a draft gives, over the one in force."""
+    unit = draft.lash_unit
+    if unit is None and draft.lash_when is None:
+        return
+    newest = session.scalars(
+        select(LashSpec).where(col(LashSpec.item_id) == item_id).order_by(col(LashSpec.from_on), col(LashSpec.id))
+    ).all()
+    old = newest[-1] if newest else None
+    if old is not None and unit not in {None, old.unit}:
+        old = None  # figures in another unit start a spec of their own
+
+    def figure(given: Decimal | None, column: str) -> Decimal | None:
+        return given if given is not None else (getattr(old, column) if old is not None else None)
+
+    intake, exhaust = draft.lash_intake, draft.lash_exhaust
+    session.add(
+        LashSpec(
+            item_id=item_id,
+            from_on=from_on,
+            unit=unit or (old.unit if old is not None else "mm"),
+            intake_low=figure(intake[0] if intake else None, "intake_low"),
+            intake_high=figure(intake[1] if intake else None, "intake_high"),
+            exhaust_low=figure(exhaust[0] if exhaust else None, "exhaust_low"),
+            exhaust_high=figure(exhaust[1] if exhaust else None, "exhaust_high"),
+            set_intake=figure(draft.lash_set_intake[0] if draft.lash_set_intake else None, "set_intake"),
+            set_exhaust=figure(draft.lash_set_exhaust[0] if draft.lash_set_exhaust else None, "set_exhaust"),
+            condition=draft.lash_when or (old.condition if old is not None else "any"),
+        )
+    )
