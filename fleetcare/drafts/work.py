@@ -90,6 +90,9 @@ class CorrectionDraft(Draft):
     note: Note | None = None
     task: Texts = ()
     part_done: bool | None = None
+    top_up: Litres | None = None
+    repair: Text | None = None
+    defect: Text | None = None
     void: bool = False
     why: Note = ""
 
@@ -97,8 +100,10 @@ class CorrectionDraft(Draft):
     def _check_why(self) -> Self:
         if self.void and not self.why:
             raise Refused("voiding an entry needs a reason", "give --why TEXT")
-        changed = self.on or self.at or self.by or self.note is not None or self.task or self.part_done is not None
-        if not self.void and not changed:
+        given = self.model_fields_set - {"entry", "void", "why"}
+        if self.void and given:
+            raise Refused("a voided entry says nothing any more", "give only --void and --why")
+        if not self.void and not given:
             raise Refused("nothing to correct", "give what should stand instead, or --void --why TEXT")
         return self
 

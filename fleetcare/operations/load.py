@@ -1,6 +1,6 @@
 """Facts out of rows: everything the due rules need to know about some items, seen up to a day."""
 
-from collections.abc import Sequence
+from collections.abc import Mapping, Sequence
 from datetime import date
 from decimal import Decimal
 from typing import TYPE_CHECKING
@@ -8,8 +8,9 @@ from typing import TYPE_CHECKING
 from fleetcare.domain.engines import DutyFactor, Item, Status, StatusSpell
 from fleetcare.domain.log import Done
 from fleetcare.domain.meters import Counter, LifeFigure, Meter, MeterFit, Reading
-from fleetcare.domain.quantities import COUNTED, Kind, to_base
-from fleetcare.operations.load_tasks import load_tasks
+from fleetcare.domain.quantities import COUNTED, Kind, from_base, to_base
+from fleetcare.operations.entries import first_entries, first_of
+from fleetcare.operations.load_tasks import load_start_figures, load_tasks
 from fleetcare.operations.rows import Row, day, fetch, figure, grouped, known_day
 from fleetcare.operations.settings import stale_days
 from fleetcare.rules.due.facts import ItemFacts
@@ -20,14 +21,14 @@ if TYPE_CHECKING:
 
 
 def item_facts(connection: "Connection", on: date, ids: Sequence[int] | None = None) -> list[ItemFacts]:
-    """Load items (all that are not withdrawn by `on`, or those of some ids) as the rules see them on a day."""
+    """Load items (all in use on `on`, or those of some ids) as the rules see them on a day."""
     items = load_items(connection, on, ids)
     found = [item.id for item in items]
     counters = load_counters(connection, found, on)
     tasks = load_tasks(connection, found, on, counters)
     done = _load_done(connection, found, on, counters)
     stale = stale_days(connection)
-    starts = _load_start_figures(connection, found)
+    starts = load_start_figures(connection, found)
     return [
         ItemFacts(
             item=item,
@@ -43,8 +44,9 @@ def item_facts(connection: "Connection", on: date, ids: Sequence[int] | None = N
 
 
 def load_items(connection: "Connection", on: date, ids: Sequence[int] | None = None) -> list[Item]:
-    """Load engines and machines with their dated spells, in tag order; withdrawn ones only by id."""
-    chosen = "item.id in :ids" if ids is not None else "item.withdrawn_on is null or item.withdrawn_on > :on"
+    """Load engines and machines with their dated spells, in tag order; those not yet or no more in use only by id."""
+    in_use = "(withdrawn_on is null or withdrawn_on > :on) and (in_service_on is null or in_service_on <= :on)"
+    chosen = "item.id in :ids" if ids is not None else in_use
     values: dict[str, object] = {"ids": list(ids)} if ids is not None else {"on": on.isoformat()}
     rows = fetch(
         connection,
@@ -112,7 +114,7 @@ def load_counters(connection: "Connection", ids: Sequence[int], on: date) -> dic
         " where fit.item_id in :ids order by fit.from_on, fit.id",
         ids=list(ids),
     )
-    starts = _load_start_figures(connection, ids)
+    starts = load_start_figures(connection, ids)
     readings = _load_readings(connection, sorted({row[1] for row in fits}))
     counters: dict[int, dict[Kind, CounterHistory]] = {}
     by_kind: dict[tuple[int, Kind], list[Row]] = {}
@@ -143,17 +145,19 @@ def _load_readings(connection: "Connection", meter_ids: Sequence[int]) -> dict[i
     rows = fetch(
         connection,
         'select reading.meter_id, reading.id, reading."on", reading.value, reading.rolled_over, reading.entry_id,'
+        " reading.unit, meter.unit,"
         " (select mark from reading_mark where reading_mark.reading_id = reading.id order by id desc limit 1),"
         " entry.is_void, (select 1 from log_entry later where later.supersedes_id = entry.id)"
-        " from reading left join log_entry entry on entry.id = reading.entry_id"
+        " from reading join meter on meter.id = reading.meter_id left join log_entry entry on entry.id = reading.entry_id"
         ' where reading.meter_id in :ids order by reading."on", reading.id',
         ids=list(meter_ids),
     )
     found: dict[int, list[Reading]] = {}
     for row in rows:
-        accepted = row[6] not in {"suspect", "void"} and not row[7] and not row[8]
+        accepted = row[8] not in {"suspect", "void"} and not row[9] and not row[10]
+        value = Decimal(row[3]) if row[6] == row[7] else from_base(to_base(Decimal(row[3]), row[6]), row[7])
         found.setdefault(row[0], []).append(
-            Reading(row[1], row[0], known_day(row[2]), Decimal(row[3]), bool(row[4]), row[5], accepted)
+            Reading(row[1], row[0], known_day(row[2]), value, bool(row[4]), row[5], accepted)
         )
     return found
 
@@ -178,50 +182,41 @@ def _load_done(
         on=on.isoformat(),
     )
     firsts = first_entries(connection)
+    own = {item_id: own_readings(found) for item_id, found in counters.items()}
     lives: dict[int, dict[Kind, LifeFigure]] = {}
     done: dict[int, list[Done]] = {}
     for row in rows:
         entry_id, entry_day = row[2], known_day(row[3])
         if entry_id not in lives:
-            lives[entry_id] = entry_lives(counters.get(row[1], {}), entry_id, entry_day)
+            lives[entry_id] = entry_lives(counters.get(row[1], {}), own.get(row[1], {}), entry_id, entry_day)
         first = first_of(firsts, entry_id)
         done.setdefault(row[0], []).append(Done(first, entry_id, entry_day, lives[entry_id], row[4], row[5]))
     return {task_id: tuple(sorted(entries, key=_place)) for task_id, entries in done.items()}
 
 
-def entry_lives(counters: dict[Kind, CounterHistory], entry_id: int, on: date) -> dict[Kind, LifeFigure]:
+def own_readings(counters: Mapping[Kind, CounterHistory]) -> dict[tuple[int, Kind], Reading]:
+    """Give the accepted readings that came with a log entry, by entry and kind."""
+    return {
+        (reading.entry_id, kind): reading
+        for kind, counter in counters.items()
+        for reading in counter.counter.readings
+        if reading.entry_id is not None and reading.accepted
+    }
+
+
+def entry_lives(
+    counters: Mapping[Kind, CounterHistory], own: Mapping[tuple[int, Kind], Reading], entry_id: int, on: date
+) -> dict[Kind, LifeFigure]:
     """Give an entry's life total of each kind: its own reading, else one of that day, else between neighbours."""
     lives: dict[Kind, LifeFigure] = {}
     for kind, counter in counters.items():
-        own = next((r for r in counter.readings if r.reading.entry_id == entry_id), None)
-        known = LifeFigure(own.life) if own is not None else counter.figure_on(on)
+        reading = own.get((entry_id, kind))
+        life = counter.life_at(reading.value, reading.on) if reading is not None else None
+        known = LifeFigure(life) if life is not None else counter.figure_on(on)
         if known is not None:
             lives[kind] = known
     return lives
 
 
-def first_entries(connection: "Connection") -> dict[int, int]:
-    """Map each correcting entry to the first entry of its chain."""
-    firsts: dict[int, int] = {}
-    for entry_id, superseded in fetch(
-        connection, "select id, supersedes_id from log_entry where supersedes_id is not null order by id"
-    ):
-        firsts[entry_id] = first_of(firsts, superseded)
-    return firsts
-
-
-def first_of(firsts: dict[int, int], entry_id: int) -> int:
-    """Give the first entry of an entry's chain of corrections; itself where it corrects nothing."""
-    return firsts.get(entry_id, entry_id)
-
-
 def _place(done: Done) -> tuple[date, list[Decimal], int]:
     return done.on, [done.life[kind].value for kind in COUNTED if kind in done.life], done.number
-
-
-def _load_start_figures(connection: "Connection", ids: Sequence[int]) -> dict[int, dict[Kind, Decimal]]:
-    rows = fetch(connection, "select item_id, kind, value, unit from start_figure where item_id in :ids", ids=list(ids))
-    starts: dict[int, dict[Kind, Decimal]] = {}
-    for row in rows:
-        starts.setdefault(row[0], {})[Kind(row[1])] = to_base(Decimal(row[2]), row[3])
-    return starts

@@ -5,7 +5,7 @@ from datetime import date
 from decimal import Decimal
 from typing import TYPE_CHECKING
 
-from fleetcare.domain.quantities import UNITS, Kind, Span, parse_span, to_base
+from fleetcare.domain.quantities import UNITS, Kind, Span, from_base, parse_span, to_base
 from fleetcare.domain.schedules import (
     Anchor,
     CalendarTrigger,
@@ -19,6 +19,7 @@ from fleetcare.domain.schedules import (
     TaskVersion,
     Trigger,
 )
+from fleetcare.operations.entries import first_entries, first_of
 from fleetcare.operations.rows import Row, day, fetch, figure, grouped, known_day
 from fleetcare.rules.meters import CounterHistory
 
@@ -133,54 +134,87 @@ def _trigger(row: Row) -> Trigger:
 
 
 def _load_origins(connection: "Connection", task_ids: Sequence[int], on: date, counters: Counters) -> dict[int, Origin]:
-    """Load the newest start point of each task, its dial figures turned into life totals."""
-    rows = fetch(
+    """Load what each task counts from: the newest start point stated, else the start of an item counted as new."""
+    tasks = fetch(
         connection,
-        'select origin.task_id, origin.id, origin.as_new, origin."on", task.item_id from task_origin origin'
-        " join task on task.id = origin.task_id where origin.task_id in :ids order by origin.id",
+        "select task.id, item.id, item.as_new, item.in_service_on from task join item on item.id = task.item_id"
+        " where task.id in :ids",
         ids=list(task_ids),
     )
+    stated = {
+        row[0]: row
+        for row in fetch(
+            connection,
+            'select task_id, id, as_new, "on" from task_origin where task_id in :ids order by id',
+            ids=list(task_ids),
+        )
+    }
     figures = grouped(
         fetch(
             connection,
             "select origin_id, meter.kind, origin_figure.value, origin_figure.unit from origin_figure"
             " join meter on meter.id = origin_figure.meter_id where origin_id in :ids order by origin_figure.id",
-            ids=[row[1] for row in rows],
+            ids=[row[1] for row in stated.values()],
         )
     )
+    starts = load_start_figures(connection, sorted({row[1] for row in tasks}))
     origins: dict[int, Origin] = {}
-    for task_id, origin_id, as_new, origin_on, item_id in rows:
-        item_counters = counters.get(item_id, {})
-        origin_day = day(origin_on)
-        life = {}
-        for kind, counter in item_counters.items():
-            known = counter.figure_on(origin_day) if origin_day is not None else None
-            if known is not None:
-                life[kind] = known.value
-        for _, kind, value, _unit in figures.get(origin_id, ()):
-            counted = item_counters[Kind(kind)].life_at(Decimal(value), origin_day or on)
-            if counted is not None:
-                life[Kind(kind)] = counted
-        origins[task_id] = Origin(bool(as_new), origin_day, life)
+    for task_id, item_id, item_as_new, in_service_on in tasks:
+        _, origin_id, as_new, origin_on = stated.get(task_id, (task_id, None, item_as_new, None))
+        if as_new:
+            if in_service_on is not None:
+                origins[task_id] = Origin(True, day(in_service_on), starts.get(item_id, {}))
+            continue
+        life = _life_then(counters.get(item_id, {}), day(origin_on), figures.get(origin_id, ()), on)
+        if origin_on is not None or life:
+            origins[task_id] = Origin(False, day(origin_on), life)
     return origins
+
+
+def _life_then(
+    counters: Mapping[Kind, CounterHistory], origin_day: date | None, figures: Sequence[Row], on: date
+) -> dict[Kind, Decimal]:
+    """Give the life totals of a last-done: figures as stated, else what the readings say of its day."""
+    life = {}
+    for kind, counter in counters.items():
+        known = counter.figure_on(origin_day) if origin_day is not None else None
+        if known is not None:
+            life[kind] = known.value
+    for _, name, value, unit in figures:
+        counter = counters[Kind(name)]
+        counted = counter.life_at(from_base(to_base(Decimal(value), unit), counter.unit or unit), origin_day or on)
+        if counted is not None:
+            life[Kind(name)] = counted
+    return life
+
+
+def load_start_figures(connection: "Connection", item_ids: Sequence[int]) -> dict[int, dict[Kind, Decimal]]:
+    """Load the life totals items came with, in base units, by item and kind."""
+    rows = fetch(
+        connection, "select item_id, kind, value, unit from start_figure where item_id in :ids", ids=list(item_ids)
+    )
+    starts: dict[int, dict[Kind, Decimal]] = {}
+    for row in rows:
+        starts.setdefault(row[0], {})[Kind(row[1])] = to_base(Decimal(row[2]), row[3])
+    return starts
 
 
 def _load_calls(connection: "Connection", task_ids: Sequence[int], on: date) -> dict[int, tuple[Call, ...]]:
     """Load the calls of on-condition tasks and follow-ups, those of voided entries left out."""
     rows = fetch(
         connection,
-        'select call.task_id, call.id, call."on", call.due_on, call.why from task_call call'
-        " left join log_entry entry on entry.id = call.entry_id"
-        ' where call.task_id in :ids and call."on" <= :on and coalesce(entry.is_void, 0) = 0'
-        " and not exists (select 1 from log_entry later where later.supersedes_id = entry.id and later.is_void)"
-        " order by call.id",
+        'select task_id, id, "on", due_on, why, entry_id from task_call'
+        ' where task_id in :ids and "on" <= :on order by id',
         ids=list(task_ids),
         on=on.isoformat(),
     )
-    return {
-        task_id: tuple(Call(row[1], known_day(row[2]), known_day(row[3]), row[4]) for row in found)
-        for task_id, found in grouped(rows).items()
-    }
+    firsts = first_entries(connection)
+    voided = {first_of(firsts, row[0]) for row in fetch(connection, "select id from log_entry where is_void")}
+    calls: dict[int, list[Call]] = {}
+    for task_id, call_id, made_on, due_on, why, entry_id in rows:
+        if entry_id is None or first_of(firsts, entry_id) not in voided:
+            calls.setdefault(task_id, []).append(Call(call_id, known_day(made_on), known_day(due_on), why))
+    return {task_id: tuple(found) for task_id, found in calls.items()}
 
 
 def _load_deferrals(

@@ -14,14 +14,15 @@ from fleetcare.rules.due.outlook import outlooks
 _ALWAYS_LISTED = {State.OVERDUE, State.DUE, State.NEAR, State.UNSET}
 
 
-def item_lines(facts: ItemFacts, is_future: bool = False) -> list[DueLine]:
+def item_lines(facts: ItemFacts, is_future: bool = False, recorded_only: bool = False) -> list[DueLine]:
     """Give the lines of one item on the day of its facts, covering marked; none for a withdrawn one.
 
-    `is_future` says that day has not come yet, so that counted lines carry an estimate.
+    `is_future` says that day has not come yet, so that counted lines carry an estimate; `recorded_only`
+    leaves estimates and forecasts of counted triggers out.
     """
     if status_on(facts.item.spells, facts.on) is Status.WITHDRAWN:
         return []
-    looks = outlooks(facts, is_future)
+    looks = outlooks(facts, is_future, recorded_only)
     lines = [line for task in facts.tasks if (line := due_line(facts, task, looks)) is not None]
     return with_covering(lines)
 

@@ -17,6 +17,7 @@ _GAPS_FOR_A_RHYTHM = 3
 _GAPS_LOOKED_AT = 10
 
 LAID_UP = Forecast(None, None, None, 0, "laid up: what is run counts, what will be run is not known")
+RECORDED_ONLY = Forecast(None, None, None, 0, "left out: only what was recorded is asked for")
 
 
 @dataclass(frozen=True, slots=True)
@@ -32,17 +33,19 @@ class Outlook:
     is_stale: bool
     likely_now: Decimal | None
     history: History | None
+    no_forecast: Forecast = LAID_UP
 
     def reach(self, target: Decimal) -> Forecast:
         """Forecast the days on which a life total is reached."""
-        return LAID_UP if self.history is None else self.history.reach(target)
+        return self.no_forecast if self.history is None else self.history.reach(target)
 
 
-def outlooks(facts: ItemFacts, is_future: bool) -> dict[Kind, Outlook]:
-    """Give the outlook of each counter of an item on the day of its facts."""
+def outlooks(facts: ItemFacts, is_future: bool, recorded_only: bool = False) -> dict[Kind, Outlook]:
+    """Give the outlook of each counter of an item on the day of its facts; `recorded_only` without forecasts."""
     laid_up = status_on(facts.item.spells, facts.on) is Status.LAID_UP
+    no_forecast = RECORDED_ONLY if recorded_only else LAID_UP if laid_up else None
     return {
-        kind: _outlook(counter, facts.on, facts.stale_days, is_future, laid_up)
+        kind: _outlook(counter, facts.on, facts.stale_days, is_future, no_forecast)
         for kind, counter in facts.counters.items()
     }
 
@@ -62,14 +65,14 @@ def stale_after(days_read: list[date], stale_days: int | None) -> float:
 
 
 def _outlook(
-    counter: CounterHistory, on: date, stale_days: int | None, is_future: bool, laid_up: bool
+    counter: CounterHistory, on: date, stale_days: int | None, is_future: bool, no_forecast: Forecast | None
 ) -> Outlook:
     latest = counter.latest
     if latest is None:
         return Outlook(None, None, False, None, History(()))
     is_stale = (on - latest.on).days > stale_after([r.on for r in counter.readings], stale_days)
-    if laid_up:
-        return Outlook(latest.life, latest.on, is_stale, None, None)
+    if no_forecast is not None:
+        return Outlook(latest.life, latest.on, is_stale, None, None, no_forecast)
     history = History([(r.on, r.life) for r in counter.readings])
     likely = history.likely_value(on) if is_stale or is_future else None
     likely_now = Decimal(str(round(likely, 3))) if likely is not None else None

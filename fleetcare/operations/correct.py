@@ -1,0 +1,106 @@
+"""Correct or void an entry: a new entry that supersedes the old one, both readable ever after."""
+
+from collections.abc import Sequence
+from datetime import date
+from typing import TYPE_CHECKING
+
+from sqlalchemy import select
+from sqlalchemy.exc import IntegrityError
+from sqlmodel import col
+
+from fleetcare.db.tables import Item, LogEntry, LogPart, LogTask, Reading
+from fleetcare.domain.quantities import Figure
+from fleetcare.drafts.work import CorrectionDraft
+from fleetcare.errors import Refused
+from fleetcare.operations.find import FoundItem, find_task
+from fleetcare.operations.log import Logged, close_tasks, refuse_future, store_figures
+from fleetcare.operations.names import person_id
+
+if TYPE_CHECKING:
+    from sqlalchemy.orm import Session
+
+
+def correct_entry(session: "Session", draft: CorrectionDraft, today: date) -> Logged:
+    """Supersede an entry by one that says what it should have said, or by a void.
+
+    Refuses an entry corrected already, so that two corrections at once never fork its history.
+    """
+    old = _current(session, draft.entry)
+    on = draft.on or old.on
+    refuse_future(on, today)
+    new = LogEntry(
+        item_id=old.item_id,
+        on=on,
+        kind=old.kind,
+        person_id=person_id(session, draft.by) or old.person_id,
+        title=_title(old, draft),
+        note=old.note if draft.note is None else draft.note,
+        component=old.component,
+        downtime_hours=old.downtime_hours,
+        litres=draft.top_up.value if draft.top_up else old.litres,
+        litres_unit=draft.top_up.unit if draft.top_up else old.litres_unit,
+        supersedes_id=old.id,
+        is_void=draft.void,
+        why=draft.why,
+    )
+    session.add(new)
+    try:
+        session.flush()
+    except IntegrityError as error:
+        raise Refused(f"entry {old.id} was corrected meanwhile", "look at it again with fleetcare show") from error
+    row = session.get_one(Item, old.item_id)
+    item = FoundItem(row.id, row.tag, row.is_engine)
+    logged = Logged(item, entries=[(new.id, new.kind)])
+    if not draft.void:
+        _carry_over(session, item, old, new, draft, logged)
+    return logged
+
+
+def _current(session: "Session", number: int) -> LogEntry:
+    """Give an entry that is neither corrected nor void; refuse any other, naming the one that stands."""
+    old = session.get(LogEntry, number)
+    if old is None:
+        raise Refused(f"there is no entry {number}", "see fleetcare show TAG for the numbers of its entries")
+    later = session.scalars(select(LogEntry).where(col(LogEntry.supersedes_id) == number)).one_or_none()
+    if later is not None:
+        raise Refused(f"entry {number} was superseded by entry {later.id}", f"correct entry {later.id} instead")
+    if old.is_void:
+        raise Refused(f"entry {number} voids entry {old.supersedes_id}", "log the work anew")
+    return old
+
+
+def _title(old: LogEntry, draft: CorrectionDraft) -> str:
+    for kind, title in (("repair", draft.repair), ("defect", draft.defect)):
+        if title is not None and old.kind != kind:
+            raise Refused(f"entry {old.id} is no {kind}", f"leave out --{kind}")
+    if draft.top_up is not None and old.kind != "top-up":
+        raise Refused(f"entry {old.id} is no top-up", "leave out --top-up")
+    return draft.repair or draft.defect or old.title
+
+
+def _carry_over(
+    session: "Session", item: FoundItem, old: LogEntry, new: LogEntry, draft: CorrectionDraft, logged: Logged
+) -> None:
+    """Give the new entry the figures, parts and tasks of the old one, save those restated."""
+    store_figures(session, item, new, [*draft.at, *_kept_figures(session, old, draft.at)])
+    for part in session.scalars(select(LogPart).where(col(LogPart.entry_id) == old.id)).all():
+        session.add(LogPart(entry_id=new.id, name=part.name, quantity=part.quantity))
+    rows = session.scalars(
+        select(LogTask)
+        .where(col(LogTask.entry_id) == old.id, col(LogTask.covered_by_id).is_(None))
+        .order_by(col(LogTask.id))
+    ).all()
+    tasks = [find_task(session.connection(), item, name) for name in draft.task] or [row.task_id for row in rows]
+    was_part = any(row.part_done for row in rows)
+    part_done = was_part if draft.part_done is None else draft.part_done
+    close_tasks(session, item, new, tasks, part_done=part_done, logged=logged)
+
+
+def _kept_figures(session: "Session", old: LogEntry, restated: Sequence[Figure]) -> list[Figure]:
+    """Give the old entry's figures that the correction does not restate."""
+    rows = session.scalars(select(Reading).where(col(Reading.entry_id) == old.id).order_by(col(Reading.id))).all()
+    kinds = {figure.kind for figure in restated}
+    if None in kinds and len(rows) <= 1:
+        return []
+    kept = [Figure(row.value, row.unit) for row in rows]
+    return [figure for figure in kept if figure.kind not in kinds]

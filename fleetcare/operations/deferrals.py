@@ -1,0 +1,129 @@
+"""Move one due point, with reason and name."""
+
+from dataclasses import dataclass
+from datetime import date
+from decimal import Decimal
+from typing import TYPE_CHECKING
+
+from fleetcare.db.tables import Deferral, DeferralFigure
+from fleetcare.domain.lines import DueLine, Point, State
+from fleetcare.domain.quantities import BASE_UNIT, Figure, Kind, from_base, plain, to_base
+from fleetcare.drafts.work import DeferralDraft
+from fleetcare.errors import Refused
+from fleetcare.operations.find import FoundItem, find_item, find_meters, find_task, pick_meter
+from fleetcare.operations.load import item_facts
+from fleetcare.operations.names import person_id
+from fleetcare.rules.due.due_list import item_lines
+from fleetcare.rules.due.facts import ItemFacts
+from fleetcare.rules.due.outlook import outlooks
+from fleetcare.rules.due.replay import replay
+
+if TYPE_CHECKING:
+    from sqlalchemy.orm import Session
+
+
+@dataclass(frozen=True, slots=True)
+class Deferred:
+    """What was deferred: the item, the task's name, and what the point was bound to."""
+
+    item: FoundItem
+    task: str
+
+
+def defer(session: "Session", draft: DeferralDraft) -> Deferred:
+    """Store a deferral of the due point a task has now.
+
+    Refuses work by law or insurer, work that is not deferrable, a line without a point, an end that
+    does not lie after the point or after today, and a figure the task does not count.
+    """
+    connection = session.connection()
+    item = find_item(connection, draft.tag)
+    task_id = find_task(connection, item, draft.task)
+    facts = item_facts(connection, draft.on, [item.id])[0]
+    line = next((line for line in item_lines(facts) if line.task.id == task_id), None)
+    if line is None:
+        raise Refused(f"{draft.task} of {item.tag} is not due to be done", "nothing needs to be deferred")
+    _check_allowed(line)
+    row = Deferral(
+        task_id=task_id,
+        on=draft.on,
+        counts_from_id=replay(facts, line.task).marks.from_entry,
+        until_on=next((end for end in draft.until if isinstance(end, date)), None),
+        why=draft.why,
+        person_id=person_id(session, draft.by) or 0,
+    )
+    if row.until_on is not None:
+        _check_day(line, row.until_on, draft.on)
+    session.add(row)
+    session.flush()
+    for end in draft.until:
+        if isinstance(end, Figure):
+            _add_figure(session, row, item, facts, line, end)
+    if row.until_on is not None and line.version.calendar is None and not line.version.on_condition:
+        _add_cap(session, row, facts, line)
+    session.flush()
+    return Deferred(item, line.task.name)
+
+
+def _check_allowed(line: DueLine) -> None:
+    name = f"{line.task.name} of {line.item.tag}"
+    if line.version.law or line.version.insurer:
+        raise Refused(f"{name} is required by {'law' if line.version.law else 'the insurer'}", "it cannot be deferred")
+    if not line.version.deferrable:
+        raise Refused(
+            f"{name} is not deferrable", f"do it, or allow it: fleetcare task edit {line.item.tag} ... --deferrable yes"
+        )
+    if line.state is State.UNSET:
+        raise Refused(f"{name} has no due point yet: {line.reason}", "enter that first")
+
+
+def _check_day(line: DueLine, until: date, today: date) -> None:
+    if until < today:
+        raise Refused(f"{until} is past", f"give a day from {today} on")
+    point = _own(line, Kind.CALENDAR)
+    if isinstance(point, date) and until <= point:
+        raise Refused(f"{line.task.name} is not due before {point}", "give a later day")
+
+
+def _add_figure(
+    session: "Session", row: Deferral, item: FoundItem, facts: ItemFacts, line: DueLine, end: Figure
+) -> None:
+    """Store a dial figure a deferral ends at; refuses one the task does not count or that lies before its point."""
+    meter = pick_meter(find_meters(session.connection(), item.id, facts.on), end, item.tag)
+    own = _own(line, meter.kind)
+    if not isinstance(own, Decimal):
+        raise Refused(f"{line.task.name} does not count {meter.kind}", "give a day, or a figure of a kind it counts")
+    counter = facts.counters[meter.kind]
+    dial = from_base(to_base(end.value, end.unit), meter.unit) if end.unit else end.value
+    life = counter.life_at(dial, facts.on)
+    if life is None or life <= own:
+        point = plain(from_base(own, meter.unit))
+        raise Refused(f"{end} does not lie after the due point of {point} {meter.unit}", "give a larger figure")
+    session.add(
+        DeferralFigure(
+            deferral_id=row.id,
+            kind=meter.kind,
+            role="until",
+            meter_id=meter.id,
+            value=end.value,
+            unit=end.unit or meter.unit,
+        )
+    )
+
+
+def _add_cap(session: "Session", row: Deferral, facts: ItemFacts, line: DueLine) -> None:
+    """Fix the likely figure on the day a counted trigger is deferred to, so that hard running ends it early."""
+    if len(line.version.counted) > 1:
+        raise Refused(f"{line.task.name} counts more than one meter", "say until which figure")
+    kind = line.version.counted[0].kind
+    look = outlooks(facts, is_future=False).get(kind)
+    assert row.until_on is not None
+    likely = look.history.likely_value(row.until_on) if look is not None and look.history is not None else None
+    own = _own(line, kind)
+    if likely is not None and isinstance(own, Decimal) and likely > own:
+        value = Decimal(str(round(likely, 1)))
+        session.add(DeferralFigure(deferral_id=row.id, kind=kind, role="cap", value=value, unit=BASE_UNIT[kind]))
+
+
+def _own(line: DueLine, kind: Kind) -> Point | None:
+    return next((trigger.own for trigger in line.triggers if trigger.kind is kind), None)

@@ -1,0 +1,121 @@
+"""The due list, and what a change did to it."""
+
+from collections.abc import Iterator, Sequence
+from contextlib import contextmanager
+from dataclasses import dataclass, field
+from datetime import date
+from typing import TYPE_CHECKING
+
+from fleetcare.domain.lines import DueLine, State
+from fleetcare.errors import Refused
+from fleetcare.operations.find import find_item, find_meters
+from fleetcare.operations.load import item_facts
+from fleetcare.operations.rows import fetch
+from fleetcare.rules.due.due_list import in_order, item_lines, within
+from fleetcare.rules.due.facts import ItemFacts
+from fleetcare.rules.due.row import DueRow, due_row
+
+if TYPE_CHECKING:
+    from sqlalchemy import Connection
+    from sqlalchemy.orm import Session
+
+
+@dataclass(frozen=True, slots=True)
+class Filters:
+    """What of the due list is wanted; everything by default."""
+
+    days: int | None = None
+    site: str | None = None
+    engine: str | None = None
+    states: tuple[State, ...] = ()
+    recorded_only: bool = False
+
+
+@dataclass(frozen=True, slots=True)
+class Moved:
+    """One line whose due point a change moved: before and after, None where there was or is no line."""
+
+    before: DueRow | None
+    after: DueRow | None
+
+
+@dataclass(slots=True)
+class Moves:
+    """The lines a change moved, filled when the change is done."""
+
+    moved: list[Moved] = field(default_factory=list)
+    rows: list[DueRow] = field(default_factory=list)
+
+
+def due_rows(
+    connection: "Connection", on: date, filters: Filters | None = None, *, is_future: bool = False
+) -> list[DueRow]:
+    """Give the due list of a day in order, flattened. An unknown engine or site is refused."""
+    wanted = filters or Filters()
+    ids = [find_item(connection, wanted.engine).id] if wanted.engine is not None else None
+    found = {facts.item.id: facts for facts in item_facts(connection, on, ids)}
+    lines = [
+        line for facts in found.values() for line in item_lines(facts, is_future, recorded_only=wanted.recorded_only)
+    ]
+    if wanted.site is not None:
+        site = _known_site(connection, wanted.site)
+        lines = [line for line in lines if line.item.site.casefold() == site]
+    if wanted.days is not None:
+        lines = within(lines, on, wanted.days)
+    if wanted.states:
+        lines = [line for line in lines if line.state in wanted.states]
+    return [due_row(line, found[line.item.id]) for line in in_order(lines)]
+
+
+def item_due(
+    connection: "Connection", tag: str, on: date, *, is_future: bool = False
+) -> tuple[ItemFacts, list[DueLine]]:
+    """Give one item's facts and its lines in order, with their whole working."""
+    item = find_item(connection, tag)
+    facts = item_facts(connection, on, [item.id])[0]
+    return facts, in_order(item_lines(facts, is_future))
+
+
+@contextmanager
+def watch_moves(session: "Session", tag: str, on: date) -> Iterator[Moves]:
+    """Compare the lines of an item, and of all that share its meters, before and after what is done inside."""
+    connection = session.connection()
+    item = find_item(connection, tag)
+    ids = _sharing(connection, item.id, on)
+    before = _rows_by_key(connection, ids, on)
+    moves = Moves()
+    yield moves
+    session.flush()
+    after = _rows_by_key(connection, ids, on)
+    moves.rows = list(after.values())
+    for key in (*before, *(key for key in after if key not in before)):
+        old, new = before.get(key), after.get(key)
+        if _point(old) != _point(new):
+            moves.moved.append(Moved(old, new))
+
+
+def _rows_by_key(connection: "Connection", ids: Sequence[int], on: date) -> dict[tuple[int, int], DueRow]:
+    rows: dict[tuple[int, int], DueRow] = {}
+    for facts in item_facts(connection, on, ids):
+        for line in item_lines(facts):
+            rows[(facts.item.id, line.task.id)] = due_row(line, facts)
+    return rows
+
+
+def _sharing(connection: "Connection", item_id: int, on: date) -> list[int]:
+    """Give the ids of an item and of all items its meters count for."""
+    meters = [meter.id for meter in find_meters(connection, item_id, on)]
+    rows = fetch(connection, "select distinct item_id from meter_fit where meter_id in :meters", meters=meters)
+    return sorted({item_id, *(row[0] for row in rows)})
+
+
+def _point(row: DueRow | None) -> tuple[object, ...] | None:
+    return None if row is None else (row.next_due_at, row.next_due_on)
+
+
+def _known_site(connection: "Connection", name: str) -> str:
+    key = name.strip().casefold()
+    names = {row[0].casefold(): row[0] for row in fetch(connection, "select name from site order by name")}
+    if key not in names:
+        raise Refused(f"there is no site {name!r}", f"choose one of {', '.join(names.values()) or 'none yet'}")
+    return key

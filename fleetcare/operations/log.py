@@ -1,0 +1,233 @@
+"""Write down what was done: tasks with what they cover, repairs, defects with follow-ups, top-ups."""
+
+from collections.abc import Sequence
+from dataclasses import dataclass, field, replace
+from datetime import date
+from typing import TYPE_CHECKING
+
+from sqlalchemy import select
+from sqlmodel import col
+
+from fleetcare.db.tables import LogEntry, LogPart, LogTask, TaskCall, TaskVersion
+from fleetcare.db.tables import Task as TaskRow
+from fleetcare.domain.lines import PastWork
+from fleetcare.domain.log import Done
+from fleetcare.domain.quantities import Figure
+from fleetcare.domain.schedules import Combine, Task
+from fleetcare.domain.schedules import TaskVersion as Version
+from fleetcare.drafts.work import LogDraft
+from fleetcare.errors import Refused
+from fleetcare.operations.find import FoundItem, find_item, find_meters, find_task, pick_meter
+from fleetcare.operations.load import entry_lives, item_facts, own_readings
+from fleetcare.operations.names import person_id
+from fleetcare.operations.readings import NewReading, store_reading
+from fleetcare.rules.due.covering import closure
+from fleetcare.rules.due.facts import ItemFacts
+from fleetcare.rules.due.replay import replay
+
+if TYPE_CHECKING:
+    from sqlalchemy.orm import Session
+
+
+@dataclass(slots=True)
+class Logged:
+    """What a log command stored: entries by number and kind, tasks closed and covered, and what is worth saying."""
+
+    item: FoundItem
+    entries: list[tuple[int, str]] = field(default_factory=list)
+    closed: list[str] = field(default_factory=list)
+    covered: list[tuple[str, str]] = field(default_factory=list)
+    part_done: list[str] = field(default_factory=list)
+    raised: list[str] = field(default_factory=list)
+    notes: list[str] = field(default_factory=list)
+
+
+def record_work(session: "Session", draft: LogDraft, today: date) -> Logged:
+    """Store what was done on a day. Everything a draft says stands in one entry of each kind."""
+    item = find_item(session.connection(), draft.tag)
+    refuse_future(draft.on, today)
+    logged = Logged(item)
+    tasks = [find_task(session.connection(), item, name) for name in draft.task]
+    called = _on_condition(session, tasks) if draft.follow_up else []
+    done = [task for task in tasks if task not in called]
+    first: LogEntry | None = None
+    for kind, title in _kinds(draft, bool(done)):
+        entry = LogEntry(item_id=item.id, on=draft.on, kind=kind, title=title, person_id=person_id(session, draft.by))
+        if first is None:
+            first = entry
+            entry.note, entry.component, entry.downtime_hours = draft.note, draft.component, draft.downtime
+            entry.import_key = draft.import_key
+        if kind == "top-up" and draft.top_up is not None:
+            entry.litres, entry.litres_unit = draft.top_up.value, draft.top_up.unit
+        session.add(entry)
+        session.flush()
+        logged.entries.append((entry.id, kind))
+        if kind == "defect" and draft.follow_up:
+            _raise_follow_ups(session, item, draft, entry.id, called, logged)
+    assert first is not None
+    for name, quantity in draft.part:
+        session.add(LogPart(entry_id=first.id, name=name, quantity=quantity))
+    store_figures(session, item, first, draft.at)
+    close_tasks(session, item, first, done, part_done=draft.part_done, logged=logged)
+    return logged
+
+
+def refuse_future(on: date, today: date) -> None:
+    """Refuse a day after the day the program works on."""
+    if on > today:
+        raise Refused(f"{on} has not come yet, today counts as {today}", "give an earlier --on, or a later --as-of")
+
+
+def store_figures(session: "Session", item: FoundItem, entry: LogEntry, figures: Sequence[Figure]) -> None:
+    """Store the dial figures of an entry as readings that came with it."""
+    meters = find_meters(session.connection(), item.id, entry.on)
+    for figure in figures:
+        meter = pick_meter(meters, figure, item.tag)
+        reading = f"fleetcare reading {item.tag} {figure.value} --on {entry.on} --sure"
+        store_reading(
+            session,
+            item,
+            meter,
+            NewReading(entry.on, figure, entry_id=entry.id),
+            remedy=f"check --at; if it is right, first give {reading}",
+        )
+
+
+def close_tasks(
+    session: "Session", item: FoundItem, entry: LogEntry, task_ids: Sequence[int], *, part_done: bool, logged: Logged
+) -> None:
+    """Store which tasks an entry closes, and what they cover; part-done work closes nothing."""
+    if not task_ids:
+        return
+    facts = item_facts(session.connection(), entry.on, [item.id])[0]
+    tasks = {task.id: task for task in facts.tasks}
+    covers = {task.id: task.version_on(entry.on).covers for task in facts.tasks}
+    for task_id in dict.fromkeys(task_ids):
+        task = tasks[task_id]
+        version = task.version_on(entry.on)
+        if part_done:
+            session.add(LogTask(entry_id=entry.id, task_id=task_id, part_done=True))
+            logged.part_done.append(task.name)
+            continue
+        if version.needs_sheet:
+            raise Refused(
+                f"{task.name} closes only with its {version.needs_sheet} sheet",
+                "give --part-done to keep a note of the work until the sheet is there",
+            )
+        work = _preview(facts, task, version, entry)
+        row = LogTask(entry_id=entry.id, task_id=task_id, served_period=work.served)
+        session.add(row)
+        session.flush()
+        logged.closed.append(task.name)
+        if work.note:
+            logged.notes.append(_say_note(task, work))
+        _cover(session, facts, tasks, closure(covers, task_id), [*task_ids], entry, row, logged)
+    session.flush()
+
+
+def _cover(
+    session: "Session",
+    facts: ItemFacts,
+    tasks: dict[int, Task],
+    covered: Sequence[int],
+    named: list[int],
+    entry: LogEntry,
+    big: LogTask,
+    logged: Logged,
+) -> None:
+    """Log the small jobs a big one does along with it, save those with a sheet or outside their window."""
+    for task_id in covered:
+        task = tasks.get(task_id)
+        if task is None or task_id in named or task.removed_on is not None:
+            continue
+        version = task.version_on(entry.on)
+        if version.on_condition:
+            continue
+        work = _preview(facts, task, version, entry)
+        if version.needs_sheet:
+            logged.notes.append(f"{task.name} stays open: it closes only with its {version.needs_sheet} sheet")
+        elif not work.counted:
+            logged.notes.append(f"{task.name} stays open: {work.note}")
+        else:
+            session.add(LogTask(entry_id=entry.id, task_id=task_id, covered_by_id=big.id, served_period=work.served))
+            named.append(task_id)
+            logged.covered.append((task.name, tasks[big.task_id].name))
+    session.flush()
+
+
+def _preview(facts: ItemFacts, task: Task, version: Version, entry: LogEntry) -> PastWork:
+    """Say what an entry will do to a task, before it is stored. Refuses work without a figure the task needs."""
+    lives = entry_lives(facts.counters, own_readings(facts.counters), entry.id, entry.on)
+    for trigger in version.counted:
+        if trigger.kind in facts.counters and trigger.kind not in lives:
+            raise Refused(
+                f"{task.name} counts {trigger.kind}, and no reading of {facts.item.tag} lies on or before {entry.on}",
+                "give the dial figure with --at",
+            )
+    done = Done(entry.id, entry.id, entry.on, lives)
+    entries = tuple(sorted((*facts.done.get(task.id, ()), done), key=lambda one: (one.on, one.number)))
+    past = replay(replace(facts, done={**facts.done, task.id: entries}), task).past
+    return next(work for work in past if work.number == entry.id)
+
+
+def _say_note(task: Task, work: PastWork) -> str:
+    if work.counted:
+        return f"{task.name}: {work.note}; the next period stays open"
+    return f"{task.name} stays open: {work.note}, so this work does not count"
+
+
+def _kinds(draft: LogDraft, has_tasks: bool) -> list[tuple[str, str]]:
+    """Give the entries a draft asks for, as kind and title, in the order stored."""
+    kinds = [
+        ("scheduled", "") if has_tasks else None,
+        ("repair", draft.repair) if draft.repair else None,
+        ("defect", draft.defect) if draft.defect else None,
+        ("top-up", "") if draft.top_up else None,
+    ]
+    found = [kind for kind in kinds if kind is not None]
+    return found or [("other", "")]
+
+
+def _on_condition(session: "Session", task_ids: Sequence[int]) -> list[int]:
+    """Give those of some tasks whose newest version is on condition."""
+    found = []
+    for task_id in task_ids:
+        versions = session.scalars(
+            select(TaskVersion)
+            .where(col(TaskVersion.task_id) == task_id)
+            .order_by(col(TaskVersion.from_on), col(TaskVersion.id))
+        ).all()
+        if versions[-1].on_condition:
+            found.append(task_id)
+    return found
+
+
+def _raise_follow_ups(
+    session: "Session", item: FoundItem, draft: LogDraft, entry_id: int, called: Sequence[int], logged: Logged
+) -> None:
+    """Call the on-condition tasks named, or else raise a follow-up of its own from the defect."""
+    assert draft.defect is not None
+    due_on = draft.until or draft.on
+    for task_id in called or [_follow_up_task(session, item, draft.defect)]:
+        session.add(TaskCall(task_id=task_id, entry_id=entry_id, on=draft.on, due_on=due_on, why=draft.defect))
+        logged.raised.append(f"{session.get_one(TaskRow, task_id).name}, due {due_on}")
+    session.flush()
+
+
+def _follow_up_task(session: "Session", item: FoundItem, defect: str) -> int:
+    """Give the task that stands for a defect's follow-up, made where there is none of that name."""
+    rows = session.scalars(select(TaskRow).where(col(TaskRow.item_id) == item.id, col(TaskRow.removed_on).is_(None)))
+    taken = {row.name_key: row.id for row in rows}
+    name = defect
+    while name.casefold() in taken and not _on_condition(session, [taken[name.casefold()]]):
+        name = f"{name} (follow-up)"
+    if name.casefold() in taken:
+        return taken[name.casefold()]
+    row = TaskRow(item_id=item.id, name=name, name_key=name.casefold())
+    session.add(row)
+    session.flush()
+    session.add(
+        TaskVersion(task_id=row.id, from_on=date.min, combine=Combine.FIRST, on_condition=True, work="follow-up")
+    )
+    session.flush()
+    return row.id

@@ -1,0 +1,294 @@
+"""Write down what a meter shows: held against its past, explained, doubted, voided, restored."""
+
+from collections.abc import Sequence
+from dataclasses import dataclass, replace
+from datetime import date
+from decimal import Decimal
+from typing import TYPE_CHECKING
+
+from sqlalchemy import select
+from sqlmodel import col
+
+from fleetcare.db.tables import Meter, MeterFit, Reading, ReadingMark
+from fleetcare.domain import meters as facts
+from fleetcare.domain.meters import LifeReading
+from fleetcare.domain.quantities import BASE_UNIT, Figure, Kind, from_base, plain, to_base
+from fleetcare.drafts.work import ReadingDraft
+from fleetcare.errors import Refused
+from fleetcare.operations.find import FoundItem, FoundMeter, find_item, find_meters, pick_meter
+from fleetcare.operations.load import load_counters
+from fleetcare.operations.names import person_id
+from fleetcare.operations.settings import cap_per_day
+from fleetcare.rules.meters import CounterHistory, counter_history
+from fleetcare.rules.readings import breaks_rule, plausible_chain
+
+if TYPE_CHECKING:
+    from sqlalchemy.orm import Session
+
+_EXPLAIN = "check it; if it is right give --sure, or explain it with --rolled-over or --replaced OLD_LAST NEW_FIRST"
+
+
+@dataclass(frozen=True, slots=True)
+class NewReading:
+    """A reading about to be stored, not yet held against the past."""
+
+    on: date
+    figure: Figure
+    rolled_over: bool = False
+    note: str = ""
+    by: str | None = None
+    entry_id: int | None = None
+    import_key: str | None = None
+
+
+@dataclass(frozen=True, slots=True)
+class Collision:
+    """Why the new reading at `place` cannot be true together with its neighbour."""
+
+    place: int
+    why: str
+    neighbour: LifeReading
+
+
+@dataclass(frozen=True, slots=True)
+class Recorded:
+    """What came of a reading: its id, and the ids of readings now suspect because it was taken for sure."""
+
+    id: int
+    suspects: tuple[int, ...] = ()
+    is_new: bool = True
+
+
+def record_reading(session: "Session", draft: ReadingDraft) -> Recorded:
+    """Store a reading. Refuses one that breaks with the meter's past, unless explained or sure."""
+    item = find_item(session.connection(), draft.tag)
+    meters = find_meters(session.connection(), item.id, draft.on)
+    meter = pick_meter(meters, draft.value, item.tag, draft.meter)
+    if draft.replaced is not None:
+        meter = _replace_meter(session, item, meter, draft)
+    new = NewReading(draft.on, draft.value, draft.rolled_over, draft.note, draft.by, import_key=draft.import_key)
+    if draft.rolled_over:
+        _check_rollover(session, item, meter, new)
+    return store_reading(session, item, meter, new, sure=draft.sure)
+
+
+def store_reading(
+    session: "Session",
+    item: FoundItem,
+    meter: FoundMeter,
+    new: NewReading,
+    *,
+    sure: bool = False,
+    remedy: str = _EXPLAIN,
+) -> Recorded:
+    """Store one reading of a meter, or find the one that says the same already."""
+    trial, collisions = hold_against_past(session, item, meter, [new])
+    if collisions and not sure:
+        raise Refused(say_collision(item, meter, new, collisions[0]), remedy)
+    known = _same_reading(session, meter, new)
+    if known is not None:
+        return Recorded(known, is_new=False)
+    reading_id = insert_reading(session, meter, new)
+    suspects = _doubt_what_falls_off(session, meter, trial, new.on) if collisions else ()
+    return Recorded(reading_id, suspects)
+
+
+def insert_reading(session: "Session", meter: FoundMeter, new: NewReading) -> int:
+    """Store a reading as entered, unchecked, and give its id."""
+    row = Reading(
+        meter_id=meter.id,
+        on=new.on,
+        value=new.figure.value,
+        unit=new.figure.unit or meter.unit,
+        rolled_over=new.rolled_over,
+        entry_id=new.entry_id,
+        note=new.note,
+        person_id=person_id(session, new.by),
+        import_key=new.import_key,
+    )
+    session.add(row)
+    session.flush()
+    return row.id
+
+
+def hold_against_past(
+    session: "Session", item: FoundItem, meter: FoundMeter, new: Sequence[NewReading]
+) -> tuple[CounterHistory, list[Collision]]:
+    """See a meter's readings with new ones among them, and what collides with its neighbour in time.
+
+    In what comes back the new readings have the ids -1, -2, ... in the order given. Refuses a day on
+    which the meter did not count.
+    """
+    connection = session.connection()
+    history = load_counters(connection, [meter.owner_id], date.max)[meter.owner_id][meter.kind]
+    added = tuple(
+        facts.Reading(-1 - place, meter.id, one.on, _dial(one.figure, meter), one.rolled_over, one.entry_id)
+        for place, one in enumerate(new)
+    )
+    for one, reading in zip(new, added, strict=True):
+        if history.life_at(reading.value, one.on) is None:
+            raise Refused(
+                f"the {meter.kind} meter of {item.tag} did not count on {one.on}", "check the day, or edit --in-service"
+            )
+    counter = history.counter
+    trial = counter_history(replace(counter, readings=(*counter.readings, *added)), date.max)
+    cap = cap_per_day(connection, meter.kind)
+    collisions = []
+    for earlier, later in zip(trial.readings, trial.readings[1:], strict=False):
+        if earlier.reading.id >= 0 and later.reading.id >= 0:
+            continue
+        why = breaks_rule((earlier.on, earlier.metered), (later.on, later.metered), cap, BASE_UNIT[meter.kind])
+        if why is not None:
+            place, neighbour = _blamed(trial, earlier, later, cap)
+            collisions.append(Collision(place, why, neighbour))
+    return trial, collisions
+
+
+def say_collision(item: FoundItem, meter: FoundMeter, new: NewReading, collision: Collision) -> str:
+    """Say which stored reading a new one collides with, and how."""
+    other = collision.neighbour.reading
+    what = f"reading {other.id}" if other.id >= 0 else "another line"
+    return (
+        f"{_shown(new.figure, meter)} on {new.on} does not fit {what} of {item.tag}"
+        f" ({plain(other.value)} {meter.unit} on {other.on}): {collision.why}"
+    )
+
+
+def void_reading(session: "Session", reading_id: int, why: str, on: date) -> FoundItem:
+    """Void a reading, with a reason; it counts for nothing from now on. Gives whose meter it was."""
+    row = _reading(session, reading_id)
+    if _mark_of(session, reading_id) == "void":
+        raise Refused(f"reading {reading_id} is voided already", f"bring it back with --restore {reading_id}")
+    session.add(ReadingMark(reading_id=row.id, mark="void", why=why, on=on))
+    session.flush()
+    return _owner(session, row)
+
+
+def restore_reading(session: "Session", reading_id: int, on: date, *, sure: bool = False) -> tuple[FoundItem, Recorded]:
+    """Let a suspect or voided reading count again. Refuses one that breaks with the meter's past, unless sure."""
+    row = _reading(session, reading_id)
+    if _mark_of(session, reading_id) not in {"suspect", "void"}:
+        raise Refused(f"reading {reading_id} counts already", "nothing needs to be done")
+    item = _owner(session, row)
+    owner = session.get_one(Meter, row.meter_id)
+    meter = FoundMeter(owner.id, Kind(owner.kind), owner.unit, owner.item_id)
+    again = NewReading(row.on, Figure(row.value, row.unit), row.rolled_over)
+    trial, collisions = hold_against_past(session, item, meter, [again])
+    if collisions and not sure:
+        raise Refused(say_collision(item, meter, again, collisions[0]), "void that one first, or give --sure")
+    session.add(ReadingMark(reading_id=row.id, mark="restored", on=on))
+    session.flush()
+    suspects = _doubt_what_falls_off(session, meter, trial, on) if collisions else ()
+    return item, Recorded(row.id, suspects)
+
+
+def _blamed(trial: CounterHistory, earlier: LifeReading, later: LifeReading, cap: Decimal) -> tuple[int, LifeReading]:
+    """Say which new reading of a pair is at fault: the only new one, else the one off the longest plausible chain."""
+    if earlier.reading.id >= 0:
+        return -1 - later.reading.id, earlier
+    if later.reading.id >= 0:
+        return -1 - earlier.reading.id, later
+    kept = plausible_chain([(r.on, r.metered) for r in trial.readings], cap)
+    if trial.readings.index(earlier) in kept:
+        return -1 - later.reading.id, earlier
+    return -1 - earlier.reading.id, later
+
+
+def _doubt_what_falls_off(session: "Session", meter: FoundMeter, trial: CounterHistory, on: date) -> tuple[int, ...]:
+    """Mark as suspect what is not on the longest plausible chain that holds the new reading."""
+    cap = cap_per_day(session.connection(), meter.kind)
+    figures = [(r.on, r.metered) for r in trial.readings]
+    holding = next(place for place, r in enumerate(trial.readings) if r.reading.id < 0)
+    kept = plausible_chain(figures, cap, holding)
+    fallen = tuple(r.reading.id for place, r in enumerate(trial.readings) if place not in kept)
+    for reading_id in fallen:
+        session.add(ReadingMark(reading_id=reading_id, mark="suspect", why="a later reading was taken for sure", on=on))
+    session.flush()
+    return fallen
+
+
+def _check_rollover(session: "Session", item: FoundItem, meter: FoundMeter, new: NewReading) -> None:
+    row = session.get_one(Meter, meter.id)
+    if not row.digits:
+        raise Refused(
+            f"the digits of the {meter.kind} meter of {item.tag} are not known",
+            f"give them first: fleetcare engine edit {item.tag} --meter-digits {meter.kind}:5.1",
+        )
+    if _dial(new.figure, meter) >= Decimal(10) ** row.digits:
+        raise Refused(f"{new.figure} does not fit on {row.digits} digits", "check the figure")
+
+
+def _replace_meter(session: "Session", item: FoundItem, old: FoundMeter, draft: ReadingDraft) -> FoundMeter:
+    """End the old meter for everybody it counts for, and begin the new one on the same day."""
+    assert draft.replaced is not None
+    last, first = draft.replaced
+    for figure in (last, first, *((draft.unmetered,) if draft.unmetered else ())):
+        if figure.kind not in {None, old.kind}:
+            raise Refused(f"{figure} is not a figure of the {old.kind} meter", "give it in the meter's unit")
+    store_reading(
+        session,
+        item,
+        old,
+        NewReading(draft.on, last, note="last figure of a replaced meter", by=draft.by),
+        remedy="check OLD_LAST, or void the reading it collides with",
+    )
+    row = session.get_one(Meter, old.id)
+    new = Meter(item_id=row.item_id, kind=row.kind, unit=row.unit, digits=row.digits, decimals=row.decimals)
+    session.add(new)
+    session.flush()
+    fits = session.scalars(
+        select(MeterFit)
+        .where(col(MeterFit.meter_id) == old.id, col(MeterFit.to_on).is_(None))
+        .order_by(col(MeterFit.id))
+    ).all()
+    for fit in fits:
+        fit.to_on, fit.last = draft.on, _dial(last, old)
+        fit.unmetered = _dial(draft.unmetered, old) if draft.unmetered else Decimal(0)
+        session.add(MeterFit(meter_id=new.id, item_id=fit.item_id, from_on=draft.on, first=_dial(first, old)))
+    session.flush()
+    return FoundMeter(new.id, old.kind, old.unit, old.owner_id)
+
+
+def _same_reading(session: "Session", meter: FoundMeter, new: NewReading) -> int | None:
+    """Find an accepted reading of the same day and figure; a log entry's own reading is stored all the same."""
+    if new.entry_id is not None:
+        return None
+    history = load_counters(session.connection(), [meter.owner_id], date.max)[meter.owner_id][meter.kind]
+    dial = _dial(new.figure, meter)
+    for reading in history.counter.readings:
+        same = (reading.meter_id, reading.on, reading.value) == (meter.id, new.on, dial)
+        if same and reading.accepted and reading.rolled_over == new.rolled_over:
+            return reading.id
+    return None
+
+
+def _dial(figure: Figure, meter: FoundMeter) -> Decimal:
+    """Give a figure in the meter's own unit."""
+    if figure.unit in {None, meter.unit}:
+        return figure.value
+    return from_base(to_base(figure.value, figure.unit), meter.unit)
+
+
+def _shown(figure: Figure, meter: FoundMeter) -> str:
+    return f"{plain(figure.value)} {figure.unit or meter.unit}"
+
+
+def _reading(session: "Session", reading_id: int) -> Reading:
+    row = session.get(Reading, reading_id)
+    if row is None:
+        raise Refused(f"there is no reading {reading_id}", "see fleetcare show TAG for the numbers of its readings")
+    return row
+
+
+def _mark_of(session: "Session", reading_id: int) -> str | None:
+    marks = session.scalars(
+        select(ReadingMark).where(col(ReadingMark.reading_id) == reading_id).order_by(col(ReadingMark.id))
+    ).all()
+    return marks[-1].mark if marks else None
+
+
+def _owner(session: "Session", row: Reading) -> FoundItem:
+    from fleetcare.db.tables import Item
+
+    item = session.get_one(Item, session.get_one(Meter, row.meter_id).item_id)
+    return FoundItem(item.id, item.tag, item.is_engine)

@@ -1,0 +1,254 @@
+"""Add, edit and remove tasks; a change is a new version in force from a day."""
+
+from collections.abc import Mapping, Sequence
+from datetime import date
+from decimal import Decimal
+from typing import TYPE_CHECKING, Any
+
+from sqlalchemy import select
+from sqlmodel import col
+
+from fleetcare.db.tables import OriginFigure, Task, TaskCover, TaskOrigin, TaskPart, TaskTrigger, TaskVersion
+from fleetcare.domain.quantities import Amount, Figure, Kind, Span, parse_interval, plain
+from fleetcare.drafts.reading_in import read_draft
+from fleetcare.drafts.tasks import TaskDraft, TriggerDraft, kind_of
+from fleetcare.errors import Refused
+from fleetcare.operations.find import FoundItem, find_meters, find_task, pick_meter
+from fleetcare.operations.rows import fetch
+from fleetcare.rules.due.covering import find_cycle
+
+if TYPE_CHECKING:
+    from sqlalchemy.orm import Session
+
+_FLAGS = ("law", "insurer", "once", "on_condition", "pause_while_laid_up")
+_BOUND = ("every", "first", "ahead", "grace")
+
+
+def add_task(session: "Session", item: FoundItem, draft: TaskDraft, today: date) -> int:
+    """Add a task to an item and give its id. Refuses a name the item has already, and a cycle in covering."""
+    key = draft.name.casefold()
+    if key in _names(session, item).values():
+        raise Refused(
+            f"{item.tag} has a task {draft.name!r} already", "choose another name, or use fleetcare task edit"
+        )
+    row = Task(item_id=item.id, name=draft.name, name_key=key)
+    session.add(row)
+    session.flush()
+    # The first version holds on every day, whenever it was typed.
+    _add_version(session, item, row.id, draft, date.min)
+    if draft.last_done:
+        set_last_done(session, item, row.id, draft.last_done, today)
+    return row.id
+
+
+def edit_task(
+    session: "Session",
+    item: FoundItem,
+    name: str,
+    changes: Mapping[str, object],
+    without: Sequence[Kind],
+    on: date,
+    today: date,
+) -> int:
+    """Make a new version of a task from a day on: what is given changes, what is left out stays.
+
+    An interval given replaces the one of its kind; `without` drops the intervals of some kinds.
+    """
+    task_id = find_task(session.connection(), item, name)
+    stored = _stored(session, task_id, on)
+    merged: dict[str, object] = {**stored, **{key: value for key, value in changes.items() if key not in _BOUND}}
+    for field in _BOUND:
+        merged[field] = _merged(stored[field], changes.get(field), without)
+    merged["name"] = name
+    draft = read_draft(TaskDraft, merged, lambda field: "--" + field.replace("_", "-"))
+    _add_version(session, item, task_id, draft, on)
+    if draft.last_done:
+        set_last_done(session, item, task_id, draft.last_done, today)
+    return task_id
+
+
+def remove_task(session: "Session", item: FoundItem, name: str, on: date) -> int:
+    """End a task from a day on; its history stays."""
+    task_id = find_task(session.connection(), item, name)
+    session.get_one(Task, task_id).removed_on = on
+    session.flush()
+    return task_id
+
+
+def set_start(session: "Session", task_id: int, *, as_new: bool) -> None:
+    """Let a task count from the item's start, or from nothing until somebody says when it was done."""
+    session.add(TaskOrigin(task_id=task_id, as_new=as_new))
+    session.flush()
+
+
+def set_last_done(
+    session: "Session", item: FoundItem, task_id: int, last_done: Sequence[date | Figure], today: date
+) -> None:
+    """Store when a task was last done before the log began: a day, a dial figure, or both."""
+    days = [given for given in last_done if isinstance(given, date)]
+    if len(days) > 1:
+        raise Refused("--last-done names two days", "give one")
+    on = days[0] if days else None
+    if on is not None and on > today:
+        raise Refused(f"--last-done {on} has not come yet", f"give a day up to {today}")
+    origin = TaskOrigin(task_id=task_id, on=on)
+    session.add(origin)
+    session.flush()
+    meters = find_meters(session.connection(), item.id, on or today)
+    for figure in last_done:
+        if isinstance(figure, Figure):
+            meter = pick_meter(meters, figure, item.tag)
+            session.add(
+                OriginFigure(origin_id=origin.id, meter_id=meter.id, value=figure.value, unit=figure.unit or meter.unit)
+            )
+    session.flush()
+
+
+def _add_version(session: "Session", item: FoundItem, task_id: int, draft: TaskDraft, from_on: date) -> None:
+    version = TaskVersion(
+        task_id=task_id,
+        from_on=from_on,
+        combine=draft.combine,
+        anchor=draft.anchor,
+        not_later_than=_compact(draft.not_later_than) if draft.not_later_than else "",
+        needs_sheet=draft.needs_sheet or "",
+        deferrable=draft.is_deferrable,
+        work=draft.work,
+        labour_hours=draft.labour,
+        caution=draft.caution,
+        source=draft.source,
+        **{flag: getattr(draft, flag) for flag in _FLAGS},
+    )
+    session.add(version)
+    session.flush()
+    meters = {meter.kind: meter.unit for meter in find_meters(session.connection(), item.id, date.max)}
+    for place, trigger in enumerate(draft.triggers()):
+        session.add(_trigger_row(version.id, place, trigger, meters))
+    for name, quantity in draft.part:
+        session.add(TaskPart(version_id=version.id, name=name, quantity=quantity))
+    for covered in draft.covers:
+        session.add(TaskCover(version_id=version.id, covered_id=find_task(session.connection(), item, covered)))
+    session.flush()
+    _refuse_cycle(session, item, task_id)
+
+
+def _trigger_row(version_id: int, place: int, trigger: TriggerDraft, meters: Mapping[Kind, str]) -> TaskTrigger:
+    row = TaskTrigger(
+        version_id=version_id,
+        place=place,
+        kind=trigger.kind,
+        once_each=trigger.once_each or "",
+        window_days=trigger.window_days,
+        month_end=trigger.month_end,
+    )
+    for field in _BOUND:
+        value: Amount | Span | None = getattr(trigger, field)
+        if value is not None:
+            number, unit = _entered(value)
+            setattr(row, field, number)
+            setattr(row, f"{field}_unit", unit)
+    origin = trigger.grid_origin
+    if isinstance(origin, Figure):
+        row.grid_origin, row.grid_unit = plain(origin.value), origin.unit or meters.get(trigger.kind, "")
+    elif origin is not None:
+        row.grid_origin = origin.isoformat()
+    return row
+
+
+def _refuse_cycle(session: "Session", item: FoundItem, task_id: int) -> None:
+    """Refuse covering that comes back to where it began, naming the way round."""
+    rows = fetch(
+        session.connection(),
+        "select version.task_id, cover.covered_id from task_cover cover"
+        " join task_version version on version.id = cover.version_id join task on task.id = version.task_id"
+        " where task.item_id = :item and task.removed_on is null"
+        " and version.id = (select max(newest.id) from task_version newest where newest.task_id = task.id)",
+        item=item.id,
+    )
+    covers: dict[int, list[int]] = {}
+    for covering, covered in rows:
+        covers.setdefault(covering, []).append(covered)
+    way = find_cycle(covers, task_id)
+    if way:
+        names = {row.id: row.name for row in session.scalars(select(Task).where(col(Task.item_id) == item.id))}
+        raise Refused(
+            f"covering goes in a circle: {' covers '.join(names[step] for step in way)}",
+            "leave out one of the --covers",
+        )
+
+
+def _names(session: "Session", item: FoundItem) -> dict[int, str]:
+    rows = session.scalars(select(Task).where(col(Task.item_id) == item.id, col(Task.removed_on).is_(None)))
+    return {row.id: row.name_key for row in rows}
+
+
+def _stored(session: "Session", task_id: int, on: date) -> dict[str, Any]:
+    """Give the version in force on a day as the values of a draft."""
+    versions = session.scalars(
+        select(TaskVersion)
+        .where(col(TaskVersion.task_id) == task_id, col(TaskVersion.from_on) <= on)
+        .order_by(col(TaskVersion.from_on), col(TaskVersion.id))
+    ).all()
+    version = versions[-1]
+    triggers = session.scalars(
+        select(TaskTrigger).where(col(TaskTrigger.version_id) == version.id).order_by(col(TaskTrigger.place))
+    ).all()
+    parts = session.scalars(select(TaskPart).where(col(TaskPart.version_id) == version.id))
+    covered = session.scalars(
+        select(Task)
+        .join(TaskCover, col(TaskCover.covered_id) == Task.id)
+        .where(col(TaskCover.version_id) == version.id, col(Task.removed_on).is_(None))
+    )
+    once_each = next((t.once_each for t in triggers if t.once_each), None)
+    window = next((t.window_days for t in triggers if t.window_days is not None), None)
+    values: dict[str, Any] = {
+        field: [
+            f"{plain(getattr(t, field))}{getattr(t, f'{field}_unit')}"
+            for t in triggers
+            if getattr(t, field) is not None
+        ]
+        for field in _BOUND
+    }
+    return values | {
+        "combine": version.combine,
+        "anchor": version.anchor,
+        "not_later_than": version.not_later_than,
+        "needs_sheet": version.needs_sheet,
+        "deferrable": None
+        if version.deferrable is _default_deferrable(version, once_each)
+        else _yes(version.deferrable),
+        "work": version.work,
+        "labour": version.labour_hours,
+        "caution": version.caution,
+        "source": version.source,
+        "once_each": once_each,
+        "window": f"{window}d" if window is not None else None,
+        "through_month_end": any(t.month_end for t in triggers),
+        "grid_origin": [f"{t.grid_origin}{t.grid_unit}" for t in triggers if t.grid_origin],
+        "part": [f"{part.name}:{plain(part.quantity)}" for part in parts],
+        "covers": [task.name for task in covered],
+        **{flag: getattr(version, flag) for flag in _FLAGS},
+    }
+
+
+def _merged(stored: Sequence[str], given: object, without: Sequence[Kind]) -> list[str]:
+    """Lay intervals over stored ones: each given one replaces the one of its kind."""
+    fresh = [str(text) for text in given] if isinstance(given, list | tuple) else []
+    replaced = {kind_of(parse_interval(text)) for text in fresh} | set(without)
+    return [text for text in stored if kind_of(parse_interval(text)) not in replaced] + fresh
+
+
+def _default_deferrable(version: TaskVersion, once_each: str | None) -> bool:
+    return not (version.law or version.insurer or once_each)
+
+
+def _yes(value: bool) -> str:
+    return "yes" if value else "no"
+
+
+def _entered(value: Amount | Span) -> tuple[Decimal, str]:
+    return (value.value, value.unit) if isinstance(value, Amount) else (Decimal(value.count), value.unit)
+
+
+def _compact(span: Span) -> str:
+    return f"{span.count}{span.unit}"
