@@ -8,7 +8,7 @@ from typing import Any, NoReturn, TypeAlias, TypeVar
 
 from fleetcare.cli import output
 from fleetcare.domain.days import parse_day
-from fleetcare.errors import Misread
+from fleetcare.errors import FleetError, Misread
 
 Value = TypeVar("Value")
 
@@ -50,7 +50,7 @@ def typed(parse: Callable[[str], Value]) -> Callable[[str], Value]:
     def convert(text: str) -> Value:
         try:
             return parse(text)
-        except Misread as error:
+        except FleetError as error:
             raise argparse.ArgumentTypeError(str(error)) from None
 
     return convert
