@@ -3,11 +3,19 @@
 from collections.abc import Callable, Sequence
 
 from fleetcare import __version__
-from fleetcare.cli import calc, output
+from fleetcare.cli import calc, defer, due, items, log, output, readings, tasks
 from fleetcare.cli.parser import CommandParser, Commands
 from fleetcare.errors import FleetError, Misread
 
-GROUPS: tuple[Callable[[Commands], None], ...] = (calc.add_commands,)
+GROUPS: tuple[Callable[[Commands], None], ...] = (
+    due.add_commands,
+    items.add_commands,
+    tasks.add_commands,
+    readings.add_commands,
+    log.add_commands,
+    defer.add_commands,
+    calc.add_commands,
+)
 
 
 def build_parser() -> CommandParser:

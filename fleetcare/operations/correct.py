@@ -56,11 +56,21 @@ def correct_entry(session: "Session", draft: CorrectionDraft, today: date) -> Lo
     return logged
 
 
+def tag_of_entry(session: "Session", number: int) -> str:
+    """Give the tag of whose entry a number is; refuses a number that is no entry."""
+    return session.get_one(Item, _entry(session, number).item_id).tag
+
+
+def _entry(session: "Session", number: int) -> LogEntry:
+    entry = session.get(LogEntry, number)
+    if entry is None:
+        raise Refused(f"there is no entry {number}", "see fleetcare show TAG for the numbers of its entries")
+    return entry
+
+
 def _current(session: "Session", number: int) -> LogEntry:
     """Give an entry that is neither corrected nor void; refuse any other, naming the one that stands."""
-    old = session.get(LogEntry, number)
-    if old is None:
-        raise Refused(f"there is no entry {number}", "see fleetcare show TAG for the numbers of its entries")
+    old = _entry(session, number)
     later = session.scalars(select(LogEntry).where(col(LogEntry.supersedes_id) == number)).one_or_none()
     if later is not None:
         raise Refused(f"entry {number} was superseded by entry {later.id}", f"correct entry {later.id} instead")

@@ -9,7 +9,7 @@ from typing import TYPE_CHECKING
 from sqlalchemy import select
 from sqlmodel import col
 
-from fleetcare.db.tables import Meter, MeterFit, Reading, ReadingMark
+from fleetcare.db.tables import Item, Meter, MeterFit, Reading, ReadingMark
 from fleetcare.domain import meters as facts
 from fleetcare.domain.meters import LifeReading
 from fleetcare.domain.quantities import BASE_UNIT, Figure, Kind, from_base, plain, to_base
@@ -154,17 +154,21 @@ def say_collision(item: FoundItem, meter: FoundMeter, new: NewReading, collision
     )
 
 
-def void_reading(session: "Session", reading_id: int, why: str, on: date) -> FoundItem:
-    """Void a reading, with a reason; it counts for nothing from now on. Gives whose meter it was."""
+def tag_of_reading(session: "Session", reading_id: int) -> str:
+    """Give the tag of whose meter a reading was read off; refuses a number that is no reading."""
+    return _owner(session, _reading(session, reading_id)).tag
+
+
+def void_reading(session: "Session", reading_id: int, why: str, on: date) -> None:
+    """Void a reading, with a reason; it counts for nothing from now on."""
     row = _reading(session, reading_id)
     if _mark_of(session, reading_id) == "void":
         raise Refused(f"reading {reading_id} is voided already", f"bring it back with --restore {reading_id}")
     session.add(ReadingMark(reading_id=row.id, mark="void", why=why, on=on))
     session.flush()
-    return _owner(session, row)
 
 
-def restore_reading(session: "Session", reading_id: int, on: date, *, sure: bool = False) -> tuple[FoundItem, Recorded]:
+def restore_reading(session: "Session", reading_id: int, on: date, *, sure: bool = False) -> Recorded:
     """Let a suspect or voided reading count again. Refuses one that breaks with the meter's past, unless sure."""
     row = _reading(session, reading_id)
     if _mark_of(session, reading_id) not in {"suspect", "void"}:
@@ -179,7 +183,7 @@ def restore_reading(session: "Session", reading_id: int, on: date, *, sure: bool
     session.add(ReadingMark(reading_id=row.id, mark="restored", on=on))
     session.flush()
     suspects = _doubt_what_falls_off(session, meter, trial, on) if collisions else ()
-    return item, Recorded(row.id, suspects)
+    return Recorded(row.id, suspects)
 
 
 def _blamed(trial: CounterHistory, earlier: LifeReading, later: LifeReading, cap: Decimal) -> tuple[int, LifeReading]:
@@ -288,7 +292,5 @@ def _mark_of(session: "Session", reading_id: int) -> str | None:
 
 
 def _owner(session: "Session", row: Reading) -> FoundItem:
-    from fleetcare.db.tables import Item
-
     item = session.get_one(Item, session.get_one(Meter, row.meter_id).item_id)
     return FoundItem(item.id, item.tag, item.is_engine)

@@ -1,0 +1,182 @@
+"""`due` and `show`: what is due, and the whole working of it."""
+
+import argparse
+from collections.abc import Sequence
+from typing import TYPE_CHECKING
+
+from fleetcare.cli import output
+from fleetcare.cli.parser import Commands, whole
+from fleetcare.cli.shop import context_of, say_counted, tenth
+from fleetcare.domain.lines import State
+from fleetcare.domain.quantities import plain
+
+if TYPE_CHECKING:
+    from fleetcare.operations.show import ItemPage
+    from fleetcare.rules.due.row import DueRow
+
+_CAUTION = (
+    "Limits and intervals are to be checked against the engine maker's manual, local codes and law;"
+    " work on engines is for competent, where required licensed, people."
+)
+
+
+def add_commands(commands: Commands) -> None:
+    """Add `due` and `show`."""
+    due = commands.add_parser("due", help="what each engine needs next, worst first")
+    due.add_argument("--within", type=whole, metavar="DAYS", help="leave out what is clear for longer than this")
+    due.add_argument("--site", metavar="NAME", help="one site only")
+    due.add_argument("--engine", metavar="TAG", help="one engine or machine only")
+    due.add_argument(
+        "--state",
+        action="append",
+        choices=[state.value for state in State],
+        metavar="STATE",
+        help="one state only; may be repeated",
+    )
+    due.add_argument("--recorded-only", action="store_true", help="no estimates and no forecasts of meters")
+    due.add_argument("--format", choices=("table", "csv", "json"), default="table", help="table, csv or json")
+    due.add_argument("--out", metavar="FILE", help="write to a file instead of the screen")
+    due.set_defaults(run=_due)
+    show = commands.add_parser("show", help="nameplate, meters, lines with their full working")
+    show.add_argument("tag", metavar="TAG")
+    show.add_argument("task", metavar="TASK", nargs="?")
+    show.set_defaults(run=_show)
+
+
+def _due(given: argparse.Namespace) -> None:
+    from fleetcare.operations.due import Filters, due_rows
+
+    context = context_of(given)
+    filters = Filters(
+        days=given.within,
+        site=given.site,
+        engine=given.engine,
+        states=tuple(State(state) for state in given.state or ()),
+        recorded_only=given.recorded_only,
+    )
+    with context.read() as connection:
+        rows = due_rows(connection, context.today(), filters, is_future=context.is_future)
+    text = _RENDER[given.format](rows)
+    if given.format == "table" and given.out is None:
+        output.say(text.rstrip("\n"))
+    else:
+        output.deliver(text, given.out)
+        if given.out is not None:
+            output.say(f"{len(rows)} {'line' if len(rows) == 1 else 'lines'} written to {given.out}")
+
+
+def _csv(rows: "Sequence[DueRow]") -> str:
+    from fleetcare.rules.due.row import COLUMNS
+
+    return output.csv_text(COLUMNS, [[getattr(row, name) for name in COLUMNS] for row in rows])
+
+
+def _json(rows: "Sequence[DueRow]") -> str:
+    from fleetcare.rules.due.row import COLUMNS
+
+    return output.json_text([{name: _null(getattr(row, name)) for name in COLUMNS} for row in rows])
+
+
+def _null(value: object) -> object:
+    return None if value == "" else value
+
+
+def _table(rows: "Sequence[DueRow]") -> str:
+    """Group the rows as a morning needs them; what waits for a return stands apart, and what is only estimated."""
+    groups: list[tuple[str, list[DueRow]]] = []
+    known = [row for row in rows if not row.is_before_return]
+    for state in State:
+        if state is State.UNSET:
+            groups.append(("probably due by estimate", [row for row in known if row.is_probably_due]))
+        groups.append((state.value, [row for row in known if row.state == state and not row.is_probably_due]))
+    groups.append(("before return", [row for row in rows if row.is_before_return]))
+    blocks = [
+        f"{title.upper()} ({len(group)})\n{output.table(_HEADERS, [_cells(row) for row in group])}"
+        for title, group in groups
+        if group
+    ]
+    return "\n\n".join(blocks or ["Nothing is due."]) + f"\n\n{_CAUTION}\n"
+
+
+_HEADERS = ("engine", "site", "task", "due at", "due on", "remaining", "likely", "note")
+
+
+def _cells(row: "DueRow") -> list[str]:
+    remaining = f"{plain(tenth(row.remaining))} {row.unit}" if row.remaining is not None else ""
+    likely = row.likely_date.isoformat() if row.likely_date is not None else ""
+    due_on = row.next_due_on.isoformat() if row.next_due_on is not None else ""
+    return [row.engine, row.site, row.task, say_counted(row), due_on, remaining, likely, "; ".join(_notes(row))]
+
+
+def _notes(row: "DueRow") -> list[str]:
+    notes = []
+    if row.is_before_return:
+        notes.append(row.state)
+    elif row.engine_status not in {"", "in service"}:
+        notes.append(f"{row.engine_status}: not to be run")
+    if row.estimated:
+        notes.append(f"by estimate {row.estimated}")
+    if row.deferred_until:
+        notes.append(f"deferred until {row.deferred_until}")
+    if row.covered_by:
+        notes.append(f"with {row.covered_by}")
+    if row.reason:
+        notes.append(row.reason)
+    return notes
+
+
+_READINGS = ("reading", "on", "shown", "remark")
+_HISTORY = ("entry", "on", "kind", "what", "figures", "by", "remark")
+_READINGS_SHOWN = 10
+_RENDER = {"table": _table, "csv": _csv, "json": _json}
+
+
+def say_before_return(tag: str, rows: "Sequence[DueRow]") -> None:
+    """Print what an engine needs before it runs again."""
+    waiting = [row for row in rows if row.state != State.CLEAR]
+    if not waiting:
+        output.say(f"Nothing needs to be done before {tag} runs again.")
+        return
+    output.say(f"BEFORE RETURN ({len(waiting)})")
+    output.say(output.table(_HEADERS, [_cells(row) for row in waiting]))
+
+
+def _show(given: argparse.Namespace) -> None:
+    from fleetcare.operations.show import item_page, task_working
+
+    context = context_of(given)
+    with context.read() as connection:
+        if given.task is None:
+            page = item_page(connection, given.tag, context.today(), is_future=context.is_future)
+            blocks = _page_blocks(page)
+        else:
+            working, past = task_working(
+                connection, given.tag, given.task, context.today(), is_future=context.is_future
+            )
+            blocks = [("", _labels(working)), ("HISTORY", _labels(past))]
+    for title, text in blocks:
+        if text:
+            output.say(f"{title}\n{text}\n" if title else f"{text}\n")
+    output.say(_CAUTION)
+
+
+def _page_blocks(page: "ItemPage") -> list[tuple[str, str]]:
+    readings = [[line.number, line.on, line.shown, line.remark] for line in page.readings[:_READINGS_SHOWN]]
+    history = [[e.number, e.on, e.kind, e.what, e.figures, e.by, e.remark] for e in page.history]
+    more = len(page.readings) - _READINGS_SHOWN
+    return [
+        ("", _labels(page.nameplate)),
+        ("METERS", _labels(page.meters)),
+        (f"READINGS{f', the newest {_READINGS_SHOWN}' if more > 0 else ''}", _block(_READINGS, readings)),
+        ("LINES", _block(("state", *_HEADERS[2:]), [[row.state, *_cells(row)[2:]] for row in page.rows])),
+        ("LOG", _block(_HISTORY, history)),
+    ]
+
+
+def _block(headers: Sequence[str], rows: Sequence[Sequence[object]]) -> str:
+    return output.table(headers, rows) if rows else ""
+
+
+def _labels(labels: "Sequence[tuple[str, str]]") -> str:
+    wide = max((len(label) for label, _ in labels), default=0)
+    return "\n".join(f"{label:<{wide}}  {text}" for label, text in labels)

@@ -1,0 +1,96 @@
+"""`log` and `correct`: what was done, and what an entry should have said."""
+
+import argparse
+from typing import TYPE_CHECKING
+
+from fleetcare.cli import output
+from fleetcare.cli.parser import CommandParser, Commands, day, whole
+from fleetcare.cli.shop import context_of, option_label, options_of, say_moved
+
+if TYPE_CHECKING:
+    from fleetcare.operations.log import Logged
+
+
+def add_commands(commands: Commands) -> None:
+    """Add `log` and `correct`."""
+    log = commands.add_parser("log", help="write down what was done")
+    log.add_argument("tag", metavar="TAG")
+    log.add_argument("task", metavar="TASK", nargs="*", help="tasks that were done")
+    _add_shared_options(log)
+    log.add_argument("--follow-up", action="store_true", help="raise a follow-up from the defect")
+    log.add_argument("--until", type=day, metavar="DATE", help="last day for the follow-up, else at once")
+    log.add_argument("--part-done", action="store_true", help="done in part: closes nothing")
+    log.add_argument("--part", action="append", metavar="NAME[:N]", help="a part used")
+    log.add_argument("--component", metavar="TEXT", help="what was worked on, such as injector 3")
+    log.add_argument("--downtime", metavar="HOURS", help="time out of service, such as 6h")
+    log.set_defaults(run=_log)
+    correct = commands.add_parser("correct", help="correct or void an entry")
+    correct.add_argument("entry", type=whole, metavar="ENTRY", help="number of the entry")
+    correct.add_argument("--task", action="append", metavar="TASK", help="tasks that were really done")
+    _add_shared_options(correct)
+    correct.add_argument(
+        "--part-done", action=argparse.BooleanOptionalAction, default=None, help="done in part, or not"
+    )
+    correct.add_argument("--void", action="store_true", help="nothing of it is true")
+    correct.add_argument("--why", metavar="TEXT", help="reason")
+    correct.set_defaults(run=_correct)
+
+
+def _add_shared_options(parser: CommandParser) -> None:
+    parser.add_argument("--on", type=day, metavar="DATE", help="day it was done, else the as-of day")
+    parser.add_argument("--at", action="append", metavar="VALUE", help="what the dial showed, such as 1234h")
+    parser.add_argument("--by", metavar="NAME", help="who did it")
+    parser.add_argument("--note", metavar="TEXT", help="anything worth keeping")
+    parser.add_argument("--top-up", metavar="VOLUME", help="oil topped up, such as 8L")
+    parser.add_argument("--repair", metavar="TEXT", help="what was repaired")
+    parser.add_argument("--defect", metavar="TEXT", help="a defect seen")
+
+
+def _log(given: argparse.Namespace) -> None:
+    from fleetcare.drafts.reading_in import read_draft
+    from fleetcare.drafts.work import LogDraft
+    from fleetcare.operations.due import watch_moves
+    from fleetcare.operations.log import record_work
+
+    context = context_of(given)
+    values = options_of(given) | {"on": given.on or context.today()}
+    draft = read_draft(LogDraft, values, option_label)
+    with context.write() as session, watch_moves(session, draft.tag, context.today()) as moves:
+        logged = record_work(session, draft, context.today())
+    _say_logged(logged, f"on {draft.on}")
+    say_moved(moves.moved)
+
+
+def _correct(given: argparse.Namespace) -> None:
+    from fleetcare.drafts.reading_in import read_draft
+    from fleetcare.drafts.work import CorrectionDraft
+    from fleetcare.operations.correct import correct_entry, tag_of_entry
+    from fleetcare.operations.due import watch_moves
+
+    context = context_of(given)
+    values = {
+        name: value for name, value in options_of(given).items() if value not in (None, False) or name == "part_done"
+    }
+    draft = read_draft(CorrectionDraft, values, option_label)
+    with context.write() as session:
+        tag = tag_of_entry(session, draft.entry)
+        with watch_moves(session, tag, context.today()) as moves:
+            logged = correct_entry(session, draft, context.today())
+    _say_logged(logged, f"{'voids' if draft.void else 'corrects'} entry {draft.entry}")
+    say_moved(moves.moved)
+
+
+def _say_logged(logged: "Logged", what: str) -> None:
+    """Say what an entry closed and covered, and what it did not."""
+    for note in logged.notes:
+        output.say(f"Note: {note}.")
+    for number, kind in logged.entries:
+        output.say(f"Entry {number} ({kind}) of {logged.item.tag} {what}.")
+    if logged.closed:
+        output.say(f"Done: {', '.join(logged.closed)}.")
+    for small, big in logged.covered:
+        output.say(f"Done along with {big}: {small}.")
+    for name in logged.part_done:
+        output.say(f"Done in part, still open: {name}.")
+    for raised in logged.raised:
+        output.say(f"Follow-up raised: {raised}.")

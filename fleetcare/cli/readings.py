@@ -1,0 +1,97 @@
+"""`reading`: what a meter shows, or that a reading was wrong."""
+
+import argparse
+
+from fleetcare.cli import output
+from fleetcare.cli.parser import Commands, day, whole
+from fleetcare.cli.shop import context_of, option_label, options_of, say_moved
+from fleetcare.errors import Misread
+
+
+def add_commands(commands: Commands) -> None:
+    """Add `reading`."""
+    reading = commands.add_parser("reading", help="write down what a meter shows")
+    reading.add_argument("tag", metavar="TAG", nargs="?")
+    reading.add_argument("value", metavar="VALUE", nargs="?", help="what the dial shows, such as 1250 or 1250.5h")
+    reading.add_argument("--meter", metavar="KIND", help="hours, distance, fuel or starts, where there are several")
+    reading.add_argument("--on", metavar="DATE", type=day, help="day it was read, else the as-of day")
+    reading.add_argument("--by", metavar="NAME", help="who read it")
+    reading.add_argument("--note", metavar="TEXT", help="anything worth keeping")
+    reading.add_argument(
+        "--replaced",
+        nargs=2,
+        metavar=("OLD_LAST", "NEW_FIRST"),
+        help="a new meter: last figure of the old, first of the new",
+    )
+    reading.add_argument(
+        "--unmetered", metavar="VALUE", help="run between the meters without being counted, such as 150h"
+    )
+    reading.add_argument("--rolled-over", action="store_true", help="the dial went round to 0")
+    reading.add_argument("--sure", action="store_true", help="it is right though it breaks with the past")
+    reading.add_argument("--void", type=whole, metavar="ID", help="this reading was wrong; needs --why")
+    reading.add_argument("--restore", type=whole, metavar="ID", help="this suspect or voided reading was right")
+    reading.add_argument("--why", metavar="TEXT", help="reason for --void")
+    reading.set_defaults(run=_reading)
+
+
+def _reading(given: argparse.Namespace) -> None:
+    if given.void is not None or given.restore is not None:
+        _amend(given)
+    elif given.tag is None or given.value is None:
+        raise Misread("TAG and VALUE are needed", "write it like fleetcare reading P-01 1250")
+    else:
+        _record(given)
+
+
+def _record(given: argparse.Namespace) -> None:
+    from fleetcare.drafts.reading_in import read_draft
+    from fleetcare.drafts.work import ReadingDraft
+    from fleetcare.operations.due import watch_moves
+    from fleetcare.operations.log import refuse_future
+    from fleetcare.operations.readings import record_reading
+
+    if given.why is not None:
+        raise Misread("--why belongs to --void", "use --note for a remark")
+    context = context_of(given)
+    values = options_of(given, "void", "restore", "why") | {"on": given.on or context.today()}
+    draft = read_draft(ReadingDraft, values, option_label)
+    refuse_future(draft.on, context.today())
+    with context.write() as session, watch_moves(session, draft.tag, context.today()) as moves:
+        recorded = record_reading(session, draft)
+    if recorded.is_new:
+        output.say(f"Reading {recorded.id}: {draft.tag} shows {draft.value} on {draft.on}.")
+    else:
+        output.say(f"Nothing new: reading {recorded.id} says the same.")
+    _say_suspects(recorded.suspects)
+    say_moved(moves.moved)
+
+
+def _amend(given: argparse.Namespace) -> None:
+    from fleetcare.operations.due import watch_moves
+    from fleetcare.operations.readings import restore_reading, tag_of_reading, void_reading
+
+    others = (given.tag, given.value, given.meter, given.on, given.by, given.note, given.replaced, given.unmetered)
+    if any(other is not None for other in others) or given.rolled_over:
+        raise Misread("--void and --restore stand by themselves", "leave the other options out")
+    if given.void is not None and given.restore is not None:
+        raise Misread("--void and --restore contradict each other", "give one")
+    if given.void is not None and not (given.why or "").strip():
+        raise Misread("--void needs a reason", "give --why TEXT")
+    context = context_of(given)
+    suspects: tuple[int, ...] = ()
+    reading_id = given.void if given.void is not None else given.restore
+    with context.write() as session:
+        tag = tag_of_reading(session, reading_id)
+        with watch_moves(session, tag, context.today()) as moves:
+            if given.void is not None:
+                void_reading(session, reading_id, given.why.strip(), context.today())
+            else:
+                suspects = restore_reading(session, reading_id, context.today(), sure=given.sure).suspects
+    output.say(f"Reading {reading_id} of {tag} {'is void' if given.void is not None else 'counts again'}.")
+    _say_suspects(suspects)
+    say_moved(moves.moved)
+
+
+def _say_suspects(suspects: tuple[int, ...]) -> None:
+    for suspect in suspects:
+        output.say(f"Reading {suspect} is suspect now and counts for nothing; --restore {suspect} brings it back.")

@@ -1,0 +1,80 @@
+"""What every command on the shop's database shares: its context, its options as a draft, lines that moved."""
+
+import argparse
+from collections.abc import Mapping, Sequence
+from datetime import date
+from decimal import Decimal
+from typing import TYPE_CHECKING, Any
+
+from fleetcare.cli import output
+from fleetcare.context import Context
+from fleetcare.domain.quantities import plain
+
+if TYPE_CHECKING:
+    from fleetcare.operations.due import Moved
+    from fleetcare.rules.due.row import DueRow
+
+# What parsing leaves beside the options themselves.
+_NOT_OPTIONS = frozenset({"db", "as_of", "run", "json"})
+
+
+def context_of(given: argparse.Namespace) -> Context:
+    """Give the context a command line asks for: its database, and the day it works on."""
+    return Context(getattr(given, "db", None), getattr(given, "as_of", None))
+
+
+def options_of(given: argparse.Namespace, *but: str) -> dict[str, object]:
+    """Give the options a person gave, by name, to read a draft from."""
+    return {name: value for name, value in vars(given).items() if name not in _NOT_OPTIONS and name not in but}
+
+
+def option_label(field: str) -> str:
+    """Name a draft's field as the command line does."""
+    return field.upper() if field in {"tag", "value", "entry", "name"} else "--" + field.replace("_", "-")
+
+
+def say_moved(moves: "Sequence[Moved]") -> None:
+    """Print each line whose due point moved, old and new."""
+    for move in moves:
+        row = move.after or move.before
+        assert row is not None
+        output.say(f"{row.engine}  {row.task}: {say_point(move.before)} -> {say_point(move.after)}")
+
+
+def say_point(row: "DueRow | None") -> str:
+    """Say a line's due point: on the dial first, then its day."""
+    if row is None:
+        return "no line"
+    parts = [say_counted(row), row.next_due_on.isoformat() if row.next_due_on else ""]
+    return " or ".join(part for part in parts if part) or row.state
+
+
+def say_counted(row: "DueRow") -> str:
+    """Say a line's counted point: what the dial shows there, with the life total where it differs."""
+    if row.next_due_at is None:
+        return ""
+    life = f"{plain(tenth(row.next_due_at))} {row.meter_unit}"
+    if row.next_due_dial is None:
+        return f"{life} of life"
+    if row.next_due_dial == row.next_due_at:
+        return life
+    return f"{plain(tenth(row.next_due_dial))} {row.meter_unit} on the dial ({life} of life)"
+
+
+def tenth(value: Decimal) -> Decimal:
+    """Round to the tenth for showing, away from 0 where that would hide a remainder."""
+    rounded = round(value, 1)
+    if rounded == 0 and value != 0:
+        return Decimal("0.1") if value > 0 else Decimal("-0.1")
+    return rounded
+
+
+def today_of(given: argparse.Namespace) -> date:
+    """Give the day a command works on."""
+    return context_of(given).today()
+
+
+def add_options(parser: argparse.ArgumentParser, options: Mapping[str, tuple[str, str]], **settings: Any) -> None:
+    """Add plain options that take one text each: name to (what stands for the value, help)."""
+    for name, (metavar, text) in options.items():
+        parser.add_argument(name, metavar=metavar, help=text, **settings)
