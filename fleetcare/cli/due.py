@@ -66,13 +66,13 @@ def _due(given: argparse.Namespace) -> None:
 
 
 def _csv(rows: "Sequence[DueRow]") -> str:
-    from fleetcare.rules.due.row import COLUMNS
+    from fleetcare.operations.due import COLUMNS
 
     return output.csv_text(COLUMNS, [[getattr(row, name) for name in COLUMNS] for row in rows])
 
 
 def _json(rows: "Sequence[DueRow]") -> str:
-    from fleetcare.rules.due.row import COLUMNS
+    from fleetcare.operations.due import COLUMNS
 
     return output.json_text([{name: _null(getattr(row, name)) for name in COLUMNS} for row in rows])
 

@@ -6,18 +6,19 @@ from dataclasses import dataclass, field
 from datetime import date
 from typing import TYPE_CHECKING
 
-from fleetcare.domain.lines import DueLine, State
+from fleetcare.domain.lines import State
 from fleetcare.errors import Refused
 from fleetcare.operations.find import find_item, find_meters
 from fleetcare.operations.load import item_facts
 from fleetcare.operations.rows import fetch
 from fleetcare.rules.due.due_list import in_order, item_lines, within
-from fleetcare.rules.due.facts import ItemFacts
-from fleetcare.rules.due.row import DueRow, due_row
+from fleetcare.rules.due.row import COLUMNS, DueRow, due_row
 
 if TYPE_CHECKING:
     from sqlalchemy import Connection
     from sqlalchemy.orm import Session
+
+__all__ = ["COLUMNS", "DueRow", "Filters", "Moved", "Moves", "due_rows", "watch_moves"]
 
 
 @dataclass(frozen=True, slots=True)
@@ -65,15 +66,6 @@ def due_rows(
     if wanted.states:
         lines = [line for line in lines if line.state in wanted.states]
     return [due_row(line, found[line.item.id]) for line in in_order(lines)]
-
-
-def item_due(
-    connection: "Connection", tag: str, on: date, *, is_future: bool = False
-) -> tuple[ItemFacts, list[DueLine]]:
-    """Give one item's facts and its lines in order, with their whole working."""
-    item = find_item(connection, tag)
-    facts = item_facts(connection, on, [item.id])[0]
-    return facts, in_order(item_lines(facts, is_future))
 
 
 @contextmanager

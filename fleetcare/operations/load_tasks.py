@@ -62,7 +62,7 @@ def _load_versions(connection: "Connection", task_ids: Sequence[int]) -> dict[in
     rows = fetch(
         connection,
         "select task_id, id, from_on, combine, anchor, not_later_than, needs_sheet, once, on_condition,"
-        " pause_while_laid_up, law, insurer, \"deferrable\", work, labour_hours, caution, source"
+        ' pause_while_laid_up, law, insurer, "deferrable", work, labour_hours, caution, source'
         " from task_version where task_id in :ids order by from_on, id",
         ids=list(task_ids),
     )
