@@ -4,7 +4,7 @@ import itertools
 import os
 import shutil
 import time
-from collections.abc import Callable, Iterator
+from collections.abc import Callable
 from datetime import UTC, date, datetime
 from pathlib import Path
 
@@ -40,7 +40,7 @@ def new_database(tmp_path_factory: pytest.TempPathFactory) -> Path:
 @pytest.fixture
 def db(new_database: Path, tmp_path: Path) -> Path:
     """A database of the test's own, with nothing in it."""
-    return shutil.copy(new_database, tmp_path / "yard.db")
+    return Path(shutil.copy(new_database, tmp_path / "yard.db"))
 
 
 @pytest.fixture
@@ -53,22 +53,3 @@ def counted_uids() -> Callable[[], str]:
     """Give uids u1, u2, ..."""
     numbers = itertools.count(1)
     return lambda: f"u{next(numbers)}"
-
-
-@pytest.fixture
-def guest(tmp_path: Path) -> Iterator[None]:
-    """Be somebody whom file permissions bind: root is not held by them, so for root become nobody.
-
-    The test's own folder is opened to that somebody.
-    """
-    if os.geteuid():
-        yield
-        return
-    shut = [folder for folder in (tmp_path, *tmp_path.parents) if not folder.stat().st_mode & 0o001]
-    for folder in shut:
-        folder.chmod(0o755)
-    os.seteuid(65534)
-    yield
-    os.seteuid(0)
-    for folder in shut:
-        folder.chmod(0o700)

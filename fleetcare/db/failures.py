@@ -56,6 +56,11 @@ def opening(path: Path) -> Iterator[None]:
         raise _of_the_system(error, path) from error
 
 
+def newer(path: Path) -> NoDatabase:
+    """The failure of a file whose tables this program does not know yet."""
+    return NoDatabase(f"{path} was made by a newer fleetcare", "update the program on this computer")
+
+
 def _of_sqlite(error: sqlite3.DatabaseError, path: Path) -> NoDatabase:
     code = getattr(error, "sqlite_errorcode", sqlite3.SQLITE_ERROR) & 0xFF
     complaint, remedy = _COMPLAINTS.get(code, (f"cannot be used ({error})", _BACKUP))

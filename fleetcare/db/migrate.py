@@ -8,6 +8,7 @@ from alembic.script import ScriptDirectory
 from sqlalchemy import Connection, text
 
 import fleetcare
+from fleetcare.db.failures import newer
 from fleetcare.db.session import HEAD, copy, engine, require
 from fleetcare.errors import NoDatabase
 
@@ -38,7 +39,7 @@ def bring_up(path: Path, scripts: Path) -> Path:
     """
     known = {script.revision for script in ScriptDirectory.from_config(config(scripts)).walk_revisions()}
     if require(path) not in known:
-        raise NoDatabase(f"{path} was made by a newer fleetcare", "update the program on this computer")
+        raise newer(path)
     backup = _free_name(path)
     copy(path, backup)
     # A batch rebuild drops the old table, which with foreign keys on would take its children along;

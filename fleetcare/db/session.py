@@ -13,7 +13,7 @@ from typing import TYPE_CHECKING, Any
 
 from sqlalchemy import URL, Connection, Engine, NullPool, create_engine, event, text
 
-from fleetcare.db.failures import opening, using
+from fleetcare.db.failures import newer, opening, using
 from fleetcare.errors import NoDatabase
 
 if TYPE_CHECKING:
@@ -54,19 +54,24 @@ def writing(path: Path, clock: Callable[[], datetime], uids: Callable[[], str]) 
     from fleetcare.db.ledger import keep_ledger
 
     with opening(path):
-        if path.exists() and path.stat().st_size:
+        was_there = path.exists()
+        if path.is_dir() or (was_there and path.stat().st_size):
             current(path)
         session = _locked(path)
     try:
         with using(path), session:
             session.info.update(clock=clock, uids=uids)
             keep_ledger(session)
-            if revision(session.connection()) is None:
+            found = revision(session.connection())
+            if found is None:
                 migrate.run(session.connection())
+            elif found != HEAD:  # somebody upgraded it while this one waited for the lock
+                raise newer(path)
             yield session
             session.commit()
     finally:
-        _drop_if_empty(path)
+        if not was_there:
+            _drop_if_empty(path)
 
 
 def require(path: Path) -> str:
@@ -117,11 +122,15 @@ def engine(path: Path, *, query_only: bool = False, foreign_keys: bool = True) -
         # The driver's own transactions are off: they begin too late, and without the lock.
         uri = f"{path.absolute().as_uri()}?mode=rw"
         connection = sqlite3.connect(uri, uri=True, timeout=PATIENCE, isolation_level=None)
-        connection.execute(f"PRAGMA query_only = {query_only:d}")
-        connection.execute(f"PRAGMA foreign_keys = {foreign_keys:d}")
-        # In rollback-journal mode only EXTRA syncs the folder once the journal is gone, without which
-        # a power cut can bring the journal back and undo what was acknowledged.
-        connection.execute("PRAGMA synchronous = EXTRA")
+        try:
+            connection.execute(f"PRAGMA query_only = {query_only:d}")
+            connection.execute(f"PRAGMA foreign_keys = {foreign_keys:d}")
+            # In rollback-journal mode only EXTRA syncs the folder once the journal is gone, without which
+            # a power cut can bring the journal back and undo what was acknowledged.
+            connection.execute("PRAGMA synchronous = EXTRA")
+        except sqlite3.Error:
+            connection.close()
+            raise
         return connection
 
     made = create_engine(URL.create("sqlite", database=str(path)), creator=connect, poolclass=NullPool)
@@ -139,6 +148,7 @@ def copy(source: Path, target: Path) -> None:
         driver: Any = connection.connection.driver_connection
         with opening(target):
             try:
+                part.touch()  # fails with words for what SQLite only calls unable to open
                 with closing(sqlite3.connect(part)) as out:
                     driver.backup(out)
                 _sync(part)
@@ -165,7 +175,7 @@ def _locked(path: Path) -> "Session":
     from sqlalchemy.orm import Session
 
     while True:
-        path.touch()
+        path.open("ab").close()  # makes it where it is missing, and changes nothing where it is not
         before = path.stat().st_ino
         session = Session(engine(path), expire_on_commit=False)
         try:

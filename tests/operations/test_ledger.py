@@ -14,6 +14,7 @@ from sqlalchemy import insert, text, update
 from fleetcare.context import Context
 from fleetcare.db.chain import Entry, entries, seal
 from fleetcare.db.tables import Fitting, Item, Meter, Reading, Site
+from fleetcare.domain.quantities import Kind
 from fleetcare.errors import Misread
 from fleetcare.operations import upkeep
 from tests.conftest import NOW, counted_uids
@@ -35,7 +36,7 @@ def fill(context: Context) -> None:
         machine = Item(tag="PH-1", tag_key="ph-1", is_engine=False)
         session.add_all([engine, machine])
         session.flush()
-        meter = Meter(item_id=engine.id, kind="hours", unit="h")
+        meter = Meter(item_id=engine.id, kind=Kind.HOURS, unit="h")
         session.add_all([meter, Fitting(engine_id=engine.id, machine_id=machine.id, from_on=date(2024, 1, 10))])
         session.flush()
         session.add_all(
