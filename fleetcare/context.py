@@ -86,10 +86,12 @@ class Context:
 
         A missing file is made, a missing folder only if it is the person's own.
         """
+        from fleetcare.db.failures import opening
         from fleetcare.db.session import writing
 
         if not self._database:
-            _own_folder().mkdir(parents=True, exist_ok=True)
+            with opening(self.path):
+                _own_folder().mkdir(parents=True, exist_ok=True)
         with writing(self.path, self._clock, self._uids) as session:
             yield session
 

@@ -46,9 +46,9 @@ def bring_up(path: Path, scripts: Path) -> Path:
     # the switch does nothing once a transaction is open.
     with engine(path, foreign_keys=False).begin() as connection:
         run(connection, scripts)
-        if orphans := connection.execute(text("PRAGMA foreign_key_check")).all():
+        if orphans := {row.table for row in connection.execute(text("PRAGMA foreign_key_check"))}:
             raise NoDatabase(
-                f"{path} cannot be upgraded: {len(orphans)} rows refer to rows that are not there",
+                f"{path} cannot be upgraded: in {', '.join(sorted(orphans))} something refers to rows that are not there",
                 f"run fleetcare check; nothing was changed, a copy is in {backup.name}",
             )
     return backup

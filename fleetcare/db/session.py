@@ -49,9 +49,7 @@ def writing(path: Path, clock: Callable[[], datetime], uids: Callable[[], str]) 
 
     A missing file is made, and is gone again where nothing was stored. Raises NoDatabase as `reading` does.
     """
-    # Loading the tables is what writing costs and reading must not.
-    from fleetcare.db import migrate
-    from fleetcare.db.ledger import keep_ledger
+    from fleetcare.db.ledger import keep_ledger  # loads the tables, which reading must not pay for
 
     with opening(path):
         was_there = path.exists()
@@ -64,6 +62,8 @@ def writing(path: Path, clock: Callable[[], datetime], uids: Callable[[], str]) 
             keep_ledger(session)
             found = revision(session.connection())
             if found is None:
+                from fleetcare.db import migrate  # as in `current`
+
                 migrate.run(session.connection())
             elif found != HEAD:  # somebody upgraded it while this one waited for the lock
                 raise newer(path)

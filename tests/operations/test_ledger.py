@@ -226,6 +226,18 @@ def test_a_table_that_does_not_belong_is_named(yard: Context, behind: Tamper) ->
     assert problems(yard) == ("the table notes is none of fleetcare's",)
 
 
+def test_a_word_that_is_not_in_its_list_is_found_by_the_database_too(yard: Context, behind: Tamper) -> None:
+    behind("PRAGMA ignore_check_constraints = 1; UPDATE meter SET kind = 'weight'")
+    assert problems(yard) == (
+        "the file is damaged: CHECK constraint failed in meter",
+        "meter 1 is not what ledger entry 4 says: kind is 'weight' and was 'hours'",
+    )
+
+
+def test_a_head_printed_before_anything_was_stored_always_fits(yard: Context) -> None:
+    assert problems(yard, "0:00000000") == ()
+
+
 def test_a_cut_end_is_found_only_against_a_head_that_was_printed(yard: Context, behind: Tamper) -> None:
     head = upkeep.check(yard).head
     behind("DELETE FROM reading WHERE id = 3; DELETE FROM ledger WHERE seq = 7")
