@@ -35,6 +35,7 @@ RANGE_TRIALS, RANGE_SPAN = 6, 730
 RECENT_PRIOR, SEASON_PRIOR, RANGE_PRIOR = (2, 0.35**2), (2, 0.25**2), (3, 0.25**2)
 LARGEST_ERROR = 1.5  # one freak spell is not to make the range endless
 LEAST_SPREAD_WITHOUT_SEASON = 0.30
+SAME = 1e-9  # logs of days closer than this are equal, whatever the unit they were worked out in
 FOUR_IN_FIVE = 1.2815515655446004  # standard normal, 90 % point: a central range of 80 %
 LATENESS = 1.2  # most misses are late: idle spells are longer than hard runs
 NO_LATE_DATE, NO_DATE = 1500, 36525
@@ -61,7 +62,7 @@ class _Trial(NamedTuple):
 
     def error(self, said: float | None) -> float | None:
         """How wrong a word was; None where nothing was said, or where it may still come true."""
-        if said is None or not (self.finished or self.came > said):
+        if said is None or not (self.finished or self.came > said + SAME):
             return None
         return self.came - said
 
@@ -133,7 +134,7 @@ class History:
 
     def _day(self, days: float) -> date:
         """So many days after the last reading; rounded first, so that no last bit decides between two days."""
-        return date.fromordinal(self._curve.last + floor(round(days, 6)))
+        return date.fromordinal(min(self._curve.last + floor(round(days, 6)), date.max.toordinal()))
 
     def _start(self, day: float) -> _Start:
         curve = self._curve
@@ -224,7 +225,8 @@ class History:
         if not self._now.years:
             return recent, Clue("season not known yet", (), 0.0)
         took = self._same_dates(self._now, amount)[::-1]
-        years = ", ".join(str(date.fromordinal(floor(then)).year) for then, _ in reversed(self._now.years))
+        year = date.fromordinal(self._curve.last).year
+        years = ", ".join(str(year - back) for back in range(len(took), 0, -1))
         return recent, Clue(f"same date in {years}", tuple(took), self._season_weight)
 
 

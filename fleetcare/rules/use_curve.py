@@ -4,12 +4,14 @@ from bisect import bisect_left, bisect_right
 from collections.abc import Sequence
 from datetime import date
 from decimal import Decimal
+from itertools import accumulate
 
 
 class UseCurve:
     """Straight lines between life totals: days as ordinals, totals as floats in the base unit.
 
-    `figures` may come in any order; of several on one day the highest counts. They never fall from day to day.
+    `figures` may come in any order; of several on one day the highest counts, and a fall
+    from one day to the next counts as nothing used.
     """
 
     __slots__ = ("begin", "days", "end", "first", "last", "slack", "span", "totals", "used_from")
@@ -17,7 +19,7 @@ class UseCurve:
     def __init__(self, figures: Sequence[tuple[date, Decimal | float]]) -> None:
         highest = {on.toordinal(): float(total) for on, total in sorted(figures)}
         self.days = list(highest)
-        self.totals = list(highest.values())
+        self.totals = list(accumulate(highest.values(), max))
         self.first, self.last = (self.days[0], self.days[-1]) if highest else (0, 0)
         self.begin, self.end = (self.totals[0], self.totals[-1]) if highest else (0.0, 0.0)
         self.span = self.last - self.first
