@@ -1,0 +1,1 @@
+"""Shipped rules and schedules: data with its sources, and what reads it."""
