@@ -17,7 +17,7 @@ Days and use are floats here, and errors are of the log of days; nothing is comp
 from collections.abc import Sequence
 from datetime import date
 from decimal import Decimal
-from math import exp, floor, inf, log, sqrt
+from math import exp, floor, inf, log, prod, sqrt
 from typing import NamedTuple
 
 from fleetcare.domain.forecasts import Clue, Forecast
@@ -28,14 +28,14 @@ SEASON_KNOWN = 380
 RECENT = 91
 SAME_DATES = (365.25, 730.5, 1095.75, 1461)  # days back
 PATIENCE, SETTLED = 150, 300  # an idle spell adds at most 150 days once 300 days of history tell the usual rate
-WEIGHING_DAYS = (60, 325, 365, 405, 710, 750)  # before the last reading
+WEIGHING_DAYS = (365, 325, 405, 710, 750, 60, 150, 240)  # before the last reading; same season first
 WEIGHING_AMOUNT = 60  # days of use at the whole-life rate
-RANGE_TRIALS, RANGE_SPAN = 6, 730
+TRIALS, RANGE_SPAN = 6, 730
 # What an error is taken to be before any trial, as if seen so many times: (times, squared error).
 RECENT_PRIOR, SEASON_PRIOR, RANGE_PRIOR = (2, 0.35**2), (2, 0.25**2), (3, 0.25**2)
 LARGEST_ERROR = 1.5  # one freak spell is not to make the range endless
 LEAST_SPREAD_WITHOUT_SEASON = 0.30
-SAME = 1e-9  # logs of days closer than this are equal, whatever the unit they were worked out in
+TIE = 1e-9  # logs of days closer than this are equal, whatever the unit they were worked out in
 FOUR_IN_FIVE = 1.2815515655446004  # standard normal, 90 % point: a central range of 80 %
 LATENESS = 1.2  # most misses are late: idle spells are longer than hard runs
 NO_LATE_DATE, NO_DATE = 1500, 36525
@@ -62,7 +62,7 @@ class _Trial(NamedTuple):
 
     def error(self, said: float | None) -> float | None:
         """How wrong a word was; None where nothing was said, or where it may still come true."""
-        if said is None or not (self.finished or self.came > said + SAME):
+        if said is None or not (self.finished or self.came > said + TIE):
             return None
         return self.came - said
 
@@ -82,7 +82,7 @@ class History:
             self._now = self._start(curve.last)
             self._season_weight = self._weigh_season()
             back = min(RANGE_SPAN, curve.span - _beginning(curve))
-            days = [curve.last - back * n / RANGE_TRIALS for n in range(1, RANGE_TRIALS + 1)] if back > 15 else []
+            days = [curve.last - back * n / TRIALS for n in range(1, TRIALS + 1)] if back > 15 else []
             self._range_starts = self._starts(days)
 
     def reach(self, target: Decimal | float) -> Forecast:
@@ -173,7 +173,7 @@ class History:
 
     def _season(self, start: _Start, amount: float) -> float | None:
         took = self._same_dates(start, amount)
-        return sum(map(_log, took)) / len(took) if took else None
+        return _log(prod(took)) / len(took) if took else None
 
     def _try(self, start: _Start, amount: float) -> _Trial:
         goal = start.total + amount
@@ -186,7 +186,8 @@ class History:
         if not self._now.years:
             return 0.0
         room = self._curve.span - _beginning(self._curve)
-        starts = self._starts([self._curve.last - back for back in WEIGHING_DAYS if back <= room])
+        backs = [back for back in WEIGHING_DAYS if back <= room][:TRIALS]
+        starts = self._starts([self._curve.last - back for back in backs])
         trials = [self._try(start, WEIGHING_AMOUNT / self._now.life_pace) for start in starts]
         recent = _mean_square([trial.error(trial.recent) for trial in trials], RECENT_PRIOR) ** 2
         season = _mean_square([trial.error(trial.season) for trial in trials], SEASON_PRIOR) ** 2

@@ -19,7 +19,9 @@ class UseCurve:
     def __init__(self, figures: Sequence[tuple[date, Decimal | float]]) -> None:
         highest = {on.toordinal(): float(total) for on, total in sorted(figures)}
         self.days = list(highest)
-        self.totals = list(accumulate(highest.values(), max))
+        self.totals = list(highest.values())
+        if self.totals != sorted(self.totals):
+            self.totals = list(accumulate(self.totals, max))
         self.first, self.last = (self.days[0], self.days[-1]) if highest else (0, 0)
         self.begin, self.end = (self.totals[0], self.totals[-1]) if highest else (0.0, 0.0)
         self.span = self.last - self.first
