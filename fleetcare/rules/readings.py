@@ -16,7 +16,7 @@ from fleetcare.domain.quantities import plain
 Figure = tuple[date, Decimal]
 
 
-def breaks_rule(earlier: Figure, later: Figure, cap_per_day: Decimal, unit: str = "") -> str | None:
+def breaks_rule(earlier: Figure, later: Figure, cap_per_day: Decimal, unit: str) -> str | None:
     """Why two neighbouring figures cannot both be true, in words; None where they can.
 
     `earlier` is not dated after `later`. Exactly nothing gained and exactly the cap for one day more are both allowed.
@@ -68,4 +68,4 @@ def _can_follow(earlier: Figure, later: Figure, cap_per_day: Decimal) -> bool:
 
 
 def _amount(value: Decimal, unit: str) -> str:
-    return f"{plain(value)} {unit}".rstrip()
+    return f"{plain(value)} {unit}"

@@ -91,7 +91,7 @@ def typed(draw: st.DrawFn) -> list[Figure]:
 
 
 def keeps_rule(chain: list[Figure]) -> bool:
-    return all(breaks_rule(earlier, later, CAP) is None for earlier, later in pairwise(sorted(chain)))
+    return all(breaks_rule(earlier, later, CAP, "h") is None for earlier, later in pairwise(sorted(chain)))
 
 
 @given(typed(), st.data())

@@ -53,4 +53,4 @@ def test_weekly_readings_keep_the_longest_plausible_chain(totals: list[int], cap
 def test_a_week_holds_at_most_eight_days_of_24_hours(gained: str, is_possible: bool) -> None:
     earlier = (date(2026, 1, 5), Decimal(4512))
     later = (date(2026, 1, 12), Decimal(4512) + Decimal(gained))
-    assert (breaks_rule(earlier, later, Decimal(24)) is None) is is_possible
+    assert (breaks_rule(earlier, later, Decimal(24), "h") is None) is is_possible

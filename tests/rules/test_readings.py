@@ -37,10 +37,6 @@ def test_a_reading_lies_between_nothing_gained_and_the_cap_for_one_day_more(late
     assert breaks_rule(figure(0, "1000"), later, DAY, "h") == reason
 
 
-def test_without_a_unit_the_figures_stand_alone() -> None:
-    assert breaks_rule(figure(0, 12), figure(1, 10), DAY) == "lower by 2"
-
-
 def test_no_readings_make_no_chain() -> None:
     assert plausible_chain([], DAY) == frozenset()
 
