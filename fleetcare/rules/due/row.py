@@ -96,9 +96,9 @@ def due_row(line: DueLine, facts: ItemFacts) -> DueRow:
 
 
 def unit_of(facts: ItemFacts, kind: Kind) -> str:
-    """The unit a kind is shown in: the meter's, or the base unit where no meter counts."""
+    """The unit a kind is shown in: the meter's, or the base unit where no meter counts; none for the calendar."""
     counter = facts.counters.get(kind)
-    return (counter.unit if counter is not None else None) or BASE_UNIT[kind]
+    return (counter.unit if counter is not None else None) or BASE_UNIT.get(kind, "")
 
 
 def _deciding_counted(line: DueLine) -> TriggerLine | None:
