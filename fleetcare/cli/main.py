@@ -3,7 +3,7 @@
 from collections.abc import Callable, Sequence
 
 from fleetcare import __version__
-from fleetcare.cli import calc, defer, due, items, log, output, readings, tasks
+from fleetcare.cli import calc, defer, due, items, log, output, readings, schedules, tasks
 from fleetcare.cli.parser import CommandParser, Commands
 from fleetcare.errors import FleetError, Misread
 
@@ -11,6 +11,7 @@ GROUPS: tuple[Callable[[Commands], None], ...] = (
     due.add_commands,
     items.add_commands,
     tasks.add_commands,
+    schedules.add_commands,
     readings.add_commands,
     log.add_commands,
     defer.add_commands,

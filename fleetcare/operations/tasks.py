@@ -27,7 +27,7 @@ _BOUND = ("every", "first", "ahead", "grace")
 def add_task(session: "Session", item: FoundItem, draft: TaskDraft, today: date) -> int:
     """Add a task to an item and give its id. Refuses a name the item has already, and a cycle in covering."""
     key = draft.name.casefold()
-    if key in _names(session, item).values():
+    if key in names_taken(session, item):
         raise Refused(
             f"{item.tag} has a task {draft.name!r} already", "choose another name, or use fleetcare task edit"
         )
@@ -82,22 +82,34 @@ def set_start(session: "Session", task_id: int, *, as_new: bool) -> None:
 
 
 def set_last_done(
-    session: "Session", item: FoundItem, task_id: int, last_done: Sequence[date | Figure], today: date
+    session: "Session",
+    item: FoundItem,
+    task_id: int,
+    last_done: Sequence[date | Figure],
+    today: date,
+    option: str = "--last-done",
 ) -> None:
-    """Store when a task was last done before the log began: a day, a dial figure, or both."""
+    """Store when a task was last done before the log began: a day, a figure of each dial, or both.
+
+    `option` is what errors call it.
+    """
     days = [given for given in last_done if isinstance(given, date)]
     if len(days) > 1:
-        raise Refused("--last-done names two days", "give one")
+        raise Refused(f"{option} names two days", "give one")
     on = days[0] if days else None
     if on is not None and on > today:
-        raise Refused(f"--last-done {on} has not come yet", f"give a day up to {today}")
+        raise Refused(f"{option} {on} has not come yet", f"give a day up to {today}")
     origin = TaskOrigin(task_id=task_id, on=on)
     session.add(origin)
     session.flush()
     meters = find_meters(session.connection(), item.id, on or today)
+    told: set[int] = set()
     for figure in last_done:
         if isinstance(figure, Figure):
             meter = pick_meter(meters, figure, item.tag)
+            if meter.id in told:
+                raise Refused(f"{option} names two figures of the {meter.kind} meter", "give one of each meter")
+            told.add(meter.id)
             session.add(
                 OriginFigure(origin_id=origin.id, meter_id=meter.id, value=figure.value, unit=figure.unit or meter.unit)
             )
@@ -177,9 +189,10 @@ def _refuse_cycle(session: "Session", item: FoundItem, task_id: int) -> None:
         )
 
 
-def _names(session: "Session", item: FoundItem) -> dict[int, str]:
+def names_taken(session: "Session", item: FoundItem) -> set[str]:
+    """Give the names, casefolded, of the tasks an item has."""
     rows = session.scalars(select(Task).where(col(Task.item_id) == item.id, col(Task.removed_on).is_(None)))
-    return {row.id: row.name_key for row in rows}
+    return {row.name_key for row in rows}
 
 
 def _stored(session: "Session", task_id: int, on: date) -> dict[str, Any]:

@@ -93,7 +93,7 @@ def _read(path: Path, schedule_id: str) -> Schedule:
         **{field: content.get(field, "") for field in (*_REQUIRED, *_DESCRIPTIVE)},
         is_for_engines=content.get("is_for_engines", False),
         # A task without a source of its own has the schedule's.
-        tasks=tuple({"source": content["source"], **task} for task in content["task"]),
+        tasks=tuple(task | {"source": task.get("source", content["source"])} for task in content["task"]),
         text=text,
     )
 

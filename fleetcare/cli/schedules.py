@@ -1,0 +1,176 @@
+"""`schedule`: named sets of tasks, shipped or of the shop's own, to look at and to give to engines and machines."""
+
+import argparse
+from collections.abc import Mapping
+from typing import TYPE_CHECKING
+
+from fleetcare.cli import output
+from fleetcare.cli.parser import Commands
+from fleetcare.cli.shop import context_of, option_label, say_point
+from fleetcare.errors import Misread
+
+if TYPE_CHECKING:
+    from fleetcare.operations.due import DueRow
+    from fleetcare.operations.schedules import Applied
+    from fleetcare.rulebook.schedules import Schedule
+
+_NAME_HELP = "id of a shipped schedule, or a TOML file of your own"
+
+
+def add_commands(commands: Commands) -> None:
+    """Add `schedule`."""
+    schedule = commands.add_parser("schedule", help="sets of tasks: list, show, apply").add_subparsers(
+        metavar="ACTION", required=True
+    )
+    listing = schedule.add_parser("list", help="list the shipped schedules")
+    listing.add_argument("--json", action="store_true", help="print one JSON array")
+    listing.set_defaults(run=_list)
+    show = schedule.add_parser("show", help="show a schedule with its source and tasks")
+    show.add_argument("name", metavar="NAME", help=_NAME_HELP)
+    form = show.add_mutually_exclusive_group()
+    form.add_argument("--json", action="store_true", help="print one JSON object")
+    form.add_argument("--toml", action="store_true", help="print its file, to change and apply as your own")
+    show.add_argument("--out", metavar="FILE", help="with --json or --toml: the file to write, else the screen")
+    show.set_defaults(run=_show)
+    apply = schedule.add_parser("apply", help="add all tasks of a schedule to engines or machines")
+    apply.add_argument("name", metavar="NAME", help=_NAME_HELP)
+    apply.add_argument("tags", nargs="+", metavar="TAG")
+    apply.add_argument(
+        "--from",
+        dest="counts_from",
+        action="append",
+        metavar="START",
+        help="start, unset, or when last done: DATE, VALUE, or both; needed unless the engine counts as new",
+    )
+    apply.set_defaults(run=_apply)
+
+
+def _list(given: argparse.Namespace) -> None:
+    from fleetcare.rulebook.schedules import shipped_schedules
+
+    schedules = shipped_schedules()
+    if given.json:
+        output.deliver(output.json_text([_as_json(schedule) for schedule in schedules]))
+        return
+    output.say(
+        output.table(
+            ["schedule", "name", "fuel", "duty", "tasks"],
+            [[each.id, each.name, each.fuel, each.duty, len(each.tasks)] for each in schedules],
+        )
+    )
+
+
+def _show(given: argparse.Namespace) -> None:
+    from fleetcare.rulebook.schedules import find_schedule, is_file_name
+
+    if given.out and not (given.json or given.toml):
+        raise Misread("--out writes JSON or TOML", "add --json or --toml")
+    schedule = find_schedule(given.name)
+    if is_file_name(given.name):
+        # A shipped schedule is tried out before it is shipped; a shop's own is tried out here.
+        from fleetcare.drafts.schedules import read_tasks
+
+        read_tasks(schedule)
+    if given.json:
+        output.deliver(output.json_text(_as_json(schedule)), given.out)
+    elif given.toml:
+        output.deliver(schedule.text, given.out)
+    else:
+        _say_schedule(schedule)
+
+
+def _as_json(schedule: "Schedule") -> dict[str, object]:
+    return {
+        "schedule": schedule.id,
+        "name": schedule.name,
+        "engines": schedule.engines,
+        "fuel": schedule.fuel,
+        "duty": schedule.duty,
+        "source": schedule.source,
+        "note": schedule.note,
+        "tasks": schedule.tasks,
+    }
+
+
+def _say_schedule(schedule: "Schedule") -> None:
+    output.say(f"{schedule.id}: {schedule.name}")
+    for label in ("engines", "fuel", "duty", "source", "note"):
+        output.say(f"{label + ':':<9}{getattr(schedule, label) or '-'}")
+    output.say("")
+    output.say(
+        output.table(
+            ["task", "every", "work", "also"],
+            [[task["name"], _say_every(task), task.get("work", ""), _say_rest(task)] for task in schedule.tasks],
+        )
+    )
+    for label in ("caution", "source"):
+        for text in dict.fromkeys(task.get(label) for task in schedule.tasks):
+            names = [str(task["name"]) for task in schedule.tasks if task.get(label) == text]
+            if text and text != schedule.source:
+                output.say(f"\n{label} ({', '.join(names)}): {text}")
+
+
+def _say_every(task: Mapping[str, object]) -> str:
+    if task.get("on_condition"):
+        return "on condition"
+    words = " or ".join(_texts(task, "every"))
+    if task.get("once_each"):
+        words = " or ".join(filter(None, (words, f"once each {task['once_each']}")))
+    first = " or ".join(_texts(task, "first"))
+    return f"{words}, first {first}" if first else words
+
+
+def _say_rest(task: Mapping[str, object]) -> str:
+    """Say what else a task is: law, sheet, what it covers, and every option that is given as plain text."""
+    words = [mark.replace("_", " ") for mark, value in task.items() if value is True and mark != "on_condition"]
+    if task.get("needs_sheet"):
+        words.append(f"closes with its {task['needs_sheet']} sheet")
+    for field in ("ahead", "grace", "anchor", "combine", "not_later_than", "window", "deferrable", "labour", "part"):
+        if texts := _texts(task, field):
+            words.append(f"{field.replace('_', ' ')} {', '.join(texts)}")
+    if covers := _texts(task, "covers"):
+        words.append(f"covers {', '.join(covers)}")
+    return "; ".join(words)
+
+
+def _texts(task: Mapping[str, object], field: str) -> list[str]:
+    value = task.get(field, [])
+    return [str(text) for text in value] if isinstance(value, list) else [str(value)]
+
+
+def _apply(given: argparse.Namespace) -> None:
+    from fleetcare.drafts.reading_in import read_draft
+    from fleetcare.drafts.schedules import StartDraft
+    from fleetcare.operations.schedules import apply_schedule
+    from fleetcare.rulebook.schedules import find_schedule
+
+    context = context_of(given)
+    schedule = find_schedule(given.name)
+    start = read_draft(StartDraft, {"counts_from": given.counts_from}, lambda _: option_label("from"))
+    with context.write() as session:
+        applied = apply_schedule(session, schedule, given.tags, start, context.today())
+    for one in applied:
+        _say_applied(one, schedule.id)
+    output.say(schedule.note)
+
+
+def _say_applied(one: "Applied", schedule_id: str) -> None:
+    tag = one.item.tag
+    output.say(f"{tag}: {len(one.added)} tasks of {schedule_id} added.")
+    rows = {row.task: row for row in one.rows}
+    for name in one.added:
+        output.say(f"{tag}  {name}: {_say_line(rows[name]) if name in rows else 'no line until it is called for'}")
+    for name in one.left_out:
+        output.say(f"{tag}  {name}: left out, its hydraulic adjusters keep the lash")
+    for kind, names in one.uncounted.items():
+        group = "engine" if one.item.is_engine else "machine"
+        output.say(
+            f"{tag}  no meter counts {kind}, so {', '.join(names)} cannot fall due by {kind};"
+            f" add one with fleetcare {group} edit {tag} --meter {kind}"
+        )
+
+
+def _say_line(row: "DueRow") -> str:
+    point = say_point(row)
+    words = [row.state, point if point != row.state else "", row.reason if row.state == "unset" else ""]
+    return ", ".join(word for word in words if word)

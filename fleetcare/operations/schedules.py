@@ -1,0 +1,136 @@
+"""Give engines and machines the tasks of a schedule, all of them or none."""
+
+from collections.abc import Mapping, Sequence
+from dataclasses import dataclass
+from datetime import date
+from typing import TYPE_CHECKING
+
+from sqlalchemy import select
+from sqlmodel import col
+
+from fleetcare.db.tables import Engine, Item
+from fleetcare.domain.quantities import Kind
+from fleetcare.drafts.schedules import StartDraft, read_tasks
+from fleetcare.drafts.tasks import TaskDraft
+from fleetcare.errors import Refusals, Refused
+from fleetcare.operations.due import DueRow, Filters, due_rows
+from fleetcare.operations.find import FoundItem, find_item, find_meters
+from fleetcare.operations.load_tasks import load_start_figures
+from fleetcare.operations.tasks import add_task, names_taken, set_last_done, set_start
+from fleetcare.rulebook.schedules import Schedule
+
+if TYPE_CHECKING:
+    from sqlalchemy.orm import Session
+
+
+@dataclass(frozen=True, slots=True)
+class Applied:
+    """What a schedule gave to one item.
+
+    `rows` are the due lines of the tasks added, in the schedule's order; on-condition ones have none yet. `left_out`
+    are tasks the item cannot need, `uncounted` the added ones by the kinds they count that no meter of the item counts.
+    """
+
+    item: FoundItem
+    added: tuple[str, ...]
+    rows: tuple[DueRow, ...]
+    left_out: tuple[str, ...]
+    uncounted: Mapping[Kind, tuple[str, ...]]
+
+
+def apply_schedule(
+    session: "Session", schedule: Schedule, tags: Sequence[str], start: StartDraft, today: date
+) -> list[Applied]:
+    """Add all tasks of a schedule to each item, counting from a stated start, and say what came of it.
+
+    An item that counts as new needs none stated: its tasks count from its start. Everything that stands against it,
+    on any of the items, is refused together.
+    """
+    drafts = read_tasks(schedule)
+    found = [find_item(session.connection(), tag) for tag in tags]
+    items = list({item.id: item for item in found}.values())
+    wrong = [error for item in items for error in _objections(session, item, schedule, drafts, start)]
+    if wrong:
+        raise wrong[0] if len(wrong) == 1 else Refusals(wrong)
+    return [_apply(session, item, drafts, start, today) for item in items]
+
+
+def _objections(
+    session: "Session", item: FoundItem, schedule: Schedule, drafts: Sequence[TaskDraft], start: StartDraft
+) -> list[Refused]:
+    row = session.get_one(Item, item.id)
+    if row.withdrawn_on is not None:
+        return [Refused(f"{item.tag} is withdrawn since {row.withdrawn_on}", "leave it out")]
+    if schedule.is_for_engines and not item.is_engine:
+        return [Refused(f"{schedule.id} is for engines and {item.tag} is a machine", "name the engine fitted in it")]
+    wrong = []
+    taken = names_taken(session, item)
+    there = [draft.name for draft in drafts if draft.name.casefold() in taken]
+    if there:
+        wrong.append(
+            Refused(
+                f"{item.tag} has already: {', '.join(there)}",
+                f"end them with fleetcare task remove {item.tag} NAME, or take them out of a file of your own:"
+                f" fleetcare schedule show {schedule.id} --toml --out FILE.toml",
+            )
+        )
+    if start.word == "start":
+        wrong.extend(_missing_start(session, row, item, drafts))
+    elif not start.counts_from and not row.as_new:
+        wrong.append(
+            Refused(
+                f"{item.tag} does not count as new, so where its tasks begin must be said",
+                "give --from start, --from unset, or when they were last done: --from DATE, --from VALUE or both",
+            )
+        )
+    return wrong
+
+
+def _missing_start(session: "Session", row: Item, item: FoundItem, drafts: Sequence[TaskDraft]) -> list[Refused]:
+    """Say what an item lacks for its tasks to count from its start."""
+    edit = f"fleetcare {'engine' if item.is_engine else 'machine'} edit {item.tag} --in-service DATE"
+    if row.in_service_on is None:
+        return [Refused(f"{item.tag} has no in-service day to count from", f"give it with {edit} --start-at VALUE")]
+    known = load_start_figures(session.connection(), [item.id]).get(item.id, {})
+    metered = {meter.kind for meter in find_meters(session.connection(), item.id, date.max)}
+    missing = sorted((_counted(drafts) & metered) - set(known))
+    if not missing:
+        return []
+    return [Refused(f"{item.tag} has no start figure of {', '.join(missing)}", f"give it with {edit} --start-at VALUE")]
+
+
+def _apply(session: "Session", item: FoundItem, drafts: Sequence[TaskDraft], start: StartDraft, today: date) -> Applied:
+    left_out = _not_needed(session, item, drafts)
+    kept = [draft for draft in drafts if draft.name not in left_out]
+    for draft in kept:
+        covers = tuple(name for name in draft.covers if name.casefold() not in {out.casefold() for out in left_out})
+        task_id = add_task(session, item, draft.model_copy(update={"covers": covers}), today)
+        if start.word is not None:
+            set_start(session, task_id, as_new=start.word == "start")
+        elif start.last_done:
+            set_last_done(session, item, task_id, start.last_done, today, "--from")
+    rows = {row.task: row for row in due_rows(session.connection(), today, Filters(engine=item.tag))}
+    metered = {meter.kind for meter in find_meters(session.connection(), item.id, today)}
+    return Applied(
+        item,
+        added=tuple(draft.name for draft in kept),
+        rows=tuple(rows[draft.name] for draft in kept if draft.name in rows),
+        left_out=left_out,
+        uncounted={
+            kind: tuple(draft.name for draft in kept if kind in _counted([draft]))
+            for kind in sorted(_counted(kept) - metered)
+        },
+    )
+
+
+def _not_needed(session: "Session", item: FoundItem, drafts: Sequence[TaskDraft]) -> tuple[str, ...]:
+    """Give the tasks that set the lash, where hydraulic adjusters keep it."""
+    engine = session.scalars(select(Engine).where(col(Engine.item_id) == item.id)).one_or_none()
+    if engine is None or engine.adjuster != "hydraulic":
+        return ()
+    return tuple(draft.name for draft in drafts if draft.needs_sheet == "lash")
+
+
+def _counted(drafts: Sequence[TaskDraft]) -> set[Kind]:
+    """Give the kinds that tasks need a meter for."""
+    return {trigger.kind for draft in drafts for trigger in draft.triggers()} - {Kind.CALENDAR}
