@@ -6,11 +6,10 @@ from typing import TYPE_CHECKING
 
 from fleetcare.cli import output
 from fleetcare.cli.parser import Commands
-from fleetcare.cli.shop import context_of, option_label, say_point
+from fleetcare.cli.shop import context_of, option_label, say_line
 from fleetcare.errors import Misread
 
 if TYPE_CHECKING:
-    from fleetcare.operations.due import DueRow
     from fleetcare.operations.schedules import Applied
     from fleetcare.rulebook.schedules import Schedule
 
@@ -159,7 +158,7 @@ def _say_applied(one: "Applied", schedule_id: str) -> None:
     output.say(f"{tag}: {len(one.added)} tasks of {schedule_id} added.")
     rows = {row.task: row for row in one.rows}
     for name in one.added:
-        output.say(f"{tag}  {name}: {_say_line(rows[name]) if name in rows else 'no line until it is called for'}")
+        output.say(f"{tag}  {name}: {say_line(rows[name]) if name in rows else 'no line until it is called for'}")
     for name in one.left_out:
         output.say(f"{tag}  {name}: left out, its hydraulic adjusters keep the lash")
     for kind, names in one.uncounted.items():
@@ -168,9 +167,3 @@ def _say_applied(one: "Applied", schedule_id: str) -> None:
             f"{tag}  no meter counts {kind}, so {', '.join(names)} cannot fall due by {kind};"
             f" add one with fleetcare {group} edit {tag} --meter {kind}"
         )
-
-
-def _say_line(row: "DueRow") -> str:
-    point = say_point(row)
-    words = [row.state, point if point != row.state else "", row.reason if row.state == "unset" else ""]
-    return ", ".join(word for word in words if word)

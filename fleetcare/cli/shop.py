@@ -8,6 +8,7 @@ from typing import TYPE_CHECKING, Any
 
 from fleetcare.cli import output
 from fleetcare.context import Context
+from fleetcare.domain.lines import State
 from fleetcare.domain.quantities import plain
 
 if TYPE_CHECKING:
@@ -34,11 +35,19 @@ def option_label(field: str) -> str:
 
 
 def say_moved(moves: "Sequence[Moved]") -> None:
-    """Print each line whose due point moved, old and new."""
+    """Print each line whose due point moved, old and new; the own one where only that moved under a deferral."""
     for move in moves:
         row = move.after or move.before
         assert row is not None
-        output.say(f"{row.engine}  {row.task}: {say_point(move.before)} -> {say_point(move.after)}")
+        before, after = say_point(move.before), say_point(move.after)
+        if before == after and move.before is not None and move.after is not None:
+            before, after = f"own point {_say_own(move.before)}", f"{_say_own(move.after)}, deferred all the same"
+        output.say(f"{row.engine}  {row.task}: {before} -> {after}")
+
+
+def _say_own(row: "DueRow") -> str:
+    counted = f"{plain(tenth(row.own_due_at))} {row.meter_unit}" if row.own_due_at is not None else ""
+    return " or ".join(part for part in (counted, row.own_due_on.isoformat() if row.own_due_on else "") if part)
 
 
 def say_point(row: "DueRow | None") -> str:
@@ -46,7 +55,13 @@ def say_point(row: "DueRow | None") -> str:
     if row is None:
         return "no line"
     parts = [say_counted(row), row.next_due_on.isoformat() if row.next_due_on else ""]
-    return " or ".join(part for part in parts if part) or row.state
+    return " or ".join(part for part in parts if part) or f"{row.state}, {row.reason}"
+
+
+def say_line(row: "DueRow") -> str:
+    """Say how a line stands: its state, then its point or what to enter."""
+    point = say_point(row)
+    return point if row.state == State.UNSET else f"{row.state}, {point}"
 
 
 def say_counted(row: "DueRow") -> str:

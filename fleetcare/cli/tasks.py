@@ -4,7 +4,7 @@ import argparse
 
 from fleetcare.cli import output
 from fleetcare.cli.parser import CommandParser, Commands, day
-from fleetcare.cli.shop import add_options, context_of, option_label, options_of, say_moved, say_point
+from fleetcare.cli.shop import add_options, context_of, option_label, options_of, say_line, say_moved
 
 _REPEATED = {
     "--every": ("INTERVAL", "such as 250h, 10000km or 12mo; once for each kind"),
@@ -92,7 +92,7 @@ def _add(given: argparse.Namespace) -> None:
     output.say(f"{draft.name} added to {item.tag}.")
     for move in moves.moved:
         if move.before is None and move.after is not None:
-            output.say(f"{item.tag}  {move.after.task}: {move.after.state}, {say_point(move.after)}")
+            output.say(f"{item.tag}  {move.after.task}: {say_line(move.after)}")
 
 
 def _edit(given: argparse.Namespace) -> None:

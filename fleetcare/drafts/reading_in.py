@@ -45,4 +45,6 @@ def _error(detail: Mapping[str, object], label: Callable[[str], str]) -> FleetEr
         return Misread(f"{field} is missing", "give it")
     if detail["type"] == "extra_forbidden":
         return Misread(f"{field} is not known here", "leave it out, or check its spelling")
+    if isinstance(context, Mapping) and "expected" in context:  # a word out of a fixed list
+        return Misread(f"{field}: {detail['input']!r} is not known", f"use {context['expected']}")
     return Misread(f"{field}: {detail['msg']}", "correct it")

@@ -72,7 +72,7 @@ def due_rows(
 def watch_moves(session: "Session", tag: str, on: date) -> Iterator[Moves]:
     """Compare the lines of an item, and of all that share its meters, before and after what is done inside."""
     connection = session.connection()
-    item = find_item(connection, tag)
+    item = find_item(connection, tag, even_withdrawn=True)
     ids = _sharing(connection, item.id, on)
     before = _rows_by_key(connection, ids, on)
     moves = Moves()
@@ -102,7 +102,7 @@ def _sharing(connection: "Connection", item_id: int, on: date) -> list[int]:
 
 
 def _point(row: DueRow | None) -> tuple[object, ...] | None:
-    return None if row is None else (row.next_due_at, row.next_due_on)
+    return None if row is None else (row.next_due_at, row.next_due_on, row.own_due_at, row.own_due_on)
 
 
 def _known_site(connection: "Connection", name: str) -> str:

@@ -33,15 +33,21 @@ class FoundMeter:
     owner_id: int
 
 
-def find_item(connection: "Connection", tag: str) -> FoundItem:
-    """Find the engine or machine in use under a tag, whatever its case; refuses an unknown one."""
+def find_item(connection: "Connection", tag: str, *, even_withdrawn: bool = False) -> FoundItem:
+    """Find the engine or machine in use under a tag, whatever its case; refuses an unknown one.
+
+    `even_withdrawn` finds the one last withdrawn where none is in use: its history stays readable.
+    """
     rows = fetch(
         connection,
-        "select id, tag, is_engine from item where tag_key = :key order by withdrawn_on is not null, withdrawn_on desc",
+        "select id, tag, is_engine, withdrawn_on from item where tag_key = :key"
+        " order by withdrawn_on is not null, withdrawn_on desc",
         key=tag.strip().casefold(),
     )
-    if rows:
+    if rows and (even_withdrawn or rows[0][3] is None):
         return FoundItem(rows[0][0], rows[0][1], bool(rows[0][2]))
+    if rows:
+        raise Refused(f"{rows[0][1]} is withdrawn since {rows[0][3]}", "add it anew with fleetcare engine add")
     tags = [row[0] for row in fetch(connection, "select tag from item where withdrawn_on is null order by tag")]
     raise Refused(f"no engine or machine has the tag {tag!r}", _did_you_mean(tag, tags, "see fleetcare engine list"))
 
@@ -104,7 +110,7 @@ def pick_meter(meters: Sequence[FoundMeter], figure: Figure, tag: str, kind: Kin
         what = f"{wanted} of {tag}" if wanted else f"anything of {tag}"
         raise Refused(
             f"no meter counts {what} on that day",
-            f"add one with fleetcare engine edit {tag} --meter {wanted or 'hours'}",
+            f"add one by editing {tag} with --meter {wanted or 'hours'}",
         )
     if len(fitting) > 1:
         kinds = " and ".join(meter.kind for meter in fitting)

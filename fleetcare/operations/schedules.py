@@ -16,7 +16,8 @@ from fleetcare.errors import Refusals, Refused
 from fleetcare.operations.due import DueRow, Filters, due_rows
 from fleetcare.operations.find import FoundItem, find_item, find_meters
 from fleetcare.operations.load_tasks import load_start_figures
-from fleetcare.operations.tasks import add_task, names_taken, set_last_done, set_start
+from fleetcare.operations.starts import set_last_done, set_start
+from fleetcare.operations.tasks import add_task, names_taken
 from fleetcare.rulebook.schedules import Schedule
 
 if TYPE_CHECKING:

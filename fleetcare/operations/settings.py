@@ -10,7 +10,7 @@ from fleetcare.operations.rows import fetch
 
 if TYPE_CHECKING:
     from sqlalchemy import Connection
-    from sqlmodel import Session
+    from sqlalchemy.orm import Session
 
 
 @dataclass(frozen=True, slots=True)
@@ -61,13 +61,14 @@ def spec_of(name: str) -> SettingSpec:
 
 def change_setting(session: "Session", name: str, value: str) -> None:
     """Store one setting; an empty value goes back to the default."""
-    from sqlmodel import select
+    from sqlalchemy import select
+    from sqlmodel import col
 
     from fleetcare.db.tables import Setting
 
     spec = spec_of(name)
     stored = "" if value == "" else _checked(spec, value)
-    row = session.exec(select(Setting).where(Setting.name == name)).one_or_none()
+    row = session.scalars(select(Setting).where(col(Setting.name) == name)).one_or_none()
     row = row or Setting(name=name)
     row.value = stored or spec.default
     session.add(row)

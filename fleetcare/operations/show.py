@@ -80,7 +80,7 @@ class ItemPage:
 
 def item_page(connection: "Connection", tag: str, on: date, *, is_future: bool = False) -> ItemPage:
     """Load the page of an engine or machine as of a day."""
-    item = find_item(connection, tag)
+    item = find_item(connection, tag, even_withdrawn=True)
     facts = item_facts(connection, on, [item.id])[0]
     lines = in_order(item_lines(facts, is_future))
     return ItemPage(

@@ -8,13 +8,21 @@ from typing import TYPE_CHECKING, Any
 from sqlalchemy import select
 from sqlmodel import col
 
-from fleetcare.db.tables import OriginFigure, Task, TaskCover, TaskOrigin, TaskPart, TaskTrigger, TaskVersion
-from fleetcare.domain.quantities import Amount, Figure, Kind, Span, parse_interval, plain
+from fleetcare.db.tables import Task, TaskCover, TaskPart, TaskTrigger, TaskVersion
+from fleetcare.domain.quantities import (
+    Amount,
+    Figure,
+    Kind,
+    Span,
+    parse_interval,
+    plain,
+)
 from fleetcare.drafts.reading_in import read_draft
 from fleetcare.drafts.tasks import TaskDraft, TriggerDraft, kind_of
 from fleetcare.errors import Refused
-from fleetcare.operations.find import FoundItem, find_meters, find_task, pick_meter
+from fleetcare.operations.find import FoundItem, find_meters, find_task
 from fleetcare.operations.rows import fetch
+from fleetcare.operations.starts import set_last_done
 from fleetcare.rules.due.covering import find_cycle
 
 if TYPE_CHECKING:
@@ -73,47 +81,6 @@ def remove_task(session: "Session", item: FoundItem, name: str, on: date) -> int
     session.get_one(Task, task_id).removed_on = on
     session.flush()
     return task_id
-
-
-def set_start(session: "Session", task_id: int, *, as_new: bool) -> None:
-    """Let a task count from the item's start, or from nothing until somebody says when it was done."""
-    session.add(TaskOrigin(task_id=task_id, as_new=as_new))
-    session.flush()
-
-
-def set_last_done(
-    session: "Session",
-    item: FoundItem,
-    task_id: int,
-    last_done: Sequence[date | Figure],
-    today: date,
-    option: str = "--last-done",
-) -> None:
-    """Store when a task was last done before the log began: a day, a figure of each dial, or both.
-
-    `option` is what errors call it.
-    """
-    days = [given for given in last_done if isinstance(given, date)]
-    if len(days) > 1:
-        raise Refused(f"{option} names two days", "give one")
-    on = days[0] if days else None
-    if on is not None and on > today:
-        raise Refused(f"{option} {on} has not come yet", f"give a day up to {today}")
-    origin = TaskOrigin(task_id=task_id, on=on)
-    session.add(origin)
-    session.flush()
-    meters = find_meters(session.connection(), item.id, on or today)
-    told: set[int] = set()
-    for figure in last_done:
-        if isinstance(figure, Figure):
-            meter = pick_meter(meters, figure, item.tag)
-            if meter.id in told:
-                raise Refused(f"{option} names two figures of the {meter.kind} meter", "give one of each meter")
-            told.add(meter.id)
-            session.add(
-                OriginFigure(origin_id=origin.id, meter_id=meter.id, value=figure.value, unit=figure.unit or meter.unit)
-            )
-    session.flush()
 
 
 def _add_version(session: "Session", item: FoundItem, task_id: int, draft: TaskDraft, from_on: date) -> None:

@@ -26,10 +26,15 @@ def backup(context: "Context", out: Path) -> Path:
     from fleetcare.db.session import copy, require
 
     require(context.path)
-    if out.exists():
-        raise Refused(f"{out} is already there", "name a file that is not")
+    refuse_taken(out)
     copy(context.path, out)
     return out
+
+
+def refuse_taken(out: Path) -> None:
+    """Refuse to write over a file that is there already."""
+    if out.exists():
+        raise Refused(f"{out} is already there", "name a file that is not, or remove that one first")
 
 
 def check(context: "Context", head: str | None = None) -> Soundness:
