@@ -43,10 +43,10 @@ def a_version(*triggers: Trigger, **changes: object) -> TaskVersion:
     return TaskVersion(from_on=START, triggers=triggers, **changes)  # type: ignore[arg-type]
 
 
-def a_task(*triggers: Trigger, id: int = 1, name: str = "Oil and filter", **changes: object) -> Task:
+def a_task(*triggers: Trigger, number: int = 1, name: str = "Oil and filter", **changes: object) -> Task:
     """A task of one version, without an origin; `origin`, `calls`, `deferrals` go to the task, the rest to its version."""
     own = {key: changes.pop(key) for key in ("origin", "calls", "deferrals", "removed_on") if key in changes}
-    return Task(id=id, name=name, versions=(a_version(*triggers, **changes),), **own)  # type: ignore[arg-type]
+    return Task(id=number, name=name, versions=(a_version(*triggers, **changes),), **own)  # type: ignore[arg-type]
 
 
 def new_at(life: float | str = 0, on: date = START, kind: Kind = Kind.HOURS) -> Origin:

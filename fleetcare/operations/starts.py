@@ -5,11 +5,13 @@ from datetime import date
 from typing import TYPE_CHECKING
 
 from fleetcare.db.tables import OriginFigure, TaskOrigin
-from fleetcare.domain.quantities import COUNTED, Figure, from_base, plain, to_base
+from fleetcare.domain.quantities import BASE_UNIT, COUNTED, Figure, from_base, to_base
 from fleetcare.errors import Refused
 from fleetcare.operations.find import FoundItem, FoundMeter, find_meters, pick_meter
 from fleetcare.operations.load import load_counters
 from fleetcare.operations.rows import fetch
+from fleetcare.operations.settings import cap_per_day
+from fleetcare.rules.readings import breaks_rule
 
 if TYPE_CHECKING:
     from sqlalchemy.orm import Session
@@ -50,7 +52,7 @@ def set_last_done(
             if meter.id in told:
                 raise Refused(f"{option} names two figures of the {meter.kind} meter", "give one of each meter")
             told.add(meter.id)
-            _refuse_beyond_latest(session, item, meter, figure, today, option)
+            _refuse_unreachable(session, item, meter, figure, on or today, option)
             session.add(
                 OriginFigure(origin_id=origin.id, meter_id=meter.id, value=figure.value, unit=figure.unit or meter.unit)
             )
@@ -69,16 +71,19 @@ def _meters_counted(session: "Session", item: FoundItem, task_id: int, on: date)
     return [meter for meter in meters if meter.kind in kinds] if kinds & set(COUNTED) else meters
 
 
-def _refuse_beyond_latest(
-    session: "Session", item: FoundItem, meter: FoundMeter, figure: Figure, today: date, option: str
+def _refuse_unreachable(
+    session: "Session", item: FoundItem, meter: FoundMeter, figure: Figure, by: date, option: str
 ) -> None:
-    """Refuse work done at a figure that the meter has not reached by its latest reading."""
-    history = load_counters(session.connection(), [item.id], today)[item.id][meter.kind]
-    life = history.life_at(from_base(to_base(figure.value, figure.unit or meter.unit), meter.unit), today)
-    if history.latest is not None and life is not None and life > history.latest.life:
-        dial = history.dial_of(history.latest.life)
-        shown = f"{plain(dial)} {meter.unit}" if dial is not None else "less"
+    """Refuse work done at a figure that the meter cannot have reached by a day, going on from its latest reading."""
+    history = load_counters(session.connection(), [item.id], by)[item.id][meter.kind]
+    metered = history.metered_at(from_base(to_base(figure.value, figure.unit or meter.unit), meter.unit), by)
+    latest = history.latest
+    if latest is None or metered is None or metered <= latest.metered:
+        return
+    cap = cap_per_day(session.connection(), meter.kind)
+    why = breaks_rule((latest.on, latest.metered), (by, metered), cap, BASE_UNIT[meter.kind])
+    if why is not None:
         raise Refused(
-            f"{option} {figure} lies beyond the latest reading, {shown} on {history.latest.on}",
+            f"{option} {figure} lies out of reach of reading {latest.reading.id} on {latest.on}: {why}",
             "check it, or first enter a newer reading",
         )

@@ -249,4 +249,4 @@ def test_a_withdrawn_engine_is_given_nothing(ctx: Context, ditch: str) -> None:
     engine(ctx, "P-01", **NEW)
     with ctx.write() as session:
         change_status(session, find_item(session.connection(), "P-01"), Status.WITHDRAWN, date(2026, 4, 1))
-    assert refusal(ctx, ditch, "P-01") == ["P-01 is withdrawn since 2026-04-01; leave it out"]
+    assert refusal(ctx, ditch, "P-01") == ["P-01 is withdrawn since 2026-04-01; add it anew with fleetcare engine add"]

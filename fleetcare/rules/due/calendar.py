@@ -56,16 +56,12 @@ class Chain:
         return Chain(self.first, self.months, self.days + span.days)
 
 
-@dataclass(frozen=True, slots=True, order=True)
+@dataclass(frozen=True, slots=True)
 class CalendarPeriod:
-    """One week (from Monday), month, quarter or year: its first and last day."""
+    """One week (from Monday), month, quarter or year: its first and last day, the last one later after a pause."""
 
     first: date
     last: date
-
-    def next(self, period: Period) -> "CalendarPeriod":
-        """The period that follows."""
-        return period_of(period, self.last + timedelta(days=1))
 
 
 def period_of(period: Period, day: date) -> CalendarPeriod:
@@ -78,6 +74,11 @@ def period_of(period: Period, day: date) -> CalendarPeriod:
     return CalendarPeriod(first, add(first, months, -1))
 
 
+def period_after(period: Period, day: date) -> CalendarPeriod:
+    """Give the period that follows the one a day lies in."""
+    return period_of(period, period_of(period, day).last + timedelta(days=1))
+
+
 def period_span(period: Period) -> Span:
     """Give a period as a span: what a once-each trigger repeats by."""
     if period is Period.WEEK:
@@ -86,11 +87,11 @@ def period_span(period: Period) -> Span:
 
 
 def say_period(period: Period, of: CalendarPeriod) -> str:
-    """Name a period: "2026-03", "2026-Q1", "2026", or "week to 2026-03-15"."""
+    """Name a period by the days it would have without a pause: "2026-03", "2026-Q1", "2026", "week to 2026-03-15"."""
     first = of.first
     match period:
         case Period.WEEK:
-            return f"week to {of.last.isoformat()}"
+            return f"week to {period_of(period, first).last.isoformat()}"
         case Period.MONTH:
             return f"{first:%Y-%m}"
         case Period.QUARTER:

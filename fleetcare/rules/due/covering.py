@@ -6,6 +6,8 @@ from datetime import date
 from decimal import Decimal
 
 from fleetcare.domain.lines import DueLine, State, TriggerLine
+from fleetcare.domain.quantities import Kind
+from fleetcare.domain.schedules import Combine
 
 
 def closure(covers: Mapping[int, Sequence[int]], task_id: int) -> tuple[int, ...]:
@@ -50,7 +52,8 @@ def with_covering(lines: Sequence[DueLine]) -> list[DueLine]:
 def _covered_by(line: DueLine, coverers: Sequence[DueLine]) -> str:
     if line.state in {State.OVERDUE, State.UNSET} or line.version.needs_sheet or line.deciding is None:
         return ""
-    able = [big for big in coverers if _comes_in_time(big, line, line.deciding)]
+    decider = line.deciding
+    able = [big for big in coverers if _comes_in_time(big, line, decider)]
     best = min(able, key=lambda big: (big.likely_on or date.max, big.task.name), default=None)
     return best.task.name if best is not None else ""
 
@@ -60,13 +63,29 @@ def _comes_in_time(big: DueLine, line: DueLine, decider: TriggerLine) -> bool:
 
     Compared in the kind that decides the small one, else by likely dates, else not at all.
     """
-    window = next((t.next for t in line.triggers if t.next is not None and t.next.opens is not None), None)
-    if window is not None and window.opens is not None and (big.likely_on is None or big.likely_on < window.opens):
+    opens = next((t.next.opens for t in line.triggers if t.next is not None and t.next.opens is not None), None)
+    if opens is not None and (big.likely_on is None or big.likely_on < opens):
         return False
-    same_kind = next((t for t in big.triggers if t.kind is decider.kind and t.point is not None), None)
+    same_kind = _will_call(big, decider.kind)
     if same_kind is not None:
         return _gap(same_kind, decider) <= _grace(decider)
-    return big.likely_on is not None and line.likely_on is not None and big.likely_on <= line.likely_on
+    return (
+        decider.forecast is not None
+        and decider.forecast.likely is not None
+        and big.likely_on is not None
+        and big.likely_on <= decider.forecast.likely
+    )
+
+
+def _will_call(big: DueLine, kind: Kind) -> TriggerLine | None:
+    """Give the trigger of a kind that calls for the big job at its point at the latest, None where none does.
+
+    A `last` job may still wait there for another trigger, and one deferred to a day alone for that day.
+    """
+    if big.version.combine is Combine.LAST:
+        return None
+    found = [t for t in big.triggers if t.kind is kind and t.point is not None]
+    return next((t for t in found if not (t.deferred and t.point == t.own)), None)
 
 
 def _gap(big: TriggerLine, small: TriggerLine) -> Decimal:

@@ -50,11 +50,11 @@ def move_of(deferral: Deferral, version: TaskVersion, kind: Kind, ended: bool) -
     """
     if kind is Kind.CALENDAR:
         return Move(deferral.until_on, ended) if deferral.until_on is not None else None
-    if kind in deferral.until_life:
-        return Move(deferral.until_life[kind], ended)
-    if deferral.until_on is not None and version.calendar is None:
-        return Move(deferral.caps.get(kind), ended, deferral.until_on)
-    return None
+    until_on = deferral.until_on if version.calendar is None else None
+    figures = [ends[kind] for ends in (deferral.until_life, deferral.caps) if kind in ends]
+    if until_on is None and not figures:
+        return None
+    return Move(min(figures, default=None), ended, until_on)
 
 
 def stand(next_point: NextPoint, now: Point, today: date, move: Move | None) -> Standing:

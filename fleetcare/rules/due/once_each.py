@@ -1,14 +1,15 @@
 """Once each calendar period: which period an entry serves, and which is due next.
 
 An entry serves the earliest unserved period still open by grace or deferral, else its own, and
-only one. A period that closes unserved is missed: it stays overdue until the next entry.
+only one. A period that closes unserved is missed: it stays overdue until the next entry. A pause
+makes the owed period longer: its last day moves, and the next one is the one after the day of the entry.
 """
 
 from dataclasses import dataclass
 from datetime import date, timedelta
 
-from fleetcare.domain.schedules import CalendarTrigger, Period
-from fleetcare.rules.due.calendar import CalendarPeriod, period_of
+from fleetcare.domain.schedules import CalendarTrigger
+from fleetcare.rules.due.calendar import CalendarPeriod, period_after, period_of
 
 
 @dataclass(frozen=True, slots=True)
@@ -20,15 +21,10 @@ class Served:
     next: CalendarPeriod
 
 
-def first_period(each: Period, start: date) -> CalendarPeriod:
-    """Give the first period owed: the one after the start point's."""
-    return period_of(each, start).next(each)
-
-
 def serve(trigger: CalendarTrigger, owed: CalendarPeriod, open_until: date, on: date) -> Served:
     """Work out which period an entry of day `on` serves, where `owed` is the earliest unserved one.
 
-    `open_until` is the last day on which `owed` may still be served (deferral and pauses counted);
+    `open_until` is the last day on which `owed` may still be served (grace and deferral counted);
     later periods stay open by the trigger's grace.
     """
     each = trigger.once_each
@@ -38,8 +34,8 @@ def serve(trigger: CalendarTrigger, owed: CalendarPeriod, open_until: date, on: 
     candidate, closes = owed, open_until
     while candidate.last < own.first and closes < on:
         missed.append(candidate)
-        candidate = candidate.next(each)
+        candidate = period_after(each, candidate.last)
         closes = candidate.last + timedelta(days=trigger.grace)
     if candidate.first > on:
         return Served(None, (), owed)
-    return Served(candidate, tuple(missed), candidate.next(each))
+    return Served(candidate, tuple(missed), period_after(each, min(on, candidate.last)))

@@ -3,6 +3,7 @@
 from dataclasses import dataclass
 from datetime import date
 from decimal import Decimal
+from itertools import pairwise
 from statistics import median
 
 from fleetcare.domain.engines import Status, status_on
@@ -58,7 +59,7 @@ def stale_after(days_read: list[date], stale_days: int | None) -> float:
     if stale_days is not None:
         return stale_days
     days = sorted(set(days_read))
-    gaps = [(later - earlier).days for earlier, later in zip(days, days[1:], strict=False)][-_GAPS_LOOKED_AT:]
+    gaps = [(later - earlier).days for earlier, later in pairwise(days)][-_GAPS_LOOKED_AT:]
     if len(gaps) < _GAPS_FOR_A_RHYTHM:
         return STALE_DAYS_UNTIL_A_RHYTHM_IS_KNOWN
     return 2 * median(gaps)

@@ -11,9 +11,6 @@ from decimal import Decimal
 from fleetcare.domain.lines import State, TriggerLine
 from fleetcare.domain.schedules import Combine
 
-# Unset weighs between near and clear: it hides an all-clear, never a warning.
-_BAD_FIRST = (State.OVERDUE, State.DUE, State.NEAR, State.UNSET, State.CLEAR)
-
 
 def state_of(remaining: Decimal, ahead: Decimal, grace: Decimal) -> State:
     """Give the state of a trigger from what remains to its point; all three in one unit."""
@@ -34,8 +31,8 @@ def window_state(today: date, opens: date, last: date, ahead: Decimal) -> State:
 
 
 def worst(states: Sequence[State]) -> State:
-    """Give the state that matters most; unset outweighs clear only."""
-    return min(states, key=_BAD_FIRST.index)
+    """Give the state that matters most; unset hides an all-clear, never a warning."""
+    return min(states, key=lambda state: state.rank)
 
 
 def combine(how: Combine, states: Sequence[State]) -> State:
@@ -47,7 +44,7 @@ def combine(how: Combine, states: Sequence[State]) -> State:
         return worst(states)
     if State.UNSET in states:
         return State.UNSET
-    return max(states, key=_BAD_FIRST.index)
+    return max(states, key=lambda state: state.rank)
 
 
 def deciding(how: Combine, state: State, triggers: Sequence[TriggerLine]) -> TriggerLine | None:

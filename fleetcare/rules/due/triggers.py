@@ -49,14 +49,11 @@ def counted_next(
     on_grid = anchor is Anchor.ON_GRID
     factor = Decimal(1) if on_grid else factor
     interval = trigger.interval * factor
-    owed = interval
-    is_first = mark.is_start and trigger.first is not None
-    if is_first and trigger.first is not None:
-        owed = trigger.first * factor
-    ahead = counted_ahead(trigger, owed)
+    first = trigger.first if mark.is_start else None
+    owed = interval if first is None else first * factor
     passed: list[Point] = []
-    if on_grid and not is_first:
-        credit = Decimal(0) if mark.is_start else min(counted_ahead(trigger, interval), interval / 4)
+    if on_grid and first is None:
+        credit = Decimal(0) if mark.is_start else min(counted_ahead(trigger, interval, interval), interval / 4)
         point = next_multiple(origin, interval, mark.done + credit)
         if mark.own is not None:
             skipped = next_multiple(origin, interval, mark.own)
@@ -70,7 +67,8 @@ def counted_next(
             point += owed
     else:
         point = mark.done + owed
-    return NextPoint(point, interval, ahead, trigger.grace, factor, is_first, tuple(passed))
+    ahead = counted_ahead(trigger, interval, owed)
+    return NextPoint(point, interval, ahead, trigger.grace, factor, first is not None, tuple(passed))
 
 
 def next_multiple(origin: Decimal, interval: Decimal, after: Decimal) -> Decimal:
@@ -81,14 +79,15 @@ def next_multiple(origin: Decimal, interval: Decimal, after: Decimal) -> Decimal
     return point
 
 
-def counted_ahead(trigger: CountedTrigger, owed: Decimal) -> Decimal:
+def counted_ahead(trigger: CountedTrigger, interval: Decimal, owed: Decimal) -> Decimal:
     """How far before its point a counted trigger is near: as stated, else a tenth of what is owed.
 
-    A stated figure that a duty factor has made as long as the interval counts as half of it.
+    `owed` is the interval or the first interval. A stated figure not below an interval that a duty
+    factor has shortened counts as half of it.
     """
     if trigger.ahead is None:
         return owed * _TENTH
-    return trigger.ahead if trigger.ahead < owed else owed / 2
+    return trigger.ahead if trigger.ahead < interval else interval / 2
 
 
 def calendar_next(
@@ -98,12 +97,11 @@ def calendar_next(
     on_grid = anchor is Anchor.ON_GRID
     factor = Decimal(1) if on_grid else factor
     interval = shorten(trigger.interval, factor)
-    is_first = mark.is_start and trigger.first is not None
-    owed = shorten(trigger.first, factor) if is_first and trigger.first is not None else interval
-    ahead = calendar_ahead(trigger, owed)
+    first = trigger.first if mark.is_start else None
+    owed = interval if first is None else shorten(first, factor)
     passed: list[Point] = []
-    if on_grid and not is_first:
-        credit = 0 if mark.is_start else min(calendar_ahead(trigger, interval), interval.nominal_days // 4)
+    if on_grid and first is None:
+        credit = 0 if mark.is_start else _grid_credit(trigger, interval)
         chain = _next_on_grid(origin, interval, mark.done + timedelta(days=credit))
         skipped = _next_on_grid(origin, interval, mark.own or chain.day)
         while mark.own is not None and skipped.day < chain.day:
@@ -121,10 +119,10 @@ def calendar_next(
     next_point = NextPoint(
         point=nominal + timedelta(days=window or 0),
         interval=interval,
-        ahead=Decimal(ahead),
+        ahead=Decimal(calendar_ahead(trigger, interval, owed)),
         grace=Decimal(trigger.grace),
         factor=factor,
-        is_first=is_first,
+        is_first=first is not None,
         passed=tuple(passed),
         nominal=nominal if window is not None else None,
         opens=nominal - timedelta(days=window) if window is not None else None,
@@ -132,15 +130,23 @@ def calendar_next(
     return next_point, chain
 
 
-def calendar_ahead(trigger: CalendarTrigger, owed: Span) -> int:
+def calendar_ahead(trigger: CalendarTrigger, interval: Span, owed: Span) -> int:
     """How many days before its point a calendar trigger is near: as stated, else a tenth of what is owed.
 
     The default is in whole days, rounded down, from 1 to 30, but 0 for an interval of one day.
+    A stated figure not below a shortened interval counts as half of it, as in `counted_ahead`.
     """
-    days = owed.nominal_days
     if trigger.ahead is not None:
-        return trigger.ahead if trigger.ahead < days else days // 2
+        return trigger.ahead if trigger.ahead < interval.nominal_days else interval.nominal_days // 2
+    days = owed.nominal_days
     return 0 if days <= 1 else max(1, min(30, days // 10))
+
+
+def _grid_credit(trigger: CalendarTrigger, interval: Span) -> int:
+    """How many days before a grid day work serves it: anywhere in its window, else by the early credit."""
+    if trigger.window_days is not None:
+        return trigger.window_days
+    return min(calendar_ahead(trigger, interval, interval), interval.nominal_days // 4)
 
 
 def _next_on_grid(origin: date, interval: Span, after: date) -> Chain:
