@@ -62,11 +62,11 @@ def say_trigger(trigger: Trigger, unit: str) -> str:
 
 
 def say_amount(value: Decimal, unit: str) -> str:
-    """Say a figure in base units in the unit it is shown in, to the tenth; ~ marks one that is not exact."""
+    """Say a figure in base units, not negative, in the unit it is shown in, to the tenth."""
     shown = from_base(value, unit)
     rounded = round(shown, 1)
     if rounded == 0 and shown != 0:
-        return f"{'under' if shown > 0 else 'over -'} 0.1 {unit}"
+        return f"under 0.1 {unit}"
     return f"{plain(rounded)} {unit}"
 
 
@@ -167,9 +167,17 @@ def _say_sum(line: DueLine, trigger: TriggerLine, next_point: NextPoint, facts: 
     if line.version.effective_anchor is not Anchor.FROM_DONE:
         text += f"; {_ANCHORS[line.version.effective_anchor]}"
     if next_point.passed:
-        count = len(next_point.passed)
-        text += f"; {count} whole {'interval' if count == 1 else 'intervals'} missed"
+        text += f"; {_say_passed(line, next_point.passed, unit)}"
     return text
+
+
+def _say_passed(line: DueLine, passed: tuple[Point, ...], unit: str) -> str:
+    """Name the grid points skipped, or count the whole intervals missed."""
+    if line.version.effective_anchor is Anchor.ON_GRID:
+        points = (point.isoformat() if isinstance(point, date) else say_amount(point, unit) for point in passed)
+        return f"skipped {', '.join(points)}"
+    count = len(passed)
+    return f"{count} whole {'interval' if count == 1 else 'intervals'} missed"
 
 
 def _say_now(trigger: TriggerLine, next_point: NextPoint, facts: ItemFacts, unit: str) -> str:
