@@ -39,7 +39,8 @@ def load_tasks(
         ids=list(item_ids),
     )
     task_ids = [row[1] for row in rows]
-    versions = _load_versions(connection, task_ids)
+    by_task = {row[1]: counters.get(row[0], {}) for row in rows}
+    versions = _load_versions(connection, task_ids, by_task)
     origins = _load_origins(connection, task_ids, on, counters)
     calls = _load_calls(connection, task_ids, on)
     deferrals = _load_deferrals(connection, task_ids, on, counters)
@@ -58,7 +59,10 @@ def load_tasks(
     return {item_id: tuple(found) for item_id, found in tasks.items()}
 
 
-def _load_versions(connection: "Connection", task_ids: Sequence[int]) -> dict[int, tuple[TaskVersion, ...]]:
+def _load_versions(
+    connection: "Connection", task_ids: Sequence[int], counters: Counters
+) -> dict[int, tuple[TaskVersion, ...]]:
+    """Load the versions of some tasks, by task; `counters` are those of each task's item."""
     rows = fetch(
         connection,
         "select task_id, id, from_on, combine, anchor, not_later_than, needs_sheet, once, on_condition,"
@@ -71,7 +75,7 @@ def _load_versions(connection: "Connection", task_ids: Sequence[int]) -> dict[in
         fetch(
             connection,
             "select version_id, kind, every, every_unit, first, first_unit, ahead, ahead_unit, grace, grace_unit,"
-            " once_each, window_days, month_end, grid_origin, grid_unit"
+            " once_each, window_days, month_end, grid_origin, grid_unit, grid_on"
             " from task_trigger where version_id in :ids order by place",
             ids=ids,
         )
@@ -88,7 +92,7 @@ def _load_versions(connection: "Connection", task_ids: Sequence[int]) -> dict[in
     for row in rows:
         version = TaskVersion(
             from_on=known_day(row[2]),
-            triggers=tuple(_trigger(trigger) for trigger in triggers.get(row[1], ())),
+            triggers=tuple(_trigger(trigger, counters[row[0]]) for trigger in triggers.get(row[1], ())),
             combine=Combine(row[3]),
             anchor=Anchor(row[4]) if row[4] else None,
             not_later_than=parse_span(row[5]) if row[5] else None,
@@ -110,7 +114,7 @@ def _load_versions(connection: "Connection", task_ids: Sequence[int]) -> dict[in
     return {task_id: tuple(found) for task_id, found in versions.items()}
 
 
-def _trigger(row: Row) -> Trigger:
+def _trigger(row: Row, counters: Mapping[Kind, CounterHistory]) -> Trigger:
     kind = Kind(row[1])
     if kind is Kind.CALENDAR:
         return CalendarTrigger(
@@ -129,8 +133,17 @@ def _trigger(row: Row) -> Trigger:
         first=_base(row[4], row[5]),
         ahead=_base(row[6], row[7]),
         grace=_base(row[8], row[9]) or Decimal(0),
-        grid_origin=_base(row[13], row[14]) if row[13] else None,
+        grid_origin=_grid_life(row, counters.get(kind)) if row[13] else None,
     )
+
+
+def _grid_life(row: Row, counter: CounterHistory | None) -> Decimal:
+    """Give the life total a grid begins at: what the dial showed on its day, or the figure itself without a meter."""
+    base = to_base(Decimal(row[13]), row[14])
+    if counter is None or counter.unit is None:
+        return base
+    life = counter.life_at(from_base(base, counter.unit), known_day(row[15]))
+    return base if life is None else life
 
 
 def _load_origins(connection: "Connection", task_ids: Sequence[int], on: date, counters: Counters) -> dict[int, Origin]:
@@ -145,14 +158,14 @@ def _load_origins(connection: "Connection", task_ids: Sequence[int], on: date, c
         row[0]: row
         for row in fetch(
             connection,
-            'select task_id, id, as_new, "on" from task_origin where task_id in :ids order by id',
+            'select task_id, id, as_new, "on", stated_on from task_origin where task_id in :ids order by id',
             ids=list(task_ids),
         )
     }
     figures = grouped(
         fetch(
             connection,
-            "select origin_id, meter.kind, origin_figure.value, origin_figure.unit from origin_figure"
+            "select origin_id, meter.kind, origin_figure.value, origin_figure.unit, meter.id, meter.unit from origin_figure"
             " join meter on meter.id = origin_figure.meter_id where origin_id in :ids order by origin_figure.id",
             ids=[row[1] for row in stated.values()],
         )
@@ -160,29 +173,30 @@ def _load_origins(connection: "Connection", task_ids: Sequence[int], on: date, c
     starts = load_start_figures(connection, sorted({row[1] for row in tasks}))
     origins: dict[int, Origin] = {}
     for task_id, item_id, item_as_new, in_service_on in tasks:
-        _, origin_id, as_new, origin_on = stated.get(task_id, (task_id, None, item_as_new, None))
+        _, origin_id, as_new, origin_on, stated_on = stated.get(task_id, (task_id, None, item_as_new, None, None))
         if as_new:
             if in_service_on is not None:
                 origins[task_id] = Origin(True, day(in_service_on), starts.get(item_id, {}))
             continue
-        life = _life_then(counters.get(item_id, {}), day(origin_on), figures.get(origin_id, ()), on)
+        told = figures.get(origin_id, ())
+        life = _life_then(counters.get(item_id, {}), day(origin_on), told, day(origin_on) or day(stated_on) or on)
         if origin_on is not None or life:
             origins[task_id] = Origin(False, day(origin_on), life)
     return origins
 
 
 def _life_then(
-    counters: Mapping[Kind, CounterHistory], origin_day: date | None, figures: Sequence[Row], on: date
+    counters: Mapping[Kind, CounterHistory], origin_day: date | None, figures: Sequence[Row], read_on: date
 ) -> dict[Kind, Decimal]:
-    """Give the life totals of a last-done: figures as stated, else what the readings say of its day."""
+    """Give the life totals of a last-done: figures as each dial showed them on `read_on`, else what readings say."""
     life = {}
     for kind, counter in counters.items():
         known = counter.figure_on(origin_day) if origin_day is not None else None
         if known is not None:
             life[kind] = known.value
-    for _, name, value, unit in figures:
-        counter = counters[Kind(name)]
-        counted = counter.life_at(from_base(to_base(Decimal(value), unit), counter.unit or unit), origin_day or on)
+    for _, name, value, unit, meter_id, meter_unit in figures:
+        dial = from_base(to_base(Decimal(value), unit), meter_unit)
+        counted = counters[Kind(name)].life_of(meter_id, dial, read_on)
         if counted is not None:
             life[Kind(name)] = counted
     return life
@@ -232,19 +246,22 @@ def _load_deferrals(
     figures = grouped(
         fetch(
             connection,
-            "select deferral_id, kind, role, value, unit from deferral_figure where deferral_id in :ids order by id",
+            "select deferral_id, deferral_figure.kind, role, value, deferral_figure.unit, meter.id, meter.unit"
+            " from deferral_figure left join meter on meter.id = deferral_figure.meter_id"
+            " where deferral_id in :ids order by deferral_figure.id",
             ids=[row[1] for row in rows],
         )
     )
     deferrals: dict[int, list[Deferral]] = {}
     for task_id, deferral_id, made_on, counts_from, why, by, until_on, item_id in rows:
         ends: dict[str, dict[Kind, Decimal]] = {"until": {}, "cap": {}}
-        for _, kind, role, value, unit in figures.get(deferral_id, ()):
+        for _, kind, role, value, unit, meter_id, meter_unit in figures.get(deferral_id, ()):
             counter = counters.get(item_id, {}).get(Kind(kind))
             if role == "cap":
                 ends[role][Kind(kind)] = to_base(Decimal(value), unit)
             elif counter is not None:
-                life = counter.life_at(Decimal(value), known_day(made_on))
+                dial = from_base(to_base(Decimal(value), unit), meter_unit)
+                life = counter.life_of(meter_id, dial, known_day(made_on))
                 if life is not None:
                     ends[role][Kind(kind)] = life
         deferrals.setdefault(task_id, []).append(

@@ -107,7 +107,7 @@ def _apply(session: "Session", item: FoundItem, drafts: Sequence[TaskDraft], sta
         covers = tuple(name for name in draft.covers if name.casefold() not in {out.casefold() for out in left_out})
         task_id = add_task(session, item, draft.model_copy(update={"covers": covers}), today)
         if start.word is not None:
-            set_start(session, task_id, as_new=start.word == "start")
+            set_start(session, task_id, today, as_new=start.word == "start")
         elif start.last_done:
             set_last_done(session, item, task_id, start.last_done, today, "--from")
     rows = {row.task: row for row in due_rows(session.connection(), today, Filters(engine=item.tag))}

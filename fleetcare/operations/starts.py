@@ -17,9 +17,9 @@ if TYPE_CHECKING:
     from sqlalchemy.orm import Session
 
 
-def set_start(session: "Session", task_id: int, *, as_new: bool) -> None:
+def set_start(session: "Session", task_id: int, today: date, *, as_new: bool) -> None:
     """Let a task count from the item's start, or from nothing until somebody says when it was done."""
-    session.add(TaskOrigin(task_id=task_id, as_new=as_new))
+    session.add(TaskOrigin(task_id=task_id, as_new=as_new, stated_on=today))
     session.flush()
 
 
@@ -41,7 +41,7 @@ def set_last_done(
     on = days[0] if days else None
     if on is not None and on > today:
         raise Refused(f"{option} {on} has not come yet", f"give a day up to {today}")
-    origin = TaskOrigin(task_id=task_id, on=on)
+    origin = TaskOrigin(task_id=task_id, stated_on=today, on=on)
     session.add(origin)
     session.flush()
     meters = _meters_counted(session, item, task_id, on or today)

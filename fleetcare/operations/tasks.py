@@ -43,7 +43,7 @@ def add_task(session: "Session", item: FoundItem, draft: TaskDraft, today: date)
     session.add(row)
     session.flush()
     # The first version holds on every day, whenever it was typed.
-    _add_version(session, item, row.id, draft, date.min)
+    _add_version(session, item, row.id, draft, date.min, grid_on=today)
     if draft.last_done:
         set_last_done(session, item, row.id, draft.last_done, today)
     return row.id
@@ -69,7 +69,8 @@ def edit_task(
         merged[field] = _merged(stored[field], changes.get(field), without)
     merged["name"] = name
     draft = read_draft(TaskDraft, merged, lambda field: "--" + field.replace("_", "-"))
-    _add_version(session, item, task_id, draft, on)
+    kept = None if changes.get("grid_origin") else _grid_on(session, task_id, on)
+    _add_version(session, item, task_id, draft, on, grid_on=kept or today)
     if draft.last_done:
         set_last_done(session, item, task_id, draft.last_done, today)
     return task_id
@@ -83,7 +84,10 @@ def remove_task(session: "Session", item: FoundItem, name: str, on: date) -> int
     return task_id
 
 
-def _add_version(session: "Session", item: FoundItem, task_id: int, draft: TaskDraft, from_on: date) -> None:
+def _add_version(
+    session: "Session", item: FoundItem, task_id: int, draft: TaskDraft, from_on: date, *, grid_on: date
+) -> None:
+    """Store a version; `grid_on` is the day whose dial a grid's origin was read off."""
     version = TaskVersion(
         task_id=task_id,
         from_on=from_on,
@@ -102,7 +106,7 @@ def _add_version(session: "Session", item: FoundItem, task_id: int, draft: TaskD
     session.flush()
     meters = {meter.kind: meter.unit for meter in find_meters(session.connection(), item.id, date.max)}
     for place, trigger in enumerate(draft.triggers()):
-        session.add(_trigger_row(version.id, place, trigger, meters))
+        session.add(_trigger_row(version.id, place, trigger, meters, grid_on))
     for name, quantity in draft.part:
         session.add(TaskPart(version_id=version.id, name=name, quantity=quantity))
     for covered in draft.covers:
@@ -111,7 +115,9 @@ def _add_version(session: "Session", item: FoundItem, task_id: int, draft: TaskD
     _refuse_cycle(session, item, task_id)
 
 
-def _trigger_row(version_id: int, place: int, trigger: TriggerDraft, meters: Mapping[Kind, str]) -> TaskTrigger:
+def _trigger_row(
+    version_id: int, place: int, trigger: TriggerDraft, meters: Mapping[Kind, str], grid_on: date
+) -> TaskTrigger:
     row = TaskTrigger(
         version_id=version_id,
         place=place,
@@ -129,6 +135,7 @@ def _trigger_row(version_id: int, place: int, trigger: TriggerDraft, meters: Map
     origin = trigger.grid_origin
     if isinstance(origin, Figure):
         row.grid_origin, row.grid_unit = plain(origin.value), origin.unit or meters.get(trigger.kind, "")
+        row.grid_on = grid_on
     elif origin is not None:
         row.grid_origin = origin.isoformat()
     return row
@@ -162,17 +169,28 @@ def names_taken(session: "Session", item: FoundItem) -> set[str]:
     return {row.name_key for row in rows}
 
 
-def _stored(session: "Session", task_id: int, on: date) -> dict[str, Any]:
-    """Give the version in force on a day as the values of a draft."""
+def _version_on(session: "Session", task_id: int, on: date) -> tuple[TaskVersion, Sequence[TaskTrigger]]:
+    """Give the version in force on a day with its triggers."""
     versions = session.scalars(
         select(TaskVersion)
         .where(col(TaskVersion.task_id) == task_id, col(TaskVersion.from_on) <= on)
         .order_by(col(TaskVersion.from_on), col(TaskVersion.id))
     ).all()
-    version = versions[-1]
     triggers = session.scalars(
-        select(TaskTrigger).where(col(TaskTrigger.version_id) == version.id).order_by(col(TaskTrigger.place))
+        select(TaskTrigger).where(col(TaskTrigger.version_id) == versions[-1].id).order_by(col(TaskTrigger.place))
     ).all()
+    return versions[-1], triggers
+
+
+def _grid_on(session: "Session", task_id: int, on: date) -> date | None:
+    """Give the day whose dial the grid's origin in force was read off, None where there is no such figure."""
+    _, triggers = _version_on(session, task_id, on)
+    return next((trigger.grid_on for trigger in triggers if trigger.grid_on is not None), None)
+
+
+def _stored(session: "Session", task_id: int, on: date) -> dict[str, Any]:
+    """Give the version in force on a day as the values of a draft."""
+    version, triggers = _version_on(session, task_id, on)
     parts = session.scalars(select(TaskPart).where(col(TaskPart.version_id) == version.id))
     covered = session.scalars(
         select(Task)

@@ -51,6 +51,15 @@ class CounterHistory:
             return None
         return start.life + self._moved(start, dial, on)
 
+    def life_of(self, meter_id: int, dial: Decimal, on: date) -> Decimal | None:
+        """Turn what one meter showed on a day into a life total; None where it had not begun to count by then."""
+        begun = [
+            start
+            for start in self.starts
+            if start.fit.meter.id == meter_id and (start.fit.from_on is None or start.fit.from_on <= on)
+        ]
+        return begun[-1].life + self._moved(begun[-1], dial, on) if begun else None
+
     def metered_at(self, dial: Decimal, on: date) -> Decimal | None:
         """Like `life_at`, without what ran unmetered: what a meter can have gained between two readings."""
         start = self._start_on(on)

@@ -311,6 +311,7 @@ def upgrade() -> None:
         "task_origin",
         ref("task_id", "task"),
         flag("as_new"),
+        day("stated_on"),
         day("on", nullable=True),
     )
     table(
@@ -398,6 +399,7 @@ def upgrade() -> None:
         flag("month_end"),
         word("grid_origin"),
         word("grid_unit"),
+        day("grid_on", nullable=True),
         sa.UniqueConstraint("version_id", "kind"),
     )
 

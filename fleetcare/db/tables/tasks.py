@@ -60,7 +60,8 @@ class TaskVersion(Row, table=True):
 class TaskTrigger(Row, table=True):
     """One interval of a version, at most one of a kind, all figures as entered with their units.
 
-    `place` keeps the order of the options. `grid_origin` is a figure, with `grid_unit`, or an ISO date, or empty.
+    `place` keeps the order of the options. `grid_origin` is empty, an ISO date, or a figure: in `grid_unit`, as the
+    dial showed it on the day `grid_on`.
     """
 
     __tablename__ = "task_trigger"
@@ -82,6 +83,7 @@ class TaskTrigger(Row, table=True):
     month_end: bool = False
     grid_origin: str = ""
     grid_unit: str = ""
+    grid_on: date | None = None
 
 
 class TaskCover(Row, table=True):
@@ -105,12 +107,16 @@ class TaskPart(Row, table=True):
 
 
 class TaskOrigin(Row, table=True):
-    """What a task counts from where no entry says; the newest row of a task holds."""
+    """What a task counts from where no entry says; the newest row of a task holds.
+
+    A figure without a day `on` of its own is what the dial showed on the day it was `stated_on`.
+    """
 
     __tablename__ = "task_origin"
 
     task_id: int = ref("task")
     as_new: bool = False
+    stated_on: date
     on: date | None = None
 
 
