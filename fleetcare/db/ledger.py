@@ -13,6 +13,9 @@ from fleetcare.db.tables import LedgerEntry, Row, metadata
 
 PAYLOAD_VERSION = 1
 
+# The order of dependency, then of ids, makes the same operations write the same ledger.
+_IN_ORDER = tuple(table.name for table in metadata.sorted_tables)
+
 
 def keep_ledger(session: Session) -> None:
     """Hook a session so that what it stores is stamped, never deleted, and appended to the ledger.
@@ -40,10 +43,9 @@ def _append(session: Session, flush: UOWTransaction) -> None:
     connection = session.connection()
     entry = last_entry(connection)
     added = []
-    # The order of dependency, then of ids, makes the same operations write the same ledger.
-    for table in metadata.sorted_tables:
-        for row in rows(connection, table.name, touched.get(table.name, ())):
-            content = (entry.seq + 1, table.name, row["uid"], PAYLOAD_VERSION, payload(row), entry.hash)
+    for table in (name for name in _IN_ORDER if name in touched):
+        for row in rows(connection, table, touched[table]):
+            content = (entry.seq + 1, table, row["uid"], PAYLOAD_VERSION, payload(row), entry.hash)
             entry = Entry(*content, seal(*content))
             added.append(entry._asdict())
     if added:

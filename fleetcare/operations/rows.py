@@ -6,23 +6,27 @@ Reading never loads the tables' classes: declaring them costs more time than the
 from collections.abc import Iterable, Sequence
 from datetime import date
 from decimal import Decimal
+from functools import cache
 from typing import TYPE_CHECKING, Any, cast
 
 if TYPE_CHECKING:
-    from sqlalchemy import Connection
+    from sqlalchemy import Connection, TextClause
 
 Row = tuple[Any, ...]
 
 
 def fetch(connection: "Connection", sql: str, **values: object) -> Sequence[Row]:
     """Give all rows of a statement. A name in it bound to a list or tuple stands for all of its values."""
+    lists = tuple(name for name, value in values.items() if isinstance(value, list | tuple))
+    return cast("Sequence[Row]", connection.execute(_statement(sql, lists), values).all())
+
+
+@cache
+def _statement(sql: str, lists: tuple[str, ...]) -> "TextClause":
+    """Give a statement read once: what is asked again and again need not be taken apart again."""
     from sqlalchemy import bindparam, text
 
-    statement = text(sql)
-    lists = [name for name, value in values.items() if isinstance(value, list | tuple)]
-    if lists:
-        statement = statement.bindparams(*(bindparam(name, expanding=True) for name in lists))
-    return cast("Sequence[Row]", connection.execute(statement, values).all())
+    return text(sql).bindparams(*(bindparam(name, expanding=True) for name in lists))
 
 
 def day(value: str | date | None) -> date | None:
