@@ -12,14 +12,12 @@ from fleetcare.domain.quantities import Figure, Kind, from_base, to_base
 from fleetcare.drafts.items import ItemDraft
 from fleetcare.errors import Refused
 from fleetcare.operations.find import FoundItem, find_meters, pick_meter
-from fleetcare.operations.load import load_counters
 from fleetcare.operations.rows import fetch
 
 if TYPE_CHECKING:
     from sqlalchemy.orm import Session
 
 _START_NOTE = "start figure"
-_SHOWN_BY_A_DIAL = Decimal("0.1")
 
 
 def add_meters(session: "Session", item: FoundItem, draft: ItemDraft, from_on: date | None) -> None:
@@ -87,17 +85,16 @@ def count_with_machine(session: "Session", engine: FoundItem, machine: FoundItem
     own = {meter.kind for meter in _own_meters(session, engine.id)}
     for meter in _own_meters(session, machine.id):
         if meter.kind not in own:
-            first = _dial_on(session, machine.id, meter, on)
-            session.add(MeterFit(meter_id=meter.id, item_id=engine.id, from_on=on, first=first))
+            session.add(MeterFit(meter_id=meter.id, item_id=engine.id, from_on=on))
     session.flush()
 
 
 def stop_counting(session: "Session", engine: FoundItem, machine_id: int, on: date) -> None:
-    """End what a machine's meters count for an engine, at what they show on a day."""
+    """End what a machine's meters count for an engine on a day."""
     for meter in _own_meters(session, machine_id):
         for fit in _open_fits(session, meter.id):
             if fit.item_id == engine.id:
-                fit.to_on, fit.last = on, _dial_on(session, machine_id, meter, on)
+                fit.to_on = on
     session.flush()
 
 
@@ -122,25 +119,13 @@ def _open_fits(session: "Session", meter_id: int) -> list[MeterFit]:
     )
 
 
-def _dial_on(session: "Session", item_id: int, meter: Meter, on: date) -> Decimal:
-    """Give what an item's own meter showed on a day, between readings to the tenth; its first figure if never read."""
-    history = load_counters(session.connection(), [item_id], on)[item_id][meter.kind]
-    figure = history.figure_on(on)
-    if figure is None:
-        return history.starts[-1].fit.first if history.starts else Decimal(0)
-    dial = history.dial_of(figure.value)
-    assert dial is not None
-    return round(dial / _SHOWN_BY_A_DIAL) * _SHOWN_BY_A_DIAL if figure.approximate else dial
-
-
 def _stop_borrowing(session: "Session", item: FoundItem, kind: Kind, on: date | None) -> None:
     """End a machine's count of a kind that the engine from now on counts by itself."""
     for meter in find_meters(session.connection(), item.id, on or date.max):
         if meter.kind is kind and meter.owner_id != item.id and on is not None:
-            machine_meter = session.get_one(Meter, meter.id)
             for fit in _open_fits(session, meter.id):
                 if fit.item_id == item.id:
-                    fit.to_on, fit.last = on, _dial_on(session, meter.owner_id, machine_meter, on)
+                    fit.to_on = on
 
 
 def _lend_to_fitted(session: "Session", machine: FoundItem, meter: Meter, on: date | None) -> None:
@@ -153,7 +138,7 @@ def _lend_to_fitted(session: "Session", machine: FoundItem, meter: Meter, on: da
     for fitting in fittings:
         if meter.kind not in {own.kind for own in _own_meters(session, fitting.engine_id)}:
             begins = max(on, fitting.from_on) if on is not None else fitting.from_on
-            session.add(MeterFit(meter_id=meter.id, item_id=fitting.engine_id, from_on=begins, first=Decimal(0)))
+            session.add(MeterFit(meter_id=meter.id, item_id=fitting.engine_id, from_on=begins))
 
 
 def _set_start_figure(session: "Session", item: FoundItem, kind: Kind, figure: Figure, unit: str) -> None:

@@ -11,10 +11,10 @@ from fleetcare.domain.meters import Counter, LifeFigure, Meter, MeterFit, Readin
 from fleetcare.domain.quantities import COUNTED, Kind, from_base, to_base
 from fleetcare.operations.entries import first_entries, first_of
 from fleetcare.operations.load_tasks import load_start_figures, load_tasks
-from fleetcare.operations.rows import Row, day, fetch, figure, grouped, known_day
+from fleetcare.operations.rows import Row, day, fetch, grouped, known_day
 from fleetcare.operations.settings import stale_days
 from fleetcare.rules.due.facts import ItemFacts
-from fleetcare.rules.meters import CounterHistory, counter_history
+from fleetcare.rules.meters import CounterHistory, counter_history, dial_on
 
 if TYPE_CHECKING:
     from sqlalchemy import Connection
@@ -124,20 +124,25 @@ def load_counters(connection: "Connection", ids: Sequence[int], on: date) -> dic
         counter = Counter(
             kind,
             starts.get(item_id, {}).get(kind, Decimal(0)),
-            tuple(_fit(row, on) for row in rows),
+            tuple(_fit(row, on, readings.get(row[1], ())) for row in rows),
             tuple(reading for meter_id in {row[1] for row in rows} for reading in readings.get(meter_id, ())),
         )
         counters.setdefault(item_id, {})[kind] = counter_history(counter, on)
     return counters
 
 
-def _fit(row: Row, on: date) -> MeterFit:
-    """Read a fit as known on a day: an end that lies later has not come yet."""
+def _fit(row: Row, on: date, readings: Sequence[Reading]) -> MeterFit:
+    """Read a fit as known on a day: an end that lies later has not come yet, and what was not stated was read."""
     meter = Meter(row[1], Kind(row[2]), row[3], Decimal(10) ** row[4] if row[4] else None)
-    ended = day(row[7])
-    if ended is not None and ended > on:
-        return MeterFit(meter, day(row[5]), Decimal(row[6]))
-    return MeterFit(meter, day(row[5]), Decimal(row[6]), ended, figure(row[8]), Decimal(row[9] or 0))
+
+    def shown(stated: str | None, then: date | None) -> Decimal:
+        return Decimal(stated) if stated is not None else dial_on(meter, readings, then or date.min, on)
+
+    begun, ended = day(row[5]), day(row[7])
+    first = shown(row[6], begun)
+    if ended is None or ended > on:
+        return MeterFit(meter, begun, first)
+    return MeterFit(meter, begun, first, ended, shown(row[8], ended), Decimal(row[9] or 0))
 
 
 def _load_readings(connection: "Connection", meter_ids: Sequence[int]) -> dict[int, list[Reading]]:

@@ -10,8 +10,10 @@ from dataclasses import dataclass
 from datetime import date
 from decimal import Decimal
 
-from fleetcare.domain.meters import Counter, LifeFigure, LifeReading, MeterFit, Reading
+from fleetcare.domain.meters import Counter, LifeFigure, LifeReading, Meter, MeterFit, Reading
 from fleetcare.domain.quantities import from_base, to_base
+
+_TENTH = Decimal("0.1")
 
 
 @dataclass(frozen=True, slots=True)
@@ -132,6 +134,21 @@ def counter_history(counter: Counter, until: date) -> CounterHistory:
                 break
     ordered = tuple(sorted(lives.values(), key=lambda r: (r.on, r.life)))
     return CounterHistory(counter, until, ordered, starts, turns)
+
+
+def dial_on(meter: Meter, readings: Sequence[Reading], on: date, until: date) -> Decimal:
+    """Tell what a meter showed on a day by its readings up to `until`, in its unit.
+
+    Between two readings to the tenth; before the first what that one says, 0 where it was never read.
+    """
+    own = tuple(reading for reading in readings if reading.meter_id == meter.id)
+    history = counter_history(Counter(meter.kind, Decimal(0), (MeterFit(meter, None, Decimal(0)),), own), until)
+    if not history.readings:
+        return Decimal(0)
+    figure = history.figure_on(on) or LifeFigure(history.readings[0].life)
+    dial = history.dial_of(figure.value)
+    assert dial is not None
+    return round(dial / _TENTH) * _TENTH if figure.approximate else dial
 
 
 def _starts(came_with: Decimal, fits: Sequence[MeterFit], turns: Iterable[Reading]) -> tuple[_Start, ...]:

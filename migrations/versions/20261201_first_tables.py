@@ -270,7 +270,7 @@ def upgrade() -> None:
         ref("meter_id", "meter"),
         ref("item_id", "item"),
         day("from_on", nullable=True),
-        word("first"),
+        word("first", nullable=True),
         day("to_on", nullable=True),
         word("last", nullable=True),
         word("unmetered"),

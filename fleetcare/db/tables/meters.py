@@ -26,8 +26,9 @@ class Meter(Row, table=True):
 class MeterFit(Row, table=True):
     """A stretch of time in which a meter counts for an item.
 
-    `from_on` None means since ever, `to_on` None until further notice. `unmetered` is what ran after the
-    end without being counted.
+    `from_on` None means since ever, `to_on` None until further notice. `first` and `last` are stated where a meter
+    is new or replaced; None stands for what its readings say of that day, however late they come in.
+    `unmetered` is what ran after the end without being counted.
     """
 
     __tablename__ = "meter_fit"
@@ -35,7 +36,7 @@ class MeterFit(Row, table=True):
     meter_id: int = ref("meter")
     item_id: int = ref("item")
     from_on: date | None = None
-    first: Decimal = exact()
+    first: Decimal | None = exact(default=None)
     to_on: date | None = None
     last: Decimal | None = exact(default=None)
     unmetered: Decimal = exact(default=Decimal(0))
