@@ -16,13 +16,10 @@ from decimal import Decimal
 from pathlib import Path
 from typing import Any, TextIO
 
+from fleetcare.domain.printable import UNPRINTABLE, clean
 from fleetcare.domain.quantities import plain
 from fleetcare.errors import Refused
 
-# Control characters (C0, DEL, C1), line separators, marks that turn writing direction, lone surrogates, invisible tags.
-_UNPRINTABLE = re.compile(
-    "[\x00-\x1f\x7f-\x9f\u061c\u200e\u200f\u2028-\u202e\u2066-\u2069\ufeff\ud800-\udfff\U000e0000-\U000e007f]"
-)
 # What a spreadsheet may run as a formula; the last four are the wide forms of = + - @.
 _FORMULA = re.compile("[=+\\-@\t\r\uff1d\uff0b\uff0d\uff20]")
 _NUMBER = re.compile(r"[+-]?[0-9]+(\.[0-9]+)?", re.ASCII)
@@ -69,11 +66,6 @@ def abandon() -> None:
         os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
 
 
-def clean(text: str) -> str:
-    """Give the text with everything that could drive a terminal shown as an escape: ESC becomes \\x1b."""
-    return _UNPRINTABLE.sub(lambda found: found[0].encode("unicode_escape").decode(), text)
-
-
 def table(headers: Sequence[str], rows: Iterable[Sequence[Any]], width: int | None = None) -> str:
     """Give rows as an aligned plain-text table; numbers stand to the right, too-wide text wraps in its column.
 
@@ -109,7 +101,7 @@ def json_text(value: Any) -> str:
     """Give one JSON value, figures unrounded (whole Decimals as integers), dates as ISO text, ending in a newline."""
     text = json.dumps(value, ensure_ascii=False, allow_nan=False, indent=2, default=_json_value)
     # json.dumps leaves C1 and direction marks as they are; they stand inside strings only, so \u escapes fit.
-    return "\n".join(_UNPRINTABLE.sub(_json_escape, line) for line in text.split("\n")) + "\n"
+    return "\n".join(UNPRINTABLE.sub(_json_escape, line) for line in text.split("\n")) + "\n"
 
 
 def _write(stream: TextIO | None, text: str) -> None:

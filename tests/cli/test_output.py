@@ -13,6 +13,7 @@ from pathlib import Path
 import pytest
 
 from fleetcare.cli import output
+from fleetcare.domain.printable import clean
 from fleetcare.errors import Refused
 
 
@@ -33,8 +34,8 @@ class Word(StrEnum):
     ],
 )
 def test_only_what_could_drive_a_terminal_is_shown_as_an_escape(typed: str, shown: str) -> None:
-    assert output.clean(typed) == shown
-    assert output.clean(shown) == shown
+    assert clean(typed) == shown
+    assert clean(shown) == shown
 
 
 def test_an_answer_may_have_lines_but_talk_stays_one_line_each(capsys: pytest.CaptureFixture[str]) -> None:
