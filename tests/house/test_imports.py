@@ -2,10 +2,14 @@
 
 import subprocess
 import sys
+from pathlib import Path
 
 import pytest
 
-HEAVY = ("textual", "rich", "sqlmodel", "sqlalchemy", "alembic", "pydantic", "dateutil")
+from tests.house.conftest import ROOT
+
+HEAVY = {"textual", "rich", "sqlmodel", "sqlalchemy", "alembic", "pydantic", "dateutil"}
+NOT_FOR_READING = {"textual", "rich", "sqlmodel", "alembic", "pydantic"}
 
 PROBE = """
 import sys
@@ -15,16 +19,30 @@ print(status, *sorted({name.partition(".")[0] for name in sys.modules}), file=sy
 """
 
 
+def loaded_by(*words: str) -> set[str]:
+    """Run a command line in a process of its own, and give the top-level modules it loaded."""
+    ran = subprocess.run([sys.executable, "-c", PROBE, *words], capture_output=True, text=True, check=True)
+    status, *loaded = ran.stderr.split()
+    assert status == "0"
+    return set(loaded)
+
+
 @pytest.mark.parametrize(
     "words",
     [("--help",), ("--version",), ("due", "--help"), ("calc", "piston-speed", "--stroke", "90", "--rpm", "3000")],
     ids=" ".join,
 )
 def test_help_and_bench_sums_load_no_database_no_forms_and_no_screen(words: tuple[str, ...]) -> None:
-    ran = subprocess.run([sys.executable, "-c", PROBE, *words], capture_output=True, text=True, check=True)
-    status, *loaded = ran.stderr.split()
-    assert status == "0"
-    assert not set(loaded) & set(HEAVY)
+    assert not loaded_by(*words) & HEAVY
+
+
+@pytest.mark.parametrize("words", [("due", "--format", "csv"), ("engine", "list")], ids=" ".join)
+def test_reading_loads_no_tables_no_migrations_no_forms_and_no_screen(words: tuple[str, ...]) -> None:
+    assert not loaded_by("--db", str(ROOT / "demo_fleet.db"), *words) & NOT_FOR_READING
+
+
+def test_writing_to_a_current_file_loads_no_migrations_and_no_screen(db: Path) -> None:
+    assert not loaded_by("--db", str(db), "engine", "add", "P-01") & {"textual", "rich", "alembic"}
 
 
 def test_the_package_itself_imports_nothing() -> None:
