@@ -3,7 +3,21 @@
 from collections.abc import Callable, Sequence
 
 from fleetcare import __version__
-from fleetcare.cli import calc, defer, demo, due, items, log, output, readings, schedules, tasks
+from fleetcare.cli import (
+    calc,
+    defer,
+    demo,
+    due,
+    forecast,
+    items,
+    log,
+    output,
+    readings,
+    schedules,
+    settings,
+    tasks,
+    upkeep,
+)
 from fleetcare.cli.parser import CommandParser, Commands
 from fleetcare.errors import FleetError, Misread
 
@@ -15,6 +29,9 @@ GROUPS: tuple[Callable[[Commands], None], ...] = (
     readings.add_commands,
     log.add_commands,
     defer.add_commands,
+    forecast.add_commands,
+    settings.add_commands,
+    upkeep.add_commands,
     demo.add_commands,
     calc.add_commands,
 )

@@ -1,10 +1,12 @@
 """The shop's settings: plausible gains a day, when a meter is stale, the shop's name."""
 
+from collections.abc import Callable
 from dataclasses import dataclass
-from decimal import Decimal, InvalidOperation
+from decimal import Decimal
+from difflib import get_close_matches
 from typing import TYPE_CHECKING
 
-from fleetcare.domain.quantities import Kind, plain
+from fleetcare.domain.quantities import Kind, parse_figure, plain
 from fleetcare.errors import Misread, Refused
 from fleetcare.operations.rows import fetch
 
@@ -13,24 +15,49 @@ if TYPE_CHECKING:
     from sqlalchemy.orm import Session
 
 
+def _number(unit: str) -> Callable[[str], str]:
+    """Make a reader of a number above 0; the setting's own unit may stand behind it."""
+
+    def read(value: str) -> str:
+        number, given = parse_figure(value)
+        if given not in {None, unit}:
+            raise Misread(f"{value!r} is not in {unit}", f"give it in {unit}, such as 24")
+        if number <= 0:
+            raise Refused(f"it cannot be {value}", "give a number above 0")
+        return plain(number)
+
+    return read
+
+
+def _days(value: str) -> str:
+    days = _number("d")(value)
+    if not days.isdigit():
+        raise Refused(f"it cannot be {value}", "give whole days")
+    return days
+
+
+def _name(value: str) -> str:
+    return " ".join(value.split())
+
+
 @dataclass(frozen=True, slots=True)
 class SettingSpec:
-    """One setting: its name, what holds where none is stored, and what it means."""
+    """One setting: its name, what holds where none is stored, what it means, and how a value of it is read."""
 
     name: str
     default: str
     meaning: str
-    is_figure: bool = True
+    read: Callable[[str], str]
 
 
 # Plausible gains: 24 hours in a day; two drivers for 1,800 km (common practice).
 SETTINGS = (
-    SettingSpec("cap-hours", "24", "most hours a meter may gain in a day"),
-    SettingSpec("cap-distance", "1800", "most kilometres a meter may gain in a day"),
-    SettingSpec("cap-fuel", "10000", "most litres a meter may gain in a day"),
-    SettingSpec("cap-starts", "200", "most starts a meter may gain in a day"),
-    SettingSpec("stale-days", "", "days after which a reading is stale; empty: twice the engine's own rhythm"),
-    SettingSpec("shop-name", "", "the shop's name, for what is printed", is_figure=False),
+    SettingSpec("cap-hours", "24", "most hours a meter may gain in a day", _number("h")),
+    SettingSpec("cap-distance", "1800", "most kilometres a meter may gain in a day", _number("km")),
+    SettingSpec("cap-fuel", "10000", "most litres a meter may gain in a day", _number("L")),
+    SettingSpec("cap-starts", "200", "most starts a meter may gain in a day", _number("starts")),
+    SettingSpec("stale-days", "", "days after which a reading is stale; empty: twice the engine's own rhythm", _days),
+    SettingSpec("shop-name", "", "the shop's name, for what is printed", _name),
 )
 
 
@@ -52,37 +79,37 @@ def stale_days(connection: "Connection") -> int | None:
 
 
 def spec_of(name: str) -> SettingSpec:
-    """Find a setting by name; refuses an unknown one."""
-    for spec in SETTINGS:
-        if spec.name == name:
-            return spec
-    raise Refused(f"there is no setting {name!r}", f"choose one of {', '.join(spec.name for spec in SETTINGS)}")
+    """Find a setting by name, whatever its case; refuses an unknown one with the nearest names."""
+    specs = {spec.name: spec for spec in SETTINGS}
+    key = name.strip().lower()
+    if key in specs:
+        return specs[key]
+    near = get_close_matches(key, specs, n=3)
+    remedy = f"did you mean {' or '.join(near)}?" if near else f"choose one of {', '.join(specs)}"
+    raise Refused(f"there is no setting {name!r}", remedy)
 
 
-def change_setting(session: "Session", name: str, value: str) -> None:
-    """Store one setting; an empty value goes back to the default."""
+def change_setting(session: "Session", name: str, value: str) -> str:
+    """Store one setting and give its value as stored; an empty one goes back to the default.
+
+    Raises Misread or Refused, naming the setting, for a value it cannot have.
+    """
     from sqlalchemy import select
     from sqlmodel import col
 
     from fleetcare.db.tables import Setting
 
     spec = spec_of(name)
-    stored = "" if value == "" else _checked(spec, value)
-    row = session.scalars(select(Setting).where(col(Setting.name) == name)).one_or_none()
-    row = row or Setting(name=name)
-    row.value = stored or spec.default
+    stored = _checked(spec, value) if value.strip() else spec.default
+    row = session.scalars(select(Setting).where(col(Setting.name) == spec.name)).one_or_none()
+    row = row or Setting(name=spec.name)
+    row.value = stored
     session.add(row)
+    return stored
 
 
 def _checked(spec: SettingSpec, value: str) -> str:
-    if not spec.is_figure:
-        return value.strip()
     try:
-        figure = Decimal(value)
-    except InvalidOperation:
-        raise Misread(f"{spec.name} takes a number, not {value!r}", "write digits, such as 24") from None
-    whole = spec.name == "stale-days"
-    if not figure.is_finite() or figure <= 0 or (whole and figure != int(figure)):
-        kind = "a whole number of days above 0" if whole else "a number above 0"
-        raise Refused(f"{spec.name} cannot be {value}", f"give {kind}; {spec.meaning}")
-    return plain(figure)
+        return spec.read(value)
+    except (Misread, Refused) as error:
+        raise type(error)(f"{spec.name}: {error.detail}", f"{error.remedy} ({spec.meaning})") from None

@@ -1,6 +1,7 @@
 """Looking after the file: a copy of it, whether it is sound, and bringing it up to this program."""
 
 from dataclasses import dataclass
+from itertools import chain, count
 from pathlib import Path
 from typing import TYPE_CHECKING
 
@@ -18,14 +19,16 @@ class Soundness:
     head: str
 
 
-def backup(context: "Context", out: Path) -> Path:
+def backup(context: "Context", out: Path | None = None) -> Path:
     """Copy the database, as of one moment, to the new file `out`, and give its path.
 
-    Raises Refused where that file is there already, NoDatabase where either file cannot be used.
+    Without `out` the copy lies beside the database, named after it and the day. Raises Refused where the
+    file is there already, NoDatabase where either file cannot be used.
     """
     from fleetcare.db.session import copy, require
 
     require(context.path)
+    out = out or _free_name(context)
     refuse_taken(out)
     copy(context.path, out)
     return out
@@ -42,11 +45,12 @@ def check(context: "Context", head: str | None = None) -> Soundness:
 
     The file is taken as it is: an older one is not upgraded. Raises Misread for an unreadable head.
     """
-    from fleetcare.db import chain, session
+    from fleetcare.db import session
+    from fleetcare.db.chain import last_entry
     from fleetcare.db.check import check as problems
 
     with session.reading(context.path, as_is=True) as connection:
-        return Soundness(tuple(problems(connection, head)), chain.last_entry(connection).head)
+        return Soundness(tuple(problems(connection, head)), last_entry(connection).head)
 
 
 def upgrade(context: "Context") -> Path | None:
@@ -54,3 +58,11 @@ def upgrade(context: "Context") -> Path | None:
     from fleetcare.db.session import current
 
     return current(context.path)
+
+
+def _free_name(context: "Context") -> Path:
+    """Give a name beside the database for a copy of the day, numbered where there is one already."""
+    path = context.path
+    name = f"{path.stem}-{context.today().isoformat()}"
+    names = (path.with_name(f"{name}{number}{path.suffix}") for number in chain([""], (f"-{n}" for n in count(2))))
+    return next(free for free in names if not free.exists())

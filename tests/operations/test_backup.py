@@ -38,3 +38,17 @@ def test_a_backup_of_a_missing_file_is_refused(tmp_path: Path) -> None:
 
 def test_a_current_database_needs_no_upgrade(ctx: Context) -> None:
     assert upkeep.upgrade(ctx) is None
+
+
+def test_without_a_name_a_backup_lies_beside_the_database_with_the_day(ctx: Context, db: Path) -> None:
+    add_site(ctx)
+    first, second = upkeep.backup(ctx), upkeep.backup(ctx)
+    assert (first, second) == (db.with_name("yard-2026-05-01.db"), db.with_name("yard-2026-05-01-2.db"))
+    assert sites(Context(str(first))) == sites(Context(str(second))) == ["North Sluice"]
+
+
+def test_a_backup_of_today_is_never_taken_for_a_place_to_write(ctx: Context, db: Path) -> None:
+    taken = db.with_name("yard-2026-05-01.db")
+    taken.mkdir()
+    assert upkeep.backup(ctx) == db.with_name("yard-2026-05-01-2.db")
+    assert list(taken.iterdir()) == []
