@@ -10,7 +10,7 @@ from decimal import Decimal
 from enum import StrEnum
 from typing import Literal, assert_never
 
-from fleetcare.errors import Misread
+from fleetcare.errors import Misread, Refused
 
 
 class Kind(StrEnum):
@@ -152,15 +152,27 @@ def plain(value: Decimal) -> str:
     return "0" if text in {"-0", ""} else text
 
 
+def tenth(value: Decimal) -> Decimal:
+    """Round to the tenth for showing, away from 0 where that would hide a remainder."""
+    rounded = round(value, 1)
+    if rounded == 0 and value != 0:
+        return Decimal("0.1") if value > 0 else Decimal("-0.1")
+    return rounded
+
+
 _FIGURE = re.compile(r"\s*(?P<number>[0-9]+(?:\.[0-9]+)?|\.[0-9]+)\s*(?P<unit>[A-Za-z]*)\s*", re.ASCII)
 _CANONICAL = {symbol.lower(): symbol for symbol in (*UNITS, *SPAN_UNITS)}
 _ALL_UNITS = "h km mi L galus galimp starts d w mo y"
+# Limits of sense, far beyond any engine: they stop slipped keys, and keep every day reached within the calendar.
+_MOST = 999_999_999
+_LONGEST_DAYS = 36_500
 
 
 def parse_figure(text: str) -> tuple[Decimal, str | None]:
     """Read "250h", "1234.5" or "12 mo" as a number and its unit, None where no unit stands.
 
-    Raises Misread for anything else, a bare `gal` included: it does not say whose gallon.
+    Raises Misread for anything else, a bare `gal` included: it does not say whose gallon; Refused for a
+    figure no dial shows.
     """
     found = _FIGURE.fullmatch(text)
     if not found:
@@ -172,7 +184,10 @@ def parse_figure(text: str) -> tuple[Decimal, str | None]:
         raise Misread(f"{text!r} does not say which gallon", "write galus or galimp")
     if unit and unit not in _CANONICAL:
         raise Misread(f"{text!r} has the unknown unit {found['unit']!r}", f"use one of {_ALL_UNITS}")
-    return Decimal(found["number"]), _CANONICAL[unit] if unit else None
+    number = Decimal(found["number"])
+    if number > _MOST:
+        raise Refused(f"{text} cannot be right", f"give a figure up to {_MOST}")
+    return number, _CANONICAL[unit] if unit else None
 
 
 def parse_interval(text: str) -> Amount | Span:
@@ -197,9 +212,12 @@ def parse_dial(text: str) -> Figure:
 
 
 def parse_span(text: str) -> Span:
-    """Read a calendar span: "12mo", "2w". Raises Misread for anything else."""
+    """Read a calendar span: "12mo", "2w". Raises Misread for anything else, Refused for more than a century."""
     number, unit = parse_figure(text)
     for span_unit in SPAN_UNITS:
         if unit == span_unit and number == int(number):
-            return Span(int(number), span_unit)
+            span = Span(int(number), span_unit)
+            if span.nominal_days > _LONGEST_DAYS:
+                raise Refused(f"{text} cannot be right", "give a span of up to 100 years")
+            return span
     raise Misread(f"{text!r} is not a whole number of days, weeks, months or years", "write it like 90d, 2w, 6mo or 1y")

@@ -21,7 +21,7 @@ from fleetcare.domain.quantities import (
     plain,
     to_base,
 )
-from fleetcare.errors import Misread
+from fleetcare.errors import Misread, Refused
 
 
 @pytest.mark.parametrize("kind", COUNTED)
@@ -138,3 +138,23 @@ def test_a_dial_figure_may_leave_its_unit_to_the_meter(
 def test_a_span_of_time_is_not_a_dial_figure() -> None:
     with pytest.raises(Misread, match="'12mo' is a span of time"):
         parse_dial("12mo")
+
+
+@pytest.mark.parametrize("text", ["1000000000", "1000000000h", "99999999999999999999.5km"])
+def test_a_figure_beyond_nine_digits_is_refused_because_no_dial_shows_it(text: str) -> None:
+    with pytest.raises(Refused, match="cannot be right; give a figure up to 999999999"):
+        parse_figure(text)
+
+
+def test_nine_digits_are_read() -> None:
+    assert parse_figure("999999999km") == (Decimal(999_999_999), "km")
+
+
+@pytest.mark.parametrize("text", ["101y", "36501d", "5300w"])
+def test_a_span_of_more_than_a_century_is_refused_because_its_end_may_lie_beyond_the_calendar(text: str) -> None:
+    with pytest.raises(Refused, match="give a span of up to 100 years"):
+        parse_span(text)
+
+
+def test_a_century_is_read() -> None:
+    assert parse_span("100y") == Span(100, "y")
