@@ -6,9 +6,8 @@ from typing import TYPE_CHECKING
 
 from fleetcare.cli import output
 from fleetcare.cli.parser import Commands, whole
-from fleetcare.cli.shop import context_of, say_counted, tenth
+from fleetcare.cli.shop import context_of
 from fleetcare.domain.lines import State
-from fleetcare.domain.quantities import plain
 
 if TYPE_CHECKING:
     from fleetcare.operations.show import ItemPage
@@ -82,18 +81,13 @@ def _null(value: object) -> object:
 
 
 def _table(rows: "Sequence[DueRow]") -> str:
-    """Group the rows as a morning needs them; what waits for a return stands apart, and what is only estimated."""
-    groups: list[tuple[str, list[DueRow]]] = []
-    known = [row for row in rows if not row.is_before_return]
-    for state in State:
-        if state is State.UNSET:
-            groups.append(("probably due by estimate", [row for row in known if row.is_probably_due]))
-        groups.append((state.value, [row for row in known if row.state == state and not row.is_probably_due]))
-    groups.append(("before return", [row for row in rows if row.is_before_return]))
+    """Group the rows as a morning needs them."""
+    from fleetcare.operations.due_words import grouped
+
     blocks = [
-        f"{title.upper()} ({len(group)})\n{output.table(_HEADERS, [_cells(row) for row in group])}"
-        for title, group in groups
-        if group
+        f"{group.upper()} ({len(found)})\n{output.table(_HEADERS, [_cells(row) for row in found])}"
+        for group, found in grouped(rows).items()
+        if found
     ]
     return "\n\n".join(blocks or ["Nothing is due."]) + f"\n\n{_CAUTION}\n"
 
@@ -102,27 +96,12 @@ _HEADERS = ("engine", "site", "task", "due at", "due on", "remaining", "likely",
 
 
 def _cells(row: "DueRow") -> list[str]:
-    remaining = f"{plain(tenth(row.remaining))} {row.unit}" if row.remaining is not None else ""
+    from fleetcare.operations.due_words import notes, say_counted, say_remaining
+
     likely = row.likely_date.isoformat() if row.likely_date is not None else ""
     due_on = row.next_due_on.isoformat() if row.next_due_on is not None else ""
-    return [row.engine, row.site, row.task, say_counted(row), due_on, remaining, likely, "; ".join(_notes(row))]
-
-
-def _notes(row: "DueRow") -> list[str]:
-    notes = []
-    if row.is_before_return:
-        notes.append(row.state)
-    elif row.engine_status not in {"", "in service"}:
-        notes.append(f"{row.engine_status}: not to be run")
-    if row.estimated:
-        notes.append(f"by estimate {row.estimated}")
-    if row.deferred_until:
-        notes.append(f"deferred until {row.deferred_until}")
-    if row.covered_by:
-        notes.append(f"with {row.covered_by}")
-    if row.reason:
-        notes.append(row.reason)
-    return notes
+    note = "; ".join(notes(row))
+    return [row.engine, row.site, row.task, say_counted(row), due_on, say_remaining(row), likely, note]
 
 
 _READINGS = ("reading", "on", "shown", "remark")

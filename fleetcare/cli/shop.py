@@ -3,13 +3,13 @@
 import argparse
 from collections.abc import Mapping, Sequence
 from datetime import date
-from decimal import Decimal
 from typing import TYPE_CHECKING, Any
 
 from fleetcare.cli import output
 from fleetcare.context import Context
 from fleetcare.domain.lines import State
 from fleetcare.domain.quantities import plain
+from fleetcare.domain.quantities import tenth as tenth
 
 if TYPE_CHECKING:
     from fleetcare.operations.due import Moved
@@ -52,6 +52,8 @@ def _say_own(row: "DueRow") -> str:
 
 def say_point(row: "DueRow | None") -> str:
     """Say a line's due point: on the dial first, then its day."""
+    from fleetcare.operations.due_words import say_counted
+
     if row is None:
         return "no line"
     parts = [say_counted(row), row.next_due_on.isoformat() if row.next_due_on else ""]
@@ -62,26 +64,6 @@ def say_line(row: "DueRow") -> str:
     """Say how a line stands: its state, then its point or what to enter."""
     point = say_point(row)
     return point if row.state == State.UNSET else f"{row.state}, {point}"
-
-
-def say_counted(row: "DueRow") -> str:
-    """Say a line's counted point: what the dial shows there, with the life total where it differs."""
-    if row.next_due_at is None:
-        return ""
-    life = f"{plain(tenth(row.next_due_at))} {row.meter_unit}"
-    if row.next_due_dial is None:
-        return f"{life} of life"
-    if row.next_due_dial == row.next_due_at:
-        return life
-    return f"{plain(tenth(row.next_due_dial))} {row.meter_unit} on the dial ({life} of life)"
-
-
-def tenth(value: Decimal) -> Decimal:
-    """Round to the tenth for showing, away from 0 where that would hide a remainder."""
-    rounded = round(value, 1)
-    if rounded == 0 and value != 0:
-        return Decimal("0.1") if value > 0 else Decimal("-0.1")
-    return rounded
 
 
 def today_of(given: argparse.Namespace) -> date:
