@@ -6,7 +6,7 @@ from datetime import date, timedelta
 from decimal import Decimal
 
 from fleetcare.domain.engines import Item
-from fleetcare.domain.lines import DueLine
+from fleetcare.domain.lines import DueLine, TriggerLine
 from fleetcare.domain.log import Done
 from fleetcare.domain.meters import Counter, LifeFigure, Meter, MeterFit, Reading
 from fleetcare.domain.quantities import BASE_UNIT, Kind, Span, parse_interval
@@ -73,19 +73,25 @@ def a_counter(*readings: tuple[str, float | str], kind: Kind = Kind.HOURS, on: d
     return counter_history(Counter(kind, Decimal(0), (MeterFit(meter, None, Decimal(0)),), rows), on)
 
 
+Readings = float | str | Sequence[tuple[str, float | str]]
+"""Today's figure, or dated readings."""
+
+
 def facts(
     *tasks: Task,
     on: str,
     done: Mapping[int, Sequence[Done]] | Sequence[Done] = (),
-    hours: float | str | Sequence[tuple[str, float | str]] | None = None,
+    hours: Readings | None = None,
+    km: Readings | None = None,
     item: Item | None = None,
     **changes: object,
 ) -> ItemFacts:
-    """An item's facts: `hours` is today's figure or dated readings; `done` the entries of task 1 or of each task id."""
+    """An item's facts: `hours` and `km` are its readings; `done` the entries of task 1 or of each task id."""
     counters = {}
-    if hours is not None:
-        readings = [(on, hours)] if isinstance(hours, int | float | str) else hours
-        counters[Kind.HOURS] = a_counter(*readings, on=day(on))
+    for kind, given in ((Kind.HOURS, hours), (Kind.DISTANCE, km)):
+        if given is not None:
+            readings = [(on, given)] if isinstance(given, int | float | str) else given
+            counters[kind] = a_counter(*readings, kind=kind, on=day(on))
     entries = done if isinstance(done, Mapping) else {1: done}
     return ItemFacts(
         item=item or an_item(),
@@ -97,10 +103,21 @@ def facts(
     )
 
 
+def lines(*tasks: Task, is_future: bool = False, recorded_only: bool = False, **kwargs: object) -> dict[str, DueLine]:
+    """The lines of an item by task name; arguments as for `facts`."""
+    found = item_lines(facts(*tasks, **kwargs), is_future, recorded_only)  # type: ignore[arg-type]
+    return {one.task.name: one for one in found}
+
+
 def line(*tasks: Task, **kwargs: object) -> DueLine:
-    """The line of the first task given; arguments as for `facts`."""
-    found = {one.task.id: one for one in item_lines(facts(*tasks, **kwargs))}  # type: ignore[arg-type]
-    return found[tasks[0].id]
+    """The line of the first task given; arguments as for `lines`."""
+    return lines(*tasks, **kwargs)[tasks[0].name]  # type: ignore[arg-type]
+
+
+def trigger(*tasks: Task, **kwargs: object) -> TriggerLine:
+    """The only trigger of the first task given; arguments as for `lines`."""
+    (only,) = line(*tasks, **kwargs).triggers
+    return only
 
 
 def days_from(on: str, days: int) -> str:

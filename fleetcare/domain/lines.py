@@ -32,6 +32,15 @@ Point = Decimal | date
 """A due point: a life total in the base unit, or a day."""
 
 
+def apart(point: Point, other: Point) -> Decimal:
+    """How far a point lies after another of its kind: base units, or days; below 0 where it lies before."""
+    if isinstance(point, date) and isinstance(other, date):
+        return Decimal((point - other).days)
+    assert isinstance(point, Decimal)
+    assert isinstance(other, Decimal)
+    return point - other
+
+
 @dataclass(frozen=True, slots=True)
 class NextPoint:
     """The next point of a trigger with the sums behind it, before deferrals.
@@ -71,7 +80,6 @@ class TriggerLine:
     now: Point | None = None
     point: Point | None = None
     remaining: Decimal | None = None
-    own_state: State | None = None
     share: Decimal | None = None
     deferred: bool = False
     forecast: Forecast | None = None

@@ -3,9 +3,8 @@
 from collections.abc import Mapping, Sequence
 from dataclasses import replace
 from datetime import date
-from decimal import Decimal
 
-from fleetcare.domain.lines import DueLine, State, TriggerLine
+from fleetcare.domain.lines import DueLine, Point, State, TriggerLine, apart
 from fleetcare.domain.quantities import Kind
 from fleetcare.domain.schedules import Combine
 
@@ -37,9 +36,11 @@ def find_cycle(covers: Mapping[int, Sequence[int]], task_id: int) -> tuple[int, 
     return ()
 
 
-def with_covering(lines: Sequence[DueLine]) -> list[DueLine]:
-    """Mark each line of one item that another line will do along with it, no later than it is due."""
-    covers = {line.task.id: line.version.covers for line in lines}
+def with_covering(lines: Sequence[DueLine], covers: Mapping[int, Sequence[int]]) -> list[DueLine]:
+    """Mark each line of one item that another line will do along with it, no later than it is due.
+
+    `covers` are those of all its tasks, so that covering passes through a task that has no line.
+    """
     by_task = {line.task.id: line for line in lines}
     coverers: dict[int, list[DueLine]] = {}
     for big in lines:
@@ -68,7 +69,9 @@ def _comes_in_time(big: DueLine, line: DueLine, decider: TriggerLine) -> bool:
         return False
     same_kind = _will_call(big, decider.kind)
     if same_kind is not None:
-        return _gap(same_kind, decider) <= _grace(decider)
+        assert decider.point is not None
+        assert decider.next is not None
+        return apart(same_kind, decider.point) <= decider.next.grace
     return (
         decider.forecast is not None
         and decider.forecast.likely is not None
@@ -77,25 +80,12 @@ def _comes_in_time(big: DueLine, line: DueLine, decider: TriggerLine) -> bool:
     )
 
 
-def _will_call(big: DueLine, kind: Kind) -> TriggerLine | None:
-    """Give the trigger of a kind that calls for the big job at its point at the latest, None where none does.
+def _will_call(big: DueLine, kind: Kind) -> Point | None:
+    """Give the point in a kind at which the big job is called for at the latest, None where there is none.
 
     A `last` job may still wait there for another trigger, and one deferred to a day alone for that day.
     """
     if big.version.combine is Combine.LAST:
         return None
-    found = [t for t in big.triggers if t.kind is kind and t.point is not None]
-    return next((t for t in found if not (t.deferred and t.point == t.own)), None)
-
-
-def _gap(big: TriggerLine, small: TriggerLine) -> Decimal:
-    """By how much the big job's point lies after the small one's; both of one kind."""
-    if isinstance(big.point, date) and isinstance(small.point, date):
-        return Decimal((big.point - small.point).days)
-    assert isinstance(big.point, Decimal)
-    assert isinstance(small.point, Decimal)
-    return big.point - small.point
-
-
-def _grace(line: TriggerLine) -> Decimal:
-    return Decimal(0) if line.deferred or line.next is None else line.next.grace
+    found = (t.point for t in big.triggers if t.kind is kind and not (t.deferred and t.point == t.own))
+    return next(found, None)

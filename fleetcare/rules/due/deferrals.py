@@ -1,10 +1,11 @@
 """Deferrals: one due point moved by somebody, until the first of its ends."""
 
-from dataclasses import dataclass
+from collections.abc import Mapping
+from dataclasses import dataclass, replace
 from datetime import date
 from decimal import Decimal
 
-from fleetcare.domain.lines import NextPoint, Point, State
+from fleetcare.domain.lines import NextPoint, Point, State, apart
 from fleetcare.domain.quantities import Kind
 from fleetcare.domain.schedules import Deferral, TaskVersion
 from fleetcare.rules.due.states import state_of, window_state, worst
@@ -19,23 +20,23 @@ class Standing:
     point: Point
     remaining: Decimal
     state: State
-    own_state: State
     deferred: bool = False
 
 
-def has_ended(deferral: Deferral, today: date, lives: dict[Kind, Decimal]) -> bool:
-    """Tell whether any end of a deferral is behind us: its day, its figure, or its cap."""
+def has_ended(deferral: Deferral, today: date, lives: Mapping[Kind, Decimal]) -> bool:
+    """Tell whether any end of a deferral is behind us: its day, its figure, or its cap; on an end it still holds."""
     if deferral.until_on is not None and today > deferral.until_on:
         return True
-    ends = {**deferral.caps, **deferral.until_life}
-    return any(kind in lives and lives[kind] > end for kind, end in ends.items())
+    ends = (*deferral.until_life.items(), *deferral.caps.items())
+    return any(kind in lives and lives[kind] > end for kind, end in ends)
 
 
 @dataclass(frozen=True, slots=True)
 class Move:
     """What a deferral does to one trigger: the point it moves to, None where only a day holds it back.
 
-    `until_on` is set for a counted trigger deferred to a day. After its end a move only takes the grace away.
+    `until_on` is set for a counted trigger deferred to a day. After its end a move only takes the grace away,
+    which it does all along.
     """
 
     to: Point | None
@@ -60,35 +61,29 @@ def move_of(deferral: Deferral, version: TaskVersion, kind: Kind, ended: bool) -
 def stand(next_point: NextPoint, now: Point, today: date, move: Move | None) -> Standing:
     """Work out how a trigger stands against its point in force.
 
-    A deferred point has no grace, and past its own point a trigger is never better than near.
+    A deferred point has no grace, and past its own point a trigger is never better than near. One that counts
+    is due on the day it is deferred to where it is past its own point by then, and not called for before.
     """
-    own = _remaining(next_point.point, now)
-    own_state = _own_state(next_point, own, today, next_point.grace)
-    if move is None:
-        return Standing(next_point.point, own, own_state, own_state)
-    if move.ended:
-        return Standing(next_point.point, own, _own_state(next_point, own, today, _NO_GRACE), own_state)
-    point = next_point.point if move.to is None else move.to
-    remaining = _remaining(point, now)
-    states = [State.NEAR if own <= 0 else State.CLEAR]
-    if move.until_on == today:
-        states.append(State.DUE)
-    if move.to is not None:
-        states.append(state_of(remaining, next_point.ahead, _NO_GRACE))
-    elif own > 0:
-        states.append(own_state)
-    return Standing(point, remaining, worst(states), own_state, deferred=True)
+    own = apart(next_point.point, now)
+    own_state = _own_state(next_point, own, today)
+    if move is None or move.ended:
+        return Standing(next_point.point, own, own_state)
+    if own > 0:
+        least = own_state if move.to is None else State.CLEAR
+    else:
+        least = State.DUE if move.until_on == today else State.NEAR
+    if move.to is None:
+        return Standing(next_point.point, own, least, deferred=True)
+    remaining = apart(move.to, now)
+    return Standing(move.to, remaining, worst([least, state_of(remaining, next_point.ahead, _NO_GRACE)]), deferred=True)
 
 
-def _own_state(next_point: NextPoint, remaining: Decimal, today: date, grace: Decimal) -> State:
+def without_grace(next_point: NextPoint) -> NextPoint:
+    """Give a point as a deferral leaves it, in force or ended: no grace after it."""
+    return replace(next_point, grace=_NO_GRACE)
+
+
+def _own_state(next_point: NextPoint, remaining: Decimal, today: date) -> State:
     if next_point.opens is not None and isinstance(next_point.point, date):
         return window_state(today, next_point.opens, next_point.point, next_point.ahead)
-    return state_of(remaining, next_point.ahead, grace)
-
-
-def _remaining(point: Point, now: Point) -> Decimal:
-    if isinstance(point, date) and isinstance(now, date):
-        return Decimal((point - now).days)
-    assert isinstance(point, Decimal)
-    assert isinstance(now, Decimal)
-    return point - now
+    return state_of(remaining, next_point.ahead, next_point.grace)

@@ -24,7 +24,7 @@ def item_lines(facts: ItemFacts, is_future: bool = False, recorded_only: bool = 
         return []
     looks = outlooks(facts, is_future, recorded_only)
     lines = [line for task in facts.tasks if (line := due_line(facts, task, looks)) is not None]
-    return with_covering(lines)
+    return with_covering(lines, {task.id: task.version_on(facts.on).covers for task in facts.tasks})
 
 
 def in_order(lines: Iterable[DueLine]) -> list[DueLine]:

@@ -76,7 +76,8 @@ def _assembled(
     limit = _not_later_than(facts, version, replayed)
     if limit is not None and worst([limit.state, state]) is not state:
         state, decider = limit.state, limit
-    early, likely, late = _dates(how, triggers, limit)
+    bound = limit.point if limit is not None and isinstance(limit.point, date) else None
+    early, likely, late = _dates(how, triggers, bound)
     unset = next((t.unset_because for t in triggers if t.state is State.UNSET), "")
     return DueLine(
         item=facts.item,
@@ -89,7 +90,7 @@ def _assembled(
         last_done_on=replayed.last_done_on,
         last_done_number=replayed.last.number if replayed.last else None,
         reason=unset if state is State.UNSET else (deferral.why if deferral else ""),
-        not_later_than=limit.point if limit is not None and isinstance(limit.point, date) else None,
+        not_later_than=bound,
         called_because=call.why if call is not None else "",
         estimated=_estimated(how, triggers, limit),
         early_on=early,
@@ -119,24 +120,24 @@ def _estimated(how: Combine, triggers: Sequence[TriggerLine], limit: TriggerLine
 
 
 def _dates(
-    how: Combine, triggers: Sequence[TriggerLine], limit: TriggerLine | None
+    how: Combine, triggers: Sequence[TriggerLine], bound: date | None
 ) -> tuple[date | None, date | None, date | None]:
     """Give a line's early, likely and late day.
 
-    `first` takes the minimum of each over the triggers that have dates; `last` the maximum, none
-    if any has none. An open late day is later than all.
+    `first` takes the minimum of each over the triggers that have dates; `last` the maximum, at most its
+    bound, none if any has none, save those already reached. An open late day is later than all.
     """
     forecasts = [t.forecast for t in triggers if t.forecast is not None and t.forecast.likely is not None]
-    if how is Combine.LAST and len(forecasts) < len(triggers):
-        forecasts = []
-    pick = min if how is Combine.FIRST else max
-    combined = [_pick_days(pick, forecasts)] if forecasts else []
-    if limit is not None and limit.forecast is not None:
-        combined.append(_pick_days(min, [limit.forecast]))
-    if not combined:
+    dateless = [t for t in triggers if t.forecast is None or t.forecast.likely is None]
+    if not forecasts or (how is Combine.LAST and any(not _is_reached(t) for t in dateless)):
         return None, None, None
-    earliest, likeliest, latest = (min(days) for days in zip(*combined, strict=True))
+    days = _pick_days(min if how is Combine.FIRST else max, forecasts)
+    earliest, likeliest, latest = (min(day, bound or date.max) for day in days)
     return earliest, likeliest, None if latest == date.max else latest
+
+
+def _is_reached(line: TriggerLine) -> bool:
+    return line.remaining is not None and line.remaining <= 0
 
 
 def _pick_days(pick: Callable[[list[date]], date], forecasts: Sequence[Forecast]) -> tuple[date, date, date]:

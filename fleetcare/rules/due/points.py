@@ -97,8 +97,7 @@ def _first_day(facts: ItemFacts, task: Task) -> date | None:
     """The day a task was first done, where no start point is known."""
     if task.origin is not None and task.origin.on is not None:
         return task.origin.on
-    done = facts.done.get(task.id, ())
-    return done[0].on if done else None
+    return min((done.on for done in facts.done.get(task.id, ())), default=None)
 
 
 def _pause(facts: ItemFacts, version: TaskVersion, point: date, mark: CalendarMark, day: date) -> timedelta:

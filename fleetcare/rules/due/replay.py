@@ -5,6 +5,7 @@ the version, the duty factor and the pauses in force on that day; deferrals neve
 that they keep a once-each period open.
 """
 
+from collections.abc import Sequence
 from dataclasses import dataclass
 from datetime import date, timedelta
 from decimal import Decimal
@@ -14,8 +15,10 @@ from fleetcare.domain.log import Done
 from fleetcare.domain.quantities import COUNTED, Kind
 from fleetcare.domain.schedules import CalendarTrigger, Combine, Deferral, Origin, Task, TaskVersion
 from fleetcare.rules.due.calendar import Chain, period_after, period_of, say_period
+from fleetcare.rules.due.deferrals import has_ended
 from fleetcare.rules.due.facts import ItemFacts
 from fleetcare.rules.due.once_each import serve
+from fleetcare.rules.due.overruns import overruns
 from fleetcare.rules.due.points import Marks, Points, next_points, owed_period
 from fleetcare.rules.due.triggers import CalendarMark, CountedMark
 
@@ -31,29 +34,50 @@ class Replay:
 
 
 def replay(facts: ItemFacts, task: Task) -> Replay:
-    """Replay one task's entries up to the day of the facts."""
-    marks, last_done_on = Marks(), None
+    """Replay one task's entries up to the day of the facts; its origin takes its place in time among them."""
     origin = task.origin
-    if origin is not None and (origin.as_new or origin.on is None or origin.on <= facts.on):
-        marks = _marks_at(origin)
-        last_done_on = None if origin.as_new else origin.on
-    last: Done | None = None
-    past: list[PastWork] = []
-    for done in facts.done.get(task.id, ()):
-        work = _take(marks, facts, task, task.version_on(done.on), done)
-        past.append(work)
-        if work.counted:
-            last, last_done_on = done, done.on
-    return Replay(marks, last_done_on, last, tuple(past))
+    if origin is not None and origin.on is not None and origin.on > facts.on and not origin.as_new:
+        origin = None
+    entries = sorted(facts.done.get(task.id, ()), key=place)
+    earlier = [done for done in entries if origin is not None and _is_before(done, origin)]
+    later = [done for done in entries if done not in earlier]
+    past = _walk(Marks(), facts, task, earlier)
+    marks = _marks_at(origin)
+    walked = _walk(marks, facts, task, later)
+    last = next((done for done, work in zip(later[::-1], walked[::-1], strict=True) if work.counted), None)
+    stated = origin.on if origin is not None and not origin.as_new else None
+    return Replay(marks, last.on if last is not None else stated, last, (*past, *walked))
+
+
+def place(done: Done) -> tuple[date, list[Decimal], int]:
+    """Where an entry stands among those of its item: by day, within a day by life total, then by number."""
+    return done.on, [done.life[kind].value if kind in done.life else Decimal(0) for kind in COUNTED], done.number
 
 
 def deferral_of(task: Task, from_entry: int | None, day: date) -> Deferral | None:
-    """Give the newest deferral, made by `day`, of the point that counts from an entry (None: the origin)."""
-    bound = [d for d in task.deferrals if d.counts_from == from_entry and d.on <= day]
+    """Give the newest deferral, made by `day`, of the point that counts from an entry (None: the origin).
+
+    Work stated as done after a deferral was made is an origin that deferral does not know.
+    """
+    began = task.origin.on if from_entry is None and task.origin is not None else None
+    bound = [d for d in task.deferrals if d.counts_from == from_entry and (began or d.on) <= d.on <= day]
     return max(bound, key=lambda d: (d.on, d.id), default=None)
 
 
-def _marks_at(origin: Origin) -> Marks:
+def _is_before(done: Done, origin: Origin) -> bool:
+    """Tell whether work was done before the origin: by day, or by figure where the origin has no day."""
+    if origin.on is not None:
+        return done.on < origin.on
+    return any(kind in done.life and done.life[kind].value < life for kind, life in origin.life.items())
+
+
+def _walk(marks: Marks, facts: ItemFacts, task: Task, entries: Sequence[Done]) -> list[PastWork]:
+    return [_take(marks, facts, task, task.version_on(done.on), done) for done in entries]
+
+
+def _marks_at(origin: Origin | None) -> Marks:
+    if origin is None:
+        return Marks()
     return Marks(
         counted={kind: CountedMark(life, is_start=origin.as_new) for kind, life in origin.life.items()},
         calendar=CalendarMark(origin.on, is_start=origin.as_new) if origin.on is not None else None,
@@ -67,11 +91,8 @@ def _take(marks: Marks, facts: ItemFacts, task: Task, version: TaskVersion, done
     if opens is not None:
         note = f"before its window opened on {opens.isoformat()}"
         return PastWork(done.entry_id, done.number, done.on, counted=False, note=note)
-    over = {
-        kind: (excess, point.grace)
-        for kind, (point, _) in points.items()
-        if (excess := _excess(kind, point, done)) is not None
-    }
+    counts_from = marks.calendar.done if marks.calendar is not None else None
+    over = overruns(version, {kind: point for kind, (point, _) in points.items()}, done, counts_from)
     calendar = version.calendar
     if calendar is not None and calendar.once_each is not None:
         served, missed = _serve(marks, facts, task, version, calendar, done)
@@ -139,23 +160,13 @@ def _serve(
     open_until = owed.last + timedelta(days=trigger.grace)
     deferral = deferral_of(task, marks.from_entry, done.on)
     if deferral is not None and deferral.until_on is not None:
-        open_until = max(open_until, deferral.until_on)
+        lives = {kind: life.value for kind, life in done.life.items()}
+        if not has_ended(deferral, done.on, lives):
+            open_until = max(open_until, deferral.until_on)
     outcome = serve(trigger, owed, open_until, done.on)
     marks.owed = outcome.next
     served = say_period(each, outcome.period) if outcome.period else ""
     return served, tuple(period.last for period in outcome.missed)
-
-
-def _excess(kind: Kind, point: NextPoint, done: Done) -> Decimal | None:
-    """By how much work was done past a point, None if it was not or cannot be known."""
-    if isinstance(point.point, date):
-        excess = Decimal((done.on - point.point).days)
-    else:
-        life = done.life.get(kind)
-        if life is None:
-            return None
-        excess = life.value - point.point
-    return excess if excess > 0 else None
 
 
 def _day(point: Point) -> date:

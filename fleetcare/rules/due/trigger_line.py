@@ -1,5 +1,6 @@
 """One trigger of a line, held against today's figure."""
 
+from collections.abc import Callable
 from dataclasses import replace
 from datetime import date
 from decimal import Decimal
@@ -9,7 +10,7 @@ from fleetcare.domain.lines import NextPoint, Point, State, TriggerLine
 from fleetcare.domain.quantities import Kind, Span
 from fleetcare.domain.schedules import CalendarTrigger, Trigger
 from fleetcare.rules.due.calendar import add
-from fleetcare.rules.due.deferrals import Move, Standing, stand
+from fleetcare.rules.due.deferrals import Move, Standing, stand, without_grace
 from fleetcare.rules.due.outlook import Outlook
 from fleetcare.rules.due.points import Marks
 from fleetcare.rules.due.replay import Replay
@@ -31,6 +32,8 @@ def trigger_line(
     now: Point | None = on if trigger.kind is Kind.CALENDAR else (outlook.now if outlook else None)
     if next_point is None or now is None:
         return TriggerLine(trigger, State.UNSET, unset_because=_why_unset(trigger.kind, next_point, replayed, outlook))
+    if move is not None:
+        next_point = without_grace(next_point)
     line = _held(trigger, next_point, now, on, move, outlook)
     approximate = trigger.kind in replayed.marks.approximate
     line = replace(line, counts_from=_counts_from(replayed.marks, trigger.kind), approximate=approximate)
@@ -59,7 +62,6 @@ def _held(
         now=now,
         point=standing.point,
         remaining=standing.remaining,
-        own_state=standing.own_state,
         share=standing.remaining / _length(next_point.interval),
         deferred=standing.deferred,
         forecast=_forecast(next_point, standing, move, outlook),
@@ -76,14 +78,21 @@ def _forecast(next_point: NextPoint, standing: Standing, move: Move | None, outl
     reached = outlook.reach(point)
     if not standing.deferred or move is None or move.until_on is None:
         return reached
-    until = move.until_on
-    if move.to is None or reached.early is None or reached.likely is None:
+    return _with_day(reached, move.until_on, max if move.to is None else min)
+
+
+def _with_day(reached: Forecast, until: date, pick: Callable[[date, date], date]) -> Forecast:
+    """Join the days a figure is reached with the day it is deferred to: whichever comes first where a figure
+    ends the deferral, else the later, as the own point does not call before that day.
+    """
+    if reached.early is None or reached.likely is None:
         return Forecast(until, until, until, reached.readings_used)
+    late = pick(reached.late or date.max, until)
     return replace(
         reached,
-        early=min(reached.early, until),
-        likely=min(reached.likely, until),
-        late=min(reached.late or until, until),
+        early=pick(reached.early, until),
+        likely=pick(reached.likely, until),
+        late=late if late < date.max else None,
     )
 
 
