@@ -1,13 +1,12 @@
 """The parser every command shares: options good in any place, one-line errors, typed values."""
 
 import argparse
-import re
 from collections.abc import Callable
-from decimal import Decimal
 from typing import Any, NoReturn, TypeAlias, TypeVar
 
 from fleetcare.cli import output
 from fleetcare.domain.days import parse_day
+from fleetcare.domain.numbers import parse_number, parse_whole
 from fleetcare.errors import FleetError, Misread
 
 Value = TypeVar("Value")
@@ -54,20 +53,6 @@ def typed(parse: Callable[[str], Value]) -> Callable[[str], Value]:
             raise argparse.ArgumentTypeError(str(error)) from None
 
     return convert
-
-
-def parse_number(text: str) -> Decimal:
-    """Read a plain number, exactly. Raises Misread."""
-    if not re.fullmatch(r"[+-]?(?:[0-9]{1,15}(?:\.[0-9]{0,15})?|\.[0-9]{1,15})", text):
-        raise Misread(f"{text!r} is not a number", "write digits, with a point for decimals")
-    return Decimal(text)
-
-
-def parse_whole(text: str) -> int:
-    """Read a whole number. Raises Misread."""
-    if not re.fullmatch(r"[+-]?[0-9]{1,15}", text):
-        raise Misread(f"{text!r} is not a whole number", "write digits only")
-    return int(text)
 
 
 number = typed(parse_number)

@@ -1,13 +1,15 @@
 """Kinds of field that drafts share: each reads text into a typed value or says why it cannot."""
 
+import re
 from collections.abc import Callable, Iterable
 from datetime import date
-from decimal import Decimal, InvalidOperation
+from decimal import Decimal
 from typing import Annotated, Any
 
 from pydantic import BeforeValidator
 
 from fleetcare.domain.days import parse_day
+from fleetcare.domain.numbers import parse_number, parse_whole
 from fleetcare.domain.quantities import (
     COUNTED,
     UNITS,
@@ -22,10 +24,11 @@ from fleetcare.domain.quantities import (
 from fleetcare.errors import Misread, Refused
 
 FUEL_UNITS = ("L", "galus", "galimp")
+_DIGITS = re.compile(r"[1-9](\.[0-9])?")
 
 
 def _text(value: object) -> str:
-    """Trim; refuse line breaks and other control characters in a name, which no screen can show."""
+    """Trim, and turn a run of white space, line breaks too, into one space; refuse nothing left."""
     text = " ".join(str(value).split())
     if not text:
         raise Refused("it is empty", "write at least one letter")
@@ -49,21 +52,8 @@ def _several(parse: Callable[[object], Any]) -> Callable[[object], Any]:
     return read
 
 
-def _whole(value: object) -> int:
-    try:
-        return int(str(value))
-    except ValueError:
-        raise Misread(f"{value!r} is not a whole number", "write digits only") from None
-
-
 def _number(value: object) -> Decimal:
-    try:
-        number = Decimal(str(value))
-    except InvalidOperation:
-        number = Decimal("nan")
-    if not number.is_finite():
-        raise Misread(f"{value!r} is not a number", "write digits, with a point for decimals")
-    return number
+    return value if isinstance(value, Decimal) else parse_number(str(value).strip())
 
 
 def _positive(value: object) -> Decimal:
@@ -74,7 +64,7 @@ def _positive(value: object) -> Decimal:
 
 
 def _count(value: object) -> int:
-    count = _whole(value)
+    count = value if isinstance(value, int) else parse_whole(str(value).strip())
     if count <= 0:
         raise Refused(f"{value} cannot be right", "give a whole number above 0")
     return count
@@ -94,11 +84,14 @@ def parse_kind(text: str) -> Kind:
 
 
 def parse_counted_kind(text: str) -> Kind:
-    """Read a meter kind by name."""
-    kind = parse_kind(text)
-    if kind not in COUNTED:
-        raise Refused("no meter counts the calendar", f"use one of {', '.join(COUNTED)}")
-    return kind
+    """Read a meter kind by name. Raises Misread, and Refused for the calendar."""
+    name = text.strip().lower()
+    remedy = f"use one of {', '.join(COUNTED)}"
+    if name == Kind.CALENDAR:
+        raise Refused("no meter counts the calendar", remedy)
+    if name not in COUNTED:
+        raise Misread(f"no meter counts {text.strip()!r}", remedy)
+    return Kind(name)
 
 
 def parse_litres(text: str) -> Amount:
@@ -128,16 +121,18 @@ def parse_meter(text: str) -> tuple[Kind, str]:
     unit = next((u for u in UNITS.values() if u.symbol.lower() == symbol.strip().lower()), None)
     if unit is None or unit.kind is not kind:
         fitting = ", ".join(u.symbol for u in UNITS.values() if u.kind is kind)
-        raise Misread(f"a {kind} meter does not count {symbol!r}", f"use one of {fitting}")
+        raise Misread(f"{symbol!r} is no unit of {kind}", f"use one of {fitting}")
     return kind, unit.symbol
 
 
 def parse_digits(text: str) -> tuple[Kind | None, int, int]:
     """Read [KIND:]BEFORE.AFTER as a kind (None where one meter goes without saying) and digits."""
     name, _, digits = text.rpartition(":")
+    if not _DIGITS.fullmatch(digits):
+        raise Misread(
+            f"{text!r} is not digits of a dial", "write 1 to 9 digits before the point and those after, such as 5.1"
+        )
     before, _, after = digits.partition(".")
-    if not before.isdigit() or (after and not after.isdigit()) or not 1 <= int(before) <= 12:
-        raise Misread(f"{text!r} is not digits of a dial", "write digits before and after the point, such as 5.1")
     return parse_counted_kind(name) if name else None, int(before), int(after or 0)
 
 

@@ -109,7 +109,7 @@ def test_a_laid_up_engine_has_no_date_unless_it_is_there_already(yard: Runner) -
         (("P-01",), 2, "the following arguments are required: --to"),
         (("P-01", "--to", "soon"), 2, "argument --to: 'soon' is not a figure"),
         (("P-01", "--to", "3mo"), 2, "argument --to: '3mo' is a span of time, not a dial figure"),
-        (("P-01", "--to", "10", "--meter", "oil"), 2, "'oil' is no kind of trigger; use one of hours"),
+        (("P-01", "--to", "10", "--meter", "oil"), 2, "no meter counts 'oil'; use one of hours"),
         (("P-01", "--to", "10", "--meter", "calendar"), 1, "no meter counts the calendar; use one of hours"),
         (("P-01", "--to", "10", "--meter", "fuel"), 1, "no meter counts fuel of P-01 on that day"),
         (("P-01", "--to", "10km"), 1, "no meter counts distance of P-01 on that day"),
