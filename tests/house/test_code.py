@@ -63,26 +63,35 @@ def test_only_the_output_module_prints() -> None:
     assert printers == {"fleetcare/cli/output.py"}
 
 
-def test_migrations_import_nothing_of_the_package() -> None:
-    revisions = (ROOT / "migrations" / "versions").glob("*.py")
-    guilty = [
-        _name(path)
-        for path in revisions
-        if "import fleetcare" in (text := path.read_text()) or "from fleetcare" in text
+ERRORS = {"Refused", "Misread", "NoDatabase"}
+
+
+def test_every_error_is_raised_with_a_remedy() -> None:
+    raised = [
+        (_name(path), node)
+        for path in CODE
+        for node in ast.walk(ast.parse(path.read_text(encoding="utf-8")))
+        if isinstance(node, ast.Call) and isinstance(node.func, ast.Name) and node.func.id in ERRORS
     ]
-    assert guilty == []
+    assert len(raised) > 100
+    for name, call in raised:
+        detail, remedy = call.args
+        assert not any(isinstance(part, ast.Constant) and not part.value for part in (detail, remedy)), (
+            f"{name}, line {call.lineno}: say what is wrong, and how to mend it"
+        )
 
 
 @pytest.mark.parametrize("path", CODE, ids=_name)
 def test_every_module_and_every_public_name_says_what_it_gives(path: Path) -> None:
     tree = ast.parse(path.read_text(encoding="utf-8"))
-    silent = [
-        node.name
-        for node in ast.walk(tree)
-        if isinstance(node, ast.FunctionDef | ast.ClassDef)
-        and node in tree.body
-        and not node.name.startswith("_")
-        and not ast.get_docstring(node)
-    ]
     assert ast.get_docstring(tree), "no module docstring"
-    assert silent == []
+    assert [node.name for node in _public(tree) if not ast.get_docstring(node)] == []
+
+
+def _public(tree: ast.Module | ast.ClassDef) -> Iterator[ast.FunctionDef | ast.ClassDef]:
+    """Give the public functions and classes of a module, and the public methods of those classes."""
+    for node in tree.body:
+        if isinstance(node, ast.FunctionDef | ast.ClassDef) and not node.name.startswith("_"):
+            yield node
+            if isinstance(node, ast.ClassDef):
+                yield from _public(node)
