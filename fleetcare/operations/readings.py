@@ -1,6 +1,6 @@
 """Write down what a meter shows: held against its past, explained, doubted, voided, restored."""
 
-from collections.abc import Sequence
+from collections.abc import Iterable, Sequence
 from dataclasses import dataclass, replace
 from datetime import date
 from decimal import Decimal
@@ -20,7 +20,7 @@ from fleetcare.operations.load import load_counters
 from fleetcare.operations.names import person_id
 from fleetcare.operations.settings import cap_per_day
 from fleetcare.rules.meters import CounterHistory, counter_history
-from fleetcare.rules.readings import breaks_rule, plausible_chain
+from fleetcare.rules.readings import breaks_rule, misfits, plausible_chain
 
 if TYPE_CHECKING:
     from sqlalchemy.orm import Session
@@ -88,27 +88,30 @@ def store_reading(
     known = _same_reading(session, meter, new)
     if known is not None:
         return Recorded(known, is_new=False)
-    reading_id = insert_reading(session, meter, new)
+    (reading_id,) = insert_readings(session, [(meter, new)])
     suspects = _doubt_what_falls_off(session, meter, trial, new.on) if collisions else ()
     return Recorded(reading_id, suspects)
 
 
-def insert_reading(session: "Session", meter: FoundMeter, new: NewReading) -> int:
-    """Store a reading as entered, unchecked, and give its id."""
-    row = Reading(
-        meter_id=meter.id,
-        on=new.on,
-        value=new.figure.value,
-        unit=new.figure.unit or meter.unit,
-        rolled_over=new.rolled_over,
-        entry_id=new.entry_id,
-        note=new.note,
-        person_id=person_id(session, new.by),
-        import_key=new.import_key,
-    )
-    session.add(row)
+def insert_readings(session: "Session", found: Iterable[tuple[FoundMeter, NewReading]]) -> list[int]:
+    """Store readings as entered, unchecked, and give their ids."""
+    rows = [
+        Reading(
+            meter_id=meter.id,
+            on=new.on,
+            value=new.figure.value,
+            unit=new.figure.unit or meter.unit,
+            rolled_over=new.rolled_over,
+            entry_id=new.entry_id,
+            note=new.note,
+            person_id=person_id(session, new.by),
+            import_key=new.import_key,
+        )
+        for meter, new in found
+    ]
+    session.add_all(rows)
     session.flush()
-    return row.id
+    return [row.id for row in rows]
 
 
 def hold_against_past(
@@ -122,7 +125,7 @@ def hold_against_past(
     connection = session.connection()
     history = load_counters(connection, [meter.owner_id], date.max)[meter.owner_id][meter.kind]
     added = tuple(
-        facts.Reading(-1 - place, meter.id, one.on, _dial(one.figure, meter), one.rolled_over, one.entry_id)
+        facts.Reading(-1 - place, meter.id, one.on, dial_of(one.figure, meter), one.rolled_over, one.entry_id)
         for place, one in enumerate(new)
     )
     for one, reading in zip(new, added, strict=True):
@@ -133,24 +136,21 @@ def hold_against_past(
     counter = history.counter
     trial = counter_history(replace(counter, readings=(*counter.readings, *added)), date.max)
     cap = cap_per_day(connection, meter.kind)
+    figures = [(r.on, r.metered) for r in trial.readings]
     collisions = []
-    for earlier, later in zip(trial.readings, trial.readings[1:], strict=False):
-        if earlier.reading.id >= 0 and later.reading.id >= 0:
-            continue
-        why = breaks_rule((earlier.on, earlier.metered), (later.on, later.metered), cap, BASE_UNIT[meter.kind])
-        if why is not None:
-            place, neighbour = _blamed(trial, earlier, later, cap)
-            collisions.append(Collision(place, why, neighbour))
+    for wrong, other in misfits(figures, [r.reading.id < 0 for r in trial.readings], cap).items():
+        why = breaks_rule(figures[min(wrong, other)], figures[max(wrong, other)], cap, BASE_UNIT[meter.kind])
+        assert why is not None
+        collisions.append(Collision(-1 - trial.readings[wrong].reading.id, why, trial.readings[other]))
     return trial, collisions
 
 
-def say_collision(item: FoundItem, meter: FoundMeter, new: NewReading, collision: Collision) -> str:
-    """Say which stored reading a new one collides with, and how."""
-    other = collision.neighbour.reading
-    what = f"reading {other.id}" if other.id >= 0 else "another line"
+def say_collision(item: FoundItem, meter: FoundMeter, new: NewReading, collision: Collision, other: str = "") -> str:
+    """Say which stored reading a new one collides with, and how; `other` is what else the neighbour is called."""
+    neighbour = collision.neighbour.reading
     return (
-        f"{_shown(new.figure, meter)} on {new.on} does not fit {what} of {item.tag}"
-        f" ({plain(other.value)} {meter.unit} on {other.on}): {collision.why}"
+        f"{_shown(new.figure, meter)} on {new.on} does not fit {other or f'reading {neighbour.id} of {item.tag}'}"
+        f" ({plain(neighbour.value)} {meter.unit} on {neighbour.on}): {collision.why}"
     )
 
 
@@ -186,18 +186,6 @@ def restore_reading(session: "Session", reading_id: int, on: date, *, sure: bool
     return Recorded(row.id, suspects)
 
 
-def _blamed(trial: CounterHistory, earlier: LifeReading, later: LifeReading, cap: Decimal) -> tuple[int, LifeReading]:
-    """Say which new reading of a pair is at fault: the only new one, else the one off the longest plausible chain."""
-    if earlier.reading.id >= 0:
-        return -1 - later.reading.id, earlier
-    if later.reading.id >= 0:
-        return -1 - earlier.reading.id, later
-    kept = plausible_chain([(r.on, r.metered) for r in trial.readings], cap)
-    if trial.readings.index(earlier) in kept:
-        return -1 - later.reading.id, earlier
-    return -1 - earlier.reading.id, later
-
-
 def _doubt_what_falls_off(session: "Session", meter: FoundMeter, trial: CounterHistory, on: date) -> tuple[int, ...]:
     """Mark as suspect what is not on the longest plausible chain that holds the new reading."""
     cap = cap_per_day(session.connection(), meter.kind)
@@ -218,7 +206,7 @@ def _check_rollover(session: "Session", item: FoundItem, meter: FoundMeter, new:
             f"the digits of the {meter.kind} meter of {item.tag} are not known",
             f"give them first: fleetcare engine edit {item.tag} --meter-digits {meter.kind}:5.1",
         )
-    if _dial(new.figure, meter) >= Decimal(10) ** row.digits:
+    if dial_of(new.figure, meter) >= Decimal(10) ** row.digits:
         raise Refused(f"{new.figure} does not fit on {row.digits} digits", "check the figure")
 
 
@@ -246,9 +234,9 @@ def _replace_meter(session: "Session", item: FoundItem, old: FoundMeter, draft: 
         .order_by(col(MeterFit.id))
     ).all()
     for fit in fits:
-        fit.to_on, fit.last = draft.on, _dial(last, old)
-        fit.unmetered = _dial(draft.unmetered, old) if draft.unmetered else Decimal(0)
-        session.add(MeterFit(meter_id=new.id, item_id=fit.item_id, from_on=draft.on, first=_dial(first, old)))
+        fit.to_on, fit.last = draft.on, dial_of(last, old)
+        fit.unmetered = dial_of(draft.unmetered, old) if draft.unmetered else Decimal(0)
+        session.add(MeterFit(meter_id=new.id, item_id=fit.item_id, from_on=draft.on, first=dial_of(first, old)))
     session.flush()
     return FoundMeter(new.id, old.kind, old.unit, old.owner_id)
 
@@ -258,7 +246,7 @@ def _same_reading(session: "Session", meter: FoundMeter, new: NewReading) -> int
     if new.entry_id is not None:
         return None
     history = load_counters(session.connection(), [meter.owner_id], date.max)[meter.owner_id][meter.kind]
-    dial = _dial(new.figure, meter)
+    dial = dial_of(new.figure, meter)
     for reading in history.counter.readings:
         same = (reading.meter_id, reading.on, reading.value) == (meter.id, new.on, dial)
         if same and reading.accepted and reading.rolled_over == new.rolled_over:
@@ -266,7 +254,7 @@ def _same_reading(session: "Session", meter: FoundMeter, new: NewReading) -> int
     return None
 
 
-def _dial(figure: Figure, meter: FoundMeter) -> Decimal:
+def dial_of(figure: Figure, meter: FoundMeter) -> Decimal:
     """Give a figure in the meter's own unit."""
     if figure.unit in {None, meter.unit}:
         return figure.value

@@ -62,6 +62,35 @@ def plausible_chain(figures: Sequence[Figure], cap_per_day: Decimal, holding: in
     return frozenset(chain)
 
 
+def misfits(figures: Sequence[Figure], is_new: Sequence[bool], cap_per_day: Decimal) -> dict[int, int]:
+    """Which new figures cannot be true: the index of each, and that of the figure it breaks the hard rule with.
+
+    `figures` are in order of day, within a day by value. Old ones are taken as true; of two new ones that break
+    the rule with each other, the one off the longest plausible chain is wrong. Without the misfits no new figure
+    breaks the rule with a neighbour. The order in which new figures came plays no part.
+    """
+    found: dict[int, int] = {}
+    kept: list[int] = []
+    chain: frozenset[int] | None = None
+    for index, figure in enumerate(figures):
+        while kept and not _can_follow(figures[kept[-1]], figure, cap_per_day):
+            before = kept[-1]
+            if not (is_new[before] or is_new[index]):
+                kept.append(index)
+                break
+            wrong = index if is_new[index] else before
+            if is_new[before] and is_new[index]:
+                chain = plausible_chain(figures, cap_per_day) if chain is None else chain
+                wrong = index if before in chain else before
+            found[wrong] = before if wrong == index else index
+            if wrong == index:
+                break
+            kept.pop()
+        else:
+            kept.append(index)
+    return found
+
+
 def _can_follow(earlier: Figure, later: Figure, cap_per_day: Decimal) -> bool:
     (day, value), (later_day, later_value) = earlier, later
     return value <= later_value and later_value - value <= cap_per_day * ((later_day - day).days + 1)

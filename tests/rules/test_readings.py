@@ -6,7 +6,7 @@ from random import Random
 
 import pytest
 
-from fleetcare.rules.readings import breaks_rule, plausible_chain
+from fleetcare.rules.readings import breaks_rule, misfits, plausible_chain
 
 FIRST = date(2026, 3, 2)
 DAY = Decimal(24)
@@ -96,3 +96,24 @@ def test_two_thousand_readings_with_errors_keep_all_the_good_ones() -> None:
     wrong = set(random.sample(range(2000), 60))
     spoiled = [(on, total + 10**6 if i in wrong else total) for i, (on, total) in enumerate(figures)]
     assert plausible_chain(spoiled, DAY) == frozenset(range(2000)) - wrong
+
+
+def test_new_readings_that_fit_old_ones_and_each_other_are_all_taken() -> None:
+    assert misfits(weekly(100, 140, 180, 220), [False, True, True, False], DAY) == {}
+
+
+def test_every_new_reading_that_breaks_with_an_old_one_is_named_with_it() -> None:
+    figures = weekly(100, 5000, 5010, 140, 180)
+    assert misfits(figures, [False, True, True, False, True], DAY) == {1: 0, 2: 0}
+    figures = weekly(1000, 1010, 140, 180)
+    assert misfits(figures, [True, True, False, True], DAY) == {1: 2, 0: 2}
+
+
+def test_of_new_readings_that_contradict_each_other_the_one_off_the_chain_is_named() -> None:
+    assert misfits(weekly(100, 9150, 200, 250), [True] * 4, DAY) == {1: 0}
+    assert misfits(weekly(9150, 100, 200, 250), [True] * 4, DAY) == {0: 1}
+    assert misfits(weekly(500, 100), [True] * 2, DAY) == {0: 1}
+
+
+def test_old_readings_are_not_tried_again() -> None:
+    assert misfits(weekly(500, 100, 140), [False, False, True], DAY) == {}
