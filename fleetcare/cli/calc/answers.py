@@ -9,6 +9,7 @@ from typing import Any
 from fleetcare.cli import output
 from fleetcare.cli.parser import CommandParser, Commands
 from fleetcare.domain.quantities import plain
+from fleetcare.errors import Misread
 
 
 @dataclass(frozen=True, slots=True)
@@ -25,6 +26,17 @@ def add_sum(sums: Commands, name: str, summary: str, answer: Callable[[argparse.
     parser.add_argument("--json", action="store_true", help="print one JSON object, figures unrounded")
     parser.set_defaults(run=lambda given: _print(answer(given), as_json=given.json))
     return parser
+
+
+def all_or_none(given: argparse.Namespace, *options: str) -> bool:
+    """Whether options that only make sense together were given. Raises Misread where some are missing."""
+    missing = [option for option in options if getattr(given, option.replace("-", "_")) is None]
+    if missing and len(missing) < len(options):
+        raise Misread(
+            f"missing: {', '.join(f'--{option}' for option in missing)}",
+            f"give all of {', '.join(f'--{option}' for option in options)}, or none",
+        )
+    return not missing
 
 
 def shown(value: Decimal) -> str:
