@@ -83,12 +83,13 @@ def facts(
     done: Mapping[int, Sequence[Done]] | Sequence[Done] = (),
     hours: Readings | None = None,
     km: Readings | None = None,
+    figures: Mapping[Kind, Readings] | None = None,
     item: Item | None = None,
     **changes: object,
 ) -> ItemFacts:
-    """An item's facts: `hours` and `km` are its readings; `done` the entries of task 1 or of each task id."""
+    """An item's facts: `hours`, `km` or `figures` are its readings; `done` the entries of task 1 or of each task id."""
     counters = {}
-    for kind, given in ((Kind.HOURS, hours), (Kind.DISTANCE, km)):
+    for kind, given in {Kind.HOURS: hours, Kind.DISTANCE: km, **(figures or {})}.items():
         if given is not None:
             readings = [(on, given)] if isinstance(given, int | float | str) else given
             counters[kind] = a_counter(*readings, kind=kind, on=day(on))
