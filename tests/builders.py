@@ -10,7 +10,7 @@ from fleetcare.domain.lines import DueLine, TriggerLine
 from fleetcare.domain.log import Done
 from fleetcare.domain.meters import Counter, LifeFigure, Meter, MeterFit, Reading
 from fleetcare.domain.quantities import BASE_UNIT, Kind, Span, parse_interval
-from fleetcare.domain.schedules import CalendarTrigger, CountedTrigger, Origin, Task, TaskVersion, Trigger
+from fleetcare.domain.schedules import CalendarTrigger, CountedTrigger, Deferral, Origin, Task, TaskVersion, Trigger
 from fleetcare.rules.due.due_list import item_lines
 from fleetcare.rules.due.facts import ItemFacts
 from fleetcare.rules.meters import CounterHistory, counter_history
@@ -58,6 +58,28 @@ def last_done(on: str | None = None, **life: float | str) -> Origin:
     """Work done before the log began: last_done("2026-01-10", hours=900)."""
     figures = {Kind(kind): Decimal(str(value)) for kind, value in life.items()}
     return Origin(as_new=False, on=day(on) if on else None, life=figures)
+
+
+def a_deferral(
+    until: str | None = None,
+    *,
+    hours: float | str | None = None,
+    cap: float | str | None = None,
+    on: str = "2026-04-01",
+    counts_from: int | None = None,
+    number: int = 1,
+) -> Deferral:
+    """A deferral made on 2026-04-01: a_deferral("2026-06-01"), a_deferral(hours=1100)."""
+    return Deferral(
+        id=number,
+        on=day(on),
+        counts_from=counts_from,
+        why="parts on order",
+        by="Fenn",
+        until_on=day(until) if until else None,
+        until_life={Kind.HOURS: Decimal(str(hours))} if hours is not None else {},
+        caps={Kind.HOURS: Decimal(str(cap))} if cap is not None else {},
+    )
 
 
 def done(on: str, entry: int = 1, **life: float | str) -> Done:

@@ -9,8 +9,7 @@ from fleetcare.domain.lines import State
 from fleetcare.domain.quantities import Kind, Span
 from fleetcare.domain.schedules import Call, Combine, Task, Trigger
 from fleetcare.rules.due.covering import closure, find_cycle
-from tests.builders import a_task, day, days_from, done, every, last_done, lines
-from tests.rules.test_due_deferrals import deferral
+from tests.builders import a_deferral, a_task, day, days_from, done, every, last_done, lines
 
 # Which tasks a task covers
 
@@ -42,9 +41,8 @@ def test_a_cycle_is_found_with_the_way_round(covers: dict[int, Sequence[int]], w
 # When a line shows it
 
 
-def small(*triggers: Trigger, hours: float = 750, on: str = "2025-11-10", number: int = 1, **changes: bool) -> Task:
-    task = a_task(*triggers, number=number, name="Oil", origin=last_done(on, hours=hours))
-    return replace(task, versions=(replace(task.versions[0], **changes),))  # type: ignore[arg-type]
+def small(*triggers: Trigger, hours: float = 750, on: str = "2025-11-10") -> Task:
+    return a_task(*triggers, name="Oil", origin=last_done(on, hours=hours))
 
 
 def big(
@@ -127,29 +125,29 @@ def test_a_big_job_that_waits_for_its_last_trigger_is_compared_by_likely_dates()
 
 def test_the_points_in_force_are_compared() -> None:
     oil, service = small(every("250h", grace=10)), big(every("500h"))
-    assert covered_by(oil, replace(service, deferrals=(deferral(hours=1100),)), hours=990) == ""
-    put_off = replace(oil, deferrals=(deferral(hours=1100),))
-    assert covered_by(put_off, replace(service, deferrals=(deferral(hours=1100),)), hours=990) == "Service"
+    assert covered_by(oil, replace(service, deferrals=(a_deferral(hours=1100),)), hours=990) == ""
+    put_off = replace(oil, deferrals=(a_deferral(hours=1100),))
+    assert covered_by(put_off, replace(service, deferrals=(a_deferral(hours=1100),)), hours=990) == "Service"
 
 
 @pytest.mark.parametrize(("service_until", "shown"), [(1100, "Service"), ("1100.1", "")])
 def test_a_deferred_point_has_no_grace_to_be_covered_in(service_until: float, shown: str) -> None:
-    oil = replace(small(every("250h", grace=10)), deferrals=(deferral(hours=1100),))
-    service = replace(big(every("500h")), deferrals=(deferral(hours=service_until),))
+    oil = replace(small(every("250h", grace=10)), deferrals=(a_deferral(hours=1100),))
+    service = replace(big(every("500h")), deferrals=(a_deferral(hours=service_until),))
     assert covered_by(oil, service, hours=990) == shown
 
 
 @pytest.mark.parametrize(("service_done_at", "shown"), [(500, "Service"), (505, "")])
 def test_nor_has_the_own_point_once_its_deferral_has_ended(service_done_at: int, shown: str) -> None:
-    oil = replace(small(every("250h", grace=10)), deferrals=(deferral("2026-04-15", hours=1100),))
+    oil = replace(small(every("250h", grace=10)), deferrals=(a_deferral("2026-04-15", hours=1100),))
     assert covered_by(oil, big(every("500h"), hours=service_done_at), hours=990) == shown
 
 
 def test_a_big_job_held_back_to_a_day_alone_is_compared_by_that_day() -> None:
     oil = small(every("110h"), hours=1200)
     service = big(every("500h"), hours=690)
-    assert covered_by(oil, replace(service, deferrals=(deferral("2026-05-12"),)), hours=TEN_A_DAY) == "Service"
-    assert covered_by(oil, replace(service, deferrals=(deferral("2026-05-13"),)), hours=TEN_A_DAY) == ""
+    assert covered_by(oil, replace(service, deferrals=(a_deferral("2026-05-12"),)), hours=TEN_A_DAY) == "Service"
+    assert covered_by(oil, replace(service, deferrals=(a_deferral("2026-05-13"),)), hours=TEN_A_DAY) == ""
 
 
 # Windows

@@ -1,38 +1,16 @@
 """Deferrals: which trigger moves, how long it holds, and what is left after its end."""
 
-from datetime import date
 from decimal import Decimal
 
 import pytest
 
-from fleetcare.domain.lines import DueLine, State
+from fleetcare.domain.lines import State
 from fleetcare.domain.quantities import Kind
 from fleetcare.domain.schedules import Anchor, Call, Combine, Deferral, Task
-from tests.builders import a_task, day, days_from, done, every, last_done, line, lines, trigger
+from tests.builders import a_deferral, a_task, day, days_from, done, every, last_done, line, lines, trigger
 
 EVERY_TEN_DAYS = [(days_from("2026-01-01", 10 * n), 500 + 50 * n) for n in range(13)]
 """5 h a day from 500 on, last read 1100 on 2026-05-01."""
-
-
-def deferral(
-    until: str | None = None,
-    *,
-    hours: float | str | None = None,
-    cap: float | str | None = None,
-    on: str = "2026-04-01",
-    counts_from: int | None = None,
-    number: int = 1,
-) -> Deferral:
-    return Deferral(
-        id=number,
-        on=day(on),
-        counts_from=counts_from,
-        why="parts on order",
-        by="Fenn",
-        until_on=day(until) if until else None,
-        until_life={Kind.HOURS: Decimal(str(hours))} if hours is not None else {},
-        caps={Kind.HOURS: Decimal(str(cap))} if cap is not None else {},
-    )
 
 
 def oil(*deferrals: Deferral, anchor: Anchor | None = None) -> Task:
@@ -65,7 +43,7 @@ def inspection(*deferrals: Deferral) -> Task:
 def test_a_figure_moves_the_point_near_at_best_past_the_own_one_and_without_grace_after_it(
     now: str, state: State, remaining: str
 ) -> None:
-    found = trigger(oil(deferral(hours=1100)), on="2026-05-01", hours=now)
+    found = trigger(oil(a_deferral(hours=1100)), on="2026-05-01", hours=now)
     assert (found.state, found.remaining) == (state, Decimal(remaining))
     assert found.own == 1000
 
@@ -77,7 +55,7 @@ def test_without_a_deferral_the_same_line_has_its_grace(now: str, state: State) 
 
 @pytest.mark.parametrize(("now", "ended", "point"), [("1004", False, "1004"), ("1004.1", True, "1000")])
 def test_after_its_end_the_own_point_is_in_force_again_without_grace(now: str, ended: bool, point: str) -> None:
-    due = line(oil(deferral(hours=1004)), on="2026-05-01", hours=now)
+    due = line(oil(a_deferral(hours=1004)), on="2026-05-01", hours=now)
     assert (due.deferral_ended, due.triggers[0].point) == (ended, Decimal(point))
     assert due.state is (State.OVERDUE if ended else State.DUE)
     assert due.triggers[0].next is not None
@@ -99,12 +77,12 @@ def test_after_its_end_the_own_point_is_in_force_again_without_grace(now: str, e
     ],
 )
 def test_a_day_moves_the_calendar_trigger_and_is_the_last_permitted_one(on: str, state: State) -> None:
-    assert line(inspection(deferral("2026-05-20")), on=on).state is state
+    assert line(inspection(a_deferral("2026-05-20")), on=on).state is state
 
 
 def test_a_day_leaves_the_counted_trigger_of_a_task_with_a_calendar_one_where_it_is() -> None:
     task = a_task(
-        every("250h"), every("6mo"), origin=last_done("2025-11-10", hours=750), deferrals=(deferral("2026-07-01"),)
+        every("250h"), every("6mo"), origin=last_done("2025-11-10", hours=750), deferrals=(a_deferral("2026-07-01"),)
     )
     due = line(task, on="2026-05-20", hours=1005)
     hours, months = due.triggers
@@ -115,7 +93,7 @@ def test_a_day_leaves_the_counted_trigger_of_a_task_with_a_calendar_one_where_it
 
 def test_a_figure_leaves_the_calendar_trigger_where_it_is() -> None:
     task = a_task(
-        every("250h"), every("6mo"), origin=last_done("2025-11-10", hours=750), deferrals=(deferral(hours=1100),)
+        every("250h"), every("6mo"), origin=last_done("2025-11-10", hours=750), deferrals=(a_deferral(hours=1100),)
     )
     due = line(task, on="2026-05-20", hours=1005)
     assert [t.state for t in due.triggers] == [State.NEAR, State.OVERDUE]
@@ -135,7 +113,7 @@ def test_a_figure_leaves_the_calendar_trigger_where_it_is() -> None:
     ],
 )
 def test_on_a_task_without_a_calendar_trigger_a_day_holds_the_counted_one_back(on: str, now: int, state: State) -> None:
-    assert line(oil(deferral("2026-06-01")), on=on, hours=now).state is state
+    assert line(oil(a_deferral("2026-06-01")), on=on, hours=now).state is state
 
 
 @pytest.mark.parametrize(
@@ -151,7 +129,7 @@ def test_on_a_task_without_a_calendar_trigger_a_day_holds_the_counted_one_back(o
 def test_the_likely_figure_fixed_on_the_day_of_deferral_caps_it_when_the_engine_runs_hard(
     on: str, now: float, state: State
 ) -> None:
-    assert line(oil(deferral("2026-06-01", cap=1180)), on=on, hours=now).state is state
+    assert line(oil(a_deferral("2026-06-01", cap=1180)), on=on, hours=now).state is state
 
 
 # Two ends
@@ -171,7 +149,7 @@ def test_a_deferral_with_two_ends_ends_for_both_triggers_at_the_first(on: str, n
         every("250h"),
         every("6mo"),
         origin=last_done("2025-11-10", hours=750),
-        deferrals=(deferral("2026-05-20", hours=1100),),
+        deferrals=(a_deferral("2026-05-20", hours=1100),),
     )
     due = line(task, on=on, hours=now)
     assert due.deferral_ended is ended
@@ -179,8 +157,8 @@ def test_a_deferral_with_two_ends_ends_for_both_triggers_at_the_first(on: str, n
 
 
 @pytest.mark.parametrize(("figure", "cap"), [(1050, 1200), (1200, 1050)])
-def test_of_a_figure_and_a_cap_the_lower_one_ends_a_deferral(figure: int, cap: int) -> None:
-    task = oil(deferral("2026-06-01", hours=figure, cap=cap))
+def test_of_a_figure_and_a_cap_the_lower_one_ends_a_a_deferral(figure: int, cap: int) -> None:
+    task = oil(a_deferral("2026-06-01", hours=figure, cap=cap))
     assert trigger(task, on="2026-05-01", hours=1050).state is State.DUE
     due = line(task, on="2026-05-01", hours="1050.1")
     assert (due.deferral_ended, due.triggers[0].point, due.state) == (True, Decimal(1000), State.OVERDUE)
@@ -191,7 +169,7 @@ def test_an_end_that_comes_before_the_own_point_of_the_other_trigger_only_takes_
         every("250h"),
         every("6mo", grace=5),
         origin=last_done("2025-12-10", hours=750),
-        deferrals=(deferral("2026-07-01", hours=1100),),
+        deferrals=(a_deferral("2026-07-01", hours=1100),),
     )
     months = line(task, on="2026-06-11", hours=1101).triggers[1]
     assert (months.point, months.state) == (day("2026-06-10"), State.OVERDUE)
@@ -202,12 +180,12 @@ def test_an_end_that_comes_before_the_own_point_of_the_other_trigger_only_takes_
 
 
 def test_a_deferral_is_gone_when_the_task_is_done() -> None:
-    due = line(oil(deferral(hours=1100)), on="2026-05-01", done=[done("2026-04-20", hours=1040)], hours=1050)
+    due = line(oil(a_deferral(hours=1100)), on="2026-05-01", done=[done("2026-04-20", hours=1040)], hours=1050)
     assert (due.deferral, due.triggers[0].point) == (None, Decimal(1290))
 
 
 def test_a_deferral_belongs_to_the_point_that_counts_from_its_entry() -> None:
-    task = oil(deferral(hours=1400, on="2026-04-25", counts_from=7))
+    task = oil(a_deferral(hours=1400, on="2026-04-25", counts_from=7))
     work = done("2026-04-20", entry=7, hours=1040)
     assert line(task, on="2026-05-01", done=[work], hours=1050).triggers[0].point == 1400
     again = done("2026-04-28", entry=8, hours=1045)
@@ -215,20 +193,20 @@ def test_a_deferral_belongs_to_the_point_that_counts_from_its_entry() -> None:
 
 
 def test_of_two_deferrals_of_one_point_the_newest_holds_and_a_later_one_is_not_known_yet() -> None:
-    task = oil(deferral(hours=1100), deferral(hours=1050, on="2026-04-20", number=2))
+    task = oil(a_deferral(hours=1100), a_deferral(hours=1050, on="2026-04-20", number=2))
     assert trigger(task, on="2026-05-01", hours=900).point == 1050
     assert trigger(task, on="2026-04-19", hours=900).point == 1100
     assert trigger(task, on="2026-03-31", hours=900).point == 1000
 
 
 def test_work_stated_as_done_after_a_deferral_was_made_ends_it() -> None:
-    stated = a_task(every("250h"), origin=last_done("2026-04-10", hours=1010), deferrals=(deferral(hours=1100),))
+    stated = a_task(every("250h"), origin=last_done("2026-04-10", hours=1010), deferrals=(a_deferral(hours=1100),))
     due = line(stated, on="2026-05-01", hours=1020)
     assert (due.deferral, due.triggers[0].point) == (None, Decimal(1260))
 
 
 def test_a_deferral_never_enters_the_point_that_the_next_interval_is_counted_from() -> None:
-    task = oil(deferral(hours=1100), anchor=Anchor.FROM_DUE)
+    task = oil(a_deferral(hours=1100), anchor=Anchor.FROM_DUE)
     due = line(task, on="2026-05-01", done=[done("2026-04-20", hours=1080)], hours=1090)
     assert due.triggers[0].point == 1250
     assert due.past[0].over == {Kind.HOURS: (Decimal(80), Decimal(10))}
@@ -239,13 +217,13 @@ def test_a_deferral_never_enters_the_point_that_the_next_interval_is_counted_fro
 
 def test_a_follow_up_is_deferred_by_its_day() -> None:
     call = Call(1, day("2026-04-01"), day("2026-04-10"), "weeping gasket")
-    task = a_task(on_condition=True, calls=(call,), deferrals=(deferral("2026-05-01"),))
+    task = a_task(on_condition=True, calls=(call,), deferrals=(a_deferral("2026-05-01"),))
     states = [line(task, on=on).state for on in ("2026-04-09", "2026-04-10", "2026-05-01", "2026-05-02")]
     assert states == [State.CLEAR, State.NEAR, State.DUE, State.OVERDUE]
 
 
 def test_a_window_is_deferred_past_its_last_day() -> None:
-    task = a_task(every("6mo", window_days=10), origin=last_done("2025-11-10"), deferrals=(deferral("2026-06-30"),))
+    task = a_task(every("6mo", window_days=10), origin=last_done("2025-11-10"), deferrals=(a_deferral("2026-06-30"),))
     on = ("2026-05-11", "2026-05-20", "2026-05-21", "2026-06-30", "2026-07-01")
     states = [line(task, on=one).state for one in on]
     assert states == [State.CLEAR, State.NEAR, State.NEAR, State.DUE, State.OVERDUE]
@@ -257,58 +235,14 @@ def test_a_last_line_waits_on_for_the_trigger_that_is_not_deferred() -> None:
         every("6mo"),
         combine=Combine.LAST,
         origin=last_done("2026-01-01", hours=750),
-        deferrals=(deferral(hours=1100),),
+        deferrals=(a_deferral(hours=1100),),
     )
     assert line(task, on="2026-05-01", hours=1050).state is State.CLEAR
     assert line(task, on="2026-07-01", hours=1050).state is State.NEAR
 
 
-# Dates and estimates
-
-
-def dates(due: DueLine) -> tuple[date | None, date | None, date | None]:
-    return due.early_on, due.likely_on, due.late_on
-
-
-def test_a_counted_trigger_held_back_to_a_day_calls_on_that_day_where_its_point_is_past() -> None:
-    due = line(oil(deferral("2026-06-01")), on="2026-05-01", hours=EVERY_TEN_DAYS)
-    assert dates(due) == (day("2026-06-01"),) * 3
-
-
-def test_without_a_forecast_the_day_it_is_deferred_to_is_all_that_is_known() -> None:
-    due = line(oil(deferral("2026-06-01", cap=1180)), on="2026-05-01", hours=1005)
-    assert dates(due) == (day("2026-06-01"),) * 3
-
-
-def test_with_a_cap_it_calls_on_whichever_comes_first() -> None:
-    free = line(oil(deferral(hours=1180)), on="2026-05-01", hours=EVERY_TEN_DAYS)
-    assert free.likely_on == day("2026-05-17")
-    soon = line(oil(deferral("2026-05-10", cap=1180)), on="2026-05-01", hours=EVERY_TEN_DAYS)
-    assert soon.likely_on == day("2026-05-10")
-    assert (soon.early_on or date.max) <= day("2026-05-10")
-    assert soon.late_on == day("2026-05-10")
-    late = line(oil(deferral("2026-12-01", cap=1180)), on="2026-05-01", hours=EVERY_TEN_DAYS)
-    assert dates(late) == dates(free)
-
-
-def test_a_point_still_ahead_of_a_day_without_a_cap_calls_when_it_is_reached() -> None:
-    task = a_task(every("250h"), origin=last_done("2026-01-01", hours=1000), deferrals=(deferral("2026-05-10"),))
-    due = line(task, on="2026-05-01", hours=EVERY_TEN_DAYS)
-    assert due.likely_on == day("2026-05-31")
-    later = a_task(every("250h"), origin=last_done("2026-01-01", hours=1000), deferrals=(deferral("2026-12-10"),))
-    assert dates(line(later, on="2026-05-01", hours=EVERY_TEN_DAYS))[:2] == (day("2026-12-10"), day("2026-12-10"))
-
-
-def test_an_open_late_day_stays_open_where_the_point_is_still_ahead() -> None:
-    rare = [("2025-11-01", 0), ("2025-12-01", 9), ("2026-04-01", 10), ("2026-05-01", 10)]
-    task = a_task(every("40h"), origin=last_done("2025-11-01", hours=0), deferrals=(deferral("2026-05-10"),))
-    due = line(task, on="2026-05-01", hours=rare)
-    assert due.likely_on is not None
-    assert due.late_on is None
-
-
 def test_the_estimate_too_is_held_against_the_deferred_point() -> None:
-    found = lines(oil(deferral(hours=1400)), on="2026-06-01", hours=EVERY_TEN_DAYS, is_future=True)
+    found = lines(oil(a_deferral(hours=1400)), on="2026-06-01", hours=EVERY_TEN_DAYS, is_future=True)
     assert found["Oil and filter"].estimated is State.NEAR
     assert (
         lines(oil(), on="2026-06-01", hours=EVERY_TEN_DAYS, is_future=True)["Oil and filter"].estimated is State.OVERDUE

@@ -6,9 +6,9 @@ from datetime import date
 from fleetcare.domain.engines import Status, StatusSpell
 from fleetcare.domain.lines import DueLine
 from fleetcare.domain.quantities import Kind, Span
-from fleetcare.domain.schedules import Combine
+from fleetcare.domain.schedules import Combine, Deferral, Task
 from fleetcare.rules.forecast import History
-from tests.builders import a_task, an_item, day, days_from, every, last_done, line
+from tests.builders import a_deferral, a_task, an_item, day, days_from, every, last_done, line
 
 FIVE_A_DAY = [(days_from("2026-01-01", 10 * n), 500 + 50 * n) for n in range(13)]
 """Last read 1100 on 2026-05-01."""
@@ -113,3 +113,47 @@ def test_recorded_only_leaves_the_forecasts_of_counted_triggers_out() -> None:
     task = a_task(every("500h"), every("6mo"), origin=last_done("2026-01-15", hours=1000))
     due = line(task, on=ON, hours=FIVE_A_DAY, recorded_only=True)
     assert (dates(due), due.undated) == ((day("2026-07-15"),) * 3, (Kind.HOURS,))
+
+
+# Deferred
+
+
+def oil(deferral: Deferral, done_at: int = 750) -> Task:
+    return a_task(every("250h"), origin=last_done("2026-01-01", hours=done_at), deferrals=(deferral,))
+
+
+def test_a_counted_trigger_held_back_to_a_day_calls_on_that_day_where_its_point_is_past() -> None:
+    due = line(oil(a_deferral("2026-06-01")), on=ON, hours=FIVE_A_DAY)
+    assert dates(due) == (day("2026-06-01"),) * 3
+
+
+def test_without_a_forecast_the_day_it_is_deferred_to_is_all_that_is_known() -> None:
+    due = line(oil(a_deferral("2026-06-01", cap=1180)), on=ON, hours=1005)
+    assert dates(due) == (day("2026-06-01"),) * 3
+
+
+def test_with_a_cap_it_calls_on_whichever_comes_first() -> None:
+    free = line(oil(a_deferral(hours=1180)), on=ON, hours=FIVE_A_DAY)
+    assert free.likely_on == day("2026-05-17")
+    soon = line(oil(a_deferral("2026-05-10", cap=1180)), on=ON, hours=FIVE_A_DAY)
+    assert soon.likely_on == day("2026-05-10")
+    assert (soon.early_on or date.max) <= day("2026-05-10")
+    assert soon.late_on == day("2026-05-10")
+    late = line(oil(a_deferral("2026-12-01", cap=1180)), on=ON, hours=FIVE_A_DAY)
+    assert dates(late) == dates(free)
+
+
+def test_a_point_still_ahead_of_a_day_without_a_cap_calls_when_it_is_reached() -> None:
+    task = oil(a_deferral("2026-05-10"), done_at=1000)
+    due = line(task, on=ON, hours=FIVE_A_DAY)
+    assert due.likely_on == day("2026-05-31")
+    later = oil(a_deferral("2026-12-10"), done_at=1000)
+    assert dates(line(later, on=ON, hours=FIVE_A_DAY))[:2] == (day("2026-12-10"), day("2026-12-10"))
+
+
+def test_an_open_late_day_stays_open_where_the_point_is_still_ahead() -> None:
+    rare = [("2025-11-01", 0), ("2025-12-01", 9), ("2026-04-01", 10), ("2026-05-01", 10)]
+    task = a_task(every("40h"), origin=last_done("2025-11-01", hours=0), deferrals=(a_deferral("2026-05-10"),))
+    due = line(task, on=ON, hours=rare)
+    assert due.likely_on is not None
+    assert due.late_on is None
