@@ -65,9 +65,9 @@ def _due(given: argparse.Namespace) -> None:
 
 
 def _csv(rows: "Sequence[DueRow]") -> str:
-    from fleetcare.operations.due import COLUMNS
+    from fleetcare.operations.due_file import due_csv
 
-    return output.csv_text(COLUMNS, [[getattr(row, name) for name in COLUMNS] for row in rows])
+    return due_csv(rows)
 
 
 def _json(rows: "Sequence[DueRow]") -> str:

@@ -1,7 +1,5 @@
 """The only place that prints. Answers go to stdout, talk to stderr; nothing typed elsewhere can drive the terminal."""
 
-import csv
-import io
 import json
 import os
 import re
@@ -16,13 +14,10 @@ from decimal import Decimal
 from pathlib import Path
 from typing import Any, TextIO
 
-from fleetcare.domain.printable import UNPRINTABLE, clean
-from fleetcare.domain.quantities import plain
+from fleetcare.domain.printable import UNPRINTABLE, cell_text
+from fleetcare.domain.printable import clean as clean
 from fleetcare.errors import Refused
 
-# What a spreadsheet may run as a formula; the last four are the wide forms of = + - @.
-_FORMULA = re.compile("[=+\\-@\t\r\uff1d\uff0b\uff0d\uff20]")
-_NUMBER = re.compile(r"[+-]?[0-9]+(\.[0-9]+)?", re.ASCII)
 _GAP = "  "
 _NARROWEST = 10  # a date
 
@@ -72,7 +67,7 @@ def table(headers: Sequence[str], rows: Iterable[Sequence[Any]], width: int | No
     `width` is that of the terminal by default; where stdout is no terminal nothing is wrapped.
     """
     rows = list(rows)
-    cells = [[clean(_plain_cell(cell)) for cell in row] for row in rows]
+    cells = [[clean(cell_text(cell)) for cell in row] for row in rows]
     widths = [max(_columns(cell) for cell in column) for column in zip(headers, *cells, strict=True)]
     _narrow(widths, _terminal_width() if width is None else width)
     numeric = [
@@ -83,18 +78,6 @@ def table(headers: Sequence[str], rows: Iterable[Sequence[Any]], width: int | No
     for row in cells:
         lines.extend(_table_row(row, widths, numeric))
     return "\n".join(line.rstrip() for line in lines)
-
-
-def csv_text(headers: Sequence[str], rows: Iterable[Sequence[Any]]) -> str:
-    """Give rows as CSV (RFC 4180: CRLF, quoted where needed), ISO dates, point decimals, None as empty.
-
-    Text a spreadsheet could take for a formula gets a leading apostrophe; numbers are left alone.
-    """
-    buffer = io.StringIO()
-    writer = csv.writer(buffer, lineterminator="\r\n")
-    writer.writerow(headers)
-    writer.writerows([_csv_cell(cell) for cell in row] for row in rows)
-    return buffer.getvalue()
 
 
 def json_text(value: Any) -> str:
@@ -130,25 +113,6 @@ def _write_file(path: Path, data: bytes) -> None:
             beside.unlink(missing_ok=True)
     except OSError as error:
         raise Refused(f"cannot write {path}: {error.strerror}", "name another file with --out") from None
-
-
-def _plain_cell(cell: Any) -> str:
-    match cell:
-        case None:
-            return ""
-        case Decimal():
-            return plain(cell)
-        case date():
-            return cell.isoformat()
-        case _:
-            return str(cell)
-
-
-def _csv_cell(cell: Any) -> str:
-    text = _plain_cell(cell)
-    risky = isinstance(cell, str) and _FORMULA.match(text) and not _NUMBER.fullmatch(text)
-    # A line break inside a cell is lawful in CSV; every other control character is shown instead.
-    return ("'" if risky else "") + "\n".join(clean(line) for line in text.split("\n"))
 
 
 def _json_value(value: Any) -> Any:

@@ -1,6 +1,5 @@
 """What is printed: safe for the terminal, the spreadsheet and the program that reads it."""
 
-import csv
 import io
 import json
 import os
@@ -96,29 +95,6 @@ def test_a_table_on_a_terminal_fits_its_width(monkeypatch: pytest.MonkeyPatch) -
     monkeypatch.setenv("COLUMNS", "30")
     lines = output.table(["tag", "note"], [["P-01", "word " * 20]]).split("\n")
     assert max(len(line) for line in lines) <= 30
-
-
-def test_csv_follows_rfc_4180_and_reads_back() -> None:
-    rows = [["P-01", 'the "big" one, left', Decimal("1234.50"), date(2026, 5, 1), None, "line\nbreak"]]
-    text = output.csv_text(["engine", "note", "at", "on", "by", "more"], rows)
-    assert text.startswith('engine,note,at,on,by,more\r\nP-01,"the ""big"" one, left",1234.5,2026-05-01,,')
-    assert list(csv.reader(io.StringIO(text, newline="")))[1] == [
-        "P-01", 'the "big" one, left', "1234.5", "2026-05-01", "", "line\nbreak",
-    ]  # fmt: skip
-
-
-@pytest.mark.parametrize("typed", ["=1+1", "+44 1", "-oil", "@SUM(A1)", "\t=1", "\r=1", "\uff1d1"])
-def test_text_a_spreadsheet_could_run_gets_an_apostrophe(typed: str) -> None:
-    assert output.csv_text(["note"], [[typed]]).split("\r\n")[1].lstrip('"').startswith("'")
-
-
-@pytest.mark.parametrize("figure", [Decimal("-12.5"), -3, "-12.5", "+7"])
-def test_a_number_in_csv_stays_a_number(figure: Decimal | int | str) -> None:
-    assert output.csv_text(["remaining"], [[figure]]) == f"remaining\r\n{figure}\r\n"
-
-
-def test_csv_shows_control_characters_instead_of_sending_them() -> None:
-    assert output.csv_text(["note"], [["\x1b[2J"]]) == "note\r\n\\x1b[2J\r\n"
 
 
 def test_json_keeps_figures_unrounded_and_whole_ones_whole() -> None:

@@ -1,0 +1,1 @@
+"""Files of other programs: bytes in, rows and drafts out, and back."""
