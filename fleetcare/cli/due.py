@@ -89,7 +89,7 @@ def _table(rows: "Sequence[DueRow]") -> str:
         for group, found in grouped(rows).items()
         if found
     ]
-    return "\n\n".join(blocks or ["Nothing is due."]) + f"\n\n{_CAUTION}\n"
+    return "\n\n".join(blocks or ["No lines."]) + f"\n\n{_CAUTION}\n"
 
 
 _HEADERS = ("engine", "site", "task", "due at", "due on", "remaining", "likely", "note")
@@ -104,6 +104,13 @@ def _cells(row: "DueRow") -> list[str]:
     return [row.engine, row.site, row.task, say_counted(row), due_on, say_remaining(row), likely, note]
 
 
+def _lines(rows: "Sequence[DueRow]") -> str:
+    """Give the lines of one engine or machine, each with its state in front."""
+    cells = ((row, _cells(row)[2:]) for row in rows)
+    said_in_front = [[row.state, *cell[:-1], cell[-1].removeprefix(row.state).lstrip("; ")] for row, cell in cells]
+    return _block(("state", *_HEADERS[2:]), said_in_front)
+
+
 _READINGS = ("reading", "on", "shown", "remark")
 _HISTORY = ("entry", "on", "kind", "what", "figures", "by", "remark")
 _READINGS_SHOWN = 10
@@ -111,13 +118,12 @@ _RENDER = {"table": _table, "csv": _csv, "json": _json}
 
 
 def say_before_return(tag: str, rows: "Sequence[DueRow]") -> None:
-    """Print what an engine needs before it runs again."""
-    waiting = [row for row in rows if row.state != State.CLEAR]
-    if not waiting:
-        output.say(f"Nothing needs to be done before {tag} runs again.")
+    """Print the lines that waited for an engine to run again."""
+    if not rows:
+        output.say(f"{tag} has no lines.")
         return
-    output.say(f"BEFORE RETURN ({len(waiting)})")
-    output.say(output.table(_HEADERS, [_cells(row) for row in waiting]))
+    output.say(f"BEFORE RETURN ({len(rows)})")
+    output.say(_lines(rows))
 
 
 def _show(given: argparse.Namespace) -> None:
@@ -147,7 +153,7 @@ def _page_blocks(page: "ItemPage") -> list[tuple[str, str]]:
         ("", _labels(page.nameplate)),
         ("METERS", _labels(page.meters)),
         (f"READINGS{f', the newest {_READINGS_SHOWN}' if more > 0 else ''}", _block(_READINGS, readings)),
-        ("LINES", _block(("state", *_HEADERS[2:]), [[row.state, *_cells(row)[2:]] for row in page.rows])),
+        ("LINES", _lines(page.rows)),
         ("LOG", _block(_HISTORY, history)),
     ]
 
@@ -158,4 +164,5 @@ def _block(headers: Sequence[str], rows: Sequence[Sequence[object]]) -> str:
 
 def _labels(labels: "Sequence[tuple[str, str]]") -> str:
     wide = max((len(label) for label, _ in labels), default=0)
-    return "\n".join(f"{label:<{wide}}  {text}" for label, text in labels)
+    # A line break somebody typed must not begin a line that looks like one of ours.
+    return "\n".join(f"{label:<{wide}}  {output.clean(text)}" for label, text in labels)

@@ -1,7 +1,7 @@
 """What every command on the shop's database shares: its context, its options as a draft, lines that moved."""
 
 import argparse
-from collections.abc import Mapping, Sequence
+from collections.abc import Callable, Mapping, Sequence
 from datetime import date
 from typing import TYPE_CHECKING, Any
 
@@ -10,6 +10,7 @@ from fleetcare.context import Context
 from fleetcare.domain.lines import State
 from fleetcare.domain.quantities import plain
 from fleetcare.domain.quantities import tenth as tenth
+from fleetcare.errors import Misread
 
 if TYPE_CHECKING:
     from fleetcare.operations.due import Moved
@@ -29,9 +30,23 @@ def options_of(given: argparse.Namespace, *but: str) -> dict[str, object]:
     return {name: value for name, value in vars(given).items() if name not in _NOT_OPTIONS and name not in but}
 
 
+def changes_of(given: argparse.Namespace, *but: str) -> dict[str, object]:
+    """Give the options of an edit: only those given. Raises Misread for an empty one, which would change nothing."""
+    changes = {name: value for name, value in options_of(given, *but).items() if value not in (None, False)}
+    for name, value in changes.items():
+        if isinstance(value, str) and not value.strip():
+            raise Misread(f"{option_label(name)} is empty", "give it a value, or leave it out")
+    return changes
+
+
 def option_label(field: str) -> str:
     """Name a draft's field as the command line does."""
-    return field.upper() if field in {"tag", "value", "entry", "name"} else "--" + field.replace("_", "-")
+    return field.upper() if field in {"tag", "value", "entry"} else "--" + field.replace("_", "-")
+
+
+def label_with(**positional: str) -> Callable[[str], str]:
+    """Give `option_label` for a command that takes more fields by their place, each with what stands for it."""
+    return lambda field: positional.get(field) or option_label(field)
 
 
 def say_moved(moves: "Sequence[Moved]") -> None:

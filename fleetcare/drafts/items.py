@@ -1,16 +1,23 @@
 """An engine or a machine as somebody states it: tag, nameplate, meters and start point."""
 
-from datetime import date
 from decimal import Decimal
 from typing import Annotated, Literal, Self
 
 from pydantic import BeforeValidator, model_validator
 
 from fleetcare.domain.engines import Layout
-from fleetcare.drafts.fields import Count, Day, Dials, Digits, Meters, Number, Positive, Text
+from fleetcare.drafts.fields import Count, Day, Dials, Digits, KindField, Meters, Note, Number, Positive, Text
 from fleetcare.drafts.reading_in import Draft
 from fleetcare.errors import Misread, Refused
-from fleetcare.rules.nameplate import LashUnit, check_firing_order, check_layout, parse_lash_range
+from fleetcare.rules.bounds import check_between
+from fleetcare.rules.geometry import MOST_CYLINDERS, MOST_MM, MOST_RPM
+from fleetcare.rules.nameplate import (
+    LashUnit,
+    check_firing_order,
+    check_layout,
+    parse_lash_range,
+    parse_lash_setting,
+)
 
 LashRange = Annotated[
     tuple[Decimal, Decimal, LashUnit],
@@ -18,18 +25,25 @@ LashRange = Annotated[
 ]
 
 
-def _lash_setting(value: object) -> tuple[Decimal, LashUnit]:
-    """Read a setting value: 0.25 (mm) or 0.010in."""
-    if isinstance(value, tuple):
-        return value
-    text = str(value).strip()
-    low, _, unit = parse_lash_range(
-        f"{text.removesuffix('in').removesuffix('mm').strip()}-99{'in' if text.endswith('in') else ''}"
-    )
-    return low, unit
+LashSetting = Annotated[
+    tuple[Decimal, LashUnit],
+    BeforeValidator(lambda value: value if isinstance(value, tuple) else parse_lash_setting(str(value))),
+]
 
-
-LashSetting = Annotated[tuple[Decimal, LashUnit], BeforeValidator(_lash_setting)]
+# Limits of sense for any four-stroke engine, least and most, with their units.
+_PLATE = {
+    "cylinders": (1, MOST_CYLINDERS, ""),
+    "bore": (1, MOST_MM, "mm"),
+    "stroke": (1, MOST_MM, "mm"),
+    "rod": (1, 2 * MOST_MM, "mm"),
+    "compression_ratio": (2, 50, ""),
+    "valves_per_cylinder": (2, 8, ""),
+    "intake_closes": (-180, 180, "degrees"),
+    "sump": (0, 100_000, "L"),
+    "rated_rpm": (1, MOST_RPM, "rpm"),
+    "rated_kw": (0, 200_000, "kW"),
+    "altitude": (-500, 9_000, "m"),
+}
 
 
 def _as_new(value: object) -> bool:
@@ -47,7 +61,7 @@ class ItemDraft(Draft):
     """What engines and machines share."""
 
     tag: Text
-    name: str | None = None
+    name: Text | None = None
     site: Text | None = None
     in_service: Day | None = None
     as_new: Annotated[bool, BeforeValidator(_as_new)] = False
@@ -105,6 +119,12 @@ class EngineDraft(ItemDraft):
 
     @model_validator(mode="after")
     def _check_nameplate(self) -> Self:
+        if self.position is not None and self.machine is None:
+            raise Refused("a position is one in a machine", "give --machine as well")
+        for field, (least, most, unit) in _PLATE.items():
+            value = getattr(self, field)
+            if value is not None:
+                check_between(field.replace("_", " "), Decimal(value), least, most, unit)
         if self.layout is not None and self.cylinders is not None:
             check_layout(self.layout, self.cylinders)
         if self.firing_order is not None:
@@ -126,9 +146,42 @@ class EngineDraft(ItemDraft):
         return [figure for figure in figures if figure is not None]
 
 
-class SpellDraft(Draft):
-    """A dated change of an item's status, fitting or duty."""
+class StatusDraft(Draft):
+    """A status that begins on a day; `by` says so."""
 
-    on: date
+    tag: Text
+    on: Day
     by: Text | None = None
-    why: str = ""
+    why: Note = ""
+
+
+class ReturnDraft(StatusDraft):
+    """A return to service: somebody must stand for it."""
+
+    by: Text
+
+
+class FactorDraft(Draft):
+    """A duty factor that shortens the intervals of a kind from a day on."""
+
+    tag: Text
+    kind: KindField
+    factor: Number
+    on: Day
+    why: Text
+
+
+class FitDraft(Draft):
+    """A move of an engine into a machine, or `out` of the one it is in."""
+
+    tag: Text
+    machine: Text | None = None
+    out: bool = False
+    position: Text | None = None
+    on: Day
+
+    @model_validator(mode="after")
+    def _check_where(self) -> Self:
+        if self.out is (self.machine is not None):
+            raise Misread("an engine goes into a machine or out of one", "give --machine TAG or --out")
+        return self

@@ -7,11 +7,14 @@ from typing import TYPE_CHECKING
 from sqlalchemy import select
 from sqlmodel import col
 
-from fleetcare.db.tables import Fitting, Meter, MeterFit, Reading, ReadingMark, StartFigure
-from fleetcare.domain.quantities import Figure, Kind, from_base, to_base
+from fleetcare.db.tables import Fitting, Meter, MeterFit, ReadingMark, StartFigure
+from fleetcare.domain import meters as facts
+from fleetcare.domain.quantities import Figure, Kind, from_base, plain, to_base
 from fleetcare.drafts.items import ItemDraft
 from fleetcare.errors import Refused
-from fleetcare.operations.find import FoundItem, find_meters, pick_meter
+from fleetcare.operations.find import FoundItem, FoundMeter, find_meters, pick_meter
+from fleetcare.operations.load import load_counters
+from fleetcare.operations.readings import NewReading, store_reading
 from fleetcare.operations.rows import fetch
 
 if TYPE_CHECKING:
@@ -25,26 +28,20 @@ def add_meters(session: "Session", item: FoundItem, draft: ItemDraft, from_on: d
     owned = {meter.kind for meter in _own_meters(session, item.id)}
     for kind, unit in draft.meter:
         if kind in owned:
-            raise Refused(f"{item.tag} has a {kind} meter already", "a new one is told by fleetcare reading --replaced")
-        digits = next((d for d in draft.meter_digits if d[0] in {None, kind}), None)
-        meter = Meter(
-            item_id=item.id,
-            kind=kind,
-            unit=unit,
-            digits=digits[1] if digits else None,
-            decimals=digits[2] if digits else None,
-        )
+            raise Refused(
+                f"a meter of {item.tag} counts {kind} already", "a new one is told by fleetcare reading --replaced"
+            )
+        meter = Meter(item_id=item.id, kind=kind, unit=unit)
         session.add(meter)
         session.flush()
         _stop_borrowing(session, item, kind, from_on)
         session.add(MeterFit(meter_id=meter.id, item_id=item.id, from_on=from_on, first=Decimal(0)))
         _lend_to_fitted(session, item, meter, from_on)
-    _check_digits(item, draft)
     session.flush()
 
 
 def set_digits(session: "Session", item: FoundItem, draft: ItemDraft) -> None:
-    """Set the digits of an item's own meters, which give their rollover."""
+    """Set the digits of an item's own meters, which give their rollover. Refuses fewer than have been read."""
     meters = _own_meters(session, item.id)
     for kind, before, after in draft.meter_digits:
         fitting = [meter for meter in meters if kind in {None, meter.kind}]
@@ -53,25 +50,37 @@ def set_digits(session: "Session", item: FoundItem, draft: ItemDraft) -> None:
                 f"--meter-digits {before}.{after} binds to {'no' if not fitting else 'more than one'} meter of {item.tag}",
                 "name the kind, such as distance:6.0",
             )
-        fitting[0].digits, fitting[0].decimals = before, after
+        meter = fitting[0]
+        for reading in _accepted(session, item, meter.kind, meter.id):
+            if reading.value >= 10**before:
+                raise Refused(
+                    f"reading {reading.id} of {item.tag} shows {plain(reading.value)} {meter.unit},"
+                    f" which does not fit on {before} digits",
+                    "count the digits before the point again",
+                )
+        meter.digits, meter.decimals = before, after
     session.flush()
 
 
 def restate_start(session: "Session", item: FoundItem, draft: ItemDraft, *, is_new: bool) -> None:
-    """Set the figures an item started from: life total, first figure of the first fit, and a reading of that day."""
+    """Set the figures an item started from: life total, first figure of the first fit, and a reading of that day.
+
+    A bare figure is that of the item's own meter, where it has one.
+    """
     if not draft.start_at:
         return
     assert draft.in_service is not None
     meters = find_meters(session.connection(), item.id, draft.in_service)
     seen: set[Kind] = set()
+    own = [meter for meter in meters if meter.owner_id == item.id]
     for figure in draft.start_at:
-        meter = pick_meter(meters, figure, item.tag)
+        meter = pick_meter(meters if figure.unit or not own else own, figure, item.tag)
         if meter.kind in seen:
             raise Refused(f"--start-at names {meter.kind} twice", "give one figure of each kind")
         seen.add(meter.kind)
         _set_start_figure(session, item, meter.kind, figure, meter.unit)
         if meter.owner_id == item.id:
-            _restate_first(session, item, meter.id, meter.unit, figure, draft.in_service, is_new)
+            _restate_first(session, item, meter, figure, draft.in_service, is_new)
     left = {meter.kind for meter in meters} - seen
     if draft.as_new and left:
         raise Refused(
@@ -151,34 +160,47 @@ def _set_start_figure(session: "Session", item: FoundItem, kind: Kind, figure: F
 
 
 def _restate_first(
-    session: "Session", item: FoundItem, meter_id: int, unit: str, figure: Figure, on: date, is_new: bool
+    session: "Session", item: FoundItem, meter: FoundMeter, figure: Figure, on: date, is_new: bool
 ) -> None:
-    """Make a start figure the first of the item's first fit, and a reading of that day."""
+    """Make a start figure the first of the item's first fit, and a reading of that day, held against later ones."""
     fit = session.scalars(
         select(MeterFit)
-        .where(col(MeterFit.meter_id) == meter_id, col(MeterFit.item_id) == item.id)
+        .where(col(MeterFit.meter_id) == meter.id, col(MeterFit.item_id) == item.id)
         .order_by(col(MeterFit.id))
     ).first()
     assert fit is not None
     fit.from_on = on
-    fit.first = from_base(to_base(figure.value, figure.unit or unit), unit)
+    fit.first = from_base(to_base(figure.value, figure.unit or meter.unit), meter.unit)
     if not is_new:
-        for (reading_id,) in fetch(
-            session.connection(),
-            "select id from reading where meter_id = :meter and note = :note",
-            meter=meter_id,
-            note=_START_NOTE,
-        ):
-            session.add(ReadingMark(reading_id=reading_id, mark="void", why="start figure restated", on=on))
-    session.add(Reading(meter_id=meter_id, on=on, value=figure.value, unit=figure.unit or unit, note=_START_NOTE))
+        _void_start(session, meter, on)
+        _refuse_earlier(session, item, meter, on)
+    remedy = "check --start-at and --in-service, or void that reading"
+    store_reading(session, item, meter, NewReading(on, figure, note=_START_NOTE), remedy=remedy)
 
 
-def _check_digits(item: FoundItem, draft: ItemDraft) -> None:
-    kinds = {kind for kind, _ in draft.meter}
-    for kind, before, after in draft.meter_digits:
-        ambiguous = kind is None and len(kinds) > 1
-        if kinds and (ambiguous or kind not in {None, *kinds}):
+def _void_start(session: "Session", meter: FoundMeter, on: date) -> None:
+    """Void the reading that an earlier start figure left."""
+    for (reading_id,) in fetch(
+        session.connection(),
+        "select id from reading where meter_id = :meter and note = :note",
+        meter=meter.id,
+        note=_START_NOTE,
+    ):
+        session.add(ReadingMark(reading_id=reading_id, mark="void", why="start figure restated", on=on))
+    session.flush()
+
+
+def _refuse_earlier(session: "Session", item: FoundItem, meter: FoundMeter, on: date) -> None:
+    """Refuse a first day that readings lie before: the meter would not count them."""
+    for reading in _accepted(session, item, meter.kind, meter.id):
+        if reading.on < on:
             raise Refused(
-                f"--meter-digits {before}.{after} binds to no one meter of {item.tag}",
-                "name the kind, such as distance:6.0",
+                f"reading {reading.id} of {item.tag} on {reading.on} lies before --in-service {on}",
+                "give an earlier day, or void that reading",
             )
+
+
+def _accepted(session: "Session", item: FoundItem, kind: Kind, meter_id: int) -> list[facts.Reading]:
+    """Give the readings of one of an item's meters that count, in its own unit."""
+    counter = load_counters(session.connection(), [item.id], date.max)[item.id][kind].counter
+    return [reading for reading in counter.readings if reading.meter_id == meter_id and reading.accepted]

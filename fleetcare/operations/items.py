@@ -1,13 +1,13 @@
 """Add, edit, fit and follow engines and machines."""
 
 from datetime import date
-from decimal import Decimal
 from typing import TYPE_CHECKING, Any
 
 from sqlalchemy import select
 from sqlmodel import col
 
-from fleetcare.db.tables import Engine, Fitting, Item, LashSpec
+from fleetcare.db.tables import Engine, Fitting, Item, LashSpec, StartFigure
+from fleetcare.domain.quantities import plain
 from fleetcare.drafts.items import EngineDraft, ItemDraft
 from fleetcare.errors import Refused
 from fleetcare.operations.find import FoundItem, find_machine
@@ -45,6 +45,8 @@ def add_item(session: "Session", draft: ItemDraft, today: date) -> FoundItem:
     """Add an engine or machine with its meters, start figures and place. Refuses a tag in use."""
     _refuse_taken(session, draft.tag)
     is_engine = isinstance(draft, EngineDraft)
+    if isinstance(draft, EngineDraft) and draft.machine is not None:
+        find_machine(session.connection(), draft.machine)  # before this item's own tag could be taken for it
     row = Item(
         tag=draft.tag,
         tag_key=draft.tag.casefold(),
@@ -61,6 +63,7 @@ def add_item(session: "Session", draft: ItemDraft, today: date) -> FoundItem:
         session.add(Engine(item_id=item.id, **_nameplate(draft)))
         _add_lash_spec(session, item.id, draft, draft.in_service or today)
     add_meters(session, item, draft, draft.in_service)
+    set_digits(session, item, draft)
     if isinstance(draft, EngineDraft) and draft.machine is not None:
         fit_engine(session, item, draft.machine, draft.in_service or today, draft.position or "")
     restate_start(session, item, draft, is_new=True)
@@ -84,6 +87,7 @@ def edit_item(session: "Session", item: FoundItem, draft: ItemDraft, today: date
     if draft.site is not None:
         row.site_id = site_id(session, draft.site)
     if draft.in_service is not None:
+        _refuse_start_of_another_day(session, row, draft)
         row.in_service_on = draft.in_service
     row.as_new = row.as_new or draft.as_new
     if isinstance(draft, EngineDraft):
@@ -109,6 +113,8 @@ def fit_engine(session: "Session", engine: FoundItem, machine_tag: str | None, o
     ).one_or_none()
     if current is None and machine is None:
         raise Refused(f"{engine.tag} is in no machine", "nothing needs to be done")
+    if current is None:
+        _refuse_overlap(session, engine, on)
     if current is not None:
         if machine is not None and current.machine_id == machine.id and current.position == position:
             raise Refused(f"{engine.tag} is in {machine.tag} since {current.from_on}", "name another machine")
@@ -120,6 +126,23 @@ def fit_engine(session: "Session", engine: FoundItem, machine_tag: str | None, o
         session.add(Fitting(engine_id=engine.id, machine_id=machine.id, position=position, from_on=on))
         count_with_machine(session, engine, machine, on)
     session.flush()
+
+
+def _refuse_overlap(session: "Session", engine: FoundItem, on: date) -> None:
+    """Refuse a day on which the engine was in another machine, though it is in none any more."""
+    ended = session.scalars(
+        select(Fitting).where(col(Fitting.engine_id) == engine.id).order_by(col(Fitting.to_on).desc())
+    ).first()
+    if ended is not None and ended.to_on is not None and on < ended.to_on:
+        raise Refused(f"{engine.tag} was in a machine until {ended.to_on}, after {on}", "give a later --on")
+
+
+def _refuse_start_of_another_day(session: "Session", row: Item, draft: ItemDraft) -> None:
+    """Refuse to move the first day away from under the figures that were read on it."""
+    figures = session.scalars(select(StartFigure).where(col(StartFigure.item_id) == row.id)).all()
+    if figures and not draft.start_at and draft.in_service != row.in_service_on:
+        shown = ", ".join(f"{plain(figure.value)} {figure.unit}" for figure in figures)
+        raise Refused(f"{row.tag} started at {shown} on {row.in_service_on}", "give --start-at for the new day as well")
 
 
 def _nameplate(draft: EngineDraft) -> dict[str, Any]:
@@ -138,32 +161,33 @@ def _refuse_taken(session: "Session", tag: str) -> None:
 
 
 def _add_lash_spec(session: "Session", item_id: int, draft: EngineDraft, from_on: date) -> None:
-    """Add a lash spec from what a draft gives, over the one in force."""
-    unit = draft.lash_unit
-    if unit is None and draft.lash_when is None:
+    """Add a lash spec from what a draft gives, over the one in force. Refuses to mix mm and inches."""
+    if draft.lash_unit is None and draft.lash_when is None:
         return
     newest = session.scalars(
         select(LashSpec).where(col(LashSpec.item_id) == item_id).order_by(col(LashSpec.from_on), col(LashSpec.id))
     ).all()
     old = newest[-1] if newest else None
-    if old is not None and unit not in {None, old.unit}:
-        old = None  # figures in another unit start a spec of their own
-
-    def figure(given: Decimal | None, column: str) -> Decimal | None:
-        return given if given is not None else (getattr(old, column) if old is not None else None)
-
-    intake, exhaust = draft.lash_intake, draft.lash_exhaust
+    intake_low, intake_high, _ = draft.lash_intake or (None, None, None)
+    exhaust_low, exhaust_high, _ = draft.lash_exhaust or (None, None, None)
+    given = {
+        "intake_low": intake_low,
+        "intake_high": intake_high,
+        "exhaust_low": exhaust_low,
+        "exhaust_high": exhaust_high,
+        "set_intake": draft.lash_set_intake[0] if draft.lash_set_intake else None,
+        "set_exhaust": draft.lash_set_exhaust[0] if draft.lash_set_exhaust else None,
+    }
+    kept = {name: getattr(old, name) for name, value in given.items() if value is None and old is not None}
+    kept = {name: value for name, value in kept.items() if value is not None}
+    if old is not None and kept and draft.lash_unit not in {None, old.unit}:
+        raise Refused(f"the other lash figures are in {old.unit}", "give these in the same unit, or all of them anew")
     session.add(
         LashSpec(
             item_id=item_id,
             from_on=from_on,
-            unit=unit or (old.unit if old is not None else "mm"),
-            intake_low=figure(intake[0] if intake else None, "intake_low"),
-            intake_high=figure(intake[1] if intake else None, "intake_high"),
-            exhaust_low=figure(exhaust[0] if exhaust else None, "exhaust_low"),
-            exhaust_high=figure(exhaust[1] if exhaust else None, "exhaust_high"),
-            set_intake=figure(draft.lash_set_intake[0] if draft.lash_set_intake else None, "set_intake"),
-            set_exhaust=figure(draft.lash_set_exhaust[0] if draft.lash_set_exhaust else None, "set_exhaust"),
+            unit=draft.lash_unit or (old.unit if old is not None else "mm"),
             condition=draft.lash_when or (old.condition if old is not None else "any"),
+            **(given | kept),
         )
     )

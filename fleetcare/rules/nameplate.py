@@ -13,6 +13,7 @@ LashUnit = Literal["mm", "in"]
 
 _ORDER = re.compile(r"[0-9]{1,3}(?:-[0-9]{1,3})*", re.ASCII)
 _RANGE = re.compile(r"\s*(\d*\.?\d+)\s*-\s*(\d*\.?\d+)\s*(mm|in)?\s*", re.ASCII)
+_SETTING = re.compile(r"\s*(\d*\.?\d+)\s*(mm|in)?\s*", re.ASCII)
 
 
 def check_positive(name: str, value: Decimal | int, unit: str = "") -> None:
@@ -74,6 +75,19 @@ def parse_lash_range(text: str) -> tuple[Decimal, Decimal, LashUnit]:
     if least > most:
         raise Refused(f"lash range {text.strip()} runs backwards", "put the smaller figure first")
     return least, most, "in" if found[3] == "in" else "mm"
+
+
+def parse_lash_setting(text: str) -> tuple[Decimal, LashUnit]:
+    """Read what to set the lash to, "0.25" (mm) or "0.010in", as figure and unit.
+
+    Raises Misread where it is no figure, Refused where it is nothing.
+    """
+    found = _SETTING.fullmatch(text)
+    if not found:
+        raise Misread(f"{text!r} is not a lash", "write it like 0.25 (mm) or 0.010in")
+    setting = Decimal(found[1])
+    check_positive("lash", setting)
+    return setting, "in" if found[2] == "in" else "mm"
 
 
 def _cylinders(numbers: list[int]) -> str:

@@ -6,7 +6,13 @@ import pytest
 
 from fleetcare.domain.engines import Layout
 from fleetcare.errors import Misread, Refused
-from fleetcare.rules.nameplate import check_firing_order, check_layout, check_positive, parse_lash_range
+from fleetcare.rules.nameplate import (
+    check_firing_order,
+    check_layout,
+    check_positive,
+    parse_lash_range,
+    parse_lash_setting,
+)
 
 
 @pytest.mark.parametrize(
@@ -98,3 +104,16 @@ def test_what_is_no_range_is_misread(text: str) -> None:
 def test_a_range_no_gap_can_have_is_refused(text: str, wrong: str) -> None:
     with pytest.raises(Refused, match=wrong):
         parse_lash_range(text)
+
+
+@pytest.mark.parametrize(
+    ("text", "setting", "unit"), [("0.25", "0.25", "mm"), (" .30 mm ", "0.30", "mm"), ("0.010in", "0.010", "in")]
+)
+def test_a_lash_to_set_is_one_figure_in_mm_unless_inches_are_named(text: str, setting: str, unit: str) -> None:
+    assert parse_lash_setting(text) == (Decimal(setting), unit)
+
+
+@pytest.mark.parametrize(("text", "error"), [("abc", Misread), ("0.2-0.3", Misread), ("1e-1", Misread), ("0", Refused)])
+def test_a_lash_to_set_that_is_no_figure_above_nothing_is_not_taken(text: str, error: type[Exception]) -> None:
+    with pytest.raises(error):
+        parse_lash_setting(text)

@@ -1,0 +1,121 @@
+"""`engine fit`, `withdraw`, `lay-up`, `return`, `stand-down`, `factor`: what changes for an engine on a day."""
+
+import argparse
+
+from fleetcare.cli import output
+from fleetcare.cli.parser import Commands, day
+from fleetcare.cli.shop import context_of, label_with, option_label, options_of, say_moved
+from fleetcare.domain.engines import Status
+from fleetcare.domain.quantities import plain
+
+_STATUSES = (
+    ("withdraw", Status.WITHDRAWN, "take out of the fleet; history stays, the tag is free again"),
+    ("lay-up", Status.LAID_UP, "lay up for a while"),
+    ("return", Status.IN_SERVICE, "return to service; prints what waits for it"),
+    ("stand-down", Status.STOOD_DOWN, "mark as not to be run"),
+)
+
+
+def add_spell_commands(engine: Commands) -> None:
+    """Add the actions of `engine` that hold from a day on."""
+    fit = engine.add_parser("fit", help="fit an engine in a machine, or take it out")
+    fit.add_argument("tag", metavar="TAG")
+    where = fit.add_mutually_exclusive_group(required=True)
+    where.add_argument("--machine", metavar="TAG", help="machine it goes into")
+    where.add_argument("--out", action="store_true", help="take it out of its machine")
+    fit.add_argument("--position", metavar="TEXT", help="where in the machine, such as port")
+    fit.add_argument("--on", type=day, metavar="DATE", help="day of the move, else the as-of day")
+    fit.set_defaults(run=_fit)
+    for name, status, text in _STATUSES:
+        parser = engine.add_parser(name, help=text)
+        parser.add_argument("tag", metavar="TAG")
+        parser.add_argument("--on", type=day, metavar="DATE", help="first day, else the as-of day")
+        parser.add_argument("--why", metavar="TEXT", help="reason")
+        parser.add_argument("--by", required=name == "return", metavar="NAME", help="who says so")
+        parser.set_defaults(run=_status, status=status)
+    factor = engine.add_parser("factor", help="shorten the intervals of one kind: dust, short trips, salt")
+    factor.add_argument("tag", metavar="TAG")
+    factor.add_argument("kind", metavar="KIND", help="hours, distance, fuel, starts or calendar")
+    factor.add_argument("factor", metavar="F", help="above 0, up to 1")
+    factor.add_argument("--on", type=day, required=True, metavar="DATE", help="first day it holds")
+    factor.add_argument("--why", required=True, metavar="TEXT", help="reason")
+    factor.set_defaults(run=_factor)
+
+
+def _fit(given: argparse.Namespace) -> None:
+    from fleetcare.drafts.items import FitDraft
+    from fleetcare.drafts.reading_in import read_draft
+    from fleetcare.operations.due import watch_moves
+    from fleetcare.operations.find import find_engine, find_machine
+    from fleetcare.operations.items import fit_engine
+    from fleetcare.operations.log import refuse_future
+
+    context = context_of(given)
+    values = options_of(given) | {"on": given.on or context.today()}
+    draft = read_draft(FitDraft, values, option_label)
+    refuse_future(draft.on, context.today())
+    with context.write() as session:
+        engine = find_engine(session.connection(), draft.tag)
+        where = "taken out of its machine"
+        if draft.machine is not None:
+            where = f"fitted in {find_machine(session.connection(), draft.machine).tag}"
+        with watch_moves(session, engine.tag, context.today()) as moves:
+            fit_engine(session, engine, draft.machine, draft.on, draft.position or "")
+    output.say(f"{engine.tag} {where} on {draft.on}.")
+    say_moved(moves.moved)
+
+
+def _status(given: argparse.Namespace) -> None:
+    from fleetcare.drafts.items import ReturnDraft, StatusDraft
+    from fleetcare.drafts.reading_in import read_draft
+    from fleetcare.operations.due import Filters, due_rows, watch_moves
+    from fleetcare.operations.find import find_engine
+    from fleetcare.operations.listing import pausing_tasks
+    from fleetcare.operations.log import refuse_future
+    from fleetcare.operations.spells import change_status
+
+    context = context_of(given)
+    status = given.status
+    values = options_of(given, "status") | {"on": given.on or context.today()}
+    draft = read_draft(ReturnDraft if status is Status.IN_SERVICE else StatusDraft, values, option_label)
+    refuse_future(draft.on, context.today())
+    with context.write() as session:
+        connection = session.connection()
+        engine = find_engine(connection, draft.tag)
+        waiting = due_rows(connection, context.today(), Filters(engine=engine.tag))
+        pausing = pausing_tasks(connection, engine.tag, context.today())
+        with watch_moves(session, engine.tag, context.today()) as moves:
+            change_status(session, engine, status, draft.on, why=draft.why, by=draft.by)
+    output.say(f"{engine.tag} is {status} from {draft.on}.")
+    say_moved(moves.moved)
+    if status is Status.LAID_UP:
+        for name in pausing:
+            say_pausing(name)
+    if status is Status.IN_SERVICE:
+        from fleetcare.cli.due import say_before_return
+
+        say_before_return(engine.tag, waiting)
+
+
+def say_pausing(name: str) -> None:
+    """Warn of a task that stands still while laid up though what it cares for does not."""
+    output.say(
+        f"Note: the calendar of {name} pauses while laid up; oil, coolant, belts and batteries age all the same."
+    )
+
+
+def _factor(given: argparse.Namespace) -> None:
+    from fleetcare.drafts.items import FactorDraft
+    from fleetcare.drafts.reading_in import read_draft
+    from fleetcare.operations.due import watch_moves
+    from fleetcare.operations.find import find_item
+    from fleetcare.operations.spells import set_factor
+
+    context = context_of(given)
+    draft = read_draft(FactorDraft, options_of(given), label_with(kind="KIND", factor="F"))
+    with context.write() as session:
+        item = find_item(session.connection(), draft.tag)
+        with watch_moves(session, item.tag, context.today()) as moves:
+            set_factor(session, item, draft.kind, draft.factor, draft.on, draft.why)
+    output.say(f"{item.tag}: {draft.kind} intervals × {plain(draft.factor)} from {draft.on} ({draft.why}).")
+    say_moved(moves.moved)
