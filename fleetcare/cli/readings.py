@@ -30,7 +30,7 @@ def add_commands(commands: Commands) -> None:
     reading.add_argument("--sure", action="store_true", help="it is right though it breaks with the past")
     reading.add_argument("--void", type=whole, metavar="ID", help="this reading was wrong; needs --why")
     reading.add_argument("--restore", type=whole, metavar="ID", help="this suspect or voided reading was right")
-    reading.add_argument("--why", metavar="TEXT", help="reason for --void")
+    reading.add_argument("--why", metavar="TEXT", help="reason for --void, and for --restore if there is one")
     reading.set_defaults(run=_reading)
 
 
@@ -59,7 +59,7 @@ def _record(given: argparse.Namespace) -> None:
     with context.write() as session, watch_moves(session, draft.tag, context.today()) as moves:
         recorded = record_reading(session, draft)
     if recorded.is_new:
-        output.say(f"Reading {recorded.id}: {draft.tag} shows {draft.value} on {draft.on}.")
+        output.say(f"Reading {recorded.id}: {recorded.shown} on {draft.on}.")
     else:
         output.say(f"Nothing new: reading {recorded.id} says the same.")
     _say_suspects(recorded.suspects)
@@ -71,7 +71,7 @@ def _amend(given: argparse.Namespace) -> None:
     from fleetcare.operations.readings import restore_reading, tag_of_reading, void_reading
 
     others = (given.tag, given.value, given.meter, given.on, given.by, given.note, given.replaced, given.unmetered)
-    if any(other is not None for other in others) or given.rolled_over:
+    if any(other is not None for other in others) or given.rolled_over or (given.sure and given.void is not None):
         raise Misread("--void and --restore stand by themselves", "leave the other options out")
     if given.void is not None and given.restore is not None:
         raise Misread("--void and --restore contradict each other", "give one")
@@ -86,7 +86,8 @@ def _amend(given: argparse.Namespace) -> None:
             if given.void is not None:
                 void_reading(session, reading_id, given.why.strip(), context.today())
             else:
-                suspects = restore_reading(session, reading_id, context.today(), sure=given.sure).suspects
+                why = (given.why or "").strip()
+                suspects = restore_reading(session, reading_id, context.today(), why=why, sure=given.sure).suspects
     output.say(f"Reading {reading_id} of {tag} {'is void' if given.void is not None else 'counts again'}.")
     _say_suspects(suspects)
     say_moved(moves.moved)

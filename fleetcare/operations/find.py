@@ -110,7 +110,7 @@ def pick_meter(meters: Sequence[FoundMeter], figure: Figure, tag: str, kind: Kin
         what = f"{wanted} of {tag}" if wanted else f"anything of {tag}"
         raise Refused(
             f"no meter counts {what} on that day",
-            f"add one by editing {tag} with --meter {wanted or 'hours'}",
+            f"check the day, or add one by editing {tag} with --meter {wanted or 'hours'}",
         )
     if len(fitting) > 1:
         kinds = " and ".join(meter.kind for meter in fitting)

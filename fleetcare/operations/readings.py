@@ -4,12 +4,13 @@ from collections.abc import Iterable, Sequence
 from dataclasses import dataclass, replace
 from datetime import date
 from decimal import Decimal
+from itertools import pairwise
 from typing import TYPE_CHECKING
 
 from sqlalchemy import select
 from sqlmodel import col
 
-from fleetcare.db.tables import Item, Meter, MeterFit, Reading, ReadingMark
+from fleetcare.db.tables import Item, Meter, Reading, ReadingMark
 from fleetcare.domain import meters as facts
 from fleetcare.domain.meters import LifeReading
 from fleetcare.domain.quantities import BASE_UNIT, Figure, Kind, from_base, plain, to_base
@@ -19,6 +20,7 @@ from fleetcare.operations.find import FoundItem, FoundMeter, find_item, find_met
 from fleetcare.operations.load import load_counters
 from fleetcare.operations.names import person_id
 from fleetcare.operations.settings import cap_per_day
+from fleetcare.operations.swap_meters import swap_meter
 from fleetcare.rules.meters import CounterHistory, counter_history
 from fleetcare.rules.readings import breaks_rule, misfits, plausible_chain
 
@@ -52,9 +54,10 @@ class Collision:
 
 @dataclass(frozen=True, slots=True)
 class Recorded:
-    """What came of a reading: its id, and the ids of readings now suspect because it was taken for sure."""
+    """What came of a reading: its id, what it says, and the ids of readings now suspect because it was taken for sure."""
 
     id: int
+    shown: str
     suspects: tuple[int, ...] = ()
     is_new: bool = True
 
@@ -67,8 +70,6 @@ def record_reading(session: "Session", draft: ReadingDraft) -> Recorded:
     if draft.replaced is not None:
         meter = _replace_meter(session, item, meter, draft)
     new = NewReading(draft.on, draft.value, draft.rolled_over, draft.note, draft.by, import_key=draft.import_key)
-    if draft.rolled_over:
-        _check_rollover(session, item, meter, new)
     return store_reading(session, item, meter, new, sure=draft.sure)
 
 
@@ -83,14 +84,16 @@ def store_reading(
 ) -> Recorded:
     """Store one reading of a meter, or find the one that says the same already."""
     trial, collisions = hold_against_past(session, item, meter, [new])
+    _refuse_unlike_dial(item, meter, new, trial)
     if collisions and not sure:
         raise Refused(say_collision(item, meter, new, collisions[0]), remedy)
+    shown = f"{item.tag} shows {_shown(new.figure, meter)}"
     known = _same_reading(session, meter, new)
     if known is not None:
-        return Recorded(known, is_new=False)
+        return Recorded(known, shown, is_new=False)
     (reading_id,) = insert_readings(session, [(meter, new)])
     suspects = _doubt_what_falls_off(session, meter, trial, new.on) if collisions else ()
-    return Recorded(reading_id, suspects)
+    return Recorded(reading_id, shown, suspects)
 
 
 def insert_readings(session: "Session", found: Iterable[tuple[FoundMeter, NewReading]]) -> list[int]:
@@ -160,15 +163,29 @@ def tag_of_reading(session: "Session", reading_id: int) -> str:
 
 
 def void_reading(session: "Session", reading_id: int, why: str, on: date) -> None:
-    """Void a reading, with a reason; it counts for nothing from now on."""
+    """Void a reading, with a reason; it counts for nothing from now on. Refuses one that others rest on."""
     row = _reading(session, reading_id)
     if _mark_of(session, reading_id) == "void":
         raise Refused(f"reading {reading_id} is voided already", f"bring it back with --restore {reading_id}")
     session.add(ReadingMark(reading_id=row.id, mark="void", why=why, on=on))
     session.flush()
+    if row.rolled_over:
+        _refuse_fall(session, row)
 
 
-def restore_reading(session: "Session", reading_id: int, on: date, *, sure: bool = False) -> Recorded:
+def _refuse_fall(session: "Session", row: Reading) -> None:
+    """Refuse to void the reading that tells of a turn of the dial while later ones need that turn."""
+    meter = session.get_one(Meter, row.meter_id)
+    history = load_counters(session.connection(), [meter.item_id], date.max)[meter.item_id][Kind(meter.kind)]
+    for earlier, later in pairwise(history.readings):
+        if later.metered < earlier.metered:
+            raise Refused(
+                f"reading {later.reading.id} rests on the turn of the dial that reading {row.id} tells of",
+                "void that one first, or enter another reading with --rolled-over before it",
+            )
+
+
+def restore_reading(session: "Session", reading_id: int, on: date, *, why: str = "", sure: bool = False) -> Recorded:
     """Let a suspect or voided reading count again. Refuses one that breaks with the meter's past, unless sure."""
     row = _reading(session, reading_id)
     if _mark_of(session, reading_id) not in {"suspect", "void"}:
@@ -180,10 +197,10 @@ def restore_reading(session: "Session", reading_id: int, on: date, *, sure: bool
     trial, collisions = hold_against_past(session, item, meter, [again])
     if collisions and not sure:
         raise Refused(say_collision(item, meter, again, collisions[0]), "void that one first, or give --sure")
-    session.add(ReadingMark(reading_id=row.id, mark="restored", on=on))
+    session.add(ReadingMark(reading_id=row.id, mark="restored", why=why, on=on))
     session.flush()
     suspects = _doubt_what_falls_off(session, meter, trial, on) if collisions else ()
-    return Recorded(row.id, suspects)
+    return Recorded(row.id, f"{item.tag} shows {_shown(again.figure, meter)}", suspects)
 
 
 def _doubt_what_falls_off(session: "Session", meter: FoundMeter, trial: CounterHistory, on: date) -> tuple[int, ...]:
@@ -199,46 +216,44 @@ def _doubt_what_falls_off(session: "Session", meter: FoundMeter, trial: CounterH
     return fallen
 
 
-def _check_rollover(session: "Session", item: FoundItem, meter: FoundMeter, new: NewReading) -> None:
-    row = session.get_one(Meter, meter.id)
-    if not row.digits:
+def _refuse_unlike_dial(item: FoundItem, meter: FoundMeter, new: NewReading, trial: CounterHistory) -> None:
+    """Refuse a figure the dial has no digits for, or one below the meter's first."""
+    start = next(start for start in trial.starts if start.fit.meter.id == meter.id)
+    modulus, dial = start.fit.meter.modulus, dial_of(new.figure, meter)
+    if new.rolled_over and modulus is None:
         raise Refused(
             f"the digits of the {meter.kind} meter of {item.tag} are not known",
-            f"give them first: fleetcare engine edit {item.tag} --meter-digits {meter.kind}:5.1",
+            f"give them first: fleetcare {'engine' if item.is_engine else 'machine'} edit"
+            f" {item.tag} --meter-digits {meter.kind}:5.1",
         )
-    if dial_of(new.figure, meter) >= Decimal(10) ** row.digits:
-        raise Refused(f"{new.figure} does not fit on {row.digits} digits", "check the figure")
+    if modulus is not None and dial >= modulus:
+        raise Refused(f"{_shown(new.figure, meter)} does not fit on {modulus.adjusted()} digits", "check the figure")
+    if dial < start.first and not any(turn.meter_id == meter.id for turn in trial.turns):
+        raise Refused(
+            f"{_shown(new.figure, meter)} lies below {plain(start.first)} {meter.unit}, the meter's first figure",
+            "check the figure",
+        )
 
 
 def _replace_meter(session: "Session", item: FoundItem, old: FoundMeter, draft: ReadingDraft) -> FoundMeter:
-    """End the old meter for everybody it counts for, and begin the new one on the same day."""
+    """End the old meter at its last figure, which becomes a reading, and begin the new one."""
     assert draft.replaced is not None
     last, first = draft.replaced
-    for figure in (last, first, *((draft.unmetered,) if draft.unmetered else ())):
+    unmetered = draft.unmetered or Figure(Decimal(0))
+    for figure in (last, first, unmetered):
         if figure.kind not in {None, old.kind}:
             raise Refused(f"{figure} is not a figure of the {old.kind} meter", "give it in the meter's unit")
-    store_reading(
-        session,
-        item,
-        old,
-        NewReading(draft.on, last, note="last figure of a replaced meter", by=draft.by),
-        remedy="check OLD_LAST, or void the reading it collides with",
-    )
-    row = session.get_one(Meter, old.id)
-    new = Meter(item_id=row.item_id, kind=row.kind, unit=row.unit, digits=row.digits, decimals=row.decimals)
-    session.add(new)
-    session.flush()
-    fits = session.scalars(
-        select(MeterFit)
-        .where(col(MeterFit.meter_id) == old.id, col(MeterFit.to_on).is_(None))
-        .order_by(col(MeterFit.id))
-    ).all()
-    for fit in fits:
-        fit.to_on, fit.last = draft.on, dial_of(last, old)
-        fit.unmetered = dial_of(draft.unmetered, old) if draft.unmetered else Decimal(0)
-        session.add(MeterFit(meter_id=new.id, item_id=fit.item_id, from_on=draft.on, first=dial_of(first, old)))
-    session.flush()
-    return FoundMeter(new.id, old.kind, old.unit, old.owner_id)
+    ending = NewReading(draft.on, last, note="last figure of a replaced meter", by=draft.by)
+    trial, _ = hold_against_past(session, item, old, [])
+    later = next((r.reading for r in trial.readings if r.reading.meter_id == old.id and r.on > draft.on), None)
+    if later is not None:
+        raise Refused(
+            f"reading {later.id} was read off the old meter of {item.tag} on {later.on}, after {draft.on}",
+            "give the day the meter was changed, or void that reading",
+        )
+    store_reading(session, item, old, ending, remedy="check OLD_LAST, or void the reading it collides with")
+    last_dial, first_dial, unmetered_dial = (dial_of(figure, old) for figure in (last, first, unmetered))
+    return swap_meter(session, old, draft.on, last=last_dial, first=first_dial, unmetered=unmetered_dial)
 
 
 def _same_reading(session: "Session", meter: FoundMeter, new: NewReading) -> int | None:
