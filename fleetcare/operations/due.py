@@ -71,9 +71,16 @@ def due_rows(
 @contextmanager
 def watch_moves(session: "Session", tag: str, on: date) -> Iterator[Moves]:
     """Compare the lines of an item, and of all that share its meters, before and after what is done inside."""
+    item = find_item(session.connection(), tag, even_withdrawn=True)
+    with watch_items(session, [item.id], on) as moves:
+        yield moves
+
+
+@contextmanager
+def watch_items(session: "Session", item_ids: Sequence[int], on: date) -> Iterator[Moves]:
+    """Compare the lines of several items as `watch_moves` does those of one."""
     connection = session.connection()
-    item = find_item(connection, tag, even_withdrawn=True)
-    ids = _sharing(connection, item.id, on)
+    ids = _sharing(connection, item_ids, on)
     before = _rows_by_key(connection, ids, on)
     moves = Moves()
     yield moves
@@ -94,11 +101,11 @@ def _rows_by_key(connection: "Connection", ids: Sequence[int], on: date) -> dict
     return rows
 
 
-def _sharing(connection: "Connection", item_id: int, on: date) -> list[int]:
-    """Give the ids of an item and of all items its meters count for."""
-    meters = [meter.id for meter in find_meters(connection, item_id, on)]
+def _sharing(connection: "Connection", item_ids: Sequence[int], on: date) -> list[int]:
+    """Give the ids of some items and of all items their meters count for."""
+    meters = [meter.id for item_id in item_ids for meter in find_meters(connection, item_id, on)]
     rows = fetch(connection, "select distinct item_id from meter_fit where meter_id in :meters", meters=meters)
-    return sorted({item_id, *(row[0] for row in rows)})
+    return sorted({*item_ids, *(row[0] for row in rows)})
 
 
 def _point(row: DueRow | None) -> tuple[object, ...] | None:

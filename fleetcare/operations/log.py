@@ -94,12 +94,24 @@ def store_figures(session: "Session", item: FoundItem, entry: LogEntry, figures:
 
 
 def close_tasks(
-    session: "Session", item: FoundItem, entry: LogEntry, task_ids: Sequence[int], *, part_done: bool, logged: Logged
+    session: "Session",
+    item: FoundItem,
+    entry: LogEntry,
+    task_ids: Sequence[int],
+    *,
+    part_done: bool,
+    logged: Logged,
+    facts: ItemFacts | None = None,
+    elsewhere: Sequence[int] = (),
 ) -> None:
-    """Store which tasks an entry closes, and what they cover; part-done work closes nothing."""
+    """Store which tasks an entry closes, and what they cover; part-done work closes nothing.
+
+    `facts` spares loading them for each of many entries. Tasks done `elsewhere`, by another entry of the same
+    day, are not covered once more.
+    """
     if not task_ids:
         return
-    facts = item_facts(session.connection(), entry.on, [item.id])[0]
+    facts = facts or item_facts(session.connection(), entry.on, [item.id])[0]
     tasks = {task.id: task for task in facts.tasks}
     covers = {task.id: task.version_on(entry.on).covers for task in facts.tasks}
     for task_id in dict.fromkeys(task_ids):
@@ -109,11 +121,7 @@ def close_tasks(
             session.add(LogTask(entry_id=entry.id, task_id=task_id, part_done=True))
             logged.part_done.append(task.name)
             continue
-        if version.needs_sheet:
-            raise Refused(
-                f"{task.name} closes only with its {version.needs_sheet} sheet",
-                "give --part-done to keep a note of the work until the sheet is there",
-            )
+        refuse_without_sheet(task, entry.on)
         work = _preview(facts, task, version, entry)
         row = LogTask(entry_id=entry.id, task_id=task_id, served_period=work.served)
         session.add(row)
@@ -121,8 +129,18 @@ def close_tasks(
         logged.closed.append(task.name)
         if work.note:
             logged.notes.append(_say_note(task, work))
-        _cover(session, facts, tasks, closure(covers, task_id), [*task_ids], entry, row, logged)
+        _cover(session, facts, tasks, closure(covers, task_id), [*task_ids, *elsewhere], entry, row, logged)
     session.flush()
+
+
+def refuse_without_sheet(task: Task, on: date) -> None:
+    """Refuse work on a task that needed a sheet on its day."""
+    sheet = task.version_on(on).needs_sheet
+    if sheet:
+        raise Refused(
+            f"{task.name} closes only with its {sheet} sheet",
+            "give --part-done to keep a note of the work until the sheet is there",
+        )
 
 
 def _cover(
@@ -164,6 +182,9 @@ def _preview(facts: ItemFacts, task: Task, version: Version, entry: LogEntry) ->
                 f"{task.name} counts {trigger.kind}, and no reading of {facts.item.tag} lies on or before {entry.on}",
                 "give the dial figure with --at",
             )
+    calendar = version.calendar
+    if calendar is None or (calendar.once_each is None and calendar.window_days is None):
+        return PastWork(entry.id, entry.id, entry.on)  # nothing else can leave a task open, or serves a period
     done = Done(entry.id, entry.id, entry.on, lives)
     entries = tuple(sorted((*facts.done.get(task.id, ()), done), key=lambda one: (one.on, one.number)))
     past = replay(replace(facts, done={**facts.done, task.id: entries}), task).past

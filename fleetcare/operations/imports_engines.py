@@ -1,0 +1,167 @@
+"""Engines out of a file, one a row, with any option of `engine add`."""
+
+from collections.abc import Sequence
+from datetime import date
+from decimal import Decimal
+from typing import TYPE_CHECKING
+
+from fleetcare.domain.quantities import Figure, to_base
+from fleetcare.drafts.items import EngineDraft
+from fleetcare.errors import FleetError
+from fleetcare.exchange.csv_in import RowRefused
+from fleetcare.operations.find import FoundItem, find_machine
+from fleetcare.operations.imports_rows import Imported, Row, cell, in_columns
+from fleetcare.operations.items import add_item, stored_draft
+from fleetcare.operations.rows import day, fetch, figure
+
+if TYPE_CHECKING:
+    from sqlalchemy import Connection
+    from sqlalchemy.orm import Session
+
+
+def store_engines(
+    session: "Session", rows: Sequence[Row[EngineDraft]], today: date, faults: list[RowRefused]
+) -> Imported:
+    """Add the engines that are not there yet; what is wrong with a row goes to `faults`.
+
+    A row for an engine that is there must not contradict what is stored: an import adds, and changes nothing.
+    """
+    imported = Imported()
+    first: dict[str, int] = {}
+    for row in rows:
+        tag = row.draft.tag
+        before = first.setdefault(tag.casefold(), row.number)
+        try:
+            if before != row.number:
+                raise RowRefused(row.number, "tag", f"{tag} stands in row {before} too", "keep one row for each engine")
+            if _is_there(session, row):
+                imported.known += 1
+            else:
+                _add(session, row, today)
+                imported.stored.append(tag)
+        except RowRefused as fault:
+            faults.append(fault)
+    return imported
+
+
+def _add(session: "Session", row: Row[EngineDraft], today: date) -> None:
+    if row.draft.machine is not None:
+        with cell(row.number, "machine"):
+            find_machine(session.connection(), row.draft.machine)
+    try:
+        add_item(session, row.draft, today)
+    except FleetError as error:
+        raise in_columns(row.number, error, EngineDraft, otherwise="tag") from None
+
+
+def _is_there(session: "Session", row: Row[EngineDraft]) -> bool:
+    """Tell whether the engine of a row is there already. Raises RowRefused where it is there otherwise."""
+    tag = row.draft.tag
+    rows = fetch(
+        session.connection(),
+        "select id, tag, is_engine from item where tag_key = :key and withdrawn_on is null",
+        key=tag.casefold(),
+    )
+    if not rows:
+        return False
+    item = FoundItem(rows[0][0], rows[0][1], bool(rows[0][2]))
+    if not item.is_engine:
+        raise RowRefused(row.number, "tag", f"{item.tag} is a machine", "choose another tag")
+    other = _differences(session, item, row.draft)
+    if other:
+        detail = f"{item.tag} is there already, with another {', '.join(column.replace('_', ' ') for column in other)}"
+        remedy = f"leave the row out, or change the engine with fleetcare engine edit {item.tag}"
+        raise RowRefused(row.number, other[0], detail, remedy)
+    return True
+
+
+def _differences(session: "Session", item: FoundItem, draft: EngineDraft) -> list[str]:
+    """Give the columns whose cell says otherwise than what is stored; empty cells say nothing."""
+    stored = {
+        **stored_draft(session, item),
+        **_stored_place(session.connection(), item.id),
+        **_stored_lash(session.connection(), item.id),
+    }
+    given = [column for column in EngineDraft.model_fields if column in draft.model_fields_set - {"tag"}]
+    lists = {column: said for column, said in _stored_meters(session.connection(), item.id).items() if column in given}
+    return [
+        column
+        for column in given
+        if not (
+            all(any(_says_same(one, other) for other in lists[column]) for one in getattr(draft, column))
+            if column in lists
+            else _says_same(getattr(draft, column), stored.get(column))
+        )
+    ]
+
+
+def _says_same(given: object, stored: object) -> bool:
+    """Compare a cell with what is stored: words whatever their case, and a part that is left open with anything."""
+    match given, stored:
+        case Figure(unit=None), Figure():
+            return given.value == stored.value
+        case Figure(unit=str(unit)), Figure(unit=str(other)):
+            return (given.kind, to_base(given.value, unit)) == (stored.kind, to_base(stored.value, other))
+        case (None, *said), (_, *kept):  # digits of a dial whose kind goes without saying
+            return said == kept
+        case str(), str():
+            return given.casefold() == stored.casefold()
+    return given == stored
+
+
+def _stored_place(connection: "Connection", item_id: int) -> dict[str, object]:
+    """Give what an engine is called, where it stands and since when, under the names a draft knows."""
+    ((name, site, in_service, as_new, machine, position),) = fetch(
+        connection,
+        "select item.name, site.name, item.in_service_on, item.as_new, machine.tag, fitting.position"
+        " from item left join site on site.id = item.site_id"
+        " left join fitting on fitting.engine_id = item.id and fitting.to_on is null"
+        " left join item machine on machine.id = fitting.machine_id where item.id = :id",
+        id=item_id,
+    )
+    return {
+        "name": name,
+        "site": site,
+        "in_service": day(in_service),
+        "as_new": bool(as_new),
+        "machine": machine,
+        "position": position,
+    }
+
+
+def _stored_meters(connection: "Connection", item_id: int) -> dict[str, list[object]]:
+    """Give the engine's own meters, their digits, and the figures it came with."""
+    meters = fetch(
+        connection,
+        "select meter.kind, meter.unit, meter.digits, coalesce(meter.decimals, 0) from meter"
+        " join meter_fit fit on fit.meter_id = meter.id and fit.item_id = meter.item_id"
+        " where meter.item_id = :id and fit.to_on is null",
+        id=item_id,
+    )
+    starts = fetch(connection, "select value, unit from start_figure where item_id = :id", id=item_id)
+    return {
+        "meter": [(kind, unit) for kind, unit, _, _ in meters],
+        "meter_digits": [(kind, digits, decimals) for kind, _, digits, decimals in meters],
+        "start_at": [Figure(Decimal(value), unit) for value, unit in starts],
+    }
+
+
+def _stored_lash(connection: "Connection", item_id: int) -> dict[str, object]:
+    """Give the newest lash spec, under the names a draft knows."""
+    rows = fetch(
+        connection,
+        "select unit, intake_low, intake_high, exhaust_low, exhaust_high, set_intake, set_exhaust, condition"
+        " from lash_spec where item_id = :id order by from_on desc, id desc limit 1",
+        id=item_id,
+    )
+    if not rows:
+        return {}
+    unit, *texts, condition = rows[0]
+    intake_low, intake_high, exhaust_low, exhaust_high, set_intake, set_exhaust = map(figure, texts)
+    return {
+        "lash_intake": (intake_low, intake_high, unit),
+        "lash_exhaust": (exhaust_low, exhaust_high, unit),
+        "lash_set_intake": (set_intake, unit),
+        "lash_set_exhaust": (set_exhaust, unit),
+        "lash_when": condition,
+    }

@@ -1,0 +1,185 @@
+"""What the kinds of import share: rows as drafts, what is wrong with them, and figures held against the past."""
+
+import re
+from collections.abc import Iterator, Sequence
+from contextlib import contextmanager
+from dataclasses import dataclass, field
+from datetime import date
+from decimal import Decimal
+from functools import cached_property
+from itertools import chain
+from typing import TYPE_CHECKING, Generic, TypeVar
+
+from fleetcare.domain.quantities import Figure, Kind, plain
+from fleetcare.drafts.reading_in import Draft, read_draft
+from fleetcare.errors import FleetError, Refusals, Refused
+from fleetcare.exchange.csv_in import CsvRow, RowRefused
+from fleetcare.operations.due import Moved
+from fleetcare.operations.find import FoundItem, FoundMeter, find_item, find_meters, pick_meter
+from fleetcare.operations.readings import NewReading, dial_of, hold_against_past, say_collision
+from fleetcare.operations.rows import fetch
+
+if TYPE_CHECKING:
+    from sqlalchemy import Connection
+    from sqlalchemy.orm import Session
+
+DraftT = TypeVar("DraftT", bound=Draft)
+_MOST_VALUES = 500  # in one query; SQLite bounds how many values a statement may bind
+_OPTION = re.compile("--([a-z]+(?:-[a-z]+)*)")
+
+
+@dataclass(frozen=True, slots=True)
+class Row(Generic[DraftT]):
+    """A row of a file, read; `number` is the line of the file it begins on."""
+
+    number: int
+    draft: DraftT
+
+
+@dataclass(slots=True)
+class Imported:
+    """What an import stored, one text for each thing; how much was there already; what is worth saying; what moved."""
+
+    stored: list[str] = field(default_factory=list)
+    known: int = 0
+    notes: list[str] = field(default_factory=list)
+    moved: list[Moved] = field(default_factory=list)
+
+
+@dataclass(frozen=True)
+class PlacedFigure:
+    """A figure of a row, with the meter it was read off on its day."""
+
+    number: int
+    item: FoundItem
+    meter: FoundMeter
+    on: date
+    figure: Figure
+
+    @cached_property
+    def dial(self) -> Decimal:
+        """The figure in the meter's own unit."""
+        return dial_of(self.figure, self.meter)
+
+    @property
+    def key(self) -> str:
+        """What makes it the same figure whenever it comes again."""
+        return figure_key(self.meter, self.figure)
+
+    def __str__(self) -> str:
+        return f"{plain(self.figure.value)} {self.figure.unit or self.meter.unit}"
+
+
+def figure_key(meter: FoundMeter, figure: Figure) -> str:
+    """Give what makes a figure the same whenever it comes again, though the meter was replaced meanwhile."""
+    return f"{meter.owner_id} {meter.kind} {plain(dial_of(figure, meter))}"
+
+
+class Finder:
+    """Items and meters as the rows of one file name them, each looked up once."""
+
+    def __init__(self, connection: "Connection") -> None:
+        self._connection = connection
+        self._items: dict[str, FoundItem] = {}
+        self._meters: dict[tuple[int, date], list[FoundMeter]] = {}
+
+    def item(self, tag: str) -> FoundItem:
+        """Find an engine or machine in use. Raises Refused."""
+        if tag not in self._items:
+            self._items[tag] = find_item(self._connection, tag)
+        return self._items[tag]
+
+    def meters(self, item_id: int, on: date) -> list[FoundMeter]:
+        """Give the meters counting for an item on a day."""
+        if (item_id, on) not in self._meters:
+            self._meters[item_id, on] = find_meters(self._connection, item_id, on)
+        return self._meters[item_id, on]
+
+    def place(self, number: int, item: FoundItem, on: date, figure: Figure, kind: Kind | None = None) -> PlacedFigure:
+        """Find the meter a figure was read off. Raises Refused where that is none, or more than one."""
+        meter = pick_meter(self.meters(item.id, on), figure, item.tag, kind)
+        if meter.id not in {owned.id for owned in self.meters(meter.owner_id, on)}:
+            raise Refused(f"the {meter.kind} meter of {item.tag} did not count on {on}", "check the day")
+        return PlacedFigure(number, item, meter, on, figure)
+
+
+def read_row(row: CsvRow, kind: type[DraftT], faults: list[RowRefused]) -> Row[DraftT] | None:
+    """Read a row as a draft; what is wrong with it goes to `faults`, each cell by itself."""
+    try:
+        return Row(row.number, read_draft(kind, row.cells, lambda name: f"--{name.replace('_', '-')}"))
+    except FleetError as error:
+        for one in error.errors if isinstance(error, Refusals) else (error,):
+            faults.append(in_columns(row.number, one, kind))
+        return None
+
+
+@contextmanager
+def cell(number: int, column: str) -> Iterator[None]:
+    """Turn what is refused inside into a refusal of one cell."""
+    try:
+        yield
+    except FleetError as error:
+        raise RowRefused(number, column, error.detail, error.remedy) from None
+
+
+def in_columns(number: int, error: FleetError, kind: type[Draft], otherwise: str = "") -> RowRefused:
+    """Say of a row what the command line would say of its options, in the words of the file.
+
+    The option named first, or the field a sentence begins with, is the column at fault; where there is none it
+    is the column `otherwise`. It is not named again where the sentence begins with its option.
+    """
+
+    def is_column(option: str) -> bool:
+        return option.replace("-", "_") in kind.model_fields
+
+    def as_column(found: re.Match[str]) -> str:
+        return f"column {found[1].replace('-', '_')}" if is_column(found[1]) else found[0]
+
+    begins = (
+        name.replace("_", "-") for name in kind.model_fields if error.detail.startswith(f"{name.replace('_', ' ')} ")
+    )
+    named = next(chain(filter(is_column, _OPTION.findall(f"{error.detail} {error.remedy}")), begins), "")
+    detail = re.sub(f"^--{named}(: | (?=[^a-z])| )", _without_option, error.detail) if named else error.detail
+    # A command to type keeps its options.
+    said = [text if "fleetcare " in text else _OPTION.sub(as_column, text) for text in (detail, error.remedy)]
+    return RowRefused(number, named.replace("-", "_") or otherwise, *said)
+
+
+def _without_option(found: re.Match[str]) -> str:
+    """Leave out the option a sentence begins with: "--on: no day" is "no day", "--on is missing" is "it is missing"."""
+    return "it " if found[1] == " " and found.string[found.end() : found.end() + 1].islower() else ""
+
+
+def refuse_to_come(number: int, on: date, today: date) -> None:
+    """Refuse a day after the day the program works on."""
+    if on > today:
+        detail = f"{on} has not come yet, today counts as {today}"
+        raise RowRefused(number, "on", detail, "correct it, or give a later --as-of")
+
+
+def hold_together(session: "Session", figures: Sequence[PlacedFigure], column: str) -> list[RowRefused]:
+    """Hold the figures of a file against the past and each other, and refuse each that cannot be true."""
+    by_meter: dict[int, dict[tuple[date, Decimal], list[PlacedFigure]]] = {}
+    for figure in figures:
+        by_meter.setdefault(figure.meter.id, {}).setdefault((figure.on, figure.dial), []).append(figure)
+    faults = []
+    for same in by_meter.values():
+        together = list(same.values())
+        item, meter = together[0][0].item, together[0][0].meter
+        new = [NewReading(ones[0].on, ones[0].figure) for ones in together]
+        for collision in hold_against_past(session, item, meter, new)[1]:
+            neighbour = collision.neighbour.reading.id
+            other = f"row {together[-1 - neighbour][0].number}" if neighbour < 0 else ""
+            for one in together[collision.place]:
+                said = say_collision(one.item, meter, new[collision.place], collision, other)
+                command = f"fleetcare reading {one.item.tag} {plain(one.dial)}{meter.unit} --on {one.on} --sure"
+                remedy = "correct one of them" if other else f"check it; if it is right, first give {command}"
+                faults.append(RowRefused(one.number, column, said, remedy))
+    return faults
+
+
+def keys_stored(connection: "Connection", table: str, keys: Sequence[str]) -> set[str]:
+    """Give those of some import keys that a table of readings or entries holds already."""
+    statement = f"select import_key from {table} where import_key in :keys"
+    chunks = (list(keys[start : start + _MOST_VALUES]) for start in range(0, len(keys), _MOST_VALUES))
+    return {row[0] for chunk in chunks for row in fetch(connection, statement, keys=chunk)}
