@@ -16,8 +16,9 @@ from fleetcare.errors import FleetError, Refusals, Refused
 from fleetcare.exchange.csv_in import CsvRow, RowRefused
 from fleetcare.operations.due import Moved
 from fleetcare.operations.find import FoundItem, FoundMeter, find_item, find_meters, pick_meter
-from fleetcare.operations.readings import NewReading, dial_of, hold_against_past, say_collision
+from fleetcare.operations.readings import NewReading, dial_of, hold_against_past, refuse_unlike_dial, say_collision
 from fleetcare.operations.rows import fetch
+from fleetcare.rules.meters import CounterHistory
 
 if TYPE_CHECKING:
     from sqlalchemy import Connection
@@ -167,15 +168,34 @@ def hold_together(session: "Session", figures: Sequence[PlacedFigure], column: s
         together = list(same.values())
         item, meter = together[0][0].item, together[0][0].meter
         new = [NewReading(ones[0].on, ones[0].figure) for ones in together]
-        for collision in hold_against_past(session, item, meter, new)[1]:
-            neighbour = collision.neighbour.reading.id
-            other = f"row {together[-1 - neighbour][0].number}" if neighbour < 0 else ""
-            for one in together[collision.place]:
-                said = say_collision(one.item, meter, new[collision.place], collision, other)
-                command = f"fleetcare reading {one.item.tag} {plain(one.dial)}{meter.unit} --on {one.on} --sure"
-                remedy = "correct one of them" if other else f"check it; if it is right, first give {command}"
-                faults.append(RowRefused(one.number, column, said, remedy))
+        trial, collisions = hold_against_past(session, item, meter, new)
+        wrong = {place: error for place, one in enumerate(new) if (error := _unlike_dial(item, meter, one, trial))}
+        for collision in collisions:
+            neighbour = -1 - collision.neighbour.reading.id
+            other = f"row {together[neighbour][0].number}" if neighbour >= 0 else ""
+            detail = say_collision(item, meter, new[collision.place], collision, other)
+            wrong.setdefault(collision.place, Refused(detail, _remedy(together[collision.place][0], other)))
+        faults += [
+            RowRefused(one.number, column, error.detail, error.remedy)
+            for place, error in wrong.items()
+            for one in together[place]
+        ]
     return faults
+
+
+def _unlike_dial(item: FoundItem, meter: FoundMeter, new: NewReading, trial: CounterHistory) -> Refused | None:
+    try:
+        refuse_unlike_dial(item, meter, new, trial)
+    except Refused as error:
+        return error
+    return None
+
+
+def _remedy(figure: PlacedFigure, other: str) -> str:
+    if other:
+        return "correct one of them"
+    shown = f"{plain(figure.dial)}{figure.meter.unit}"
+    return f"check it; if it is right, first give fleetcare reading {figure.item.tag} {shown} --on {figure.on} --sure"
 
 
 def keys_stored(connection: "Connection", table: str, keys: Sequence[str]) -> set[str]:

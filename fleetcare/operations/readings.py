@@ -84,7 +84,7 @@ def store_reading(
 ) -> Recorded:
     """Store one reading of a meter, or find the one that says the same already."""
     trial, collisions = hold_against_past(session, item, meter, [new])
-    _refuse_unlike_dial(item, meter, new, trial)
+    refuse_unlike_dial(item, meter, new, trial)
     if collisions and not sure:
         raise Refused(say_collision(item, meter, new, collisions[0]), remedy)
     shown = f"{item.tag} shows {_shown(new.figure, meter)}"
@@ -216,7 +216,7 @@ def _doubt_what_falls_off(session: "Session", meter: FoundMeter, trial: CounterH
     return fallen
 
 
-def _refuse_unlike_dial(item: FoundItem, meter: FoundMeter, new: NewReading, trial: CounterHistory) -> None:
+def refuse_unlike_dial(item: FoundItem, meter: FoundMeter, new: NewReading, trial: CounterHistory) -> None:
     """Refuse a figure the dial has no digits for, or one below the meter's first."""
     start = next(start for start in trial.starts if start.fit.meter.id == meter.id)
     modulus, dial = start.fit.meter.modulus, dial_of(new.figure, meter)
