@@ -6,9 +6,10 @@ Plain SQL and no tables, so that a card or a label can carry the ledger's head w
 import hashlib
 import json
 from collections.abc import Iterable, Iterator
+from functools import cache
 from typing import NamedTuple
 
-from sqlalchemy import Connection, RowMapping, bindparam, text
+from sqlalchemy import Connection, RowMapping, TextClause, bindparam, text
 
 GENESIS = "0" * 64  # what the first entry is sealed to
 _MOST_IDS = 500  # in one query; SQLite bounds how many values a statement may bind
@@ -36,6 +37,8 @@ class Entry(NamedTuple):
         return f"{self.seq}:{self.hash}"
 
 
+_NEWEST = text(f"SELECT {', '.join(Entry._fields)} FROM ledger ORDER BY seq DESC LIMIT 1")
+
 START = Entry(0, "", "", 0, "", "", GENESIS)
 """What stands before the first entry."""
 
@@ -59,8 +62,7 @@ def entries(connection: Connection) -> Iterator[Entry]:
 
 def last_entry(connection: Connection) -> Entry:
     """Give the newest entry of the ledger, START while it has none."""
-    newest = text(f"SELECT {', '.join(Entry._fields)} FROM ledger ORDER BY seq DESC LIMIT 1")
-    row = connection.execute(newest).one_or_none()
+    row = connection.execute(_NEWEST).one_or_none()
     return Entry(*row) if row else START
 
 
@@ -73,10 +75,15 @@ def rows(connection: Connection, table: str, ids: Iterable[int] | None = None) -
     if ids is None:
         yield from connection.execute(text(f"{everything} ORDER BY id")).mappings()
         return
-    some = text(f"{everything} WHERE id IN :ids ORDER BY id").bindparams(bindparam("ids", expanding=True))
-    wanted = sorted(ids)
+    some, wanted = _with_ids(everything), sorted(ids)
     for start in range(0, len(wanted), _MOST_IDS):
         yield from connection.execute(some, {"ids": wanted[start : start + _MOST_IDS]}).mappings()
+
+
+@cache
+def _with_ids(everything: str) -> TextClause:
+    """Narrow a statement to some ids; read once, as every write to the table asks it."""
+    return text(f"{everything} WHERE id IN :ids ORDER BY id").bindparams(bindparam("ids", expanding=True))
 
 
 def payload(row: RowMapping) -> str:
