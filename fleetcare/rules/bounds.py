@@ -17,7 +17,7 @@ def check_within(name: str, value: Decimal, most: int, unit: str = "") -> Decima
     raise Refused(f"{name} {shown}{unit} cannot be right", f"give a figure above 0 and up to {most}{unit}")
 
 
-def check_between(name: str, value: Decimal, least: int, most: Decimal | int, unit: str = "") -> Decimal:
+def check_between(name: str, value: Decimal, least: Decimal | int, most: Decimal | int, unit: str = "") -> Decimal:
     """Give the value back if least <= value <= most, else refuse it; limits of sense, as for `check_within`."""
     if least <= value <= most:
         return value
