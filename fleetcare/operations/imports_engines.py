@@ -10,7 +10,7 @@ from fleetcare.drafts.items import EngineDraft
 from fleetcare.errors import FleetError
 from fleetcare.exchange.csv_in import RowRefused
 from fleetcare.operations.find import FoundItem, find_machine
-from fleetcare.operations.imports_rows import Imported, Row, cell, in_columns
+from fleetcare.operations.imports_rows import Imported, Row, in_columns
 from fleetcare.operations.items import add_item, stored_draft
 from fleetcare.operations.rows import day, fetch, figure
 
@@ -34,7 +34,7 @@ def store_engines(
         try:
             if before != row.number:
                 raise RowRefused(row.number, "tag", f"{tag} stands in row {before} too", "keep one row for each engine")
-            if _is_there(session, row):
+            if _is_there(session, row, imported):
                 imported.known += 1
             else:
                 _add(session, row, today)
@@ -45,34 +45,45 @@ def store_engines(
 
 
 def _add(session: "Session", row: Row[EngineDraft], today: date) -> None:
-    if row.draft.machine is not None:
-        with cell(row.number, "machine"):
+    """Add one engine. Raises RowRefused."""
+    try:
+        if row.draft.machine is not None:
             find_machine(session.connection(), row.draft.machine)
+    except FleetError as error:
+        raise RowRefused(row.number, "machine", error.detail, error.remedy) from None
     try:
         add_item(session, row.draft, today)
     except FleetError as error:
         raise in_columns(row.number, error, EngineDraft, otherwise="tag") from None
 
 
-def _is_there(session: "Session", row: Row[EngineDraft]) -> bool:
-    """Tell whether the engine of a row is there already. Raises RowRefused where it is there otherwise."""
-    tag = row.draft.tag
-    rows = fetch(
+def _is_there(session: "Session", row: Row[EngineDraft], imported: Imported) -> bool:
+    """Tell whether the engine of a row is there already. Raises RowRefused where it is there otherwise.
+
+    One that was withdrawn since counts as there, which is noted: an import brings nothing back.
+    """
+    found = fetch(
         session.connection(),
-        "select id, tag, is_engine from item where tag_key = :key and withdrawn_on is null",
-        key=tag.casefold(),
+        "select id, tag, is_engine, withdrawn_on from item where tag_key = :key"
+        " order by withdrawn_on is not null, withdrawn_on desc",
+        key=row.draft.tag.casefold(),
     )
-    if not rows:
-        return False
-    item = FoundItem(rows[0][0], rows[0][1], bool(rows[0][2]))
-    if not item.is_engine:
-        raise RowRefused(row.number, "tag", f"{item.tag} is a machine", "choose another tag")
-    other = _differences(session, item, row.draft)
-    if other:
-        detail = f"{item.tag} is there already, with another {', '.join(column.replace('_', ' ') for column in other)}"
-        remedy = f"leave the row out, or change the engine with fleetcare engine edit {item.tag}"
-        raise RowRefused(row.number, other[0], detail, remedy)
-    return True
+    for item_id, tag, is_engine, withdrawn_on in found:
+        if not is_engine and withdrawn_on is None:
+            raise RowRefused(row.number, "tag", f"{tag} is a machine", "choose another tag")
+        other = _differences(session, FoundItem(item_id, tag, bool(is_engine)), row.draft)
+        if withdrawn_on is None and other:
+            detail = f"{tag} is there already, with another {', '.join(column.replace('_', ' ') for column in other)}"
+            remedy = f"leave the row out, or change the engine with fleetcare engine edit {tag}"
+            raise RowRefused(row.number, other[0], detail, remedy)
+        if withdrawn_on is None:
+            return True
+        if is_engine and not set(other) - {"machine", "position"}:
+            imported.notes.append(
+                f"row {row.number}: {tag} was withdrawn on {withdrawn_on}; add it anew with fleetcare engine add"
+            )
+            return True
+    return False
 
 
 def _differences(session: "Session", item: FoundItem, draft: EngineDraft) -> list[str]:

@@ -15,10 +15,10 @@ from fleetcare.operations.imports_rows import (
     Imported,
     PlacedFigure,
     Row,
-    cell,
+    day_come,
     hold_together,
     keys_stored,
-    refuse_to_come,
+    try_cell,
 )
 from fleetcare.operations.load import load_counters
 from fleetcare.operations.readings import NewReading, insert_readings
@@ -47,10 +47,8 @@ def store_readings(
     finder = Finder(session.connection())
     found: dict[str, _Found] = {}
     for row in rows:
-        try:
-            figure = _place(finder, row, today)
-        except RowRefused as fault:
-            faults.append(fault)
+        figure = _place(finder, row, today, faults)
+        if figure is None:
             continue
         new = _Found(figure, {row.draft.note} - {""})
         found.setdefault(new.key, new).notes.update(new.notes)
@@ -66,13 +64,15 @@ def store_readings(
     return Imported(stored, known=len(rows) - len(fresh), moved=moves.moved)
 
 
-def _place(finder: Finder, row: Row[ReadingRow], today: date) -> PlacedFigure:
-    draft = row.draft
-    with cell(row.number, "engine"):
-        item = finder.item(draft.engine)
-    refuse_to_come(row.number, draft.on, today)
-    with cell(row.number, "value" if draft.meter is None else "meter"):
-        return finder.place(row.number, item, draft.on, draft.figure, draft.meter)
+def _place(finder: Finder, row: Row[ReadingRow], today: date, faults: list[RowRefused]) -> PlacedFigure | None:
+    number, draft = row.number, row.draft
+    item = try_cell(faults, number, "engine", lambda: finder.item(draft.engine))
+    on = try_cell(faults, number, "on", lambda: day_come(draft.on, today))
+    if item is None:
+        return None
+    column = "value" if draft.meter is None else "meter"
+    figure = try_cell(faults, number, column, lambda: finder.place(number, item, draft.on, draft.figure, draft.meter))
+    return None if on is None else figure
 
 
 def _as_new(found: _Found) -> NewReading:

@@ -1,8 +1,7 @@
 """What the kinds of import share: rows as drafts, what is wrong with them, and figures held against the past."""
 
 import re
-from collections.abc import Iterator, Sequence
-from contextlib import contextmanager
+from collections.abc import Callable, Sequence
 from dataclasses import dataclass, field
 from datetime import date
 from decimal import Decimal
@@ -25,6 +24,7 @@ if TYPE_CHECKING:
     from sqlalchemy.orm import Session
 
 DraftT = TypeVar("DraftT", bound=Draft)
+Found = TypeVar("Found")
 _MOST_VALUES = 500  # in one query; SQLite bounds how many values a statement may bind
 _OPTION = re.compile("--([a-z]+(?:-[a-z]+)*)")
 
@@ -114,13 +114,13 @@ def read_row(row: CsvRow, kind: type[DraftT], faults: list[RowRefused]) -> Row[D
         return None
 
 
-@contextmanager
-def cell(number: int, column: str) -> Iterator[None]:
-    """Turn what is refused inside into a refusal of one cell."""
+def try_cell(faults: list[RowRefused], number: int, column: str, read: Callable[[], Found]) -> Found | None:
+    """Give what a cell means; None where that is refused, which goes to `faults`, and the next cell can be tried."""
     try:
-        yield
+        return read()
     except FleetError as error:
-        raise RowRefused(number, column, error.detail, error.remedy) from None
+        faults.append(RowRefused(number, column, error.detail, error.remedy))
+        return None
 
 
 def in_columns(number: int, error: FleetError, kind: type[Draft], otherwise: str = "") -> RowRefused:
@@ -151,11 +151,11 @@ def _without_option(found: re.Match[str]) -> str:
     return "it " if found[1] == " " and found.string[found.end() : found.end() + 1].islower() else ""
 
 
-def refuse_to_come(number: int, on: date, today: date) -> None:
-    """Refuse a day after the day the program works on."""
+def day_come(on: date, today: date) -> date:
+    """Give a day back; refuse one after the day the program works on."""
     if on > today:
-        detail = f"{on} has not come yet, today counts as {today}"
-        raise RowRefused(number, "on", detail, "correct it, or give a later --as-of")
+        raise Refused(f"{on} has not come yet, today counts as {today}", "correct it, or give a later --as-of")
+    return on
 
 
 def hold_together(session: "Session", figures: Sequence[PlacedFigure], column: str) -> list[RowRefused]:
