@@ -51,7 +51,7 @@ class CounterHistory:
         start = self._start_on(on)
         if start is None:
             return None
-        return start.life + self._moved(start, dial, on)
+        return start.life + _moved(start, self.turns, dial, on)
 
     def life_of(self, meter_id: int, dial: Decimal, on: date) -> Decimal | None:
         """Turn what one meter showed on a day into a life total; None where it had not begun to count by then."""
@@ -60,23 +60,23 @@ class CounterHistory:
             for start in self.starts
             if start.fit.meter.id == meter_id and (start.fit.from_on is None or start.fit.from_on <= on)
         ]
-        return begun[-1].life + self._moved(begun[-1], dial, on) if begun else None
+        return begun[-1].life + _moved(begun[-1], self.turns, dial, on) if begun else None
 
     def metered_at(self, dial: Decimal, on: date) -> Decimal | None:
         """Like `life_at`, without what ran unmetered: what a meter can have gained between two readings."""
         start = self._start_on(on)
         if start is None:
             return None
-        return start.metered + self._moved(start, dial, on)
+        return start.metered + _moved(start, self.turns, dial, on)
 
     def dial_of(self, life: Decimal) -> Decimal | None:
         """Turn a life total into what the meter now counting shows there.
 
         None where that lies before this meter began, or where nothing counts.
         """
-        if not self.starts:
+        start = self._start_on(self.until)
+        if start is None:
             return None
-        start = self.starts[-1]
         meter = start.fit.meter
         dial = start.first + from_base(life - start.life, meter.unit)
         if dial < start.first:
@@ -109,9 +109,6 @@ class CounterHistory:
             return None
         return found
 
-    def _moved(self, start: _Start, dial: Decimal, on: date) -> Decimal:
-        return to_base(_with_turns(start.fit, self.turns, dial, on) - start.first, start.fit.meter.unit)
-
 
 def counter_history(counter: Counter, until: date) -> CounterHistory:
     """See a counter as life totals, ignoring everything dated after `until`.
@@ -126,9 +123,7 @@ def counter_history(counter: Counter, until: date) -> CounterHistory:
     for reading in accepted:
         for start in starts:
             if start.fit.meter.id == reading.meter_id and _counts(start.fit, reading):
-                moved = to_base(
-                    _with_turns(start.fit, turns, reading.value, reading.on) - start.first, start.fit.meter.unit
-                )
+                moved = _moved(start, turns, reading.value, reading.on)
                 life = LifeReading(reading, reading.on, start.life + moved, start.metered + moved)
                 lives.setdefault((life.on, life.life), life)
                 break
@@ -170,13 +165,22 @@ def _counts(fit: MeterFit, reading: Reading) -> bool:
     return begun and (fit.to_on is None or reading.on <= fit.to_on)
 
 
+def _moved(start: _Start, turns: Iterable[Reading], dial: Decimal, on: date) -> Decimal:
+    """What a fit counted until its meter showed a figure on a day, in the base unit."""
+    return to_base(_with_turns(start.fit, turns, dial, on) - start.first, start.fit.meter.unit)
+
+
 def _with_turns(fit: MeterFit, turns: Iterable[Reading], dial: Decimal, on: date | None) -> Decimal:
-    """Add the dial's whole turns up to a day; on the day of a turn, figures up to half the dial lie after it."""
+    """Add the dial's whole turns up to a day.
+
+    On the day of a turn, figures below half the dial lie after it, and so do those up to what it then read.
+    """
     modulus = fit.meter.modulus
     if modulus is None or on is None:
         return dial
     count = 0
     for turn in turns:
-        if turn.meter_id == fit.meter.id and (turn.on < on or (turn.on == on and dial < modulus / 2)):
+        is_after = turn.on < on or (turn.on == on and (dial < modulus / 2 or dial <= turn.value))
+        if turn.meter_id == fit.meter.id and is_after:
             count += 1
     return dial + count * modulus
