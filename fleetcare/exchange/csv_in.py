@@ -3,12 +3,12 @@
 import csv
 import io
 import re
-import unicodedata
 from collections.abc import Iterable, Iterator, Sequence
 from dataclasses import dataclass
 from difflib import get_close_matches
 from pathlib import Path
 
+from fleetcare.domain.printable import clean
 from fleetcare.errors import Refusals, Refused
 
 MOST_BYTES = 32 * 1024 * 1024
@@ -18,6 +18,7 @@ MOST_IN_A_CELL = 2000
 # What our own CSV guards against spreadsheets, by an apostrophe in front.
 _GUARDED = re.compile("'[=+\\-@\t\r\uff1d\uff0b\uff0d\uff20]")
 _SEPARATORS = {";": "semicolons", "\t": "tabs", "|": "bars"}
+_MOST_NAMED = 60
 _SAVE = "save it as CSV UTF-8 (comma separated)"
 
 
@@ -128,37 +129,37 @@ def _malformed(line: int, error: csv.Error) -> Refused:
     return RowRefused(line, "", detail, 'put the whole cell in "double quotes" and double each quote inside it')
 
 
-def _check_columns(line: int, columns: Sequence[str], required: Sequence[str], optional: Sequence[str]) -> None:
+def _check_columns(number: int, columns: Sequence[str], required: Sequence[str], optional: Sequence[str]) -> None:
     known = (*required, *optional)
     if len(columns) == 1 and columns[0] not in known:
         for separator, name in _SEPARATORS.items():
             if separator in columns[0]:
-                raise Refused(f"the columns are separated by {name}", "save the file with commas between the columns")
+                detail = f"the columns are separated by {name}"
+                raise RowRefused(number, "", detail, "save the file with commas between the columns")
     faults = [
-        *(_unknown(name, place, known) for place, name in enumerate(columns, 1) if name not in known),
+        *(_unknown(number, name, place, known) for place, name in enumerate(columns, 1) if name not in known),
         *(
-            Refused(f"column {name} stands {columns.count(name)} times", "keep one of them")
+            RowRefused(number, name, f"it stands {columns.count(name)} times", "keep one of them")
             for name in dict.fromkeys(columns)
             if name in known and columns.count(name) > 1
         ),
         *(
-            Refused(f"column {name} is missing", "add it to the header and to every row")
+            RowRefused(number, name, "it is missing", "add it to the header and to every row")
             for name in required
             if name not in columns
         ),
     ]
     if faults:
-        raise Refusals([Refused(f"row {line}: {fault.detail}", fault.remedy) for fault in faults])
+        raise Refusals(faults)
 
 
-def _unknown(name: str, place: int, known: Sequence[str]) -> Refused:
+def _unknown(number: int, name: str, place: int, known: Sequence[str]) -> RowRefused:
+    listed = f"known are {', '.join(known)}"
     if not name:
-        return Refused(
-            f"column {place} has no name", f"name it, or remove it from every row; known are {', '.join(known)}"
-        )
+        return RowRefused(number, str(place), "it has no name", f"name it, or remove it from every row; {listed}")
     near = get_close_matches(name, known, n=1)
-    remedy = f"did you mean {near[0]}?" if near else f"remove it; known are {', '.join(known)}"
-    return Refused(f"column {name[:60]!r} is not known here", remedy)
+    remedy = f"did you mean {near[0]}?" if near else f"remove it; {listed}"
+    return RowRefused(number, name[:_MOST_NAMED], "it is not known here", remedy)
 
 
 def _faults(row: CsvRow) -> Iterable[RowRefused]:
@@ -166,7 +167,7 @@ def _faults(row: CsvRow) -> Iterable[RowRefused]:
         if len(cell) > MOST_IN_A_CELL:
             yield _too_long(row.number, name)
             continue
-        strange = next((char for char in cell if unicodedata.category(char) == "Cc" and char not in "\t\r\n"), None)
+        strange = next((char for char in cell if char not in "\t\r\n" and clean(char) != char), None)
         if strange is not None:
             yield RowRefused(row.number, name, f"it holds the control character {strange!r}", "remove it")
 
