@@ -6,7 +6,8 @@ of a cylinder is the angle past its own TDC on compression: 0-180 power, 180-360
 
 Stroke rule (two positions): an intake valve may be set at 0 <= phase < 360, an exhaust valve at phase 0 or
 360 < phase < 720. One turn of the crank moves every phase by 360, so two positions cover every valve exactly once, for
-any firing order and any number of cylinders, even or odd. Sources: TM 5-3895-383-24 pp. 6-60 and 6-61,
+any firing order and any number of cylinders, even or odd; how near overlap that comes, 720/n degrees or for odd n half
+of it, is held against the valve timing. Sources: TM 5-3895-383-24 pp. 6-60 and 6-61,
 TM 5-3805-290-23-2 WP 0155 00 table 1; mates and rocking: TM 5-6115-400-12 fig. 3-11, TM 10-3930-671-24.
 """
 
@@ -126,6 +127,14 @@ def setting_order(angles: Angles, method: Method, timing: ValveTiming | None = N
         if intake or exhaust:
             stops.append(_stop(angles, crank, intake, exhaust, timing))
     return tuple(stops)
+
+
+def easiest_order(angles: Angles, timing: ValveTiming | None = None) -> tuple[Method, tuple[Position, ...]]:
+    """Give two positions where the valve timing allows them, else one by one; and which of the two it is."""
+    try:
+        return Method.TWO_POSITION, setting_order(angles, Method.TWO_POSITION, timing)
+    except Refused:
+        return Method.ONE_BY_ONE, setting_order(angles, Method.ONE_BY_ONE, timing)
 
 
 def _check_intervals(intervals: Sequence[Decimal], cylinders: int) -> None:

@@ -1,6 +1,8 @@
 """Bench sums on the command line."""
 
 import json
+import subprocess
+import sys
 
 import pytest
 
@@ -86,3 +88,37 @@ def test_a_figure_that_cannot_be_right_is_refused_in_one_line(fleetcare: Runner,
 def test_a_figure_that_cannot_be_read_is_status_2(fleetcare: Runner, words: tuple[str, ...]) -> None:
     ran = fleetcare("calc", *words)
     assert (ran.status, ran.out, ran.err.count("\n")) == (2, "", 1)
+
+
+EVERY_SUM = """
+valve-order --firing-order 1-5-3-6-2-4
+shim --measured 0.09 --target 0.15 --fitted 2.75 --step 0.05
+adjuster --measured 0.30 --target 0.20 --pitch 1
+cranking-pressure --compression-ratio 9.5
+piston-speed --stroke 90 --rpm 3000
+displacement --bore 92 --stroke 96 --cylinders 4
+viscosity-index --kv40 95 --kv100 10.8
+viscosity --kv40 95 --kv100 10.8 --at 60
+grade --kv100 7.4
+wear-rate --ppm 33 --hours 200
+fuel-use --mpg-us 25
+"""
+
+
+def test_no_sum_loads_a_database_a_form_or_a_screen() -> None:
+    """In one child process, as what this one has loaded says nothing."""
+    look = f"""
+import sys
+from fleetcare.cli.main import run
+statuses = [run(("calc", *words.split())) for words in {EVERY_SUM.split(chr(10))!r} if words]
+heavy = {{"textual", "rich", "sqlmodel", "sqlalchemy", "alembic", "pydantic", "dateutil"}}
+print(statuses, sorted(heavy & {{name.partition(".")[0] for name in sys.modules}}), file=sys.stderr)
+"""
+    ran = subprocess.run([sys.executable, "-c", look], capture_output=True, text=True, check=True)
+    assert ran.stderr == f"{[0] * 11} []\n"
+
+
+def test_every_sum_is_in_the_help(fleetcare: Runner) -> None:
+    words_of_help = fleetcare("calc", "--help").out.split()
+    names = [words.split()[0] for words in EVERY_SUM.splitlines() if words]
+    assert [name for name in names if name not in words_of_help] == []

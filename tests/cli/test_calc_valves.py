@@ -48,9 +48,21 @@ def test_valve_order_of_an_uneven_engine_takes_its_intervals(fleetcare: Runner) 
     ]
 
 
+def test_valve_order_goes_one_by_one_where_two_positions_come_too_near_a_cam(fleetcare: Runner) -> None:
+    words = ("calc", "valve-order", "--firing-order", "1-2", "--intervals", "330-390")
+    assert fleetcare(*words).out.splitlines()[1:] == [
+        "  0° (1 at TDC on compression): set intake 1; exhaust 1",
+        "  330° (2 at TDC on compression): set intake 2; exhaust 2",
+        "Both valves of a cylinder are closed at its own TDC on compression, when its mate, if any, is rocking.",
+        "Two positions will not do: at one of them a valve would be too near its cam.",
+    ]
+    assert json.loads(fleetcare(*words, "--json").out)["method"] == "one-by-one"
+
+
 def test_valve_order_in_json_has_positions_and_mates(fleetcare: Runner) -> None:
     answer = json.loads(fleetcare("calc", "valve-order", "--firing-order", "1-3-4-2", "--json").out)
     assert answer == {
+        "method": "two-position",
         "positions": [
             {
                 "crank_deg": 0,
@@ -137,7 +149,10 @@ def test_adjuster_takes_the_lever_of_every_place(
     [
         (("valve-order", "--firing-order", "1-2-2"), "leaves out cylinder 3 and names more than once cylinder 2"),
         (("valve-order", "--firing-order", "1-2", "--intervals", "300-300"), "do not fit 2 cylinders"),
-        (("valve-order", "--firing-order", "1-2", "--intervals", "330-390"), "use the one-by-one method"),
+        (
+            ("valve-order", "--firing-order", "1-2", "--intervals", "330-390", "--method", "two-position"),
+            "use the one-by-one method",
+        ),
         (
             ("valve-order", "--firing-order", "1-2", "--ivo", "200", "--ivc", "50", "--evo", "50", "--evc", "20"),
             "IVO 200 degrees cannot be right",

@@ -6,7 +6,15 @@ from fractions import Fraction
 import pytest
 
 from fleetcare.errors import Refused
-from fleetcare.rules.valve_order import USUAL_TIMING, Method, ValveTiming, firing_angles, mates, setting_order
+from fleetcare.rules.valve_order import (
+    USUAL_TIMING,
+    Method,
+    ValveTiming,
+    easiest_order,
+    firing_angles,
+    mates,
+    setting_order,
+)
 
 
 def _timing(ivo: str = "20", ivc: str = "50", evo: str = "50", evc: str = "20") -> ValveTiming:
@@ -70,7 +78,18 @@ def test_a_cylinder_too_near_overlap_sends_the_engine_to_the_one_by_one_method()
     angles = firing_angles((1, 2), _intervals("330-390"))
     with pytest.raises(Refused, match=r"usual valve timing.* exhaust 2 cannot be set at 0 degrees; use the one-by-one"):
         setting_order(angles, Method.TWO_POSITION)
-    assert [stop.crank for stop in setting_order(angles, Method.ONE_BY_ONE)] == [0, 330]
+    assert easiest_order(angles) == (Method.ONE_BY_ONE, setting_order(angles, Method.ONE_BY_ONE))
+
+
+def test_two_positions_are_easiest_where_the_cam_allows_them() -> None:
+    angles = firing_angles((1, 2, 4, 5, 3))
+    assert easiest_order(angles) == (Method.TWO_POSITION, setting_order(angles, Method.TWO_POSITION))
+
+
+@pytest.mark.parametrize(("cylinders", "method"), [(9, Method.TWO_POSITION), (11, Method.ONE_BY_ONE)])
+def test_an_odd_engine_comes_as_near_overlap_as_360_over_n(cylinders: int, method: Method) -> None:
+    """40 degrees in a nine are more than the 20 of a usual cam and 15 to spare, 32.7 in an eleven are less."""
+    assert easiest_order(firing_angles(range(1, cylinders + 1)))[0] is method
 
 
 @pytest.mark.parametrize(

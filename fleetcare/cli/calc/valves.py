@@ -3,7 +3,6 @@
 import argparse
 from collections.abc import Sequence
 from decimal import Decimal
-from fractions import Fraction
 from typing import TYPE_CHECKING, Any
 
 from fleetcare.cli.calc.answers import Answer, add_sum, all_or_none, shown
@@ -11,6 +10,8 @@ from fleetcare.cli.parser import CommandParser, Commands, number
 from fleetcare.domain.quantities import plain
 
 if TYPE_CHECKING:
+    from fractions import Fraction
+
     from fleetcare.rules.valve_order import Method, Position, ValveTiming
 
 _TIMING = {
@@ -32,8 +33,7 @@ def add_sums(sums: Commands) -> None:
     order.add_argument(
         "--method",
         choices=("two-position", "one-by-one"),
-        default="two-position",
-        help="two stops of the crank (default), or one for each cylinder",
+        help="two stops of the crank (default where the cam allows it), or one for each cylinder",
     )
     for name, meaning in _TIMING.items():
         order.add_argument(f"--{name}", type=number, metavar="DEG", help=meaning)
@@ -69,28 +69,46 @@ def _add_millimetres(parser: CommandParser, options: dict[str, str], *, required
 
 def _valve_order(given: argparse.Namespace) -> Answer:
     from fleetcare.rules.nameplate import check_firing_order
-    from fleetcare.rules.valve_order import CYCLE, Method, ValveTiming, firing_angles, mates, setting_order
+    from fleetcare.rules.valve_order import (
+        CYCLE,
+        Method,
+        ValveTiming,
+        easiest_order,
+        firing_angles,
+        mates,
+        setting_order,
+    )
 
     known = all_or_none(given, *_TIMING)
     timing = ValveTiming(given.ivo, given.ivc, given.evo, given.evc) if known else None
     order = check_firing_order(given.firing_order, given.firing_order.count("-") + 1)
-    angles, method = firing_angles(order, given.intervals), Method(given.method)
-    positions, pairs = setting_order(angles, method, timing), mates(angles)
+    angles = firing_angles(order, given.intervals)
+    pairs = mates(angles)
+    if given.method:
+        method, positions = Method(given.method), setting_order(angles, Method(given.method), timing)
+    else:
+        method, positions = easiest_order(angles, timing)
     firing = (
         "at the intervals given"
         if given.intervals
-        else f"taken to be even, every {_degrees(Fraction(CYCLE, len(order)))}"
+        else f"taken to be even, every {shown(Decimal(CYCLE) / len(order))}°"
     )
     lines = [
         f"Firing order {'-'.join(map(str, order))}, firing {firing}; 0° is cylinder {order[0]} at TDC on compression:",
         *(f"  {_position_line(position)}" for position in positions),
         _valve_working(method, timing),
     ]
+    if not given.method and method is Method.ONE_BY_ONE:
+        lines.append("Two positions will not do: at one of them a valve would be too near its cam.")
     if pairs:
         lines.append(f"Mates, at TDC together: {', '.join(f'{first}-{second}' for first, second in pairs)}.")
     return Answer(
         "\n".join(lines),
-        {"positions": [_position_keys(position) for position in positions], "mates": [list(pair) for pair in pairs]},
+        {
+            "method": method,
+            "positions": [_position_keys(position) for position in positions],
+            "mates": [list(pair) for pair in pairs],
+        },
     )
 
 
@@ -135,11 +153,11 @@ def _position_keys(position: "Position") -> dict[str, Any]:
     }
 
 
-def _decimal(angle: Fraction) -> Decimal:
+def _decimal(angle: "Fraction") -> Decimal:
     return Decimal(angle.numerator) / angle.denominator
 
 
-def _degrees(angle: Fraction) -> str:
+def _degrees(angle: "Fraction") -> str:
     return f"{shown(_decimal(angle))}°"
 
 
