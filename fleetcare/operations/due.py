@@ -6,12 +6,13 @@ from dataclasses import dataclass, field
 from datetime import date
 from typing import TYPE_CHECKING
 
-from fleetcare.domain.lines import State
+from fleetcare.domain.lines import DueLine, State
 from fleetcare.errors import Refused
 from fleetcare.operations.find import find_item, find_meters
 from fleetcare.operations.load import item_facts
 from fleetcare.operations.rows import fetch
 from fleetcare.rules.due.due_list import in_order, item_lines, within
+from fleetcare.rules.due.facts import ItemFacts
 from fleetcare.rules.due.row import COLUMNS, DueRow, due_row
 
 if TYPE_CHECKING:
@@ -52,6 +53,13 @@ def due_rows(
     connection: "Connection", on: date, filters: Filters | None = None, *, is_future: bool = False
 ) -> list[DueRow]:
     """Give the due list of a day in order, flattened. An unknown engine or site is refused."""
+    return [due_row(line, facts) for line, facts in due_lines(connection, on, filters, is_future=is_future)]
+
+
+def due_lines(
+    connection: "Connection", on: date, filters: Filters | None = None, *, is_future: bool = False
+) -> list[tuple[DueLine, ItemFacts]]:
+    """Give the lines of `due_rows`, each with the facts of its item."""
     wanted = filters or Filters()
     ids = [find_item(connection, wanted.engine).id] if wanted.engine is not None else None
     found = {facts.item.id: facts for facts in item_facts(connection, on, ids)}
@@ -65,7 +73,7 @@ def due_rows(
         lines = within(lines, on, wanted.days)
     if wanted.states:
         lines = [line for line in lines if line.state in wanted.states]
-    return [due_row(line, found[line.item.id]) for line in in_order(lines)]
+    return [(line, found[line.item.id]) for line in in_order(lines)]
 
 
 @contextmanager

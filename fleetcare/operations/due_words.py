@@ -76,8 +76,9 @@ def say_due(row: DueRow) -> str:
 
 
 def say_likely(row: DueRow) -> str:
-    """Say when the point is likely reached, and the range it is reached in four times in five."""
-    if row.likely_date is None or row.trigger == "calendar":
+    """Say when a counted point still ahead is likely reached, and the range it is reached in four times in five."""
+    is_ahead = row.unit != "d" and row.remaining is not None and row.remaining > 0
+    if row.likely_date is None or not is_ahead:
         return ""
     early = row.early_date.isoformat() if row.early_date is not None else "open"
     late = row.late_date.isoformat() if row.late_date is not None else "open"

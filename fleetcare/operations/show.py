@@ -10,6 +10,7 @@ from fleetcare.domain.lines import DueLine
 from fleetcare.domain.quantities import plain
 from fleetcare.operations.find import FoundItem, find_item, find_task
 from fleetcare.operations.load import item_facts
+from fleetcare.operations.plate_figures import derived_figures
 from fleetcare.operations.rows import Row, fetch, grouped
 from fleetcare.rules.due.due_list import in_order, item_lines
 from fleetcare.rules.due.facts import ItemFacts
@@ -122,6 +123,7 @@ def _nameplate(connection: "Connection", item: FoundItem, facts: ItemFacts, on: 
             for (_, label, unit), value in zip(_NAMEPLATE, row, strict=True)
             if value is not None
         ]
+        labels += derived_figures({column: value for (column, _, _), value in zip(_NAMEPLATE, row, strict=True)})
     labels += _lash(connection, item, on)
     labels += [
         ("duty factor", f"{factor.kind} × {plain(factor.factor)} from {factor.from_on.isoformat()}: {factor.why}")

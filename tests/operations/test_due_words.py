@@ -61,9 +61,15 @@ def test_a_remainder_is_never_rounded_away() -> None:
 
 
 def test_a_likely_day_comes_with_its_range_and_an_open_end_is_said() -> None:
-    row = a_row(early_date=date(2026, 5, 20), likely_date=date(2026, 6, 1), late_date=None)
+    days = {"early_date": date(2026, 5, 20), "likely_date": date(2026, 6, 1), "late_date": None}
+    row = a_row(remaining=Decimal(40), **days)
     assert say_likely(row) == "likely 2026-06-01 (2026-05-20 to open)"
-    assert say_likely(replace(row, trigger="calendar")) == ""
+
+
+def test_no_likely_day_is_said_of_a_calendar_day_or_of_what_is_past_its_point() -> None:
+    row = a_row(likely_date=date(2026, 6, 1), remaining=Decimal(40))
+    assert say_likely(replace(row, unit="d")) == ""
+    assert say_likely(replace(row, remaining=Decimal(-1))) == ""
     assert say_likely(replace(row, likely_date=None)) == ""
 
 

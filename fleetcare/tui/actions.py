@@ -1,0 +1,95 @@
+"""Everything a key does, in one list: keys, foot line, help and command palette are all made from it."""
+
+from dataclasses import dataclass
+
+from textual.binding import Binding, BindingType
+
+EVERYWHERE = "everywhere"
+
+_SAID = {
+    "slash": "/",
+    "question_mark": "?",
+    "enter": "Enter",
+    "escape": "Esc",
+    "space": "Space",
+    "left": "←",
+    "right": "→",
+}
+
+
+@dataclass(frozen=True, slots=True)
+class Action:
+    """What a key does in one place. `word` stands in the foot line, `tells` in help and palette.
+
+    `method` is what the app or screen does; one with `in_foot` False is left out of the foot line.
+    """
+
+    place: str
+    key: str
+    method: str
+    word: str
+    tells: str
+    in_foot: bool = True
+
+    @property
+    def keys_said(self) -> tuple[str, ...]:
+        """The keys as people say them."""
+        return tuple(_SAID.get(key, key) for key in self.key.split(","))
+
+
+ACTIONS = (
+    Action("due", "enter", "working", "working", "show how the line comes about, with every figure behind it"),
+    Action("due", "e", "item", "engine", "open the page of the line's engine or machine"),
+    Action("due", "slash", "find", "find", "show only lines that hold some words"),
+    Action("due", "f", "narrow", "narrow", "choose states, sites, kinds of work and engines to show"),
+    Action("due", "a", "show_all", "all", "show all lines again", in_foot=False),
+    Action("due", "s", "arrange", "arrange", "arrange by urgency, likely day, site or engine in turn"),
+    Action("due", "c", "csv", "CSV", "write exactly the lines shown to a CSV file in this folder"),
+    Action("due", "n", "to_group(1)", "next group", "go to the next heading", in_foot=False),
+    Action("due", "p", "to_group(-1)", "group before", "go to the heading before", in_foot=False),
+    Action("engines", "enter", "item", "open", "open the page of the engine or machine"),
+    Action("engines", "slash", "find", "find", "show only those that hold some words"),
+    Action("engines", "n", "to_group(1)", "next group", "go to the next site", in_foot=False),
+    Action("engines", "p", "to_group(-1)", "group before", "go to the site before", in_foot=False),
+    Action("item", "escape", "back", "back", "go back to where you came from"),
+    Action("item", "p", "part('plate')", "plate", "show nameplate and cautions"),
+    Action("item", "m", "part('meters')", "meters", "show meters, with the plot; again for the next meter"),
+    Action("item", "l", "part('lines')", "lines", "show what it needs next"),
+    Action("item", "h", "part('history')", "history", "show all that was done to it"),
+    Action("item", "left", "turn(-1)", "left", "turn to the part on the left", in_foot=False),
+    Action("item", "right", "turn(1)", "right", "turn to the part on the right", in_foot=False),
+    Action("item", "enter", "working", "working", "show how the line comes about", in_foot=False),
+    Action("working", "escape", "back", "back", "go back to where you came from"),
+    Action("working", "e", "item", "engine", "open the page of the line's engine or machine"),
+    Action("narrow", "enter,space", "choose", "choose", "choose what is under the cursor, or no longer"),
+    Action("narrow", "a", "none", "none", "choose nothing, so that all lines show"),
+    Action("narrow", "escape,f", "back", "done", "show the lines chosen"),
+    Action("keys", "escape,question_mark", "back", "back", "go back to where you came from"),
+    Action(EVERYWHERE, "1", "view('due')", "due", "what each engine needs next", in_foot=False),
+    Action(EVERYWHERE, "2", "view('engines')", "engines", "all engines and machines", in_foot=False),
+    Action(EVERYWHERE, "d", "daylight", "day or night", "change between dark and light colours", in_foot=False),
+    Action(EVERYWHERE, "question_mark", "keys", "keys", "show the keys of where you are"),
+    Action(EVERYWHERE, "q", "quit", "quit", "leave"),
+)
+
+
+def actions_of(place: str) -> tuple[Action, ...]:
+    """Give what keys do in a place, those good everywhere last and only where the place has no other use for the key."""
+    own = [action for action in ACTIONS if action.place == place]
+    taken = {key for action in own for key in action.key.split(",")}
+    shared = [a for a in ACTIONS if a.place == EVERYWHERE and place != EVERYWHERE and a.key not in taken]
+    return (*own, *shared)
+
+
+def bindings(place: str) -> list[BindingType]:
+    """Give a place's own actions as key bindings."""
+    return [
+        Binding(action.key, action.method, action.word, show=False, tooltip=action.tells)
+        for action in ACTIONS
+        if action.place == place
+    ]
+
+
+def called(action: Action) -> str:
+    """Name an action as its method is called from anywhere: the app's, or that of the screen in front."""
+    return f"{'app' if action.place == EVERYWHERE else 'screen'}.{action.method}"

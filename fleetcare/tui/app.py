@@ -1,0 +1,103 @@
+"""The screens as one program: its views, its colours, and the clock that looks whether the file changed."""
+
+import os
+from collections.abc import Iterable
+from pathlib import Path
+from typing import TYPE_CHECKING, ClassVar
+
+from textual.app import App, SystemCommand
+from textual.screen import Screen
+
+from fleetcare.errors import FleetError
+from fleetcare.tui.actions import EVERYWHERE, actions_of, bindings, called
+from fleetcare.tui.frame import FramedScreen
+from fleetcare.tui.loading import LoadingScreen
+from fleetcare.tui.looks import BAY, OFFICE, SIXTEEN
+from fleetcare.tui.screens.due import DueScreen
+
+if TYPE_CHECKING:
+    from collections.abc import Callable
+
+    from fleetcare.context import Context
+
+FOLLOW_EVERY = 1.0
+"""Seconds between two looks at the file."""
+
+
+def _engines() -> "Screen[None]":
+    from fleetcare.tui.screens.engines import EnginesScreen  # loaded when the view is first opened
+
+    return EnginesScreen()
+
+
+class FleetApp(App[None]):
+    """The screens on one database, as of one day."""
+
+    CSS_PATH = Path(__file__).with_name("fleetcare.tcss")
+    TITLE = "fleetcare"
+    BINDINGS = bindings(EVERYWHERE)
+    MODES: ClassVar[dict[str, "str | Callable[[], Screen[None]]"]] = {"due": DueScreen, "engines": _engines}
+    DEFAULT_MODE = "due"
+
+    def __init__(self, context: "Context") -> None:
+        # Without colour nothing but the terminal's own two is left; a theme of true colour would come out as greys.
+        super().__init__(ansi_color=True if os.environ.get("NO_COLOR") else None)
+        self.context = context
+        self.trouble: FleetError | None = None
+        for theme in (BAY, OFFICE, SIXTEEN):
+            self.register_theme(theme)
+        few = self.console.color_system in {None, "standard", "windows"}
+        self.theme = (SIXTEEN if few or self.no_color else BAY).name
+
+    def on_mount(self) -> None:
+        """Begin to look at the file."""
+        self.set_interval(FOLLOW_EVERY, self._follow)
+
+    def action_view(self, view: str) -> None:
+        """Bring a view to the front."""
+        self.switch_mode(view)
+
+    def action_keys(self) -> None:
+        """Show the keys of the screen in front."""
+        from fleetcare.tui.screens.keys import KeysScreen
+
+        if isinstance(self.screen, FramedScreen):
+            self.push_screen(KeysScreen(self.screen.place))
+
+    def action_daylight(self) -> None:
+        """Change between dark and light colours."""
+        self.theme = BAY.name if self.theme == OFFICE.name else OFFICE.name
+
+    def get_system_commands(self, screen: Screen[object]) -> Iterable[SystemCommand]:
+        """Give the command palette what the keys do here."""
+        if isinstance(screen, FramedScreen):
+            for action in actions_of(screen.place):
+                yield SystemCommand(action.word.capitalize(), action.tells, _calling(self, called(action)))
+
+    def status(self) -> int:
+        """Give the exit status once the screens are left; raises the fault of ours that ended them."""
+        if self._exception is not None:
+            raise self._exception
+        return self.trouble.exit_code if self.trouble is not None else 0
+
+    def _follow(self) -> None:
+        if isinstance(self.screen, LoadingScreen):
+            self.screen.follow()
+
+    def _fatal_error(self) -> None:
+        """Close without a traceback on the screen: `status` raises the fault for whoever started the screens."""
+        self._close_messages_no_wait()
+
+
+def _calling(app: FleetApp, call: str) -> "Callable[[], None]":
+    async def run() -> None:
+        await app.run_action(call, app.screen)
+
+    return lambda: app.call_next(run)
+
+
+def run_screens(context: "Context") -> int:
+    """Show the screens until they are left, and give the exit status."""
+    app = FleetApp(context)
+    app.run()
+    return app.status()

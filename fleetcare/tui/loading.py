@@ -1,0 +1,105 @@
+"""The screen that reads: in a thread, and again whenever the file changes; then it shows what came, or why nothing did."""
+
+from functools import partial
+from typing import TYPE_CHECKING, Any
+
+from textual.message import Message
+from textual.worker import Worker, WorkerState, get_current_worker
+
+from fleetcare.errors import FleetError
+from fleetcare.operations.follow import Stamp, stamp
+from fleetcare.tui.frame import FramedScreen
+
+if TYPE_CHECKING:
+    from datetime import date
+
+    from sqlalchemy import Connection
+
+_SILENT = 0.5  # seconds of reading before it is worth a word
+
+
+class LoadingScreen(FramedScreen):
+    """A screen filled by one read operation."""
+
+    class Loaded(Message):
+        """What the operation found."""
+
+        def __init__(self, found: Any) -> None:
+            super().__init__()
+            self.found = found
+
+    class Failed(Message):
+        """Why the operation found nothing."""
+
+        def __init__(self, error: FleetError) -> None:
+            super().__init__()
+            self.error = error
+
+    def __init__(self) -> None:
+        super().__init__()
+        self._seen: Stamp | None = None
+        self._worker: Worker[None] | None = None
+
+    @property
+    def day(self) -> "date":
+        """The day what is shown was read for."""
+        return self._seen.on if self._seen is not None else self.context.today()
+
+    def read(self, connection: "Connection", on: "date", *, is_future: bool) -> Any:
+        """Run the operation this screen shows. Called in a thread: touches no widget."""
+        raise NotImplementedError
+
+    def show(self, found: Any) -> None:
+        """Fill the widgets with what was found."""
+        raise NotImplementedError
+
+    def fail(self, error: FleetError) -> None:
+        """Say what is wrong; what was shown before stays."""
+        self.say(*error.lines(), is_wrong=True)
+
+    def load(self) -> None:
+        """Read in a thread; a reading still under way is dropped."""
+        self._seen = stamp(self.context)
+        self._worker = self.run_worker(partial(self._run, self._seen), thread=True, exclusive=True, exit_on_error=False)
+        self.set_timer(_SILENT, partial(self._still_reading, self._worker))
+
+    def follow(self) -> None:
+        """Read again if the file or the day changed since, and nothing is being read."""
+        is_reading = self._worker is not None and not self._worker.is_finished
+        if not is_reading and stamp(self.context) != self._seen:
+            self.load()
+
+    def on_screen_resume(self) -> None:
+        """Come back to what holds now; the first time, read."""
+        self.follow()
+
+    def on_loading_screen_loaded(self, message: Loaded) -> None:
+        """Show what came."""
+        self.fleet_app.trouble = None
+        self.say()
+        self.show(message.found)
+
+    def on_loading_screen_failed(self, message: Failed) -> None:
+        """Show why nothing came."""
+        self.fleet_app.trouble = message.error
+        self.fail(message.error)
+
+    def on_worker_state_changed(self, event: Worker.StateChanged) -> None:
+        """A fault of ours ends the program; it is not a failure of the database."""
+        if event.state is WorkerState.ERROR and event.worker.error is not None:
+            raise event.worker.error
+
+    def _run(self, seen: Stamp) -> None:
+        worker, context = get_current_worker(), self.context
+        answer: LoadingScreen.Loaded | LoadingScreen.Failed
+        try:
+            with context.read() as connection:
+                answer = self.Loaded(self.read(connection, seen.on, is_future=context.is_future))
+        except FleetError as error:
+            answer = self.Failed(error)
+        if not worker.is_cancelled:
+            self.post_message(answer)
+
+    def _still_reading(self, worker: Worker[None]) -> None:
+        if worker is self._worker and not worker.is_finished:
+            self.say("Reading …")

@@ -1,0 +1,232 @@
+"""Due: what each engine needs next, worst first, with what is only probable or unknown told apart."""
+
+from collections.abc import Iterable
+from datetime import date
+from pathlib import Path
+from typing import TYPE_CHECKING
+
+from textual.widget import Widget
+
+from fleetcare.errors import FleetError, NoDatabase
+from fleetcare.operations.due_words import Group, notes, say_dial, say_due, say_likely, say_remaining
+from fleetcare.operations.review import Facet, Order, Review, ReviewLine, Wanted, arrange, review
+from fleetcare.tui.finding import FindingScreen
+from fleetcare.tui.frame import TopBar, say_day
+from fleetcare.tui.looks import MARKS, tone_of
+from fleetcare.tui.widgets.columns import Cell, Column, Section
+from fleetcare.tui.widgets.detail import Counts, Detail
+from fleetcare.tui.widgets.long_list import LongList
+
+if TYPE_CHECKING:
+    from sqlalchemy import Connection
+
+EMPTY = (
+    "There is nothing here yet.\n \nAdd an engine, and what it needs, in another window; it appears here by itself:\n \n"
+    "fleetcare engine add P-01 --meter hours --in-service 2024-01-10 --start-at 0 --as-new\n"
+    'fleetcare task add P-01 "Oil and filter" --every 250h --every 12mo\n \n'
+    "Or look around first in a fleet that is made up: fleetcare demo"
+)
+NO_LINES = (
+    "No engine has a task that is due by anything.\n \n"
+    "fleetcare schedule list shows ready-made sets of tasks, fleetcare schedule apply gives them to an engine."
+)
+NO_MATCH = "No line is like that. The key a shows all again."
+
+
+def state_cell(line: ReviewLine) -> Cell:
+    """Say mark and state of a line; by estimate it is due with a ~ before."""
+    tone = tone_of(line.group)
+    word = line.row.estimated if tone == "probably" else line.row.state
+    return Cell(f"{MARKS[tone]:<2} {word}", tone)
+
+
+def _left(line: ReviewLine) -> Cell:
+    tone = tone_of(line.group)
+    return Cell(say_remaining(line.row), tone if tone in {"overdue", "due"} else "")
+
+
+def _dial(line: ReviewLine) -> str:
+    return say_dial(line.row)
+
+
+def _notes(line: ReviewLine) -> list[str]:
+    """Give the notes of a line, less the state, which stands in its own column here."""
+    return [note for note in notes(line.row) if note != line.row.state]
+
+
+def _note(line: ReviewLine) -> str:
+    return "; ".join(_notes(line))
+
+
+def _iso(day: date | None) -> str:
+    return day.isoformat() if day is not None else ""
+
+
+COLUMNS: tuple[Column[ReviewLine], ...] = (
+    Column("   STATE", state_cell, 10, 10),
+    Column("ENGINE", lambda line: Cell(line.row.engine, "strong"), 8, 16),
+    Column("TASK", lambda line: line.row.task, 12, 34),
+    Column("DIAL", _dial, 20, 20, to_right=True, drop=2),
+    Column("BY DAY", lambda line: _iso(line.row.next_due_on), 10, 10, to_right=True, drop=3),
+    Column("LEFT", _left, 16, 16, to_right=True),
+    Column("LIKELY", lambda line: _iso(line.row.likely_date), 10, 10, to_right=True, drop=4),
+    Column("SITE", lambda line: line.row.site, 8, 20, drop=5),
+    Column("NOTE", _note, 12, 60, drop=6),
+)
+
+
+class DueScreen(FindingScreen):
+    """The due list."""
+
+    place = "due"
+
+    def __init__(self) -> None:
+        super().__init__()
+        self.review: Review | None = None
+        self.shown: tuple[ReviewLine, ...] = ()
+        self.chosen: frozenset[tuple[Facet, str]] = frozenset()
+        self.turns = 0
+
+    def body(self) -> Iterable[Widget]:
+        """Counts, the list, and the line under the cursor in words."""
+        yield Counts()
+        yield LongList(COLUMNS, lambda line: line.key)
+        yield Detail()
+
+    def read(self, connection: "Connection", on: date, *, is_future: bool) -> Review:
+        """Load the review."""
+        return review(connection, on, is_future=is_future)
+
+    def show(self, found: Review) -> None:
+        """Show the review, narrowed and arranged as before."""
+        self.review = found
+        self.query_one(TopBar).tell("  ".join(word for word in (found.shop, say_day(found.on)) if word))
+        self.rearrange()
+
+    def fail(self, error: FleetError) -> None:
+        """Without any lines yet, say how to begin below what is wrong."""
+        super().fail(error)
+        if self.review is None and isinstance(error, NoDatabase):
+            self.rows.show([], EMPTY)
+
+    @property
+    def rows(self) -> LongList[ReviewLine]:
+        """The list."""
+        return self.query_one(LongList)
+
+    @property
+    def order(self) -> Order:
+        """How the lines are arranged."""
+        return list(Order)[self.turns % len(Order)]
+
+    def rearrange(self) -> None:
+        """Show the lines wanted, under the headings of the order."""
+        if self.review is None:
+            return
+        wanted = Wanted(self.text, self.chosen)
+        parts = arrange(filter(wanted.takes, self.review.lines), self.order, self.review.on)
+        self.shown = tuple(line for part in parts for line in part.lines)
+        sections = [
+            Section(
+                part.title.upper() if part.group else part.title,
+                part.lines,
+                tone_of(part.group) if part.group else "strong",
+            )
+            for part in parts
+        ]
+        self.rows.show(sections, NO_MATCH if self.review.lines else NO_LINES if self.review.items else EMPTY)
+        self.query_one(Counts).tell(self._counts(), self._only())
+
+    def on_long_list_moved(self) -> None:
+        """Say the line under the cursor in words."""
+        line = self.rows.current
+        if line is None:
+            self.query_one(Detail).tell()
+            return
+        row = line.row
+        machine = f"in {row.machine}" if row.machine not in {"", row.engine} else ""
+        whose = ", ".join(word for word in (f"{line.name} {machine}".strip(), row.site) if word)
+        rest = "; ".join(word for word in (say_due(row), say_likely(row), *_notes(line)) if word)
+        self.query_one(Detail).tell((f"{row.engine}  {row.task}", "strong"), (whose, "quiet"), (rest, ""))
+
+    def on_long_list_opened(self) -> None:
+        """Open the working of a line."""
+        self.action_working()
+
+    def action_working(self) -> None:
+        """Show how the line under the cursor comes about."""
+        from fleetcare.tui.screens.working import WorkingScreen
+
+        if (line := self.rows.current) is not None:
+            self.app.push_screen(WorkingScreen(line.row.engine, line.row.task))
+
+    def action_item(self) -> None:
+        """Open the page of the engine or machine under the cursor."""
+        from fleetcare.tui.screens.item import ItemScreen
+
+        if (line := self.rows.current) is not None:
+            self.app.push_screen(ItemScreen(line.row.engine))
+
+    def action_narrow(self) -> None:
+        """Choose what to show."""
+        from fleetcare.tui.screens.narrow import NarrowScreen
+
+        if self.review is not None:
+            self.app.push_screen(NarrowScreen(self.review, self.chosen), self._narrowed)
+
+    def action_show_all(self) -> None:
+        """Show all lines again."""
+        self.text, self.chosen = "", frozenset()
+        self.rearrange()
+
+    def action_arrange(self) -> None:
+        """Arrange by the next order."""
+        self.turns += 1
+        self.rearrange()
+
+    def action_to_group(self, step: int) -> None:
+        """Go to another heading."""
+        self.rows.action_to_section(step)
+
+    def action_csv(self) -> None:
+        """Write the lines shown, and say where."""
+        from fleetcare.operations.due_file import write_shown
+
+        if self.review is None:
+            return
+        try:
+            path = write_shown([line.row for line in self.shown], Path.cwd(), self.review.on)
+        except FleetError as error:
+            self.say(*error.lines(), is_wrong=True)
+        else:
+            self.say(f"{len(self.shown)} {'line' if len(self.shown) == 1 else 'lines'} written to {path}")
+
+    def _narrowed(self, chosen: frozenset[tuple[Facet, str]] | None) -> None:
+        if chosen is not None:
+            self.chosen = chosen
+            self.rearrange()
+
+    def _counts(self) -> list[tuple[str, str, int]]:
+
+        return [
+            (
+                tone_of(group),
+                "probably due" if group is Group.PROBABLY else group.value,
+                sum(line.group is group for line in self.shown),
+            )
+            for group in Group
+        ]
+
+    def _only(self) -> str:
+        assert self.review is not None
+        words = [value or f"no {facet}" for facet, value in sorted(self.chosen)] + (
+            [f'"{self.text}"'] if self.text else []
+        )
+        parts = (
+            [f"only {', '.join(words)}: {len(self.shown)} of {len(self.review.lines)} lines, a shows all"]
+            if words
+            else []
+        )
+        if self.turns % 4:
+            parts.append(f"by {self.order}")
+        return "; ".join(parts)

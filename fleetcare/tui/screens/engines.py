@@ -1,0 +1,99 @@
+"""Engines: everything with a tag, by site, with what it needs most."""
+
+from collections.abc import Iterable
+from typing import TYPE_CHECKING
+
+from textual.widget import Widget
+
+from fleetcare.tui.finding import FindingScreen
+from fleetcare.tui.frame import TopBar, say_day
+from fleetcare.tui.looks import MARKS, tone_of
+from fleetcare.tui.screens.due import EMPTY, NO_MATCH
+from fleetcare.tui.widgets.columns import Cell, Column, Section
+from fleetcare.tui.widgets.long_list import LongList
+
+if TYPE_CHECKING:
+    from datetime import date
+
+    from sqlalchemy import Connection
+
+    from fleetcare.operations.yard import YardRow
+
+_WITHDRAWN = "withdrawn"
+
+
+def _needs(row: "YardRow") -> Cell:
+    """Say the worst group a row has lines in, and how many."""
+    if row.worst is None:
+        return Cell("")
+    tone = tone_of(row.worst)
+    return Cell(f"{MARKS[tone]:<2} {row.groups[row.worst]} {row.worst.split(' by ')[0]}", tone)
+
+
+def _status(row: "YardRow") -> Cell:
+    return Cell("" if row.status == "in service" else row.status, "wrong" if row.status == "stood down" else "")
+
+
+COLUMNS: tuple[Column["YardRow"], ...] = (
+    Column("TAG", lambda row: Cell(row.tag, "strong"), 6, 20),
+    Column("NAME", lambda row: row.name, 24, 40),
+    Column("IN", lambda row: row.machine, 4, 12, drop=2),
+    Column("STATUS", _status, 10, 10),
+    Column("SHOWED LAST", lambda row: row.shown, 20, 24, to_right=True, drop=1),
+    Column("ON", lambda row: row.read_on.isoformat() if row.read_on else "", 10, 10, drop=3),
+    Column("NEEDS", _needs, 18, 18),
+)
+
+
+class EnginesScreen(FindingScreen):
+    """The list of engines and machines."""
+
+    place = "engines"
+
+    def __init__(self) -> None:
+        super().__init__()
+        self.rows: list[YardRow] | None = None
+
+    def body(self) -> Iterable[Widget]:
+        """One list."""
+        yield LongList(COLUMNS, lambda row: (row.tag, row.status == _WITHDRAWN))
+
+    def read(self, connection: "Connection", on: "date", *, is_future: bool) -> "list[YardRow]":
+        """Load them."""
+        from fleetcare.operations.yard import yard
+
+        return yard(connection, on, is_future=is_future)
+
+    def show(self, found: "list[YardRow]") -> None:
+        """Show them, narrowed as before."""
+        self.rows = found
+        self.rearrange()
+
+    def rearrange(self) -> None:
+        """Show those that hold the words wanted, by site; withdrawn ones last."""
+        from fleetcare.operations.yard import find_in
+
+        if self.rows is None:
+            return
+        sites: dict[str, list[YardRow]] = {}
+        for row in find_in(self.rows, self.text):
+            sites.setdefault(_WITHDRAWN if row.status == _WITHDRAWN else row.site or "no site", []).append(row)
+        self.query_one(TopBar).tell(say_day(self.day) + (f'  only "{self.text}"' if self.text else ""))
+        sections = [Section(site, rows, "strong") for site, rows in sites.items()]
+        self.query_one(LongList).show(sections, NO_MATCH if self.rows else EMPTY)
+
+    def on_long_list_opened(self) -> None:
+        """Open a page with the mouse."""
+        self.action_item()
+
+    def action_item(self) -> None:
+        """Open the page of the engine or machine under the cursor."""
+        from fleetcare.tui.screens.item import ItemScreen
+
+        row: YardRow | None = self.query_one(LongList).current
+        if row is not None:
+            self.app.push_screen(ItemScreen(row.tag))
+
+    def action_to_group(self, step: int) -> None:
+        """Go to another site."""
+        self.query_one(LongList).action_to_section(step)

@@ -1,0 +1,186 @@
+"""The page of an engine or machine: plate, meters, lines and history, to read."""
+
+from collections.abc import Iterable
+from typing import TYPE_CHECKING
+
+from textual.containers import Vertical
+from textual.content import Content
+from textual.widget import Widget
+
+from fleetcare.domain.cautions import GENERAL
+from fleetcare.tui.frame import TopBar, say_day
+from fleetcare.tui.loading import LoadingScreen
+from fleetcare.tui.screens.due import COLUMNS
+from fleetcare.tui.widgets.columns import Cell, Column, Section
+from fleetcare.tui.widgets.detail import Detail
+from fleetcare.tui.widgets.long_list import LongList
+from fleetcare.tui.widgets.plot import Line, Plot, PlotView
+from fleetcare.tui.widgets.sheet import Block, Sheet
+from fleetcare.tui.widgets.text import fit
+
+if TYPE_CHECKING:
+    from datetime import date
+
+    from sqlalchemy import Connection
+
+    from fleetcare.operations.life_plot import LifeCurve
+    from fleetcare.operations.page import FullPage
+    from fleetcare.operations.show import HistoryEntry, ReadingLine
+
+PARTS = ("plate", "meters", "lines", "history")
+
+LINES = tuple(column for column in COLUMNS if column.title not in {"ENGINE", "SITE"})
+READINGS: tuple[Column["ReadingLine"], ...] = (
+    Column("READING", lambda line: str(line.number), 7, 8, to_right=True),
+    Column("ON", lambda line: line.on.isoformat(), 10, 10),
+    Column("SHOWN", lambda line: line.shown, 10, 16, to_right=True),
+    Column("REMARK", lambda line: line.remark, 10, 70),
+)
+HISTORY: tuple[Column["HistoryEntry"], ...] = (
+    Column("ENTRY", lambda entry: str(entry.number), 5, 7, to_right=True),
+    Column("ON", lambda entry: entry.on.isoformat(), 10, 10),
+    Column("KIND", lambda entry: entry.kind, 6, 10, drop=2),
+    Column("WHAT", lambda entry: entry.what, 14, 60),
+    Column("FIGURES", lambda entry: entry.figures, 8, 20, to_right=True),
+    Column("BY", lambda entry: entry.by, 5, 12, drop=1),
+    Column("REMARK", lambda entry: Cell(entry.remark, "quiet"), 10, 50),
+)
+
+
+class PartsBar(Widget):
+    """Whose page it is, and its parts, the one in front marked."""
+
+    def __init__(self) -> None:
+        super().__init__()
+        self.whose, self.part = "", PARTS[0]
+
+    def tell(self, whose: str, part: str) -> None:
+        """Show another name or part."""
+        self.whose, self.part = whose, part
+        self.refresh()
+
+    def render(self) -> Content:
+        """Draw title and parts, the title literally."""
+        parts = [
+            Content.from_markup(
+                f"[{'bold reverse' if part == self.part else 'bold'} @click=screen.part('{part}')] {part.capitalize()} [/]"
+            )
+            for part in PARTS
+        ]
+        title = Content(fit(f" {self.whose}", self.size.width)).stylize("bold")
+        return Content.assemble(title, "\n ", *parts)
+
+
+class ItemScreen(LoadingScreen):
+    """What `fleetcare show TAG` prints, in parts."""
+
+    place = "item"
+
+    def __init__(self, tag: str) -> None:
+        super().__init__()
+        self.tag = tag
+        self.part = PARTS[0]
+        self.meter = 0
+        self.page: FullPage | None = None
+
+    def body(self) -> Iterable[Widget]:
+        """The title, and a container for each part."""
+        yield PartsBar()
+        with_parts = (
+            Vertical(Sheet(), id="plate"),
+            Vertical(Sheet(), PlotView(), LongList(READINGS, lambda line: line.number), id="meters"),
+            Vertical(LongList(LINES, lambda line: line.key), id="lines"),
+            Vertical(LongList(HISTORY, lambda entry: entry.number), Detail(), id="history"),
+        )
+        for part in with_parts:
+            part.display = part.id == self.part
+            yield part
+
+    def read(self, connection: "Connection", on: "date", *, is_future: bool) -> "FullPage":
+        """Load the page."""
+        from fleetcare.operations.page import full_page
+
+        return full_page(connection, self.tag, on, is_future=is_future)
+
+    def show(self, found: "FullPage") -> None:
+        """Fill every part."""
+        self.page = found
+        self.query_one(TopBar).tell(say_day(self.day))
+        page = found.item
+        cautions = [Block("CAUTIONS", found.cautions)] if found.cautions else []
+        self.query_one("#plate Sheet", Sheet).show(
+            [Block(labels=page.nameplate), *cautions, Block(text=GENERAL, tone="quiet")]
+        )
+        self.query_one("#meters Sheet", Sheet).show([Block(labels=page.meters, text="" if page.meters else "no meter")])
+        self.query_one("#meters LongList", LongList).show([Section("", page.readings)], "No readings yet.")
+        self.query_one("#lines LongList", LongList).show([Section("", found.lines)], "No tasks yet.")
+        self.query_one("#history LongList", LongList).show([Section("", page.history)], "Nothing was logged yet.")
+        self._plot()
+        self._title()
+
+    def on_long_list_moved(self) -> None:
+        """Show the whole of the history entry under the cursor."""
+        entry: HistoryEntry | None = self.query_one("#history LongList", LongList).current
+        if entry is not None:
+            first = " ".join(f"entry {entry.number}, {entry.on.isoformat()}, {entry.kind} {entry.by}".split())
+            rest = "; ".join(word for word in (entry.what, entry.figures, entry.remark) if word)
+            self.query_one("#history Detail", Detail).tell((first, "strong"), (rest, ""))
+
+    def on_long_list_opened(self) -> None:
+        """Open the working of a line with the mouse."""
+        self.action_working()
+
+    def action_part(self, part: str) -> None:
+        """Bring a part to the front; the meters again show the next meter."""
+        if part == "meters" == self.part:
+            self.meter += 1
+            self._plot()
+        self.part = part
+        for one in PARTS:
+            self.query_one(f"#{one}").display = one == part
+        self.query_one(f"#{part}").query("LongList, Sheet").last().focus()
+        self._title()
+
+    def action_turn(self, step: int) -> None:
+        """Turn to the part beside."""
+        self.action_part(PARTS[(PARTS.index(self.part) + step) % len(PARTS)])
+
+    def action_working(self) -> None:
+        """Show how the line under the cursor comes about."""
+        from fleetcare.tui.screens.working import WorkingScreen
+
+        line = self.query_one("#lines LongList", LongList).current
+        if self.part == "lines" and line is not None:
+            self.app.push_screen(WorkingScreen(line.row.engine, line.row.task))
+
+    def _title(self) -> None:
+        if self.page is None:
+            return
+        item = self.page.item.facts.item
+        status = dict(self.page.item.nameplate).get("status", "")
+        words = [item.tag, item.name, item.site, f"in {item.machine}" if item.machine not in {"", item.tag} else ""]
+        words.append({"in service": "", "stood down": "STOOD DOWN: NOT TO BE RUN"}.get(status, status))
+        self.query_one(PartsBar).tell("  ".join(word for word in words if word), self.part)
+
+    def _plot(self) -> None:
+        curves = self.page.curves if self.page is not None else ()
+        plot = plot_of(curves[self.meter % len(curves)], self.day) if curves else None
+        self.query_one(PlotView).show(plot)
+
+
+def plot_of(curve: "LifeCurve", today: "date") -> Plot:
+    """Draw a life total as read in full, what is likely dotted, the range thinly, and what falls due across."""
+    lines = [Line(curve.read, 1, "strong")]
+    if curve.ahead:
+        start = curve.read[-1]
+        late = [(day, total) for total, _, _, day in curve.ahead if day is not None]
+        horizon = max(likely for _, _, likely, _ in curve.ahead)
+        lines += [
+            Line([start, *((likely, total) for total, _, likely, _ in curve.ahead)], 2),
+            Line([start, *((early, total) for total, early, _, _ in curve.ahead)], 5, "quiet"),
+            Line([start, *((day, total) for day, total in late if day <= horizon)], 5, "quiet"),
+        ]
+    said = "likely dotted, its range thin" if curve.ahead else f"no forecast: {curve.why_not}"
+    levels = [(total, task) for total, task in curve.marks]
+    legend = f"{curve.kind} of life: read solid, {said}"
+    return Plot(lines, levels, today, legend, curve.unit)
