@@ -8,7 +8,7 @@ from dataclasses import dataclass
 from difflib import get_close_matches
 from pathlib import Path
 
-from fleetcare.domain.printable import clean
+from fleetcare.domain.printable import UNPRINTABLE
 from fleetcare.errors import Refusals, Refused
 
 MOST_BYTES = 32 * 1024 * 1024
@@ -167,7 +167,7 @@ def _faults(row: CsvRow) -> Iterable[RowRefused]:
         if len(cell) > MOST_IN_A_CELL:
             yield _too_long(row.number, name)
             continue
-        strange = next((char for char in cell if char not in "\t\r\n" and clean(char) != char), None)
+        strange = next((found[0] for found in UNPRINTABLE.finditer(cell) if found[0] not in "\t\r\n"), None)
         if strange is not None:
             yield RowRefused(row.number, name, f"it holds the control character {strange!r}", "remove it")
 

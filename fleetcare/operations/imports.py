@@ -22,18 +22,14 @@ if TYPE_CHECKING:
 
 @dataclass(frozen=True, slots=True)
 class _FileKind:
-    """What a file of a kind must have as columns and may have, how a row is read, and how rows are stored.
+    """What a row of a file is read as, the columns it must have, and how rows are stored.
 
-    `store` leaves what is wrong with a row in the list it is given, and stores nothing then.
+    `store` leaves what is wrong with a row in the list it is given.
     """
 
     draft: type[Draft]
     required: tuple[str, ...]
     store: Callable[["Session", Sequence[Row[Any]], date, list[RowRefused]], Imported]
-
-    @property
-    def optional(self) -> tuple[str, ...]:
-        return tuple(name for name in self.draft.model_fields if name not in self.required)
 
 
 _KINDS: Mapping[str, _FileKind] = {
@@ -43,10 +39,15 @@ _KINDS: Mapping[str, _FileKind] = {
 }
 
 
-def read_import(kind: str, path: Path) -> CsvFile:
-    """Read a file of a kind: engines, readings or log. Refuses what is no such file as a whole."""
+def import_columns(kind: str) -> tuple[tuple[str, ...], tuple[str, ...]]:
+    """Give the columns a file of a kind (engines, readings or log) must have, and those it may have besides."""
     found = _KINDS[kind]
-    return read_rows(read_file(path), found.required, found.optional)
+    return found.required, tuple(name for name in found.draft.model_fields if name not in found.required)
+
+
+def read_import(kind: str, path: Path) -> CsvFile:
+    """Read a file of a kind. Refuses what is no such file as a whole."""
+    return read_rows(read_file(path), *import_columns(kind))
 
 
 def store_import(session: "Session", kind: str, file: CsvFile, today: date) -> Imported:
