@@ -53,8 +53,8 @@ def test_valve_order_goes_one_by_one_where_two_positions_come_too_near_a_cam(fle
     assert fleetcare(*words).out.splitlines()[1:] == [
         "  0° (1 at TDC on compression): set intake 1; exhaust 1",
         "  330° (2 at TDC on compression): set intake 2; exhaust 2",
-        "Both valves of a cylinder are closed at its own TDC on compression, when its mate, if any, is rocking.",
-        "Two positions will not do: at one of them a valve would be too near its cam.",
+        "Both valves of a cylinder are closed at its own TDC on compression, when its mate, if any, is rocking."
+        " Two positions would bring a valve too near its cam.",
     ]
     assert json.loads(fleetcare(*words, "--json").out)["method"] == "one-by-one"
 
