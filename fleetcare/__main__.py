@@ -2,6 +2,10 @@
 
 import sys
 from collections.abc import Sequence
+from typing import TYPE_CHECKING
+
+if TYPE_CHECKING:
+    from fleetcare.context import Context
 
 INTERRUPTED = 130
 
@@ -12,7 +16,7 @@ def main(arguments: Sequence[str] | None = None) -> int:
     from fleetcare.cli import output
 
     try:
-        status = command_line.run(sys.argv[1:] if arguments is None else arguments)
+        status = command_line.run(sys.argv[1:] if arguments is None else arguments, open_screens)
         output.finish()
     except KeyboardInterrupt:
         return INTERRUPTED
@@ -27,6 +31,13 @@ def main(arguments: Sequence[str] | None = None) -> int:
         output.complain(f"a fault in fleetcare itself ({type(error).__name__}: {error}); please report this line")
         return 1
     return status
+
+
+def open_screens(context: "Context") -> int:
+    """Show the screens until they are left. Loaded only here: no command pays for what it does not show."""
+    from fleetcare.tui.app import run_screens
+
+    return run_screens(context)
 
 
 if __name__ == "__main__":

@@ -20,7 +20,8 @@ from fleetcare.cli import (
     upkeep,
 )
 from fleetcare.cli.parser import CommandParser, Commands
-from fleetcare.errors import FleetError, Misread
+from fleetcare.cli.screens import OpenScreens, shop_screens
+from fleetcare.errors import FleetError
 
 GROUPS: tuple[Callable[[Commands], None], ...] = (
     due.add_commands,
@@ -40,12 +41,13 @@ GROUPS: tuple[Callable[[Commands], None], ...] = (
 
 
 def build_parser() -> CommandParser:
-    """Give the parser of the whole command line; a parsed command carries its handler as `run`."""
+    """Give the parser of the whole command line; a parsed command carries its handler as `run`, no command the screens."""
     parser = CommandParser(
         prog="fleetcare",
         description="What each engine of a small fleet needs next, with the working shown.",
         epilog="Exit status: 0 done, 1 refused, 2 the command line is wrong, 3 no database, 130 interrupted.",
     )
+    parser.set_defaults(run=shop_screens)
     parser.add_argument("--version", action="version", version=f"fleetcare {__version__}")
     commands = parser.add_subparsers(title="commands", metavar="COMMAND")
     for add_commands in GROUPS:
@@ -53,18 +55,20 @@ def build_parser() -> CommandParser:
     return parser
 
 
-def run(arguments: Sequence[str]) -> int:
-    """Run one command line and give its exit status. What is not a FleetError is a fault of ours and passes through."""
-    parser = build_parser()
+def run(arguments: Sequence[str], open_screens: OpenScreens) -> int:
+    """Run one command line and give its exit status. What is not a FleetError is a fault of ours and passes through.
+
+    A command that wants the screens gives the database to show on them, to be held while they are open.
+    """
     try:
-        parsed = parser.parse_args(arguments)
-        if "run" not in parsed:
-            output.complain(*parser.format_help().splitlines())
-            return Misread.exit_code
-        parsed.run(parsed)
+        parsed = build_parser().parse_args(arguments)
+        shown = parsed.run(parsed)
+        if shown is None:
+            return 0
+        with shown as context:
+            return open_screens(context)
     except FleetError as error:
         output.complain(*error.lines())
         return error.exit_code
     except SystemExit as end:  # --help and --version
         return int(end.code or 0)
-    return 0

@@ -6,6 +6,7 @@ from dataclasses import dataclass
 import pytest
 
 from fleetcare.cli.main import run
+from fleetcare.context import Context
 
 
 @dataclass(frozen=True)
@@ -17,6 +18,11 @@ class Ran:
     err: str
 
 
+def no_screens(context: Context) -> int:
+    """No command line of a test takes over the terminal."""
+    raise AssertionError(f"the screens were opened on {context.path}")
+
+
 Runner = Callable[..., Ran]
 
 
@@ -26,7 +32,7 @@ def fleetcare(capsys: pytest.CaptureFixture[str]) -> Runner:
 
     def run_words(*words: str) -> Ran:
         capsys.readouterr()
-        status = run(words)
+        status = run(words, no_screens)
         printed = capsys.readouterr()
         return Ran(status, printed.out, printed.err)
 

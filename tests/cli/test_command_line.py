@@ -37,10 +37,15 @@ def test_the_database_and_the_day_are_absent_where_nobody_gave_them() -> None:
     assert "as_of" not in parsed
 
 
-def test_no_command_shows_the_help_on_stderr_with_status_2(fleetcare: Runner) -> None:
-    ran = fleetcare()
+@pytest.mark.parametrize("words", [(), ("demo",), ("--as-of", "2026-05-01")], ids=" ".join)
+def test_what_opens_the_screens_is_refused_in_one_line_where_there_is_no_terminal(
+    fleetcare: Runner, words: tuple[str, ...]
+) -> None:
+    ran = fleetcare(*words)
     assert (ran.status, ran.out) == (2, "")
-    assert ran.err.startswith("usage: fleetcare")
+    assert ran.err == (
+        "the screens need a terminal for input, output and errors; name a command, see fleetcare --help\n"
+    )
 
 
 def test_help_is_an_answer_with_status_0(fleetcare: Runner) -> None:
