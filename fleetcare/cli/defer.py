@@ -4,7 +4,7 @@ import argparse
 
 from fleetcare.cli import output
 from fleetcare.cli.parser import Commands
-from fleetcare.cli.shop import context_of, option_label, options_of, say_moved
+from fleetcare.cli.shop import context_of, label_with, options_of, say_moved
 
 
 def add_commands(commands: Commands) -> None:
@@ -27,7 +27,7 @@ def _defer(given: argparse.Namespace) -> None:
     from fleetcare.operations.due import watch_moves
 
     context = context_of(given)
-    draft = read_draft(DeferralDraft, options_of(given) | {"on": context.today()}, option_label)
+    draft = read_draft(DeferralDraft, options_of(given) | {"on": context.today()}, label_with(task="TASK"))
     with context.write() as session, watch_moves(session, draft.tag, context.today()) as moves:
         deferred = defer(session, draft)
     until = " or ".join(str(end) for end in draft.until)

@@ -5,7 +5,7 @@ from typing import TYPE_CHECKING
 
 from fleetcare.cli import output
 from fleetcare.cli.parser import CommandParser, Commands, day, whole
-from fleetcare.cli.shop import context_of, option_label, options_of, say_moved
+from fleetcare.cli.shop import changes_of, context_of, label_with, option_label, options_of, say_moved
 
 if TYPE_CHECKING:
     from fleetcare.operations.log import Logged
@@ -20,9 +20,6 @@ def add_commands(commands: Commands) -> None:
     log.add_argument("--follow-up", action="store_true", help="raise a follow-up from the defect")
     log.add_argument("--until", type=day, metavar="DATE", help="last day for the follow-up, else at once")
     log.add_argument("--part-done", action="store_true", help="done in part: closes nothing")
-    log.add_argument("--part", action="append", metavar="NAME[:N]", help="a part used")
-    log.add_argument("--component", metavar="TEXT", help="what was worked on, such as injector 3")
-    log.add_argument("--downtime", metavar="HOURS", help="time out of service, such as 6h")
     log.set_defaults(run=_log)
     correct = commands.add_parser("correct", help="correct or void an entry")
     correct.add_argument("entry", type=whole, metavar="ENTRY", help="number of the entry")
@@ -44,6 +41,9 @@ def _add_shared_options(parser: CommandParser) -> None:
     parser.add_argument("--top-up", metavar="VOLUME", help="oil topped up, such as 8L")
     parser.add_argument("--repair", metavar="TEXT", help="what was repaired")
     parser.add_argument("--defect", metavar="TEXT", help="a defect seen")
+    parser.add_argument("--part", action="append", metavar="NAME[:N]", help="a part used")
+    parser.add_argument("--component", metavar="TEXT", help="what was worked on, such as injector 3")
+    parser.add_argument("--downtime", metavar="HOURS", help="time out of service, such as 6h")
 
 
 def _log(given: argparse.Namespace) -> None:
@@ -54,7 +54,7 @@ def _log(given: argparse.Namespace) -> None:
 
     context = context_of(given)
     values = options_of(given) | {"on": given.on or context.today()}
-    draft = read_draft(LogDraft, values, option_label)
+    draft = read_draft(LogDraft, values, label_with(task="TASK"))
     with context.write() as session, watch_moves(session, draft.tag, context.today()) as moves:
         logged = record_work(session, draft, context.today())
     _say_logged(logged, f"on {draft.on}")
@@ -64,17 +64,14 @@ def _log(given: argparse.Namespace) -> None:
 def _correct(given: argparse.Namespace) -> None:
     from fleetcare.drafts.reading_in import read_draft
     from fleetcare.drafts.work import CorrectionDraft
-    from fleetcare.operations.correct import correct_entry, tag_of_entry
-    from fleetcare.operations.due import watch_moves
+    from fleetcare.operations.correct import correct_entry, item_of_entry
+    from fleetcare.operations.due import watch_items
 
     context = context_of(given)
-    values = {
-        name: value for name, value in options_of(given).items() if value not in (None, False) or name == "part_done"
-    }
-    draft = read_draft(CorrectionDraft, values, option_label)
+    draft = read_draft(CorrectionDraft, changes_of(given) | {"part_done": given.part_done}, option_label)
     with context.write() as session:
-        tag = tag_of_entry(session, draft.entry)
-        with watch_moves(session, tag, context.today()) as moves:
+        item = item_of_entry(session, draft.entry)
+        with watch_items(session, [item.id], context.today()) as moves:
             logged = correct_entry(session, draft, context.today())
     _say_logged(logged, f"{'voids' if draft.void else 'corrects'} entry {draft.entry}")
     say_moved(moves.moved)

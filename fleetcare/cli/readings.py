@@ -67,8 +67,8 @@ def _record(given: argparse.Namespace) -> None:
 
 
 def _amend(given: argparse.Namespace) -> None:
-    from fleetcare.operations.due import watch_moves
-    from fleetcare.operations.readings import restore_reading, tag_of_reading, void_reading
+    from fleetcare.operations.due import watch_items
+    from fleetcare.operations.readings import item_of_reading, restore_reading, void_reading
 
     others = (given.tag, given.value, given.meter, given.on, given.by, given.note, given.replaced, given.unmetered)
     if any(other is not None for other in others) or given.rolled_over or (given.sure and given.void is not None):
@@ -81,14 +81,14 @@ def _amend(given: argparse.Namespace) -> None:
     suspects: tuple[int, ...] = ()
     reading_id = given.void if given.void is not None else given.restore
     with context.write() as session:
-        tag = tag_of_reading(session, reading_id)
-        with watch_moves(session, tag, context.today()) as moves:
+        item = item_of_reading(session, reading_id)
+        with watch_items(session, [item.id], context.today()) as moves:
             if given.void is not None:
                 void_reading(session, reading_id, given.why.strip(), context.today())
             else:
                 why = (given.why or "").strip()
                 suspects = restore_reading(session, reading_id, context.today(), why=why, sure=given.sure).suspects
-    output.say(f"Reading {reading_id} of {tag} {'is void' if given.void is not None else 'counts again'}.")
+    output.say(f"Reading {reading_id} of {item.tag} {'is void' if given.void is not None else 'counts again'}.")
     _say_suspects(suspects)
     say_moved(moves.moved)
 

@@ -57,7 +57,7 @@ def say_moved(moves: "Sequence[Moved]") -> None:
         before, after = say_point(move.before), say_point(move.after)
         if before == after and move.before is not None and move.after is not None:
             before, after = f"own point {_say_own(move.before)}", f"{_say_own(move.after)}, deferred all the same"
-        output.say(f"{row.engine}  {row.task}: {before} -> {after}")
+        output.say(f"{row.engine}  {row.task}: {before} → {after}")
 
 
 def _say_own(row: "DueRow") -> str:

@@ -8,7 +8,7 @@ from pydantic import BeforeValidator, model_validator
 from fleetcare.domain.quantities import Figure, parse_dial
 from fleetcare.drafts.fields import Day, DaysOrDials, Dial, Dials, Hours, Litres, MeterKind, Note, Parts, Text, Texts
 from fleetcare.drafts.reading_in import Draft
-from fleetcare.errors import Refused
+from fleetcare.errors import Misread, Refused
 
 
 def _pair(value: object) -> tuple[Figure, Figure]:
@@ -87,9 +87,12 @@ class CorrectionDraft(Draft):
     on: Day | None = None
     at: Dials = ()
     by: Text | None = None
-    note: Note | None = None
+    note: Text | None = None
     task: Texts = ()
     part_done: bool | None = None
+    part: Parts = ()
+    component: Text | None = None
+    downtime: Hours | None = None
     top_up: Litres | None = None
     repair: Text | None = None
     defect: Text | None = None
@@ -99,7 +102,7 @@ class CorrectionDraft(Draft):
     @model_validator(mode="after")
     def _check_why(self) -> Self:
         if self.void and not self.why:
-            raise Refused("voiding an entry needs a reason", "give --why TEXT")
+            raise Misread("voiding an entry needs a reason", "give --why TEXT")
         given = self.model_fields_set - {"entry", "void", "why"}
         if self.void and given:
             raise Refused("a voided entry says nothing any more", "give only --void and --why")

@@ -13,6 +13,7 @@ from fleetcare.domain.quantities import Figure
 from fleetcare.drafts.work import CorrectionDraft
 from fleetcare.errors import Refused
 from fleetcare.operations.find import FoundItem, find_task
+from fleetcare.operations.load import item_facts
 from fleetcare.operations.log import Logged, close_tasks, refuse_future, store_figures
 from fleetcare.operations.names import person_id
 
@@ -35,8 +36,8 @@ def correct_entry(session: "Session", draft: CorrectionDraft, today: date) -> Lo
         person_id=person_id(session, draft.by) or old.person_id,
         title=_title(old, draft),
         note=old.note if draft.note is None else draft.note,
-        component=old.component,
-        downtime_hours=old.downtime_hours,
+        component=draft.component or old.component,
+        downtime_hours=old.downtime_hours if draft.downtime is None else draft.downtime,
         litres=draft.top_up.value if draft.top_up else old.litres,
         litres_unit=draft.top_up.unit if draft.top_up else old.litres_unit,
         supersedes_id=old.id,
@@ -48,17 +49,17 @@ def correct_entry(session: "Session", draft: CorrectionDraft, today: date) -> Lo
         session.flush()
     except IntegrityError as error:
         raise Refused(f"entry {old.id} was corrected meanwhile", "look at it again with fleetcare show") from error
-    row = session.get_one(Item, old.item_id)
-    item = FoundItem(row.id, row.tag, row.is_engine)
+    item = item_of_entry(session, old.id)
     logged = Logged(item, entries=[(new.id, new.kind)])
     if not draft.void:
-        _carry_over(session, item, old, new, draft, logged)
+        _carry_over(session, item, old, new, draft, logged, today)
     return logged
 
 
-def tag_of_entry(session: "Session", number: int) -> str:
-    """Give the tag of whose entry a number is; refuses a number that is no entry."""
-    return session.get_one(Item, _entry(session, number).item_id).tag
+def item_of_entry(session: "Session", number: int) -> FoundItem:
+    """Give whose entry a number is, withdrawn or not; refuses a number that is no entry."""
+    row = session.get_one(Item, _entry(session, number).item_id)
+    return FoundItem(row.id, row.tag, row.is_engine)
 
 
 def _entry(session: "Session", number: int) -> LogEntry:
@@ -89,12 +90,19 @@ def _title(old: LogEntry, draft: CorrectionDraft) -> str:
 
 
 def _carry_over(
-    session: "Session", item: FoundItem, old: LogEntry, new: LogEntry, draft: CorrectionDraft, logged: Logged
+    session: "Session",
+    item: FoundItem,
+    old: LogEntry,
+    new: LogEntry,
+    draft: CorrectionDraft,
+    logged: Logged,
+    today: date,
 ) -> None:
     """Give the new entry the figures, parts and tasks of the old one, save those restated."""
     store_figures(session, item, new, [*draft.at, *_kept_figures(session, old, draft.at)])
-    for part in session.scalars(select(LogPart).where(col(LogPart.entry_id) == old.id)).all():
-        session.add(LogPart(entry_id=new.id, name=part.name, quantity=part.quantity))
+    stored = session.scalars(select(LogPart).where(col(LogPart.entry_id) == old.id).order_by(col(LogPart.id)))
+    for name, quantity in draft.part or [(part.name, part.quantity) for part in stored]:
+        session.add(LogPart(entry_id=new.id, name=name, quantity=quantity))
     rows = session.scalars(
         select(LogTask)
         .where(col(LogTask.entry_id) == old.id, col(LogTask.covered_by_id).is_(None))
@@ -103,7 +111,8 @@ def _carry_over(
     tasks = [find_task(session.connection(), item, name) for name in draft.task] or [row.task_id for row in rows]
     was_part = any(row.part_done for row in rows)
     part_done = was_part if draft.part_done is None else draft.part_done
-    close_tasks(session, item, new, tasks, part_done=part_done, logged=logged)
+    facts = item_facts(session.connection(), today, [item.id])[0]
+    close_tasks(session, facts, new, tasks, part_done=part_done, logged=logged)
 
 
 def _kept_figures(session: "Session", old: LogEntry, restated: Sequence[Figure]) -> list[Figure]:

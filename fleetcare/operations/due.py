@@ -8,7 +8,7 @@ from typing import TYPE_CHECKING
 
 from fleetcare.domain.lines import DueLine, State
 from fleetcare.errors import Refused
-from fleetcare.operations.find import find_item, find_meters
+from fleetcare.operations.find import find_item
 from fleetcare.operations.load import item_facts
 from fleetcare.operations.rows import fetch
 from fleetcare.rules.due.due_list import in_order, item_lines, within
@@ -18,6 +18,8 @@ from fleetcare.rules.due.row import COLUMNS, DueRow, due_row
 if TYPE_CHECKING:
     from sqlalchemy import Connection
     from sqlalchemy.orm import Session
+
+_MOST_DAYS = 36_500  # a century
 
 __all__ = ["COLUMNS", "DueRow", "Filters", "Moved", "Moves", "due_rows", "watch_moves"]
 
@@ -61,8 +63,11 @@ def due_lines(
 ) -> list[tuple[DueLine, ItemFacts]]:
     """Give the lines of `due_rows`, each with the facts of its item."""
     wanted = filters or Filters()
-    ids = [find_item(connection, wanted.engine).id] if wanted.engine is not None else None
-    found = {facts.item.id: facts for facts in item_facts(connection, on, ids)}
+    if wanted.days is not None and not 0 <= wanted.days <= _MOST_DAYS:
+        raise Refused(f"within {wanted.days} days cannot be", f"give a number from 0 to {_MOST_DAYS}")
+    ids = [find_item(connection, wanted.engine, on=on).id] if wanted.engine is not None else None
+    in_service = (facts for facts in item_facts(connection, on, ids) if (facts.item.in_service_on or on) <= on)
+    found = {facts.item.id: facts for facts in in_service}
     lines = [
         line for facts in found.values() for line in item_lines(facts, is_future, recorded_only=wanted.recorded_only)
     ]
@@ -88,7 +93,7 @@ def watch_moves(session: "Session", tag: str, on: date) -> Iterator[Moves]:
 def watch_items(session: "Session", item_ids: Sequence[int], on: date) -> Iterator[Moves]:
     """Compare the lines of several items as `watch_moves` does those of one."""
     connection = session.connection()
-    ids = _sharing(connection, item_ids, on)
+    ids = _sharing(connection, item_ids)
     before = _rows_by_key(connection, ids, on)
     moves = Moves()
     yield moves
@@ -109,15 +114,21 @@ def _rows_by_key(connection: "Connection", ids: Sequence[int], on: date) -> dict
     return rows
 
 
-def _sharing(connection: "Connection", item_ids: Sequence[int], on: date) -> list[int]:
-    """Give the ids of some items and of all items their meters count for."""
-    meters = [meter.id for item_id in item_ids for meter in find_meters(connection, item_id, on)]
-    rows = fetch(connection, "select distinct item_id from meter_fit where meter_id in :meters", meters=meters)
+def _sharing(connection: "Connection", item_ids: Sequence[int]) -> list[int]:
+    """Give the ids of some items and of all items that a meter of theirs counts or counted for."""
+    rows = fetch(
+        connection,
+        "select distinct item_id from meter_fit where meter_id in"
+        " (select meter_id from meter_fit where item_id in :items)",
+        items=list(item_ids),
+    )
     return sorted({*item_ids, *(row[0] for row in rows)})
 
 
 def _point(row: DueRow | None) -> tuple[object, ...] | None:
-    return None if row is None else (row.next_due_at, row.next_due_on, row.own_due_at, row.own_due_on)
+    if row is None:
+        return None
+    return row.next_due_at, row.next_due_on, row.next_due_dial, row.own_due_at, row.own_due_on
 
 
 def _known_site(connection: "Connection", name: str) -> str:

@@ -33,21 +33,26 @@ class FoundMeter:
     owner_id: int
 
 
-def find_item(connection: "Connection", tag: str, *, even_withdrawn: bool = False) -> FoundItem:
+def find_item(
+    connection: "Connection", tag: str, *, on: date | None = None, even_withdrawn: bool = False
+) -> FoundItem:
     """Find the engine or machine in use under a tag, whatever its case; refuses an unknown one.
 
-    `even_withdrawn` finds the one last withdrawn where none is in use: its history stays readable.
+    With `on` it is the one that was in use on that day. `even_withdrawn` finds the one last withdrawn where none
+    is in use: its history stays readable.
     """
     rows = fetch(
         connection,
         "select id, tag, is_engine, withdrawn_on from item where tag_key = :key"
-        " order by withdrawn_on is not null, withdrawn_on desc",
+        " order by withdrawn_on is null, withdrawn_on, id",
         key=tag.strip().casefold(),
     )
-    if rows and (even_withdrawn or rows[0][3] is None):
-        return FoundItem(rows[0][0], rows[0][1], bool(rows[0][2]))
+    in_use = [row for row in rows if row[3] is None or (on is not None and row[3] > on.isoformat())]
+    if in_use or (rows and even_withdrawn):
+        found = in_use[0] if in_use else rows[-1]
+        return FoundItem(found[0], found[1], bool(found[2]))
     if rows:
-        raise Refused(f"{rows[0][1]} is withdrawn since {rows[0][3]}", "add it anew with fleetcare engine add")
+        raise Refused(f"{rows[-1][1]} is withdrawn since {rows[-1][3]}", "add it anew with fleetcare engine add")
     tags = [row[0] for row in fetch(connection, "select tag from item where withdrawn_on is null order by tag")]
     raise Refused(f"no engine or machine has the tag {tag!r}", _did_you_mean(tag, tags, "see fleetcare engine list"))
 
@@ -70,16 +75,25 @@ def find_machine(connection: "Connection", tag: str) -> FoundItem:
     return item
 
 
-def find_task(connection: "Connection", item: FoundItem, name: str) -> int:
-    """Find a task of an item by name, whatever its case; refuses an unknown one with the nearest names."""
+def find_task(
+    connection: "Connection", item: FoundItem, name: str, *, on: date | None = None, even_ended: bool = False
+) -> int:
+    """Find a task of an item by name, whatever its case; refuses an unknown one with the nearest names.
+
+    With `on` it is the one there was on that day. `even_ended` finds the one ended last where there is none.
+    """
     rows = fetch(
-        connection, "select id, name, name_key from task where item_id = :item and removed_on is null", item=item.id
+        connection,
+        "select id, name, name_key, removed_on from task where item_id = :item"
+        " order by removed_on is null, removed_on, id",
+        item=item.id,
     )
     key = " ".join(name.split()).casefold()
-    for task_id, _, name_key in rows:
-        if name_key == key:
-            return int(task_id)
-    names = [row[1] for row in rows]
+    named = [row for row in rows if row[2] == key]
+    current = [row for row in named if row[3] is None or (on is not None and row[3] > on.isoformat())]
+    if current or (named and even_ended):
+        return int(current[0][0] if current else named[-1][0])
+    names = [row[1] for row in rows if row[3] is None]
     remedy = _did_you_mean(name, names, f"add one with fleetcare task add {item.tag} NAME --every INTERVAL")
     raise Refused(f"{item.tag} has no task {name!r}", remedy)
 

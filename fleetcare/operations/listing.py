@@ -1,5 +1,6 @@
 """Lists for people: engines, machines, tasks."""
 
+import re
 from datetime import date
 from typing import TYPE_CHECKING
 
@@ -14,7 +15,7 @@ from fleetcare.rules.explain import say_trigger
 if TYPE_CHECKING:
     from sqlalchemy import Connection
 
-_AGE_ALL_THE_SAME = ("oil", "coolant", "belt", "batter", "drain")
+_AGE_ALL_THE_SAME = re.compile(r"\b(oils?|coolants?|belts?|batter(y|ies)|drain)\b", re.IGNORECASE)
 
 
 def list_items(connection: "Connection", on: date, *, engines: bool) -> list[dict[str, object]]:
@@ -49,18 +50,17 @@ def list_items(connection: "Connection", on: date, *, engines: bool) -> list[dic
 
 def pausing_tasks(connection: "Connection", tag: str, on: date) -> list[str]:
     """Give the tasks of an item that pause while laid up though what they care for ages all the same."""
-    facts = item_facts(connection, on, [find_item(connection, tag).id])[0]
+    facts = item_facts(connection, on, [find_item(connection, tag, on=on).id])[0]
     return [task.name for task in facts.tasks if _should_not_pause(task.name, task.version_on(on))]
 
 
 def _should_not_pause(name: str, version: TaskVersion) -> bool:
-    words = f"{name} {version.work}".casefold()
-    return version.pause_while_laid_up and any(word in words for word in _AGE_ALL_THE_SAME)
+    return version.pause_while_laid_up and _AGE_ALL_THE_SAME.search(f"{name} {version.work}") is not None
 
 
 def list_tasks(connection: "Connection", tag: str, on: date) -> list[dict[str, object]]:
     """List the tasks of an item in force on a day, with their intervals in words."""
-    facts = item_facts(connection, on, [find_item(connection, tag).id])[0]
+    facts = item_facts(connection, on, [find_item(connection, tag, on=on).id])[0]
     rows: list[dict[str, object]] = []
     for task in facts.tasks:
         if task.removed_on is not None and task.removed_on <= on:

@@ -3,6 +3,7 @@
 from collections.abc import Sequence
 from dataclasses import dataclass, field, replace
 from datetime import date
+from decimal import Decimal
 from typing import TYPE_CHECKING
 
 from sqlalchemy import select
@@ -12,7 +13,7 @@ from fleetcare.db.tables import LogEntry, LogPart, LogTask, TaskCall, TaskVersio
 from fleetcare.db.tables import Task as TaskRow
 from fleetcare.domain.lines import PastWork
 from fleetcare.domain.log import Done
-from fleetcare.domain.quantities import Figure
+from fleetcare.domain.quantities import Figure, plain
 from fleetcare.domain.schedules import Combine, Task
 from fleetcare.domain.schedules import TaskVersion as Version
 from fleetcare.drafts.work import LogDraft
@@ -24,6 +25,8 @@ from fleetcare.operations.readings import NewReading, store_reading
 from fleetcare.rules.due.covering import closure
 from fleetcare.rules.due.facts import ItemFacts
 from fleetcare.rules.due.replay import replay
+from fleetcare.rules.due.row import unit_of
+from fleetcare.rules.explain import say_amount
 
 if TYPE_CHECKING:
     from sqlalchemy.orm import Session
@@ -68,7 +71,8 @@ def record_work(session: "Session", draft: LogDraft, today: date) -> Logged:
     for name, quantity in draft.part:
         session.add(LogPart(entry_id=first.id, name=name, quantity=quantity))
     store_figures(session, item, first, draft.at)
-    close_tasks(session, item, first, done, part_done=draft.part_done, logged=logged)
+    facts = item_facts(session.connection(), today, [item.id])[0]
+    close_tasks(session, facts, first, done, part_done=draft.part_done, logged=logged)
     return logged
 
 
@@ -81,39 +85,40 @@ def refuse_future(on: date, today: date) -> None:
 def store_figures(session: "Session", item: FoundItem, entry: LogEntry, figures: Sequence[Figure]) -> None:
     """Store the dial figures of an entry as readings that came with it."""
     meters = find_meters(session.connection(), item.id, entry.on)
+    told: set[int] = set()
     for figure in figures:
         meter = pick_meter(meters, figure, item.tag)
-        reading = f"fleetcare reading {item.tag} {figure.value} --on {entry.on} --sure"
+        if meter.id in told:
+            raise Refused(f"--at names two figures of the {meter.kind} meter", "give one of each meter")
+        told.add(meter.id)
+        reading = f"{item.tag} {plain(figure.value)}{figure.unit or meter.unit} --on {entry.on} --sure"
         store_reading(
             session,
             item,
             meter,
             NewReading(entry.on, figure, entry_id=entry.id),
-            remedy=f"check --at; if it is right, first give {reading}",
+            remedy=f"check --at; if it is right, first give fleetcare reading {reading}",
         )
 
 
 def close_tasks(
     session: "Session",
-    item: FoundItem,
+    facts: ItemFacts,
     entry: LogEntry,
     task_ids: Sequence[int],
     *,
     part_done: bool,
     logged: Logged,
-    facts: ItemFacts | None = None,
     elsewhere: Sequence[int] = (),
 ) -> None:
     """Store which tasks an entry closes, and what they cover; part-done work closes nothing.
 
-    `facts` spares loading them for each of many entries. Tasks done `elsewhere`, by another entry of the same
-    day, are not covered once more.
+    `facts` are those of its item, this entry's figures among them. Tasks done `elsewhere`, by another entry of the
+    same day, are not covered once more.
     """
-    if not task_ids:
-        return
-    facts = facts or item_facts(session.connection(), entry.on, [item.id])[0]
     tasks = {task.id: task for task in facts.tasks}
     covers = {task.id: task.version_on(entry.on).covers for task in facts.tasks}
+    named = [*task_ids, *elsewhere]
     for task_id in dict.fromkeys(task_ids):
         task = tasks[task_id]
         version = task.version_on(entry.on)
@@ -127,9 +132,10 @@ def close_tasks(
         session.add(row)
         session.flush()
         logged.closed.append(task.name)
+        logged.notes.extend(_say_no_figure(facts, task, version, entry))
         if work.note:
             logged.notes.append(_say_note(task, work))
-        _cover(session, facts, tasks, closure(covers, task_id), [*task_ids, *elsewhere], entry, row, logged)
+        _cover(session, facts, tasks, closure(covers, task_id), named, entry, row, logged)
     session.flush()
 
 
@@ -189,6 +195,23 @@ def _preview(facts: ItemFacts, task: Task, version: Version, entry: LogEntry) ->
     entries = tuple(sorted((*facts.done.get(task.id, ()), done), key=lambda one: (one.on, one.number)))
     past = replay(replace(facts, done={**facts.done, task.id: entries}), task).past
     return next(work for work in past if work.number == entry.id)
+
+
+def _say_no_figure(facts: ItemFacts, task: Task, version: Version, entry: LogEntry) -> list[str]:
+    """Say what work counts from that has no figure, and no later reading yet to tell what the dial showed."""
+    lives = entry_lives(facts.counters, own_readings(facts.counters), entry.id, entry.on)
+    notes = []
+    for trigger in version.counted:
+        counter = facts.counters.get(trigger.kind)
+        latest = counter.latest if counter is not None else None
+        is_counting = counter is not None and counter.life_at(Decimal(0), entry.on) is not None
+        if latest is not None and is_counting and latest.on < entry.on and lives[trigger.kind].approximate:
+            shown = say_amount(latest.life, unit_of(facts, trigger.kind))
+            notes.append(
+                f"{task.name} counts from ~{shown}, the reading of {latest.on}, until a later one is there;"
+                " correct the entry and give --at if the dial was seen"
+            )
+    return notes
 
 
 def _say_note(task: Task, work: PastWork) -> str:

@@ -157,9 +157,9 @@ def say_collision(item: FoundItem, meter: FoundMeter, new: NewReading, collision
     )
 
 
-def tag_of_reading(session: "Session", reading_id: int) -> str:
-    """Give the tag of whose meter a reading was read off; refuses a number that is no reading."""
-    return _owner(session, _reading(session, reading_id)).tag
+def item_of_reading(session: "Session", reading_id: int) -> FoundItem:
+    """Give whose meter a reading was read off; refuses a number that is no reading."""
+    return _owner(session, _reading(session, reading_id))
 
 
 def void_reading(session: "Session", reading_id: int, why: str, on: date) -> None:
