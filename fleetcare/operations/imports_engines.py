@@ -54,7 +54,10 @@ def _add(session: "Session", row: Row[EngineDraft], today: date) -> None:
     try:
         add_item(session, row.draft, today)
     except FleetError as error:
-        raise in_columns(row.number, error, EngineDraft, otherwise="tag") from None
+        # What names no option is about the figures it starts from, where there are any.
+        raise in_columns(
+            row.number, error, EngineDraft, otherwise="start_at" if row.draft.start_at else "tag"
+        ) from None
 
 
 def _is_there(session: "Session", row: Row[EngineDraft], imported: Imported) -> bool:
