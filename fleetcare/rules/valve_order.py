@@ -19,7 +19,8 @@ from fractions import Fraction
 
 from fleetcare.domain.quantities import plain
 from fleetcare.errors import Refused
-from fleetcare.rules.bounds import check_between
+from fleetcare.rules.bounds import check_between, check_within
+from fleetcare.rules.geometry import MOST_CYLINDERS
 
 TURN = 360
 CYCLE = 720
@@ -89,8 +90,9 @@ def firing_angles(order: Sequence[int], intervals: Sequence[Decimal] | None = No
 
     `intervals` are the degrees from each firing to the next, the last one back to the first; without them the engine
     is taken to fire evenly, every 720/n. Raises Refused unless there is one above 0 for each cylinder and they sum
-    to 720.
+    to 720, and for more cylinders than any engine has.
     """
+    check_within("number of cylinders", Decimal(len(order)), MOST_CYLINDERS)
     if intervals is None:
         steps = [Fraction(CYCLE, len(order))] * len(order)
     else:

@@ -109,7 +109,7 @@ def test_no_sum_loads_a_database_a_form_or_a_screen() -> None:
     """In one child process, as what this one has loaded says nothing."""
     look = f"""
 import sys
-from fleetcare.__main__ import main as run
+from fleetcare.__main__ import main
 statuses = [main(("calc", *words.split())) for words in {EVERY_SUM.split(chr(10))!r} if words]
 heavy = {{"textual", "rich", "sqlmodel", "sqlalchemy", "alembic", "pydantic", "dateutil"}}
 print(statuses, sorted(heavy & {{name.partition(".")[0] for name in sys.modules}}), file=sys.stderr)

@@ -43,6 +43,12 @@ def test_intervals_that_do_not_fit_the_engine_are_refused(intervals: tuple[int, 
         firing_angles((1, 2), [Decimal(interval) for interval in intervals])
 
 
+def test_more_cylinders_than_any_engine_has_are_refused() -> None:
+    assert len(firing_angles(range(1, 65))) == 64
+    with pytest.raises(Refused, match="number of cylinders 65 cannot be right"):
+        firing_angles(range(1, 66))
+
+
 def test_an_odd_number_of_cylinders_has_no_mates() -> None:
     assert mates(firing_angles((1, 2, 4, 5, 3))) == ()
 
