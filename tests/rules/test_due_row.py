@@ -138,6 +138,25 @@ def test_the_point_in_force_and_the_own_one_stand_apart_while_deferred() -> None
     assert cells(found, "deferred_until", "reason") == ["2026-06-01 / 1300 h", "parts on order"]
 
 
+def deferred_to_life(km: str) -> Task:
+    origin = last_done("2026-01-01", distance="14484.096")
+    until = replace(a_deferral(), until_life={Kind.DISTANCE: Decimal(km)})
+    return a_task(every("3000mi"), origin=origin, deferrals=(until,))
+
+
+def test_a_figure_it_is_deferred_to_is_said_as_the_meter_shows_it() -> None:
+    found = row(deferred_to_life("19795.735872"), counters={Kind.DISTANCE: miles(9500, modulus=10_000)})
+    assert cells(found, "next_due_at", "next_due_dial", "deferred_until") == [
+        Decimal("12300.5"),
+        Decimal("2300.5"),
+        "2300.5 mi",
+    ]
+
+
+def test_a_figure_it_is_deferred_to_is_a_life_total_where_no_meter_counts() -> None:
+    assert row(deferred_to_life("19800"), counters={}).deferred_until == "19800 km"
+
+
 def test_a_counted_line_held_back_to_a_day_shows_that_day_until_it_has_ended() -> None:
     task = a_task(every("250h"), origin=last_done("2026-01-01", hours=1000), deferrals=(a_deferral("2026-05-20"),))
     found = row(task, hours=1260)

@@ -133,12 +133,14 @@ def _unit(decider: TriggerLine | None, facts: ItemFacts) -> str:
 
 
 def _deferred_until(line: DueLine, facts: ItemFacts) -> str:
+    """Say the ends of a deferral: a day, and figures as the meter shows them, life totals where none does."""
     if line.deferral is None:
         return ""
     ends = [line.deferral.until_on.isoformat()] if line.deferral.until_on is not None else []
     for kind, life in line.deferral.until_life.items():
-        unit = unit_of(facts, kind)
-        ends.append(f"{plain(from_base(life, unit))} {unit}")
+        unit, counter = unit_of(facts, kind), facts.counters.get(kind)
+        dial = counter.dial_of(life) if counter is not None else None
+        ends.append(f"{plain(from_base(life, unit) if dial is None else dial)} {unit}")
     return " / ".join(ends)
 
 
