@@ -150,6 +150,8 @@ def _say_sum(line: DueLine, trigger: TriggerLine, next_point: NextPoint, facts: 
     begin = start.isoformat() if isinstance(start, date) else f"{approximate}{say_amount(start or Decimal(0), unit)}"
     own = next_point.point
     if isinstance(own, date):
+        if line.called_because:
+            return f"raised {begin}: due {own.isoformat()}"
         text = f"{say_trigger(trigger.trigger, unit)}, from {begin}: due {own.isoformat()}"
         if next_point.nominal is not None and next_point.opens is not None:
             text += f" (nominal {next_point.nominal.isoformat()}, window opens {next_point.opens.isoformat()})"

@@ -150,6 +150,7 @@ def test_an_ended_deferral_says_that_no_grace_is_left() -> None:
 def test_a_call_says_why_it_was_raised() -> None:
     task = a_task(on_condition=True, calls=(Call(1, day("2026-04-30"), day("2026-05-10"), "leaking pump"),))
     assert said(facts(task, on="2026-05-01"), "raised because") == "leaking pump"
+    assert said(facts(task, on="2026-05-01"), "calendar") == "raised 2026-04-30: due 2026-05-10"
 
 
 def test_demands_needs_parts_labour_caution_and_source_close_the_working() -> None:
