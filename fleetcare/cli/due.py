@@ -6,7 +6,7 @@ from typing import TYPE_CHECKING
 
 from fleetcare.cli import output
 from fleetcare.cli.parser import Commands, whole
-from fleetcare.cli.shop import context_of
+from fleetcare.cli.shop import context_of, null
 from fleetcare.domain.lines import State
 
 if TYPE_CHECKING:
@@ -73,11 +73,7 @@ def _csv(rows: "Sequence[DueRow]") -> str:
 def _json(rows: "Sequence[DueRow]") -> str:
     from fleetcare.operations.due import COLUMNS
 
-    return output.json_text([{name: _null(getattr(row, name)) for name in COLUMNS} for row in rows])
-
-
-def _null(value: object) -> object:
-    return None if value == "" else value
+    return output.json_text([{name: null(getattr(row, name)) for name in COLUMNS} for row in rows])
 
 
 def _table(rows: "Sequence[DueRow]") -> str:

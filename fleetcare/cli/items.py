@@ -4,8 +4,9 @@ import argparse
 
 from fleetcare.cli import output
 from fleetcare.cli.parser import CommandParser, Commands
-from fleetcare.cli.shop import add_options, changes_of, context_of, option_label, options_of, say_moved
+from fleetcare.cli.shop import add_options, changes_of, context_of, null, option_label, options_of, say_moved
 from fleetcare.cli.spells import add_spell_commands
+from fleetcare.domain.quantities import plain, tenth
 from fleetcare.errors import Refused
 
 _SHARED = {
@@ -120,10 +121,15 @@ def _list(given: argparse.Namespace) -> None:
     with context.read() as connection:
         rows = list_items(connection, context.today(), engines=given.is_engine)
     if given.json:
-        output.deliver(output.json_text(rows))
+        output.deliver(output.json_text([{name: null(value) for name, value in row.items()} for row in rows]))
         return
     if not rows:
         output.say("None yet.")
         return
-    headers = list(rows[0])
-    output.say(output.table([name.replace("_", " ") for name in headers], [list(row.values()) for row in rows]))
+    cells = [[_say_reads(value) if name == "last_read" else value for name, value in row.items()] for row in rows]
+    output.say(output.table([name.replace("_", " ") for name in rows[0]], cells))
+
+
+def _say_reads(reads: object) -> str:
+    assert isinstance(reads, list)
+    return ", ".join(f"{plain(tenth(read['value']))} {read['unit']} on {read['on']}" for read in reads)

@@ -39,6 +39,11 @@ def changes_of(given: argparse.Namespace, *but: str) -> dict[str, object]:
     return changes
 
 
+def null(value: object) -> object:
+    """Give a value for JSON, where nothing to say is null."""
+    return None if value == "" else value
+
+
 def option_label(field: str) -> str:
     """Name a draft's field as the command line does."""
     return field.upper() if field in {"tag", "value", "entry"} else "--" + field.replace("_", "-")

@@ -4,7 +4,8 @@ import argparse
 
 from fleetcare.cli import output
 from fleetcare.cli.parser import CommandParser, Commands, day
-from fleetcare.cli.shop import add_options, context_of, option_label, options_of, say_line, say_moved
+from fleetcare.cli.shop import add_options, context_of, label_with, options_of, say_line, say_moved
+from fleetcare.cli.spells import say_pausing
 
 _REPEATED = {
     "--every": ("INTERVAL", "such as 250h, 10000km or 12mo; once for each kind"),
@@ -46,7 +47,7 @@ def add_commands(commands: Commands) -> None:
     add = task.add_parser("add", help="add a task to an engine or machine")
     _add_task_options(add, unset=False)
     add.set_defaults(run=_add)
-    edit = task.add_parser("edit", help="change a task from a day on")
+    edit = task.add_parser("edit", help="change a task from a day on", epilog="An empty value takes an option away.")
     _add_task_options(edit, unset=None)
     edit.add_argument("--without", action="append", metavar="KIND", help="drop the interval of this kind")
     edit.add_argument("--on", type=day, metavar="DATE", help="first day of the change, else the as-of day")
@@ -81,37 +82,48 @@ def _add(given: argparse.Namespace) -> None:
     from fleetcare.drafts.tasks import TaskDraft
     from fleetcare.operations.due import watch_moves
     from fleetcare.operations.find import find_item
+    from fleetcare.operations.listing import pausing_tasks
     from fleetcare.operations.tasks import add_task
 
     context = context_of(given)
-    draft = read_draft(TaskDraft, options_of(given, "tag"), option_label)
+    draft = read_draft(TaskDraft, options_of(given, "tag"), label_with(name="TASK"))
     with context.write() as session:
         item = find_item(session.connection(), given.tag)
         with watch_moves(session, item.tag, context.today()) as moves:
             add_task(session, item, draft, context.today())
+        pausing = pausing_tasks(session.connection(), item.tag, context.today())
     output.say(f"{draft.name} added to {item.tag}.")
-    for move in moves.moved:
-        if move.before is None and move.after is not None:
-            output.say(f"{item.tag}  {move.after.task}: {say_line(move.after)}")
+    if draft.name in pausing:
+        say_pausing(draft.name)
+    new = [move.after for move in moves.moved if move.before is None and move.after is not None]
+    for row in new:
+        output.say(f"{item.tag}  {row.task}: {say_line(row)}")
+    say_moved([move for move in moves.moved if move.before is not None])
 
 
 def _edit(given: argparse.Namespace) -> None:
     from fleetcare.drafts.fields import parse_kind
     from fleetcare.operations.due import watch_moves
     from fleetcare.operations.find import find_item
+    from fleetcare.operations.listing import pausing_tasks
     from fleetcare.operations.tasks import edit_task
 
     context = context_of(given)
     changes = {
-        name: value for name, value in options_of(given, "tag", "name", "without", "on").items() if value is not None
+        name: [] if value == [""] else value
+        for name, value in options_of(given, "tag", "name", "without", "on").items()
+        if value is not None
     }
     without = [parse_kind(kind) for kind in given.without or ()]
     on = given.on or context.today()
     with context.write() as session:
         item = find_item(session.connection(), given.tag)
         with watch_moves(session, item.tag, context.today()) as moves:
-            edit_task(session, item, given.name, changes, without, on, context.today())
-    output.say(f"{given.name} of {item.tag} changed from {on}.")
+            name = edit_task(session, item, given.name, changes, without, on, context.today())
+        pausing = pausing_tasks(session.connection(), item.tag, context.today())
+    output.say(f"{name} of {item.tag} changed{'' if changes.keys() == {'last_done'} else f' from {on}'}.")
+    if changes.get("pause_while_laid_up") and name in pausing:
+        say_pausing(name)
     say_moved(moves.moved)
 
 
@@ -122,19 +134,24 @@ def _list(given: argparse.Namespace) -> None:
     with context.read() as connection:
         rows = list_tasks(connection, given.tag, context.today())
     if given.json:
-        output.deliver(output.json_text(rows))
+        output.deliver(output.json_text([row.options for row in rows]))
     elif rows:
-        output.say(output.table([name.replace("_", " ") for name in rows[0]], [list(row.values()) for row in rows]))
+        cells = [[row.name, row.every, row.work, row.also, row.source] for row in rows]
+        output.say(output.table(["task", "every", "work", "also", "source"], cells))
     else:
         output.say("None yet.")
 
 
 def _remove(given: argparse.Namespace) -> None:
+    from fleetcare.operations.due import watch_moves
     from fleetcare.operations.find import find_item
     from fleetcare.operations.tasks import remove_task
 
     context = context_of(given)
+    on = given.on or context.today()
     with context.write() as session:
         item = find_item(session.connection(), given.tag)
-        remove_task(session, item, given.name, given.on or context.today())
-    output.say(f"{given.name} of {item.tag} ended; its history stays.")
+        with watch_moves(session, item.tag, context.today()) as moves:
+            name = remove_task(session, item, given.name, on, context.today())
+    output.say(f"{name} of {item.tag} ended on {on}; its history stays.")
+    say_moved(moves.moved)

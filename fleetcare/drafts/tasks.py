@@ -9,7 +9,17 @@ from pydantic import model_validator
 
 from fleetcare.domain.quantities import Amount, Figure, Kind, Span
 from fleetcare.domain.schedules import Anchor, Combine, Period
-from fleetcare.drafts.fields import DaysOrDials, Hours, Intervals, Note, Parts, SpanField, Text, Texts
+from fleetcare.drafts.fields import (
+    DaysOrDials,
+    Hours,
+    Intervals,
+    Note,
+    Parts,
+    SpanField,
+    Text,
+    Texts,
+    parse_day_or_dial,
+)
 from fleetcare.drafts.reading_in import Draft
 from fleetcare.errors import Refused
 from fleetcare.rules.due.calendar import period_span
@@ -61,7 +71,6 @@ class TaskDraft(Draft):
     part: Parts = ()
     caution: Note = ""
     source: Note = ""
-    on: date | None = None
 
     @model_validator(mode="after")
     def _check(self) -> Self:
@@ -100,6 +109,18 @@ class TaskDraft(Draft):
             month_end=self.through_month_end and is_calendar,
             grid_origin=next((o for o in self.grid_origin if _origin_binds(o, kind)), None),
         )
+
+
+class LastDoneDraft(Draft):
+    """When a task was last done, before the log began: a day, a figure of each dial, or both."""
+
+    last_done: DaysOrDials
+
+
+def origin_kind(text: str) -> Kind | None:
+    """Give the kind a grid's origin binds to, None for a bare figure."""
+    origin = parse_day_or_dial(text)
+    return Kind.CALENDAR if isinstance(origin, date) else origin.kind
 
 
 def kind_of(interval: Amount | Span) -> Kind:

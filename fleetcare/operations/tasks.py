@@ -18,9 +18,10 @@ from fleetcare.domain.quantities import (
     plain,
 )
 from fleetcare.drafts.reading_in import read_draft
-from fleetcare.drafts.tasks import TaskDraft, TriggerDraft, kind_of
-from fleetcare.errors import Refused
+from fleetcare.drafts.tasks import LastDoneDraft, TaskDraft, TriggerDraft, kind_of, origin_kind
+from fleetcare.errors import FleetError, Refused
 from fleetcare.operations.find import FoundItem, find_meters, find_task
+from fleetcare.operations.log import refuse_future
 from fleetcare.operations.rows import fetch
 from fleetcare.operations.starts import set_last_done
 from fleetcare.rules.due.covering import find_cycle
@@ -57,31 +58,37 @@ def edit_task(
     without: Sequence[Kind],
     on: date,
     today: date,
-) -> int:
-    """Make a new version of a task from a day on: what is given changes, what is left out stays.
+) -> str:
+    """Make a new version of a task from a day on, and give its name: what is given changes, what is left out stays.
 
-    An interval given replaces the one of its kind; `without` drops the intervals of some kinds.
+    An interval given replaces the one of its kind; `without` drops the intervals of some kinds with what binds to
+    them. A last-done alone makes no version. Refuses an edit that says nothing.
     """
     task_id = find_task(session.connection(), item, name)
-    stored = _stored(session, task_id, on)
-    merged: dict[str, object] = {**stored, **{key: value for key, value in changes.items() if key not in _BOUND}}
-    for field in _BOUND:
-        merged[field] = _merged(stored[field], changes.get(field), without)
-    merged["name"] = name
-    draft = read_draft(TaskDraft, merged, lambda field: "--" + field.replace("_", "-"))
-    kept = None if changes.get("grid_origin") else _grid_on(session, task_id, on)
-    _add_version(session, item, task_id, draft, on, grid_on=kept or today)
-    if draft.last_done:
-        set_last_done(session, item, task_id, draft.last_done, today)
-    return task_id
+    task = session.get_one(Task, task_id)
+    if not changes and not without:
+        raise Refused("nothing to edit", "give what should change, such as --every 250h")
+    if without or changes.keys() - {"last_done"}:
+        stored = _without(_stored(session, task_id, on), without, task.name)
+        merged = stored | {key: value for key, value in changes.items() if key not in _BOUND} | {"name": task.name}
+        for field in _BOUND:
+            merged[field] = _merged(field, stored[field], changes.get(field))
+        draft = read_draft(TaskDraft, merged, _label)
+        kept = None if changes.get("grid_origin") else _grid_on(session, task_id, on)
+        _add_version(session, item, task_id, draft, on, grid_on=kept or today)
+    if changes.get("last_done"):
+        told = read_draft(LastDoneDraft, {"last_done": changes["last_done"]}, _label)
+        set_last_done(session, item, task_id, told.last_done, today)
+    return task.name
 
 
-def remove_task(session: "Session", item: FoundItem, name: str, on: date) -> int:
-    """End a task from a day on; its history stays."""
-    task_id = find_task(session.connection(), item, name)
-    session.get_one(Task, task_id).removed_on = on
+def remove_task(session: "Session", item: FoundItem, name: str, on: date, today: date) -> str:
+    """End a task from a day on, and give its name; its history stays. Refuses a day that has not come yet."""
+    refuse_future(on, today)
+    task = session.get_one(Task, find_task(session.connection(), item, name))
+    task.removed_on = on
     session.flush()
-    return task_id
+    return task.name
 
 
 def _add_version(
@@ -229,11 +236,30 @@ def _stored(session: "Session", task_id: int, on: date) -> dict[str, Any]:
     }
 
 
-def _merged(stored: Sequence[str], given: object, without: Sequence[Kind]) -> list[str]:
+def _without(stored: dict[str, Any], kinds: Sequence[Kind], name: str) -> dict[str, Any]:
+    """Take the intervals of some kinds out of a draft's values, with all that binds to them."""
+    there = {kind_of(parse_interval(text)) for text in stored["every"]}
+    for kind in kinds:
+        if kind not in there:
+            raise Refused(f"{name} has no interval counting {kind}", "leave out that --without")
+    left = {field: [t for t in stored[field] if kind_of(parse_interval(t)) not in kinds] for field in _BOUND}
+    left["grid_origin"] = [text for text in stored["grid_origin"] if origin_kind(text) not in kinds]
+    forms = ("once_each", "window", "through_month_end") if Kind.CALENDAR in kinds else ()
+    return {**stored, **left, **dict.fromkeys(forms)}
+
+
+def _merged(field: str, stored: Sequence[str], given: object) -> list[str]:
     """Lay intervals over stored ones: each given one replaces the one of its kind."""
     fresh = [str(text) for text in given] if isinstance(given, list | tuple) else []
-    replaced = {kind_of(parse_interval(text)) for text in fresh} | set(without)
+    try:
+        replaced = {kind_of(parse_interval(text)) for text in fresh}
+    except FleetError as error:
+        raise type(error)(f"{_label(field)}: {error.detail}", error.remedy) from None
     return [text for text in stored if kind_of(parse_interval(text)) not in replaced] + fresh
+
+
+def _label(field: str) -> str:
+    return "--" + field.replace("_", "-")
 
 
 def _default_deferrable(version: TaskVersion, once_each: str | None) -> bool:

@@ -180,7 +180,7 @@ def test_a_task_that_was_ended_does_not_stand_in_the_way(ctx: Context, ditch: st
     with ctx.write() as session:
         item = find_item(session.connection(), "P-01")
         add_task(session, item, read_draft(TaskDraft, {"name": "Oil", "every": ["100h"]}), TODAY)
-        remove_task(session, item, "Oil", TODAY)
+        remove_task(session, item, "Oil", TODAY, TODAY)
     (applied,) = apply(ctx, ditch, "P-01")
     assert applied.added == ("Oil", "Lash", "Compression", "Big service")
 
