@@ -40,6 +40,7 @@ class Work:
 
     @property
     def on(self) -> date:
+        """The day it was done."""
         return self.draft.on
 
     @property
@@ -49,6 +50,7 @@ class Work:
 
     @property
     def key(self) -> str:
+        """What makes it the same row whenever it comes again."""
         return f"task {self.task_id} {self.on} {' '.join(sorted(self.shown))}".rstrip()
 
     @property

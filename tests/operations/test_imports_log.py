@@ -1,27 +1,24 @@
 """Work out of a file: applied in the order it was done, all or none, and nothing a second time."""
 
 from datetime import date
+from decimal import Decimal
 from itertools import permutations
 
 import pytest
 
 from fleetcare.context import Context
-from fleetcare.drafts.reading_in import read_draft
-from fleetcare.drafts.work import CorrectionDraft, LogDraft
-from fleetcare.operations.correct import correct_entry
-from fleetcare.operations.log import record_work
 from fleetcare.operations.rows import fetch
 from fleetcare.operations.upkeep import check
 from tests.operations.importing import (
-    TODAY,
-    beginnings,
+    correct,
     engine,
+    entries,
+    log,
     points,
-    reading,
     readings,
-    refusals,
     take_in,
     task,
+    yard_with_a_log,
 )
 
 SHORT = "engine,task,on,at"
@@ -30,45 +27,8 @@ FULL = "engine,task,on,at,by,note"
 
 @pytest.fixture
 def yard(ctx: Context) -> Context:
-    """P-01, read at 1500 h on 1 May 2026, with four tasks that nobody knows when were last done."""
-    engine(ctx, "P-01", meter=["hours"])
-    reading(ctx, "P-01", "2026-05-01", "1500")
-    task(ctx, "P-01", "Oil", every=["250h", "12mo"])
-    task(ctx, "P-01", "Lash", every=["1000h"], needs_sheet="lash")
-    task(ctx, "P-01", "Belts", every=["24mo"])
-    task(ctx, "P-01", "Big service", every=["1000h"], covers=["Oil", "Lash", "Belts"])
-    return ctx
-
-
-def entries(ctx: Context) -> list[tuple[int, str, str, str, str]]:
-    """Every entry as number, day, tasks with covered ones in brackets, person and note."""
-    with ctx.read() as connection:
-        rows = fetch(
-            connection,
-            "select entry.id, entry.\"on\", coalesce(person.name, ''), note from log_entry entry"
-            " left join person on person.id = entry.person_id order by entry.id",
-        )
-        tasks = fetch(
-            connection,
-            "select entry_id, name, covered_by_id from log_task join task on task.id = task_id order by log_task.id",
-        )
-    names: dict[int, list[str]] = {}
-    for entry, name, covered in tasks:
-        names.setdefault(entry, []).append(f"({name})" if covered else name)
-    return [(number, on, " ".join(names.get(number, ())), by, note) for number, on, by, note in rows]
-
-
-def log(ctx: Context, on: str, *names: str, **values: object) -> int:
-    """Log work by hand and give the entry's number."""
-    with ctx.write() as session:
-        draft = read_draft(LogDraft, {"tag": "P-01", "task": list(names), "on": on, **values})
-        return record_work(session, draft, TODAY).entries[0][0]
-
-
-def correct(ctx: Context, entry: int, **values: object) -> None:
-    """Correct an entry by hand."""
-    with ctx.write() as session:
-        correct_entry(session, read_draft(CorrectionDraft, {"entry": entry, **values}), TODAY)
+    """P-01 with its tasks, nothing logged yet."""
+    return yard_with_a_log(ctx)
 
 
 def test_a_row_is_an_entry_with_its_figure_as_a_reading(yard: Context) -> None:
@@ -76,7 +36,7 @@ def test_a_row_is_an_entry_with_its_figure_as_a_reading(yard: Context) -> None:
     assert (imported.stored, imported.known) == (["P-01  oil on 2026-04-20 at 1480 h"], 0)
     assert entries(yard) == [(1, "2026-04-20", "Oil", "Fenn", "[/b]")]
     assert ("P-01", "2026-04-20", "1480h") in readings(yard)
-    assert points(yard)["P-01 Oil"] == (1730, date(2027, 4, 20))
+    assert points(yard)["P-01 Oil"] == (Decimal(1730), date(2027, 4, 20))
     assert check(yard).problems == ()
 
 
@@ -124,7 +84,7 @@ def test_the_order_of_rows_changes_nothing(yard: Context, order: tuple[int, ...]
         (3, "2026-03-10", "Belts"),
         (4, "2026-03-10", "Oil"),
     ]
-    assert points(yard)["P-01 Oil"] == (1500, date(2027, 3, 10))
+    assert points(yard)["P-01 Oil"] == (Decimal(1500), date(2027, 3, 10))
 
 
 # The big job and the small ones
@@ -215,98 +175,6 @@ def test_the_same_row_twice_in_a_file_is_one(yard: Context) -> None:
     assert (len(imported.stored), imported.known) == (1, 1)
 
 
-# Refused by row
-
-
-@pytest.mark.parametrize(
-    ("row", "column"),
-    [
-        ("P-01,Oil,2026-04-20,1481,Fenn,", "at"),
-        ("P-01,Oil,2026-04-20,,Fenn,", "at"),
-        ("P-01,Oil,2026-04-20,1480,Quill,", "by"),
-        ("P-01,Oil,2026-04-20,1480,Fenn,other", "note"),
-    ],
-)
-def test_two_rows_that_disagree_about_the_same_work_are_refused(yard: Context, row: str, column: str) -> None:
-    assert refusals(yard, "log", FULL, "P-01,Oil,2026-04-20,1480,Fenn,", row) == [
-        f"row 3, column {column}: Oil of P-01 on 2026-04-20 is in row 2 too;"
-        " keep one; what was done twice that day is logged with fleetcare log P-01"
-    ]
-
-
-@pytest.mark.parametrize("figures", [{}, {"at": ["1470h"]}])
-def test_a_row_with_another_figure_than_the_entry_about_it_names_that_entry(
-    yard: Context, figures: dict[str, object]
-) -> None:
-    reading(yard, "P-01", "2026-04-20", "1465")
-    number = log(yard, "2026-04-20", "Oil", **figures)
-    assert refusals(yard, "log", SHORT, "P-01,Oil,2026-04-20,1480") == [
-        f"row 2, column at: Oil of P-01 on 2026-04-20 is entry {number} already, with other figures or none;"
-        f" leave the row out, or first give fleetcare correct {number} --at 1480h"
-    ]
-    correct(yard, number, at=["1480h"])
-    assert take_in(yard, "log", SHORT, "P-01,Oil,2026-04-20,1480").known == 1
-
-
-def test_a_task_that_needs_a_sheet_is_refused_with_the_remedy_of_the_log_command(yard: Context) -> None:
-    lines = refusals(yard, "log", SHORT, "P-01,Lash,2026-04-20,1480", "P-01,Oill,2026-04-20,1480")
-    wanted = [
-        "row 2, column task: Lash closes only with its lash sheet; give --part-done to keep a note",
-        "row 3, column task: P-01 has no task 'Oill'; did you mean Oil?",
-    ]
-    assert beginnings(lines, wanted) == wanted
-
-
-def test_a_figure_that_breaks_with_the_past_names_the_stored_reading(yard: Context) -> None:
-    assert refusals(yard, "log", SHORT, "P-01,Oil,2026-04-20,1501h", "P-01,Belts,2026-04-20,1501") == [
-        f"row {number}, column at: 1501 h on 2026-04-20 does not fit reading 1 of P-01 (1500 h on 2026-05-01):"
-        " lower by 1 h; check it; if it is right, first give fleetcare reading P-01 1501h --on 2026-04-20 --sure"
-        for number in (2, 3)
-    ]
-
-
-def test_figures_of_rows_that_cannot_both_be_true_are_refused(yard: Context) -> None:
-    (line,) = refusals(yard, "log", SHORT, "P-01,Oil,2026-04-20,1400", "P-01,Belts,2026-04-10,1410")
-    assert line.startswith(
-        "row 3, column at: 1410 h on 2026-04-10 does not fit row 2 (1400 h on 2026-04-20): lower by 10"
-    )
-
-
-def test_work_no_reading_tells_a_figure_for_is_refused_by_row_and_needs_none_if_it_counts_none(yard: Context) -> None:
-    lines = refusals(yard, "log", SHORT, "P-01,Belts,2020-01-01,", "P-01,Oil,2020-01-01,")
-    wanted = ["row 3, column at: Oil counts hours, and "]
-    assert beginnings(lines, wanted) == wanted
-    assert lines[0].endswith("give the dial figure with column at")
-
-
-def test_every_bad_cell_has_a_line_of_its_own(yard: Context) -> None:
-    lines = refusals(
-        yard,
-        "log",
-        FULL,
-        "P-1,Oil,2027-01-01,x,,",
-        "P-1,Oil,2027-01-01,1480,,",
-        "P-01,Oill,2027-01-01,1480km,,",
-        "P-01,,2026-02-30,,,",
-        "P-01,Oil,2026-04-20,1480h;1481,,",
-        "P-01,Oil,2026-04-21",
-    )
-    wanted = [
-        "row 2, column at: 'x' is not a figure",
-        "row 3, column engine: no engine or machine has the tag 'P-1'; did you mean P-01?",
-        "row 3, column on: 2027-01-01 has not come yet, today counts as 2026-05-01",
-        "row 4, column on: 2027-01-01 has not come yet",
-        "row 4, column task: P-01 has no task 'Oill'",
-        "row 4, column at: no meter counts distance of P-01 on that day",
-        "row 5, column task: it is missing; give it",
-        "row 5, column on: there is no day 2026-02-30",
-        "row 6, column at: it names two figures of hours; give one of each meter",
-        "row 7: it has 3 cells, the header 6",
-    ]
-    assert beginnings(lines, wanted) == wanted
-    assert entries(yard) == []
-
-
 def test_a_year_of_rounds_of_many_engines_comes_in_at_once(ctx: Context) -> None:
     rows = []
     for number in range(20):
@@ -317,4 +185,4 @@ def test_a_year_of_rounds_of_many_engines_comes_in_at_once(ctx: Context) -> None
     imported = take_in(ctx, "log", SHORT, *reversed(rows))
     assert (len(imported.stored), len(imported.moved)) == (240, 20)
     assert take_in(ctx, "log", SHORT, *rows).known == 240
-    assert set(points(ctx).values()) == {(530, None)}
+    assert set(points(ctx).values()) == {(Decimal(530), None)}

@@ -1,5 +1,6 @@
 """Readings out of a file: all or none, whatever their order, and nothing a second time."""
 
+from decimal import Decimal
 from itertools import permutations
 
 import pytest
@@ -136,7 +137,7 @@ def test_lines_that_moved_are_told(yard: Context) -> None:
     (moved,) = imported.moved
     assert moved.before is not None
     assert moved.after is not None
-    assert (moved.before.next_due_at, moved.after.next_due_at) == (before["P-01 Oil"][0], 1150)
+    assert (moved.before.next_due_at, moved.after.next_due_at) == (before["P-01 Oil"][0], Decimal(1150))
 
 
 # Refused by row
