@@ -36,6 +36,7 @@ def write_new(folder: Path, name: str, text: str) -> Path:
     """
     wanted = folder / name
     try:
+        wanted = wanted.absolute()  # fails where the current folder is gone
         for number in range(1, _MOST_NAMES):
             path = wanted if number == 1 else wanted.with_stem(f"{wanted.stem}-{number}")
             try:

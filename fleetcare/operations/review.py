@@ -78,6 +78,12 @@ class Wanted:
     text: str = ""
     chosen: frozenset[tuple[Facet, str]] = frozenset()
 
+    @property
+    def words(self) -> list[str]:
+        """What is wanted, in words: chosen values in the order of the facets, then the text in quotes."""
+        chosen = [(facet, value) for facet in Facet for value in sorted(v for f, v in self.chosen if f is facet)]
+        return [value or f"no {facet}" for facet, value in chosen] + ([f'"{self.text}"'] if self.text else [])
+
     def takes(self, line: ReviewLine) -> bool:
         """Tell whether a line is wanted."""
         for facet in {facet for facet, _ in self.chosen}:

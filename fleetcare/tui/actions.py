@@ -62,6 +62,8 @@ ACTIONS = (
     Action("working", "escape", "back", "back", "go back to where you came from"),
     Action("working", "e", "item", "engine", "open the page of the line's engine or machine"),
     Action("narrow", "enter,space", "choose", "choose", "choose what is under the cursor, or no longer"),
+    Action("narrow", "n", "to_group(1)", "next group", "go to the next heading", in_foot=False),
+    Action("narrow", "p", "to_group(-1)", "group before", "go to the heading before", in_foot=False),
     Action("narrow", "a", "none", "none", "choose nothing, so that all lines show"),
     Action("narrow", "escape,f", "back", "done", "show the lines chosen"),
     Action("keys", "escape,question_mark", "back", "back", "go back to where you came from"),

@@ -10,6 +10,7 @@ from textual.widget import Widget
 
 from fleetcare.domain.printable import clean
 from fleetcare.tui.actions import actions_of, bindings, called
+from fleetcare.tui.widgets.long_list import LongList
 from fleetcare.tui.widgets.text import columns_of, fit, wrap
 
 if TYPE_CHECKING:
@@ -136,6 +137,10 @@ class FramedScreen(Screen[Any]):
     def say(self, *lines: str, is_wrong: bool = False) -> None:
         """Say something on the notice line; control characters show."""
         self.query_one(Notice).say(*(clean(line) for line in lines), is_wrong=is_wrong)
+
+    def action_to_group(self, step: int) -> None:
+        """Go to another heading of the list."""
+        self.query_one(LongList).action_to_section(step)
 
     def action_back(self) -> None:
         """Go back to the screen before."""

@@ -119,12 +119,16 @@ class DueScreen(FindingScreen):
         """How the lines are arranged."""
         return list(Order)[self.turns % len(Order)]
 
+    @property
+    def wanted(self) -> Wanted:
+        """What of the lines to show."""
+        return Wanted(self.text, self.chosen)
+
     def rearrange(self) -> None:
         """Show the lines wanted, under the headings of the order."""
         if self.review is None:
             return
-        wanted = Wanted(self.text, self.chosen)
-        parts = arrange(filter(wanted.takes, self.review.lines), self.order, self.review.on)
+        parts = arrange(filter(self.wanted.takes, self.review.lines), self.order, self.review.on)
         self.shown = tuple(line for part in parts for line in part.lines)
         sections = [
             Section(
@@ -184,10 +188,6 @@ class DueScreen(FindingScreen):
         self.turns += 1
         self.rearrange()
 
-    def action_to_group(self, step: int) -> None:
-        """Go to another heading."""
-        self.rows.action_to_section(step)
-
     def action_csv(self) -> None:
         """Write the lines shown, and say where."""
         from fleetcare.operations.due_file import write_shown
@@ -195,7 +195,7 @@ class DueScreen(FindingScreen):
         if self.review is None:
             return
         try:
-            path = write_shown([line.row for line in self.shown], Path.cwd(), self.review.on)
+            path = write_shown([line.row for line in self.shown], Path(), self.review.on)
         except FleetError as error:
             self.say(*error.lines(), is_wrong=True)
         else:
@@ -207,7 +207,6 @@ class DueScreen(FindingScreen):
             self.rearrange()
 
     def _counts(self) -> list[tuple[str, str, int]]:
-
         return [
             (
                 tone_of(group),
@@ -218,15 +217,12 @@ class DueScreen(FindingScreen):
         ]
 
     def _only(self) -> str:
+        """Say what is left out, and by what other order than the usual the lines stand."""
         assert self.review is not None
-        words = [value or f"no {facet}" for facet, value in sorted(self.chosen)] + (
-            [f'"{self.text}"'] if self.text else []
-        )
-        parts = (
-            [f"only {', '.join(words)}: {len(self.shown)} of {len(self.review.lines)} lines, a shows all"]
-            if words
-            else []
-        )
-        if self.turns % 4:
+        parts = []
+        if self.wanted.words:
+            some = f"{len(self.shown)} of {len(self.review.lines)} lines"
+            parts.append(f"only {', '.join(self.wanted.words)}: {some}, a shows all")
+        if self.order is not Order.URGENCY:
             parts.append(f"by {self.order}")
         return "; ".join(parts)

@@ -93,7 +93,3 @@ class EnginesScreen(FindingScreen):
         row: YardRow | None = self.query_one(LongList).current
         if row is not None:
             self.app.push_screen(ItemScreen(row.tag))
-
-    def action_to_group(self, step: int) -> None:
-        """Go to another site."""
-        self.query_one(LongList).action_to_section(step)

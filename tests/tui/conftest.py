@@ -1,0 +1,112 @@
+"""Screens without a terminal: an app on a small yard, keys pressed, and what stands on the screen then."""
+
+import contextlib
+import io
+import shlex
+import shutil
+from collections.abc import AsyncIterator, Awaitable, Callable
+from contextlib import AbstractAsyncContextManager, asynccontextmanager
+from pathlib import Path
+
+import pytest
+from textual.pilot import Pilot
+
+from fleetcare.cli.main import run
+from fleetcare.context import Context
+from fleetcare.tui.app import FleetApp
+from tests.cli.conftest import no_screens
+from tests.tui.yard import LINES
+
+TODAY = "2026-05-01"
+
+Settle = Callable[[Pilot[None]], Awaitable[None]]
+Opened = Callable[..., AbstractAsyncContextManager[Pilot[None]]]
+
+
+def type_in(db: Path, *words: str) -> None:
+    """Type a command line, as somebody in another window would."""
+    when = [] if "--as-of" in words else ["--as-of", TODAY]
+    said = io.StringIO()
+    with contextlib.redirect_stdout(said), contextlib.redirect_stderr(said):
+        status = run([*words, "--db", str(db), *when], no_screens)
+    assert status == 0, f"{words}: {said.getvalue()}"
+
+
+@pytest.fixture(autouse=True)
+def terminal(monkeypatch: pytest.MonkeyPatch) -> None:
+    """The same terminal for every test: true colour, whatever the one outside is."""
+    monkeypatch.setenv("TERM", "xterm-256color")
+    monkeypatch.setenv("COLORTERM", "truecolor")
+    monkeypatch.delenv("NO_COLOR", raising=False)
+
+
+@pytest.fixture(scope="session")
+def made_yard(tmp_path_factory: pytest.TempPathFactory) -> Path:
+    """The small yard, entered once a worker by its command lines; never written to."""
+    path = tmp_path_factory.mktemp("yard") / "yard.db"
+    for line in LINES.strip().splitlines():
+        type_in(path, *shlex.split(line))
+    return path
+
+
+@pytest.fixture
+def db(made_yard: Path, tmp_path: Path) -> Path:
+    """The small yard, of the test's own."""
+    return Path(shutil.copy(made_yard, tmp_path / "yard.db"))
+
+
+async def settle_down(pilot: Pilot[None]) -> None:
+    """Wait until all that was begun is done: workers, the messages they sent, and what those began in turn."""
+    for _ in range(3):
+        await pilot.app.workers.wait_for_complete()
+        await pilot.pause()
+
+
+@pytest.fixture
+def settle() -> Settle:
+    """Wait until all that was begun is done."""
+    return settle_down
+
+
+@pytest.fixture
+def app(ctx: Context) -> FleetApp:
+    """The screens on the test's database."""
+    return FleetApp(ctx)
+
+
+@pytest.fixture
+def opened(ctx: Context) -> Opened:
+    """Open the screens in a size, press keys, and wait after each until all is done."""
+
+    @asynccontextmanager
+    async def open_screens(
+        *keys: str, size: tuple[int, int] = (80, 24), context: Context | None = None
+    ) -> AsyncIterator[Pilot[None]]:
+        app = FleetApp(context or ctx)
+        async with app.run_test(size=size) as pilot:
+            await settle_down(pilot)
+            await press(pilot, *keys)
+            yield pilot
+
+    return open_screens
+
+
+async def press(pilot: Pilot[None], *keys: str) -> None:
+    """Press keys, and wait after each until all is done."""
+    for key in keys:
+        await pilot.press(key)
+        await settle_down(pilot)
+
+
+def seen(pilot: Pilot[None]) -> list[str]:
+    """Give what stands on the screen, line by line."""
+    strips = pilot.app.screen._compositor.render_strips(pilot.app.size)
+    return ["".join(segment.text for segment in strip).rstrip() for strip in strips]
+
+
+def line_with(pilot: Pilot[None], *words: str) -> str:
+    """Give the one line on the screen that holds all the words."""
+    lines = seen(pilot)
+    found = [line for line in lines if all(word in line for word in words)]
+    assert len(found) == 1, "\n".join([f"{len(found)} lines hold {words} in", *lines])
+    return found[0]
