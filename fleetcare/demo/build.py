@@ -1,37 +1,29 @@
 """Enter the history of the demo fleet into a database of its own."""
 
-from collections.abc import Callable, Mapping
+from collections.abc import Iterable
 from datetime import UTC, date, datetime, time
-from decimal import Decimal
-from itertools import count
+from itertools import count, groupby
 from pathlib import Path
 from tempfile import TemporaryDirectory
 from typing import TYPE_CHECKING
 
 from fleetcare.db.session import copy, writing
+from fleetcare.demo.enter import enter
 from fleetcare.demo.history import history
 from fleetcare.demo.steps import Step, Verb
-from fleetcare.domain.engines import Status
-from fleetcare.drafts.fields import parse_kind
-from fleetcare.drafts.items import EngineDraft, MachineDraft
-from fleetcare.drafts.reading_in import read_draft
-from fleetcare.drafts.tasks import TaskDraft
-from fleetcare.drafts.work import CorrectionDraft, DeferralDraft, LogDraft, ReadingDraft
-from fleetcare.operations.correct import correct_entry
-from fleetcare.operations.deferrals import defer
-from fleetcare.operations.find import find_engine, find_item
-from fleetcare.operations.items import add_item, fit_engine
-from fleetcare.operations.log import record_work
-from fleetcare.operations.readings import record_reading, void_reading
-from fleetcare.operations.settings import change_setting
-from fleetcare.operations.spells import change_status, set_factor
-from fleetcare.operations.tasks import add_task
+from fleetcare.exchange.csv_out import csv_text, write_new
+from fleetcare.operations.imports import read_import, store_import
 from fleetcare.operations.upkeep import refuse_taken
 
 if TYPE_CHECKING:
     from sqlalchemy.orm import Session
 
 _EVENING = time(16, 30, tzinfo=UTC)
+_CARDS = {
+    Verb.CARD_READING: ("readings", ("engine", "on", "value")),
+    Verb.CARD_WORK: ("log", ("engine", "on", "task", "at", "by", "note")),
+}
+"""What the card index comes in as: the kind of file, and its columns."""
 
 
 class Stamps:
@@ -64,84 +56,34 @@ def build(out: Path, anchor: date) -> None:
     with TemporaryDirectory() as folder:
         path = Path(folder, "demo.db")
         with writing(path, stamps.moment, stamps.uid) as session:
-            _enter(session, steps, stamps)
+            _enter(session, steps, stamps, Path(folder))
         copy(path, out)
 
 
-def _enter(session: "Session", steps: list[Step], stamps: Stamps) -> None:
+def _enter(session: "Session", steps: Iterable[Step], stamps: Stamps, folder: Path) -> None:
     stored: dict[str, int] = {}
-    for step in steps:
-        stamps.day = step.on
-        number = _VERBS[step.verb](session, step, stored)
-        if step.name and number is not None:
-            stored[step.name] = number
+    for (day, verb), same in groupby(steps, key=lambda step: (step.entered, step.verb)):
+        stamps.day = day
+        if verb in _CARDS:
+            _import(session, verb, same, day, folder)
+            continue
+        for step in same:
+            number = enter(session, step, stored)
+            if step.name and number is not None:
+                stored[step.name] = number
 
 
-def _setting(session: "Session", step: Step, stored: Mapping[str, int]) -> None:
-    change_setting(session, str(step.values["name"]), str(step.values["value"]))
+def _import(session: "Session", verb: Verb, cards: Iterable[Step], day: date, folder: Path) -> None:
+    kind, columns = _CARDS[verb]
+    rows = [[_cell(card, column) for column in columns] for card in cards]
+    file = read_import(kind, write_new(folder, f"{kind}.csv", csv_text(columns, rows)))
+    store_import(session, kind, file, day)
 
 
-def _machine(session: "Session", step: Step, stored: Mapping[str, int]) -> None:
-    add_item(session, read_draft(MachineDraft, step.values), step.on)
-
-
-def _engine(session: "Session", step: Step, stored: Mapping[str, int]) -> None:
-    add_item(session, read_draft(EngineDraft, step.values), step.on)
-
-
-def _task(session: "Session", step: Step, stored: Mapping[str, int]) -> None:
-    add_task(session, find_item(session.connection(), step.tag), read_draft(TaskDraft, step.values), step.on)
-
-
-def _fit(session: "Session", step: Step, stored: Mapping[str, int]) -> None:
-    fit_engine(session, find_engine(session.connection(), step.tag), str(step.values["machine"]), step.on)
-
-
-def _status(session: "Session", step: Step, stored: Mapping[str, int]) -> None:
-    engine = find_engine(session.connection(), step.tag)
-    why, by = str(step.values["why"]), str(step.values["by"])
-    change_status(session, engine, Status(str(step.values["status"])), step.on, why=why, by=by)
-
-
-def _factor(session: "Session", step: Step, stored: Mapping[str, int]) -> None:
-    item = find_item(session.connection(), step.tag)
-    kind, factor = parse_kind(str(step.values["kind"])), Decimal(str(step.values["factor"]))
-    set_factor(session, item, kind, factor, step.on, str(step.values["why"]))
-
-
-def _reading(session: "Session", step: Step, stored: Mapping[str, int]) -> int:
-    return record_reading(session, read_draft(ReadingDraft, {"tag": step.tag, "on": step.on, **step.values})).id
-
-
-def _log(session: "Session", step: Step, stored: Mapping[str, int]) -> int:
-    draft = read_draft(LogDraft, {"tag": step.tag, "on": step.on, **step.values})
-    return record_work(session, draft, step.on).entries[0][0]
-
-
-def _correct(session: "Session", step: Step, stored: Mapping[str, int]) -> None:
-    draft = read_draft(CorrectionDraft, {"entry": stored[step.about], **step.values})
-    correct_entry(session, draft, step.on)
-
-
-def _defer(session: "Session", step: Step, stored: Mapping[str, int]) -> None:
-    defer(session, read_draft(DeferralDraft, {"tag": step.tag, "on": step.on, **step.values}))
-
-
-def _void_reading(session: "Session", step: Step, stored: Mapping[str, int]) -> None:
-    void_reading(session, stored[step.about], str(step.values["why"]), step.on)
-
-
-_VERBS: Mapping[Verb, Callable[["Session", Step, Mapping[str, int]], int | None]] = {
-    Verb.SETTING: _setting,
-    Verb.MACHINE: _machine,
-    Verb.ENGINE: _engine,
-    Verb.TASK: _task,
-    Verb.FIT: _fit,
-    Verb.STATUS: _status,
-    Verb.FACTOR: _factor,
-    Verb.READING: _reading,
-    Verb.LOG: _log,
-    Verb.CORRECT: _correct,
-    Verb.DEFER: _defer,
-    Verb.VOID_READING: _void_reading,
-}
+def _cell(card: Step, column: str) -> object:
+    if column == "engine":
+        return card.tag
+    if column == "on":
+        return card.on
+    value = card.values[column]
+    return ";".join(map(str, value)) if isinstance(value, list) else value

@@ -1,53 +1,101 @@
 """The whole history of the demo fleet up to an anchor day, as a list of dated entries."""
 
-from collections.abc import Iterator, Mapping
+from collections.abc import Collection, Iterator, Mapping, Sequence
 from datetime import date, timedelta
 
-from fleetcare.demo.diary import day_corrected, diary, misread_voided, odd_readings
 from fleetcare.demo.fleet import ITEMS, SHOP
+from fleetcare.demo.items import Ago, Item, Shown
+from fleetcare.demo.odd import odd_readings
 from fleetcare.demo.steps import Step, Verb, in_order
-from fleetcare.demo.tasks import TASKS
-from fleetcare.demo.work import work
 from fleetcare.demo.yard import Yard
 
 _READER = "Quill"
+_MECHANICS = ("Fenn", "Quill")
 
 
-def history(anchor: date) -> list[Step]:
-    """Give everything that was entered up to the anchor day, in order. Refuses a day too early for a history."""
-    yard = Yard(anchor)
-    jobs = list(work(yard))
-    steps = [
-        Step(min(yard.came.values()), Verb.SETTING, values={"name": "shop-name", "value": SHOP}),
-        *_arrivals(yard),
-        *jobs,
-        *diary(yard),
-        day_corrected(jobs),
-        misread_voided(yard, jobs),
-        *_rounds(yard, odd_readings(yard, jobs)),
-    ]
+def history(anchor: date, items: Sequence[Item] = ITEMS) -> list[Step]:
+    """Give everything entered up to the anchor day, about some items, in order. Refuses a day too early for a history."""
+    yard = Yard(anchor, items)
+    steps = [Step(yard.changeover, yard.changeover, Verb.SETTING, values={"name": "shop-name", "value": SHOP})]
+    for item in items:
+        work = list(_work(yard, item))
+        steps += [*_arrival(yard, item), *work, *_told(yard, item), *_rounds(yard, item, work)]
     return in_order(steps)
 
 
-def _arrivals(yard: Yard) -> Iterator[Step]:
-    for item in ITEMS:
-        values = {"tag": item.tag, "in_service": yard.came[item.tag], "as_new": item.as_new, **item.values}
-        if item.meter is not None:
-            meter = item.meter
-            values |= {"meter": [f"{meter.kind}:{meter.unit}"], "start_at": [f"{meter.start}{meter.unit}"]}
-            values |= {"meter_digits": [meter.digits] if meter.digits else []}
-        verb = Verb.ENGINE if item.is_engine else Verb.MACHINE
-        yield Step(yard.came[item.tag], verb, item.tag, values)
-        for task in TASKS.get(item.tag, ()):
-            yield Step(yard.came[item.tag], Verb.TASK, item.tag, task)
+def _arrival(yard: Yard, item: Item) -> Iterator[Step]:
+    """Add the item with its meters, its schedule and its tasks."""
+    came = yard.came[item.tag]
+    values = {"tag": item.tag, "in_service": came, "as_new": item.as_new, **item.plate}
+    if item.meters:
+        starts = [f"{yard.start(name)}{m.unit}" for name, m in zip(item.meter_names(), item.meters, strict=True)]
+        values |= {"meter": [f"{m.kind}:{m.unit}" for m in item.meters], "start_at": starts}
+        values |= {"meter_digits": [f"{m.kind}:{m.digits}" for m in item.meters if m.digits]}
+    entered = max(came, yard.changeover)
+    yield Step(came, entered, Verb.ENGINE if item.is_engine else Verb.MACHINE, item.tag, values)
+    if item.schedule is not None:
+        schedule, counts_from = item.schedule
+        begins = {"schedule": schedule, "from": str(_resolved(yard, item, counts_from))}
+        yield Step(came, entered, Verb.SCHEDULE, item.tag, begins)
+    for kept in item.tasks:
+        if not isinstance(kept.task, str):
+            yield Step(came, entered, Verb.TASK, item.tag, _values(yard, item, kept.task))
 
 
-def _rounds(yard: Yard, odd: Mapping[tuple[str, date], Mapping[str, object]]) -> Iterator[Step]:
-    """Read every meter every fourth Monday, on the day of its last round, and on the days something odd was read."""
-    for tag in yard.meters:
-        first, last = yard.came[tag] + timedelta(days=1), yard.last_round(tag)
-        mondays = range(first.toordinal() + (7 - first.weekday()) % 7, last.toordinal(), 28)
-        days = {date.fromordinal(day) for day in mondays} | {last} | {day for other, day in odd if other == tag}
-        for day in sorted(days):
-            values = {"value": yard.dial(tag, day), "by": _READER, **odd.get((tag, day), {})}
-            yield Step(day, Verb.READING, tag, values, name=f"{tag} {day}")
+def _work(yard: Yard, item: Item) -> Iterator[Step]:
+    """Log every job done."""
+    by = _MECHANICS[sum(map(ord, item.tag)) % len(_MECHANICS)]
+    for kept in item.tasks:
+        note = kept.note
+        for day, dial in kept.plan.work(yard, item.tag, kept.name):
+            values = {"task": [kept.name], "at": [dial] if dial else [], "by": by, "note": note}
+            yield _dated(yard, day, (Verb.CARD_WORK, Verb.LOG), item.tag, values)
+            note = ""
+
+
+def _dated(yard: Yard, on: date, verbs: tuple[Verb, Verb], tag: str, values: Mapping[str, object]) -> Step:
+    """Give a step entered on its day, or at the changeover with the first of two verbs where it is older."""
+    is_card = on < yard.changeover
+    return Step(on, max(on, yard.changeover), verbs[not is_card], tag, values)
+
+
+def _told(yard: Yard, item: Item) -> Iterator[Step]:
+    for told in item.told:
+        on = yard.ago(told.ago)
+        values = _values(yard, item, told.values)
+        yield Step(on, max(on, yard.changeover), told.verb, item.tag, values, told.name, told.about)
+
+
+def _rounds(yard: Yard, item: Item, work: Collection[Step]) -> Iterator[Step]:
+    """Read every meter on the rounds, and where something odd was read."""
+    for name in item.meter_names():
+        odd = odd_readings(yard, name, work)
+        rounds = {day for day in yard.rounds() if yard.came[item.tag] < day <= yard.last_round(name)}
+        for day in sorted(rounds - odd.keys()):
+            values = {"value": yard.dial(name, day), "by": _READER}
+            yield _dated(yard, day, (Verb.CARD_READING, Verb.ROUND), item.tag, values)
+        for day, said in odd.items():
+            yield from _odd_reading(item.tag, day, {"value": yard.dial(name, day), "by": _READER, **said})
+
+
+def _odd_reading(tag: str, day: date, values: dict[str, object]) -> Iterator[Step]:
+    why = values.pop("void", None)
+    name = f"{tag} {day}"
+    yield Step(day, day, Verb.READING, tag, values, name=name)
+    if why is not None:
+        after = day + timedelta(days=1)
+        yield Step(after, after, Verb.VOID_READING, tag, {"why": why}, about=name)
+
+
+def _values(yard: Yard, item: Item, values: Mapping[str, object]) -> dict[str, object]:
+    return {name: _resolved(yard, item, value) for name, value in values.items()}
+
+
+def _resolved(yard: Yard, item: Item, value: object) -> object:
+    """Turn days ago into days, and what a meter showed into figures, also inside a list."""
+    if isinstance(value, Ago):
+        return yard.ago(value.days)
+    if isinstance(value, Shown):
+        meter, day = value.of or item.tag, yard.ago(value.ago)
+        return yard.shown(meter, yard.curves[meter].at(day), day, more=value.more)
+    return [_resolved(yard, item, part) for part in value] if isinstance(value, list) else value

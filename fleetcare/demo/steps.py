@@ -1,6 +1,6 @@
 """One thing somebody entered on one day, as data: what the history is a list of."""
 
-from collections.abc import Mapping
+from collections.abc import Iterable, Mapping
 from dataclasses import dataclass, field
 from datetime import date
 from enum import StrEnum
@@ -12,11 +12,16 @@ class Verb(StrEnum):
     SETTING = "setting"
     MACHINE = "machine"
     ENGINE = "engine"
+    SCHEDULE = "schedule"
     TASK = "task"
+    CARD_READING = "card reading"
+    CARD_WORK = "card work"
+    ROUND = "round"
+    READING = "reading"
     FIT = "fit"
     STATUS = "status"
     FACTOR = "factor"
-    READING = "reading"
+    EDIT = "edit"
     LOG = "log"
     CORRECT = "correct"
     DEFER = "defer"
@@ -25,12 +30,14 @@ class Verb(StrEnum):
 
 @dataclass(frozen=True, slots=True)
 class Step:
-    """An entry of a day: about `tag`, with `values` as a person would type them.
+    """An entry about `tag` for the day `on`, typed on the day `entered`, with `values` as a person would type them.
 
-    `name` lets a later step of the same history point at what this one stored; `about` is such a name.
+    The card index, kept before the tool was, comes in as a file of its readings and one of its work. `name` lets a
+    later step of the same history point at what this one stored; `about` is such a name.
     """
 
     on: date
+    entered: date
     verb: Verb
     tag: str = ""
     values: Mapping[str, object] = field(default_factory=dict)
@@ -39,8 +46,15 @@ class Step:
 
 
 _ORDER = {verb: place for place, verb in enumerate(Verb)}
+_FIRST = {verb for verb in Verb if _ORDER[verb] <= _ORDER[Verb.ROUND]}
 
 
-def in_order(steps: list[Step]) -> list[Step]:
-    """Sort steps as they happen: by day, then by kind, then as listed."""
-    return sorted(steps, key=lambda step: (step.on, _ORDER[step.verb]))
+def in_order(steps: Iterable[Step]) -> list[Step]:
+    """Sort steps as they were entered: by day; within it what is new and rounds first; then by the day they are about."""
+    return sorted(steps, key=_place)
+
+
+def _place(step: Step) -> tuple[date, bool, int, date, int]:
+    order = _ORDER[step.verb]
+    is_first = step.verb in _FIRST
+    return step.entered, not is_first, order if is_first else 0, step.on, order

@@ -1,85 +1,111 @@
 """The yard on an anchor day: what every meter of the demo fleet counted and showed on every day before."""
 
-from collections.abc import Mapping
+from collections.abc import Iterator, Sequence
 from datetime import date, timedelta
 from decimal import Decimal
 
-from dateutil.relativedelta import relativedelta
-
-from fleetcare.demo.fleet import ITEMS, Item, Meter
+from fleetcare.demo.items import Item, Meter
 from fleetcare.demo.use import Curve
+from fleetcare.domain.days import FIRST_DAY
 from fleetcare.domain.quantities import plain
 from fleetcare.errors import Refused
 
-METER_REPLACED, METER_REPLACED_AGO, _RAN_UNMETERED = "PS-01", 405, 400
-"""Whose meter was replaced, how many days ago, and what ran unmetered meanwhile, in tenths of an hour."""
+CHANGEOVER = 120
+"""How many days ago the Board began to use the tool. What is older was entered then, from the card index."""
 
-ROLLED_OVER, _MODULUS = "SB-02", 10000
+UNMETERED = 400
+"""What ran on the day a meter was replaced without being counted, in tenths."""
+
+_WEEKS, _WEEKS_BEFORE = 4, 8
+"""Weeks between two rounds, since and before the tool is used."""
+
 _EXERCISE_TENTHS = 7
-_TUESDAY = 1
-_YEARS_BACK = 4
+_PAST_THE_TURN = Decimal("0.4")
 
 
 class Yard:
-    """The demo fleet seen from its anchor day."""
+    """Some items of the demo fleet seen from an anchor day. Meters go by the names their items give them."""
 
-    def __init__(self, anchor: date) -> None:
-        """Work out all use up to `anchor`. Refuses a day so early that the history does not fit the calendar."""
-        if anchor.year <= _YEARS_BACK:
-            raise Refused(f"the demo fleet has no history before {anchor}", "give a later --as-of")
+    def __init__(self, anchor: date, items: Sequence[Item]) -> None:
+        """Work out all use up to `anchor`. Refuses a day so early that the history would begin before any can."""
+        earliest = FIRST_DAY + timedelta(days=max(item.came for item in items))
+        if anchor < earliest:
+            raise Refused(
+                f"the history of the demo fleet does not fit before {anchor}", f"give a day from {earliest} on"
+            )
         self.anchor = anchor
-        self.came = {item.tag: self.ago(item.came) for item in ITEMS}
-        self.meters: Mapping[str, Meter] = {item.tag: item.meter for item in ITEMS if item.meter is not None}
-        self.curves = {item.tag: self._curve(item, item.meter) for item in ITEMS if item.meter is not None}
-        self.replaced_on = self.ago(METER_REPLACED_AGO)
-        self.rolled_over_on = self.curves[ROLLED_OVER].day_of(Decimal(_MODULUS))
+        self.changeover = self.ago(CHANGEOVER)
+        self.came = {item.tag: self.ago(item.came) for item in items}
+        self._rounds = tuple(self._round_days())
+        self.meters: dict[str, Meter] = {}
+        self.curves: dict[str, Curve] = {}
+        for item in items:
+            for name, meter in zip(item.meter_names(), item.meters, strict=True):
+                self.meters[name] = meter
+                self.curves[name] = self._curve(item, meter)
 
     def ago(self, days: int) -> date:
         """Give the day some days before the anchor day; a negative number lies ahead."""
         return self.anchor - timedelta(days=days)
 
-    def last_round(self, tag: str) -> date:
+    def rounds(self) -> tuple[date, ...]:
+        """Give the days of the rounds on which meters were read, Mondays, newest first."""
+        return self._rounds
+
+    def start(self, meter: str) -> Decimal:
+        """Give the figure a meter came with."""
+        return self.curves[meter].start
+
+    def last_round(self, meter: str) -> date:
         """Give the day a meter was last read on a round."""
-        return self.ago(self.meters[tag].unread)
+        unread = self.ago(self.meters[meter].unread)
+        return next(day for day in self.rounds() if day <= unread)
 
-    def latest(self, tag: str) -> Decimal:
+    def latest(self, meter: str) -> Decimal:
         """Give the total of a meter at its last round."""
-        return self.curves[tag].at(self.last_round(tag))
+        return self.curves[meter].at(self.last_round(meter))
 
-    def dial(self, tag: str, day: date) -> str:
+    def turned_on(self, meter: str) -> date | None:
+        """Give the day a meter rolled over, None where it did not."""
+        modulus = self._modulus(meter)
+        if self.meters[meter].turned is None or modulus is None:
+            return None
+        return self.curves[meter].day_of(modulus)
+
+    def dial(self, meter: str, day: date) -> str:
         """Give what a meter showed at the end of a day, with its unit."""
-        return self.shown(tag, self.curves[tag].at(day), day)
+        return self.shown(meter, self.curves[meter].at(day), day)
 
-    def shown(self, tag: str, total: Decimal, day: date, more: int = 0) -> str:
+    def shown(self, meter: str, total: Decimal, day: date, more: int = 0) -> str:
         """Give what a meter showed at a total of some day, with its unit; `more` is added to the figure."""
-        if tag == METER_REPLACED and day >= self.replaced_on:
-            total = max(Decimal(0), total - self.curves[tag].at(self.replaced_on))
-        if tag == ROLLED_OVER and day >= self.rolled_over_on:
-            total %= _MODULUS
-        return f"{plain(total + more)}{self.meters[tag].unit}"
+        replaced = self.meters[meter].replaced
+        if replaced is not None and day >= self.ago(replaced):
+            total = max(Decimal(0), total - self.curves[meter].at(self.ago(replaced)))
+        turned, modulus = self.turned_on(meter), self._modulus(meter)
+        if turned is not None and modulus is not None and day >= turned:
+            total %= modulus
+        return f"{plain(total + more)}{self.meters[meter].unit}"
 
-    def exercise_days(self, since: date, skipped: int) -> list[date]:
-        """Give the exercise day of each month from the one after `since`, newest last, the newest `skipped` left out.
+    def _round_days(self) -> Iterator[date]:
+        day = self.anchor - timedelta(days=self.anchor.weekday())
+        while day > min(self.came.values()):
+            yield day
+            day -= timedelta(weeks=_WEEKS if day > self.changeover else _WEEKS_BEFORE)
 
-        It is the first Tuesday, or the anchor day where that has not come yet.
-        """
-        first = self.anchor.replace(day=1) - relativedelta(months=skipped)
-        days = []
-        while first > since:
-            tuesday = first + timedelta(days=(_TUESDAY - first.weekday()) % 7)
-            days.append(min(tuesday, self.anchor))
-            first -= relativedelta(months=1)
-        return days[::-1]
+    def _modulus(self, meter: str) -> Decimal | None:
+        digits = self.meters[meter].digits.partition(".")[0]
+        return Decimal(10) ** int(digits) if digits else None
 
     def _curve(self, item: Item, meter: Meter) -> Curve:
-        extra: dict[date, int] = {}
-        if item.tag == METER_REPLACED:
-            extra = {self.ago(METER_REPLACED_AGO): _RAN_UNMETERED}
-        if item.tag in MISSED_EXERCISES:
-            days = self.exercise_days(self.came[item.tag], MISSED_EXERCISES[item.tag])
-            extra = dict.fromkeys(days, _EXERCISE_TENTHS)
-        return Curve(self.came[item.tag], self.anchor, meter.start, meter.rhythm, meter.seed, extra)
-
-
-MISSED_EXERCISES = {"SB-01": 0, "SB-02": 2}
-"""Sets that are exercised once each month, and how many of the newest months have no exercise run."""
+        extra = {}
+        if meter.replaced is not None:
+            extra[self.ago(meter.replaced)] = UNMETERED
+        if meter.exercise is not None:
+            extra |= dict.fromkeys(meter.exercise.days(self.anchor), _EXERCISE_TENTHS)
+        idle = (self.ago(meter.idle[0]), self.ago(meter.idle[1])) if meter.idle else (date.max, date.max)
+        curve = Curve(self.came[item.tag], self.anchor, meter.rhythm, meter.seed or item.tag, extra, idle)
+        curve.lift(Decimal(meter.start))
+        if meter.turned is not None:
+            digits = int(meter.digits.partition(".")[0])
+            curve.lift(Decimal(10) ** digits + _PAST_THE_TURN - curve.at(self.ago(meter.turned)) + meter.start)
+        return curve
