@@ -25,7 +25,7 @@ def check(connection: Connection, head: str | None = None) -> list[str]:
     `head` is SEQ:HASH as it was once printed, the hash whole or its first 8 digits or more; against it
     a removed end of the ledger is found. Raises Misread where it cannot be read.
     """
-    printed = _read_head(head) if head else None
+    printed = _read_head(head) if head is not None else None
     newest: Newest = {}
     return [
         *_file(connection),

@@ -195,7 +195,10 @@ def _remedy(figure: PlacedFigure, other: str) -> str:
     if other:
         return "correct one of them"
     shown = f"{plain(figure.dial)}{figure.meter.unit}"
-    return f"check it; if it is right, first give fleetcare reading {figure.item.tag} {shown} --on {figure.on} --sure"
+    return (
+        f"check it; if it is right, first give fleetcare reading {figure.item.tag} {shown} --on {figure.on}"
+        " with --sure, --rolled-over or --replaced OLD_LAST NEW_FIRST"
+    )
 
 
 def keys_stored(connection: "Connection", table: str, keys: Sequence[str]) -> set[str]:

@@ -88,7 +88,7 @@ def test_a_cut_end_is_found_only_against_a_head_noted_before(yard: Runner, db: P
     assert "was printed but is not there; the ledger ends at" in ran.err
 
 
-@pytest.mark.parametrize("head", ["12", "x:9f86d081884c", "12:9f", "12:not-hex-at-all", "[/b]"])
+@pytest.mark.parametrize("head", ["", "12", "x:9f86d081884c", "12:9f", "12:not-hex-at-all", "[/b]"])
 def test_a_head_that_cannot_be_read_is_a_mistake_of_typing(yard: Runner, head: str) -> None:
     ran = yard("check", "--head", head)
     assert (ran.status, ran.out, ran.err.count("\n")) == (2, "", 1)

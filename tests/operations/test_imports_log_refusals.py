@@ -57,7 +57,8 @@ def test_a_task_that_needs_a_sheet_is_refused_with_the_remedy_of_the_log_command
 def test_a_figure_that_breaks_with_the_past_names_the_stored_reading(yard: Context) -> None:
     assert refusals(yard, "log", SHORT, "P-01,Oil,2026-04-20,1501h", "P-01,Belts,2026-04-20,1501") == [
         f"row {number}, column at: 1501 h on 2026-04-20 does not fit reading 1 of P-01 (1500 h on 2026-05-01):"
-        " lower by 1 h; check it; if it is right, first give fleetcare reading P-01 1501h --on 2026-04-20 --sure"
+        " lower by 1 h; check it; if it is right, first give fleetcare reading P-01 1501h --on 2026-04-20"
+        " with --sure, --rolled-over or --replaced OLD_LAST NEW_FIRST"
         for number in (2, 3)
     ]
 

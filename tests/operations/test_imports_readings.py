@@ -149,7 +149,8 @@ def test_a_reading_that_breaks_with_the_past_names_the_stored_one_and_how_to_ent
     (line,) = refusals(yard, "readings", SHORT, "P-01,2026-04-01,999", "P-01,2026-04-02,1001")
     assert line == (
         "row 2, column value: 999 h on 2026-04-01 does not fit reading 1 of P-01 (1000 h on 2026-03-01): lower by 1 h;"
-        " check it; if it is right, first give fleetcare reading P-01 999h --on 2026-04-01 --sure"
+        " check it; if it is right, first give fleetcare reading P-01 999h --on 2026-04-01"
+        " with --sure, --rolled-over or --replaced OLD_LAST NEW_FIRST"
     )
 
 
