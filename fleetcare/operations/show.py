@@ -1,19 +1,24 @@
 """One engine or machine on one page: nameplate, meters, readings, lines, history."""
 
+from collections.abc import Sequence
 from dataclasses import dataclass
 from datetime import date
 from decimal import Decimal
 from typing import TYPE_CHECKING
 
-from fleetcare.domain.engines import status_on
+from fleetcare.domain.engines import Status, StatusSpell, status_on
 from fleetcare.domain.lines import DueLine
-from fleetcare.domain.quantities import plain
+from fleetcare.domain.quantities import plain, tenth
+from fleetcare.domain.schedules import Task
 from fleetcare.operations.find import FoundItem, find_item, find_task
+from fleetcare.operations.history import HistoryEntry as HistoryEntry
+from fleetcare.operations.history import item_history
 from fleetcare.operations.load import item_facts
 from fleetcare.operations.plate_figures import derived_figures
-from fleetcare.operations.rows import Row, fetch, grouped
+from fleetcare.operations.rows import fetch
 from fleetcare.rules.due.due_list import in_order, item_lines
 from fleetcare.rules.due.facts import ItemFacts
+from fleetcare.rules.due.replay import replay
 from fleetcare.rules.due.row import DueRow, due_row
 from fleetcare.rules.explain import Label, explain, say_amount, say_past
 
@@ -44,19 +49,6 @@ _NAMEPLATE = (
 
 
 @dataclass(frozen=True, slots=True)
-class HistoryEntry:
-    """One log entry as it stands in the history; superseded and voided ones stay readable."""
-
-    number: int
-    on: date
-    kind: str
-    what: str
-    by: str
-    figures: str
-    remark: str
-
-
-@dataclass(frozen=True, slots=True)
 class ReadingLine:
     """One reading as entered, with what was decided about it."""
 
@@ -81,7 +73,7 @@ class ItemPage:
 
 def item_page(connection: "Connection", tag: str, on: date, *, is_future: bool = False) -> ItemPage:
     """Load the page of an engine or machine as of a day."""
-    item = find_item(connection, tag, even_withdrawn=True)
+    item = find_item(connection, tag, on=on, even_withdrawn=True)
     facts = item_facts(connection, on, [item.id])[0]
     lines = in_order(item_lines(facts, is_future))
     return ItemPage(
@@ -91,29 +83,43 @@ def item_page(connection: "Connection", tag: str, on: date, *, is_future: bool =
         readings=tuple(_readings(connection, item, on)),
         lines=tuple(lines),
         rows=tuple(due_row(line, facts) for line in lines),
-        history=tuple(_history(connection, item, on)),
+        history=tuple(item_history(connection, facts)),
     )
 
 
 def task_working(
     connection: "Connection", tag: str, name: str, on: date, *, is_future: bool = False
 ) -> tuple[list[Label], list[Label]]:
-    """Give a line's working, and what each entry did to its task, newest first."""
-    item = find_item(connection, tag)
-    task_id = find_task(connection, item, name)
+    """Give a line's working, and what each entry did to its task, newest first; of a task without a line the latter."""
+    item = find_item(connection, tag, on=on, even_withdrawn=True)
+    task_id = find_task(connection, item, name, on=on, even_ended=True)
     facts = item_facts(connection, on, [item.id])[0]
+    task = next(task for task in facts.tasks if task.id == task_id)
     line = next((line for line in item_lines(facts, is_future) if line.task.id == task_id), None)
-    if line is None:
-        return [("state", "no line: done once, ended, or not called for")], []
-    past = [(f"entry {work.number}, {work.on.isoformat()}", say_past(work, line, facts)) for work in line.past]
-    return explain(line, facts), past[::-1]
+    working = explain(line, facts) if line is not None else [("state", f"no line: {_why_no_line(facts, task)}")]
+    version = task.version_on(on)
+    past = [
+        (f"entry {work.number}, {work.on.isoformat()}", say_past(work, version, facts))
+        for work in replay(facts, task).past
+    ]
+    return working, past[::-1]
+
+
+def _why_no_line(facts: ItemFacts, task: Task) -> str:
+    if status_on(facts.item.spells, facts.on) is Status.WITHDRAWN:
+        return f"{facts.item.tag} is withdrawn"
+    if task.removed_on is not None and task.removed_on <= facts.on:
+        return f"ended on {task.removed_on.isoformat()}"
+    return "not called for" if task.version_on(facts.on).on_condition else "done once"
 
 
 def _nameplate(connection: "Connection", item: FoundItem, facts: ItemFacts, on: date) -> list[Label]:
     found = facts.item
     labels = [("tag", found.tag), ("name", found.name), ("site", found.site)]
     if item.is_engine:
-        labels += [("machine", found.machine), ("status", status_on(found.spells, on).value)]
+        position = _position(connection, item, on)
+        labels += [("machine", f"{found.machine}, {position}" if position else found.machine)]
+        labels.append(("status", _say_status(found.spells, on)))
     if found.in_service_on is not None:
         labels.append(("in service", f"{found.in_service_on.isoformat()}{', counted as new' if found.as_new else ''}"))
     columns = ", ".join(column for column, _, _ in _NAMEPLATE)
@@ -131,6 +137,28 @@ def _nameplate(connection: "Connection", item: FoundItem, facts: ItemFacts, on: 
         if factor.from_on <= on
     ]
     return [(label, text) for label, text in labels if text]
+
+
+def _position(connection: "Connection", item: FoundItem, on: date) -> str:
+    """Give where in its machine an engine is fitted, empty where nobody said."""
+    rows = fetch(
+        connection,
+        "select position from fitting where engine_id = :id and from_on <= :on and (to_on is null or to_on > :on)"
+        " order by from_on, id",
+        id=item.id,
+        on=on.isoformat(),
+    )
+    return str(rows[-1][0]) if rows else ""
+
+
+def _say_status(spells: Sequence[StatusSpell], on: date) -> str:
+    """Say an engine's status, and where it was ever changed since when, why and by whom."""
+    begun = [spell for spell in spells if spell.from_on <= on]
+    if not begun:
+        return Status.IN_SERVICE.value
+    spell = begun[-1]
+    why = f": {spell.why}" if spell.why else ""
+    return f"{spell.status} since {spell.from_on.isoformat()}{why}{f' ({spell.by})' if spell.by else ''}"
 
 
 def _lash(connection: "Connection", item: FoundItem, on: date) -> list[Label]:
@@ -163,19 +191,22 @@ def _meters(facts: ItemFacts) -> list[Label]:
             labels.append((kind.value, "not read yet"))
             continue
         dial = counter.dial_of(latest.life)
-        shown = f"{plain(dial)} {unit} on the dial, " if dial is not None else ""
+        shown = f"{plain(tenth(dial))} {unit} on the dial, " if dial is not None else ""
         labels.append((kind.value, f"{shown}{say_amount(latest.life, unit)} of life, read {latest.on.isoformat()}"))
     return labels
 
 
 def _readings(connection: "Connection", item: FoundItem, on: date) -> list[ReadingLine]:
-    """Give the readings of an item's meters, newest first."""
+    """Give the readings of an item's own meters, and of others while they counted for it, newest first."""
     rows = fetch(
         connection,
         'select reading.id, reading."on", reading.value, reading.unit, reading.rolled_over, reading.note,'
         " reading.entry_id, (select mark || ': ' || why from reading_mark where reading_id = reading.id"
-        " order by id desc limit 1) from reading where meter_id in (select meter_id from meter_fit where item_id = :id)"
-        ' and reading."on" <= :on order by reading."on" desc, reading.id desc',
+        " order by id desc limit 1) from reading join meter on meter.id = reading.meter_id"
+        ' where reading."on" <= :on and (meter.item_id = :id or exists (select 1 from meter_fit fit'
+        " where fit.meter_id = meter.id and fit.item_id = :id"
+        ' and (fit.from_on is null or fit.from_on <= reading."on") and (fit.to_on is null or fit.to_on >= reading."on")))'
+        ' order by reading."on" desc, reading.id desc',
         id=item.id,
         on=on.isoformat(),
     )
@@ -185,52 +216,3 @@ def _readings(connection: "Connection", item: FoundItem, on: date) -> list[Readi
         remark = ", ".join(text.rstrip(": ") for text in remarks if text)
         lines.append(ReadingLine(number, date.fromisoformat(str(day)), f"{plain(Decimal(value))} {unit}", remark))
     return lines
-
-
-def _history(connection: "Connection", item: FoundItem, on: date) -> list[HistoryEntry]:
-    """Give the log of an item, newest first, corrected and voided entries with what became of them."""
-    entries = fetch(
-        connection,
-        'select entry.id, entry."on", entry.kind, entry.title, entry.note, entry.litres, entry.litres_unit,'
-        " coalesce(person.name, ''), entry.supersedes_id, entry.is_void, entry.why, later.id, later.is_void"
-        " from log_entry entry left join person on person.id = entry.person_id"
-        " left join log_entry later on later.supersedes_id = entry.id"
-        ' where entry.item_id = :id and entry."on" <= :on order by entry."on" desc, entry.id desc',
-        id=item.id,
-        on=on.isoformat(),
-    )
-    numbers = [row[0] for row in entries]
-    tasks = grouped(
-        fetch(
-            connection,
-            "select entry_id, task.name, part_done, covered_by_id from log_task join task on task.id = log_task.task_id"
-            " where entry_id in :ids order by log_task.id",
-            ids=numbers,
-        )
-    )
-    figures = grouped(
-        fetch(connection, "select entry_id, value, unit from reading where entry_id in :ids order by id", ids=numbers)
-    )
-    return [_entry(row, tasks.get(row[0], []), figures.get(row[0], [])) for row in entries]
-
-
-def _entry(row: Row, tasks: list[Row], figures: list[Row]) -> HistoryEntry:
-    number, day, kind, title, note, litres, litres_unit, by, supersedes, is_void, why, later, later_void = row
-    names = [
-        f"{name}{' (in part)' if part else ''}{' (covered)' if covered else ''}" for _, name, part, covered in tasks
-    ]
-    what = [", ".join(names), title, f"{plain(Decimal(litres))} {litres_unit}" if litres else "", note]
-    remarks = [
-        f"voids entry {supersedes}" if is_void else (f"corrects entry {supersedes}" if supersedes else ""),
-        why,
-        f"{'voided' if later_void else 'corrected'} by entry {later}" if later else "",
-    ]
-    return HistoryEntry(
-        number,
-        date.fromisoformat(str(day)),
-        kind,
-        "; ".join(text for text in what if text),
-        by,
-        ", ".join(f"{plain(Decimal(value))} {unit}" for _, value, unit in figures),
-        ", ".join(text for text in remarks if text),
-    )

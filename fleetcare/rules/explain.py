@@ -8,7 +8,7 @@ from decimal import Decimal
 
 from fleetcare.domain.lines import DueLine, NextPoint, PastWork, Point, TriggerLine
 from fleetcare.domain.quantities import Kind, Span, from_base, plain
-from fleetcare.domain.schedules import Anchor, CalendarTrigger, Combine, Trigger
+from fleetcare.domain.schedules import Anchor, CalendarTrigger, Combine, TaskVersion, Trigger
 from fleetcare.rules.due.facts import ItemFacts
 from fleetcare.rules.due.row import due_row, unit_of
 from fleetcare.rules.explain_forecast import say_clues, say_range
@@ -70,8 +70,8 @@ def say_amount(value: Decimal, unit: str) -> str:
     return f"{plain(rounded)} {unit}"
 
 
-def say_past(work: PastWork, line: DueLine, facts: ItemFacts) -> str:
-    """Say what one entry did to a line's task: in time, over, with what was missed."""
+def say_past(work: PastWork, version: TaskVersion, facts: ItemFacts) -> str:
+    """Say what one entry did to a task: in time, over, with what was missed."""
     if not work.counted:
         return f"does not count: {work.note}"
     words = [f"serves {work.served}"] if work.served else []
@@ -81,14 +81,14 @@ def say_past(work: PastWork, line: DueLine, facts: ItemFacts) -> str:
         unit = _unit(kind, facts)
         words.append(f"done {_amount(over, kind, unit)} over, {_amount(grace, kind, unit)} allowed")
     if work.missed:
-        words.append(f"missed {', '.join(_say_point(point, line, facts) for point in work.missed)}")
+        words.append(f"missed {', '.join(_say_point(point, version, facts) for point in work.missed)}")
     return "; ".join(words) or "in time"
 
 
-def _say_point(point: Point, line: DueLine, facts: ItemFacts) -> str:
+def _say_point(point: Point, version: TaskVersion, facts: ItemFacts) -> str:
     if isinstance(point, date):
         return point.isoformat()
-    counted = line.version.counted
+    counted = version.counted
     return say_amount(point, unit_of(facts, counted[0].kind)) if counted else plain(point)
 
 

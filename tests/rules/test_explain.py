@@ -29,7 +29,7 @@ def said(given: ItemFacts, label: str) -> str:
 def past_of(given: ItemFacts) -> list[str]:
     """What is said of each past work of the first line."""
     line: DueLine = item_lines(given)[0]
-    return [say_past(work, line, given) for work in line.past]
+    return [say_past(work, line.version, given) for work in line.past]
 
 
 def test_the_working_begins_with_the_state_and_what_is_left_by_the_deciding_trigger() -> None:
