@@ -12,14 +12,19 @@ INTERRUPTED = 130
 
 def main(arguments: Sequence[str] | None = None) -> int:
     """Run a command line (the process's own by default) and give its exit status; never a traceback."""
+    try:
+        return _run(sys.argv[1:] if arguments is None else arguments)
+    except KeyboardInterrupt:  # while loading, too
+        return INTERRUPTED
+
+
+def _run(arguments: Sequence[str]) -> int:
     from fleetcare.cli import main as command_line
     from fleetcare.cli import output
 
     try:
-        status = command_line.run(sys.argv[1:] if arguments is None else arguments, open_screens)
+        status = command_line.run(arguments, open_screens)
         output.finish()
-    except KeyboardInterrupt:
-        return INTERRUPTED
     except BrokenPipeError:
         output.abandon()
         return 0  # the reader has seen enough; what the command had to do is done

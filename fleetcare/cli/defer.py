@@ -30,6 +30,6 @@ def _defer(given: argparse.Namespace) -> None:
     draft = read_draft(DeferralDraft, options_of(given) | {"on": context.today()}, label_with(task="TASK"))
     with context.write() as session, watch_moves(session, draft.tag, context.today()) as moves:
         deferred = defer(session, draft)
-    until = " or ".join(str(end) for end in draft.until)
+    until = " or ".join(deferred.until)
     output.say(f"{deferred.task} of {deferred.item.tag} deferred until {until} by {draft.by}: {draft.why}")
     say_moved(moves.moved)

@@ -20,7 +20,11 @@ class CommandParser(argparse.ArgumentParser):
         # SUPPRESS: a sub-command that was not given the option must not wipe out what its parent was given.
         everywhere = self.add_argument_group("options of every command")
         everywhere.add_argument(
-            "--db", metavar="PATH|URL", default=argparse.SUPPRESS, help="the shop's database, else FLEETCARE_DB"
+            "--db",
+            metavar="PATH|URL",
+            type=typed(_parse_address),
+            default=argparse.SUPPRESS,
+            help="the shop's database, else FLEETCARE_DB",
         )
         everywhere.add_argument(
             "--as-of",
@@ -41,6 +45,13 @@ class CommandParser(argparse.ArgumentParser):
 
 # Handed to each group's add_commands; the class is generic for type checkers only.
 Commands: TypeAlias = "argparse._SubParsersAction[CommandParser]"
+
+
+def _parse_address(text: str) -> str:
+    """Read where the database is. Raises Misread for nothing, which must not mean the person's own file."""
+    if not text.strip():
+        raise Misread("no database is named", "name a file, or leave --db out")
+    return text
 
 
 def typed(parse: Callable[[str], Value]) -> Callable[[str], Value]:

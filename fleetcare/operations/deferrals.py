@@ -7,7 +7,7 @@ from typing import TYPE_CHECKING
 
 from fleetcare.db.tables import Deferral, DeferralFigure
 from fleetcare.domain.lines import DueLine, Point, State
-from fleetcare.domain.quantities import BASE_UNIT, Figure, Kind, from_base, plain, to_base
+from fleetcare.domain.quantities import BASE_UNIT, Amount, Figure, Kind, from_base, plain, to_base
 from fleetcare.drafts.work import DeferralDraft
 from fleetcare.errors import Refused
 from fleetcare.operations.find import FoundItem, find_item, find_meters, find_task, pick_meter
@@ -24,10 +24,11 @@ if TYPE_CHECKING:
 
 @dataclass(frozen=True, slots=True)
 class Deferred:
-    """What was deferred: the item, the task's name, and what the point was bound to."""
+    """What was deferred: the item, the task's name, and each end, figures with their unit."""
 
     item: FoundItem
     task: str
+    until: tuple[str, ...]
 
 
 def defer(session: "Session", draft: DeferralDraft) -> Deferred:
@@ -56,13 +57,13 @@ def defer(session: "Session", draft: DeferralDraft) -> Deferred:
         _check_day(line, row.until_on, draft.on)
     session.add(row)
     session.flush()
+    ends = []
     for end in draft.until:
-        if isinstance(end, Figure):
-            _add_figure(session, row, item, facts, line, end)
+        ends.append(_add_figure(session, row, item, facts, line, end) if isinstance(end, Figure) else end.isoformat())
     if row.until_on is not None and line.version.calendar is None and not line.version.on_condition:
         _add_cap(session, row, facts, line)
     session.flush()
-    return Deferred(item, line.task.name)
+    return Deferred(item, line.task.name, tuple(ends))
 
 
 def _check_allowed(line: DueLine) -> None:
@@ -87,8 +88,11 @@ def _check_day(line: DueLine, until: date, today: date) -> None:
 
 def _add_figure(
     session: "Session", row: Deferral, item: FoundItem, facts: ItemFacts, line: DueLine, end: Figure
-) -> None:
-    """Store a dial figure a deferral ends at; refuses one the task does not count or that lies before its point."""
+) -> str:
+    """Store a dial figure a deferral ends at, and give it with its unit.
+
+    Refuses one the task does not count or that lies before its point.
+    """
     meter = pick_meter(find_meters(session.connection(), item.id, facts.on), end, item.tag)
     own = _own(line, meter.kind)
     if not isinstance(own, Decimal):
@@ -109,6 +113,7 @@ def _add_figure(
             unit=end.unit or meter.unit,
         )
     )
+    return str(Amount(end.value, end.unit or meter.unit))
 
 
 def _add_cap(session: "Session", row: Deferral, facts: ItemFacts, line: DueLine) -> None:
