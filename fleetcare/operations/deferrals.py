@@ -10,7 +10,7 @@ from fleetcare.domain.lines import DueLine, Point, State
 from fleetcare.domain.quantities import BASE_UNIT, Amount, Figure, Kind, from_base, plain, to_base
 from fleetcare.drafts.work import DeferralDraft
 from fleetcare.errors import Refused
-from fleetcare.operations.find import FoundItem, find_item, find_meters, find_task, pick_meter
+from fleetcare.operations.find import FoundItem, FoundMeter, find_item, find_meters, find_task, pick_meter
 from fleetcare.operations.load import item_facts
 from fleetcare.operations.names import person_id
 from fleetcare.rules.due.due_list import item_lines
@@ -101,8 +101,9 @@ def _add_figure(
     dial = from_base(to_base(end.value, end.unit), meter.unit) if end.unit else end.value
     life = counter.life_at(dial, facts.on)
     if life is None or life <= own:
-        point = plain(from_base(own, meter.unit))
-        raise Refused(f"{end} does not lie after the due point of {point} {meter.unit}", "give a larger figure")
+        point = counter.dial_of(own)
+        shown = f"{plain(from_base(own, meter.unit))} {meter.unit} of life" if point is None else _shown(point, meter)
+        raise Refused(f"{end} does not lie after the due point of {shown}", "give a larger figure")
     session.add(
         DeferralFigure(
             deferral_id=row.id,
@@ -114,6 +115,10 @@ def _add_figure(
         )
     )
     return str(Amount(end.value, end.unit or meter.unit))
+
+
+def _shown(dial: Decimal, meter: FoundMeter) -> str:
+    return f"{plain(dial)} {meter.unit}"
 
 
 def _add_cap(session: "Session", row: Deferral, facts: ItemFacts, line: DueLine) -> None:
