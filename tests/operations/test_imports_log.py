@@ -1,8 +1,10 @@
 """Work out of a file: applied in the order it was done, all or none, and nothing a second time."""
 
+import shutil
 from datetime import date
 from decimal import Decimal
 from itertools import permutations
+from pathlib import Path
 
 import pytest
 
@@ -85,6 +87,28 @@ def test_the_order_of_rows_changes_nothing(yard: Context, order: tuple[int, ...]
         (4, "2026-03-10", "Oil"),
     ]
     assert points(yard)["P-01 Oil"] == (Decimal(1500), date(2027, 3, 10))
+
+
+def test_a_file_leaves_the_due_list_the_same_work_leaves_when_logged_by_hand(
+    yard: Context, new_database: Path, tmp_path: Path
+) -> None:
+    by_hand = yard_with_a_log(Context(str(shutil.copy(new_database, tmp_path / "hand.db"))))
+    for each in (yard, by_hand):
+        task(each, "P-01", "Test run", once_each="month")
+        task(each, "P-01", "Tappets", every=["300h"], first="50h", anchor="from-due", grace=["20h"])
+    work = [
+        ("Tappets", "2025-06-02", "600"),
+        ("Oil", "2025-06-02", "600"),
+        ("Test run", "2026-02-27", ""),
+        ("Tappets", "2026-03-05", "980"),
+        ("Big service", "2026-03-09", "1000"),
+        ("Test run", "2026-04-02", ""),
+    ]
+    for name, on, at in work:
+        log(by_hand, on, name, at=[at] if at else [])
+    take_in(yard, "log", SHORT, *(f"P-01,{name},{on},{at}" for name, on, at in reversed(work)))
+    assert points(yard) == points(by_hand)
+    assert sorted(row[1:3] for row in entries(yard)) == sorted(row[1:3] for row in entries(by_hand))
 
 
 # The big job and the small ones
