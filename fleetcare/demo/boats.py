@@ -17,7 +17,7 @@ BOATS = (
         1118,
         {"name": "Weed-cutting boat Sedge Hen", "site": "Ousel Outfall"},
         tasks=(
-            Kept(_SLIPPING, Dated(12, 5)),
+            Kept(_SLIPPING, Dated(12, 5), note="three anodes of four gone"),
             Kept(
                 {"name": "Fire extinguishers", "once_each": "year", "insurer": True, "work": "inspection"},
                 Each(12, most=3),

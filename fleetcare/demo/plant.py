@@ -102,7 +102,7 @@ _DIGGERS = (
         tasks=(
             Kept({**OIL, "every": ["500h"]}, Counted(500, 240)),
             Kept({"name": "Hydraulic return filter", "every": ["1000h"], "work": "filter"}, Counted(1000, -6)),
-            Kept({**AIR_FILTER, "every": ["500h"]}, Counted(500, 33)),
+            Kept({**AIR_FILTER, "every": ["500h"]}, Counted(500, 33), note="outer element only; inner one clean"),
             Kept(BOOM, Dated(12, 29)),
         ),
         told=(
@@ -239,7 +239,21 @@ _SMALL_ENGINES = (
         1090,
         {**SMALL_DIESEL, "name": "Welding set", "sump": "5", "rated_kw": "14", **_YARD},
         (Meter("hours", "h", 3350, _SMALL, unread=14),),
-        tasks=(Kept({**OIL, "every": ["150h", "12mo"]}, Dated(12, 240)), Kept({**AIR_FILTER, "every": ["300h"]})),
+        tasks=(
+            Kept({**OIL, "every": ["150h", "12mo"]}, Dated(12, 240)),
+            Kept({**AIR_FILTER, "every": ["300h"]}),
+            Kept(
+                {
+                    "name": "Injector service",
+                    "every": ["500h", "2y"],
+                    "combine": "last",
+                    "not_later_than": "3y",
+                    "work": "injectors",
+                },
+                Dated(24, -30),
+                note="spray even, all three open at the same pressure",
+            ),
+        ),
     ),
 )
 

@@ -47,7 +47,11 @@ _NORTH_SLUICE = (
         {**PUMP, "name": "Pump diesel", "machine": "PH-1", "position": "bay 1"},
         (Meter("hours", "h", 3210, winter_pump, replaced=100),),
         tasks=(
-            Kept({**OIL, "every": ["250h", "12mo"], "ahead": ["25h", "30d"]}, Counted(250, -12)),
+            Kept(
+                {**OIL, "every": ["250h", "12mo"], "ahead": ["25h", "30d"]},
+                Counted(250, -12),
+                note="no water in the old oil",
+            ),
             Kept({**LASH, "every": ["1000h"], "grace": ["10h"], "anchor": "from-due"}, Counted(1000, 210)),
             Kept({**FUEL_FILTER, "every": ["500h"]}, Counted(500, 160), note="a cupful of water drained off the tank"),
             Kept({**COOLANT, "every": ["24mo"]}, Dated(24, 300)),
@@ -171,7 +175,7 @@ _HERN_CORNER = (
             Meter("fuel", "L", 402310, scaled(winter_pump, 38, unit=10), unread=2, seed="PS-07", digits="7.0"),
         ),
         tasks=(
-            Kept({**OIL, "every": ["500h", "12mo"]}, Counted(500, 130)),
+            Kept({**OIL, "every": ["500h", "12mo"]}, Counted(500, 130), note="filter cut open: no metal"),
             Kept(
                 {"name": "Injector nozzles", "every": ["40000L"], "work": "injectors", "labour": "8h"},
                 Counted(40000, 2400, of="PS-07 fuel"),
