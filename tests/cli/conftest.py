@@ -1,7 +1,13 @@
-"""Run a command line in this process and look at what it printed."""
+"""Run a command line in this process and look at what it printed, on a yard that is set up once and copied."""
 
+import contextlib
+import io
+import shlex
+import shutil
+import sqlite3
 from collections.abc import Callable
 from dataclasses import dataclass
+from pathlib import Path
 
 import pytest
 
@@ -37,3 +43,51 @@ def fleetcare(capsys: pytest.CaptureFixture[str]) -> Runner:
         return Ran(status, printed.out, printed.err)
 
     return run_words
+
+
+TODAY = "2026-05-01"
+"""The day the commands of a yard work on, unless a test says another."""
+
+
+@pytest.fixture(scope="session")
+def made_yards() -> dict[str, Path]:
+    """The database of each yard set up so far, by the command lines that made it; never written to again."""
+    return {}
+
+
+@pytest.fixture
+def open_yard(
+    fleetcare: Runner,
+    made_yards: dict[str, Path],
+    new_database: Path,
+    tmp_path: Path,
+    tmp_path_factory: pytest.TempPathFactory,
+) -> Callable[[str], Runner]:
+    """A function that sets a yard up with command lines, one a line, and gives a runner on a copy of it."""
+
+    def opened(lines: str) -> Runner:
+        if lines not in made_yards:
+            made_yards[lines] = _set_up(Path(shutil.copy(new_database, tmp_path_factory.mktemp("yard"))), lines)
+        path = Path(shutil.copy(made_yards[lines], tmp_path / "opened.db"))
+
+        def run_words(*words: str) -> Ran:
+            return fleetcare("--db", str(path), "--as-of", TODAY, *words)
+
+        return run_words
+
+    return opened
+
+
+def _set_up(path: Path, lines: str) -> Path:
+    for line in filter(None, map(str.strip, lines.splitlines())):
+        printed = io.StringIO()
+        with contextlib.redirect_stdout(printed), contextlib.redirect_stderr(printed):
+            status = run(["--db", str(path), "--as-of", TODAY, *shlex.split(line)], no_screens)
+        assert status == 0, f"{line}: {printed.getvalue()}"
+    return path
+
+
+def every_row(path: Path) -> list[str]:
+    """Give everything a database holds, as text, to see that nothing changed."""
+    with contextlib.closing(sqlite3.connect(path)) as connection:
+        return list(connection.iterdump())
