@@ -125,3 +125,13 @@ def test_the_bound_of_a_waiting_line_is_no_trigger_and_is_not_shortened() -> Non
         origin=last_done("2026-01-10", hours=0),
     )
     assert line(task, on="2026-05-01", hours=10, item=HALF).not_later_than == day("2027-01-10")
+
+
+@pytest.mark.parametrize(
+    ("factor", "opens", "last"),
+    [("1", "2026-06-30", "2026-08-09"), ("0.5", "2026-03-26", "2026-05-05"), ("0.2", "2026-01-30", "2026-03-07")],
+)
+def test_a_window_too_wide_for_a_shortened_interval_is_the_widest_that_fits(factor: str, opens: str, last: str) -> None:
+    task = a_task(every("191d", window_days=20), origin=last_done("2026-01-10"))
+    found = next_point(task, under((Kind.CALENDAR, factor, "2026-01-01")))
+    assert (found.opens, found.point) == (day(opens), day(last))

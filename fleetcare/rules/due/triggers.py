@@ -115,7 +115,7 @@ def calendar_next(
     else:
         chain = Chain(mark.done).plus(owed)
     nominal = _extended(trigger, chain)
-    window = trigger.window_days
+    window = window_days(trigger, interval)
     next_point = NextPoint(
         point=nominal + timedelta(days=window or 0),
         interval=interval,
@@ -140,6 +140,16 @@ def calendar_ahead(trigger: CalendarTrigger, interval: Span, owed: Span) -> int:
         return trigger.ahead if trigger.ahead < interval.nominal_days else interval.nominal_days // 2
     days = owed.nominal_days
     return 0 if days <= 1 else max(1, min(30, days // 10))
+
+
+def window_days(trigger: CalendarTrigger, interval: Span) -> int | None:
+    """The days of a window either side of its nominal day, None where there is no window.
+
+    One too wide for an interval that a duty factor has shortened is the widest that leaves a day between two.
+    """
+    if trigger.window_days is None:
+        return None
+    return min(trigger.window_days, (interval.nominal_days - 1) // 2)
 
 
 def _grid_credit(trigger: CalendarTrigger, interval: Span) -> int:
