@@ -1,4 +1,4 @@
-"""The screens as one program: its views, its colours, and the clock that looks whether the file changed."""
+"""The screens as one program: its views, its colours, its keys."""
 
 import os
 from collections.abc import Iterable
@@ -11,7 +11,6 @@ from textual.screen import Screen
 from fleetcare.errors import FleetError
 from fleetcare.tui.actions import EVERYWHERE, actions_of, bindings, called
 from fleetcare.tui.frame import FramedScreen
-from fleetcare.tui.loading import LoadingScreen
 from fleetcare.tui.looks import BAY, OFFICE, SIXTEEN
 from fleetcare.tui.screens.due import DueScreen
 
@@ -19,9 +18,6 @@ if TYPE_CHECKING:
     from collections.abc import Callable
 
     from fleetcare.context import Context
-
-FOLLOW_EVERY = 1.0
-"""Seconds between two looks at the file."""
 
 
 def _engines() -> "Screen[None]":
@@ -38,6 +34,7 @@ class FleetApp(App[None]):
     BINDINGS = bindings(EVERYWHERE)
     MODES: ClassVar[dict[str, "str | Callable[[], Screen[None]]"]] = {"due": DueScreen, "engines": _engines}
     DEFAULT_MODE = "due"
+    VERTICAL_BREAKPOINTS = [(0, "-low"), (15, "-high")]  # noqa: RUF012 - an instance variable to the base class
 
     def __init__(self, context: "Context") -> None:
         # Without colour nothing but the terminal's own two is left; a theme of true colour would come out as greys.
@@ -48,10 +45,6 @@ class FleetApp(App[None]):
             self.register_theme(theme)
         few = self.console.color_system in {None, "standard", "windows"}
         self.theme = (SIXTEEN if few or self.no_color else BAY).name
-
-    def on_mount(self) -> None:
-        """Begin to look at the file."""
-        self.set_interval(FOLLOW_EVERY, self._follow)
 
     def action_view(self, view: str) -> None:
         """Bring a view to the front."""
@@ -79,10 +72,6 @@ class FleetApp(App[None]):
         if self._exception is not None:
             raise self._exception
         return self.trouble.exit_code if self.trouble is not None else 0
-
-    def _follow(self) -> None:
-        if isinstance(self.screen, LoadingScreen):
-            self.screen.follow()
 
     def _fatal_error(self) -> None:
         """Close without a traceback on the screen: `status` raises the fault for whoever started the screens."""

@@ -32,13 +32,12 @@ class TopBar(Widget):
 
     def __init__(self) -> None:
         super().__init__()
-        self._right = ""
+        self._words, self._day = "", ""
 
-    def tell(self, right: str) -> None:
-        """Put a text at the right end."""
-        if right != self._right:
-            self._right = right
-            self.refresh()
+    def tell(self, day: str, words: str = "") -> None:
+        """Put a day at the right end, and before it some words, of which only what has room is shown."""
+        self._words, self._day = words, day
+        self.refresh()
 
     def render(self) -> Content:
         """Draw the bar."""
@@ -47,8 +46,9 @@ class TopBar(Widget):
             style = "bold reverse" if view == self.app.current_mode else "bold"
             parts.append(Content.from_markup(f"[{style} @click=app.view('{view}')] {title} [/]"))
         left = Content.assemble(" ", *parts)
-        room = self.size.width - left.cell_length - 2
-        return Content.assemble(left, " ", fit(self._right, max(room, 0), to_right=True))
+        day = f"  {self._day} "
+        room = max(self.size.width - left.cell_length - columns_of(day) - 1, 0)
+        return Content.assemble(left, " ", fit(self._words, room, to_right=True), day)
 
 
 class Notice(Widget):

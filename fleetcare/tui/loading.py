@@ -15,6 +15,9 @@ if TYPE_CHECKING:
 
     from sqlalchemy import Connection
 
+FOLLOW_EVERY = 1.0
+"""Seconds between two looks at the file."""
+
 _SILENT = 0.5  # seconds of reading before it is worth a word
 
 
@@ -39,6 +42,10 @@ class LoadingScreen(FramedScreen):
         super().__init__()
         self._seen: Stamp | None = None
         self._worker: Worker[None] | None = None
+
+    def on_mount(self) -> None:
+        """Begin to look whether the file changed."""
+        self.set_interval(FOLLOW_EVERY, self._look)
 
     @property
     def day(self) -> "date":
@@ -99,6 +106,10 @@ class LoadingScreen(FramedScreen):
             answer = self.Failed(error)
         if not worker.is_cancelled:
             self.post_message(answer)
+
+    def _look(self) -> None:
+        if self.is_current:
+            self.follow()
 
     def _still_reading(self, worker: Worker[None]) -> None:
         if worker is self._worker and not worker.is_finished:

@@ -42,7 +42,7 @@ BAY = Theme(
     success="#83c08a",
     accent="#7db7ff",
     dark=True,
-    variables={"quiet": "#93a1a8", "cursor": "#2f4653", "near": "#d9c27e", "probably": "#cfa56b"},
+    variables={"quiet": "#9fadb4", "cursor": "#263a46", "near": "#d9c27e", "probably": "#cfa56b"},
 )
 OFFICE = Theme(
     name="office",
@@ -56,7 +56,7 @@ OFFICE = Theme(
     success="#2c6b34",
     accent="#1253a4",
     dark=False,
-    variables={"quiet": "#5c666b", "cursor": "#cfdfe8", "near": "#6b5716", "probably": "#7d4f12"},
+    variables={"quiet": "#4d565b", "cursor": "#cfdfe8", "near": "#6b5716", "probably": "#7d4f12"},
 )
 SIXTEEN = Theme(
     name="sixteen",

@@ -7,8 +7,8 @@ import pytest
 from textual.pilot import Pilot
 
 from fleetcare.context import Context
-from fleetcare.tui.app import FOLLOW_EVERY, FleetApp
-from fleetcare.tui.loading import LoadingScreen
+from fleetcare.tui.app import FleetApp
+from fleetcare.tui.loading import FOLLOW_EVERY, LoadingScreen
 from tests.tui.conftest import TODAY, Opened, line_with, press, seen, settle_down, type_in
 
 
@@ -31,7 +31,7 @@ async def test_a_change_in_another_window_shows(opened: Opened, db: Path) -> Non
 
 
 async def test_the_timer_looks_by_itself(opened: Opened, db: Path, monkeypatch: pytest.MonkeyPatch) -> None:
-    monkeypatch.setattr("fleetcare.tui.app.FOLLOW_EVERY", 0.05)
+    monkeypatch.setattr("fleetcare.tui.loading.FOLLOW_EVERY", 0.05)
     async with opened(size=(80, 40)) as pilot:
         type_in(db, "reading", "TR-1", "4910", "--on", TODAY)
         await pilot.pause(0.2)
@@ -119,7 +119,7 @@ async def test_a_working_of_a_line_that_is_gone_says_so(opened: Opened, db: Path
     async with opened("down", "enter", size=(160, 24)) as pilot:
         type_in(db, "task", "remove", "PS-1", "Oil and filter")
         await follow(pilot)
-        assert line_with(pilot, "PS-1 has no task 'Oil and filter'")
+        assert line_with(pilot, "state", "no line: ended on 2026-05-01")
 
 
 @pytest.mark.parametrize("content", [b"", b"not a database at all" * 100], ids=["empty", "something else"])

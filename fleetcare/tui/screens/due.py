@@ -65,7 +65,7 @@ def _iso(day: date | None) -> str:
 COLUMNS: tuple[Column[ReviewLine], ...] = (
     Column("   STATE", state_cell, 10, 10),
     Column("ENGINE", lambda line: Cell(line.row.engine, "strong"), 8, 16),
-    Column("TASK", lambda line: line.row.task, 12, 34),
+    Column("TASK", lambda line: line.row.task, 18, 34),
     Column("DIAL", _dial, 20, 20, to_right=True, drop=2),
     Column("BY DAY", lambda line: _iso(line.row.next_due_on), 10, 10, to_right=True, drop=3),
     Column("LEFT", _left, 16, 16, to_right=True),
@@ -73,6 +73,16 @@ COLUMNS: tuple[Column[ReviewLine], ...] = (
     Column("SITE", lambda line: line.row.site, 8, 20, drop=5),
     Column("NOTE", _note, 12, 60, drop=6),
 )
+
+
+def in_words(line: ReviewLine) -> tuple[tuple[str, str], ...]:
+    """Say a line in three lines of (text, tone): what, on whose engine, and when with all that bears on it."""
+    row = line.row
+    machine = f"in {row.machine}" if row.machine not in {"", row.engine} else ""
+    whose = ", ".join(word for word in (f"{line.name} {machine}".strip(), row.site) if word)
+    rest = "; ".join(word for word in (say_due(row), say_likely(row), *_notes(line)) if word)
+    lines = (f"{row.engine}  {row.task}", "strong"), (whose, "quiet"), (rest, "")
+    return tuple(line for line in lines if line[0])
 
 
 class DueScreen(FindingScreen):
@@ -100,7 +110,7 @@ class DueScreen(FindingScreen):
     def show(self, found: Review) -> None:
         """Show the review, narrowed and arranged as before."""
         self.review = found
-        self.query_one(TopBar).tell("  ".join(word for word in (found.shop, say_day(found.on)) if word))
+        self.query_one(TopBar).tell(say_day(found.on), found.shop)
         self.rearrange()
 
     def fail(self, error: FleetError) -> None:
@@ -144,14 +154,7 @@ class DueScreen(FindingScreen):
     def on_long_list_moved(self) -> None:
         """Say the line under the cursor in words."""
         line = self.rows.current
-        if line is None:
-            self.query_one(Detail).tell()
-            return
-        row = line.row
-        machine = f"in {row.machine}" if row.machine not in {"", row.engine} else ""
-        whose = ", ".join(word for word in (f"{line.name} {machine}".strip(), row.site) if word)
-        rest = "; ".join(word for word in (say_due(row), say_likely(row), *_notes(line)) if word)
-        self.query_one(Detail).tell((f"{row.engine}  {row.task}", "strong"), (whose, "quiet"), (rest, ""))
+        self.query_one(Detail).tell(*(in_words(line) if line is not None else ()))
 
     def on_long_list_opened(self) -> None:
         """Open the working of a line."""

@@ -78,7 +78,7 @@ class EnginesScreen(FindingScreen):
         sites: dict[str, list[YardRow]] = {}
         for row in find_in(self.rows, self.text):
             sites.setdefault(_WITHDRAWN if row.status == _WITHDRAWN else row.site or "no site", []).append(row)
-        self.query_one(TopBar).tell(say_day(self.day) + (f'  only "{self.text}"' if self.text else ""))
+        self.query_one(TopBar).tell(say_day(self.day), f'only "{self.text}"' if self.text else "")
         sections = [Section(site, rows, "strong") for site, rows in sites.items()]
         self.query_one(LongList).show(sections, NO_MATCH if self.rows else EMPTY)
 

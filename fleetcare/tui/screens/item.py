@@ -8,15 +8,17 @@ from textual.content import Content
 from textual.widget import Widget
 
 from fleetcare.domain.cautions import GENERAL
+from fleetcare.domain.engines import Status, status_on
+from fleetcare.domain.printable import clean
 from fleetcare.tui.frame import TopBar, say_day
 from fleetcare.tui.loading import LoadingScreen
-from fleetcare.tui.screens.due import COLUMNS
+from fleetcare.tui.screens.due import COLUMNS, in_words
 from fleetcare.tui.widgets.columns import Cell, Column, Section
 from fleetcare.tui.widgets.detail import Detail
 from fleetcare.tui.widgets.long_list import LongList
 from fleetcare.tui.widgets.plot import Line, Plot, PlotView
 from fleetcare.tui.widgets.sheet import Block, Sheet
-from fleetcare.tui.widgets.text import fit
+from fleetcare.tui.widgets.text import columns_of, fit
 
 if TYPE_CHECKING:
     from datetime import date
@@ -25,7 +27,15 @@ if TYPE_CHECKING:
 
     from fleetcare.operations.life_plot import LifeCurve
     from fleetcare.operations.page import FullPage
+    from fleetcare.operations.review import ReviewLine
     from fleetcare.operations.show import HistoryEntry, ReadingLine
+
+_STANDING = {
+    Status.IN_SERVICE: "",
+    Status.LAID_UP: "LAID UP",
+    Status.STOOD_DOWN: "STOOD DOWN: NOT TO BE RUN",
+    Status.WITHDRAWN: "WITHDRAWN",
+}
 
 PARTS = ("plate", "meters", "lines", "history")
 
@@ -48,27 +58,32 @@ HISTORY: tuple[Column["HistoryEntry"], ...] = (
 
 
 class PartsBar(Widget):
-    """Whose page it is, and its parts, the one in front marked."""
+    """Whose page it is and whether it may run, and the parts of the page, the one in front marked."""
 
     def __init__(self) -> None:
         super().__init__()
-        self.whose, self.part = "", PARTS[0]
+        self.tag, self.status, self.rest, self.part = "", "", "", PARTS[0]
 
-    def tell(self, whose: str, part: str) -> None:
-        """Show another name or part."""
-        self.whose, self.part = whose, part
+    def tell(self, tag: str, status: str, rest: str, part: str) -> None:
+        """Show other words or another part."""
+        self.tag, self.status, self.rest, self.part = tag, status, rest, part
         self.refresh()
 
     def render(self) -> Content:
-        """Draw title and parts, the title literally."""
-        parts = [
-            Content.from_markup(
-                f"[{'bold reverse' if part == self.part else 'bold'} @click=screen.part('{part}')] {part.capitalize()} [/]"
-            )
-            for part in PARTS
-        ]
-        title = Content(fit(f" {self.whose}", self.size.width)).stylize("bold")
-        return Content.assemble(title, "\n ", *parts)
+        """Draw them, what was typed by people literally."""
+        title = [f" {clean(self.tag)}  ", self.status and f"{self.status}  "]
+        room = max(self.size.width - sum(map(columns_of, title)), 0)
+        words = Content.assemble(
+            (title[0], "bold"), (title[1], "bold $error"), fit(self.rest, room) if room else "", "\n "
+        )
+        marked = {part: "bold reverse" if part == self.part else "bold" for part in PARTS}
+        return Content.assemble(
+            words,
+            *(
+                Content.from_markup(f"[{style} @click=screen.part('{part}')] {part.capitalize()} [/]")
+                for part, style in marked.items()
+            ),
+        )
 
 
 class ItemScreen(LoadingScreen):
@@ -89,7 +104,7 @@ class ItemScreen(LoadingScreen):
         with_parts = (
             Vertical(Sheet(), id="plate"),
             Vertical(Sheet(), PlotView(), LongList(READINGS, lambda line: line.number), id="meters"),
-            Vertical(LongList(LINES, lambda line: line.key), id="lines"),
+            Vertical(LongList(LINES, lambda line: line.key), Detail(), id="lines"),
             Vertical(LongList(HISTORY, lambda entry: entry.number), Detail(), id="history"),
         )
         for part in with_parts:
@@ -119,7 +134,10 @@ class ItemScreen(LoadingScreen):
         self._title()
 
     def on_long_list_moved(self) -> None:
-        """Show the whole of the history entry under the cursor."""
+        """Say what is under the cursor of lines and history in words, whole."""
+        line: ReviewLine | None = self.query_one("#lines LongList", LongList).current
+        if line is not None:
+            self.query_one("#lines Detail", Detail).tell(in_words(line)[-1])
         entry: HistoryEntry | None = self.query_one("#history LongList", LongList).current
         if entry is not None:
             first = " ".join(f"entry {entry.number}, {entry.on.isoformat()}, {entry.kind} {entry.by}".split())
@@ -157,10 +175,10 @@ class ItemScreen(LoadingScreen):
         if self.page is None:
             return
         item = self.page.item.facts.item
-        status = dict(self.page.item.nameplate).get("status", "")
-        words = [item.tag, item.name, item.site, f"in {item.machine}" if item.machine not in {"", item.tag} else ""]
-        words.append({"in service": "", "stood down": "STOOD DOWN: NOT TO BE RUN"}.get(status, status))
-        self.query_one(PartsBar).tell("  ".join(word for word in words if word), self.part)
+        machine = f"in {item.machine}" if item.machine not in {"", item.tag} else ""
+        rest = "  ".join(word for word in (item.name, item.site, machine) if word)
+        status = _STANDING[status_on(item.spells, self.day)] if item.is_engine else ""
+        self.query_one(PartsBar).tell(item.tag, status, rest, self.part)
 
     def _plot(self) -> None:
         curves = self.page.curves if self.page is not None else ()

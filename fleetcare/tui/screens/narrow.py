@@ -5,7 +5,7 @@ from typing import TYPE_CHECKING
 
 from textual.widget import Widget
 
-from fleetcare.tui.frame import FramedScreen, TopBar
+from fleetcare.tui.frame import FramedScreen, TopBar, say_day
 from fleetcare.tui.widgets.columns import Cell, Column, Section
 from fleetcare.tui.widgets.long_list import LongList
 
@@ -38,7 +38,7 @@ class NarrowScreen(FramedScreen):
 
     def on_mount(self) -> None:
         """Fill it."""
-        self.query_one(TopBar).tell("what to show of the due list")
+        self.query_one(TopBar).tell(say_day(self.review.on), "what to show")
         self._show()
 
     def on_long_list_opened(self) -> None:
