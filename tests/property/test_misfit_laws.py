@@ -6,6 +6,7 @@ with a neighbour; all new ones are taken where none does.
 
 from datetime import date, timedelta
 from decimal import Decimal
+from itertools import pairwise
 
 from hypothesis import given
 from hypothesis import strategies as st
@@ -20,8 +21,7 @@ readings = st.lists(st.tuples(st.integers(0, 20), st.integers(0, 300), st.boolea
 
 def pairs_that_break(figures: list[tuple[date, Decimal]], kept: list[int]) -> list[tuple[int, int]]:
     """The neighbours among some figures that break the hard rule."""
-    pairs = zip(kept, kept[1:], strict=False)
-    return [(one, next_) for one, next_ in pairs if breaks_rule(figures[one], figures[next_], CAP, "h")]
+    return [(one, after) for one, after in pairwise(kept) if breaks_rule(figures[one], figures[after], CAP, "h")]
 
 
 @given(readings)
