@@ -102,7 +102,8 @@ class PastWork:
     """One time the task was done, against the point it had then.
 
     `over` holds, for each kind done past its own point, by how much (base units, days) and the grace allowed.
-    `missed` are periods or points that went by unserved; `served` the period a once-each entry served.
+    `missed` holds, per kind, the points or last days of periods that went by unserved before it; `served` is the
+    period a once-each entry served.
     `counted` is False for work that neither closed nor re-based the line, and `note` says why.
     """
 
@@ -110,7 +111,7 @@ class PastWork:
     number: int
     on: date
     over: dict[Kind, tuple[Decimal, Decimal]] = field(default_factory=dict)
-    missed: tuple[Point, ...] = ()
+    missed: dict[Kind, tuple[Point, ...]] = field(default_factory=dict)
     served: str = ""
     counted: bool = True
     note: str = ""
@@ -126,7 +127,7 @@ class DueLine:
     status: Status
     state: State
     triggers: tuple[TriggerLine, ...]
-    deciding: TriggerLine | None
+    deciding: TriggerLine
     last_done_on: date | None = None
     last_done_number: int | None = None
     reason: str = ""

@@ -97,11 +97,7 @@ def task_working(
     task = next(task for task in facts.tasks if task.id == task_id)
     line = next((line for line in item_lines(facts, is_future) if line.task.id == task_id), None)
     working = explain(line, facts) if line is not None else [("state", f"no line: {_why_no_line(facts, task)}")]
-    version = task.version_on(on)
-    past = [
-        (f"entry {work.number}, {work.on.isoformat()}", say_past(work, version, facts))
-        for work in replay(facts, task).past
-    ]
+    past = [(f"entry {work.number}, {work.on.isoformat()}", say_past(work, facts)) for work in replay(facts, task).past]
     return working, past[::-1]
 
 

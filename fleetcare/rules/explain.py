@@ -8,7 +8,7 @@ from decimal import Decimal
 
 from fleetcare.domain.lines import DueLine, NextPoint, PastWork, Point, TriggerLine
 from fleetcare.domain.quantities import Kind, Span, from_base, plain
-from fleetcare.domain.schedules import Anchor, CalendarTrigger, Combine, TaskVersion, Trigger
+from fleetcare.domain.schedules import Anchor, CalendarTrigger, Combine, Trigger
 from fleetcare.rules.due.facts import ItemFacts
 from fleetcare.rules.due.row import due_row, unit_of
 from fleetcare.rules.explain_forecast import say_clues, say_range
@@ -31,7 +31,7 @@ def explain(line: DueLine, facts: ItemFacts) -> list[Label]:
     labels: list[Label] = [("state", _say_state(line, facts))]
     if line.called_because:
         labels.append(("raised because", line.called_because))
-    labels.append(("last done", _say_last_done(line)))
+    labels.append(("last done", _say_last_done(line, facts)))
     for trigger in line.triggers:
         labels.extend(_explain_trigger(line, trigger, facts))
     if len(line.triggers) > 1:
@@ -70,7 +70,7 @@ def say_amount(value: Decimal, unit: str) -> str:
     return f"{plain(rounded)} {unit}"
 
 
-def say_past(work: PastWork, version: TaskVersion, facts: ItemFacts) -> str:
+def say_past(work: PastWork, facts: ItemFacts) -> str:
     """Say what one entry did to a task: in time, over, with what was missed."""
     if not work.counted:
         return f"does not count: {work.note}"
@@ -80,16 +80,13 @@ def say_past(work: PastWork, version: TaskVersion, facts: ItemFacts) -> str:
     for kind, (over, grace) in work.over.items():
         unit = _unit(kind, facts)
         words.append(f"done {_amount(over, kind, unit)} over, {_amount(grace, kind, unit)} allowed")
-    if work.missed:
-        words.append(f"missed {', '.join(_say_point(point, version, facts) for point in work.missed)}")
+    for kind, points in work.missed.items():
+        words.append(f"missed {', '.join(_say_point(point, _unit(kind, facts)) for point in points)}")
     return "; ".join(words) or "in time"
 
 
-def _say_point(point: Point, version: TaskVersion, facts: ItemFacts) -> str:
-    if isinstance(point, date):
-        return point.isoformat()
-    counted = version.counted
-    return say_amount(point, unit_of(facts, counted[0].kind)) if counted else plain(point)
+def _say_point(point: Point, unit: str) -> str:
+    return point.isoformat() if isinstance(point, date) else say_amount(point, unit)
 
 
 def _unit(kind: Kind, facts: ItemFacts) -> str:
@@ -103,10 +100,10 @@ def _amount(value: Decimal, kind: Kind, unit: str) -> str:
 def _say_state(line: DueLine, facts: ItemFacts) -> str:
     row = due_row(line, facts)
     words = [line.state.value]
-    if row.remaining is not None and line.deciding is not None:
+    if row.remaining is not None:
         left = say_left(row.remaining, row.unit)
         words.append(f"by {line.deciding.kind}, {left}")
-    elif line.reason:
+    else:
         words.append(line.reason)
     if line.estimated is not None:
         words.append(f"by estimate {line.estimated}")
@@ -120,14 +117,19 @@ def say_left(remaining: Decimal, unit: str) -> str:
     return f"{shown} {unit} over" if remaining < 0 else f"{shown} {unit} left"
 
 
-def _say_last_done(line: DueLine) -> str:
+def _say_last_done(line: DueLine, facts: ItemFacts) -> str:
+    """Say what the line counts from, with the overrun that work had."""
     if line.last_done_on is None:
         origin = line.task.origin
         if origin is not None and origin.as_new and origin.on is not None:
             return f"never; counts from the start on {origin.on.isoformat()}"
         return "not known"
-    entry = f" (entry {line.last_done_number})" if line.last_done_number is not None else " (before the log began)"
-    return f"{line.last_done_on.isoformat()}{entry}"
+    day = line.last_done_on.isoformat()
+    work = next((work for work in line.past if work.number == line.last_done_number), None)
+    if work is None:
+        return f"{day} (before the log began)"
+    late = f": {say_past(work, facts)}" if work.over or work.missed else ""
+    return f"{day} (entry {work.number}){late}"
 
 
 def _explain_trigger(line: DueLine, trigger: TriggerLine, facts: ItemFacts) -> list[Label]:
@@ -136,8 +138,7 @@ def _explain_trigger(line: DueLine, trigger: TriggerLine, facts: ItemFacts) -> l
     if trigger.next is None:
         return [(kind.value, f"{say_trigger(trigger.trigger, unit)}: unset, {trigger.unset_because}")]
     labels = [(kind.value, _say_sum(line, trigger, trigger.next, facts, unit))]
-    if trigger.remaining is not None and trigger.now is not None:
-        labels.append(("", _say_now(trigger, trigger.next, facts, unit)))
+    labels.append(("", _say_now(trigger, trigger.next, facts, unit)))
     if kind is not Kind.CALENDAR and trigger.forecast is not None:
         labels.append(("", _say_forecast(trigger, unit)))
     return labels
@@ -176,8 +177,7 @@ def _say_sum(line: DueLine, trigger: TriggerLine, next_point: NextPoint, facts: 
 def _say_passed(line: DueLine, passed: tuple[Point, ...], unit: str) -> str:
     """Name the grid points skipped, or count the whole intervals missed."""
     if line.version.effective_anchor is Anchor.ON_GRID:
-        points = (point.isoformat() if isinstance(point, date) else say_amount(point, unit) for point in passed)
-        return f"skipped {', '.join(points)}"
+        return f"skipped {', '.join(_say_point(point, unit) for point in passed)}"
     count = len(passed)
     return f"{count} whole {'interval' if count == 1 else 'intervals'} missed"
 

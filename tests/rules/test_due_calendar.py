@@ -137,6 +137,12 @@ def test_grid_days_count_months_from_the_origin_and_work_a_little_early_serves_t
     assert next_day(on_grid(origin="2026-01-31"), done_on) == next_on
 
 
+@pytest.mark.parametrize("origin", ["1996-01-31", "2026-01-31", "2056-01-31"])
+@pytest.mark.parametrize(("interval", "next_on"), [("1mo", "2026-02-28"), ("1y", "2027-01-31")])
+def test_a_grid_reaches_as_far_back_and_ahead_as_its_origin_lies(origin: str, interval: str, next_on: str) -> None:
+    assert next_day(on_grid(interval, origin=origin), "2026-02-10") == next_on
+
+
 @pytest.mark.parametrize(
     ("interval", "ahead", "credit"),
     [

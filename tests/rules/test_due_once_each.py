@@ -7,7 +7,7 @@ import pytest
 from fleetcare.domain.engines import Status, StatusSpell
 from fleetcare.domain.lines import DueLine, PastWork, State
 from fleetcare.domain.quantities import Kind
-from fleetcare.domain.schedules import CalendarTrigger, Combine, Deferral, Origin, Period, Task
+from fleetcare.domain.schedules import Anchor, CalendarTrigger, Combine, Deferral, Origin, Period, Task
 from fleetcare.rules.due.calendar import period_of, period_span, say_period
 from tests.builders import a_deferral, a_task, an_item, day, days_from, done, every, last_done, line, new_at
 
@@ -27,7 +27,9 @@ def after(task: Task, *done_on: str, on: str = "2030-01-01", **kwargs: object) -
 
 def said(works: tuple[PastWork, ...]) -> list[str]:
     """What each entry served, with the last days of the periods missed before it."""
-    return [" ".join([work.served, *(f"missed {point}" for point in work.missed)]) for work in works]
+    return [
+        " ".join([work.served, *(f"missed {point}" for point in work.missed.get(Kind.CALENDAR, ()))]) for work in works
+    ]
 
 
 # Periods
@@ -87,7 +89,7 @@ def test_work_early_or_late_in_its_period_serves_it_and_the_next_one_is_due(
 ) -> None:
     due = after(each(period), done_on)
     assert due.triggers[0].point == day(next_on)
-    assert due.past[0].missed == ()
+    assert due.past[0].missed == {}
 
 
 @pytest.mark.parametrize(
@@ -162,7 +164,8 @@ def test_a_missed_period_stays_overdue_until_the_next_entry_and_then_stands_in_t
     assert (waiting.state, waiting.triggers[0].point) == (State.OVERDUE, day("2026-02-28"))
     served = after(task, "2026-05-20", on="2026-05-20")
     assert (served.state, served.triggers[0].point) == (State.CLEAR, day("2026-06-30"))
-    assert served.past[0].missed == (day("2026-02-28"), day("2026-03-31"), day("2026-04-30"))
+    missed = (day("2026-02-28"), day("2026-03-31"), day("2026-04-30"))
+    assert served.past[0].missed == {Kind.CALENDAR: missed}
 
 
 def test_work_in_grace_is_over_by_its_days_and_work_in_the_next_period_is_not_late_for_its_own() -> None:
@@ -218,6 +221,13 @@ def test_extra_work_leaves_the_period_still_owed_and_its_deferral_as_they_were()
 
 
 # Together with other triggers, versions and pauses
+
+
+def test_points_of_a_counted_trigger_that_went_by_are_named_beside_the_periods() -> None:
+    monthly = CalendarTrigger(period_span(Period.MONTH), once_each=Period.MONTH)
+    task = a_task(every("50h"), monthly, origin=new_at(0, day("2026-01-10")), anchor=Anchor.FROM_DUE)
+    due = line(task, on="2026-03-21", done=[done("2026-03-20", hours=120)], hours=121)
+    assert due.past[0].missed == {Kind.HOURS: (Decimal(100),), Kind.CALENDAR: (day("2026-02-28"),)}
 
 
 def test_extra_work_re_bases_a_counted_trigger_of_the_same_task() -> None:

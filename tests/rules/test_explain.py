@@ -1,5 +1,6 @@
 """A line's working, in words somebody can check with a pencil."""
 
+from dataclasses import replace
 from decimal import Decimal
 
 import pytest
@@ -7,12 +8,13 @@ import pytest
 from fleetcare.domain.engines import DutyFactor, Status, StatusSpell
 from fleetcare.domain.lines import DueLine
 from fleetcare.domain.log import Done
-from fleetcare.domain.meters import LifeFigure
+from fleetcare.domain.meters import Counter, LifeFigure, Meter, MeterFit, Reading
 from fleetcare.domain.quantities import Kind, Span
 from fleetcare.domain.schedules import Anchor, CalendarTrigger, Call, Combine, Deferral, Period, Task
 from fleetcare.rules.due.due_list import item_lines
 from fleetcare.rules.due.facts import ItemFacts
 from fleetcare.rules.explain import explain, say_amount, say_left, say_past, say_trigger
+from fleetcare.rules.meters import counter_history
 from tests.builders import a_task, an_item, day, done, every, facts, last_done, new_at
 
 
@@ -29,7 +31,7 @@ def said(given: ItemFacts, label: str) -> str:
 def past_of(given: ItemFacts) -> list[str]:
     """What is said of each past work of the first line."""
     line: DueLine = item_lines(given)[0]
-    return [say_past(work, line.version, given) for work in line.past]
+    return [say_past(work, given) for work in line.past]
 
 
 def test_the_working_begins_with_the_state_and_what_is_left_by_the_deciding_trigger() -> None:
@@ -74,6 +76,31 @@ def test_what_it_counts_from_without_an_entry_is_said(task: Task, text: str) -> 
 def test_the_entry_it_counts_from_is_named() -> None:
     given = facts(a_task(every("250h")), on="2026-05-01", hours=10, done=[done("2026-04-01", 7, hours=5)])
     assert said(given, "last done") == "2026-04-01 (entry 7)"
+
+
+def test_an_overrun_of_the_work_it_counts_from_is_said_on_the_line() -> None:
+    task = a_task(every("250h", grace=10), origin=last_done("2025-01-01", hours=1000))
+    given = facts(task, on="2026-05-01", hours=1300, done=[done("2026-04-20", hours=1261)])
+    assert said(given, "last done") == "2026-04-20 (entry 1): done 11 h over, 10 h allowed"
+
+
+def test_a_point_below_the_first_figure_of_the_meter_now_counting_is_not_said_on_the_dial() -> None:
+    swap = day("2026-03-01")
+    fits = (
+        MeterFit(Meter(1, Kind.HOURS, "h"), None, Decimal(0), swap, Decimal(900)),
+        MeterFit(Meter(2, Kind.HOURS, "h"), swap, Decimal(0)),
+    )
+    counter = Counter(Kind.HOURS, Decimal(0), fits, (Reading(1, 2, swap, Decimal(5)),))
+    given = facts(a_task(every("250h"), origin=last_done("2026-01-01", hours=600)), on="2026-05-01")
+    given = replace(given, counters={Kind.HOURS: counter_history(counter, given.on)})
+    assert said(given, "hours") == "every 250 h, from 600 h: due at 850 h"
+
+
+def test_a_fresh_reading_needs_no_estimate_beside_its_forecast() -> None:
+    readings = [(f"2026-0{month}-01", 100 * month) for month in (1, 2, 3, 4)]
+    given = facts(a_task(every("250h"), origin=last_done("2026-01-01", hours=300)), on="2026-04-02", hours=readings)
+    assert [text.partition(" ")[0] for label, text in working(given) if not label] == ["now", "reached"]
+    assert all("likely" not in text for _, text in working(given))
 
 
 def test_several_triggers_say_how_they_combine() -> None:
@@ -250,6 +277,14 @@ def test_past_work_names_the_points_it_missed() -> None:
     task = a_task(every("100h"), anchor=Anchor.FROM_DUE, origin=last_done("2026-01-01", hours=1000))
     given = facts(task, on="2026-05-01", hours=1215, done=[done("2026-04-01", hours=1215)])
     assert past_of(given) == ["done 115 h over, 0 h allowed; missed 1200 h"]
+
+
+def test_past_work_names_the_points_of_each_kind_in_its_own_unit() -> None:
+    both = (every("100h"), every("1000km"))
+    task = a_task(*both, anchor=Anchor.FROM_DUE, origin=last_done("2026-01-01", hours=1000, distance=0))
+    work = done("2026-04-01", hours=1215, distance=2100)
+    given = facts(task, on="2026-05-01", hours=1215, km=2100, done=[work])
+    assert "missed 1200 h; missed 2000 km" in past_of(given)[0]
 
 
 def test_past_work_of_a_period_says_which_it_serves_and_which_were_missed() -> None:

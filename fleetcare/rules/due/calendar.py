@@ -89,12 +89,7 @@ def period_span(period: Period) -> Span:
 def say_period(period: Period, of: CalendarPeriod) -> str:
     """Name a period by the days it would have without a pause: "2026-03", "2026-Q1", "2026", "week to 2026-03-15"."""
     first = of.first
-    match period:
-        case Period.WEEK:
-            return f"week to {period_of(period, first).last.isoformat()}"
-        case Period.MONTH:
-            return f"{first:%Y-%m}"
-        case Period.QUARTER:
-            return f"{first:%Y}-Q{(first.month + 2) // 3}"
-        case Period.YEAR:
-            return f"{first:%Y}"
+    if period is Period.WEEK:
+        return f"week to {period_of(period, first).last.isoformat()}"
+    months = {Period.MONTH: f"-{first:%m}", Period.QUARTER: f"-Q{(first.month + 2) // 3}", Period.YEAR: ""}
+    return f"{first:%Y}{months[period]}"

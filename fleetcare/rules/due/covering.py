@@ -4,7 +4,7 @@ from collections.abc import Mapping, Sequence
 from dataclasses import replace
 from datetime import date
 
-from fleetcare.domain.lines import DueLine, Point, State, TriggerLine, apart
+from fleetcare.domain.lines import DueLine, Point, State, apart
 from fleetcare.domain.quantities import Kind
 from fleetcare.domain.schedules import Combine
 
@@ -51,19 +51,19 @@ def with_covering(lines: Sequence[DueLine], covers: Mapping[int, Sequence[int]])
 
 
 def _covered_by(line: DueLine, coverers: Sequence[DueLine]) -> str:
-    if line.state in {State.OVERDUE, State.UNSET} or line.version.needs_sheet or line.deciding is None:
+    if line.state in {State.OVERDUE, State.UNSET} or line.version.needs_sheet:
         return ""
-    decider = line.deciding
-    able = [big for big in coverers if _comes_in_time(big, line, decider)]
+    able = [big for big in coverers if _comes_in_time(big, line)]
     best = min(able, key=lambda big: (big.likely_on or date.max, big.task.name), default=None)
     return best.task.name if best is not None else ""
 
 
-def _comes_in_time(big: DueLine, line: DueLine, decider: TriggerLine) -> bool:
+def _comes_in_time(big: DueLine, line: DueLine) -> bool:
     """Tell whether the big job is due no later than the small one.
 
     Compared in the kind that decides the small one, else by likely dates, else not at all.
     """
+    decider = line.deciding
     opens = next((t.next.opens for t in line.triggers if t.next is not None and t.next.opens is not None), None)
     if opens is not None and (big.likely_on is None or big.likely_on < opens):
         return False

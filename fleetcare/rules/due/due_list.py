@@ -43,5 +43,5 @@ def within(lines: Iterable[DueLine], on: date, days: int) -> list[DueLine]:
 
 
 def _place(line: DueLine) -> tuple[int, Decimal, str, str]:
-    share = line.deciding.share if line.deciding is not None and line.deciding.share is not None else Decimal(0)
+    share = line.deciding.share if line.deciding.share is not None else Decimal(0)
     return line.state.rank, share, line.item.tag, line.task.name

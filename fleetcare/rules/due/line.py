@@ -71,11 +71,11 @@ def _assembled(
 ) -> DueLine:
     """Combine the triggers of a line."""
     how = version.combine
-    state = combine(how, [t.state for t in triggers])
-    decider = deciding(how, state, triggers)
+    decider = deciding(how, triggers)
     limit = _not_later_than(facts, version, replayed)
-    if limit is not None and worst([limit.state, state]) is not state:
-        state, decider = limit.state, limit
+    if limit is not None and worst([limit.state, decider.state]) is not decider.state:
+        decider = limit
+    state = decider.state
     bound = limit.point if limit is not None and isinstance(limit.point, date) else None
     early, likely, late = _dates(how, triggers, bound)
     unset = next((t.unset_because for t in triggers if t.state is State.UNSET), "")

@@ -95,18 +95,21 @@ def _take(marks: Marks, facts: ItemFacts, task: Task, version: TaskVersion, done
     over = overruns(version, {kind: point for kind, (point, _) in points.items()}, done, counts_from)
     calendar = version.calendar
     if calendar is not None and calendar.once_each is not None:
-        served, missed = _serve(marks, facts, task, version, calendar, done)
-        if missed or not served:
+        served, periods = _serve(marks, facts, task, version, calendar, done)
+        if periods or not served:
             over.pop(Kind.CALENDAR, None)
         # A period still owed counts from the entry that served the one before it, and so does its deferral.
         _move(marks, points, done, from_entry=done.entry_id if served else marks.from_entry)
         note = "" if served else "its period was already served"
-        return PastWork(done.entry_id, done.number, done.on, over, missed, served, note=note)
-    marks.owed = None
-    _move(marks, points, done, from_entry=done.entry_id)
+    else:
+        marks.owed = None
+        served, periods, note = "", (), ""
+        _move(marks, points, done, from_entry=done.entry_id)
     after = next_points(facts, task, version, marks, done.on)
-    missed = tuple(passed for point, _ in after.values() for passed in point.passed)
-    return PastWork(done.entry_id, done.number, done.on, over, missed)
+    missed = {kind: point.passed for kind, (point, _) in after.items() if point.passed}
+    if periods:
+        missed[Kind.CALENDAR] = periods
+    return PastWork(done.entry_id, done.number, done.on, over, missed, served, note=note)
 
 
 def _opens_later(version: TaskVersion, points: Points, done: Done) -> date | None:

@@ -8,7 +8,7 @@ from fleetcare.domain.engines import Status
 from fleetcare.domain.lines import DueLine, Point, State, TriggerLine
 from fleetcare.domain.quantities import BASE_UNIT, Kind, from_base, plain
 from fleetcare.rules.due.facts import ItemFacts
-from fleetcare.rules.due.states import combine, deciding
+from fleetcare.rules.due.states import deciding
 
 PROBABLY = (State.OVERDUE, State.DUE)
 
@@ -72,7 +72,7 @@ def due_row(line: DueLine, facts: ItemFacts) -> DueRow:
         site=line.item.site,
         task=line.task.name,
         state=line.state.value,
-        trigger=decider.kind.value if decider is not None else "",
+        trigger=decider.kind.value,
         last_done_on=line.last_done_on,
         last_done_at=_in_unit(counted.counts_from, unit) if counted is not None and was_done else None,
         next_due_at=_in_unit(counted.point, unit) if counted is not None else None,
@@ -103,13 +103,10 @@ def unit_of(facts: ItemFacts, kind: Kind) -> str:
 
 def _deciding_counted(line: DueLine) -> TriggerLine | None:
     """The counted trigger the figures of a line are taken from: the deciding one among the counted."""
-    if line.deciding is not None and line.deciding.kind is not Kind.CALENDAR:
+    if line.deciding.kind is not Kind.CALENDAR:
         return line.deciding
     counted = [t for t in line.triggers if t.kind is not Kind.CALENDAR]
-    if not counted:
-        return None
-    how = line.version.combine
-    return deciding(how, combine(how, [t.state for t in counted]), counted)
+    return deciding(line.version.combine, counted) if counted else None
 
 
 def _next_due_on(line: DueLine, calendar: TriggerLine | None) -> date | None:
@@ -120,15 +117,13 @@ def _next_due_on(line: DueLine, calendar: TriggerLine | None) -> date | None:
     return min((day for day in days if day is not None), default=None)
 
 
-def _remaining(decider: TriggerLine | None, facts: ItemFacts) -> Decimal | None:
-    if decider is None or decider.remaining is None or decider.kind is Kind.CALENDAR:
-        return decider.remaining if decider is not None else None
+def _remaining(decider: TriggerLine, facts: ItemFacts) -> Decimal | None:
+    if decider.remaining is None or decider.kind is Kind.CALENDAR:
+        return decider.remaining
     return from_base(decider.remaining, unit_of(facts, decider.kind))
 
 
-def _unit(decider: TriggerLine | None, facts: ItemFacts) -> str:
-    if decider is None:
-        return ""
+def _unit(decider: TriggerLine, facts: ItemFacts) -> str:
     return "d" if decider.kind is Kind.CALENDAR else unit_of(facts, decider.kind)
 
 

@@ -47,15 +47,14 @@ def combine(how: Combine, states: Sequence[State]) -> State:
     return max(states, key=lambda state: state.rank)
 
 
-def deciding(how: Combine, state: State, triggers: Sequence[TriggerLine]) -> TriggerLine | None:
-    """Give the trigger that decides a line within its state.
+def deciding(how: Combine, triggers: Sequence[TriggerLine]) -> TriggerLine:
+    """Give the trigger that decides a line, one of those in the state they combine to.
 
     For `first` the earliest likely date, else the smallest share of its interval left; for `last`
-    the latest, else the largest; else option order. None where no trigger is in that state.
+    the latest, else the largest; else option order.
     """
+    state = combine(how, [t.state for t in triggers])
     candidates = [t for t in triggers if t.state is state]
-    if not candidates:
-        return None
     pick: Callable[..., TriggerLine] = min if how is Combine.FIRST else max
     dates = [t.forecast.likely for t in candidates if t.forecast is not None]
     if len(dates) == len(candidates) and None not in dates:
