@@ -71,7 +71,7 @@ COLUMNS: tuple[Column[ReviewLine], ...] = (
     Column("LEFT", _left, 16, 16, to_right=True),
     Column("LIKELY", lambda line: _iso(line.row.likely_date), 10, 10, to_right=True, drop=4),
     Column("SITE", lambda line: line.row.site, 8, 20, drop=5),
-    Column("NOTE", _note, 12, 60, drop=6),
+    Column("NOTE", _note, 12, 200, drop=6),
 )
 
 
