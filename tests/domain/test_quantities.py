@@ -19,6 +19,7 @@ from fleetcare.domain.quantities import (
     parse_interval,
     parse_span,
     plain,
+    tenth,
     to_base,
 )
 from fleetcare.errors import Misread, Refused
@@ -67,6 +68,22 @@ def test_a_span_is_whole_months_or_whole_days_and_has_a_nominal_length(
 )
 def test_a_figure_is_written_without_exponent_or_trailing_zeros(value: str, written: str) -> None:
     assert plain(Decimal(value)) == written
+
+
+@pytest.mark.parametrize(
+    ("value", "shown"),
+    [
+        ("12.34", "12.3"),
+        ("0", "0.0"),
+        ("0.05", "0.1"),
+        ("0.001", "0.1"),
+        ("-0.001", "-0.1"),
+        ("-0.06", "-0.1"),
+        ("-12.36", "-12.4"),
+    ],
+)
+def test_a_remainder_is_never_rounded_to_nothing(value: str, shown: str) -> None:
+    assert tenth(Decimal(value)) == Decimal(shown)
 
 
 @pytest.mark.parametrize(
