@@ -8,7 +8,7 @@ from typing import TYPE_CHECKING
 from fleetcare.domain.engines import DutyFactor, Item, Status, StatusSpell
 from fleetcare.domain.log import Done
 from fleetcare.domain.meters import Counter, LifeFigure, Meter, MeterFit, Reading
-from fleetcare.domain.quantities import COUNTED, Kind, from_base, to_base
+from fleetcare.domain.quantities import Kind, from_base, to_base
 from fleetcare.operations.entries import first_entries, first_of
 from fleetcare.operations.load_tasks import load_start_figures, load_tasks
 from fleetcare.operations.rows import Row, day, fetch, grouped, known_day
@@ -170,10 +170,7 @@ def _load_readings(connection: "Connection", meter_ids: Sequence[int]) -> dict[i
 def _load_done(
     connection: "Connection", ids: Sequence[int], on: date, counters: dict[int, dict[Kind, CounterHistory]]
 ) -> dict[int, tuple[Done, ...]]:
-    """Load, per task, the entries that closed it: neither superseded, voided, in part, nor dated after `on`.
-
-    Ordered by day, within a day by life total, then by entry number.
-    """
+    """Load, per task, the entries that closed it: neither superseded, voided, in part, nor dated after `on`."""
     rows = fetch(
         connection,
         "select log_task.task_id, entry.item_id, entry.id, entry.\"on\", coalesce(person.name, ''),"
@@ -196,7 +193,7 @@ def _load_done(
             lives[entry_id] = entry_lives(counters.get(row[1], {}), own.get(row[1], {}), entry_id, entry_day)
         first = first_of(firsts, entry_id)
         done.setdefault(row[0], []).append(Done(first, entry_id, entry_day, lives[entry_id], row[4], row[5]))
-    return {task_id: tuple(sorted(entries, key=_place)) for task_id, entries in done.items()}
+    return {task_id: tuple(entries) for task_id, entries in done.items()}
 
 
 def own_readings(counters: Mapping[Kind, CounterHistory]) -> dict[tuple[int, Kind], Reading]:
@@ -216,12 +213,8 @@ def entry_lives(
     lives: dict[Kind, LifeFigure] = {}
     for kind, counter in counters.items():
         reading = own.get((entry_id, kind))
-        life = counter.life_at(reading.value, reading.on) if reading is not None else None
+        life = counter.life_of(reading.meter_id, reading.value, reading.on) if reading is not None else None
         known = LifeFigure(life) if life is not None else counter.figure_on(on)
         if known is not None:
             lives[kind] = known
     return lives
-
-
-def _place(done: Done) -> tuple[date, list[Decimal], int]:
-    return done.on, [done.life[kind].value for kind in COUNTED if kind in done.life], done.number

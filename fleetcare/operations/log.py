@@ -192,7 +192,7 @@ def _preview(facts: ItemFacts, task: Task, version: Version, entry: LogEntry) ->
     if calendar is None or (calendar.once_each is None and calendar.window_days is None):
         return PastWork(entry.id, entry.id, entry.on)  # nothing else can leave a task open, or serves a period
     done = Done(entry.id, entry.id, entry.on, lives)
-    entries = tuple(sorted((*facts.done.get(task.id, ()), done), key=lambda one: (one.on, one.number)))
+    entries = (*facts.done.get(task.id, ()), done)
     past = replay(replace(facts, done={**facts.done, task.id: entries}), task).past
     return next(work for work in past if work.number == entry.id)
 
