@@ -33,8 +33,9 @@ def type_in(db: Path, *words: str) -> None:
 
 
 @pytest.fixture(autouse=True)
-def terminal(monkeypatch: pytest.MonkeyPatch) -> None:
-    """The same terminal for every test: true colour, whatever the one outside is."""
+def terminal(monkeypatch: pytest.MonkeyPatch, tmp_path: Path) -> None:
+    """The same terminal for every test: true colour, whatever the one outside is; files go to the test's own folder."""
+    monkeypatch.chdir(tmp_path)
     monkeypatch.setenv("TERM", "xterm-256color")
     monkeypatch.setenv("COLORTERM", "truecolor")
     monkeypatch.delenv("NO_COLOR", raising=False)

@@ -3,8 +3,6 @@
 import csv
 from pathlib import Path
 
-import pytest
-
 from fleetcare.context import Context
 from fleetcare.operations.show import task_working
 from tests.tui.conftest import Opened, line_with, press, seen
@@ -117,10 +115,7 @@ async def test_keys_go_from_heading_to_heading(opened: Opened) -> None:
         assert " TR-1  Hydraulic hoses" in seen(pilot)
 
 
-async def test_the_csv_holds_exactly_the_lines_shown_and_its_path_is_said(
-    opened: Opened, tmp_path: Path, monkeypatch: pytest.MonkeyPatch
-) -> None:
-    monkeypatch.chdir(tmp_path)
+async def test_the_csv_holds_exactly_the_lines_shown_and_its_path_is_said(opened: Opened, tmp_path: Path) -> None:
     async with opened("slash", *"air", "enter", "c", size=(120, 40)) as pilot:
         assert line_with(pilot, f"2 lines written to {tmp_path}/due-2026-05-01.csv")
         await press(pilot, "c")
