@@ -104,8 +104,8 @@ class CorrectionDraft(Draft):
         if self.void and not self.why:
             raise Misread("voiding an entry needs a reason", "give --why TEXT")
         given = self.model_fields_set - {"entry", "void", "why"}
-        if self.void and given:
-            raise Refused("a voided entry says nothing any more", "give only --void and --why")
+        if self.void and given - {"by"}:
+            raise Refused("a voided entry says nothing any more", "give only --void, --why and --by")
         if not self.void and not given:
             raise Refused("nothing to correct", "give what should stand instead, or --void --why TEXT")
         return self

@@ -27,23 +27,8 @@ def correct_entry(session: "Session", draft: CorrectionDraft, today: date) -> Lo
     Refuses an entry corrected already, so that two corrections at once never fork its history.
     """
     old = _current(session, draft.entry)
-    on = draft.on or old.on
-    refuse_future(on, today)
-    new = LogEntry(
-        item_id=old.item_id,
-        on=on,
-        kind=old.kind,
-        person_id=person_id(session, draft.by) or old.person_id,
-        title=_title(old, draft),
-        note=old.note if draft.note is None else draft.note,
-        component=draft.component or old.component,
-        downtime_hours=old.downtime_hours if draft.downtime is None else draft.downtime,
-        litres=draft.top_up.value if draft.top_up else old.litres,
-        litres_unit=draft.top_up.unit if draft.top_up else old.litres_unit,
-        supersedes_id=old.id,
-        is_void=draft.void,
-        why=draft.why,
-    )
+    refuse_future(draft.on or old.on, today)
+    new = _void(session, old, draft) if draft.void else _restated(session, old, draft)
     session.add(new)
     try:
         session.flush()
@@ -54,6 +39,37 @@ def correct_entry(session: "Session", draft: CorrectionDraft, today: date) -> Lo
     if not draft.void:
         _carry_over(session, item, old, new, draft, logged, today)
     return logged
+
+
+def _void(session: "Session", old: LogEntry, draft: CorrectionDraft) -> LogEntry:
+    """Give the entry that takes an old one back: who says so, and why."""
+    return LogEntry(
+        item_id=old.item_id,
+        on=old.on,
+        kind=old.kind,
+        person_id=person_id(session, draft.by),
+        supersedes_id=old.id,
+        is_void=True,
+        why=draft.why,
+    )
+
+
+def _restated(session: "Session", old: LogEntry, draft: CorrectionDraft) -> LogEntry:
+    """Give the entry that says what an old one should have said."""
+    return LogEntry(
+        item_id=old.item_id,
+        on=draft.on or old.on,
+        kind=old.kind,
+        person_id=person_id(session, draft.by) or old.person_id,
+        title=_title(old, draft),
+        note=old.note if draft.note is None else draft.note,
+        component=draft.component or old.component,
+        downtime_hours=old.downtime_hours if draft.downtime is None else draft.downtime,
+        litres=draft.top_up.value if draft.top_up else old.litres,
+        litres_unit=draft.top_up.unit if draft.top_up else old.litres_unit,
+        supersedes_id=old.id,
+        why=draft.why,
+    )
 
 
 def item_of_entry(session: "Session", number: int) -> FoundItem:

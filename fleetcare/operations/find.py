@@ -33,9 +33,7 @@ class FoundMeter:
     owner_id: int
 
 
-def find_item(
-    connection: "Connection", tag: str, *, on: date | None = None, even_withdrawn: bool = False
-) -> FoundItem:
+def find_item(connection: "Connection", tag: str, *, on: date | None = None, even_withdrawn: bool = False) -> FoundItem:
     """Find the engine or machine in use under a tag, whatever its case; refuses an unknown one.
 
     With `on` it is the one that was in use on that day. `even_withdrawn` finds the one last withdrawn where none
@@ -136,7 +134,8 @@ def pick_meter(meters: Sequence[FoundMeter], figure: Figure, tag: str, kind: Kin
 
 def _did_you_mean(word: str, known: Sequence[str], otherwise: str) -> str:
     by_key = {name.casefold(): name for name in known}
-    near = get_close_matches(word.strip().casefold(), by_key, n=3)
+    typed = " ".join(word.split()).casefold()
+    near = get_close_matches(typed, by_key, n=3) or [key for key in by_key if typed and typed in key][:3]
     if near:
         return f"did you mean {' or '.join(by_key[key] for key in near)}?"
     return otherwise

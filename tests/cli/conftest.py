@@ -67,7 +67,7 @@ def open_yard(
 
     def opened(lines: str) -> Runner:
         if lines not in made_yards:
-            made_yards[lines] = _set_up(Path(shutil.copy(new_database, tmp_path_factory.mktemp("yard"))), lines)
+            made_yards[lines] = set_up(Path(shutil.copy(new_database, tmp_path_factory.mktemp("yard"))), lines)
         path = Path(shutil.copy(made_yards[lines], tmp_path / "opened.db"))
 
         def run_words(*words: str) -> Ran:
@@ -78,7 +78,8 @@ def open_yard(
     return opened
 
 
-def _set_up(path: Path, lines: str) -> Path:
+def set_up(path: Path, lines: str) -> Path:
+    """Run command lines, one a line, on a database, and give its path; all of them must do."""
     for line in filter(None, map(str.strip, lines.splitlines())):
         printed = io.StringIO()
         with contextlib.redirect_stdout(printed), contextlib.redirect_stderr(printed):
