@@ -12,11 +12,14 @@ from fleetcare.cli.main import build_parser
 from fleetcare.db.tables import metadata
 from fleetcare.operations.settings import SETTINGS
 from fleetcare.rules.due.row import COLUMNS
+from fleetcare.tui.actions import ACTIONS
 from tests.house.conftest import ROOT, read
 
 README, DEVELOPERS, CHANGELOG = read("README.md"), read("DEVELOPERS.md"), read("CHANGELOG.md")
 DOCUMENTS = {"README.md": README, "DEVELOPERS.md": DEVELOPERS, "CHANGELOG.md": CHANGELOG}
 LONGEST_FOR_DEVELOPERS = 250
+CALLED = {"item": "engine's page"}
+"""What the README calls a place of the screens, where not by its own name."""
 KINDS = [kind for kind in vars(errors).values() if isinstance(kind, type) and issubclass(kind, errors.FleetError)]
 
 
@@ -55,6 +58,17 @@ def test_every_option_of_a_command_says_what_it_is_for(command: str) -> None:
         action.option_strings for action in COMMANDS[command]._actions if action.option_strings and not action.help
     ]
     assert silent == []
+
+
+def test_the_readme_says_what_every_key_does_and_names_no_other() -> None:
+    table = README.partition("## The screens")[2].partition("\n## ")[0]
+    places = dict(re.findall(r"^\| (.+?) \| (`.+) \|$", table, re.MULTILINE))
+    said = {place: set(cell.split(", ")) for place, cell in places.items()}
+    wanted: dict[str, set[str]] = {}
+    for action in ACTIONS:
+        keys = " ".join(f"`{key}`" for key in action.keys_said)
+        wanted.setdefault(CALLED.get(action.place, action.place), set()).add(f"{keys} {action.word}")
+    assert said == wanted
 
 
 def test_the_readme_says_every_option_of_the_due_list() -> None:
