@@ -51,8 +51,6 @@ def test_a_set_number_of_days_replaces_the_engines_own_rhythm() -> None:
 
 @pytest.mark.parametrize(("on", "stale"), [("2026-05-20", False), ("2026-05-21", False), ("2026-05-22", True)])
 def test_a_reading_exactly_as_old_as_that_is_not_stale_yet(on: str, stale: bool) -> None:
-    look = outlooks(facts(OIL, on=on, hours=FIVE_A_DAY), is_future=False)[Kind.HOURS]
-    assert look.is_stale is stale
     assert (line(OIL, on=on, hours=FIVE_A_DAY).estimated is not None) is stale
 
 
@@ -63,9 +61,10 @@ def test_the_set_number_of_days_decides_where_there_is_one(days: int, stale: boo
 
 
 def test_each_meter_is_stale_by_its_own_rhythm() -> None:
-    weekly = [(on, 10 * n) for n, on in enumerate(read_on(7, 7, 7, 7))]
-    found = outlooks(facts(OIL, on="2026-02-15", hours=weekly, km=[("2026-01-01", 0)]), is_future=False)
-    assert {kind: look.is_stale for kind, look in found.items()} == {Kind.HOURS: True, Kind.DISTANCE: False}
+    weekly = [(on, 10 * n) for n, on in enumerate(read_on(*[7] * 8))]
+    monthly = [(on, 900 * n) for n, on in enumerate(read_on(28, 28, 28)[:3])]
+    found = outlooks(facts(OIL, on="2026-03-14", hours=weekly, km=monthly), is_future=False)
+    assert [look.likely_now is not None for look in found.values()] == [True, False]
 
 
 # State by record, estimate beside it

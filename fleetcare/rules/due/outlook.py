@@ -23,15 +23,13 @@ RECORDED_ONLY = Forecast(None, None, None, 0, "left out: only what was recorded 
 
 @dataclass(frozen=True, slots=True)
 class Outlook:
-    """One counter's latest life total, its day, and the forecast of it.
+    """One counter's latest life total, None where it was never read, and the forecast of it.
 
     `likely_now` is the figure expected on the day asked about, only where the latest reading is
     stale or that day lies in the future; None otherwise, or without a forecast.
     """
 
     now: Decimal | None
-    read_on: date | None
-    is_stale: bool
     likely_now: Decimal | None
     history: History | None
     no_forecast: Forecast = LAID_UP
@@ -69,12 +67,11 @@ def _outlook(
     counter: CounterHistory, on: date, stale_days: int | None, is_future: bool, no_forecast: Forecast | None
 ) -> Outlook:
     latest = counter.latest
-    if latest is None:
-        return Outlook(None, None, False, None, History(()))
-    is_stale = (on - latest.on).days > stale_after([r.on for r in counter.readings], stale_days)
+    now = latest.life if latest is not None else None
     if no_forecast is not None:
-        return Outlook(latest.life, latest.on, is_stale, None, None, no_forecast)
+        return Outlook(now, None, None, no_forecast)
     history = History([(r.on, r.life) for r in counter.readings])
+    days_read = [r.on for r in counter.readings]
+    is_stale = latest is not None and (on - latest.on).days > stale_after(days_read, stale_days)
     likely = history.likely_value(on) if is_stale or is_future else None
-    likely_now = Decimal(str(round(likely, 3))) if likely is not None else None
-    return Outlook(latest.life, latest.on, is_stale, likely_now, history)
+    return Outlook(now, Decimal(str(round(likely, 3))) if likely is not None else None, history)
