@@ -10,7 +10,7 @@ from typing import TypeVar
 from hypothesis import assume, given
 from hypothesis import strategies as st
 
-from fleetcare.domain.lines import DueLine, State, TriggerLine
+from fleetcare.domain.lines import DueLine, Point, State, TriggerLine, apart
 from fleetcare.domain.log import Done
 from fleetcare.domain.meters import Counter, LifeFigure, Meter, MeterFit, Reading
 from fleetcare.domain.quantities import Kind, to_base
@@ -97,6 +97,32 @@ def is_past(trigger: TriggerLine) -> bool:
     if isinstance(trigger.own, date):
         return isinstance(trigger.now, date) and trigger.now >= trigger.own
     return isinstance(trigger.now, Decimal) and isinstance(trigger.own, Decimal) and trigger.now >= trigger.own
+
+
+@given(item_facts())
+def test_a_deferral_to_a_later_point_never_makes_a_trigger_worse_than_it_is_without_grace(known: ItemFacts) -> None:
+    """All it takes away is the grace."""
+    strict = replace(known, tasks=tuple(strictly(task) for task in known.tasks))
+    without = recorded(strict)
+    for name, line in recorded(known).items():
+        for trigger, plain in zip(line.triggers, without[name].triggers, strict=True):
+            is_later = trigger.deferred and apart(known_point(trigger.point), known_point(trigger.own)) >= 0
+            if is_later and trigger.own == plain.own:
+                assert trigger.state.rank >= plain.state.rank
+
+
+def strictly(task: Task) -> Task:
+    """The task without deferrals and without grace."""
+    triggers = tuple(
+        replace(one, grace=0) if isinstance(one, CalendarTrigger) else replace(one, grace=Decimal(0))
+        for one in task.versions[0].triggers
+    )
+    return replace(task, deferrals=(), versions=(replace(task.versions[0], triggers=triggers),))
+
+
+def known_point(point: Point | None) -> Point:
+    assert point is not None
+    return point
 
 
 @given(item_facts())
