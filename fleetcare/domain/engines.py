@@ -17,6 +17,22 @@ class Layout(StrEnum):
     SINGLE = "single"
 
 
+class Side(StrEnum):
+    """What a valve lets through: fresh charge in, or exhaust out."""
+
+    INTAKE = "intake"
+    EXHAUST = "exhaust"
+
+
+class Bridged(StrEnum):
+    """On which side two valves of a cylinder hang under one bridge, so that there is one gap for both."""
+
+    NONE = "none"
+    INTAKE = "intake"
+    EXHAUST = "exhaust"
+    BOTH = "both"
+
+
 class Status(StrEnum):
     """What may be asked of an engine on a day."""
 
@@ -44,6 +60,33 @@ class DutyFactor:
     factor: Decimal
     from_on: date
     why: str
+
+
+@dataclass(frozen=True, slots=True)
+class Adjuster:
+    """How the lash is set, as far as the nameplate says: `kind` is screw, shim, hydraulic or empty; lengths in mm.
+
+    `screw_at` is where on the rocker the screw sits: pushrod, valve, centre or empty.
+    """
+
+    kind: str = ""
+    screw_pitch: Decimal | None = None
+    screw_at: str = ""
+    rocker_ratio: Decimal | None = None
+    shim_step: Decimal | None = None
+
+
+@dataclass(frozen=True, slots=True)
+class ValveTrain:
+    """What of an engine decides where its valves are, when they may be set, and how."""
+
+    cylinders: int
+    valves_per_cylinder: int
+    bridged: Bridged = Bridged.NONE
+    layout: Layout | None = None
+    numbering: str = ""
+    firing_order: tuple[int, ...] = ()
+    adjuster: Adjuster = Adjuster()
 
 
 @dataclass(frozen=True, slots=True)

@@ -5,12 +5,16 @@ Exact decimal arithmetic in one unit. A check range says when to leave a valve a
 """
 
 import re
+from collections.abc import Mapping
 from dataclasses import dataclass
 from decimal import Decimal
-from enum import StrEnum
 
+from fleetcare.domain.sheets import Place
 from fleetcare.errors import Misread, Refused
 from fleetcare.rules.nameplate import LashUnit
+
+# NIST SP 811 (2008), Appendix B: 1 in = 25.4 mm exactly.
+MM_PER: Mapping[str, Decimal] = {"mm": Decimal(1), "in": Decimal("25.4")}
 
 _RANGE_MARK = ".."
 _DIGITS = re.compile(r"[0-9]{1,3}", re.ASCII)
@@ -35,17 +39,8 @@ class Gap:
         return (self.goes + self.stops) / 2
 
 
-class Place(StrEnum):
-    """Where a gap lies against its check range; an interval that straddles a limit is undecided."""
-
-    IN = "in"
-    BELOW = "below"
-    ABOVE = "above"
-    UNDECIDED = "undecided"
-
-
 @dataclass(frozen=True, slots=True)
-class Judgement:
+class Standing:
     """Where a gap lies, and how far outside the check range it is: at least and at most, equal for a plain figure."""
 
     place: Place
@@ -70,7 +65,7 @@ def read_gap(text: str, unit: LashUnit) -> Gap:
     return Gap(first, second)
 
 
-def judge(gap: Gap, least: Decimal, most: Decimal) -> Judgement:
+def judge(gap: Gap, least: Decimal, most: Decimal) -> Standing:
     """Hold a gap against a check range in the same unit; touching a limit is in.
 
     The blade that stops is itself thicker than the gap, so an interval that ends on the lower limit is below it.
@@ -85,7 +80,7 @@ def judge(gap: Gap, least: Decimal, most: Decimal) -> Judgement:
         place = Place.ABOVE
     else:
         place = Place.UNDECIDED
-    return Judgement(place, off_least, off_most)
+    return Standing(place, off_least, off_most)
 
 
 def _blade(text: str, unit: LashUnit, typed: str) -> Decimal:

@@ -16,10 +16,11 @@ import pytest
 from hypothesis import assume, given
 from hypothesis import strategies as st
 
+from fleetcare.domain.sheets import Place
 from fleetcare.errors import Refused
 from fleetcare.rules.compression import cranking_pressure
 from fleetcare.rules.j300 import GRADES, grade_oil
-from fleetcare.rules.lash import Gap, Place, judge
+from fleetcare.rules.lash import Gap, judge
 from fleetcare.rules.lash_setting import LashAt, ScrewAt, choose_shim, screw_turn
 from fleetcare.rules.oil import wear_rate
 from fleetcare.rules.valve_order import (

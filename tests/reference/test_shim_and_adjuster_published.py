@@ -4,7 +4,8 @@ from decimal import Decimal
 
 import pytest
 
-from fleetcare.rules.lash import Gap, Place, judge, read_gap
+from fleetcare.domain.sheets import Place
+from fleetcare.rules.lash import Gap, judge, read_gap
 from fleetcare.rules.lash_setting import Direction, LashAt, ScrewAt, choose_shim, screw_turn
 
 MM_PER_INCH = Decimal("25.4")

@@ -4,8 +4,9 @@ from decimal import Decimal
 
 import pytest
 
+from fleetcare.domain.sheets import Place
 from fleetcare.errors import Misread, Refused
-from fleetcare.rules.lash import Gap, Judgement, Place, judge, read_gap
+from fleetcare.rules.lash import Gap, Standing, judge, read_gap
 from fleetcare.rules.lash_setting import Direction, LashAt, ScrewAt, ScrewTurn, ShimChoice, choose_shim, screw_turn
 from fleetcare.rules.nameplate import LashUnit
 
@@ -94,7 +95,7 @@ def test_a_range_whose_second_blade_is_not_thicker_is_refused(typed: str) -> Non
     ],
 )
 def test_a_plain_figure_is_in_up_to_and_including_its_limits(figure: str, place: Place, off: str) -> None:
-    assert judge(_plain(figure), LEAST, MOST) == Judgement(place, Decimal(off), Decimal(off))
+    assert judge(_plain(figure), LEAST, MOST) == Standing(place, Decimal(off), Decimal(off))
 
 
 @pytest.mark.parametrize(
@@ -114,7 +115,7 @@ def test_a_plain_figure_is_in_up_to_and_including_its_limits(figure: str, place:
 def test_an_interval_that_straddles_a_limit_is_an_answer_of_its_own(
     goes: str, stops: str, place: Place, off_least: str, off_most: str
 ) -> None:
-    assert judge(Gap(Decimal(goes), Decimal(stops)), LEAST, MOST) == Judgement(
+    assert judge(Gap(Decimal(goes), Decimal(stops)), LEAST, MOST) == Standing(
         place, Decimal(off_least), Decimal(off_most)
     )
 
