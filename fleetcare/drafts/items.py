@@ -5,12 +5,14 @@ from typing import Annotated, Literal, Self
 
 from pydantic import BeforeValidator, model_validator
 
-from fleetcare.domain.engines import Layout
+from fleetcare.domain.engines import Bridged, Layout
 from fleetcare.drafts.fields import Count, Day, Dials, Digits, KindField, Meters, Note, Number, Positive, Text
 from fleetcare.drafts.reading_in import Draft
 from fleetcare.errors import Misread, Refused
 from fleetcare.rules.bounds import check_between
 from fleetcare.rules.geometry import MOST_CYLINDERS, MOST_MM, MOST_RPM
+from fleetcare.rules.lash_points import check_valves
+from fleetcare.rules.lash_setting import MOST_PITCH_MM, MOST_ROCKER_RATIO
 from fleetcare.rules.nameplate import (
     LashUnit,
     check_firing_order,
@@ -39,6 +41,9 @@ _PLATE = {
     "compression_ratio": (2, 50, ""),
     "valves_per_cylinder": (2, 8, ""),
     "intake_closes": (-180, 180, "degrees"),
+    "screw_pitch": (0, MOST_PITCH_MM, "mm"),
+    "rocker_ratio": (0, MOST_ROCKER_RATIO, ""),
+    "shim_step": (0, 1, "mm"),
     "sump": (0, 100_000, "L"),
     "rated_rpm": (1, MOST_RPM, "rpm"),
     "rated_kw": (0, 200_000, "kW"),
@@ -105,7 +110,12 @@ class EngineDraft(ItemDraft):
     compression_ratio: Positive | None = None
     valves_per_cylinder: Count | None = None
     intake_closes: Number | None = None
+    bridged: Literal["none", "intake", "exhaust", "both"] | None = None
     adjuster: Literal["screw", "shim", "hydraulic"] | None = None
+    screw_pitch: Positive | None = None
+    screw_at: Literal["pushrod", "valve", "centre"] | None = None
+    rocker_ratio: Positive | None = None
+    shim_step: Positive | None = None
     lash_intake: LashRange | None = None
     lash_exhaust: LashRange | None = None
     lash_set_intake: LashSetting | None = None
@@ -131,6 +141,10 @@ class EngineDraft(ItemDraft):
             if self.cylinders is None:
                 raise Refused("a firing order needs the number of cylinders", "give --cylinders as well")
             check_firing_order(self.firing_order, self.cylinders)
+        if self.bridged not in {None, Bridged.NONE}:
+            if self.valves_per_cylinder is None:
+                raise Refused("a bridge needs the number of valves", "give --valves-per-cylinder as well")
+            check_valves(self.valves_per_cylinder, Bridged(self.bridged))
         units = {given[-1] for given in self._lash_figures()}
         if len(units) > 1:
             raise Refused("the lash figures mix mm and inches", "give all of them in one unit")

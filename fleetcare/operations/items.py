@@ -32,7 +32,12 @@ NAMEPLATE = {
     "compression_ratio": "compression_ratio",
     "valves_per_cylinder": "valves_per_cylinder",
     "intake_closes": "intake_closes_deg",
+    "bridged": "bridged",
     "adjuster": "adjuster",
+    "screw_pitch": "screw_pitch_mm",
+    "screw_at": "screw_at",
+    "rocker_ratio": "rocker_ratio",
+    "shim_step": "shim_step_mm",
     "oil_grade": "oil_grade",
     "sump": "sump_l",
     "rated_rpm": "rated_rpm",
@@ -61,7 +66,7 @@ def add_item(session: "Session", draft: ItemDraft, today: date) -> FoundItem:
     item = FoundItem(row.id, row.tag, is_engine)
     if isinstance(draft, EngineDraft):
         session.add(Engine(item_id=item.id, **_nameplate(draft)))
-        _add_lash_spec(session, item.id, draft, draft.in_service or today)
+        _add_lash_spec(session, item.id, draft, today)
     add_meters(session, item, draft, draft.in_service)
     set_digits(session, item, draft)
     if isinstance(draft, EngineDraft) and draft.machine is not None:
@@ -80,7 +85,7 @@ def stored_draft(session: "Session", item: FoundItem) -> dict[str, object]:
 
 
 def edit_item(session: "Session", item: FoundItem, draft: ItemDraft, today: date) -> None:
-    """Change what a draft gives; what it leaves out stays. A new lash spec holds from `today` on."""
+    """Change what a draft gives; what it leaves out stays. A new lash spec holds from `today` on, the first always."""
     row = session.get_one(Item, item.id)
     if draft.name is not None:
         row.name = draft.name
@@ -161,7 +166,10 @@ def _refuse_taken(session: "Session", tag: str) -> None:
 
 
 def _add_lash_spec(session: "Session", item_id: int, draft: EngineDraft, from_on: date) -> None:
-    """Add a lash spec from what a draft gives, over the one in force. Refuses to mix mm and inches."""
+    """Add a lash spec from what a draft gives, over the one in force. Refuses to mix mm and inches.
+
+    The first one holds on every day, as the limits were what they are before somebody typed them.
+    """
     if draft.lash_unit is None and draft.lash_when is None:
         return
     newest = session.scalars(
@@ -185,7 +193,7 @@ def _add_lash_spec(session: "Session", item_id: int, draft: EngineDraft, from_on
     session.add(
         LashSpec(
             item_id=item_id,
-            from_on=from_on,
+            from_on=from_on if old is not None else date.min,
             unit=draft.lash_unit or (old.unit if old is not None else "mm"),
             condition=draft.lash_when or (old.condition if old is not None else "any"),
             **(given | kept),

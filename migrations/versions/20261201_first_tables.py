@@ -156,7 +156,12 @@ def upgrade() -> None:
         word("compression_ratio", nullable=True),
         number("valves_per_cylinder", nullable=True),
         word("intake_closes_deg", nullable=True),
+        choice("bridged", "", "none", "intake", "exhaust", "both"),
         choice("adjuster", "", "screw", "shim", "hydraulic"),
+        word("screw_pitch_mm", nullable=True),
+        choice("screw_at", "", "pushrod", "valve", "centre"),
+        word("rocker_ratio", nullable=True),
+        word("shim_step_mm", nullable=True),
         word("oil_grade"),
         word("sump_l", nullable=True),
         word("rated_rpm", nullable=True),
@@ -291,13 +296,14 @@ def upgrade() -> None:
     table(
         "sheet",
         ref("item_id", "item"),
-        ref("entry_id", "log_entry", nullable=True),
+        ref("entry_id", "log_entry"),
         word("kind"),
         day("taken_on"),
         word("conditions"),
         word("gauge"),
         word("lab_number"),
         day("received_on", nullable=True),
+        word("import_key", unique=True, nullable=True),
     )
     table(
         "task_call",

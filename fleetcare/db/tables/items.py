@@ -83,7 +83,12 @@ class Engine(Row, table=True):
     compression_ratio: Decimal | None = exact(default=None)
     valves_per_cylinder: int | None = None
     intake_closes_deg: Decimal | None = exact(default=None)
+    bridged: str = choice("bridged", "", "none", "intake", "exhaust", "both", default="")
     adjuster: str = choice("adjuster", "", "screw", "shim", "hydraulic", default="")
+    screw_pitch_mm: Decimal | None = exact(default=None)
+    screw_at: str = choice("screw_at", "", "pushrod", "valve", "centre", default="")
+    rocker_ratio: Decimal | None = exact(default=None)
+    shim_step_mm: Decimal | None = exact(default=None)
     oil_grade: str = ""
     sump_l: Decimal | None = exact(default=None)
     rated_rpm: Decimal | None = exact(default=None)
