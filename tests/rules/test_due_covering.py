@@ -162,6 +162,12 @@ def test_a_windowed_line_is_covered_only_by_work_inside_its_window(service_on: s
     assert covered_by(oil, big(every("6mo"), on=service_on), on="2026-04-20") == shown
 
 
+@pytest.mark.parametrize(("service_on", "shown"), [("2025-10-29", ""), ("2025-10-30", "Service")])
+def test_a_window_beside_an_interval_without_a_figure_counts_all_the_same(service_on: str, shown: str) -> None:
+    oil = a_task(every("250h"), every("6mo", window_days=10), name="Oil", origin=last_done("2025-11-10"))
+    assert covered_by(oil, big(every("6mo"), on=service_on), on="2026-04-20", hours=10) == shown
+
+
 def test_a_windowed_line_is_not_covered_by_work_nobody_can_date() -> None:
     assert covered_by(small(every("6mo", window_days=10)), big(every("500h")), hours=990) == ""
 

@@ -238,8 +238,18 @@ def test_extra_work_re_bases_a_counted_trigger_of_the_same_task() -> None:
     assert [t.point for t in due.triggers] == [110, day("2026-03-31")]
 
 
-@pytest.mark.parametrize(("done_on", "point"), [("2026-03-25", "2026-05-04"), ("2026-04-20", "2026-05-31")])
-def test_laid_up_days_make_the_owed_period_longer_and_work_then_serves_it(done_on: str, point: str) -> None:
+@pytest.mark.parametrize(
+    ("done_on", "served", "point"),
+    [
+        ("2026-03-25", "2026-03", "2026-05-04"),
+        ("2026-04-20", "2026-03", "2026-05-31"),
+        ("2026-04-21", "2026-04 missed 2026-04-20", "2026-05-31"),
+        ("2026-05-02", "2026-05 missed 2026-04-20 missed 2026-04-30", "2026-06-30"),
+    ],
+)
+def test_laid_up_days_make_the_owed_period_longer_and_work_until_then_serves_it(
+    done_on: str, served: str, point: str
+) -> None:
     spells = (
         StatusSpell(Status.LAID_UP, day("2026-03-10")),
         StatusSpell(Status.IN_SERVICE, day("2026-03-30")),
@@ -248,6 +258,6 @@ def test_laid_up_days_make_the_owed_period_longer_and_work_then_serves_it(done_o
     task = a_task(monthly, origin=last_done("2026-02-10"), pause_while_laid_up=True)
     waiting = line(task, on="2026-04-10", item=an_item(spells=spells))
     assert waiting.triggers[0].point == day("2026-04-20")
-    due = line(task, on="2026-04-25", done=[done(done_on)], item=an_item(spells=spells))
-    assert due.past[0].served == "2026-03"
+    due = line(task, on="2026-05-05", done=[done(done_on)], item=an_item(spells=spells))
+    assert said(due.past) == [served]
     assert due.triggers[0].point == day(point)

@@ -8,7 +8,7 @@ makes the owed period longer: its last day moves, and the next one is the one af
 from dataclasses import dataclass
 from datetime import date, timedelta
 
-from fleetcare.domain.schedules import CalendarTrigger
+from fleetcare.domain.schedules import CalendarTrigger, Period
 from fleetcare.rules.due.calendar import CalendarPeriod, period_after, period_of
 
 
@@ -32,10 +32,16 @@ def serve(trigger: CalendarTrigger, owed: CalendarPeriod, open_until: date, on: 
     own = period_of(each, on)
     missed: list[CalendarPeriod] = []
     candidate, closes = owed, open_until
-    while candidate.last < own.first and closes < on:
+    while candidate.first < own.first and closes < on:
         missed.append(candidate)
-        candidate = period_after(each, candidate.last)
+        candidate = _following(each, candidate)
         closes = candidate.last + timedelta(days=trigger.grace)
     if candidate.first > on:
         return Served(None, (), owed)
     return Served(candidate, tuple(missed), period_after(each, min(on, candidate.last)))
+
+
+def _following(each: Period, period: CalendarPeriod) -> CalendarPeriod:
+    """Give the period owed after one that was missed: where a pause made that one longer, the one it ends in."""
+    ends_in = period_of(each, period.last)
+    return ends_in if ends_in.first > period.first else period_after(each, period.last)
