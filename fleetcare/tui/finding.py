@@ -3,7 +3,8 @@
 from typing import ClassVar
 
 from textual.binding import Binding, BindingType
-from textual.widgets import Input
+from textual.containers import Horizontal
+from textual.widgets import Input, Static
 
 from fleetcare.tui.frame import Notice
 from fleetcare.tui.loading import LoadingScreen
@@ -15,16 +16,23 @@ class FindLine(Input):
     BINDINGS: ClassVar[list[BindingType]] = [Binding("escape", "take_back", show=False)]
 
     def __init__(self, text: str) -> None:
-        super().__init__(text, placeholder="words to find, in any order", compact=True)
+        super().__init__(text, placeholder="words, in any order", compact=True)
 
     async def action_take_back(self) -> None:
         """Find nothing in particular any more."""
         self.value = ""
-        await self.remove()
+        await self.action_submit()
 
     async def action_submit(self) -> None:
         """Keep what was found and give the keys back to the list."""
-        await self.remove()
+        await self.screen.query(FindBar).remove()
+
+
+class FindBar(Horizontal):
+    """A line to type in, with a word before it that says what for."""
+
+    def __init__(self, text: str) -> None:
+        super().__init__(Static("find"), FindLine(text))
 
 
 class FindingScreen(LoadingScreen):
@@ -40,9 +48,8 @@ class FindingScreen(LoadingScreen):
 
     async def action_find(self) -> None:
         """Open the line to type in."""
-        line = FindLine(self.text)
-        await self.mount(line, before=self.query_one(Notice))
-        line.focus()
+        await self.mount(FindBar(self.text), before=self.query_one(Notice))
+        self.query_one(FindLine).focus()
 
     def on_input_changed(self, event: Input.Changed) -> None:
         """Narrow to what is typed so far."""

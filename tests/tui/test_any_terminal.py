@@ -15,7 +15,7 @@ from fleetcare.tui.looks import BAY, MARKS, OFFICE
 from tests.tui.conftest import Opened, line_with, press, seen, settle_down, type_in
 
 # Keys that bring every screen to the front in turn.
-TOUR = ("enter", "escape", "e", "m", "l", "h", "escape", "f", "escape", "question_mark", "escape", "s", "2", "1")
+TOUR = ("enter", "escape", "e", "m", "l", "h", "escape", "f", "escape", "question_mark", "escape", "2", "1")
 CONTROL = re.compile("[\x00-\x1f\x7f-\x9f\u202a-\u202e\u2066-\u2069]")
 
 
@@ -56,8 +56,15 @@ async def test_the_colours_are_those_the_terminal_has(
 ) -> None:
     for name, value in environment.items():
         monkeypatch.setenv(name, value)
-    async with opened(*TOUR) as pilot:
+    async with opened() as pilot:
         assert pilot.app.theme == theme
+
+
+async def test_every_screen_shows_in_sixteen_colours(opened: Opened, monkeypatch: pytest.MonkeyPatch) -> None:
+    monkeypatch.setenv("COLORTERM", "")
+    monkeypatch.setenv("TERM", "linux")
+    async with opened(*TOUR) as pilot:
+        assert seen(pilot)[0].startswith("  1 Due")
 
 
 async def test_without_colour_no_colour_is_sent_and_the_cursor_is_still_marked(
@@ -128,7 +135,7 @@ async def test_a_tag_of_forty_characters_leaves_the_list_in_line_and_is_whole_be
     type_in(db, "engine", "add", tag, "--in-service", "2024-01-10", "--meter", "hours")
     type_in(db, "task", "add", tag, "Oil", "--every", "10d", "--last-done", "2026-01-01")
     async with opened() as pilot:
-        assert line_with(pilot, "!! overdue", "THE-PORT-M…", "110 d over")
+        assert line_with(pilot, "!! overdue", "THE-PORT-", "110 d over")
         assert f" {tag}  Oil" in seen(pilot)
         await press(pilot, "e")
         assert seen(pilot)[1].startswith(f" {tag}")

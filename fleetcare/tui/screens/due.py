@@ -21,8 +21,9 @@ if TYPE_CHECKING:
     from sqlalchemy import Connection
 
 EMPTY = (
-    "There is nothing here yet.\n \nAdd an engine, and what it needs, in another window; it appears here by itself:\n \n"
-    "fleetcare engine add P-01 --meter hours --in-service 2024-01-10 --start-at 0 --as-new\n"
+    "There is nothing here yet.\n \n"
+    "Add an engine and what it needs in another window; it appears here by itself:\n \n"
+    "fleetcare engine add P-01 --meter hours\n"
     'fleetcare task add P-01 "Oil and filter" --every 250h --every 12mo\n \n'
     "Or look around first in a fleet that is made up: fleetcare demo"
 )
@@ -65,13 +66,13 @@ def _iso(day: date | None) -> str:
 COLUMNS: tuple[Column[ReviewLine], ...] = (
     Column("   STATE", state_cell, 10, 10),
     Column("ENGINE", lambda line: Cell(line.row.engine, "strong"), 8, 16),
-    Column("TASK", lambda line: line.row.task, 18, 34),
+    Column("TASK", lambda line: line.row.task, 16, 34),
     Column("DIAL", _dial, 20, 20, to_right=True, drop=2),
     Column("BY DAY", lambda line: _iso(line.row.next_due_on), 10, 10, to_right=True, drop=3),
     Column("LEFT", _left, 16, 16, to_right=True),
     Column("LIKELY", lambda line: _iso(line.row.likely_date), 10, 10, to_right=True, drop=4),
-    Column("SITE", lambda line: line.row.site, 8, 20, drop=5),
-    Column("NOTE", _note, 12, 200, drop=6),
+    Column("SITE", lambda line: line.row.site, 12, 20, drop=5),
+    Column("NOTE", _note, 30, 200, drop=6),
 )
 
 

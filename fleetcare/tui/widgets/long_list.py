@@ -157,10 +157,10 @@ class LongList(ScrollView, Generic[Row], can_focus=True, inherit_bindings=False)
     def render_line(self, y: int) -> Strip:
         """Draw one line of what is in sight: titles, then headings and rows."""
         width = self.scrollable_content_region.width
-        if y < _HEAD:
-            return self._titles(width)
         if not self._count:
             return self._said(y, width)
+        if y < _HEAD:
+            return self._titles(width)
         place = self._place(y - _HEAD + self.scroll_offset.y)
         if place is None:
             return Strip.blank(width, self.rich_style)

@@ -3,7 +3,8 @@
 from collections.abc import Iterable, Iterator, Sequence
 from dataclasses import dataclass
 from datetime import date
-from itertools import pairwise
+from itertools import groupby, pairwise
+from operator import itemgetter
 from typing import ClassVar
 
 from rich.segment import Segment
@@ -127,14 +128,19 @@ class _Field:
         for row in range(self.height):
             word = fit(f" {words[row]} ", min(columns_of(words[row]) + 2, self.width // 2)) if row in words else ""
             begin = columns_of(word)
-            parts = [(word, "quiet")] if word else []
-            for x in range(begin, self.width):
-                dots = self._dots.get((x, row))
-                if dots:
-                    parts.append((chr(_BLANK + dots), self._tones[x, row]))
-                else:
-                    parts.append(("╌" if row in words else "┊" if x == now else " ", "quiet"))
-            yield parts
+            cells = [self._cell(x, row, "╌" if word else "┊" if x == now else " ") for x in range(begin, self.width)]
+            yield [(word, "quiet"), *_runs(cells)]
+
+    def _cell(self, x: int, row: int, otherwise: str) -> tuple[str, str]:
+        """Give one cell and its tone: its dots, or what stands there without any."""
+        dots = self._dots.get((x, row))
+        return (chr(_BLANK + dots), self._tones[x, row]) if dots else (otherwise, "quiet")
+
+
+def _runs(cells: Iterable[tuple[str, str]]) -> Iterator[tuple[str, str]]:
+    """Join neighbours of one tone."""
+    for tone, run in groupby(cells, key=itemgetter(1)):
+        yield "".join(text for text, _ in run), tone
 
 
 def _along(places: Sequence[tuple[float, float]]) -> Iterator[tuple[int, int]]:

@@ -1,0 +1,69 @@
+"""Pictures of the screens, in fixed sizes, on a fixed day, in fixed colours: what people see does not change unseen.
+
+After a change that is meant, WRITE_PICTURES=1 pytest tests/tui/test_pictures.py draws them anew; look at each.
+"""
+
+import os
+import re
+from collections.abc import Mapping
+from pathlib import Path
+from typing import NamedTuple
+
+import pytest
+
+from tests.tui.conftest import Opened, seen
+
+PICTURES = Path(__file__).with_name("pictures")
+SMALL, LARGE = (80, 24), (120, 40)
+
+
+class Picture(NamedTuple):
+    """What is pressed, in which size, and what the terminal says of itself."""
+
+    size: tuple[int, int]
+    keys: tuple[str, ...] = ()
+    terminal: Mapping[str, str] = {}
+
+
+SCREENS = {
+    "due": Picture(SMALL),
+    "due-large": Picture(LARGE, ("down",)),
+    "due-daylight": Picture(SMALL, ("d",)),
+    "due-sixteen-colours": Picture(SMALL, (), {"COLORTERM": "", "TERM": "xterm"}),
+    "due-no-colour": Picture(SMALL, (), {"NO_COLOR": "1"}),
+    "due-narrowed": Picture(SMALL, ("slash", *"air", "enter")),
+    "due-finding": Picture(SMALL, ("slash", *"oil")),
+    "due-by-day-large": Picture(LARGE, ("s",)),
+    "narrow": Picture(SMALL, ("f", "down", "enter")),
+    "keys": Picture(SMALL, ("question_mark",)),
+    "working": Picture(SMALL, ("down", "enter")),
+    "engines-large": Picture(LARGE, ("2",)),
+    "plate": Picture(SMALL, ("down", "e")),
+    "meters": Picture(SMALL, ("down", "e", "m")),
+    "meters-large": Picture(LARGE, ("down", "e", "m")),
+    "lines": Picture(SMALL, ("e", "l")),
+    "history": Picture(SMALL, ("e", "h", "down")),
+}
+
+
+@pytest.mark.parametrize("name", SCREENS)
+async def test_a_screen_looks_as_it_did(opened: Opened, monkeypatch: pytest.MonkeyPatch, name: str) -> None:
+    picture = SCREENS[name]
+    for variable, value in picture.terminal.items():
+        monkeypatch.setenv(variable, value)
+    async with opened(*picture.keys, size=picture.size) as pilot:
+        drawn = without_fonts(pilot.app.export_screenshot(title=f"fleetcare, {name}"))
+        text = "\n".join(seen(pilot))
+    path = PICTURES / f"{name}.svg"
+    if os.environ.get("WRITE_PICTURES"):
+        path.write_text(drawn, encoding="utf-8")
+    assert path.read_text(encoding="utf-8") == drawn, f"{name} looks different now:\n{text}"
+
+
+def test_every_picture_kept_is_one_that_is_compared() -> None:
+    assert {path.stem for path in PICTURES.iterdir()} == set(SCREENS)
+
+
+def without_fonts(svg: str) -> str:
+    """Leave out the fonts a picture would fetch from elsewhere; it is shown in the fixed-width one at hand."""
+    return re.sub(r"\s*@font-face \{[^}]*\}", "", svg)
