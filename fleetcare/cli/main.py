@@ -2,6 +2,7 @@
 
 import argparse
 from collections.abc import Sequence
+from functools import cache
 
 from fleetcare import __version__
 from fleetcare.cli import output
@@ -10,8 +11,9 @@ from fleetcare.cli.screens import OpenScreens, shop_screens
 from fleetcare.errors import FleetError, Misread
 
 
+@cache
 def build_parser() -> CommandParser:
-    """Give the parser of the whole command line; a parsed command carries its handler as `run`."""
+    """Give the parser of the whole command line, made once; a parsed command carries its handler as `run`."""
     # Loaded here, so that the screens need not wait for commands nobody named.
     from fleetcare.cli import (
         calc,
@@ -22,6 +24,7 @@ def build_parser() -> CommandParser:
         imports,
         items,
         log,
+        measure,
         readings,
         schedules,
         settings,
@@ -29,7 +32,22 @@ def build_parser() -> CommandParser:
         upkeep,
     )
 
-    groups = (due, items, tasks, schedules, readings, log, defer, forecast, imports, settings, upkeep, demo, calc)
+    groups = (
+        due,
+        items,
+        tasks,
+        schedules,
+        readings,
+        log,
+        measure,
+        defer,
+        forecast,
+        imports,
+        settings,
+        upkeep,
+        demo,
+        calc,
+    )
     parser = CommandParser(
         prog="fleetcare",
         description="What each engine of a small fleet needs next, with the working shown.",

@@ -5,7 +5,6 @@ from datetime import date
 from typing import TYPE_CHECKING
 
 from sqlalchemy import select
-from sqlalchemy.exc import IntegrityError
 from sqlmodel import col
 
 from fleetcare.db.tables import Item, LogEntry, LogPart, LogTask, Reading
@@ -16,6 +15,8 @@ from fleetcare.operations.find import FoundItem, find_task
 from fleetcare.operations.load import item_facts
 from fleetcare.operations.log import Logged, close_tasks, refuse_future, store_figures
 from fleetcare.operations.names import person_id
+from fleetcare.operations.sheets import carried_sheet, keep_sheet
+from fleetcare.operations.sheets_closing import Sheets, came_along
 
 if TYPE_CHECKING:
     from sqlalchemy.orm import Session
@@ -24,16 +25,14 @@ if TYPE_CHECKING:
 def correct_entry(session: "Session", draft: CorrectionDraft, today: date) -> Logged:
     """Supersede an entry by one that says what it should have said, or by a void.
 
-    Refuses an entry corrected already, so that two corrections at once never fork its history.
+    Refuses an entry corrected already, so that two corrections at once never fork its history: the later one waits
+    for the lock of the earlier, and then sees what that did.
     """
     old = _current(session, draft.entry)
     refuse_future(draft.on or old.on, today)
     new = _void(session, old, draft) if draft.void else _restated(session, old, draft)
     session.add(new)
-    try:
-        session.flush()
-    except IntegrityError as error:
-        raise Refused(f"entry {old.id} was corrected meanwhile", "look at it again with fleetcare show") from error
+    session.flush()
     item = item_of_entry(session, old.id)
     logged = Logged(item, entries=[(new.id, new.kind)])
     if not draft.void:
@@ -59,7 +58,7 @@ def _restated(session: "Session", old: LogEntry, draft: CorrectionDraft) -> LogE
     return LogEntry(
         item_id=old.item_id,
         on=draft.on or old.on,
-        kind=old.kind,
+        kind="scheduled" if draft.task and old.kind == "other" else old.kind,
         person_id=person_id(session, draft.by) or old.person_id,
         title=_title(old, draft),
         note=old.note if draft.note is None else draft.note,
@@ -128,7 +127,21 @@ def _carry_over(
     was_part = any(row.part_done for row in rows)
     part_done = was_part if draft.part_done is None else draft.part_done
     facts = item_facts(session.connection(), today, [item.id])[0]
-    close_tasks(session, facts, new, tasks, part_done=part_done, logged=logged)
+    came = _carry_sheet(session, item, old, new, draft, logged)
+    if not draft.sheet and not draft.task and not was_part:
+        came = dict.fromkeys(came, "")  # its own sheet closed these tasks before
+    close_tasks(session, facts, new, tasks, part_done=part_done, logged=logged, sheets=came)
+    logged.note_still_open(facts, new, came)
+
+
+def _carry_sheet(
+    session: "Session", item: FoundItem, old: LogEntry, new: LogEntry, draft: CorrectionDraft, logged: Logged
+) -> Sheets:
+    """Give the new entry the sheet of the old one, or the one restated, and say what it closes."""
+    sheet = carried_sheet(session, item, old, draft, new.on)
+    if sheet is not None:
+        logged.sheet = keep_sheet(session, new, sheet)
+    return came_along(sheet, sure=draft.sure)
 
 
 def _kept_figures(session: "Session", old: LogEntry, restated: Sequence[Figure]) -> list[Figure]:

@@ -59,11 +59,9 @@ def apply_schedule(
 def _objections(
     session: "Session", item: FoundItem, schedule: Schedule, drafts: Sequence[TaskDraft], start: StartDraft
 ) -> list[Refused]:
-    row = session.get_one(Item, item.id)
-    if row.withdrawn_on is not None:
-        return [Refused(f"{item.tag} is withdrawn since {row.withdrawn_on}", "leave it out")]
     if schedule.is_for_engines and not item.is_engine:
         return [Refused(f"{schedule.id} is for engines and {item.tag} is a machine", "name the engine fitted in it")]
+    row = session.get_one(Item, item.id)
     wrong = []
     taken = names_taken(session, item)
     there = [draft.name for draft in drafts if draft.name.casefold() in taken]

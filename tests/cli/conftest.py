@@ -4,7 +4,6 @@ import contextlib
 import io
 import shlex
 import shutil
-import sqlite3
 from collections.abc import Callable
 from dataclasses import dataclass
 from pathlib import Path
@@ -86,9 +85,3 @@ def set_up(path: Path, lines: str) -> Path:
             status = run(["--db", str(path), "--as-of", TODAY, *shlex.split(line)], no_screens)
         assert status == 0, f"{line}: {printed.getvalue()}"
     return path
-
-
-def every_row(path: Path) -> list[str]:
-    """Give everything a database holds, as text, to see that nothing changed."""
-    with contextlib.closing(sqlite3.connect(path)) as connection:
-        return list(connection.iterdump())

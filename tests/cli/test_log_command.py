@@ -209,3 +209,9 @@ def test_a_figure_that_collides_says_how_to_insist_on_it(pump: Runner) -> None:
     assert ran.err.endswith("if it is right, first give fleetcare reading P-01 999.5h --on 2026-05-01 --sure\n")
     pump("reading", "P-01", "999.5h", "--on", "2026-05-01", "--sure")
     assert pump("log", "P-01", "Oil and filter", "--at", "999.5").status == 0
+
+
+def test_work_done_when_called_for_is_not_covered_by_a_big_job(service: Runner) -> None:
+    service("task", "edit", "P-01", "Big", "--covers", "Bleed", "Oil", "--on", "2026-03-01")
+    ran = service("log", "P-01", "Big", "--on", "2026-04-01")
+    assert ran.out.splitlines()[1:3] == ["Done: Big.", "Done along with Big: Oil."]

@@ -157,3 +157,18 @@ def test_withdrawing_an_engine_takes_it_out_of_its_machine(lorry: Runner) -> Non
     lorry("engine", "withdraw", "E-1")
     assert lorry("engine", "add", "E-2", "--machine", "LR-1").status == 0
     assert "machine" not in lorry("show", "E-1").out
+
+
+def test_an_engine_given_a_meter_of_its_own_no_longer_counts_by_the_machines(lorry: Runner) -> None:
+    assert lorry("engine", "edit", "E-1", "--meter", "distance", "--as-of", "2026-04-10").status == 0
+    lorry("reading", "E-1", "30km")
+    lorry("reading", "LR-1", "62000", "--on", "2026-04-20")
+    page = lorry("show", "E-1").out
+    assert "distance  30 km on the dial, 11030 km of life" in page
+    assert "62000 km" not in page
+
+
+def test_a_meter_given_to_a_machine_counts_for_the_engine_in_it(lorry: Runner) -> None:
+    lorry("machine", "edit", "LR-1", "--meter", "starts")
+    lorry("reading", "LR-1", "40starts")
+    assert "starts    40 starts on the dial" in lorry("show", "E-1").out

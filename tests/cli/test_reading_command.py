@@ -177,3 +177,15 @@ def test_a_reading_below_the_first_figure_of_its_meter_cannot_be_even_for_sure(o
     run = open_yard("engine add P-01 --meter hours --in-service 2026-05-01 --start-at 4000")
     ran = run("reading", "P-01", "3990", "--sure")
     assert (ran.status, ran.err) == (1, "3990 h lies below 4000 h, the meter's first figure; check the figure\n")
+
+
+def test_a_reading_from_before_the_first_day_is_not_restored(open_yard: Opener) -> None:
+    run = open_yard("""
+        engine add P-01 --meter hours --in-service 2026-01-10 --start-at 100
+        reading P-01 300 --on 2026-03-01
+        reading --void 2 --why "other engine"
+        engine edit P-01 --in-service 2026-04-01 --start-at 5
+    """)
+    assert run("reading", "--restore", "2").err == (
+        "the hours meter of P-01 did not count on 2026-03-01; check the day, or edit --in-service\n"
+    )

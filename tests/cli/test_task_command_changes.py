@@ -183,3 +183,18 @@ def test_a_task_ends_with_its_line_and_keeps_its_history(pump: Runner) -> None:
 def test_a_task_ends_on_no_day_to_come(pump: Runner) -> None:
     ran = pump("task", "remove", "P-01", "Valve lash", "--on", "2026-05-02")
     assert (ran.status, ran.err.split(",")[0]) == (1, "2026-05-02 has not come yet")
+
+
+def test_what_was_said_about_deferring_stays_through_an_edit(pump: Runner) -> None:
+    pump("task", "edit", "P-01", "Oil and filter", "--deferrable", "no")
+    pump("task", "edit", "P-01", "Oil and filter", "--every", "300h")
+    assert json.loads(pump("task", "list", "P-01", "--json").out)[0]["deferrable"] is False
+
+
+def test_where_a_grid_begins_is_listed_as_it_was_typed(pump: Runner) -> None:
+    origins = ("--grid-origin", "2026-01-01", "--grid-origin", "50h")
+    assert (
+        pump("task", "add", "P-01", "Grid", "--every", "6mo", "--every", "100h", "--anchor", "on-grid", *origins).status
+        == 0
+    )
+    assert json.loads(pump("task", "list", "P-01", "--json").out)[-1]["grid_origin"] == ["2026-01-01", "50h"]
