@@ -160,11 +160,12 @@ def test_withdrawing_an_engine_takes_it_out_of_its_machine(lorry: Runner) -> Non
 
 
 def test_an_engine_given_a_meter_of_its_own_no_longer_counts_by_the_machines(lorry: Runner) -> None:
+    lorry("reading", "LR-1", "61100", "--on", "2026-04-10")
     assert lorry("engine", "edit", "E-1", "--meter", "distance", "--as-of", "2026-04-10").status == 0
     lorry("reading", "E-1", "30km")
     lorry("reading", "LR-1", "62000", "--on", "2026-04-20")
     page = lorry("show", "E-1").out
-    assert "distance  30 km on the dial, 11030 km of life" in page
+    assert "distance  30 km on the dial, 11130 km of life" in page
     assert "62000 km" not in page
 
 
