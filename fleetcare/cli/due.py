@@ -5,11 +5,13 @@ from collections.abc import Sequence
 from typing import TYPE_CHECKING
 
 from fleetcare.cli import output
+from fleetcare.cli.measure import sheet_table
 from fleetcare.cli.parser import Commands, whole
 from fleetcare.cli.shop import context_of, null
 from fleetcare.domain.lines import State
 
 if TYPE_CHECKING:
+    from fleetcare.operations.sheets_judge import JudgedSheet
     from fleetcare.operations.show import ItemPage
     from fleetcare.rules.due.row import DueRow
 
@@ -123,7 +125,7 @@ def say_before_return(tag: str, rows: "Sequence[DueRow]") -> None:
 
 
 def _show(given: argparse.Namespace) -> None:
-    from fleetcare.operations.show import item_page, task_working
+    from fleetcare.operations.show import item_page, task_sheet, task_working
 
     context = context_of(given)
     with context.read() as connection:
@@ -134,7 +136,8 @@ def _show(given: argparse.Namespace) -> None:
             working, past = task_working(
                 connection, given.tag, given.task, context.today(), is_future=context.is_future
             )
-            blocks = [("", _labels(working)), ("HISTORY", _labels(past))]
+            sheet = task_sheet(connection, given.tag, given.task, context.today())
+            blocks = [("", _labels(working)), ("HISTORY", _labels(past)), ("LAST SHEET", _sheet(sheet))]
     for title, text in blocks:
         if text:
             output.say(f"{title}\n{text}\n" if title else f"{text}\n")
@@ -152,6 +155,17 @@ def _page_blocks(page: "ItemPage") -> list[tuple[str, str]]:
         ("LINES", _lines(page.rows)),
         ("LOG", _block(_HISTORY, history)),
     ]
+
+
+def _sheet(judged: "JudgedSheet | None") -> str:
+    """Give a sheet point by point, with what it was held against."""
+    if judged is None:
+        return ""
+    sheet = judged.sheet
+    parts = [f"entry {sheet.entry}, {sheet.on}", sheet.condition, sheet.gauge and f"gauge {sheet.gauge}", sheet.by]
+    told = ", ".join(output.clean(part) for part in parts if part)
+    notes = "".join(f"\n{note}" for note in judged.notes())
+    return f"{told}; limits: {judged.limits}\n{sheet_table(judged)}{notes}"
 
 
 def _block(headers: Sequence[str], rows: Sequence[Sequence[object]]) -> str:

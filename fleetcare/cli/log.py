@@ -4,6 +4,7 @@ import argparse
 from typing import TYPE_CHECKING
 
 from fleetcare.cli import output
+from fleetcare.cli.measure import add_sheet_options, read_sheet_option, say_sheet
 from fleetcare.cli.parser import CommandParser, Commands, day, whole
 from fleetcare.cli.shop import changes_of, context_of, label_with, option_label, options_of, say_moved
 
@@ -44,6 +45,10 @@ def _add_shared_options(parser: CommandParser) -> None:
     parser.add_argument("--part", action="append", metavar="NAME[:N]", help="a part used")
     parser.add_argument("--component", metavar="TEXT", help="what was worked on, such as injector 3")
     parser.add_argument("--downtime", metavar="HOURS", help="time out of service, such as 6h")
+    parser.add_argument(
+        "--sheet", metavar="FILE", help="measurements that came of it, as for measure; - reads them here"
+    )
+    add_sheet_options(parser)
 
 
 def _log(given: argparse.Namespace) -> None:
@@ -53,7 +58,7 @@ def _log(given: argparse.Namespace) -> None:
     from fleetcare.operations.log import record_work
 
     context = context_of(given)
-    values = options_of(given) | {"on": given.on or context.today()}
+    values = options_of(given) | {"on": given.on or context.today(), "sheet": read_sheet_option(given.sheet)}
     draft = read_draft(LogDraft, values, label_with(task="TASK"))
     with context.write() as session, watch_moves(session, draft.tag, context.today()) as moves:
         logged = record_work(session, draft, context.today())
@@ -68,7 +73,10 @@ def _correct(given: argparse.Namespace) -> None:
     from fleetcare.operations.due import watch_items
 
     context = context_of(given)
-    draft = read_draft(CorrectionDraft, changes_of(given) | {"part_done": given.part_done}, option_label)
+    sheet = read_sheet_option(given.sheet)
+    draft = read_draft(
+        CorrectionDraft, changes_of(given) | {"part_done": given.part_done, "sheet": sheet}, option_label
+    )
     with context.write() as session:
         item = item_of_entry(session, draft.entry)
         with watch_items(session, [item.id], context.today()) as moves:
@@ -91,3 +99,5 @@ def _say_logged(logged: "Logged", what: str) -> None:
         output.say(f"Done in part, still open: {name}.")
     for raised in logged.raised:
         output.say(f"Follow-up raised: {raised}.")
+    if logged.sheet is not None:
+        say_sheet(logged.sheet)

@@ -11,7 +11,7 @@ from fleetcare.drafts.reading_in import Draft
 from fleetcare.errors import Misread, Refused
 from fleetcare.rules.bounds import check_between
 from fleetcare.rules.geometry import MOST_CYLINDERS, MOST_MM, MOST_RPM
-from fleetcare.rules.lash_points import check_valves
+from fleetcare.rules.lash_points import check_bridges
 from fleetcare.rules.lash_setting import MOST_PITCH_MM, MOST_ROCKER_RATIO
 from fleetcare.rules.nameplate import (
     LashUnit,
@@ -144,7 +144,7 @@ class EngineDraft(ItemDraft):
         if self.bridged not in {None, Bridged.NONE}:
             if self.valves_per_cylinder is None:
                 raise Refused("a bridge needs the number of valves", "give --valves-per-cylinder as well")
-            check_valves(self.valves_per_cylinder, Bridged(self.bridged))
+            check_bridges(self.valves_per_cylinder, Bridged(self.bridged))
         units = {given[-1] for given in self._lash_figures()}
         if len(units) > 1:
             raise Refused("the lash figures mix mm and inches", "give all of them in one unit")

@@ -8,6 +8,7 @@ from pydantic import BeforeValidator, model_validator
 from fleetcare.domain.quantities import Figure, parse_dial
 from fleetcare.drafts.fields import Day, DaysOrDials, Dial, Dials, Hours, Litres, MeterKind, Note, Parts, Text, Texts
 from fleetcare.drafts.reading_in import Draft
+from fleetcare.drafts.sheets import SheetOptions, TakenSheet
 from fleetcare.errors import Misread, Refused
 
 
@@ -45,8 +46,8 @@ class ReadingDraft(Draft):
         return self
 
 
-class LogDraft(Draft):
-    """What was done to an engine or machine on a day."""
+class LogDraft(TakenSheet):
+    """What was done to an engine or machine on a day, and the sheet that came of it."""
 
     tag: Text
     task: Texts = ()
@@ -67,7 +68,7 @@ class LogDraft(Draft):
 
     @model_validator(mode="after")
     def _check_what(self) -> Self:
-        if not (self.task or self.top_up or self.repair or self.defect or self.note):
+        if not (self.task or self.top_up or self.repair or self.defect or self.note or self.sheet):
             raise Refused("nothing to log", "name a task, or give --repair, --defect, --top-up or --note")
         if self.follow_up and self.defect is None:
             raise Refused("a follow-up is raised from a defect", "give --defect TEXT as well")
@@ -80,7 +81,7 @@ class LogDraft(Draft):
         return self
 
 
-class CorrectionDraft(Draft):
+class CorrectionDraft(SheetOptions):
     """What an entry should have said; what is not given stays as it was."""
 
     entry: int
@@ -103,7 +104,7 @@ class CorrectionDraft(Draft):
     def _check_why(self) -> Self:
         if self.void and not self.why:
             raise Misread("voiding an entry needs a reason", "give --why TEXT")
-        given = self.model_fields_set - {"entry", "void", "why"}
+        given = self.model_fields_set - {"entry", "void", "why", "sure"}
         if self.void and given - {"by"}:
             raise Refused("a voided entry says nothing any more", "give only --void, --why and --by")
         if not self.void and not given:

@@ -33,11 +33,12 @@ class HistoryEntry:
 
 @dataclass(frozen=True, slots=True)
 class _Told:
-    """What belongs to an entry: its tasks, the figures typed with it, and the parts used."""
+    """What belongs to an entry: its tasks, the figures typed with it, the parts used, and its sheets."""
 
     tasks: Sequence[Row]
     figures: Sequence[Row]
     parts: Sequence[Row]
+    sheets: Sequence[Row]
 
 
 def item_history(connection: "Connection", facts: ItemFacts) -> list[HistoryEntry]:
@@ -73,7 +74,13 @@ def _load_told(connection: "Connection", numbers: Sequence[int]) -> dict[int, _T
     parts = fetch(
         connection, "select entry_id, name, quantity from log_part where entry_id in :ids order by id", ids=numbers
     )
-    found = [grouped(rows) for rows in (tasks, figures, parts)]
+    sheets = fetch(
+        connection,
+        "select entry_id, kind, conditions, gauge, (select count(*) from sheet_value where sheet_id = sheet.id)"
+        " from sheet where entry_id in :ids order by id",
+        ids=numbers,
+    )
+    found = [grouped(rows) for rows in (tasks, figures, parts, sheets)]
     return {number: _Told(*(rows.get(number, []) for rows in found)) for number in numbers}
 
 
@@ -108,10 +115,17 @@ def _entry(row: Row, told: _Told, figures: str) -> HistoryEntry:
         component,
         f"{plain(Decimal(litres))} {litres_unit}" if litres else "",
         ", ".join(f"{plain(Decimal(quantity))} × {name}" for _, name, quantity in told.parts),
+        ", ".join(_say_sheet(*sheet) for _, *sheet in told.sheets),
         f"{plain(Decimal(downtime))} h out of service" if downtime else "",
         note,
     ]
     return HistoryEntry(number, known_day(day), kind, _joined(what, "; "), by, figures, _say_chain(*chain))
+
+
+def _say_sheet(kind: str, condition: str, gauge: str, values: int) -> str:
+    """Name a sheet that came with an entry: "lash sheet, 24 values, cold, gauge F2"."""
+    count = f"{values} {'value' if values == 1 else 'values'}"
+    return _joined([f"{kind} sheet", count, condition, gauge and f"gauge {gauge}"], ", ")
 
 
 def _say_chain(supersedes: int | None, is_void: bool, why: str, later: int | None, later_void: bool) -> str:

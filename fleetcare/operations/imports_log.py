@@ -14,9 +14,10 @@ from fleetcare.operations.due import watch_items
 from fleetcare.operations.imports_rows import Imported, Row, hold_together, in_columns
 from fleetcare.operations.imports_work import Day, Work, fresh_work, place_work
 from fleetcare.operations.load import entry_lives, item_facts, own_readings
-from fleetcare.operations.log import Logged, close_tasks, refuse_without_sheet
+from fleetcare.operations.log import Logged, close_tasks
 from fleetcare.operations.names import person_id
 from fleetcare.operations.readings import NewReading, insert_readings
+from fleetcare.operations.sheets_closing import refuse_without_sheet
 from fleetcare.rules.due.facts import ItemFacts
 
 if TYPE_CHECKING:

@@ -6,22 +6,29 @@ from datetime import date
 from decimal import Decimal
 from typing import TYPE_CHECKING
 
-from sqlalchemy import select
-from sqlmodel import col
-
-from fleetcare.db.tables import LogEntry, LogPart, LogTask, TaskCall, TaskVersion
-from fleetcare.db.tables import Task as TaskRow
+from fleetcare.db.tables import LogEntry, LogPart, LogTask
 from fleetcare.domain.lines import PastWork
 from fleetcare.domain.log import Done
 from fleetcare.domain.quantities import Figure, plain
-from fleetcare.domain.schedules import Combine, Task
+from fleetcare.domain.schedules import Task
 from fleetcare.domain.schedules import TaskVersion as Version
 from fleetcare.drafts.work import LogDraft
 from fleetcare.errors import Refused
 from fleetcare.operations.find import FoundItem, find_item, find_meters, find_task, pick_meter
+from fleetcare.operations.follow_ups import on_condition, raise_follow_ups
 from fleetcare.operations.load import entry_lives, item_facts, own_readings
 from fleetcare.operations.names import person_id
 from fleetcare.operations.readings import NewReading, store_reading
+from fleetcare.operations.sheets import fresh_sheet, keep_sheet
+from fleetcare.operations.sheets_closing import (
+    NONE_CAME,
+    Sheets,
+    came_along,
+    refuse_without_sheet,
+    say_still_open,
+    why_open,
+)
+from fleetcare.operations.sheets_judge import JudgedSheet
 from fleetcare.rules.due.covering import closure
 from fleetcare.rules.due.facts import ItemFacts
 from fleetcare.rules.due.replay import replay
@@ -43,16 +50,41 @@ class Logged:
     part_done: list[str] = field(default_factory=list)
     raised: list[str] = field(default_factory=list)
     notes: list[str] = field(default_factory=list)
+    sheet: JudgedSheet | None = None
+
+    def note_still_open(self, facts: ItemFacts, entry: LogEntry, sheets: Sheets) -> None:
+        """Note which tasks the sheet of an entry could close and did not."""
+        named, covered = [*self.closed, *self.part_done], [small for small, _ in self.covered]
+        self.notes += say_still_open(facts, entry.id, entry.on, named, covered, sheets)
 
 
 def record_work(session: "Session", draft: LogDraft, today: date) -> Logged:
     """Store what was done on a day. Everything a draft says stands in one entry of each kind."""
     item = find_item(session.connection(), draft.tag)
     refuse_future(draft.on, today)
-    logged = Logged(item)
+    sheet = fresh_sheet(session, item, draft, draft.on)
     tasks = [find_task(session.connection(), item, name) for name in draft.task]
-    called = _on_condition(session, tasks) if draft.follow_up else []
+    called = on_condition(session, tasks) if draft.follow_up else []
     done = [task for task in tasks if task not in called]
+    logged = Logged(item)
+    entry = _store_entries(session, draft, done, called, logged)
+    for name, quantity in draft.part:
+        session.add(LogPart(entry_id=entry.id, name=name, quantity=quantity))
+    store_figures(session, item, entry, draft.at)
+    facts = item_facts(session.connection(), today, [item.id])[0]
+    if sheet is not None:
+        logged.sheet = keep_sheet(session, entry, sheet)
+    came = came_along(sheet, sure=draft.sure)
+    close_tasks(session, facts, entry, done, part_done=draft.part_done, logged=logged, sheets=came)
+    logged.note_still_open(facts, entry, came)
+    return logged
+
+
+def _store_entries(
+    session: "Session", draft: LogDraft, done: Sequence[int], called: Sequence[int], logged: Logged
+) -> LogEntry:
+    """Store an entry of each kind a draft asks for, and give the first, which holds all that has no kind of its own."""
+    item = logged.item
     first: LogEntry | None = None
     for kind, title in _kinds(draft, bool(done)):
         entry = LogEntry(item_id=item.id, on=draft.on, kind=kind, title=title, person_id=person_id(session, draft.by))
@@ -66,14 +98,9 @@ def record_work(session: "Session", draft: LogDraft, today: date) -> Logged:
         session.flush()
         logged.entries.append((entry.id, kind))
         if kind == "defect" and draft.follow_up:
-            _raise_follow_ups(session, item, draft, entry.id, called, logged)
+            logged.raised += raise_follow_ups(session, item, draft, entry.id, called)
     assert first is not None
-    for name, quantity in draft.part:
-        session.add(LogPart(entry_id=first.id, name=name, quantity=quantity))
-    store_figures(session, item, first, draft.at)
-    facts = item_facts(session.connection(), today, [item.id])[0]
-    close_tasks(session, facts, first, done, part_done=draft.part_done, logged=logged)
-    return logged
+    return first
 
 
 def refuse_future(on: date, today: date) -> None:
@@ -110,11 +137,12 @@ def close_tasks(
     part_done: bool,
     logged: Logged,
     elsewhere: Sequence[int] = (),
+    sheets: Sheets = NONE_CAME,
 ) -> None:
     """Store which tasks an entry closes, and what they cover; part-done work closes nothing.
 
     `facts` are those of its item, this entry's figures among them. Tasks done `elsewhere`, by another entry of the
-    same day, are not covered once more.
+    same day, are not covered once more. `sheets` are the kinds that came along, each with why it closes nothing.
     """
     tasks = {task.id: task for task in facts.tasks}
     covers = {task.id: task.version_on(entry.on).covers for task in facts.tasks}
@@ -126,7 +154,7 @@ def close_tasks(
             session.add(LogTask(entry_id=entry.id, task_id=task_id, part_done=True))
             logged.part_done.append(task.name)
             continue
-        refuse_without_sheet(task, entry.on)
+        refuse_without_sheet(task, entry.on, sheets)
         work = _preview(facts, task, version, entry)
         row = LogTask(entry_id=entry.id, task_id=task_id, served_period=work.served)
         session.add(row)
@@ -135,18 +163,8 @@ def close_tasks(
         logged.notes.extend(_say_no_figure(facts, task, version, entry))
         if work.note:
             logged.notes.append(_say_note(task, work))
-        _cover(session, facts, tasks, closure(covers, task_id), named, entry, row, logged)
+        _cover(session, facts, tasks, closure(covers, task_id), named, entry, row, logged, sheets)
     session.flush()
-
-
-def refuse_without_sheet(task: Task, on: date) -> None:
-    """Refuse work on a task that needed a sheet on its day."""
-    sheet = task.version_on(on).needs_sheet
-    if sheet:
-        raise Refused(
-            f"{task.name} closes only with its {sheet} sheet",
-            "give --part-done to keep a note of the work until the sheet is there",
-        )
 
 
 def _cover(
@@ -158,8 +176,9 @@ def _cover(
     entry: LogEntry,
     big: LogTask,
     logged: Logged,
+    sheets: Sheets,
 ) -> None:
-    """Log the small jobs a big one does along with it, save those with a sheet or outside their window."""
+    """Log the small jobs a big one does along with it, save those without their sheet or outside their window."""
     for task_id in covered:
         task = tasks.get(task_id)
         if task is None or task_id in named or task.removed_on is not None:
@@ -168,8 +187,8 @@ def _cover(
         if version.on_condition:
             continue
         work = _preview(facts, task, version, entry)
-        if version.needs_sheet:
-            logged.notes.append(f"{task.name} stays open: it closes only with its {version.needs_sheet} sheet")
+        if why := why_open(task, entry.on, sheets):
+            logged.notes.append(f"{task.name} stays open: it {why}")
         elif not work.counted:
             logged.notes.append(f"{task.name} stays open: {work.note}")
         else:
@@ -230,48 +249,3 @@ def _kinds(draft: LogDraft, has_tasks: bool) -> list[tuple[str, str]]:
     ]
     found = [kind for kind in kinds if kind is not None]
     return found or [("other", "")]
-
-
-def _on_condition(session: "Session", task_ids: Sequence[int]) -> list[int]:
-    """Give those of some tasks whose newest version is on condition."""
-    found = []
-    for task_id in task_ids:
-        versions = session.scalars(
-            select(TaskVersion)
-            .where(col(TaskVersion.task_id) == task_id)
-            .order_by(col(TaskVersion.from_on), col(TaskVersion.id))
-        ).all()
-        if versions[-1].on_condition:
-            found.append(task_id)
-    return found
-
-
-def _raise_follow_ups(
-    session: "Session", item: FoundItem, draft: LogDraft, entry_id: int, called: Sequence[int], logged: Logged
-) -> None:
-    """Call the on-condition tasks named, or else raise a follow-up of its own from the defect."""
-    assert draft.defect is not None
-    due_on = draft.until or draft.on
-    for task_id in called or [_follow_up_task(session, item, draft.defect)]:
-        session.add(TaskCall(task_id=task_id, entry_id=entry_id, on=draft.on, due_on=due_on, why=draft.defect))
-        logged.raised.append(f"{session.get_one(TaskRow, task_id).name}, due {due_on}")
-    session.flush()
-
-
-def _follow_up_task(session: "Session", item: FoundItem, defect: str) -> int:
-    """Give the task that stands for a defect's follow-up, made where there is none of that name."""
-    rows = session.scalars(select(TaskRow).where(col(TaskRow.item_id) == item.id, col(TaskRow.removed_on).is_(None)))
-    taken = {row.name_key: row.id for row in rows}
-    name = defect
-    while name.casefold() in taken and not _on_condition(session, [taken[name.casefold()]]):
-        name = f"{name} (follow-up)"
-    if name.casefold() in taken:
-        return taken[name.casefold()]
-    row = TaskRow(item_id=item.id, name=name, name_key=name.casefold())
-    session.add(row)
-    session.flush()
-    session.add(
-        TaskVersion(task_id=row.id, from_on=date.min, combine=Combine.FIRST, on_condition=True, work="follow-up")
-    )
-    session.flush()
-    return row.id

@@ -10,12 +10,14 @@ from fleetcare.domain.engines import Status, StatusSpell, status_on
 from fleetcare.domain.lines import DueLine
 from fleetcare.domain.quantities import plain, tenth
 from fleetcare.domain.schedules import Task
+from fleetcare.domain.sheets import LASH
 from fleetcare.operations.find import FoundItem, find_item, find_task
 from fleetcare.operations.history import HistoryEntry as HistoryEntry
 from fleetcare.operations.history import item_history
 from fleetcare.operations.load import item_facts
 from fleetcare.operations.plate_figures import derived_figures
 from fleetcare.operations.rows import fetch
+from fleetcare.operations.sheets_judge import JudgedSheet, last_sheet
 from fleetcare.rules.due.due_list import in_order, item_lines
 from fleetcare.rules.due.facts import ItemFacts
 from fleetcare.rules.due.replay import replay
@@ -104,6 +106,15 @@ def task_working(
     working = explain(line, facts) if line is not None else [("state", f"no line: {_why_no_line(facts, task)}")]
     past = [(f"entry {work.number}, {work.on.isoformat()}", say_past(work, facts)) for work in replay(facts, task).past]
     return working, past[::-1]
+
+
+def task_sheet(connection: "Connection", tag: str, name: str, on: date) -> JudgedSheet | None:
+    """Give the newest lash sheet of the engine of a task that is about lash, judged; None for any other task."""
+    item = find_item(connection, tag, on=on, even_withdrawn=True)
+    task_id = find_task(connection, item, name, on=on, even_ended=True)
+    task = next(task for task in item_facts(connection, on, [item.id])[0].tasks if task.id == task_id)
+    version = task.version_on(on)
+    return last_sheet(connection, item, on) if LASH in {version.needs_sheet, version.work} else None
 
 
 def _why_no_line(facts: ItemFacts, task: Task) -> str:

@@ -29,6 +29,7 @@ from fleetcare.domain.sheets import (
     Verdict,
 )
 from fleetcare.rules.lash import MM_PER, Gap, judge
+from fleetcare.rules.lash_points import side_of
 
 ANY = "any"
 _PHASES = (Phase.FOUND, Phase.LEFT)
@@ -37,11 +38,16 @@ _PHASES = (Phase.FOUND, Phase.LEFT)
 def judge_sheet(
     values: Sequence[SheetValue], points: Sequence[LashPoint], spec: LashSpec | None, condition: str
 ) -> tuple[Judgement, ...]:
-    """Judge every value of a sheet, in the order of the points, whatever the order of the values."""
-    sides = {point.name: point.side for point in points}
+    """Judge every value of a sheet, in the order of the points, whatever the order of the values.
+
+    What an older sheet has of points the engine is no longer said to have comes last.
+    """
     places = {point.name: place for place, point in enumerate(points)}
-    ordered = sorted(values, key=lambda value: (places[value.point], value.quantity, _PHASES.index(value.phase)))
-    return tuple(judge_value(value, sides[value.point], spec, condition) for value in ordered)
+
+    def place(value: SheetValue) -> tuple[int, str, str, int]:
+        return places.get(value.point, len(places)), value.point, value.quantity, _PHASES.index(value.phase)
+
+    return tuple(judge_value(value, side_of(value.point), spec, condition) for value in sorted(values, key=place))
 
 
 def judge_value(value: SheetValue, side: Side, spec: LashSpec | None, condition: str) -> Judgement:

@@ -1,10 +1,10 @@
 """The lash points of an engine: what they are called, how they stand, and in which order they can be set.
 
 Names are a cylinder, I or E, and a number where a side has several: 3E, 3I2. Two valves under one bridge are one point.
-Of three valves two are intake, of five three: common practice. The order of setting is that of rules/valve_order.
+Of an odd number of valves the intake has one more: common practice. The order of setting is that of rules/valve_order.
 """
 
-from collections.abc import Sequence
+from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
 
 from fleetcare.domain.engines import Bridged, Layout, Side, ValveTrain
@@ -12,8 +12,6 @@ from fleetcare.domain.sheets import LashPoint
 from fleetcare.errors import Refused
 from fleetcare.rules.valve_order import Position, easiest_order, firing_angles
 
-# Intake and exhaust valves of a cylinder, by how many it has.
-SPLIT = {2: (1, 1), 3: (2, 1), 4: (2, 2), 5: (3, 2)}
 _LETTER = {Side.INTAKE: "I", Side.EXHAUST: "E"}
 _UNDER_A_BRIDGE = 2
 
@@ -26,22 +24,21 @@ class Stop:
     points: tuple[LashPoint, ...]
 
 
-def check_valves(valves_per_cylinder: int, bridged: Bridged) -> None:
-    """Refuse a number of valves whose sides are not known, and a bridge where there are no two valves to be under it."""
-    if valves_per_cylinder not in SPLIT:
-        raise Refused(
-            f"with {valves_per_cylinder} valves per cylinder nobody knows which are intake",
-            f"give a number from {min(SPLIT)} to {max(SPLIT)}",
-        )
-    for side, valves in zip(Side, SPLIT[valves_per_cylinder], strict=True):
+def split_valves(valves_per_cylinder: int) -> Mapping[Side, int]:
+    """Give how many valves of a cylinder are on which side: of an odd number the intake has one more."""
+    return {Side.INTAKE: valves_per_cylinder - valves_per_cylinder // 2, Side.EXHAUST: valves_per_cylinder // 2}
+
+
+def check_bridges(valves_per_cylinder: int, bridged: Bridged) -> None:
+    """Refuse a bridge on a side that has not the two valves to be under it."""
+    for side, valves in split_valves(valves_per_cylinder).items():
         if _is_bridged(side, bridged) and valves != _UNDER_A_BRIDGE:
             have = f"{valves} {side} {'valve' if valves == 1 else 'valves'}"
             raise Refused(f"a bridge joins two valves, and each cylinder has {have}", "mend one of them")
 
 
 def lash_points(train: ValveTrain) -> tuple[LashPoint, ...]:
-    """Give the points as the engine stands: cylinder by cylinder, intake before exhaust. Refuses as `check_valves`."""
-    check_valves(train.valves_per_cylinder, train.bridged)
+    """Give the points as the engine stands: cylinder by cylinder, intake before exhaust."""
     return tuple(point for cylinder in range(1, train.cylinders + 1) for point in _of_cylinder(train, cylinder))
 
 
@@ -74,6 +71,11 @@ def lash_walk(train: ValveTrain) -> tuple[Stop, ...]:
     return tuple(Stop(position, _set_at(points, position)) for position in positions)
 
 
+def side_of(name: str) -> Side:
+    """Give the side a point is on by its name alone, as a sheet may be older than the nameplate."""
+    return Side.INTAKE if _LETTER[Side.INTAKE] in name else Side.EXHAUST
+
+
 def find_point(points: Sequence[LashPoint], name: str, tag: str) -> LashPoint:
     """Find a point by name, whatever its case. Refuses an unknown one, naming those of the engine `tag`."""
     wanted = name.strip().upper()
@@ -98,7 +100,7 @@ def _is_bridged(side: Side, bridged: Bridged) -> bool:
 
 def _of_cylinder(train: ValveTrain, cylinder: int) -> list[LashPoint]:
     points = []
-    for side, valves in zip(Side, SPLIT[train.valves_per_cylinder], strict=True):
+    for side, valves in split_valves(train.valves_per_cylinder).items():
         name = f"{cylinder}{_LETTER[side]}"
         if valves == 1 or _is_bridged(side, train.bridged):
             points.append(LashPoint(name, cylinder, side, valves))

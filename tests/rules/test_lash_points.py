@@ -4,7 +4,7 @@ import pytest
 
 from fleetcare.domain.engines import Bridged, Layout, Side, ValveTrain
 from fleetcare.errors import Refused
-from fleetcare.rules.lash_points import banks, check_valves, find_point, lash_points, lash_walk, say_points
+from fleetcare.rules.lash_points import banks, check_bridges, find_point, lash_points, lash_walk, say_points
 
 
 def names(train: ValveTrain) -> str:
@@ -18,6 +18,7 @@ def names(train: ValveTrain) -> str:
         (3, "none", "1I1 1I2 1E"),
         (4, "none", "1I1 1I2 1E1 1E2"),
         (5, "none", "1I1 1I2 1I3 1E1 1E2"),
+        (6, "none", "1I1 1I2 1I3 1E1 1E2 1E3"),
         (3, "intake", "1I 1E"),
         (4, "intake", "1I 1E1 1E2"),
         (4, "exhaust", "1I1 1I2 1E"),
@@ -42,12 +43,6 @@ def test_the_points_follow_the_cylinders_intake_before_exhaust() -> None:
     assert names(ValveTrain(3, 2)) == "1I 1E 2I 2E 3I 3E"
 
 
-@pytest.mark.parametrize("valves", [1, 6, 8])
-def test_a_number_of_valves_whose_sides_nobody_knows_is_refused(valves: int) -> None:
-    with pytest.raises(Refused, match="nobody knows which are intake; give a number from 2 to 5"):
-        check_valves(valves, Bridged.NONE)
-
-
 @pytest.mark.parametrize(
     ("valves", "bridged", "have"),
     [
@@ -59,7 +54,7 @@ def test_a_number_of_valves_whose_sides_nobody_knows_is_refused(valves: int) -> 
 )
 def test_a_bridge_without_two_valves_under_it_is_refused(valves: int, bridged: str, have: str) -> None:
     with pytest.raises(Refused, match=f"a bridge joins two valves, and each cylinder has {have};"):
-        lash_points(ValveTrain(4, valves, Bridged(bridged)))
+        check_bridges(valves, Bridged(bridged))
 
 
 @pytest.mark.parametrize(

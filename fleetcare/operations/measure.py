@@ -1,0 +1,40 @@
+"""Measurements taken without any work: stored with an entry of their own, once however often they come."""
+
+from dataclasses import dataclass, replace
+from datetime import date
+from typing import TYPE_CHECKING
+
+from fleetcare.drafts.work import LogDraft
+from fleetcare.operations.find import find_item
+from fleetcare.operations.log import record_work, refuse_future
+from fleetcare.operations.sheets import known_entry, take_sheet
+from fleetcare.operations.sheets_judge import JudgedSheet
+
+if TYPE_CHECKING:
+    from sqlalchemy.orm import Session
+
+
+@dataclass(frozen=True, slots=True)
+class Measured:
+    """A sheet with the entry it stands with, whether that is new, and what is worth saying of the tasks."""
+
+    sheet: JudgedSheet
+    is_new: bool
+    notes: tuple[str, ...] = ()
+
+
+def measure(session: "Session", draft: LogDraft, today: date) -> Measured:
+    """Store the sheet of a draft that names no task. The same values of the same day are stored once.
+
+    Raises Refused for a day to come, Refusals with everything that is wrong with the sheet.
+    """
+    refuse_future(draft.on, today)
+    item = find_item(session.connection(), draft.tag)
+    sheet = take_sheet(session.connection(), item, draft, draft.on)
+    assert sheet is not None
+    known = known_entry(session, item, sheet.sheet)
+    if known is not None:
+        return Measured(replace(sheet, sheet=replace(sheet.sheet, entry=known)), is_new=False)
+    logged = record_work(session, draft, today)
+    assert logged.sheet is not None
+    return Measured(logged.sheet, is_new=True, notes=tuple(logged.notes))
