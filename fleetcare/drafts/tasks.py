@@ -177,11 +177,23 @@ def _check_intervals(draft: TaskDraft, triggers: tuple[TriggerDraft, ...]) -> No
                 raise Refused(f"{name} names {kind} twice", "give one of each kind")
             if kind not in kinds:
                 raise Refused(f"{name} {option} binds to no interval of this task", f"add an --every counting {kind}")
+    _check_grid(draft, kinds)
+
+
+def _check_grid(draft: TaskDraft, kinds: list[Kind]) -> None:
+    if draft.grid_origin and draft.anchor is not Anchor.ON_GRID:
+        raise Refused("--grid-origin needs a grid", "add --anchor on-grid")
+    bound: list[Kind] = []
     for origin in draft.grid_origin:
-        if draft.anchor is not Anchor.ON_GRID:
-            raise Refused("--grid-origin needs a grid", "add --anchor on-grid")
-        if not any(_origin_binds(origin, kind) for kind in kinds):
+        binds_to = [kind for kind in kinds if _origin_binds(origin, kind)]
+        if len(binds_to) > 1:
+            raise Refused(f"--grid-origin {origin} could be {' and '.join(binds_to)}", "write its unit behind it")
+        if not binds_to:
             raise Refused(f"--grid-origin {origin} binds to no interval of this task", "give one of a kind it counts")
+        bound += binds_to
+    for kind in bound:
+        if bound.count(kind) > 1:
+            raise Refused(f"--grid-origin names {kind} twice", "give one of each kind")
 
 
 def _check_trigger(trigger: TriggerDraft) -> None:
