@@ -47,6 +47,7 @@ ACTIONS = (
     Action("due", "c", "csv", "CSV", "write exactly the lines shown to a CSV file in this folder"),
     Action("due", "n", "to_group(1)", "next group", "go to the next heading", in_foot=False),
     Action("due", "p", "to_group(-1)", "group before", "go to the heading before", in_foot=False),
+    Action("due", "escape", "hush", "hush", "take away what was said at the foot", in_foot=False),
     Action("engines", "enter", "item", "open", "open the page of the engine or machine"),
     Action("engines", "slash", "find", "find", "show only those that hold some words"),
     Action("engines", "n", "to_group(1)", "next group", "go to the next site", in_foot=False),

@@ -58,14 +58,20 @@ class FleetApp(App[None]):
             self.push_screen(KeysScreen(self.screen.place))
 
     def action_daylight(self) -> None:
-        """Change between dark and light colours."""
+        """Change between dark and light colours; sixteen are the terminal's own to change."""
+        if self.theme == SIXTEEN.name:
+            if isinstance(self.screen, FramedScreen):
+                self.screen.notice.say("This terminal shows colours of its own; change them there.")
+            return
         self.theme = BAY.name if self.theme == OFFICE.name else OFFICE.name
 
     def get_system_commands(self, screen: Screen[object]) -> Iterable[SystemCommand]:
         """Give the command palette what the keys do here."""
         if isinstance(screen, FramedScreen):
             for action in actions_of(screen.place):
-                yield SystemCommand(action.word.capitalize(), action.tells, _calling(self, called(action)))
+                yield SystemCommand(
+                    action.word[0].upper() + action.word[1:], action.tells, _calling(self, called(action))
+                )
 
     def status(self) -> int:
         """Give the exit status once the screens are left; raises the fault of ours that ended them."""

@@ -8,7 +8,6 @@ from textual.content import Content
 from textual.screen import Screen
 from textual.widget import Widget
 
-from fleetcare.domain.printable import clean
 from fleetcare.tui.actions import actions_of, bindings, called
 from fleetcare.tui.widgets.long_list import LongList
 from fleetcare.tui.widgets.text import columns_of, fit, wrap
@@ -56,19 +55,17 @@ class Notice(Widget):
 
     def __init__(self) -> None:
         super().__init__()
-        self._lines: list[str] = []
+        self._lines: tuple[str, ...] = ()
+        self.is_about_reading = False
 
-    def say(self, *lines: str, is_wrong: bool = False) -> None:
-        """Say something; nothing at all takes the notice away."""
-        self._lines = [line for line in lines if line]
-        self.set_class(is_wrong, "-wrong")
-        self.display = bool(self._lines)
-        self.refresh(layout=True)
-
-    @property
-    def text(self) -> str:
-        """What is being said."""
-        return "\n".join(self._lines)
+    def say(self, *lines: str, is_wrong: bool = False, is_about_reading: bool = False) -> None:
+        """Say something; nothing at all takes the notice away. What is about reading ends with the next reading."""
+        self.is_about_reading = is_about_reading
+        if lines != self._lines:
+            self._lines = lines
+            self.set_class(is_wrong, "-wrong")
+            self.display = bool(lines)
+            self.refresh(layout=True)
 
     def get_content_height(self, container: Any, viewport: Any, width: int) -> int:
         """As high as its text, up to a few lines."""
@@ -134,9 +131,14 @@ class FramedScreen(Screen[Any]):
         yield Notice()
         yield KeyLine(self.place)
 
-    def say(self, *lines: str, is_wrong: bool = False) -> None:
-        """Say something on the notice line; control characters show."""
-        self.query_one(Notice).say(*(clean(line) for line in lines), is_wrong=is_wrong)
+    @property
+    def notice(self) -> Notice:
+        """Where something can be said."""
+        return self.query_one(Notice)
+
+    def action_hush(self) -> None:
+        """Take away what was said."""
+        self.notice.say()
 
     def action_to_group(self, step: int) -> None:
         """Go to another heading of the list."""

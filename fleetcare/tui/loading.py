@@ -42,10 +42,16 @@ class LoadingScreen(FramedScreen):
         super().__init__()
         self._seen: Stamp | None = None
         self._worker: Worker[None] | None = None
+        self._has_failed = False
 
     def on_mount(self) -> None:
         """Begin to look whether the file changed."""
         self.set_interval(FOLLOW_EVERY, self._look)
+
+    @property
+    def has_file(self) -> bool:
+        """Whether there was anything to read."""
+        return self._seen is not None and self._seen.file is not None and self._seen.file[2] > 0
 
     @property
     def day(self) -> "date":
@@ -62,7 +68,7 @@ class LoadingScreen(FramedScreen):
 
     def fail(self, error: FleetError) -> None:
         """Say what is wrong; what was shown before stays."""
-        self.say(*error.lines(), is_wrong=True)
+        self.notice.say(*error.lines(), is_wrong=True, is_about_reading=True)
 
     def load(self) -> None:
         """Read in a thread; a reading still under way is dropped."""
@@ -71,9 +77,9 @@ class LoadingScreen(FramedScreen):
         self.set_timer(_SILENT, partial(self._still_reading, self._worker))
 
     def follow(self) -> None:
-        """Read again if the file or the day changed since, and nothing is being read."""
+        """Read again if the file or the day changed since, or it could not be read, and nothing is being read."""
         is_reading = self._worker is not None and not self._worker.is_finished
-        if not is_reading and stamp(self.context) != self._seen:
+        if not is_reading and (self._has_failed or stamp(self.context) != self._seen):
             self.load()
 
     def on_screen_resume(self) -> None:
@@ -82,13 +88,14 @@ class LoadingScreen(FramedScreen):
 
     def on_loading_screen_loaded(self, message: Loaded) -> None:
         """Show what came."""
-        self.fleet_app.trouble = None
-        self.say()
+        self._has_failed, self.fleet_app.trouble = False, None
+        if self.notice.is_about_reading:
+            self.notice.say()
         self.show(message.found)
 
     def on_loading_screen_failed(self, message: Failed) -> None:
         """Show why nothing came."""
-        self.fleet_app.trouble = message.error
+        self._has_failed, self.fleet_app.trouble = True, message.error
         self.fail(message.error)
 
     def on_worker_state_changed(self, event: Worker.StateChanged) -> None:
@@ -112,5 +119,5 @@ class LoadingScreen(FramedScreen):
             self.follow()
 
     def _still_reading(self, worker: Worker[None]) -> None:
-        if worker is self._worker and not worker.is_finished:
-            self.say("Reading …")
+        if worker is self._worker and not worker.is_finished and not self._has_failed:
+            self.notice.say("Reading …", is_about_reading=True)

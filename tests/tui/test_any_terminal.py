@@ -87,6 +87,15 @@ async def test_day_and_night_change_with_a_key(opened: Opened) -> None:
         assert pilot.app.theme == "bay"
 
 
+async def test_sixteen_colours_are_the_terminal_s_own_to_change(
+    opened: Opened, monkeypatch: pytest.MonkeyPatch
+) -> None:
+    monkeypatch.setenv("NO_COLOR", "1")
+    async with opened("d") as pilot:
+        assert line_with(pilot, "This terminal shows colours of its own; change them there.")
+        assert pilot.app.theme == "sixteen"
+
+
 def luminance(color: str) -> Decimal:
     """Relative luminance (WCAG 2.1, definition of relative luminance)."""
     parts = [Decimal(part) for part in Color.parse(color).normalized]

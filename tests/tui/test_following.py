@@ -115,6 +115,27 @@ async def test_a_database_gone_while_open_is_said_and_what_was_read_stays(opened
         assert not [line for line in seen(pilot) if "there is no database" in line]
 
 
+async def test_what_was_said_of_a_file_written_stays_while_the_list_follows(opened: Opened, db: Path) -> None:
+    async with opened("c", size=(160, 24)) as pilot:
+        type_in(db, "reading", "TR-1", "4910", "--on", TODAY)
+        await follow(pilot)
+        assert line_with(pilot, "11 lines written to")
+        await press(pilot, "escape")
+        assert not [line for line in seen(pilot) if "11 lines written to" in line]
+
+
+async def test_a_file_that_could_not_be_read_is_tried_again_though_it_did_not_change(opened: Opened, db: Path) -> None:
+    async with opened(size=(160, 24)) as pilot:
+        hidden = db.rename(db.with_suffix(".gone"))
+        await follow(pilot)
+        screen = pilot.app.screen
+        assert isinstance(screen, LoadingScreen)
+        failed = screen._worker
+        await follow(pilot)
+        assert screen._worker is not failed
+        hidden.rename(db)
+
+
 async def test_a_working_of_a_line_that_is_gone_says_so(opened: Opened, db: Path) -> None:
     async with opened("down", "enter", size=(160, 24)) as pilot:
         type_in(db, "task", "remove", "PS-1", "Oil and filter")
@@ -130,6 +151,8 @@ async def test_a_file_that_is_no_database_is_said_with_the_way_out(
     path.write_bytes(content)
     async with opened(size=(160, 24), context=Context(str(path))) as pilot:
         assert line_with(pilot, str(path), "--db")
+        is_new = [line for line in seen(pilot) if "There is nothing here yet." in line]
+        assert bool(is_new) == (content == b"")
         assert isinstance(pilot.app, FleetApp)
         assert pilot.app.status() == 3
 

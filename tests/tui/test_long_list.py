@@ -129,6 +129,20 @@ async def test_the_cursor_stays_on_its_row_and_the_row_where_it_is_when_rows_com
         assert seen(pilot)[before].startswith(f"▌{tag} ")
 
 
+async def test_a_list_scrolled_away_from_its_cursor_stays_where_it_was_scrolled_to() -> None:
+    app = ListApp([Section("", many(50))])
+    async with app.run_test(size=(40, 10)) as pilot:
+        await settle_down(pilot)
+        app.rows.scroll_to(y=20, animate=False, immediate=True)
+        await settle_down(pilot)
+        assert seen(pilot)[1].split()[0] == "P-20"
+        app.rows.show([Section("", [*many(7, "NEW"), *many(50)])])
+        await settle_down(pilot)
+        assert seen(pilot)[1].split()[0] == "P-20"
+        await press(pilot, "down")
+        assert [line for line in seen(pilot) if line.startswith("▌P-1 ")]
+
+
 async def test_where_its_row_is_gone_the_cursor_stays_at_its_place() -> None:
     app = ListApp([Section("", many(50))])
     async with app.run_test(size=(40, 10)) as pilot:

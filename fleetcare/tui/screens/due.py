@@ -7,7 +7,7 @@ from typing import TYPE_CHECKING
 
 from textual.widget import Widget
 
-from fleetcare.errors import FleetError, NoDatabase
+from fleetcare.errors import FleetError
 from fleetcare.operations.due_words import Group, notes, say_dial, say_due, say_likely, say_remaining
 from fleetcare.operations.review import Facet, Order, Review, ReviewLine, Wanted, arrange, review
 from fleetcare.tui.finding import FindingScreen
@@ -115,10 +115,10 @@ class DueScreen(FindingScreen):
         self.rearrange()
 
     def fail(self, error: FleetError) -> None:
-        """Without any lines yet, say how to begin below what is wrong."""
+        """Where there is no file yet, say how to begin beside what is wrong."""
         super().fail(error)
-        if self.review is None and isinstance(error, NoDatabase):
-            self.rows.show([], EMPTY)
+        if self.review is None:
+            self.rows.show([], "" if self.has_file else EMPTY)
 
     @property
     def rows(self) -> LongList[ReviewLine]:
@@ -201,9 +201,9 @@ class DueScreen(FindingScreen):
         try:
             path = write_shown([line.row for line in self.shown], Path(), self.review.on)
         except FleetError as error:
-            self.say(*error.lines(), is_wrong=True)
+            self.notice.say(*error.lines(), is_wrong=True)
         else:
-            self.say(f"{len(self.shown)} {'line' if len(self.shown) == 1 else 'lines'} written to {path}")
+            self.notice.say(f"{len(self.shown)} {'line' if len(self.shown) == 1 else 'lines'} written to {path}")
 
     def _narrowed(self, chosen: frozenset[tuple[Facet, str]] | None) -> None:
         if chosen is not None:

@@ -1,9 +1,9 @@
 """A list that draws only what is visible: as quick with a million rows as with ten."""
 
-from bisect import bisect_right
+from bisect import bisect_left, bisect_right
 from collections.abc import Callable, Hashable, Sequence
 from itertools import accumulate
-from typing import ClassVar, Generic
+from typing import ClassVar, Generic, NamedTuple
 
 from rich.segment import Segment
 from rich.style import Style
@@ -22,6 +22,15 @@ from fleetcare.tui.widgets.text import columns_of, fit, wrap
 _HEAD = 1  # the line of column titles
 _EDGE = "▌"
 _LOOKED_AT = 100  # rows, spread over the list, that tell how wide columns must be
+
+
+class _Held(NamedTuple):
+    """A row, its key, how many lines below the topmost it stands, and whether the cursor is on it."""
+
+    number: int
+    key: Hashable
+    below: int
+    is_cursor: bool
 
 
 class LongList(ScrollView, Generic[Row], can_focus=True, inherit_bindings=False):
@@ -65,29 +74,25 @@ class LongList(ScrollView, Generic[Row], can_focus=True, inherit_bindings=False)
         self._empty = ""
         self._shares: tuple[int, list[tuple[Column[Row], int]]] = (-1, [])
 
-    def show(
-        self, sections: Sequence[Section[Row]], empty: str = "", columns: Sequence[Column[Row]] | None = None
-    ) -> None:
+    def show(self, sections: Sequence[Section[Row]], empty: str = "") -> None:
         """Show other rows; `empty` is said where there are none. Equal rows change nothing on screen."""
-        columns = self._columns if columns is None else columns
         sections = [section for section in sections if section.rows]
-        if (sections, empty, columns) == (self._sections, self._empty, self._columns):
+        if (sections, empty) == (self._sections, self._empty):
             return
-        before, kept = self.current, self._line_of(self.cursor) - self.scroll_offset.y if self._count else 0
-        self._columns, self._empty, self._shares = columns, empty, (-1, [])
-        self._sections = sections
-        counts = [len(section.rows) for section in self._sections]
-        self._first_rows = list(accumulate(counts, initial=0))
-        self._first_lines = list(accumulate((len(s.rows) + bool(s.title) for s in self._sections), initial=0))
+        held, before = self._held(), self.current
+        self._sections, self._empty, self._shares = sections, empty, (-1, [])
+        self._first_rows = list(accumulate((len(section.rows) for section in sections), initial=0))
+        self._first_lines = list(accumulate((len(s.rows) + bool(s.title) for s in sections), initial=0))
         self._count = self._first_rows[-1]
         self.virtual_size = Size(self.size.width, self._first_lines[-1] + _HEAD)
         place = min(self.cursor, max(self._count - 1, 0))
-        if before is not None:
-            place = self._find(self._key(before), place)
+        place = self._find(self._key(before), place) if before is not None else place
         self.set_reactive(LongList.cursor, place)
-        if self._count:
-            self.scroll_to(y=max(self._line_of(place) - kept, 0), animate=False, immediate=True)
-        self._keep_in_sight()
+        if held is not None and self._count:
+            line = self._line_of(self._find(held.key, min(held.number, self._count - 1)))
+            self.scroll_to(y=max(line - held.below, 0), animate=False, immediate=True)
+        if held is None or held.is_cursor:
+            self._keep_in_sight()
         self.refresh()
         self.post_message(self.Moved())
 
@@ -229,6 +234,16 @@ class LongList(ScrollView, Generic[Row], can_focus=True, inherit_bindings=False)
         """Look a row up by its key, those near its old place first."""
         order = [*range(otherwise, min(otherwise + 200, self._count)), *range(self._count)]
         return next((number for number in order if self._key(self.row(number)) == key), otherwise)
+
+    def _held(self) -> "_Held | None":
+        """Give the row that is to stay where it is: the one under the cursor, or if that is out of sight the topmost."""
+        if not self._count:
+            return None
+        top = self.scroll_offset.y
+        is_cursor = top <= self._line_of(self.cursor) < top + self.size.height - _HEAD
+        topmost = min(bisect_left(range(self._count), top, key=self._line_of), self._count - 1)
+        number = self.cursor if is_cursor else topmost
+        return _Held(number, self._key(self.row(number)), self._line_of(number) - top, is_cursor)
 
     def _keep_in_sight(self) -> None:
         """Scroll as little as it takes for the cursor's row to stand below titles and heading, above the edge."""
