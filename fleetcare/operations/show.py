@@ -213,8 +213,9 @@ def _readings(connection: "Connection", item: FoundItem, on: date) -> list[Readi
     rows = fetch(
         connection,
         'select reading.id, reading."on", reading.value, reading.unit, reading.rolled_over, reading.note,'
-        " reading.entry_id, (select mark || ': ' || why from reading_mark where reading_id = reading.id"
+        " reading.entry_id, coalesce(person.name, ''), (select mark || ': ' || why from reading_mark where reading_id = reading.id"
         " order by id desc limit 1) from reading join meter on meter.id = reading.meter_id"
+        " left join person on person.id = reading.person_id"
         ' where reading."on" <= :on and (meter.item_id = :id or exists (select 1 from meter_fit fit'
         " where fit.meter_id = meter.id and fit.item_id = :id"
         ' and (fit.from_on is null or fit.from_on <= reading."on") and (fit.to_on is null or fit.to_on >= reading."on")))'
@@ -223,8 +224,14 @@ def _readings(connection: "Connection", item: FoundItem, on: date) -> list[Readi
         on=on.isoformat(),
     )
     lines = []
-    for number, day, value, unit, rolled, note, entry, mark in rows:
-        remarks = [mark or "", "rolled over" if rolled else "", note, f"entry {entry}" if entry else ""]
+    for number, day, value, unit, rolled, note, entry, by, mark in rows:
+        remarks = [
+            mark or "",
+            "rolled over" if rolled else "",
+            note,
+            f"entry {entry}" if entry else "",
+            f"by {by}" if by else "",
+        ]
         remark = ", ".join(text.rstrip(": ") for text in remarks if text)
         lines.append(ReadingLine(number, date.fromisoformat(str(day)), f"{plain(Decimal(value))} {unit}", remark))
     return lines

@@ -49,7 +49,7 @@ def test_a_reading_typed_late_takes_its_place_in_time(pump: Runner) -> None:
 def test_a_reading_is_kept_as_it_was_typed(open_yard: Opener) -> None:
     lorry = open_yard(LORRY)
     lorry("reading", "LR-2", "20000km", "--by", "Quill", "--note", "gauge lamp out")
-    assert "20000 km  gauge lamp out" in lorry("show", "LR-2").out
+    assert "20000 km  gauge lamp out, by Quill" in lorry("show", "LR-2").out
 
 
 def test_with_two_meters_a_bare_figure_is_refused_and_the_unit_or_the_meter_tells(open_yard: Opener) -> None:
