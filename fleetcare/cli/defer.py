@@ -2,9 +2,8 @@
 
 import argparse
 
-from fleetcare.cli import output
 from fleetcare.cli.parser import Commands
-from fleetcare.cli.shop import context_of, label_with, options_of, say_moved
+from fleetcare.cli.shop import context_of, label_with, options_of, say_entered
 
 
 def add_commands(commands: Commands) -> None:
@@ -23,13 +22,10 @@ def add_commands(commands: Commands) -> None:
 def _defer(given: argparse.Namespace) -> None:
     from fleetcare.drafts.reading_in import read_draft
     from fleetcare.drafts.work import DeferralDraft
-    from fleetcare.operations.deferrals import defer
-    from fleetcare.operations.due import watch_moves
+    from fleetcare.operations.entering import enter_deferral
 
     context = context_of(given)
     draft = read_draft(DeferralDraft, options_of(given) | {"on": context.today()}, label_with(task="TASK"))
-    with context.write() as session, watch_moves(session, draft.tag, context.today()) as moves:
-        deferred = defer(session, draft)
-    until = " or ".join(deferred.until)
-    output.say(f"{deferred.task} of {deferred.item.tag} deferred until {until} by {draft.by}: {draft.why}")
-    say_moved(moves.moved)
+    with context.write() as session:
+        entered = enter_deferral(session, draft, context.today())
+    say_entered(entered)

@@ -6,10 +6,10 @@ from typing import TYPE_CHECKING
 from fleetcare.cli import output
 from fleetcare.cli.measure import add_sheet_options, read_sheet_option, say_sheet
 from fleetcare.cli.parser import CommandParser, Commands, day, whole
-from fleetcare.cli.shop import changes_of, context_of, label_with, option_label, options_of, say_moved
+from fleetcare.cli.shop import changes_of, context_of, label_with, option_label, options_of
 
 if TYPE_CHECKING:
-    from fleetcare.operations.log import Logged
+    from fleetcare.operations.entering import Entered
 
 
 def add_commands(commands: Commands) -> None:
@@ -54,23 +54,20 @@ def _add_shared_options(parser: CommandParser) -> None:
 def _log(given: argparse.Namespace) -> None:
     from fleetcare.drafts.reading_in import read_draft
     from fleetcare.drafts.work import LogDraft
-    from fleetcare.operations.due import watch_moves
-    from fleetcare.operations.log import record_work
+    from fleetcare.operations.entering import enter_work
 
     context = context_of(given)
     values = options_of(given) | {"on": given.on or context.today(), "sheet": read_sheet_option(given.sheet)}
     draft = read_draft(LogDraft, values, label_with(task="TASK"))
-    with context.write() as session, watch_moves(session, draft.tag, context.today()) as moves:
-        logged = record_work(session, draft, context.today())
-    _say_logged(logged, f"on {draft.on}")
-    say_moved(moves.moved)
+    with context.write() as session:
+        entered = enter_work(session, draft, context.today())
+    _say(entered)
 
 
 def _correct(given: argparse.Namespace) -> None:
     from fleetcare.drafts.reading_in import read_draft
     from fleetcare.drafts.work import CorrectionDraft
-    from fleetcare.operations.correct import correct_entry, item_of_entry
-    from fleetcare.operations.due import watch_items
+    from fleetcare.operations.entering import enter_correction
 
     context = context_of(given)
     sheet = read_sheet_option(given.sheet)
@@ -78,26 +75,15 @@ def _correct(given: argparse.Namespace) -> None:
         CorrectionDraft, changes_of(given) | {"part_done": given.part_done, "sheet": sheet}, option_label
     )
     with context.write() as session:
-        item = item_of_entry(session, draft.entry)
-        with watch_items(session, [item.id], context.today()) as moves:
-            logged = correct_entry(session, draft, context.today())
-    _say_logged(logged, f"{'voids' if draft.void else 'corrects'} entry {draft.entry}")
-    say_moved(moves.moved)
+        entered = enter_correction(session, draft, context.today())
+    _say(entered)
 
 
-def _say_logged(logged: "Logged", what: str) -> None:
-    """Say what an entry closed and covered, and what it did not."""
-    for note in logged.notes:
-        output.say(f"Note: {note}.")
-    for number, kind in logged.entries:
-        output.say(f"Entry {number} ({kind}) of {logged.item.tag} {what}.")
-    if logged.closed:
-        output.say(f"Done: {', '.join(logged.closed)}.")
-    for small, big in logged.covered:
-        output.say(f"Done along with {big}: {small}.")
-    for name in logged.part_done:
-        output.say(f"Done in part, still open: {name}.")
-    for raised in logged.raised:
-        output.say(f"Follow-up raised: {raised}.")
-    if logged.sheet is not None:
-        say_sheet(logged.sheet)
+def _say(entered: "Entered") -> None:
+    """Print what an entry stored, its sheet, and the lines it moved."""
+    for line in entered.said:
+        output.say(line)
+    if entered.logged is not None and entered.logged.sheet is not None:
+        say_sheet(entered.logged.sheet)
+    for line in entered.moved:
+        output.say(line)

@@ -4,7 +4,7 @@ import argparse
 
 from fleetcare.cli import output
 from fleetcare.cli.parser import Commands, day, whole
-from fleetcare.cli.shop import context_of, option_label, options_of, say_moved
+from fleetcare.cli.shop import context_of, option_label, options_of, say_entered, say_moved
 from fleetcare.errors import Misread
 
 
@@ -46,29 +46,22 @@ def _reading(given: argparse.Namespace) -> None:
 def _record(given: argparse.Namespace) -> None:
     from fleetcare.drafts.reading_in import read_draft
     from fleetcare.drafts.work import ReadingDraft
-    from fleetcare.operations.due import watch_moves
-    from fleetcare.operations.log import refuse_future
-    from fleetcare.operations.readings import record_reading
+    from fleetcare.operations.entering import enter_reading
 
     if given.why is not None:
         raise Misread("--why belongs to --void", "use --note for a remark")
     context = context_of(given)
     values = options_of(given, "void", "restore", "why") | {"on": given.on or context.today()}
     draft = read_draft(ReadingDraft, values, option_label)
-    refuse_future(draft.on, context.today())
-    with context.write() as session, watch_moves(session, draft.tag, context.today()) as moves:
-        recorded = record_reading(session, draft)
-    if recorded.is_new:
-        output.say(f"Reading {recorded.id}: {recorded.shown} on {draft.on}.")
-    else:
-        output.say(f"Nothing new: reading {recorded.id} says the same.")
-    _say_suspects(recorded.suspects)
-    say_moved(moves.moved)
+    with context.write() as session:
+        entered = enter_reading(session, draft, context.today())
+    say_entered(entered)
 
 
 def _amend(given: argparse.Namespace) -> None:
     from fleetcare.operations.due import watch_items
     from fleetcare.operations.readings import item_of_reading, restore_reading, void_reading
+    from fleetcare.operations.stored_words import suspect_words
 
     others = (given.tag, given.value, given.meter, given.on, given.by, given.note, given.replaced, given.unmetered)
     if any(other is not None for other in others) or given.rolled_over or (given.sure and given.void is not None):
@@ -89,10 +82,6 @@ def _amend(given: argparse.Namespace) -> None:
                 why = (given.why or "").strip()
                 suspects = restore_reading(session, reading_id, context.today(), why=why, sure=given.sure).suspects
     output.say(f"Reading {reading_id} of {item.tag} {'is void' if given.void is not None else 'counts again'}.")
-    _say_suspects(suspects)
+    for line in suspect_words(suspects):
+        output.say(line)
     say_moved(moves.moved)
-
-
-def _say_suspects(suspects: tuple[int, ...]) -> None:
-    for suspect in suspects:
-        output.say(f"Reading {suspect} is suspect now and counts for nothing; --restore {suspect} brings it back.")

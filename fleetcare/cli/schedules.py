@@ -6,7 +6,7 @@ from typing import TYPE_CHECKING
 
 from fleetcare.cli import output
 from fleetcare.cli.parser import Commands
-from fleetcare.cli.shop import context_of, option_label, say_line
+from fleetcare.cli.shop import context_of, option_label
 from fleetcare.errors import Misread
 
 if TYPE_CHECKING:
@@ -154,6 +154,8 @@ def _apply(given: argparse.Namespace) -> None:
 
 
 def _say_applied(one: "Applied", schedule_id: str) -> None:
+    from fleetcare.operations.stored_words import say_line
+
     tag = one.item.tag
     output.say(f"{tag}: {len(one.added)} tasks of {schedule_id} added.")
     rows = {row.task: row for row in one.rows}

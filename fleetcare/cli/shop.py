@@ -1,20 +1,18 @@
 """What every command on the shop's database shares: its context, its options as a draft, lines that moved."""
 
 import argparse
-from collections.abc import Callable, Mapping, Sequence
+from collections.abc import Callable, Iterable, Mapping
 from datetime import date
 from typing import TYPE_CHECKING, Any
 
 from fleetcare.cli import output
 from fleetcare.context import Context
-from fleetcare.domain.lines import State
-from fleetcare.domain.quantities import plain
 from fleetcare.domain.quantities import tenth as tenth
 from fleetcare.errors import Misread
 
 if TYPE_CHECKING:
     from fleetcare.operations.due import Moved
-    from fleetcare.rules.due.row import DueRow
+    from fleetcare.operations.entering import Entered
 
 # What parsing leaves beside the options themselves.
 _NOT_OPTIONS = frozenset({"db", "as_of", "run", "json"})
@@ -54,36 +52,18 @@ def label_with(**positional: str) -> Callable[[str], str]:
     return lambda field: positional.get(field) or option_label(field)
 
 
-def say_moved(moves: "Sequence[Moved]") -> None:
-    """Print each line whose due point moved, old and new; the own one where only that moved under a deferral."""
-    for move in moves:
-        row = move.after or move.before
-        assert row is not None
-        before, after = say_point(move.before), say_point(move.after)
-        if before == after and move.before is not None and move.after is not None:
-            before, after = f"own point {_say_own(move.before)}", f"{_say_own(move.after)}, deferred all the same"
-        output.say(f"{row.engine}  {row.task}: {before} → {after}")
+def say_moved(moves: "Iterable[Moved]") -> None:
+    """Print each line whose due point moved, old and new."""
+    from fleetcare.operations.stored_words import moved_words
+
+    for line in moved_words(moves):
+        output.say(line)
 
 
-def _say_own(row: "DueRow") -> str:
-    counted = f"{plain(tenth(row.own_due_at))} {row.meter_unit}" if row.own_due_at is not None else ""
-    return " or ".join(part for part in (counted, row.own_due_on.isoformat() if row.own_due_on else "") if part)
-
-
-def say_point(row: "DueRow | None") -> str:
-    """Say a line's due point: on the dial first, then its day."""
-    from fleetcare.operations.due_words import say_counted
-
-    if row is None:
-        return "no line"
-    parts = [say_counted(row), row.next_due_on.isoformat() if row.next_due_on else ""]
-    return " or ".join(part for part in parts if part) or f"{row.state}, {row.reason}"
-
-
-def say_line(row: "DueRow") -> str:
-    """Say how a line stands: its state, then its point or what to enter."""
-    point = say_point(row)
-    return point if row.state == State.UNSET else f"{row.state}, {point}"
+def say_entered(entered: "Entered") -> None:
+    """Print what was stored, the lines it moved, and what it is good to know now."""
+    for line in entered.sentences():
+        output.say(line)
 
 
 def today_of(given: argparse.Namespace) -> date:

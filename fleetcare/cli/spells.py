@@ -4,7 +4,7 @@ import argparse
 
 from fleetcare.cli import output
 from fleetcare.cli.parser import Commands, day
-from fleetcare.cli.shop import context_of, label_with, option_label, options_of, say_moved
+from fleetcare.cli.shop import context_of, label_with, option_label, options_of, say_entered, say_moved
 from fleetcare.domain.engines import Status
 from fleetcare.domain.quantities import plain
 
@@ -45,63 +45,32 @@ def add_spell_commands(engine: Commands) -> None:
 def _fit(given: argparse.Namespace) -> None:
     from fleetcare.drafts.items import FitDraft
     from fleetcare.drafts.reading_in import read_draft
-    from fleetcare.operations.due import watch_moves
-    from fleetcare.operations.find import find_engine, find_machine
-    from fleetcare.operations.items import fit_engine
-    from fleetcare.operations.log import refuse_future
+    from fleetcare.operations.entering import enter_move
 
     context = context_of(given)
     values = options_of(given) | {"on": given.on or context.today()}
     draft = read_draft(FitDraft, values, option_label)
-    refuse_future(draft.on, context.today())
     with context.write() as session:
-        engine = find_engine(session.connection(), draft.tag)
-        where = "taken out of its machine"
-        if draft.machine is not None:
-            where = f"fitted in {find_machine(session.connection(), draft.machine).tag}"
-        with watch_moves(session, engine.tag, context.today()) as moves:
-            fit_engine(session, engine, draft.machine, draft.on, draft.position or "")
-    output.say(f"{engine.tag} {where} on {draft.on}.")
-    say_moved(moves.moved)
+        entered = enter_move(session, draft, context.today())
+    say_entered(entered)
 
 
 def _status(given: argparse.Namespace) -> None:
     from fleetcare.drafts.items import ReturnDraft, StatusDraft
     from fleetcare.drafts.reading_in import read_draft
-    from fleetcare.operations.due import Filters, due_rows, watch_moves
-    from fleetcare.operations.find import find_engine
-    from fleetcare.operations.listing import pausing_tasks
-    from fleetcare.operations.log import refuse_future
-    from fleetcare.operations.spells import change_status
+    from fleetcare.operations.entering import enter_status
 
     context = context_of(given)
     status = given.status
     values = options_of(given, "status") | {"on": given.on or context.today()}
     draft = read_draft(ReturnDraft if status is Status.IN_SERVICE else StatusDraft, values, option_label)
-    refuse_future(draft.on, context.today())
     with context.write() as session:
-        connection = session.connection()
-        engine = find_engine(connection, draft.tag)
-        waiting = due_rows(connection, context.today(), Filters(engine=engine.tag))
-        pausing = pausing_tasks(connection, engine.tag, context.today())
-        with watch_moves(session, engine.tag, context.today()) as moves:
-            change_status(session, engine, status, draft.on, why=draft.why, by=draft.by)
-    output.say(f"{engine.tag} is {status} from {draft.on}.")
-    say_moved(moves.moved)
-    if status is Status.LAID_UP:
-        for name in pausing:
-            say_pausing(name)
+        entered = enter_status(session, draft, status, context.today())
+    say_entered(entered)
     if status is Status.IN_SERVICE:
         from fleetcare.cli.due import say_before_return
 
-        say_before_return(engine.tag, waiting)
-
-
-def say_pausing(name: str) -> None:
-    """Warn of a task that stands still while laid up though what it cares for does not."""
-    output.say(
-        f"Note: the calendar of {name} pauses while laid up; oil, coolant, belts and batteries age all the same."
-    )
+        say_before_return(draft.tag, entered.waiting)
 
 
 def _factor(given: argparse.Namespace) -> None:

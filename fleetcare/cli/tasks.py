@@ -4,8 +4,7 @@ import argparse
 
 from fleetcare.cli import output
 from fleetcare.cli.parser import CommandParser, Commands, day
-from fleetcare.cli.shop import add_options, context_of, label_with, options_of, say_line, say_moved
-from fleetcare.cli.spells import say_pausing
+from fleetcare.cli.shop import add_options, context_of, label_with, options_of, say_moved
 
 _REPEATED = {
     "--every": ("INTERVAL", "such as 250h, 10000km or 12mo; once for each kind"),
@@ -83,6 +82,7 @@ def _add(given: argparse.Namespace) -> None:
     from fleetcare.operations.due import watch_moves
     from fleetcare.operations.find import find_item
     from fleetcare.operations.listing import pausing_tasks
+    from fleetcare.operations.stored_words import pausing_words, say_line
     from fleetcare.operations.tasks import add_task
 
     context = context_of(given)
@@ -94,7 +94,7 @@ def _add(given: argparse.Namespace) -> None:
         pausing = pausing_tasks(session.connection(), item.tag, context.today())
     output.say(f"{draft.name} added to {item.tag}.")
     if draft.name in pausing:
-        say_pausing(draft.name)
+        output.say(pausing_words(draft.name))
     new = [move.after for move in moves.moved if move.before is None and move.after is not None]
     for row in new:
         output.say(f"{item.tag}  {row.task}: {say_line(row)}")
@@ -106,6 +106,7 @@ def _edit(given: argparse.Namespace) -> None:
     from fleetcare.operations.due import watch_moves
     from fleetcare.operations.find import find_item
     from fleetcare.operations.listing import pausing_tasks
+    from fleetcare.operations.stored_words import pausing_words
     from fleetcare.operations.tasks import edit_task
 
     context = context_of(given)
@@ -123,7 +124,7 @@ def _edit(given: argparse.Namespace) -> None:
         pausing = pausing_tasks(session.connection(), item.tag, context.today())
     output.say(f"{name} of {item.tag} changed{'' if changes.keys() == {'last_done'} else f' from {on}'}.")
     if changes.get("pause_while_laid_up") and name in pausing:
-        say_pausing(name)
+        output.say(pausing_words(name))
     say_moved(moves.moved)
 
 

@@ -1,0 +1,104 @@
+"""Everything that is written down about an item, each with what it stored and which lines it moved, in sentences."""
+
+from collections.abc import Sequence
+from dataclasses import dataclass, field
+from datetime import date
+from typing import TYPE_CHECKING
+
+from fleetcare.domain.engines import Status
+from fleetcare.operations.correct import correct_entry, item_of_entry
+from fleetcare.operations.deferrals import defer
+from fleetcare.operations.due import DueRow, Filters, due_rows, watch_items, watch_moves
+from fleetcare.operations.find import find_engine, find_machine
+from fleetcare.operations.items import fit_engine
+from fleetcare.operations.listing import pausing_tasks
+from fleetcare.operations.log import Logged, record_work, refuse_future
+from fleetcare.operations.readings import record_reading
+from fleetcare.operations.spells import change_status
+from fleetcare.operations.stored_words import logged_words, moved_words, pausing_words, recorded_words
+
+if TYPE_CHECKING:
+    from sqlalchemy.orm import Session
+
+    from fleetcare.drafts.items import FitDraft, StatusDraft
+    from fleetcare.drafts.work import CorrectionDraft, DeferralDraft, LogDraft, ReadingDraft
+
+
+@dataclass(slots=True)
+class Entered:
+    """What was stored, said; then the lines that moved, said; then what it is good to know now.
+
+    `logged` is what an entry stored, `waiting` the lines of a returned engine as they stood before its return.
+    """
+
+    said: list[str] = field(default_factory=list)
+    moved: list[str] = field(default_factory=list)
+    notes: list[str] = field(default_factory=list)
+    logged: Logged | None = None
+    waiting: Sequence[DueRow] = ()
+
+    def sentences(self) -> list[str]:
+        """Give all that is said, in order."""
+        return [*self.said, *self.moved, *self.notes]
+
+
+def enter_work(session: "Session", draft: "LogDraft", today: date) -> Entered:
+    """Store what was done on a day."""
+    with watch_moves(session, draft.tag, today) as moves:
+        logged = record_work(session, draft, today)
+    return Entered([*logged_words(logged, f"on {draft.on}")], [*moved_words(moves.moved)], logged=logged)
+
+
+def enter_correction(session: "Session", draft: "CorrectionDraft", today: date) -> Entered:
+    """Store what an entry should have said, or that nothing of it is true."""
+    item = item_of_entry(session, draft.entry)
+    with watch_items(session, [item.id], today) as moves:
+        logged = correct_entry(session, draft, today)
+    what = f"{'voids' if draft.void else 'corrects'} entry {draft.entry}"
+    return Entered([*logged_words(logged, what)], [*moved_words(moves.moved)], logged=logged)
+
+
+def enter_reading(session: "Session", draft: "ReadingDraft", today: date) -> Entered:
+    """Store what a meter shows."""
+    refuse_future(draft.on, today)
+    with watch_moves(session, draft.tag, today) as moves:
+        recorded = record_reading(session, draft)
+    return Entered([*recorded_words(recorded, draft.on)], [*moved_words(moves.moved)])
+
+
+def enter_deferral(session: "Session", draft: "DeferralDraft", today: date) -> Entered:
+    """Store a deferral of the due point a task has now."""
+    with watch_moves(session, draft.tag, today) as moves:
+        deferred = defer(session, draft)
+    until = " or ".join(deferred.until)
+    said = f"{deferred.task} of {deferred.item.tag} deferred until {until} by {draft.by}: {draft.why}"
+    return Entered([said], [*moved_words(moves.moved)])
+
+
+def enter_status(session: "Session", draft: "StatusDraft", status: Status, today: date) -> Entered:
+    """Begin a spell of a status."""
+    refuse_future(draft.on, today)
+    connection = session.connection()
+    engine = find_engine(connection, draft.tag)
+    waiting = due_rows(connection, today, Filters(engine=engine.tag))
+    pausing = pausing_tasks(connection, engine.tag, today)
+    with watch_moves(session, engine.tag, today) as moves:
+        change_status(session, engine, status, draft.on, why=draft.why, by=draft.by)
+    return Entered(
+        [f"{engine.tag} is {status} from {draft.on}."],
+        [*moved_words(moves.moved)],
+        [pausing_words(name) for name in pausing] if status is Status.LAID_UP else [],
+        waiting=waiting,
+    )
+
+
+def enter_move(session: "Session", draft: "FitDraft", today: date) -> Entered:
+    """Fit an engine in a machine, or take it out of the one it is in."""
+    refuse_future(draft.on, today)
+    engine = find_engine(session.connection(), draft.tag)
+    where = "taken out of its machine"
+    if draft.machine is not None:
+        where = f"fitted in {find_machine(session.connection(), draft.machine).tag}"
+    with watch_moves(session, engine.tag, today) as moves:
+        fit_engine(session, engine, draft.machine, draft.on, draft.position or "")
+    return Entered([f"{engine.tag} {where} on {draft.on}."], [*moved_words(moves.moved)])
