@@ -13,9 +13,9 @@ from fleetcare.domain.quantities import Figure, Kind, plain
 from fleetcare.drafts.reading_in import Draft, read_draft
 from fleetcare.errors import FleetError, Refusals, Refused
 from fleetcare.exchange.csv_in import CsvRow, RowRefused
+from fleetcare.operations.against_past import NewReading, dial_of, hold_against_past, refuse_unlike_dial, say_collision
 from fleetcare.operations.due import Moved
 from fleetcare.operations.find import FoundItem, FoundMeter, find_item, find_meters, pick_meter
-from fleetcare.operations.readings import NewReading, dial_of, hold_against_past, refuse_unlike_dial, say_collision
 from fleetcare.operations.rows import fetch
 from fleetcare.rules.meters import CounterHistory
 
@@ -168,7 +168,7 @@ def hold_together(session: "Session", figures: Sequence[PlacedFigure], column: s
         together = list(same.values())
         item, meter = together[0][0].item, together[0][0].meter
         new = [NewReading(ones[0].on, ones[0].figure) for ones in together]
-        trial, collisions = hold_against_past(session, item, meter, new)
+        trial, collisions = hold_against_past(session.connection(), item, meter, new)
         wrong = {place: error for place, one in enumerate(new) if (error := _unlike_dial(item, meter, one, trial))}
         for collision in collisions:
             neighbour = -1 - collision.neighbour.reading.id
