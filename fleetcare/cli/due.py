@@ -8,17 +8,13 @@ from fleetcare.cli import output
 from fleetcare.cli.measure import sheet_table
 from fleetcare.cli.parser import Commands, whole
 from fleetcare.cli.shop import context_of, null
+from fleetcare.domain.cautions import GENERAL
 from fleetcare.domain.lines import State
 
 if TYPE_CHECKING:
     from fleetcare.operations.sheets_judge import JudgedSheet
     from fleetcare.operations.show import ItemPage
     from fleetcare.rules.due.row import DueRow
-
-_CAUTION = (
-    "Limits and intervals are to be checked against the engine maker's manual, local codes and law;"
-    " work on engines is for competent, where required licensed, people."
-)
 
 
 def add_commands(commands: Commands) -> None:
@@ -87,7 +83,7 @@ def _table(rows: "Sequence[DueRow]") -> str:
         for group, found in grouped(rows).items()
         if found
     ]
-    return "\n\n".join(blocks or ["No lines."]) + f"\n\n{_CAUTION}\n"
+    return "\n\n".join(blocks or ["No lines."]) + f"\n\n{GENERAL}\n"
 
 
 _HEADERS = ("engine", "site", "task", "due at", "due on", "remaining", "likely", "note")
@@ -141,7 +137,7 @@ def _show(given: argparse.Namespace) -> None:
     for title, text in blocks:
         if text:
             output.say(f"{title}\n{text}\n" if title else f"{text}\n")
-    output.say(_CAUTION)
+    output.say(GENERAL)
 
 
 def _page_blocks(page: "ItemPage") -> list[tuple[str, str]]:
