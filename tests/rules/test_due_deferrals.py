@@ -196,6 +196,7 @@ def test_of_two_deferrals_of_one_point_the_newest_holds_and_a_later_one_is_not_k
     task = oil(a_deferral(hours=1100), a_deferral(hours=1050, on="2026-04-20", number=2))
     assert trigger(task, on="2026-05-01", hours=900).point == 1050
     assert trigger(task, on="2026-04-19", hours=900).point == 1100
+    assert trigger(task, on="2026-04-20", hours=900).point == 1050
     assert trigger(task, on="2026-03-31", hours=900).point == 1000
 
 

@@ -59,10 +59,13 @@ def test_work_logged_on_the_day_of_a_stated_last_done_is_the_later_word() -> Non
     assert (due.triggers[0].point, due.last_done_number) == (Decimal(1254), 1)
 
 
-@pytest.mark.parametrize(("entry_at", "next_at"), [(999, 1250), (1000, 1250), (1001, 1251)])
-def test_a_last_done_known_by_figure_alone_takes_its_place_by_that_figure(entry_at: int, next_at: int) -> None:
+@pytest.mark.parametrize(("entry_at", "next_at", "counts_from"), [(999, 1250, None), (1000, 1250, 1), (1001, 1251, 1)])
+def test_a_last_done_known_by_figure_alone_takes_its_place_by_that_figure(
+    entry_at: int, next_at: int, counts_from: int | None
+) -> None:
     task = a_task(every("250h"), origin=last_done(hours=1000))
-    assert trigger(task, on="2026-05-01", done=[done("2026-02-01", hours=entry_at)], hours=1100).point == next_at
+    due = line(task, on="2026-05-01", done=[done("2026-02-01", hours=entry_at)], hours=1100)
+    assert (due.triggers[0].point, due.last_done_number) == (Decimal(next_at), counts_from)
 
 
 def test_an_entry_without_the_figure_a_last_done_is_known_by_comes_after_it() -> None:
