@@ -78,6 +78,17 @@ def test_an_engine_without_a_meter_is_one_all_the_same(empty: Runner) -> None:
     assert "unset, no meter counts hours; add one" in empty("show", "P-01", "Oil").out
 
 
+def test_what_counts_as_new_needs_a_start_figure_of_each_of_its_meters(empty: Runner) -> None:
+    words = ("--meter", "hours", "--meter", "starts", "--in-service", "2026-01-10", "--as-new")
+    ran = empty("engine", "add", "P-01", *words, "--start-at", "0h")
+    assert ran.err == "P-01 counts as new but has no start figure of starts; give --start-at for each\n"
+
+
+def test_a_kind_has_one_start_figure(empty: Runner) -> None:
+    words = ("--meter", "hours", "--in-service", "2026-01-10", "--start-at", "0h", "--start-at", "5")
+    assert empty("engine", "add", "P-01", *words).err == "--start-at names hours twice; give one figure of each kind\n"
+
+
 def test_tasks_of_an_engine_that_counts_as_new_count_from_its_first_day_and_figure(empty: Runner) -> None:
     empty("engine", "add", "P-01", "--meter", "hours", "--in-service", "2026-01-10", "--start-at", "20", "--as-new")
     added = empty("task", "add", "P-01", "Oil", "--every", "250h", "--first", "50h", "--every", "12mo")
