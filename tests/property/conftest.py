@@ -6,6 +6,6 @@ from hypothesis import HealthCheck, settings
 
 # Other work on the machine may slow a case down; that is no fault of the law.
 settings.register_profile("unhurried", deadline=None, suppress_health_check=[HealthCheck.too_slow])
-settings.register_profile("short", settings.get_profile("unhurried"), max_examples=25, derandomize=True)
+settings.register_profile("short", settings.get_profile("unhurried"), max_examples=20, derandomize=True)
 settings.register_profile("long", settings.get_profile("unhurried"), max_examples=500)
 settings.load_profile(os.environ.get("LAWS", "short"))
