@@ -70,12 +70,13 @@ def _lash(given: argparse.Namespace) -> None:
     values = options_of(given, "file", "dry_run")
     values |= {"on": given.on or context.today(), "sheet": read_sheet_option(given.file)}
     draft = read_draft(LogDraft, values, option_label)
-    with context.write() as session, watch_moves(session, draft.tag, context.today()) as moves:
-        measured = measure(session, draft, context.today())
+    with context.write() as session:
+        with watch_moves(session, draft.tag, context.today()) as moves:
+            measured = measure(session, draft, context.today())
         if given.dry_run:
             session.rollback()
     if given.json:
-        output.deliver(output.json_text(_object(measured, values, is_stored=not given.dry_run)))
+        output.deliver(output.json_text(_object(measured, is_stored=not given.dry_run)))
         return
     say_sheet(measured.sheet)
     for note in measured.notes:
@@ -126,11 +127,11 @@ def _say_counts(judged: "JudgedSheet") -> str:
 def _say_stored(measured: "Measured", *, is_dry: bool) -> str:
     entry, tag = measured.sheet.sheet.entry, measured.sheet.form.tag
     if not measured.is_new:
-        return f"Nothing new: entry {entry} of {tag} has this sheet already."
+        return f"Nothing new: entry {entry} of {tag} has this sheet already; what is wrong in it is put right with correct."
     return "This was a dry run, nothing is stored." if is_dry else f"Kept as entry {entry} of {tag}."
 
 
-def _object(measured: "Measured", values: dict[str, Any], *, is_stored: bool) -> dict[str, Any]:
+def _object(measured: "Measured", *, is_stored: bool) -> dict[str, Any]:
     """Give the whole answer as one JSON object."""
     judged = measured.sheet
     sheet, stand, is_kept = judged.sheet, judged.stand, is_stored or not measured.is_new
@@ -141,11 +142,10 @@ def _object(measured: "Measured", values: dict[str, Any], *, is_stored: bool) ->
             "entry": sheet.entry if is_kept else None,
             "is_new": measured.is_new,
             "taken_on": sheet.on,
-            "at": values["at"] or [],
-            "by": values["by"],
+            "by": null(sheet.by),
             "condition": null(sheet.condition),
             "gauge": null(sheet.gauge),
-            "note": values["note"],
+            "note": null(sheet.note),
             "limits": judged.limits,
             "is_complete": stand.is_complete,
             "missing": stand.missing,

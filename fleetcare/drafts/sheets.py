@@ -7,7 +7,7 @@ from typing import Annotated, Any, Literal, Self
 from pydantic import BeforeValidator, InstanceOf, model_validator
 
 from fleetcare.domain.sheets import LASH, SHIM, Phase
-from fleetcare.drafts.fields import Note, Text
+from fleetcare.drafts.fields import Text
 from fleetcare.drafts.reading_in import Draft
 from fleetcare.errors import FleetError, Misread, Refused
 
@@ -32,7 +32,7 @@ class SheetOptions(Draft):
     """What an entry may bring along: a sheet, the gauge and condition it was taken with, and that it is right as it is."""
 
     sheet: InstanceOf[SheetIn] | None = None
-    gauge: Note | None = None
+    gauge: Text | None = None
     when: Literal["cold", "hot"] | None = None
     sure: bool = False
 

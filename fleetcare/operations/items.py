@@ -1,6 +1,7 @@
 """Add, edit, fit and follow engines and machines."""
 
 from datetime import date
+from decimal import Decimal
 from typing import TYPE_CHECKING, Any
 
 from sqlalchemy import select
@@ -190,12 +191,23 @@ def _add_lash_spec(session: "Session", item_id: int, draft: EngineDraft, from_on
     kept = {name: value for name, value in kept.items() if value is not None}
     if old is not None and kept and draft.lash_unit not in {None, old.unit}:
         raise Refused(f"the other lash figures are in {old.unit}", "give these in the same unit, or all of them anew")
+    figures = given | kept
+    for side in ("intake", "exhaust"):
+        _refuse_setting_out_of_range(side, figures[f"{side}_low"], figures[f"{side}_high"], figures[f"set_{side}"])
     session.add(
         LashSpec(
             item_id=item_id,
             from_on=from_on if old is not None else date.min,
             unit=draft.lash_unit or (old.unit if old is not None else "mm"),
             condition=draft.lash_when or (old.condition if old is not None else "any"),
-            **(given | kept),
+            **figures,
         )
     )
+
+
+def _refuse_setting_out_of_range(side: str, low: Decimal | None, high: Decimal | None, setting: Decimal | None) -> None:
+    """Refuse to set a valve to where its check would find it out."""
+    if low is not None and high is not None and setting is not None and not low <= setting <= high:
+        raise Refused(
+            f"--lash-set-{side} {setting} lies outside the check range {low} to {high}", "mend it, or the range"
+        )

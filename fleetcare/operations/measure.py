@@ -1,6 +1,6 @@
 """Measurements taken without any work: stored with an entry of their own, once however often they come."""
 
-from dataclasses import dataclass, replace
+from dataclasses import dataclass
 from datetime import date
 from typing import TYPE_CHECKING
 
@@ -8,7 +8,7 @@ from fleetcare.drafts.work import LogDraft
 from fleetcare.operations.find import find_item
 from fleetcare.operations.log import record_work, refuse_future
 from fleetcare.operations.sheets import known_entry, take_sheet
-from fleetcare.operations.sheets_judge import JudgedSheet
+from fleetcare.operations.sheets_judge import JudgedSheet, sheet_of_entry
 
 if TYPE_CHECKING:
     from sqlalchemy.orm import Session
@@ -34,7 +34,7 @@ def measure(session: "Session", draft: LogDraft, today: date) -> Measured:
     assert sheet is not None
     known = known_entry(session, item, sheet.sheet)
     if known is not None:
-        return Measured(replace(sheet, sheet=replace(sheet.sheet, entry=known)), is_new=False)
+        return Measured(sheet_of_entry(session.connection(), item, known), is_new=False)
     logged = record_work(session, draft, today)
-    assert logged.sheet is not None
-    return Measured(logged.sheet, is_new=True, notes=tuple(logged.notes))
+    entry, _ = logged.entries[0]
+    return Measured(sheet_of_entry(session.connection(), item, entry), is_new=True, notes=tuple(logged.notes))

@@ -133,7 +133,7 @@ def _key(item_id: int, sheet: Sheet) -> str:
     """Give what is the same for the same values of the same engine and day, in whatever unit and order."""
     lines = sorted(_line(value) for value in sheet.values)
     digest = hashlib.sha256("\n".join(lines).encode()).hexdigest()
-    return f"{sheet.kind} {item_id} {sheet.on.isoformat()} {sheet.condition} {digest}"
+    return f"{sheet.kind} {item_id} {sheet.on.isoformat()} {digest}"
 
 
 def _line(value: SheetValue) -> str:

@@ -3,13 +3,14 @@
 import shlex
 from collections.abc import Mapping
 from dataclasses import dataclass
+from datetime import date
 from decimal import Decimal
 from typing import TYPE_CHECKING
 
 from fleetcare.domain.sheets import LASH, SHIM, Judgement, LashStand, Phase, Sheet, SheetValue
 from fleetcare.operations.find import FoundItem
 from fleetcare.operations.sheets_load import LashForm, lash_form, load_sheets
-from fleetcare.operations.sheets_values import Doubted, doubt_of, read_value
+from fleetcare.operations.sheets_values import DoubtedGap, doubt_of, read_value
 from fleetcare.rules.explain_lash import JudgedRow as JudgedRow
 from fleetcare.rules.explain_lash import judged_row, say_spec
 from fleetcare.rules.judge_lash import ANY, judge_sheet, judge_value, stand_of
@@ -17,8 +18,6 @@ from fleetcare.rules.lash_mending import mend
 from fleetcare.rules.lash_points import side_of
 
 if TYPE_CHECKING:
-    from datetime import date
-
     from sqlalchemy import Connection
 
 
@@ -83,13 +82,20 @@ def judge(form: LashForm, sheet: Sheet) -> JudgedSheet:
     return JudgedSheet(form, sheet, rows, stand_of(judged, form.points))
 
 
-def last_sheet(connection: "Connection", item: FoundItem, on: "date") -> JudgedSheet | None:
+def last_sheet(connection: "Connection", item: FoundItem, on: date) -> JudgedSheet | None:
     """Load an engine's newest lash sheet up to a day and judge it, None where it has none."""
     sheets = load_sheets(connection, item.id, on)
-    if not sheets:
-        return None
-    newest = sheets[-1]
-    return judge(lash_form(connection, item, newest.on, but_from=newest.entry), newest)
+    return _judge_stored(connection, item, sheets[-1]) if sheets else None
+
+
+def sheet_of_entry(connection: "Connection", item: FoundItem, entry: int) -> JudgedSheet:
+    """Load the lash sheet an entry stands with, and judge it."""
+    sheets = load_sheets(connection, item.id, date.max)
+    return _judge_stored(connection, item, next(sheet for sheet in sheets if sheet.entry == entry))
+
+
+def _judge_stored(connection: "Connection", item: FoundItem, sheet: Sheet) -> JudgedSheet:
+    return judge(lash_form(connection, item, sheet.on, but_from=sheet.entry), sheet)
 
 
 @dataclass(frozen=True, slots=True)
@@ -98,7 +104,7 @@ class JudgedCell:
 
     value: SheetValue
     row: JudgedRow
-    doubt: Doubted | None
+    doubt: DoubtedGap | None
 
 
 def judge_cell(

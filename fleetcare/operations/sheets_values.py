@@ -18,7 +18,7 @@ from fleetcare.rules.nameplate import LashUnit
 
 
 @dataclass(frozen=True, slots=True)
-class Doubted:
+class DoubtedGap:
     """A gap that is more likely a slip: why, in words that name the point and what was likely meant."""
 
     text: str
@@ -30,13 +30,13 @@ class Doubted:
         return "correct it, or give --sure if it is right" if self.is_possible else "correct it, or its unit"
 
 
-def doubt_of(form: LashForm, value: SheetValue) -> Doubted | None:
+def doubt_of(form: LashForm, value: SheetValue) -> DoubtedGap | None:
     """Give the doubt about a value of a form, None where there is none."""
     if value.quantity != LASH:
         return None
     ranges = form.spec.ranges if form.spec else {}
     found = doubt(value, ranges.get(side_of(value.point)), form.spec.unit if form.spec else "mm")
-    return Doubted(say_doubt(value, found), found.is_possible) if found else None
+    return DoubtedGap(say_doubt(value, found), found.is_possible) if found else None
 
 
 def read_value(form: LashForm, quantity: str, point: str, phase: Phase, text: str, unit: str | None) -> SheetValue:

@@ -9,7 +9,6 @@ from fleetcare.domain.quantities import plain
 from fleetcare.domain.sheets import Judgement, LashSpec, Place, SheetValue, Unjudged
 from fleetcare.rules.lash_doubts import Doubt
 from fleetcare.rules.lash_mending import Mending
-from fleetcare.rules.lash_setting import Direction
 
 _PLACES_SHOWN = 4
 
@@ -95,10 +94,7 @@ def say_mending(mending: Mending) -> str:
     if mending.shim is not None:
         return f"fit a {plain(mending.shim.shim)} mm shim, which leaves {plain(mending.shim.lash)} mm"
     if mending.turn is not None:
-        turn = mending.turn
-        if turn.direction is Direction.NONE:
-            return "it is where it is to be set; mend the check range"
-        return f"turn the screw {plain(round(abs(turn.degrees), 0))}° {turn.direction}"
+        return f"turn the screw {plain(round(abs(mending.turn.degrees), 0))}° {mending.turn.direction}"
     return mending.wanting
 
 

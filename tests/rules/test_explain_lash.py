@@ -125,12 +125,6 @@ def test_a_setting_in_inches_is_reached_in_millimetres() -> None:
     assert mended("0.354", SCREW, unit="in", ranges=ranges, settings=settings) == "turn the screw 24° tighter"
 
 
-def test_a_setting_that_is_where_the_gap_lies_names_the_range() -> None:
-    assert mended("0.35", SCREW, settings={Side.INTAKE: Decimal("0.35")}) == (
-        "it is where it is to be set; mend the check range"
-    )
-
-
 def test_nothing_known_mends_nothing() -> None:
     assert say_mending(Mending()) == ""
 
