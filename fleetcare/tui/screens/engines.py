@@ -36,11 +36,11 @@ def _status(row: "YardRow") -> Cell:
 
 COLUMNS: tuple[Column["YardRow"], ...] = (
     Column("TAG", lambda row: Cell(row.tag, "strong"), 6, 20),
-    Column("NAME", lambda row: row.name, 24, 40),
-    Column("IN", lambda row: row.machine, 4, 12, drop=2),
+    Column("NAME", lambda row: row.name, 16, 40),
+    Column("IN", lambda row: row.machine, 6, 12, drop=3),
     Column("STATUS", _status, 10, 10),
-    Column("SHOWED LAST", lambda row: row.shown, 20, 24, to_right=True, drop=1),
-    Column("ON", lambda row: row.read_on.isoformat() if row.read_on else "", 10, 10, drop=3),
+    Column("SHOWED LAST", lambda row: row.shown, 14, 24, to_right=True, drop=1),
+    Column("ON", lambda row: row.read_on.isoformat() if row.read_on else "", 10, 10, drop=2),
     Column("NEEDS", _needs, 18, 18),
 )
 

@@ -37,6 +37,7 @@ _STANDING = {
     Status.WITHDRAWN: "WITHDRAWN",
 }
 
+_MOST_METERS = 4  # lines; with more of them one scrolls
 PARTS = ("plate", "meters", "lines", "history")
 
 LINES = tuple(column for column in COLUMNS if column.title not in {"ENGINE", "SITE"})
@@ -49,11 +50,11 @@ READINGS: tuple[Column["ReadingLine"], ...] = (
 HISTORY: tuple[Column["HistoryEntry"], ...] = (
     Column("ENTRY", lambda entry: str(entry.number), 5, 7, to_right=True),
     Column("ON", lambda entry: entry.on.isoformat(), 10, 10),
-    Column("KIND", lambda entry: entry.kind, 6, 10, drop=2),
+    Column("KIND", lambda entry: entry.kind, 10, 10, drop=3),
     Column("WHAT", lambda entry: entry.what, 14, 60),
-    Column("FIGURES", lambda entry: entry.figures, 8, 20, to_right=True),
+    Column("FIGURES", lambda entry: entry.figures, 24, 24, to_right=True),
     Column("BY", lambda entry: entry.by, 5, 12, drop=1),
-    Column("REMARK", lambda entry: Cell(entry.remark, "quiet"), 10, 50),
+    Column("REMARK", lambda entry: Cell(entry.remark, "quiet"), 12, 50, drop=2),
 )
 
 
@@ -126,7 +127,9 @@ class ItemScreen(LoadingScreen):
         self.query_one("#plate Sheet", Sheet).show(
             [Block(labels=page.nameplate), *cautions, Block(text=GENERAL, tone="quiet")]
         )
-        self.query_one("#meters Sheet", Sheet).show([Block(labels=page.meters, text="" if page.meters else "no meter")])
+        meters = self.query_one("#meters Sheet", Sheet)
+        meters.styles.height = min(max(len(page.meters), 1), _MOST_METERS)
+        meters.show([Block(labels=page.meters, text="" if page.meters else "no meter")])
         self.query_one("#meters LongList", LongList).show([Section("", page.readings)], "No readings yet.")
         self.query_one("#lines LongList", LongList).show([Section("", found.lines)], "No tasks yet.")
         self.query_one("#history LongList", LongList).show([Section("", page.history)], "Nothing was logged yet.")

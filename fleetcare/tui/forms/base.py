@@ -1,0 +1,110 @@
+"""What a form is made of: fields, a draft to read them into, an operation to store it, and what may be asked back."""
+
+import re
+from collections.abc import Callable, Mapping, Sequence
+from dataclasses import dataclass, field
+from typing import TYPE_CHECKING, Any
+
+from fleetcare.errors import FleetError
+
+if TYPE_CHECKING:
+    from datetime import date
+
+    from sqlalchemy.orm import Session
+
+    from fleetcare.drafts.reading_in import Draft
+    from fleetcare.operations.entering import Entered
+    from fleetcare.operations.form_facts import FormFacts
+
+_OPTION = re.compile(r"--([a-z][a-z-]+)(?: [A-Z][A-Z_|:]*)?")
+_SHORTEST = 3  # letters of a value that tell, where an error holds them, which field it is about
+
+
+@dataclass(frozen=True, slots=True)
+class Subject:
+    """What a form is about: an engine or machine, and a task or an entry of it. `preset` are fields filled in ahead."""
+
+    tag: str
+    task: str = ""
+    entry: int | None = None
+    preset: Mapping[str, str] = field(default_factory=dict)
+
+    def words(self) -> str:
+        """Name it, so that each has a draft of its own."""
+        return " ".join(word for word in (self.tag, self.task, str(self.entry or "")) if word)
+
+
+@dataclass(frozen=True, slots=True)
+class Field:
+    """One labelled line of a form, by the name it has in the draft.
+
+    `known` names what is suggested for it (see FormFacts.known). A yes or no is one key. One that is
+    `kept_for_shift` is filled in again on the next form. `several` values stand between semicolons.
+    """
+
+    name: str
+    label: str
+    tells: str
+    known: str = ""
+    is_yes_no: bool = False
+    several: bool = False
+    kept_for_shift: bool = False
+
+
+@dataclass(frozen=True, slots=True)
+class Answer:
+    """One answer to a doubt: its key, its words, and what it says to the operation; or the form it leads to."""
+
+    key: str
+    words: str
+    says: Mapping[str, bool] = field(default_factory=dict)
+    leads_to: str = ""
+
+
+@dataclass(frozen=True, slots=True)
+class Form:
+    """A form by its name. `draft` gives the draft's class, `fixed` what it holds that is not asked.
+
+    `store` runs the operation on the draft, with what an answer said. `start` gives the values a form opens with.
+    With `only_changes` a field left as it was is not sent, and one that was filled cannot be emptied.
+    """
+
+    name: str
+    title: str
+    fields: tuple[Field, ...]
+    draft: "Callable[[], type[Draft]]"
+    store: "Callable[[Session, Any, date, Mapping[str, bool]], Entered]"
+    fixed: "Callable[[Subject, date], Mapping[str, object]]" = lambda subject, on: {"tag": subject.tag}
+    start: "Callable[[FormFacts, Subject, date], Mapping[str, str]]" = lambda facts, subject, on: {
+        "on": on.isoformat()
+    }
+    above: "Callable[[FormFacts], tuple[str, Sequence[str]]]" = lambda facts: ("", ())
+    answers: tuple[Answer, ...] = ()
+    only_changes: bool = False
+
+    def heading(self, subject: Subject) -> str:
+        """Say what is being written down about what."""
+        return self.title.format(tag=subject.tag, task=subject.task, entry=subject.entry)
+
+    def field_of(self, error: FleetError, values: Mapping[str, str]) -> str:
+        """Name the field an error is about, as far as its words tell; "" where they do not."""
+        said = f"{error.detail} {error.remedy}"
+        named = [match.replace("-", "_") for match in _OPTION.findall(said)]
+        own = [one.name for one in self.fields]
+        by_name = next((name for name in named if name in own), "")
+        return by_name or next((name for name in own if _is_said(values.get(name, ""), error.detail)), "")
+
+    def in_own_words(self, text: str) -> str:
+        """Say fields by their labels where an error names options."""
+        labels = {one.name: f"“{one.label}”" for one in self.fields}
+        return _OPTION.sub(lambda match: labels.get(match[1].replace("-", "_"), match[0]), text)
+
+
+def _is_said(value: str, detail: str) -> bool:
+    return any(len(part.strip()) >= _SHORTEST and part.strip() in detail for part in value.split(";"))
+
+
+BY = Field("by", "By", "who did it or says so; filled in again until you leave", "people", kept_for_shift=True)
+ON = Field("on", "Day", "year-month-day, such as 2026-05-01")
+NOTE = Field("note", "Note", "anything worth keeping")
+WHY = Field("why", "Why", "the reason, in a few words")

@@ -1,0 +1,83 @@
+"""Forms on how an engine stands: laid up, returned, stood down, withdrawn, moved to another machine."""
+
+from collections.abc import Callable, Mapping, Sequence
+from datetime import date
+from typing import TYPE_CHECKING
+
+from fleetcare.domain.engines import Status
+from fleetcare.tui.forms.base import BY, ON, WHY, Field, Form
+
+if TYPE_CHECKING:
+    from sqlalchemy.orm import Session
+
+    from fleetcare.drafts.items import FitDraft, StatusDraft
+    from fleetcare.drafts.reading_in import Draft
+    from fleetcare.operations.entering import Entered
+    from fleetcare.operations.form_facts import FormFacts
+
+
+def _status_draft() -> "type[Draft]":
+    from fleetcare.drafts.items import StatusDraft
+
+    return StatusDraft
+
+
+def _return_draft() -> "type[Draft]":
+    from fleetcare.drafts.items import ReturnDraft
+
+    return ReturnDraft
+
+
+def _becomes(status: Status) -> "Callable[[Session, StatusDraft, date, Mapping[str, bool]], Entered]":
+    def store(session: "Session", draft: "StatusDraft", today: date, said: Mapping[str, bool]) -> "Entered":
+        from fleetcare.operations.entering import enter_status
+
+        return enter_status(session, draft, status, today)
+
+    return store
+
+
+def _waiting(facts: "FormFacts") -> tuple[str, Sequence[str]]:
+    return "BEFORE RETURN", facts.waiting or ("nothing waits",)
+
+
+def _fit_draft() -> "type[Draft]":
+    from fleetcare.drafts.items import FitDraft
+
+    return FitDraft
+
+
+def _move(session: "Session", draft: "FitDraft", today: date, said: Mapping[str, bool]) -> "Entered":
+    from fleetcare.operations.entering import enter_move
+
+    return enter_move(session, draft, today)
+
+
+_FIELDS = (ON, WHY, BY)
+
+LAY_UP = Form("lay-up", "Lay up {tag}", _FIELDS, _status_draft, _becomes(Status.LAID_UP))
+RETURN = Form(
+    "return", "Return {tag} to service", _FIELDS, _return_draft, _becomes(Status.IN_SERVICE), above=_waiting
+)
+STAND_DOWN = Form(
+    "stand-down", "Stand down {tag}: not to be run", _FIELDS, _status_draft, _becomes(Status.STOOD_DOWN)
+)
+WITHDRAW = Form(
+    "withdraw",
+    "Withdraw {tag}: no lines any more, its history stays",
+    _FIELDS,
+    _status_draft,
+    _becomes(Status.WITHDRAWN),
+)
+MOVE = Form(
+    "move",
+    "Move {tag}",
+    (
+        Field("machine", "Into", "tag of the machine it goes into", "machines"),
+        Field("position", "Where in it", "such as port"),
+        Field("out", "Take it out", "take it out of the machine it is in", is_yes_no=True),
+        ON,
+    ),
+    _fit_draft,
+    _move,
+)

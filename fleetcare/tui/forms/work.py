@@ -1,0 +1,125 @@
+"""Forms on work: log it, correct an entry, take one back, put a due point off."""
+
+from collections.abc import Mapping
+from datetime import date
+from typing import TYPE_CHECKING
+
+from fleetcare.tui.forms.base import BY, NOTE, ON, WHY, Answer, Field, Form, Subject
+
+if TYPE_CHECKING:
+    from sqlalchemy.orm import Session
+
+    from fleetcare.drafts.reading_in import Draft
+    from fleetcare.drafts.work import CorrectionDraft, DeferralDraft, LogDraft
+    from fleetcare.operations.entering import Entered
+    from fleetcare.operations.form_facts import FormFacts
+
+TASKS = Field("task", "Tasks", "what was done; several with ; between", "task", several=True)
+AT = Field("at", "Meter", "what the dial showed; of two meters each with its unit, such as 1234h; 5600km")
+PART = Field("part", "Parts", "parts used, such as Oil filter:1; several with ; between", "parts", several=True)
+PART_DONE = Field("part_done", "In part", "done in part only, which closes nothing", is_yes_no=True)
+TOP_UP = Field("top_up", "Topped up", "oil, such as 8L, 2galus or 2galimp")
+REPAIR = Field("repair", "Repair", "what was repaired")
+DEFECT = Field("defect", "Defect", "a defect seen")
+
+FIGURE_ANSWERS = (
+    Answer("r", "it is right as it stands; what does not fit it counts no more", {"sure": True}),
+    Answer("g", "the dial went round to 0", {"rolled_over": True}),
+    Answer("n", "a new meter: write that down first", leads_to="swap"),
+)
+
+
+def _log_draft() -> "type[Draft]":
+    from fleetcare.drafts.work import LogDraft
+
+    return LogDraft
+
+
+def _log(session: "Session", draft: "LogDraft", today: date, said: Mapping[str, bool]) -> "Entered":
+    from fleetcare.operations.entering import enter_work
+
+    return enter_work(session, draft, today, said)
+
+
+def _log_start(facts: "FormFacts", subject: Subject, on: date) -> Mapping[str, str]:
+    return {"on": on.isoformat(), "task": subject.task}
+
+
+def _correction_draft() -> "type[Draft]":
+    from fleetcare.drafts.work import CorrectionDraft
+
+    return CorrectionDraft
+
+
+def _correct(session: "Session", draft: "CorrectionDraft", today: date, said: Mapping[str, bool]) -> "Entered":
+    from fleetcare.operations.entering import enter_correction
+
+    return enter_correction(session, draft, today)
+
+
+def _deferral_draft() -> "type[Draft]":
+    from fleetcare.drafts.work import DeferralDraft
+
+    return DeferralDraft
+
+
+def _defer(session: "Session", draft: "DeferralDraft", today: date, said: Mapping[str, bool]) -> "Entered":
+    from fleetcare.operations.entering import enter_deferral
+
+    return enter_deferral(session, draft, today)
+
+
+LOG = Form(
+    "log",
+    "Log work on {tag}",
+    (
+        TASKS,
+        ON,
+        AT,
+        BY,
+        PART_DONE,
+        PART,
+        TOP_UP,
+        REPAIR,
+        DEFECT,
+        Field("follow_up", "Follow-up", "raise a follow-up from the defect; it stands in the due list", is_yes_no=True),
+        Field("until", "... until", "last day for the follow-up; left empty it is due at once"),
+        NOTE,
+    ),
+    _log_draft,
+    _log,
+    start=_log_start,
+    answers=FIGURE_ANSWERS,
+)
+CORRECT = Form(
+    "correct",
+    "Correct entry {entry} of {tag}",
+    (TASKS, ON, AT, BY, PART_DONE, PART, TOP_UP, REPAIR, DEFECT, NOTE, WHY),
+    _correction_draft,
+    _correct,
+    fixed=lambda subject, on: {"entry": subject.entry},
+    start=lambda facts, subject, on: facts.typed,
+    only_changes=True,
+)
+VOID = Form(
+    "void",
+    "Take back entry {entry} of {tag}: nothing of it is true",
+    (WHY, BY),
+    _correction_draft,
+    _correct,
+    fixed=lambda subject, on: {"entry": subject.entry, "void": True},
+    start=lambda facts, subject, on: {},
+)
+DEFER = Form(
+    "defer",
+    "Put off {task} of {tag}",
+    (
+        Field("until", "Until", "a day, a dial figure such as 1500h, or both with ; between", several=True),
+        WHY,
+        Field("by", "By", "who decides it", "people", kept_for_shift=True),
+    ),
+    _deferral_draft,
+    _defer,
+    fixed=lambda subject, on: {"tag": subject.tag, "task": subject.task, "on": on},
+    start=lambda facts, subject, on: {},
+)

@@ -1,0 +1,127 @@
+"""The lines of a form: a label, what is typed, and below it what is wrong with that."""
+
+from collections.abc import Iterator
+from typing import ClassVar
+
+from textual import events
+from textual.binding import Binding, BindingType
+from textual.containers import Horizontal, Vertical
+from textual.content import Content
+from textual.message import Message
+from textual.reactive import reactive
+from textual.widget import Widget
+from textual.widgets import Input, Static
+
+from fleetcare.domain.printable import clean
+from fleetcare.tui.forms.base import Field
+
+_EDGE = "▌"
+_WRONG = "! "
+
+
+class TextField(Input):
+    """A line of text; at its end → takes the name suggested, if there is one."""
+
+    class Taken(Message):
+        """The key that takes a name was pressed at the end of the line."""
+
+    def __init__(self) -> None:
+        super().__init__(compact=True, select_on_focus=False)
+
+    async def action_submit(self) -> None:
+        """Go to the next line."""
+        self.screen.focus_next()
+
+    def action_cursor_right(self, select: bool = False) -> None:
+        """Move right; at the end take the name suggested."""
+        if self.cursor_at_end and not select:
+            self.post_message(self.Taken())
+        else:
+            super().action_cursor_right(select)
+
+
+class YesNo(Widget, can_focus=True):
+    """A yes or no: the space bar changes it, y and n say it."""
+
+    BINDINGS: ClassVar[list[BindingType]] = [Binding("enter", "next", show=False)]
+
+    value: reactive[str] = reactive("no")
+
+    class Changed(Message):
+        """The person changed it."""
+
+    def render(self) -> Content:
+        """Draw box and word."""
+        return Content(f"[{'x' if self.value == 'yes' else ' '}] {self.value}")
+
+    def check_consume_key(self, key: str, character: str | None) -> bool:
+        """Keep letters from meaning anything else while the cursor is here."""
+        return character is not None and character.isprintable()
+
+    def on_key(self, event: events.Key) -> None:
+        """Change it."""
+        said = {"space": "no" if self.value == "yes" else "yes", "y": "yes", "n": "no"}.get(event.key)
+        if said is not None and said != self.value:
+            self.value = said
+            self.post_message(self.Changed())
+
+    def on_click(self) -> None:
+        """Change it with the mouse."""
+        self.value = "no" if self.value == "yes" else "yes"
+        self.post_message(self.Changed())
+
+    def action_next(self) -> None:
+        """Go to the next line."""
+        self.screen.focus_next()
+
+
+class FieldRow(Horizontal):
+    """One field of a form."""
+
+    def __init__(self, field: Field) -> None:
+        self.field = field
+        self.editor: TextField | YesNo = YesNo() if field.is_yes_no else TextField()
+        self._label = Static(f" {field.label}", classes="label", markup=False)
+        self._error = Static("", classes="error", markup=False)
+        super().__init__()
+
+    def compose(self) -> Iterator[Widget]:
+        """Label, line, and below it the place for what is wrong."""
+        yield self._label
+        yield Vertical(self.editor, self._error)
+
+    @property
+    def value(self) -> str:
+        """What stands in it."""
+        return self.editor.value
+
+    def fill(self, text: str) -> None:
+        """Put text in it, not as if somebody typed it."""
+        if isinstance(self.editor, YesNo):
+            self.editor.value = text or "no"
+            return
+        with self.editor.prevent(Input.Changed):
+            self.editor.value = text
+            self.editor.cursor_position = len(text)
+
+    def take(self, name: str) -> None:
+        """Put a suggested name in the place of what is typed of it, as if it were typed."""
+        assert isinstance(self.editor, TextField)
+        before, semicolon, _ = self.editor.value.rpartition(";") if self.field.several else ("", "", "")
+        self.editor.value = f"{before}; {name}" if semicolon else name
+        self.editor.cursor_position = len(self.editor.value)
+
+    @property
+    def typed(self) -> str:
+        """What is typed of the name now being written."""
+        return (self.value.rpartition(";")[2] if self.field.several else self.value).strip()
+
+    def say_wrong(self, text: str) -> None:
+        """Say what is wrong with it; nothing takes that away."""
+        self._error.update(Content(f"{_WRONG}{clean(text)}" if text else ""))
+        self._error.display = bool(text)
+
+    def mark(self, is_here: bool) -> None:
+        """Mark the line the cursor is in, with or without colour."""
+        self._label.update(Content(f"{_EDGE if is_here else ' '}{self.field.label}"))
+        self._label.set_class(is_here, "-here")
