@@ -76,14 +76,14 @@ def _correct(given: argparse.Namespace) -> None:
     )
     with context.write() as session:
         entered = enter_correction(session, draft, context.today())
-    _say(entered)
+    _say(entered, judged_anew=bool(draft.model_fields_set & {"sheet", "when", "on"}))
 
 
-def _say(entered: "Entered") -> None:
-    """Print what an entry stored, its sheet, and the lines it moved."""
+def _say(entered: "Entered", *, judged_anew: bool = True) -> None:
+    """Print what an entry stored, its sheet where it is judged anew, and the lines it moved."""
     for line in entered.said:
         output.say(line)
-    if entered.logged is not None and entered.logged.sheet is not None:
+    if judged_anew and entered.logged is not None and entered.logged.sheet is not None:
         say_sheet(entered.logged.sheet)
     for line in entered.moved:
         output.say(line)

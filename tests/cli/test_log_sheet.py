@@ -125,6 +125,18 @@ def test_a_correction_takes_another_sheet_and_prints_it(pump: Runner, lash: str,
 
 
 @pytest.mark.parametrize(
+    ("words", "is_judged_anew"), [(("--note", "x"), False), (("--gauge", "F3"), False), (("--when", "hot"), True)]
+)
+def test_a_correction_prints_the_sheet_where_its_judgement_may_change(
+    pump: Runner, lash: str, words: tuple[str, ...], is_judged_anew: bool
+) -> None:
+    pump("log", "P-01", "Valve lash", "--sheet", lash, "--when", "cold")
+    ran = pump("correct", "1", *words)
+    assert ran.status == 0
+    assert ("Valve lash of P-01 on 2026-05-01" in ran.out) is is_judged_anew
+
+
+@pytest.mark.parametrize(
     ("words", "err"),
     [
         (

@@ -57,6 +57,11 @@ def test_a_bridge_without_two_valves_under_it_is_refused(valves: int, bridged: s
         check_bridges(valves, Bridged(bridged))
 
 
+@pytest.mark.parametrize(("valves", "bridged"), [(2, "none"), (3, "intake"), (4, "both"), (5, "exhaust")])
+def test_a_bridge_over_two_valves_is_good(valves: int, bridged: str) -> None:
+    check_bridges(valves, Bridged(bridged))
+
+
 @pytest.mark.parametrize(
     ("cylinders", "layout", "numbering", "wanted"),
     [
