@@ -1,6 +1,7 @@
 """Facts out of rows: everything the due rules need to know about some items, seen up to a day."""
 
 from collections.abc import Mapping, Sequence
+from dataclasses import dataclass
 from datetime import date
 from decimal import Decimal
 from typing import TYPE_CHECKING
@@ -20,11 +21,24 @@ if TYPE_CHECKING:
     from sqlalchemy import Connection
 
 
-def item_facts(connection: "Connection", on: date, ids: Sequence[int] | None = None) -> list[ItemFacts]:
+@dataclass(frozen=True, slots=True)
+class Trial:
+    """What is not stored and looked at as if it were: new readings (ids below 0), and stored ones turned suspect."""
+
+    readings: tuple[Reading, ...] = ()
+    suspects: frozenset[int] = frozenset()
+
+
+_AS_STORED = Trial()
+
+
+def item_facts(
+    connection: "Connection", on: date, ids: Sequence[int] | None = None, trial: Trial = _AS_STORED
+) -> list[ItemFacts]:
     """Load items (all in use on `on`, or those of some ids) as the rules see them on a day."""
     items = load_items(connection, on, ids)
     found = [item.id for item in items]
-    counters = load_counters(connection, found, on)
+    counters = load_counters(connection, found, on, trial)
     tasks = load_tasks(connection, found, on, counters)
     done = _load_done(connection, found, on, counters)
     stale = stale_days(connection)
@@ -105,7 +119,9 @@ def _load_machines(connection: "Connection", ids: Sequence[int], on: date) -> di
     return {row[0]: (row[1], row[2]) for row in rows}
 
 
-def load_counters(connection: "Connection", ids: Sequence[int], on: date) -> dict[int, dict[Kind, CounterHistory]]:
+def load_counters(
+    connection: "Connection", ids: Sequence[int], on: date, trial: Trial = _AS_STORED
+) -> dict[int, dict[Kind, CounterHistory]]:
     """Load what counts for each item, per kind, as life totals up to a day."""
     fits = fetch(
         connection,
@@ -115,7 +131,7 @@ def load_counters(connection: "Connection", ids: Sequence[int], on: date) -> dic
         ids=list(ids),
     )
     starts = load_start_figures(connection, ids)
-    readings = _load_readings(connection, sorted({row[1] for row in fits}))
+    readings = _load_readings(connection, sorted({row[1] for row in fits}), trial)
     counters: dict[int, dict[Kind, CounterHistory]] = {}
     by_kind: dict[tuple[int, Kind], list[Row]] = {}
     for row in fits:
@@ -145,7 +161,7 @@ def _fit(row: Row, on: date, readings: Sequence[Reading]) -> MeterFit:
     return MeterFit(meter, begun, first, ended, shown(row[8], ended), Decimal(row[9] or 0))
 
 
-def _load_readings(connection: "Connection", meter_ids: Sequence[int]) -> dict[int, list[Reading]]:
+def _load_readings(connection: "Connection", meter_ids: Sequence[int], trial: Trial) -> dict[int, list[Reading]]:
     """Load the readings of some meters: not accepted where suspect, voided, or of an entry since superseded."""
     rows = fetch(
         connection,
@@ -159,11 +175,13 @@ def _load_readings(connection: "Connection", meter_ids: Sequence[int]) -> dict[i
     )
     found: dict[int, list[Reading]] = {}
     for row in rows:
-        accepted = row[8] not in {"suspect", "void"} and not row[9] and not row[10]
+        accepted = row[8] not in {"suspect", "void"} and row[1] not in trial.suspects and not row[9] and not row[10]
         value = Decimal(row[3]) if row[6] == row[7] else from_base(to_base(Decimal(row[3]), row[6]), row[7])
         found.setdefault(row[0], []).append(
             Reading(row[1], row[0], known_day(row[2]), value, bool(row[4]), row[5], accepted)
         )
+    for new in trial.readings:
+        found.setdefault(new.meter_id, []).append(new)
     return found
 
 
