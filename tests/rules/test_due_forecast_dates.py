@@ -157,3 +157,5 @@ def test_an_open_late_day_stays_open_where_the_point_is_still_ahead() -> None:
     due = line(task, on=ON, hours=rare)
     assert due.likely_on is not None
     assert due.late_on is None
+    assert due.triggers[0].forecast is not None
+    assert due.triggers[0].forecast.late is None

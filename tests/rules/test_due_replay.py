@@ -86,6 +86,14 @@ def test_a_last_done_later_than_the_day_asked_about_is_not_known_yet() -> None:
     assert line(task, on="2026-05-01", hours=900).state is State.UNSET
 
 
+def test_each_trigger_says_what_it_counts_from() -> None:
+    task = a_task(every("250h"), every("12mo"), origin=last_done("2026-01-01", hours=1000))
+    stated = line(task, on="2026-05-01", hours=1300)
+    assert [t.counts_from for t in stated.triggers] == [1000, day("2026-01-01")]
+    worked = line(task, on="2026-05-01", done=[done("2026-04-01", hours=1260)], hours=1300)
+    assert [t.counts_from for t in worked.triggers] == [1260, day("2026-04-01")]
+
+
 def test_without_a_last_done_the_first_entry_is_what_the_line_counts_from() -> None:
     task = a_task(every("250h"))
     assert line(task, on="2026-05-01", hours=900).state is State.UNSET

@@ -56,10 +56,10 @@ def deciding(how: Combine, triggers: Sequence[TriggerLine]) -> TriggerLine:
     state = combine(how, [t.state for t in triggers])
     candidates = [t for t in triggers if t.state is state]
     pick: Callable[..., TriggerLine] = min if how is Combine.FIRST else max
-    dates = [t.forecast.likely for t in candidates if t.forecast is not None]
-    if len(dates) == len(candidates) and None not in dates:
-        best = pick(d for d in dates if d is not None)
-        candidates = [t for t in candidates if t.forecast is not None and t.forecast.likely == best]
+    dated = [(t.forecast.likely, t) for t in candidates if t.forecast is not None and t.forecast.likely is not None]
+    if len(dated) == len(candidates):
+        best = pick(day for day, _ in dated)
+        candidates = [t for day, t in dated if day == best]
     return pick(candidates, key=_share)
 
 

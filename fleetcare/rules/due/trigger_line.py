@@ -96,10 +96,11 @@ def _with_day(reached: Forecast, until: date, pick: Callable[[date, date], date]
     )
 
 
-def _counts_from(marks: Marks, kind: Kind) -> Point | None:
+def _counts_from(marks: Marks, kind: Kind) -> Point:
     if kind is not Kind.CALENDAR:
         return marks.counted[kind].done
-    return marks.calendar.done if marks.calendar else None
+    assert marks.calendar is not None
+    return marks.calendar.done
 
 
 def _length(interval: Decimal | Span) -> Decimal:
