@@ -58,9 +58,10 @@ def db(made_yard: Path, tmp_path: Path) -> Path:
 
 async def settle_down(pilot: Pilot[None]) -> None:
     """Wait until all that was begun is done: workers, the messages they sent, and what those began in turn."""
-    for _ in range(3):
+    for _ in range(4):
         await pilot.app.workers.wait_for_complete()
-        await pilot.pause()
+        await pilot._wait_for_screen()
+    await pilot.pause()
 
 
 @pytest.fixture
