@@ -25,6 +25,8 @@ from fleetcare.errors import Refused
 from fleetcare.rules.due.calendar import period_span
 
 SheetKind = Literal["lash", "compression", "leakdown", "run", "spot", "oil"]
+_SHORTEST = Decimal("0.1")
+"""Counted interval: what the finest dial tells apart."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -165,6 +167,8 @@ def _check_intervals(draft: TaskDraft, triggers: tuple[TriggerDraft, ...]) -> No
         for option in options:
             if length(option) <= 0:
                 raise Refused(f"{name} {option} is no interval", "give a figure above 0")
+            if isinstance(option, Amount) and option.value < _SHORTEST:
+                raise Refused(f"{name} {option} is shorter than any meter shows", f"give {_SHORTEST} or more")
     for name, options in (
         ("--every", draft.every),
         ("--first", draft.first),

@@ -65,6 +65,7 @@ def test_an_interval_is_a_number_and_a_unit(new: Runner, interval: str, stands: 
         ("=-5h", 2, "--every: '=-5h' is not a figure"),
         ("1.5mo", 2, "--every: '1.5mo' is not a whole number of days, weeks, months or years"),
         ("0h", 1, "--every 0 h is no interval; give a figure above 0"),
+        ("0.01h", 1, "--every 0.01 h is shorter than any meter shows; give 0.1 or more"),
         ("0mo", 1, "--every 0 mo is no interval; give a figure above 0"),
         ("1000000000h", 1, "--every: 1000000000h cannot be right; give a figure up to 999999999"),
         ("101y", 1, "--every: 101y cannot be right; give a span of up to 100 years"),
