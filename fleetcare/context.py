@@ -32,7 +32,8 @@ class Context:
     """The shop's database as of a day.
 
     `database` is a path or a `sqlite:///` address; None takes FLEETCARE_DB, else the person's own file.
-    `as_of` None means today. `clock` gives aware moments, `uids` unused uids.
+    `as_of` None means today. `clock` gives aware moments, `uids` unused uids; half-typed forms
+    are kept in the folder `drafts`.
     """
 
     def __init__(
@@ -42,11 +43,13 @@ class Context:
         *,
         clock: Callable[[], datetime] = utc_now,
         uids: Callable[[], str] = new_uid,
+        drafts: Path | None = None,
     ) -> None:
         self._database = database or os.environ.get("FLEETCARE_DB")
         self._as_of = as_of
         self._clock = clock
         self._uids = uids
+        self._drafts = drafts
 
     @property
     def path(self) -> Path:
@@ -62,6 +65,11 @@ class Context:
                 "name a file, or sqlite:/// and a file, with --db or FLEETCARE_DB",
             )
         return Path(rest[1:])
+
+    @property
+    def drafts_folder(self) -> Path:
+        """Where half-typed forms are kept: the person's own folder, unless another was given."""
+        return self._drafts or _own_folder() / "drafts"
 
     def today(self) -> date:
         """Give the day everything is asked about: as-of, else the local day."""

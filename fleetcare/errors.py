@@ -2,6 +2,7 @@
 
 FleetError
   Refused        understood, but it may not be done         exit status 1
+    Doubted      likely a slip, unless somebody is sure     exit status 1
     Refusals     several at once: an import, a form         exit status 1
   Misread        a value that cannot be read as its kind     exit status 2
   NoDatabase     the database cannot be opened or written   exit status 3
@@ -35,6 +36,10 @@ class FleetError(ValueError):
 
 class Refused(FleetError):
     """The request was understood and may not be done."""
+
+
+class Doubted(Refused):
+    """The request is likely a slip: it is done only if somebody says that it is right, or explains it."""
 
 
 class Refusals(Refused):

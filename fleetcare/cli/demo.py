@@ -48,4 +48,4 @@ def _private_copy(anchor: date) -> Iterator[Context]:
     with TemporaryDirectory(prefix="fleetcare-demo-") as folder:
         path = Path(folder, "demo.db")
         build(path, anchor)
-        yield Context(str(path), anchor)
+        yield Context(str(path), anchor, drafts=Path(folder, "drafts"))

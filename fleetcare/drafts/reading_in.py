@@ -25,26 +25,43 @@ def read_draft(
     `label` turns a field's name into what the person knows it by: an option, a column. Raises the
     one error, or Refusals with all of them.
     """
-    given = {name: value for name, value in values.items() if value not in (None, "", [], ())}
     try:
-        return draft.model_validate(given)
+        return draft.model_validate(_given(values))
     except ValidationError as caught:
         errors = [_error(detail, label) for detail in caught.errors()]
         raise errors[0] if len(errors) == 1 else Refusals(errors) from None
 
 
+def try_draft(draft: type[DraftT], values: Mapping[str, object]) -> tuple[DraftT | None, list[tuple[str, FleetError]]]:
+    """Read a draft as `read_draft` does; give it, or None and each error beside the name of its field.
+
+    The errors do not name their field; one about several fields together stands beside "".
+    """
+    try:
+        return draft.model_validate(_given(values)), []
+    except ValidationError as caught:
+        return None, [
+            (str(detail["loc"][0]) if detail["loc"] else "", _error(detail, lambda _: "")) for detail in caught.errors()
+        ]
+
+
+def _given(values: Mapping[str, object]) -> dict[str, object]:
+    return {name: value for name, value in values.items() if value not in (None, "", [], ())}
+
+
 def _error(detail: Mapping[str, object], label: Callable[[str], str]) -> FleetError:
-    """Turn one of pydantic's findings into an error that names its field."""
+    """Turn one of pydantic's findings into an error that names its field, where the field has a label."""
     location = detail["loc"]
     field = label(str(location[0])) if isinstance(location, tuple) and location else ""
+    before = f"{field}: " if field else ""
     context = detail.get("ctx")
     inner = context.get("error") if isinstance(context, Mapping) else None
     if isinstance(inner, FleetError):
-        return type(inner)(f"{field}: {inner.detail}" if field else inner.detail, inner.remedy)
+        return type(inner)(f"{before}{inner.detail}", inner.remedy)
     if detail["type"] == "missing":
-        return Misread(f"{field} is missing", "give it")
+        return Misread(f"{field or 'this'} is missing", "give it")
     if detail["type"] == "extra_forbidden":
-        return Misread(f"{field} is not known here", "leave it out, or check its spelling")
+        return Misread(f"{field or 'this'} is not known here", "leave it out, or check its spelling")
     if isinstance(context, Mapping) and "expected" in context:  # a word out of a fixed list
-        return Misread(f"{field}: {detail['input']!r} is not known", f"use {context['expected']}")
-    return Misread(f"{field}: {detail['msg']}", "correct it")
+        return Misread(f"{before}{detail['input']!r} is not known", f"use {context['expected']}")
+    return Misread(f"{before}{detail['msg']}", "correct it")

@@ -46,6 +46,31 @@ class ReadingDraft(Draft):
         return self
 
 
+class SwapDraft(Draft):
+    """A new meter in the place of an old one; without `value` the new one still shows its first figure."""
+
+    tag: Text
+    old_last: Dial
+    new_first: Dial
+    value: Dial | None = None
+    unmetered: Dial | None = None
+    on: Day
+    by: Text | None = None
+    note: Note = ""
+
+    def reading(self) -> ReadingDraft:
+        """Give the reading of the new meter that explains the change."""
+        return ReadingDraft(
+            tag=self.tag,
+            value=self.value or self.new_first,
+            on=self.on,
+            replaced=(self.old_last, self.new_first),
+            unmetered=self.unmetered,
+            note=self.note,
+            by=self.by,
+        )
+
+
 class LogDraft(TakenSheet):
     """What was done to an engine or machine on a day, and the sheet that came of it."""
 

@@ -1,15 +1,17 @@
 """Everything that is written down about an item, each with what it stored and which lines it moved, in sentences."""
 
-from collections.abc import Sequence
+from collections.abc import Mapping, Sequence
 from dataclasses import dataclass, field
 from datetime import date
 from typing import TYPE_CHECKING
 
 from fleetcare.domain.engines import Status
+from fleetcare.drafts.work import ReadingDraft
+from fleetcare.operations.against_past import NewReading, hold_against_past
 from fleetcare.operations.correct import correct_entry, item_of_entry
 from fleetcare.operations.deferrals import defer
 from fleetcare.operations.due import DueRow, Filters, due_rows, watch_items, watch_moves
-from fleetcare.operations.find import find_engine, find_machine
+from fleetcare.operations.find import find_engine, find_item, find_machine, find_meters, pick_meter
 from fleetcare.operations.items import fit_engine
 from fleetcare.operations.listing import pausing_tasks
 from fleetcare.operations.log import Logged, record_work, refuse_future
@@ -21,7 +23,7 @@ if TYPE_CHECKING:
     from sqlalchemy.orm import Session
 
     from fleetcare.drafts.items import FitDraft, StatusDraft
-    from fleetcare.drafts.work import CorrectionDraft, DeferralDraft, LogDraft, ReadingDraft
+    from fleetcare.drafts.work import CorrectionDraft, DeferralDraft, LogDraft
 
 
 @dataclass(slots=True)
@@ -42,11 +44,29 @@ class Entered:
         return [*self.said, *self.moved, *self.notes]
 
 
-def enter_work(session: "Session", draft: "LogDraft", today: date) -> Entered:
-    """Store what was done on a day."""
+def enter_work(
+    session: "Session", draft: "LogDraft", today: date, explained: Mapping[str, bool] | None = None
+) -> Entered:
+    """Store what was done on a day.
+
+    `explained` says of figures that break with their meter's past what a ReadingDraft says of them: sure, rolled_over.
+    """
     with watch_moves(session, draft.tag, today) as moves:
+        if explained:
+            _explain_figures(session, draft, explained)
         logged = record_work(session, draft, today)
     return Entered([*logged_words(logged, f"on {draft.on}")], [*moved_words(moves.moved)], logged=logged)
+
+
+def _explain_figures(session: "Session", draft: "LogDraft", explained: Mapping[str, bool]) -> None:
+    """Store those figures of an entry that break with the past as readings of their own first, as explained."""
+    connection = session.connection()
+    item = find_item(connection, draft.tag)
+    for figure in draft.at:
+        meter = pick_meter(find_meters(connection, item.id, draft.on), figure, item.tag)
+        if hold_against_past(connection, item, meter, [NewReading(draft.on, figure)])[1]:
+            told = {"tag": item.tag, "value": figure, "on": draft.on, "by": draft.by, **explained}
+            record_reading(session, ReadingDraft.model_validate(told))
 
 
 def enter_correction(session: "Session", draft: "CorrectionDraft", today: date) -> Entered:

@@ -13,7 +13,7 @@ from sqlmodel import col
 from fleetcare.db.tables import Item, Meter, Reading, ReadingMark
 from fleetcare.domain.quantities import Figure, Kind
 from fleetcare.drafts.work import ReadingDraft
-from fleetcare.errors import Refused
+from fleetcare.errors import Doubted, Refused
 from fleetcare.operations.against_past import NewReading as NewReading
 from fleetcare.operations.against_past import dial_of as dial_of
 from fleetcare.operations.against_past import hold_against_past as hold_against_past
@@ -66,7 +66,7 @@ def store_reading(
     trial, collisions = hold_against_past(session.connection(), item, meter, [new])
     refuse_unlike_dial(item, meter, new, trial)
     if collisions and not sure:
-        raise Refused(say_collision(item, meter, new, collisions[0]), remedy)
+        raise Doubted(say_collision(item, meter, new, collisions[0]), remedy)
     shown = f"{item.tag} shows {say_figure(new.figure, meter)}"
     known = same_reading(session.connection(), meter, new)
     if known is not None:

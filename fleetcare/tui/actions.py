@@ -5,6 +5,8 @@ from dataclasses import dataclass
 from textual.binding import Binding, BindingType
 
 EVERYWHERE = "everywhere"
+TYPED_IN = frozenset({"form"})
+"""Places where letters are typed, so that no letter does anything else."""
 
 _SAID = {
     "slash": "/",
@@ -14,6 +16,11 @@ _SAID = {
     "space": "Space",
     "left": "←",
     "right": "→",
+    "up": "↑",
+    "down": "↓",
+    "ctrl+s": "Ctrl S",
+    "ctrl+n": "Ctrl N",
+    "f1": "F1",
 }
 
 
@@ -39,6 +46,10 @@ class Action:
 
 ACTIONS = (
     Action("due", "enter", "working", "working", "show how the line comes about, with every figure behind it"),
+    Action("due", "w", "write('log')", "log", "log work done on the line's engine or machine"),
+    Action("due", "o", "write('defer')", "defer", "put the line off, with reason and name"),
+    Action("due", "r", "write('reading')", "reading", "write down what the engine's meter shows"),
+    Action("due", "x", "more", "more", "write down a status, a move or a new meter of the engine"),
     Action("due", "e", "item", "engine", "open the page of the line's engine or machine"),
     Action("due", "slash", "find", "find", "show only lines that hold some words"),
     Action("due", "f", "narrow", "narrow", "choose states, sites, kinds of work and engines to show"),
@@ -49,6 +60,9 @@ ACTIONS = (
     Action("due", "p", "to_group(-1)", "group before", "go to the heading before", in_foot=False),
     Action("due", "escape", "hush", "hush", "take away what was said at the foot", in_foot=False),
     Action("engines", "enter", "item", "open", "open the page of the engine or machine"),
+    Action("engines", "w", "write('log')", "log", "log work done on it"),
+    Action("engines", "r", "write('reading')", "reading", "write down what its meter shows"),
+    Action("engines", "x", "more", "more", "write down a status, a move or a new meter of it"),
     Action("engines", "slash", "find", "find", "show only those that hold some words"),
     Action("engines", "n", "to_group(1)", "next group", "go to the next site", in_foot=False),
     Action("engines", "p", "to_group(-1)", "group before", "go to the site before", in_foot=False),
@@ -57,11 +71,42 @@ ACTIONS = (
     Action("item", "m", "part('meters')", "meters", "show meters, with the plot; again for the next meter"),
     Action("item", "l", "part('lines')", "lines", "show what it needs next"),
     Action("item", "h", "part('history')", "history", "show all that was done to it"),
+    Action("item", "w", "write('log')", "log", "log work done on it"),
+    Action("item", "r", "write('reading')", "reading", "write down what its meter shows"),
+    Action("item", "o", "write('defer')", "defer", "put off the line under the cursor", in_foot=False),
+    Action("item", "x", "more", "more", "write down a status, a move or a new meter of it"),
+    Action("item", "c", "entry('correct')", "correct", "correct the entry under the cursor of the history"),
+    Action("item", "v", "entry('void')", "take back", "take back the entry under the cursor: nothing of it is true"),
     Action("item", "left", "turn(-1)", "left", "turn to the part on the left", in_foot=False),
     Action("item", "right", "turn(1)", "right", "turn to the part on the right", in_foot=False),
     Action("item", "enter", "working", "working", "show how the line comes about", in_foot=False),
     Action("working", "escape", "back", "back", "go back to where you came from"),
     Action("working", "e", "item", "engine", "open the page of the line's engine or machine"),
+    Action("more", "enter", "choose", "open", "write down what is under the cursor"),
+    Action("more", "l", "write('lay-up')", "lay up", "it is laid up for a while", in_foot=False),
+    Action(
+        "more", "r", "write('return')", "return", "it returns to service; what waits for that is shown", in_foot=False
+    ),
+    Action("more", "s", "write('stand-down')", "stand down", "it is not to be run", in_foot=False),
+    Action("more", "w", "write('withdraw')", "withdraw", "it leaves the fleet; its history stays", in_foot=False),
+    Action("more", "m", "write('move')", "move", "it goes into another machine, or out of its own", in_foot=False),
+    Action("more", "n", "write('swap')", "new meter", "its meter was replaced by another", in_foot=False),
+    Action("more", "escape,x", "back", "back", "go back to where you came from"),
+    Action("form", "ctrl+s", "store", "store", "write it down"),
+    Action("form", "enter,down", "next(1)", "next field", "go to the next field"),
+    Action("form", "up", "next(-1)", "field before", "go to the field before", in_foot=False),
+    Action(
+        "form",
+        "right",
+        "take",
+        "take name",
+        "take the first name suggested, at the end of what is typed",
+        in_foot=False,
+    ),
+    Action("form", "space", "say_yes", "yes or no", "change a yes to a no and back", in_foot=False),
+    Action("form", "ctrl+n", "anew", "begin anew", "throw away what was typed and begin anew"),
+    Action("form", "f1", "help", "keys", "show the keys of where you are"),
+    Action("form", "escape", "back", "back", "leave; what is typed stays for the next time"),
     Action("narrow", "enter,space", "choose", "choose", "choose what is under the cursor, or no longer"),
     Action("narrow", "n", "to_group(1)", "next group", "go to the next heading", in_foot=False),
     Action("narrow", "p", "to_group(-1)", "group before", "go to the heading before", in_foot=False),
@@ -80,7 +125,9 @@ def actions_of(place: str) -> tuple[Action, ...]:
     """Give what keys do in a place, those good everywhere last and only where the place has no other use for the key."""
     own = [action for action in ACTIONS if action.place == place]
     taken = {key for action in own for key in action.key.split(",")}
-    shared = [a for a in ACTIONS if a.place == EVERYWHERE and place != EVERYWHERE and a.key not in taken]
+    shared = [
+        a for a in ACTIONS if a.place == EVERYWHERE and place not in {EVERYWHERE, *TYPED_IN} and a.key not in taken
+    ]
     return (*own, *shared)
 
 

@@ -9,7 +9,8 @@ from textual.app import App, SystemCommand
 from textual.screen import Screen
 
 from fleetcare.errors import FleetError
-from fleetcare.tui.actions import EVERYWHERE, actions_of, bindings, called
+from fleetcare.tui.actions import ACTIONS, EVERYWHERE, TYPED_IN, actions_of, bindings, called
+from fleetcare.tui.drafts_kept import KeptDrafts
 from fleetcare.tui.frame import FramedScreen
 from fleetcare.tui.looks import BAY, OFFICE, SIXTEEN
 from fleetcare.tui.screens.due import DueScreen
@@ -24,6 +25,9 @@ def _engines() -> "Screen[None]":
     from fleetcare.tui.screens.engines import EnginesScreen  # loaded when the view is first opened
 
     return EnginesScreen()
+
+
+_SHARED = {action.method.partition("(")[0] for action in ACTIONS if action.place == EVERYWHERE}
 
 
 class FleetApp(App[None]):
@@ -41,10 +45,17 @@ class FleetApp(App[None]):
         super().__init__(ansi_color=True if os.environ.get("NO_COLOR") else None)
         self.context = context
         self.trouble: FleetError | None = None
+        self.drafts = KeptDrafts(context.drafts_folder)
+        self.shift: dict[str, str] = {}  # what is filled in again on the next form, until the screens are left
         for theme in (BAY, OFFICE, SIXTEEN):
             self.register_theme(theme)
         few = self.console.color_system in {None, "standard", "windows"}
         self.theme = (SIXTEEN if few or self.no_color else BAY).name
+
+    def check_action(self, action: str, parameters: tuple[object, ...]) -> bool | None:
+        """Let no letter do anything where letters are typed."""
+        is_typed_in = isinstance(self.screen, FramedScreen) and self.screen.place in TYPED_IN
+        return not (is_typed_in and action in _SHARED)
 
     def action_view(self, view: str) -> None:
         """Bring a view to the front."""

@@ -7,7 +7,7 @@ from textual.containers import Horizontal
 from textual.widgets import Input, Static
 
 from fleetcare.tui.frame import Notice
-from fleetcare.tui.loading import LoadingScreen
+from fleetcare.tui.writing import WritingScreen
 
 
 class FindLine(Input):
@@ -35,7 +35,7 @@ class FindBar(Horizontal):
         super().__init__(Static("find"), FindLine(text))
 
 
-class FindingScreen(LoadingScreen):
+class FindingScreen(WritingScreen):
     """A screen with a line to type words in."""
 
     def __init__(self) -> None:

@@ -8,13 +8,15 @@ from fleetcare.tui.app import FleetApp
 from fleetcare.tui.frame import FramedScreen
 from fleetcare.tui.screens.due import DueScreen
 from fleetcare.tui.screens.engines import EnginesScreen
+from fleetcare.tui.screens.form import FormScreen
 from fleetcare.tui.screens.item import ItemScreen
 from fleetcare.tui.screens.keys import KeysScreen
+from fleetcare.tui.screens.more import MoreScreen
 from fleetcare.tui.screens.narrow import NarrowScreen
 from fleetcare.tui.screens.working import WorkingScreen
 from tests.tui.conftest import Opened, line_with, press, seen, settle_down
 
-SCREENS = (DueScreen, EnginesScreen, ItemScreen, KeysScreen, NarrowScreen, WorkingScreen)
+SCREENS = (DueScreen, EnginesScreen, FormScreen, ItemScreen, KeysScreen, MoreScreen, NarrowScreen, WorkingScreen)
 
 
 def test_every_place_is_a_screen_and_every_screen_a_place() -> None:

@@ -43,6 +43,11 @@ SCREENS = {
     "meters-large": Picture(LARGE, ("down", "e", "m")),
     "lines": Picture(SMALL, ("e", "l")),
     "history": Picture(SMALL, ("e", "h", "down")),
+    "log": Picture(SMALL, ("down", "w", *"30", "ctrl+s")),
+    "log-no-colour": Picture(SMALL, ("down", "w", *"30x", "ctrl+s"), {"NO_COLOR": "1"}),
+    "log-large": Picture(LARGE, ("down", "w", *"305", "enter", *"f")),
+    "return": Picture(SMALL, ("x", "r")),
+    "more": Picture(SMALL, ("x",)),
 }
 
 

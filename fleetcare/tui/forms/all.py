@@ -5,6 +5,5 @@ from fleetcare.tui.forms.standing import LAY_UP, MOVE, RETURN, STAND_DOWN, WITHD
 from fleetcare.tui.forms.work import CORRECT, DEFER, LOG, VOID
 
 FORMS = {
-    form.name: form
-    for form in (LOG, CORRECT, VOID, DEFER, READING, SWAP, LAY_UP, RETURN, STAND_DOWN, WITHDRAW, MOVE)
+    form.name: form for form in (LOG, CORRECT, VOID, DEFER, READING, SWAP, LAY_UP, RETURN, STAND_DOWN, WITHDRAW, MOVE)
 }

@@ -16,8 +16,11 @@ if TYPE_CHECKING:
     from fleetcare.operations.entering import Entered
     from fleetcare.operations.form_facts import FormFacts
 
+METERS = "meters"
+"""What a field of dial figures names as known: what its meters showed last."""
+
 _OPTION = re.compile(r"--([a-z][a-z-]+)(?: [A-Z][A-Z_|:]*)?")
-_SHORTEST = 3  # letters of a value that tell, where an error holds them, which field it is about
+_FIGURE = re.compile(r"^([0-9][0-9.]*) ?[A-Za-z]+$")
 
 
 @dataclass(frozen=True, slots=True)
@@ -53,12 +56,16 @@ class Field:
 
 @dataclass(frozen=True, slots=True)
 class Answer:
-    """One answer to a doubt: its key, its words, and what it says to the operation; or the form it leads to."""
+    """One answer to a doubt: its key, its words, and what it says to the operation; or the form it leads to.
+
+    That form is stored first, or with `is_instead` in the place of this one.
+    """
 
     key: str
     words: str
     says: Mapping[str, bool] = field(default_factory=dict)
     leads_to: str = ""
+    is_instead: bool = False
 
 
 @dataclass(frozen=True, slots=True)
@@ -75,9 +82,7 @@ class Form:
     draft: "Callable[[], type[Draft]]"
     store: "Callable[[Session, Any, date, Mapping[str, bool]], Entered]"
     fixed: "Callable[[Subject, date], Mapping[str, object]]" = lambda subject, on: {"tag": subject.tag}
-    start: "Callable[[FormFacts, Subject, date], Mapping[str, str]]" = lambda facts, subject, on: {
-        "on": on.isoformat()
-    }
+    start: "Callable[[FormFacts, Subject, date], Mapping[str, str]]" = lambda facts, subject, on: {"on": on.isoformat()}
     above: "Callable[[FormFacts], tuple[str, Sequence[str]]]" = lambda facts: ("", ())
     answers: tuple[Answer, ...] = ()
     only_changes: bool = False
@@ -87,12 +92,18 @@ class Form:
         return self.title.format(tag=subject.tag, task=subject.task, entry=subject.entry)
 
     def field_of(self, error: FleetError, values: Mapping[str, str]) -> str:
-        """Name the field an error is about, as far as its words tell; "" where they do not."""
+        """Name the field an error is about: the option it names, else what it says first of what was typed.
+
+        What is said of meters is about the first field of figures. "" where the words do not tell.
+        """
         said = f"{error.detail} {error.remedy}"
         named = [match.replace("-", "_") for match in _OPTION.findall(said)]
         own = [one.name for one in self.fields]
-        by_name = next((name for name in named if name in own), "")
-        return by_name or next((name for name in own if _is_said(values.get(name, ""), error.detail)), "")
+        places = {name: place for name in own if (place := _place_of(values.get(name, ""), error.detail)) is not None}
+        figures = [one.name for one in self.fields if one.known == METERS and "meter" in error.detail]
+        return next(
+            iter([name for name in named if name in own] or sorted(places, key=places.__getitem__) or figures), ""
+        )
 
     def in_own_words(self, text: str) -> str:
         """Say fields by their labels where an error names options."""
@@ -100,8 +111,11 @@ class Form:
         return _OPTION.sub(lambda match: labels.get(match[1].replace("-", "_"), match[0]), text)
 
 
-def _is_said(value: str, detail: str) -> bool:
-    return any(len(part.strip()) >= _SHORTEST and part.strip() in detail for part in value.split(";"))
+def _place_of(value: str, detail: str) -> int | None:
+    """Tell where an error says a value, or one of several; of a figure its number will do."""
+    words = [_FIGURE.sub(r"\1", part.strip()) for part in value.split(";") if part.strip()]
+    found = (re.search(rf"(?<![\w.]){re.escape(word)}(?![\w.])", detail) for word in words)
+    return min((match.start() for match in found if match), default=None)
 
 
 BY = Field("by", "By", "who did it or says so; filled in again until you leave", "people", kept_for_shift=True)

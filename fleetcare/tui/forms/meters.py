@@ -4,8 +4,8 @@ from collections.abc import Mapping
 from datetime import date
 from typing import TYPE_CHECKING
 
-from fleetcare.tui.forms.base import BY, NOTE, ON, Field, Form
-from fleetcare.tui.forms.work import FIGURE_ANSWERS
+from fleetcare.tui.forms.base import BY, METERS, NOTE, ON, Answer, Field, Form
+from fleetcare.tui.forms.work import RIGHT, WENT_ROUND
 
 if TYPE_CHECKING:
     from sqlalchemy.orm import Session
@@ -42,17 +42,22 @@ def _swap(session: "Session", draft: "SwapDraft", today: date, said: Mapping[str
 READING = Form(
     "reading",
     "Reading of {tag}",
-    (Field("value", "Meter", "what the dial shows; of two meters with its unit, such as 1250h"), ON, BY, NOTE),
+    (
+        Field("value", "Meter", "what the dial shows, such as 1250; of two meters 1250h", METERS),
+        ON,
+        BY,
+        NOTE,
+    ),
     _reading_draft,
     _read,
-    answers=FIGURE_ANSWERS,
+    answers=(RIGHT, WENT_ROUND, Answer("n", "it is a new meter", leads_to="swap", is_instead=True)),
 )
 SWAP = Form(
     "swap",
     "A new meter on {tag}",
     (
         ON,
-        Field("old_last", "Old one", "the last figure of the old meter"),
+        Field("old_last", "Old one", "the last figure of the old meter", METERS),
         Field("new_first", "New one", "the first figure of the new meter"),
         Field("unmetered", "Unmetered", "run between the two without being counted, such as 150h; empty for none"),
         Field("value", "Shows now", "what the new one shows, if it ran since that day"),

@@ -56,12 +56,8 @@ def _move(session: "Session", draft: "FitDraft", today: date, said: Mapping[str,
 _FIELDS = (ON, WHY, BY)
 
 LAY_UP = Form("lay-up", "Lay up {tag}", _FIELDS, _status_draft, _becomes(Status.LAID_UP))
-RETURN = Form(
-    "return", "Return {tag} to service", _FIELDS, _return_draft, _becomes(Status.IN_SERVICE), above=_waiting
-)
-STAND_DOWN = Form(
-    "stand-down", "Stand down {tag}: not to be run", _FIELDS, _status_draft, _becomes(Status.STOOD_DOWN)
-)
+RETURN = Form("return", "Return {tag} to service", _FIELDS, _return_draft, _becomes(Status.IN_SERVICE), above=_waiting)
+STAND_DOWN = Form("stand-down", "Stand down {tag}: not to be run", _FIELDS, _status_draft, _becomes(Status.STOOD_DOWN))
 WITHDRAW = Form(
     "withdraw",
     "Withdraw {tag}: no lines any more, its history stays",

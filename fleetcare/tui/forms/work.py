@@ -4,7 +4,7 @@ from collections.abc import Mapping
 from datetime import date
 from typing import TYPE_CHECKING
 
-from fleetcare.tui.forms.base import BY, NOTE, ON, WHY, Answer, Field, Form, Subject
+from fleetcare.tui.forms.base import BY, METERS, NOTE, ON, WHY, Answer, Field, Form, Subject
 
 if TYPE_CHECKING:
     from sqlalchemy.orm import Session
@@ -15,18 +15,21 @@ if TYPE_CHECKING:
     from fleetcare.operations.form_facts import FormFacts
 
 TASKS = Field("task", "Tasks", "what was done; several with ; between", "task", several=True)
-AT = Field("at", "Meter", "what the dial showed; of two meters each with its unit, such as 1234h; 5600km")
+AT = Field(
+    "at",
+    "Meter",
+    "what the dial showed, such as 1234; of two meters 1234h; 5600km",
+    METERS,
+    several=True,
+)
 PART = Field("part", "Parts", "parts used, such as Oil filter:1; several with ; between", "parts", several=True)
 PART_DONE = Field("part_done", "In part", "done in part only, which closes nothing", is_yes_no=True)
 TOP_UP = Field("top_up", "Topped up", "oil, such as 8L, 2galus or 2galimp")
 REPAIR = Field("repair", "Repair", "what was repaired")
 DEFECT = Field("defect", "Defect", "a defect seen")
 
-FIGURE_ANSWERS = (
-    Answer("r", "it is right as it stands; what does not fit it counts no more", {"sure": True}),
-    Answer("g", "the dial went round to 0", {"rolled_over": True}),
-    Answer("n", "a new meter: write that down first", leads_to="swap"),
-)
+RIGHT = Answer("r", "it is right as it stands; older readings that do not fit it count no more", {"sure": True})
+WENT_ROUND = Answer("g", "the dial went round to 0", {"rolled_over": True})
 
 
 def _log_draft() -> "type[Draft]":
@@ -83,13 +86,13 @@ LOG = Form(
         REPAIR,
         DEFECT,
         Field("follow_up", "Follow-up", "raise a follow-up from the defect; it stands in the due list", is_yes_no=True),
-        Field("until", "... until", "last day for the follow-up; left empty it is due at once"),
+        Field("until", "… until", "last day for the follow-up; left empty it is due at once"),
         NOTE,
     ),
     _log_draft,
     _log,
     start=_log_start,
-    answers=FIGURE_ANSWERS,
+    answers=(RIGHT, WENT_ROUND, Answer("n", "it is a new meter; write that down first", leads_to="swap")),
 )
 CORRECT = Form(
     "correct",

@@ -20,6 +20,8 @@ from fleetcare.tui.widgets.long_list import LongList
 if TYPE_CHECKING:
     from sqlalchemy import Connection
 
+    from fleetcare.tui.forms.base import Subject
+
 EMPTY = (
     "There is nothing here yet.\n \n"
     "Add an engine and what it needs in another window; it appears here by itself:\n \n"
@@ -160,6 +162,13 @@ class DueScreen(FindingScreen):
     def on_long_list_opened(self) -> None:
         """Open the working of a line."""
         self.action_working()
+
+    def subject(self) -> "Subject | None":
+        """Give the line under the cursor."""
+        from fleetcare.tui.forms.base import Subject
+
+        line = self.rows.current
+        return Subject(line.row.engine, line.row.task) if line is not None else None
 
     def action_working(self) -> None:
         """Show how the line under the cursor comes about."""

@@ -18,6 +18,7 @@ if TYPE_CHECKING:
     from sqlalchemy import Connection
 
     from fleetcare.operations.yard import YardRow
+    from fleetcare.tui.forms.base import Subject
 
 _WITHDRAWN = "withdrawn"
 
@@ -85,6 +86,13 @@ class EnginesScreen(FindingScreen):
     def on_long_list_opened(self) -> None:
         """Open a page with the mouse."""
         self.action_item()
+
+    def subject(self) -> "Subject | None":
+        """Give what the cursor is on."""
+        from fleetcare.tui.forms.base import Subject
+
+        row: YardRow | None = self.query_one(LongList).current
+        return Subject(row.tag) if row is not None else None
 
     def action_item(self) -> None:
         """Open the page of the engine or machine under the cursor."""

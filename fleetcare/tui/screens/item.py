@@ -11,7 +11,6 @@ from fleetcare.domain.cautions import GENERAL
 from fleetcare.domain.engines import Status, status_on
 from fleetcare.domain.printable import clean
 from fleetcare.tui.frame import TopBar, say_day
-from fleetcare.tui.loading import LoadingScreen
 from fleetcare.tui.screens.due import COLUMNS, in_words
 from fleetcare.tui.widgets.columns import Cell, Column, Section
 from fleetcare.tui.widgets.detail import Detail
@@ -19,6 +18,7 @@ from fleetcare.tui.widgets.long_list import LongList
 from fleetcare.tui.widgets.plot import Line, Plot, PlotView
 from fleetcare.tui.widgets.sheet import Block, Sheet
 from fleetcare.tui.widgets.text import columns_of, fit
+from fleetcare.tui.writing import WritingScreen
 
 if TYPE_CHECKING:
     from datetime import date
@@ -29,6 +29,7 @@ if TYPE_CHECKING:
     from fleetcare.operations.page import FullPage
     from fleetcare.operations.review import ReviewLine
     from fleetcare.operations.show import HistoryEntry, ReadingLine
+    from fleetcare.tui.forms.base import Subject
 
 _STANDING = {
     Status.IN_SERVICE: "",
@@ -87,7 +88,7 @@ class PartsBar(Widget):
         )
 
 
-class ItemScreen(LoadingScreen):
+class ItemScreen(WritingScreen):
     """What `fleetcare show TAG` prints, in parts."""
 
     place = "item"
@@ -165,6 +166,23 @@ class ItemScreen(LoadingScreen):
     def action_turn(self, step: int) -> None:
         """Turn to the part beside."""
         self.action_part(PARTS[(PARTS.index(self.part) + step) % len(PARTS)])
+
+    def subject(self) -> "Subject":
+        """Give the engine or machine, with the line under the cursor where lines are in front."""
+        from fleetcare.tui.forms.base import Subject
+
+        line: ReviewLine | None = self.query_one("#lines LongList", LongList).current
+        return Subject(self.tag, line.row.task if line is not None and self.part == "lines" else "")
+
+    def action_entry(self, form: str) -> None:
+        """Open a form on the entry under the cursor of the history."""
+        from fleetcare.tui.forms.base import Subject
+
+        entry: HistoryEntry | None = self.query_one("#history LongList", LongList).current
+        if self.part == "history" and entry is not None:
+            self.open_form(form, Subject(self.tag, entry=entry.number))
+        else:
+            self.notice.say("Turn to the history (h) and put the cursor on an entry.")
 
     def action_working(self) -> None:
         """Show how the line under the cursor comes about."""

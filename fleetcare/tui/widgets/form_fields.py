@@ -50,25 +50,35 @@ class YesNo(Widget, can_focus=True):
     class Changed(Message):
         """The person changed it."""
 
+        def __init__(self, by: "YesNo") -> None:
+            super().__init__()
+            self.by = by
+
     def render(self) -> Content:
         """Draw box and word."""
         return Content(f"[{'x' if self.value == 'yes' else ' '}] {self.value}")
 
     def check_consume_key(self, key: str, character: str | None) -> bool:
         """Keep letters from meaning anything else while the cursor is here."""
-        return character is not None and character.isprintable()
+        return character is not None and character.isprintable() and key != "space"
 
     def on_key(self, event: events.Key) -> None:
-        """Change it."""
-        said = {"space": "no" if self.value == "yes" else "yes", "y": "yes", "n": "no"}.get(event.key)
-        if said is not None and said != self.value:
-            self.value = said
-            self.post_message(self.Changed())
+        """Say it by its first letter."""
+        self.say({"y": "yes", "n": "no"}.get(event.key, self.value))
 
     def on_click(self) -> None:
         """Change it with the mouse."""
-        self.value = "no" if self.value == "yes" else "yes"
-        self.post_message(self.Changed())
+        self.turn()
+
+    def turn(self) -> None:
+        """Change a yes to a no and back."""
+        self.say("no" if self.value == "yes" else "yes")
+
+    def say(self, said: str) -> None:
+        """Say yes or no, as a person does."""
+        if said != self.value:
+            self.value = said
+            self.post_message(self.Changed(self))
 
     def action_next(self) -> None:
         """Go to the next line."""

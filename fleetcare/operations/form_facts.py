@@ -1,0 +1,114 @@
+"""What a form shows before anything is typed: whose it is, what its meters showed last, and names known."""
+
+from collections.abc import Mapping
+from dataclasses import dataclass, field
+from datetime import date
+from decimal import Decimal
+from typing import TYPE_CHECKING
+
+from fleetcare.domain.engines import status_on
+from fleetcare.domain.quantities import plain
+from fleetcare.errors import Refused
+from fleetcare.operations.due_words import notes, say_due
+from fleetcare.operations.rows import fetch
+from fleetcare.operations.show import item_page
+
+if TYPE_CHECKING:
+    from sqlalchemy import Connection
+
+    from fleetcare.rules.due.row import DueRow
+    from fleetcare.rules.meters import CounterHistory
+
+
+@dataclass(frozen=True, slots=True)
+class FormFacts:
+    """`known` are names by what they name, likeliest first; `waiting` the lines of the item, worst first, said.
+
+    `sheets` names the sheet each task needs, for those that need one. `typed` is what an entry says, as typed.
+    """
+
+    whose: str
+    status: str
+    meters: str
+    known: Mapping[str, tuple[str, ...]]
+    waiting: tuple[str, ...] = ()
+    sheets: Mapping[str, str] = field(default_factory=dict)
+    typed: Mapping[str, str] = field(default_factory=dict)
+
+
+def form_facts(connection: "Connection", tag: str, on: date, entry: int | None = None) -> FormFacts:
+    """Load what a form on an engine or machine shows; refuses an unknown tag, and an entry there is not."""
+    page = item_page(connection, tag, on)
+    item = page.facts.item
+    due = [row.task for row in page.rows]
+    versions = {task.name: task.version_on(on) for task in page.facts.tasks if task.removed_on is None}
+    machine = f"in {item.machine}" if item.machine not in {"", item.tag} else ""
+    return FormFacts(
+        whose=", ".join(word for word in (f"{item.name} {machine}".strip(), item.site) if word),
+        status=status_on(item.spells, on) if item.is_engine else "",
+        meters="; ".join(filter(None, map(_shown_last, page.facts.counters.values()))),
+        known={
+            "task": tuple(dict.fromkeys([*due, *versions])),
+            "people": _names(connection, "select name from person order by id desc"),
+            "machines": _names(
+                connection, "select tag from item where not is_engine and withdrawn_on is null order by tag"
+            ),
+            "parts": _names(connection, "select distinct name from log_part order by name"),
+        },
+        waiting=tuple(map(_waiting, page.rows)),
+        sheets={name: version.needs_sheet for name, version in versions.items() if version.needs_sheet},
+        typed=entry_as_typed(connection, entry) if entry is not None else {},
+    )
+
+
+def entry_as_typed(connection: "Connection", number: int) -> dict[str, str]:
+    """Give what an entry says as one would type it, by the fields of a correction; refuses a number that is no entry."""
+    rows = fetch(
+        connection,
+        "select entry.\"on\", entry.kind, entry.title, entry.note, coalesce(person.name, ''), entry.litres,"
+        " entry.litres_unit, entry.component, entry.downtime_hours from log_entry entry"
+        " left join person on person.id = entry.person_id where entry.id = :id",
+        id=number,
+    )
+    if not rows:
+        raise Refused(f"there is no entry {number}", "see the history for the numbers of its entries")
+    on, kind, title, note, by, litres, unit, component, downtime = rows[0]
+    tasks = fetch(
+        connection,
+        "select task.name, part_done from log_task join task on task.id = log_task.task_id"
+        " where entry_id = :id and covered_by_id is null order by log_task.id",
+        id=number,
+    )
+    figures = fetch(connection, "select value, unit from reading where entry_id = :id order by id", id=number)
+    parts = fetch(connection, "select name, quantity from log_part where entry_id = :id order by id", id=number)
+    return {
+        "on": on,
+        "at": "; ".join(f"{plain(Decimal(value))}{unit}" for value, unit in figures),
+        "by": by,
+        "note": note,
+        "task": "; ".join(name for name, _ in tasks),
+        "part_done": "yes" if any(part for _, part in tasks) else "no",
+        "part": "; ".join(f"{name}:{plain(Decimal(quantity))}" for name, quantity in parts),
+        "component": component,
+        "downtime": f"{plain(Decimal(downtime))}h" if downtime else "",
+        "top_up": f"{plain(Decimal(litres))}{unit}" if litres else "",
+        "repair": title if kind == "repair" else "",
+        "defect": title if kind == "defect" else "",
+    }
+
+
+def _waiting(row: "DueRow") -> str:
+    """Say a line as it stands now, without its engine's status, which all lines share."""
+    words = [row.state, say_due(row), *notes(row)]
+    return f"{row.task}: {'; '.join(dict.fromkeys(word for word in words if not word.startswith(row.engine_status)))}"
+
+
+def _shown_last(counter: "CounterHistory") -> str:
+    """Say what a meter showed last, as the dial now counting shows it."""
+    latest = counter.latest
+    dial = counter.dial_of(latest.life) if latest is not None else None
+    return f"{plain(dial)} {counter.unit} on {latest.on.isoformat()}" if latest is not None and dial is not None else ""
+
+
+def _names(connection: "Connection", query: str) -> tuple[str, ...]:
+    return tuple(row[0] for row in fetch(connection, query))

@@ -1,0 +1,225 @@
+"""A screen with fields to fill in: what is typed is kept as it is typed, and names known are suggested."""
+
+from collections.abc import Iterable
+from typing import TYPE_CHECKING
+
+from textual.containers import VerticalScroll
+from textual.events import DescendantFocus
+from textual.widget import Widget
+
+from fleetcare.errors import FleetError, Refused
+from fleetcare.tui.drafts_kept import DraftKey
+from fleetcare.tui.forms.base import METERS, Form, Subject
+from fleetcare.tui.frame import TopBar, say_day
+from fleetcare.tui.loading import LoadingScreen
+from fleetcare.tui.widgets.detail import Detail
+from fleetcare.tui.widgets.form_fields import FieldRow, TextField, YesNo
+from fleetcare.tui.widgets.form_head import FormHead, FormTitle
+from fleetcare.tui.widgets.question import Question
+
+if TYPE_CHECKING:
+    from datetime import date
+
+    from sqlalchemy import Connection
+    from textual.timer import Timer
+
+    from fleetcare.operations.form_facts import FormFacts
+
+KEEP_AFTER = 0.3
+"""Seconds after a key until what is typed is kept."""
+
+_LEFT = "As you left it; Ctrl N throws it away and begins anew."
+_MOST_NAMES = 12
+
+
+class FillingScreen(LoadingScreen):
+    """The fields of a form on a subject, as somebody fills them in."""
+
+    place = "form"
+    AUTO_FOCUS = "TextField, YesNo"
+
+    def __init__(self, form: Form, subject: Subject) -> None:
+        super().__init__()
+        self.form, self.subject = form, subject
+        self.rows = {field.name: FieldRow(field) for field in form.fields}
+        self.facts: FormFacts | None = None
+        self.start: dict[str, str] = {}
+        self.is_done = False
+        self._touched: set[str] = set()
+        self._timer: Timer | None = None
+
+    def body(self) -> Iterable[Widget]:
+        """What it is about, its fields, help on the one the cursor is in, and the place for a question."""
+        yield FormTitle(self.form.heading(self.subject))
+        yield VerticalScroll(FormHead(), *self.rows.values(), can_focus=False)
+        yield Detail()
+        yield Question()
+
+    @property
+    def key(self) -> DraftKey:
+        """What is typed here is kept under this."""
+        return DraftKey(str(self.context.path.absolute()), self.form.name, self.subject.words())
+
+    @property
+    def values(self) -> dict[str, str]:
+        """What stands in the fields."""
+        return {name: row.value for name, row in self.rows.items()}
+
+    def on_mount(self) -> None:
+        """Fill in what was kept."""
+        super().on_mount()
+        self.query_one(TopBar).tell(say_day(self.context.today()))
+        try:
+            kept = self.fleet_app.drafts.find(self.key)
+        except Refused as error:
+            self.notice.say(*error.lines(), is_wrong=True)
+            return
+        for name in kept.keys() & self.rows.keys():
+            self.rows[name].fill(kept[name])
+            self._touched.add(name)
+        if kept:
+            self.notice.say(_LEFT)
+
+    def read(self, connection: "Connection", on: "date", *, is_future: bool) -> "FormFacts":
+        """Load what the form shows before anything is typed."""
+        from fleetcare.operations.form_facts import form_facts
+
+        return form_facts(connection, self.subject.tag, on, self.subject.entry)
+
+    def show(self, found: "FormFacts") -> None:
+        """Fill in what it opens with, where nobody typed; when the file changed only what is known changes."""
+        is_first, self.facts = self.facts is None, found
+        self.query_one(FormTitle).tell(found.whose)
+        self.query_one(FormHead).tell(*self.form.above(found))
+        if is_first:
+            kept = {
+                name: self.fleet_app.shift.get(name, "") for name, row in self.rows.items() if row.field.kept_for_shift
+            }
+            self.start = {**kept, **self.form.start(found, self.subject, self.day), **self.subject.preset}
+            self._fill()
+        self._help()
+
+    def on_input_changed(self, event: TextField.Changed) -> None:
+        """Keep what is typed, and suggest by it."""
+        self._typed(event.input)
+
+    def on_yes_no_changed(self, event: YesNo.Changed) -> None:
+        """Keep what was said."""
+        self._typed(event.by)
+
+    def on_text_field_taken(self) -> None:
+        """Take a name at the end of what is typed."""
+        self.action_take()
+
+    def action_say_yes(self) -> None:
+        """Change the yes or no the cursor is on."""
+        if isinstance(self.focused, YesNo):
+            self.focused.turn()
+
+    def action_take(self) -> None:
+        """Take the first name suggested."""
+        row, names = self._here(), self._names()
+        if row is not None and names:
+            row.take(names[0])
+
+    def on_descendant_focus(self, event: DescendantFocus) -> None:
+        """Mark the line the cursor is in and say what belongs there."""
+        for row in self.rows.values():
+            row.mark(row.editor is event.widget)
+        self._help()
+
+    def on_unmount(self) -> None:
+        """Keep what is typed however the screen is left."""
+        self._keep()
+
+    def action_next(self, step: int) -> None:
+        """Go to the next field or the one before."""
+        if step > 0:
+            self.focus_next("TextField, YesNo")
+        else:
+            self.focus_previous("TextField, YesNo")
+
+    def action_anew(self) -> None:
+        """Throw away what was typed and begin anew."""
+        self.fleet_app.drafts.drop(self.key)
+        self._touched.clear()
+        self.clear_wrong()
+        self._fill()
+
+    def action_help(self) -> None:
+        """Show the keys."""
+        self.fleet_app.action_keys()
+
+    def clear_wrong(self) -> None:
+        """Say no more what was wrong."""
+        self.notice.say()
+        for row in self.rows.values():
+            row.say_wrong("")
+
+    def say_wrong(self, name: str, error: FleetError) -> None:
+        """Say an error beside the field of a name; one of no field at the foot, the cursor going where it tells."""
+        text = self.form.in_own_words("; ".join(error.lines()))
+        if name in self.rows:
+            self.rows[name].say_wrong(text)
+        else:
+            self.notice.say(text, is_wrong=True)
+            name = self.form.field_of(error, self.values)
+        if name in self.rows:
+            self.rows[name].editor.focus()
+
+    def finish(self) -> None:
+        """Keep nothing any more: it was stored."""
+        self.is_done = True
+        self.fleet_app.drafts.drop(self.key)
+
+    def _fill(self) -> None:
+        """Put into untouched fields what they open with, and the cursor where something is still to be typed."""
+        for name, row in self.rows.items():
+            if name not in self._touched:
+                row.fill(self.start.get(name, ""))
+        if not self._touched:
+            first = next((row for row in self.rows.values() if not row.value), None)
+            (first or next(iter(self.rows.values()))).editor.focus()
+
+    def _typed(self, editor: Widget) -> None:
+        self._touched |= {name for name, row in self.rows.items() if row.editor is editor}
+        if self._timer is None:
+            self._timer = self.set_timer(KEEP_AFTER, self._keep)
+        self._help()
+
+    def _keep(self) -> None:
+        """Keep what differs from what the form opened with."""
+        self._timer = None
+        if self.is_done or not self._touched:
+            return
+        typed = {name: value for name, value in self.values.items() if name in self._touched}
+        try:
+            self.fleet_app.drafts.keep(self.key, typed)
+        except Refused as error:
+            self.notice.say(*error.lines(), is_wrong=True)
+
+    def _here(self) -> FieldRow | None:
+        return next((row for row in self.rows.values() if row.editor is self.focused), None)
+
+    def _names(self) -> list[str]:
+        """Give the names known for the field the cursor is in that hold what is typed, those that begin so first."""
+        row = self._here()
+        if row is None or self.facts is None:
+            return []
+        typed = row.typed.casefold()
+        held = {part.strip().casefold() for part in row.value.split(";")}
+        fitting = [
+            n for n in self.facts.known.get(row.field.known, ()) if typed in n.casefold() and n.casefold() not in held
+        ]
+        return sorted(fitting, key=lambda name: not name.casefold().startswith(typed))
+
+    def _help(self) -> None:
+        """Say what belongs in the field the cursor is in."""
+        row = self._here()
+        if row is None:
+            return
+        names = self._names()[:_MOST_NAMES]
+        known = f"→ takes {names[0]}" if names else ""
+        others = f"; also {', '.join(names[1:])}" if names[1:] else ""
+        shown = f"showed last: {self.facts.meters}" if row.field.known == METERS and self.facts else ""
+        self.query_one(Detail).tell((f"{row.field.label}: {row.field.tells}", "quiet"), (known + others or shown, ""))

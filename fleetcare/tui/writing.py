@@ -1,0 +1,46 @@
+"""Screens from which something is written down about what the cursor is on."""
+
+from collections.abc import Sequence
+from typing import TYPE_CHECKING
+
+from fleetcare.tui.loading import LoadingScreen
+
+if TYPE_CHECKING:
+    from fleetcare.tui.forms.base import Subject
+
+
+class WritingScreen(LoadingScreen):
+    """A screen that opens forms, and says afterwards what they stored."""
+
+    def subject(self) -> "Subject | None":
+        """Give what the cursor is on, None where it is on nothing."""
+        raise NotImplementedError
+
+    def action_write(self, name: str) -> None:
+        """Open the form of a name on what the cursor is on."""
+        subject = self.subject()
+        if subject is not None:
+            self.open_form(name, subject)
+
+    def open_form(self, name: str, subject: "Subject") -> None:
+        """Open the form of a name on a subject."""
+        from fleetcare.tui.forms.all import FORMS
+        from fleetcare.tui.screens.form import FormScreen
+
+        self.app.push_screen(FormScreen(FORMS[name], subject), self._written)
+
+    def action_more(self) -> None:
+        """Choose what else to write down about what the cursor is on."""
+        from fleetcare.tui.screens.more import MoreScreen
+
+        subject = self.subject()
+        if subject is not None:
+            self.app.push_screen(MoreScreen(subject.tag), self._chosen)
+
+    def _chosen(self, name: str | None) -> None:
+        if name is not None:
+            self.action_write(name)
+
+    def _written(self, sentences: Sequence[str] | None) -> None:
+        if sentences is not None:
+            self.notice.say(" ".join(sentences))
