@@ -103,10 +103,13 @@ def last_visible_task(database: Path) -> tuple[str, int]:
     return asyncio.run(look())
 
 
-def paint(command: tuple[str, ...], text: str, times: int = 1) -> float:
-    """Give the seconds from the start of a command until a text is so many times in its terminal's output."""
-    with in_terminal(*command) as (_, terminal, begun):
-        return read_until(terminal, text, times) - begun
+def paint(command: tuple[str, ...], text: str, times: int = 1) -> tuple[float, float]:
+    """Give the seconds from the start of a command until a text is so often in its terminal's output.
+
+    First those of the clock, then those of the processor, which other work on the machine drags out less.
+    """
+    with in_terminal(*command) as (process, terminal, begun):
+        return read_until(terminal, text, times) - begun, _processor_seconds(process)
 
 
 def fleetcare(*words: str) -> tuple[str, ...]:
@@ -120,16 +123,20 @@ def paints(pairs: int) -> list[str]:
     ours, empty = fleetcare("--db", str(DEMO), "--as-of", ON), (sys.executable, "-c", EMPTY)
     paint(ours, row, count), paint(empty, "painted")  # one of each to warm the file cache
     times = [(paint(ours, row, count), paint(empty, "painted")) for _ in range(pairs)]
-    ratios = [ours / empty for ours, empty in times]
-    return [
-        f"{pairs} interleaved pairs, {os.cpu_count()} cores, Python {sys.version.split()[0]}; last row in sight: {row}",
-        f"due screen           median {median(ours for ours, _ in times):.3f} s",
-        f"empty app + sqlmodel median {median(empty for _, empty in times):.3f} s",
-        f"ratio                median {median(ratios):.2f} ({min(ratios):.2f} to {max(ratios):.2f}), goal 1.3",
+    lines = [
+        f"{pairs} interleaved pairs, {os.cpu_count()} cores, Python {sys.version.split()[0]}; last row in sight: {row}"
     ]
+    for number, what in enumerate(("by the clock", "of the processor")):
+        seconds = [(ours[number], empty[number]) for ours, empty in times]
+        ratios = [ours / empty for ours, empty in seconds]
+        lines += [
+            f"{what}: due {median(s[0] for s in seconds):.3f} s, empty app + sqlmodel {median(s[1] for s in seconds):.3f} s",
+            f"  ratio {median(ratios):.2f} ({min(ratios):.2f} to {max(ratios):.2f}), goal 1.3",
+        ]
+    return lines
 
 
-def lists(rounds: int = 40) -> list[str]:
+def lists(rounds: int = 200) -> list[str]:
     """Measure what showing and drawing a list costs, with 100,000 rows in memory and with 100, in turn."""
     columns: list[Column[tuple[int, str]]] = [
         Column("NUMBER", lambda row: str(row[0]), 6, 10, to_right=True),
@@ -152,16 +159,16 @@ def lists(rounds: int = 40) -> list[str]:
 
 def _drawn(rows: LongList[tuple[int, str]], values: list[tuple[int, str]]) -> float:
     rows.show([])
-    begun = time.perf_counter()
+    begun = time.process_time()
     rows.show([Section("", values)])
     for y in range(rows.size.height):
         rows.render_line(y)
-    return time.perf_counter() - begun
+    return time.process_time() - begun
 
 
 def demo() -> list[str]:
     """Measure the private copy of the demo fleet, until its due list stands."""
-    seconds = paint(fleetcare("demo", "--as-of", ON), "OVERDUE")
+    seconds, _ = paint(fleetcare("demo", "--as-of", ON), "OVERDUE")
     return [f"fleetcare demo: {seconds:.2f} s, goal 5"]
 
 
