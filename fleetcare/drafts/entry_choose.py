@@ -38,10 +38,10 @@ def choose(count: int, pieces: Sequence[Piece]) -> tuple[int, list[Piece]]:
         for laid, way in ways[at].items():
             for piece in starting.get(at, ()):
                 cost, after = _lay(laid, piece)
-                there = ways[piece.end].setdefault(after, _Way(way.cost + cost))
-                if way.cost + cost < there.cost:
-                    there.cost, there.steps = way.cost + cost, []
-                if way.cost + cost == there.cost:
+                there, spent = ways[piece.end].get(after), way.cost + cost
+                if there is None or spent < there.cost:
+                    ways[piece.end][after] = _Way(spent, [(at, laid, piece)])
+                elif spent == there.cost:
                     there.steps.append((at, laid, piece))
     ends = {laid: way.cost + _left_open(laid) for laid, way in ways[count].items()}
     least = min(ends.values())
@@ -53,8 +53,10 @@ def _without_doubtful(pieces: Sequence[Piece]) -> list[Piece]:
     firm = [piece for piece in pieces if piece.is_firm]
 
     def is_overruled(piece: Piece) -> bool:
+        if piece.is_firm:
+            return any(one.first <= piece.first and piece.end <= one.end and one.size > piece.size for one in firm)
         end = piece.first + 1 if piece.part in TEXTS.values() else piece.end
-        return not piece.is_firm and any(one.first < end and piece.first < one.end for one in firm)
+        return any(one.first < end and piece.first < one.end for one in firm)
 
     return [piece for piece in pieces if not is_overruled(piece)]
 

@@ -15,6 +15,7 @@ from fleetcare.drafts.entry_questions import (
     ask_about_unknown,
     ask_which,
     ask_whose,
+    different_ways,
 )
 from fleetcare.drafts.entry_understood import Taken, Understood
 from fleetcare.drafts.entry_vocabulary import ItemWords, Vocabulary
@@ -23,55 +24,37 @@ from fleetcare.drafts.entry_words import Word, split_words
 _CANNOT_BE_KEPT = re.compile("[\ud800-\udfff]")  # half a character: no file can hold it
 
 
-@dataclass(frozen=True, slots=True)
-class _Reading:
-    """One way to take the whole line: whose it is, where that is clear, how much it leaves open, and its pieces."""
-
-    item: ItemWords | None
-    cost: int
-    pieces: tuple[Piece, ...]
-
-
 def understand(text: str, vocabulary: Vocabulary) -> Understood:
     """Take a line apart. What can be two things, or nothing, is asked about and never guessed."""
     words = split_words(text)
-    readings = _readings(text, words, vocabulary)
-    least = min(reading.cost for reading in readings)
-    best = [reading for reading in readings if reading.cost == least]
-    found = sorted({piece for reading in best for piece in reading.pieces}, key=lambda piece: (piece.first, piece.said))
-    groups = list(_groups(found))
-    questions = [ask_which(text, words, group) for group in groups if len(group) > 1]
-    settled = [group[0] for group in groups if len(group) == 1]
-    if not any(piece.part is Part.TAG for piece in found):
-        questions.append(ask_whose(words, found, vocabulary))
-    line = _Line(text, words, found, settled, vocabulary)
+    groups = [(group, different_ways(group)) for group in _groups(_best_pieces(text, words, vocabulary))]
+    settled = [piece for _, ways in groups if len(ways) == 1 for piece in ways[0]]
+    possible = [piece for _, ways in groups for way in ways for piece in way]
+    line = _Line(text, words, possible, settled, vocabulary)
+    questions = [ask_which(text, words, group, ways) for group, ways in groups if len(ways) != 1]
     questions += line.general_questions()
-    items = {reading.item.tag: reading.item for reading in best if reading.item is not None}
-    figures = Figures()
-    if len(items) == 1:
-        (item,) = items.values()
+    figures, tags = Figures(), line.names(Part.TAG)
+    if len(tags) == 1:
+        item = vocabulary.item(tags[0])
         figures = line.figures(item)
         questions += [*ask_about_unknown(words, settled, item, vocabulary), *figures.questions]
         questions += [] if questions else line.last_questions(figures, item)
     return line.understood(figures, sorted(questions, key=lambda question: question.start))
 
 
-def _readings(text: str, words: Sequence[Word], vocabulary: Vocabulary) -> list[_Reading]:
-    """Read the line once for each of its words that can be a tag; as nobody's where none can."""
+def _best_pieces(text: str, words: Sequence[Word], vocabulary: Vocabulary) -> list[Piece]:
+    """Read the line once for each of its words that can be a tag, and give the pieces of the best readings."""
     tags = tag_pieces(words, vocabulary)
+    spans: list[tuple[int, int] | None] = [*sorted({(tag.first, tag.end) for tag in tags})]
     readings = []
-    for span in sorted({(tag.first, tag.end) for tag in tags}):
+    for span in spans or [None]:
         names = {tag.name for tag in tags if (tag.first, tag.end) == span}
         item = vocabulary.item(min(names)) if len(names) == 1 else None
         known = [replace(tag, is_firm=tag.is_firm or (tag.first, tag.end) == span) for tag in tags]
-        cost, chosen = choose(len(words), [*known, *pieces(text, words, vocabulary, item)])
-        has_tag = any(piece.part is Part.TAG for piece in chosen)
-        found = tuple(replace(piece, is_firm=False) for piece in chosen)
-        readings.append(_Reading(item if has_tag else None, cost, found))
-    if not readings:
-        cost, chosen = choose(len(words), pieces(text, words, vocabulary, None))
-        readings.append(_Reading(None, cost, tuple(chosen)))
-    return readings
+        readings.append(choose(len(words), [*known, *pieces(text, words, vocabulary, item)]))
+    least = min(cost for cost, _ in readings)
+    best = {replace(piece, is_firm=False) for cost, found in readings if cost == least for piece in found}
+    return sorted(best, key=lambda piece: (piece.first, piece.end, piece.said))
 
 
 def _groups(found: Sequence[Piece]) -> Iterator[list[Piece]]:
@@ -92,7 +75,7 @@ class _Line:
 
     text: str
     words: Sequence[Word]
-    found: Sequence[Piece]
+    possible: Sequence[Piece]
     settled: Sequence[Piece]
     vocabulary: Vocabulary
 
@@ -103,7 +86,7 @@ class _Line:
 
     def has(self, *parts: Part) -> bool:
         """Tell whether any of some parts may be in it."""
-        return any(piece.part in parts for piece in self.found)
+        return any(piece.part in parts for piece in self.possible)
 
     def names(self, part: Part) -> list[str]:
         """Give the names that are clear of a part, each once."""
@@ -116,6 +99,8 @@ class _Line:
 
     def general_questions(self) -> Iterator[Question]:
         """Ask about what is wrong whoever it is about."""
+        if not self.has(Part.TAG):
+            yield ask_whose(self.words, self.settled, self.vocabulary)
         yield from ask_about_doubles(self.text, self.words, self.settled)
         if self.day > self.vocabulary.on:
             yield self._ask(Part.DAY, f"{self.day} has not come yet")
@@ -142,7 +127,7 @@ class _Line:
             yield self._ask(Part.PART_DONE, "which task was done in part?")
 
     def _ask(self, part: Part, asked: str) -> Question:
-        piece = next(piece for piece in self.found if piece.part is part)
+        piece = next(piece for piece in self.possible if piece.part is part)
         return Question(self.words[piece.first].start, self.words[piece.end - 1].end, asked)
 
     def understood(self, figures: Figures, questions: Sequence[Question]) -> Understood:

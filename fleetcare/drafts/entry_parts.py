@@ -40,6 +40,7 @@ TEXTS = {part.value: part for part in (Part.NOTE, Part.DEFECT, Part.REPAIR)}
 FLAGS = {"sure": Part.SURE, "rolled-over": Part.ROLLED_OVER, "part-done": Part.PART_DONE}
 VOLUMES = {"top-up": Part.TOP_UP, "topup": Part.TOP_UP, "fill": Part.FILLED, "filled": Part.FILLED}
 TAGGED = ("engine", "machine")
+GALLON = "gal"  # nobody knows whose
 
 _SAYS_WHAT_FOLLOWS = {"by", "on", "at", "task", "top", *TAGGED, *TEXTS, *FLAGS, *VOLUMES}
 _UNIT_WORDS = {symbol.lower() for symbol in UNITS}
@@ -67,6 +68,11 @@ class Piece:
     is_new: bool = False
 
     @property
+    def size(self) -> int:
+        """How many words it is."""
+        return self.end - self.first
+
+    @property
     def slot(self) -> str:
         """What a line has only one of."""
         if self.part is Part.FIGURE:
@@ -79,8 +85,10 @@ class Piece:
         match self.part:
             case Part.TAG | Part.TASK:
                 return self.name
-            case Part.FIGURE | Part.LITRES | Part.FILLED | Part.TOP_UP:
+            case Part.FIGURE | Part.FILLED | Part.TOP_UP:
                 return f"{self.figure} {self.part}"
+            case Part.LITRES:
+                return str(self.figure)
             case Part.DAY:
                 return f"on {self.day}"
             case Part.PERSON:
@@ -233,7 +241,7 @@ def _figure(words: Sequence[Word], first: int) -> tuple[int, Figure] | None:
     if first >= len(words):
         return None
     text, end = words[first].key, first + 1
-    if _BARE.fullmatch(text) and end < len(words) and words[end].key in _UNIT_WORDS:
+    if _BARE.fullmatch(text) and end < len(words) and words[end].key in {*_UNIT_WORDS, GALLON}:
         text, end = text + words[end].key, end + 1
     try:
         return end, parse_dial(text)

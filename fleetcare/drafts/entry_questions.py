@@ -6,13 +6,12 @@ from itertools import islice
 
 from fleetcare.domain.days import parse_day
 from fleetcare.domain.quantities import parse_dial
-from fleetcare.drafts.entry_parts import FLAGS, TAGGED, TEXTS, VOLUMES, Part, Piece
+from fleetcare.drafts.entry_parts import FLAGS, GALLON, TAGGED, TEXTS, VOLUMES, Part, Piece
 from fleetcare.drafts.entry_vocabulary import ItemWords, Names, Vocabulary
 from fleetcare.drafts.entry_words import JOIN, Word
 from fleetcare.errors import FleetError
 
-_MOST_CHOICES = 12
-_GALLON = "gal"
+_MOST_WAYS = 100
 _WHOSE = "which engine or machine?"
 _AND_WHICH = "and which task?"
 _MANY = {Part.FIGURE, Part.JOIN, Part.UNKNOWN, *FLAGS.values()}
@@ -55,18 +54,16 @@ class Question:
     choices: tuple[Choice, ...] = ()
 
 
-def ask_which(text: str, words: Sequence[Word], pieces: Sequence[Piece]) -> Question:
-    """Ask what words are that can be several things."""
+def different_ways(pieces: Sequence[Piece]) -> list[tuple[Piece, ...]]:
+    """Give the ways to take the same words that do not come to the same, the simplest first."""
+    if len(pieces) == 1:
+        return [tuple(pieces)]
     first, end = min(piece.first for piece in pieces), max(piece.end for piece in pieces)
     known = [piece for piece in pieces if piece.part is not Part.UNKNOWN]
-    ways = list(islice(_ways(known, first, end), _MOST_CHOICES))
-    is_one_part = len({piece.part for way in ways for piece in way}) == 1
-    choices = []
-    for way in ways:
-        said = [piece.said if is_one_part else _say_as(piece) for piece in way]
-        choices.append(Choice(" and ".join(said), " ".join(piece.typed for piece in way)))
-    start, stop = words[first].start, words[end - 1].end
-    return Question(start, stop, f"{text[start:stop]}: {', '.join(choice.said for choice in choices)}?", tuple(choices))
+    ways: dict[frozenset[str], tuple[Piece, ...]] = {}
+    for way in islice(_ways(known, first, end), _MOST_WAYS):
+        ways.setdefault(frozenset(_say_as(piece) for piece in way), way)
+    return sorted(ways.values(), key=len)
 
 
 def _ways(pieces: Sequence[Piece], at: int, end: int) -> Iterator[tuple[Piece, ...]]:
@@ -77,6 +74,18 @@ def _ways(pieces: Sequence[Piece], at: int, end: int) -> Iterator[tuple[Piece, .
         if piece.first == at:
             for rest in _ways(pieces, piece.end, end):
                 yield (piece, *rest)
+
+
+def ask_which(text: str, words: Sequence[Word], pieces: Sequence[Piece], ways: Sequence[tuple[Piece, ...]]) -> Question:
+    """Ask what the words of some pieces are that can be taken in several ways."""
+    is_one_part = len({piece.part for way in ways for piece in way}) == 1
+    choices = []
+    for way in ways:
+        said = [piece.said if is_one_part else _say_as(piece) for piece in way]
+        choices.append(Choice(" and ".join(said), " ".join(piece.typed for piece in way)))
+    start, end = words[pieces[0].first].start, words[max(piece.end for piece in pieces) - 1].end
+    asked = ", ".join(choice.said for choice in choices) or "what is it"
+    return Question(start, end, f"{text[start:end]}: {asked}?", tuple(choices))
 
 
 def _say_as(piece: Piece) -> str:
@@ -98,10 +107,16 @@ def ask_whose(words: Sequence[Word], pieces: Sequence[Piece], vocabulary: Vocabu
 def ask_about_unknown(
     words: Sequence[Word], pieces: Sequence[Piece], item: ItemWords, vocabulary: Vocabulary
 ) -> list[Question]:
-    """Ask about each word that is nothing known; where a word before it announces it, about it alone."""
+    """Ask about each word that is nothing known, but of a word and what it announces, a number and its unit once."""
     unknown = [piece.first for piece in pieces if piece.part is Part.UNKNOWN]
-    asked = [at for at in unknown if not (words[at].key in _AFTER and at + 1 in unknown)]
-    return [_ask_about(words[at], item, vocabulary) for at in asked]
+
+    def is_said_by_next(at: int) -> bool:
+        is_number = words[at].key[:1].isdecimal() and words[at + 1].key == GALLON
+        return is_number or words[at].key in _AFTER
+
+    return [
+        _ask_about(words[at], item, vocabulary) for at in unknown if not (at + 1 in unknown and is_said_by_next(at))
+    ]
 
 
 def _ask_about(word: Word, item: ItemWords, vocabulary: Vocabulary) -> Question:
@@ -110,7 +125,7 @@ def _ask_about(word: Word, item: ItemWords, vocabulary: Vocabulary) -> Question:
         return Question(word.start, word.end, "there is nothing between the quotes")
     if word.key in _AFTER:
         return Question(word.start, word.end, f"{word.text}: {_AFTER[word.key]}")
-    if word.key.endswith(_GALLON) and word.key.removesuffix(_GALLON).strip("0123456789.") == "":
+    if word.key.endswith(GALLON) and word.key.removesuffix(GALLON).strip("0123456789.") == "":
         return _ask_which_gallon(word)
     if word.text[0].isdecimal():
         return Question(word.start, word.end, _say_misread(word))
@@ -126,7 +141,7 @@ def _ask_about(word: Word, item: ItemWords, vocabulary: Vocabulary) -> Question:
 
 
 def _ask_which_gallon(word: Word) -> Question:
-    number = word.key.removesuffix(_GALLON)
+    number = word.key.removesuffix(GALLON)
     choices = tuple(Choice(f"{number} {gallon}".strip(), f"{number}{gallon}") for gallon in ("galus", "galimp"))
     return Question(word.start, word.end, f"{word.text}: which gallon?", choices)
 
