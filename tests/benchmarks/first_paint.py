@@ -61,9 +61,10 @@ def in_terminal(*command: str) -> Iterator[tuple[int, int, float]]:
     try:
         yield process, terminal, begun
     finally:
-        os.kill(process, signal.SIGKILL)
-        os.waitpid(process, 0)
+        os.kill(process, signal.SIGINT)  # and not SIGKILL: a demo takes its folder away
+        read_away(terminal, 1)
         os.close(terminal)
+        os.waitpid(process, 0)
 
 
 def read_until(terminal: int, text: str, times: int = 1) -> float:
@@ -78,11 +79,14 @@ def read_until(terminal: int, text: str, times: int = 1) -> float:
 
 
 def read_away(terminal: int, seconds: float) -> None:
-    """Read what a terminal is sent for some time."""
+    """Read what a terminal is sent for some time, or until its program has ended."""
     end = time.perf_counter() + seconds
     while (left := end - time.perf_counter()) > 0:
         if select.select([terminal], [], [], left)[0]:
-            os.read(terminal, 65536)
+            try:
+                os.read(terminal, 65536)
+            except OSError:  # what Linux says of a terminal nobody holds any more
+                return
 
 
 def last_visible_task(database: Path) -> tuple[str, int]:
