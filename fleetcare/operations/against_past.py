@@ -9,7 +9,7 @@ from typing import TYPE_CHECKING
 from fleetcare.domain import meters as facts
 from fleetcare.domain.meters import LifeReading
 from fleetcare.domain.quantities import BASE_UNIT, Figure, from_base, plain, to_base
-from fleetcare.errors import Refused
+from fleetcare.errors import Doubted, Refused
 from fleetcare.operations.find import FoundItem, FoundMeter
 from fleetcare.operations.load import load_counters
 from fleetcare.operations.settings import cap_per_day
@@ -104,7 +104,7 @@ def refuse_unlike_dial(item: FoundItem, meter: FoundMeter, new: NewReading, tria
             f"{say_figure(new.figure, meter)} does not fit on {modulus.adjusted()} digits", "check the figure"
         )
     if dial < start.first and not any(turn.meter_id == meter.id for turn in trial.turns):
-        raise Refused(
+        raise Doubted(
             f"{say_figure(new.figure, meter)} lies below {plain(start.first)} {meter.unit}, the meter's first figure",
             "check the figure",
         )

@@ -70,7 +70,7 @@ def test_a_damaged_draft_is_said_once_and_set_aside(tmp_path: Path) -> None:
 
 def test_a_folder_that_cannot_be_written_is_said_with_what_to_do(tmp_path: Path) -> None:
     (tmp_path / "drafts").write_text("a file where the folder should be", encoding="utf-8")
-    with pytest.raises(Refused, match="cannot be kept in .*; store it before you leave"):
+    with pytest.raises(Refused, match=r"cannot be kept in .*; store it before you leave"):
         KeptDrafts(tmp_path / "drafts").keep(KEY, TYPED)
 
 

@@ -99,7 +99,8 @@ class Form:
         said = f"{error.detail} {error.remedy}"
         named = [match.replace("-", "_") for match in _OPTION.findall(said)]
         own = [one.name for one in self.fields]
-        places = {name: place for name in own if (place := _place_of(values.get(name, ""), error.detail)) is not None}
+        typed = {one.name: _place_of(values.get(one.name, ""), error.detail) for one in self.fields if not one.is_yes_no}
+        places = {name: place for name, place in typed.items() if place is not None}
         figures = [one.name for one in self.fields if one.known == METERS and "meter" in error.detail]
         return next(
             iter([name for name in named if name in own] or sorted(places, key=places.__getitem__) or figures), ""

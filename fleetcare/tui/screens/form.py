@@ -28,11 +28,11 @@ class FormScreen(FillingScreen):
             self.sentences = sentences
 
     class NotStored(Message):
-        """Nothing was stored, and why."""
+        """Nothing was stored, and why; `was_asked` is whether a doubt was answered before."""
 
-        def __init__(self, error: FleetError) -> None:
+        def __init__(self, error: FleetError, *, was_asked: bool) -> None:
             super().__init__()
-            self.error = error
+            self.error, self.was_asked = error, was_asked
 
     _draft: "Draft | None" = None
     """What is being stored, or asked about, just now."""
@@ -66,8 +66,8 @@ class FormScreen(FillingScreen):
         self.dismiss(message.sentences)
 
     def on_form_screen_not_stored(self, message: NotStored) -> None:
-        """Ask about a doubt; say anything else at the foot."""
-        if isinstance(message.error, Doubted) and self.form.answers:
+        """Ask about a doubt, once; say anything else at the foot."""
+        if isinstance(message.error, Doubted) and self.form.answers and not message.was_asked:
             self.query_one(Question).ask(message.error.detail, self.form.answers)
             return
         self._draft = None
@@ -107,7 +107,7 @@ class FormScreen(FillingScreen):
             with self.context.write() as session:
                 entered = self.form.store(session, draft, self.context.today(), said)
         except FleetError as error:
-            self.post_message(self.NotStored(error))
+            self.post_message(self.NotStored(error, was_asked=bool(said)))
         else:
             self.post_message(self.Stored(entered.sentences()))
 
