@@ -117,6 +117,11 @@ def test_readings_after_an_engine_left_the_machine_are_not_its_own() -> None:
     assert lives(found) == [("2026-02-01", 100)]
 
 
+def test_on_the_day_of_a_swap_each_reading_counts_by_the_meter_it_was_read_off() -> None:
+    found = history(reading(1, SWAP, 4980), reading(2, SWAP, 0, meter=2), fits=REPLACED)
+    assert lives(found) == [(SWAP, 4980), (SWAP, 5130)]
+
+
 def test_a_meter_fitted_again_counts_on_from_where_it_was_left() -> None:
     again = (fit(OLD, "2026-01-01", 100, "2026-02-01", 150), fit(OLD, "2026-04-01", 400))
     found = history(
