@@ -18,6 +18,8 @@ _SAID = {
     "right": "→",
     "up": "↑",
     "down": "↓",
+    "tab": "Tab",
+    "shift+tab": "Shift Tab",
     "ctrl+s": "Ctrl S",
     "ctrl+n": "Ctrl N",
     "f1": "F1",
@@ -28,7 +30,8 @@ _SAID = {
 class Action:
     """What a key does in one place. `word` stands in the foot line, `tells` in help and palette.
 
-    `method` is what the app or screen does; one with `in_foot` False is left out of the foot line.
+    `method` is what the app or screen does; one with `in_foot` False is left out of the foot line. One that `goes_on`
+    from a field acts at once, so that keys typed without waiting go where the cursor goes.
     """
 
     place: str
@@ -37,6 +40,7 @@ class Action:
     word: str
     tells: str
     in_foot: bool = True
+    goes_on: bool = False
 
     @property
     def keys_said(self) -> tuple[str, ...]:
@@ -93,8 +97,8 @@ ACTIONS = (
     Action("more", "n", "write('swap')", "new meter", "its meter was replaced by another", in_foot=False),
     Action("more", "escape,x", "back", "back", "go back to where you came from"),
     Action("form", "ctrl+s", "store", "store", "write it down"),
-    Action("form", "enter,down", "next(1)", "next field", "go to the next field"),
-    Action("form", "up", "next(-1)", "field before", "go to the field before", in_foot=False),
+    Action("form", "enter,down,tab", "next(1)", "next field", "go to the next field", goes_on=True),
+    Action("form", "up,shift+tab", "next(-1)", "field before", "go to the field before", in_foot=False, goes_on=True),
     Action(
         "form",
         "right",
@@ -134,7 +138,7 @@ def actions_of(place: str) -> tuple[Action, ...]:
 def bindings(place: str) -> list[BindingType]:
     """Give a place's own actions as key bindings."""
     return [
-        Binding(action.key, action.method, action.word, show=False, tooltip=action.tells)
+        Binding(action.key, action.method, action.word, show=False, tooltip=action.tells, priority=action.goes_on)
         for action in ACTIONS
         if action.place == place
     ]

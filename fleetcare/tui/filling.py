@@ -58,7 +58,7 @@ class FillingScreen(LoadingScreen):
     @property
     def key(self) -> DraftKey:
         """What is typed here is kept under this."""
-        return DraftKey(str(self.context.path.absolute()), self.form.name, self.subject.words())
+        return DraftKey(str(self.context.path.absolute()), self.form.name, self.form.names(self.subject))
 
     @property
     def values(self) -> dict[str, str]:
@@ -134,6 +134,8 @@ class FillingScreen(LoadingScreen):
 
     def action_next(self, step: int) -> None:
         """Go to the next field or the one before."""
+        if self.query_one(Question).display:
+            return
         if step > 0:
             self.focus_next("TextField, YesNo")
         else:

@@ -197,6 +197,12 @@ async def test_what_is_half_typed_is_there_again_and_stored_only_by_the_key(open
         assert not [line for line in seen(pilot) if "As you left it" in line]
 
 
+async def test_what_is_half_typed_on_one_line_of_an_engine_is_there_from_its_page_too(opened: Opened) -> None:
+    async with opened("down", "w", *"305", "escape", "e", "w", size=(100, 30)) as pilot:
+        assert line_with(pilot, " Meter", "305")
+        assert line_with(pilot, "As you left it")
+
+
 async def test_what_was_stored_is_not_offered_again(opened: Opened) -> None:
     async with opened("down", "w", *"305", "ctrl+s", "w", size=(100, 30)) as pilot:
         assert line_with(pilot, "Log work on")

@@ -32,10 +32,6 @@ class Subject:
     entry: int | None = None
     preset: Mapping[str, str] = field(default_factory=dict)
 
-    def words(self) -> str:
-        """Name it, so that each has a draft of its own."""
-        return " ".join(word for word in (self.tag, self.task, str(self.entry or "")) if word)
-
 
 @dataclass(frozen=True, slots=True)
 class Field:
@@ -73,6 +69,7 @@ class Form:
     """A form by its name. `draft` gives the draft's class, `fixed` what it holds that is not asked.
 
     `store` runs the operation on the draft, with what an answer said. `start` gives the values a form opens with.
+    One `is_on_task` is about the task of its subject, any other about the whole engine or machine, or an entry.
     With `only_changes` a field left as it was is not sent, and one that was filled cannot be emptied.
     """
 
@@ -86,6 +83,12 @@ class Form:
     above: "Callable[[FormFacts], tuple[str, Sequence[str]]]" = lambda facts: ("", ())
     answers: tuple[Answer, ...] = ()
     only_changes: bool = False
+    is_on_task: bool = False
+
+    def names(self, subject: Subject) -> str:
+        """Name what a form is about, so that each has a draft of its own."""
+        words = (subject.tag, subject.task if self.is_on_task else "", str(subject.entry or ""))
+        return " ".join(word for word in words if word)
 
     def heading(self, subject: Subject) -> str:
         """Say what is being written down about what."""
@@ -99,7 +102,9 @@ class Form:
         said = f"{error.detail} {error.remedy}"
         named = [match.replace("-", "_") for match in _OPTION.findall(said)]
         own = [one.name for one in self.fields]
-        typed = {one.name: _place_of(values.get(one.name, ""), error.detail) for one in self.fields if not one.is_yes_no}
+        typed = {
+            one.name: _place_of(values.get(one.name, ""), error.detail) for one in self.fields if not one.is_yes_no
+        }
         places = {name: place for name, place in typed.items() if place is not None}
         figures = [one.name for one in self.fields if one.known == METERS and "meter" in error.detail]
         return next(

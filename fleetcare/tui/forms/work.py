@@ -123,6 +123,7 @@ DEFER = Form(
     ),
     _deferral_draft,
     _defer,
+    is_on_task=True,
     fixed=lambda subject, on: {"tag": subject.tag, "task": subject.task, "on": on},
     start=lambda facts, subject, on: {},
 )

@@ -43,6 +43,10 @@ class FormScreen(FillingScreen):
             self.dismiss(None)
 
     def action_store(self) -> None:
+        """Store it, once the keys typed before are in their fields."""
+        self.call_after_refresh(self._read)
+
+    def _read(self) -> None:
         """Read what is typed; store it, or say beside each field what is wrong."""
         from fleetcare.drafts.reading_in import try_draft
 

@@ -1,10 +1,8 @@
 """The lines of a form: a label, what is typed, and below it what is wrong with that."""
 
 from collections.abc import Iterator
-from typing import ClassVar
 
 from textual import events
-from textual.binding import Binding, BindingType
 from textual.containers import Horizontal, Vertical
 from textual.content import Content
 from textual.message import Message
@@ -28,10 +26,6 @@ class TextField(Input):
     def __init__(self) -> None:
         super().__init__(compact=True, select_on_focus=False)
 
-    async def action_submit(self) -> None:
-        """Go to the next line."""
-        self.screen.focus_next()
-
     def action_cursor_right(self, select: bool = False) -> None:
         """Move right; at the end take the name suggested."""
         if self.cursor_at_end and not select:
@@ -42,8 +36,6 @@ class TextField(Input):
 
 class YesNo(Widget, can_focus=True):
     """A yes or no: the space bar changes it, y and n say it."""
-
-    BINDINGS: ClassVar[list[BindingType]] = [Binding("enter", "next", show=False)]
 
     value: reactive[str] = reactive("no")
 
@@ -79,10 +71,6 @@ class YesNo(Widget, can_focus=True):
         if said != self.value:
             self.value = said
             self.post_message(self.Changed(self))
-
-    def action_next(self) -> None:
-        """Go to the next line."""
-        self.screen.focus_next()
 
 
 class FieldRow(Horizontal):
