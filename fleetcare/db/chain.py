@@ -6,13 +6,11 @@ Plain SQL and no tables, so that a card or a label can carry the ledger's head w
 import hashlib
 import json
 from collections.abc import Iterable, Iterator
-from functools import cache
 from typing import NamedTuple
 
-from sqlalchemy import Connection, RowMapping, TextClause, bindparam, text
+from sqlalchemy import Connection, RowMapping
 
 GENESIS = "0" * 64  # what the first entry is sealed to
-_MOST_IDS = 500  # in one query; SQLite bounds how many values a statement may bind
 
 
 class Entry(NamedTuple):
@@ -37,15 +35,17 @@ class Entry(NamedTuple):
         return f"{self.seq}:{self.hash}"
 
 
-_NEWEST = text(f"SELECT {', '.join(Entry._fields)} FROM ledger ORDER BY seq DESC LIMIT 1")
+# In the driver's own words, as every write asks them: taking a statement apart takes longer than answering it.
+_ALL = f"SELECT {', '.join(Entry._fields)} FROM ledger ORDER BY seq"
+_NEWEST = f"{_ALL} DESC LIMIT 1"
+_APPEND = f"INSERT INTO ledger ({', '.join(Entry._fields)}) VALUES ({', '.join('?' for _ in Entry._fields)})"
 
 START = Entry(0, "", "", 0, "", "", GENESIS)
 """What stands before the first entry."""
 
 
-def canonical(value: object) -> str:
-    """Give the one JSON text of a value: keys sorted, no spaces, nothing escaped that need not be."""
-    return json.dumps(value, ensure_ascii=False, sort_keys=True, separators=(",", ":"), default=repr)
+canonical = json.JSONEncoder(ensure_ascii=False, sort_keys=True, separators=(",", ":"), default=repr).encode
+"""Gives the one JSON text of a value: keys sorted, no spaces, nothing escaped that need not be."""
 
 
 def seal(seq: int, kind: str, row_uid: str, payload_version: int, payload: str, previous_hash: str) -> str:
@@ -56,14 +56,19 @@ def seal(seq: int, kind: str, row_uid: str, payload_version: int, payload: str, 
 
 def entries(connection: Connection) -> Iterator[Entry]:
     """Give every entry of the ledger in order."""
-    for row in connection.execute(text(f"SELECT {', '.join(Entry._fields)} FROM ledger ORDER BY seq")):
+    for row in connection.exec_driver_sql(_ALL):
         yield Entry(*row)
 
 
 def last_entry(connection: Connection) -> Entry:
     """Give the newest entry of the ledger, START while it has none."""
-    row = connection.execute(_NEWEST).one_or_none()
+    row = connection.exec_driver_sql(_NEWEST).one_or_none()
     return Entry(*row) if row else START
+
+
+def append(connection: Connection, added: list[Entry]) -> None:
+    """Store entries that follow from the last one."""
+    connection.exec_driver_sql(_APPEND, [tuple(entry) for entry in added])
 
 
 def rows(connection: Connection, table: str, ids: Iterable[int] | None = None) -> Iterator[RowMapping]:
@@ -73,17 +78,10 @@ def rows(connection: Connection, table: str, ids: Iterable[int] | None = None) -
     """
     everything = f"SELECT * FROM {connection.dialect.identifier_preparer.quote_identifier(table)}"
     if ids is None:
-        yield from connection.execute(text(f"{everything} ORDER BY id")).mappings()
-        return
-    some, wanted = _with_ids(everything), sorted(ids)
-    for start in range(0, len(wanted), _MOST_IDS):
-        yield from connection.execute(some, {"ids": wanted[start : start + _MOST_IDS]}).mappings()
-
-
-@cache
-def _with_ids(everything: str) -> TextClause:
-    """Narrow a statement to some ids; read once, as every write to the table asks it."""
-    return text(f"{everything} WHERE id IN :ids ORDER BY id").bindparams(bindparam("ids", expanding=True))
+        yield from connection.exec_driver_sql(f"{everything} ORDER BY id").mappings()
+    else:
+        some = f"{everything} WHERE id IN (SELECT value FROM json_each(?)) ORDER BY id"
+        yield from connection.exec_driver_sql(some, (canonical(list(ids)),)).mappings()
 
 
 def payload(row: RowMapping) -> str:

@@ -5,11 +5,11 @@ The session hooks here are its only writer.
 
 from collections import defaultdict
 
-from sqlalchemy import event, insert
+from sqlalchemy import event
 from sqlalchemy.orm import ORMExecuteState, Session, UOWTransaction
 
-from fleetcare.db.chain import Entry, last_entry, payload, rows, seal
-from fleetcare.db.tables import LedgerEntry, Row, metadata
+from fleetcare.db.chain import Entry, append, last_entry, payload, rows, seal
+from fleetcare.db.tables import Row, metadata
 
 PAYLOAD_VERSION = 1
 
@@ -47,9 +47,9 @@ def _append(session: Session, flush: UOWTransaction) -> None:
         for row in rows(connection, table, touched[table]):
             content = (entry.seq + 1, table, row["uid"], PAYLOAD_VERSION, payload(row), entry.hash)
             entry = Entry(*content, seal(*content))
-            added.append(entry._asdict())
+            added.append(entry)
     if added:
-        connection.execute(insert(LedgerEntry), added)
+        append(connection, added)
 
 
 def _refuse_bulk(statement: ORMExecuteState) -> None:

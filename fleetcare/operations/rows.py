@@ -3,6 +3,8 @@
 Reading never loads the tables' classes: declaring them costs more time than the whole due list.
 """
 
+import json
+import re
 from collections.abc import Iterable, Sequence
 from datetime import date
 from decimal import Decimal
@@ -10,23 +12,25 @@ from functools import cache
 from typing import TYPE_CHECKING, Any, cast
 
 if TYPE_CHECKING:
-    from sqlalchemy import Connection, TextClause
+    from sqlalchemy import Connection
 
 Row = tuple[Any, ...]
 
 
 def fetch(connection: "Connection", sql: str, **values: object) -> Sequence[Row]:
-    """Give all rows of a statement. A name in it bound to a list or tuple stands for all of its values."""
+    """Give all rows of a statement. A name in it bound to a list or tuple stands for all of its values, however many."""
     lists = tuple(name for name, value in values.items() if isinstance(value, list | tuple))
-    return cast("Sequence[Row]", connection.execute(_statement(sql, lists), values).all())
+    bound = values | {name: json.dumps(values[name]) for name in lists}
+    # Asked in the driver's own words: taking a statement apart and together again takes longer than answering it.
+    return cast("Sequence[Row]", connection.exec_driver_sql(_with_lists(sql, lists), bound).all())
 
 
 @cache
-def _statement(sql: str, lists: tuple[str, ...]) -> "TextClause":
-    """Give a statement read once: what is asked again and again need not be taken apart again."""
-    from sqlalchemy import bindparam, text
-
-    return text(sql).bindparams(*(bindparam(name, expanding=True) for name in lists))
+def _with_lists(sql: str, lists: tuple[str, ...]) -> str:
+    """Let some names of a statement stand for lists, each bound as one value: SQLite limits how many there may be."""
+    for name in lists:
+        sql = re.sub(rf":{name}\b", f"(select value from json_each(:{name}))", sql)
+    return sql
 
 
 def day(value: str | date | None) -> date | None:
