@@ -131,6 +131,7 @@ def _carry_over(
     if not draft.sheet and not draft.task and not was_part:
         came = dict.fromkeys(came, "")  # its own sheet closed these tasks before
     close_tasks(session, facts, new, tasks, part_done=part_done, logged=logged, sheets=came)
+    session.flush()
     logged.note_still_open(facts, new, came)
 
 

@@ -76,6 +76,7 @@ def record_work(session: "Session", draft: LogDraft, today: date) -> Logged:
         logged.sheet = keep_sheet(session, entry, sheet)
     came = came_along(sheet, sure=draft.sure)
     close_tasks(session, facts, entry, done, part_done=draft.part_done, logged=logged, sheets=came)
+    session.flush()
     logged.note_still_open(facts, entry, came)
     return logged
 
@@ -139,7 +140,7 @@ def close_tasks(
     elsewhere: Sequence[int] = (),
     sheets: Sheets = NONE_CAME,
 ) -> None:
-    """Store which tasks an entry closes, and what they cover; part-done work closes nothing.
+    """Store which tasks an entry closes, and what they cover; part-done work closes nothing. Whoever calls flushes.
 
     `facts` are those of its item, this entry's figures among them. Tasks done `elsewhere`, by another entry of the
     same day, are not covered once more. `sheets` are the kinds that came along, each with why it closes nothing.
@@ -158,13 +159,14 @@ def close_tasks(
         work = _preview(facts, task, version, entry)
         row = LogTask(entry_id=entry.id, task_id=task_id, served_period=work.served)
         session.add(row)
-        session.flush()
         logged.closed.append(task.name)
         logged.notes.extend(_say_no_figure(facts, task, version, entry))
         if work.note:
             logged.notes.append(_say_note(task, work))
-        _cover(session, facts, tasks, closure(covers, task_id), named, entry, row, logged, sheets)
-    session.flush()
+        along = closure(covers, task_id)
+        if along:
+            session.flush()  # only a stored row can be named by what it covers
+            _cover(session, facts, tasks, along, named, entry, row, logged, sheets)
 
 
 def _cover(
@@ -195,7 +197,6 @@ def _cover(
             session.add(LogTask(entry_id=entry.id, task_id=task_id, covered_by_id=big.id, served_period=work.served))
             named.append(task_id)
             logged.covered.append((task.name, tasks[big.task_id].name))
-    session.flush()
 
 
 def _preview(facts: ItemFacts, task: Task, version: Version, entry: LogEntry) -> PastWork:
