@@ -110,15 +110,17 @@ def refuse_unlike_dial(item: FoundItem, meter: FoundMeter, new: NewReading, tria
         )
 
 
-def same_reading(connection: "Connection", meter: FoundMeter, new: NewReading) -> int | None:
-    """Find an accepted reading of the same day and figure; a log entry's own reading is stored all the same."""
+def same_reading(trial: CounterHistory, meter: FoundMeter, new: NewReading) -> int | None:
+    """Find the stored, accepted reading of the same day and figure among those of a trial.
+
+    A log entry's own reading is stored all the same.
+    """
     if new.entry_id is not None:
         return None
-    history = load_counters(connection, [meter.owner_id], date.max)[meter.owner_id][meter.kind]
     dial = dial_of(new.figure, meter)
-    for reading in history.counter.readings:
+    for reading in trial.counter.readings:
         same = (reading.meter_id, reading.on, reading.value) == (meter.id, new.on, dial)
-        if same and reading.accepted and reading.rolled_over == new.rolled_over:
+        if reading.id > 0 and same and reading.accepted and reading.rolled_over == new.rolled_over:
             return reading.id
     return None
 

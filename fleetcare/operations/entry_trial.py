@@ -110,7 +110,7 @@ def _hold(connection: "Connection", item: FoundItem, line: Understood, dial: Dia
         reading=Reading(-1, meter.id, line.on, dial_of(dial.figure, meter), line.has_rolled_over),
         question=question,
         suspects=what_falls_off(connection, meter, trial) if collisions and line.is_sure else (),
-        known=same_reading(connection, meter, new),
+        known=same_reading(trial, meter, new),
     )
 
 

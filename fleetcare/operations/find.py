@@ -8,7 +8,7 @@ from typing import TYPE_CHECKING
 
 from fleetcare.domain.quantities import Figure, Kind
 from fleetcare.errors import Refused
-from fleetcare.operations.rows import fetch
+from fleetcare.operations.rows import day, fetch
 
 if TYPE_CHECKING:
     from sqlalchemy import Connection
@@ -31,6 +31,19 @@ class FoundMeter:
     kind: Kind
     unit: str
     owner_id: int
+
+
+@dataclass(frozen=True, slots=True)
+class FoundFit:
+    """A meter counting for an item, and from when until when; None is since ever, or until further notice."""
+
+    meter: FoundMeter
+    from_on: date | None
+    to_on: date | None
+
+    def counts_on(self, on: date) -> bool:
+        """Tell whether the meter counts for the item on a day."""
+        return (self.from_on is None or self.from_on <= on) and (self.to_on is None or on < self.to_on)
 
 
 def find_item(connection: "Connection", tag: str, *, on: date | None = None, even_withdrawn: bool = False) -> FoundItem:
@@ -98,15 +111,18 @@ def find_task(
 
 def find_meters(connection: "Connection", item_id: int, on: date) -> list[FoundMeter]:
     """Give the meters counting for an item on a day, its own and its machine's."""
+    return [fit.meter for fit in find_fits(connection, item_id) if fit.counts_on(on)]
+
+
+def find_fits(connection: "Connection", item_id: int) -> list[FoundFit]:
+    """Give the meters that count for an item on some day or other, its own and its machine's."""
     rows = fetch(
         connection,
-        "select meter.id, meter.kind, meter.unit, meter.item_id from meter_fit fit join meter on meter.id = fit.meter_id"
-        " where fit.item_id = :item and (fit.from_on is null or fit.from_on <= :on)"
-        " and (fit.to_on is null or fit.to_on > :on) order by meter.id",
+        "select meter.id, meter.kind, meter.unit, meter.item_id, fit.from_on, fit.to_on"
+        " from meter_fit fit join meter on meter.id = fit.meter_id where fit.item_id = :item order by meter.id, fit.id",
         item=item_id,
-        on=on.isoformat(),
     )
-    return [FoundMeter(row[0], Kind(row[1]), row[2], row[3]) for row in rows]
+    return [FoundFit(FoundMeter(row[0], Kind(row[1]), row[2], row[3]), day(row[4]), day(row[5])) for row in rows]
 
 
 def pick_meter(meters: Sequence[FoundMeter], figure: Figure, tag: str, kind: Kind | None = None) -> FoundMeter:

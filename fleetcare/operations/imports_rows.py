@@ -15,7 +15,7 @@ from fleetcare.errors import FleetError, Refusals, Refused
 from fleetcare.exchange.csv_in import CsvRow, RowRefused
 from fleetcare.operations.against_past import NewReading, dial_of, hold_against_past, refuse_unlike_dial, say_collision
 from fleetcare.operations.due import Moved
-from fleetcare.operations.find import FoundItem, FoundMeter, find_item, find_meters, pick_meter
+from fleetcare.operations.find import FoundFit, FoundItem, FoundMeter, find_fits, find_item, pick_meter
 from fleetcare.operations.rows import fetch
 from fleetcare.rules.meters import CounterHistory
 
@@ -82,7 +82,7 @@ class Finder:
     def __init__(self, connection: "Connection") -> None:
         self._connection = connection
         self._items: dict[str, FoundItem] = {}
-        self._meters: dict[tuple[int, date], list[FoundMeter]] = {}
+        self._fits: dict[int, list[FoundFit]] = {}
 
     def item(self, tag: str) -> FoundItem:
         """Find an engine or machine in use. Raises Refused."""
@@ -92,9 +92,9 @@ class Finder:
 
     def meters(self, item_id: int, on: date) -> list[FoundMeter]:
         """Give the meters counting for an item on a day."""
-        if (item_id, on) not in self._meters:
-            self._meters[item_id, on] = find_meters(self._connection, item_id, on)
-        return self._meters[item_id, on]
+        if item_id not in self._fits:
+            self._fits[item_id] = find_fits(self._connection, item_id)
+        return [fit.meter for fit in self._fits[item_id] if fit.counts_on(on)]
 
     def place(self, number: int, item: FoundItem, on: date, figure: Figure, kind: Kind | None = None) -> PlacedFigure:
         """Find the meter a figure was read off. Raises Refused where that is none, or more than one."""

@@ -2,10 +2,8 @@
 
 from typing import TYPE_CHECKING
 
-from sqlalchemy import select
-from sqlmodel import col
-
 from fleetcare.db.tables import Person, Site
+from fleetcare.operations.rows import fetch
 
 if TYPE_CHECKING:
     from sqlalchemy.orm import Session
@@ -25,9 +23,10 @@ def _named(session: "Session", table: type[Site] | type[Person], name: str | Non
     if not name:
         return None
     key = name.casefold()
-    found = session.scalars(select(table).where(col(table.name_key) == key)).one_or_none()
-    if found is None:
-        found = table(name=name, name_key=key)
-        session.add(found)
-        session.flush()
-    return found.id
+    stored = fetch(session.connection(), f"select id from {table.__tablename__} where name_key = :key", key=key)
+    if stored:
+        return int(stored[0][0])
+    row = table(name=name, name_key=key)
+    session.add(row)
+    session.flush()
+    return row.id

@@ -68,7 +68,7 @@ def store_reading(
     if collisions and not sure:
         raise Doubted(say_collision(item, meter, new, collisions[0]), remedy)
     shown = f"{item.tag} shows {say_figure(new.figure, meter)}"
-    known = same_reading(session.connection(), meter, new)
+    known = same_reading(trial, meter, new)
     if known is not None:
         return Recorded(known, shown, is_new=False)
     (reading_id,) = insert_readings(session, [(meter, new)])
@@ -78,6 +78,8 @@ def store_reading(
 
 def insert_readings(session: "Session", found: Iterable[tuple[FoundMeter, NewReading]]) -> list[int]:
     """Store readings as entered, unchecked, and give their ids."""
+    placed = list(found)
+    people = {name: person_id(session, name) for name in dict.fromkeys(new.by for _, new in placed)}
     rows = [
         Reading(
             meter_id=meter.id,
@@ -87,10 +89,10 @@ def insert_readings(session: "Session", found: Iterable[tuple[FoundMeter, NewRea
             rolled_over=new.rolled_over,
             entry_id=new.entry_id,
             note=new.note,
-            person_id=person_id(session, new.by),
+            person_id=people[new.by],
             import_key=new.import_key,
         )
-        for meter, new in found
+        for meter, new in placed
     ]
     session.add_all(rows)
     session.flush()

@@ -119,7 +119,8 @@ def _add_version(
     for covered in draft.covers:
         session.add(TaskCover(version_id=version.id, covered_id=find_task(session.connection(), item, covered)))
     session.flush()
-    _refuse_cycle(session, item, task_id)
+    if draft.covers:  # no way round can come of what covers nothing
+        _refuse_cycle(session, item, task_id)
 
 
 def _trigger_row(
@@ -172,8 +173,9 @@ def _refuse_cycle(session: "Session", item: FoundItem, task_id: int) -> None:
 
 def names_taken(session: "Session", item: FoundItem) -> set[str]:
     """Give the names, casefolded, of the tasks an item has."""
-    rows = session.scalars(select(Task).where(col(Task.item_id) == item.id, col(Task.removed_on).is_(None)))
-    return {row.name_key for row in rows}
+    connection = session.connection()
+    rows = fetch(connection, "select name_key from task where item_id = :item and removed_on is null", item=item.id)
+    return {row[0] for row in rows}
 
 
 def _version_on(session: "Session", task_id: int, on: date) -> tuple[TaskVersion, Sequence[TaskTrigger]]:
