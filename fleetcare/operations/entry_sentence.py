@@ -97,13 +97,11 @@ def say_points(line: DueLine, facts: ItemFacts) -> str:
 
 
 def _say_point(trigger: TriggerLine, facts: ItemFacts) -> str:
-    match trigger.point:
-        case None:
-            return f"by {trigger.kind} not known"
-        case Decimal():
-            return _say_life(trigger.point, trigger.kind, facts, is_sure=not trigger.approximate)
-        case date():
-            return say_day(trigger.point)
+    if trigger.point is None:
+        return f"by {trigger.kind} not known"
+    if isinstance(trigger.point, date):
+        return say_day(trigger.point)
+    return _say_life(trigger.point, trigger.kind, facts, is_sure=not trigger.approximate)
 
 
 def _say_life(life: Decimal, kind: Kind, facts: ItemFacts, *, is_sure: bool) -> str:

@@ -16,7 +16,6 @@ from fleetcare.drafts.entry_questions import Choice, Question
 from fleetcare.drafts.entry_understood import Understood
 from fleetcare.errors import Refused
 from fleetcare.operations.against_past import (
-    Collision,
     NewReading,
     dial_of,
     hold_against_past,
@@ -102,37 +101,26 @@ def _hold(connection: "Connection", item: FoundItem, line: Understood, dial: Dia
     meter = pick_meter(find_meters(connection, item.id, line.on), dial.figure, item.tag)
     new = NewReading(line.on, dial.figure, line.has_rolled_over)
     trial, collisions = hold_against_past(connection, item, meter, [new])
-    refuse_unlike_dial(item, meter, new, trial)
-    question = None
-    if collisions and not line.is_sure:
-        question = _ask_about_break(connection, item, meter, new, collisions[0], dial)
+    asked, typed, choices = "", typed_figure(dial.figure), [Choice("a new meter was fitted", None)]
+    try:
+        refuse_unlike_dial(item, meter, new, trial)
+        if collisions and not line.is_sure:
+            asked = say_collision(item, meter, new, collisions[0])
+            choices.insert(0, Choice("it is right; what it breaks with is set aside", f"{typed} sure"))
+    except Refused as error:
+        asked = str(error)
+    if asked and not new.rolled_over and _fits(connection, item, meter, replace(new, rolled_over=True)):
+        choices.insert(0, Choice("the dial went round to 0", f"{typed} rolled over"))
     return _Held(
         reading=Reading(-1, meter.id, line.on, dial_of(dial.figure, meter), line.has_rolled_over),
-        question=question,
+        question=Question(dial.start, dial.end, asked, tuple(choices)) if asked else None,
         suspects=what_falls_off(connection, meter, trial) if collisions and line.is_sure else (),
         known=same_reading(trial, meter, new),
     )
 
 
-def _ask_about_break(
-    connection: "Connection",
-    item: FoundItem,
-    meter: FoundMeter,
-    new: NewReading,
-    collision: Collision,
-    dial: DialFigure,
-) -> Question:
-    """Say what a figure breaks with, and offer every explanation that would hold."""
-    typed = typed_figure(dial.figure)
-    choices = [Choice("it is right; what it breaks with is set aside", f"{typed} sure")]
-    turned = replace(new, rolled_over=True)
-    if not new.rolled_over and _fits(connection, item, meter, turned):
-        choices.append(Choice("the dial went round to 0", f"{typed} rolled over"))
-    choices.append(Choice("a new meter was fitted", None))
-    return Question(dial.start, dial.end, say_collision(item, meter, new, collision), tuple(choices))
-
-
 def _fits(connection: "Connection", item: FoundItem, meter: FoundMeter, new: NewReading) -> bool:
+    """Tell whether a reading breaks with nothing."""
     trial, collisions = hold_against_past(connection, item, meter, [new])
     try:
         refuse_unlike_dial(item, meter, new, trial)
