@@ -4,7 +4,7 @@ import argparse
 
 from fleetcare.cli import output
 from fleetcare.cli.parser import CommandParser, Commands, day
-from fleetcare.cli.shop import add_options, context_of, label_with, options_of, say_moved
+from fleetcare.cli.shop import add_options, context_of, label_with, options_of, say_entered, say_moved
 
 _REPEATED = {
     "--every": ("INTERVAL", "such as 250h, 10000km or 12mo; once for each kind"),
@@ -79,26 +79,13 @@ def _add_task_options(parser: CommandParser, *, unset: bool | None) -> None:
 def _add(given: argparse.Namespace) -> None:
     from fleetcare.drafts.reading_in import read_draft
     from fleetcare.drafts.tasks import TaskDraft
-    from fleetcare.operations.due import watch_moves
-    from fleetcare.operations.find import find_item
-    from fleetcare.operations.listing import pausing_tasks
-    from fleetcare.operations.stored_words import pausing_words, say_line
-    from fleetcare.operations.tasks import add_task
+    from fleetcare.operations.adding import enter_task
 
     context = context_of(given)
     draft = read_draft(TaskDraft, options_of(given, "tag"), label_with(name="TASK"))
     with context.write() as session:
-        item = find_item(session.connection(), given.tag)
-        with watch_moves(session, item.tag, context.today()) as moves:
-            add_task(session, item, draft, context.today())
-        pausing = pausing_tasks(session.connection(), item.tag, context.today())
-    output.say(f"{draft.name} added to {item.tag}.")
-    if draft.name in pausing:
-        output.say(pausing_words(draft.name))
-    new = [move.after for move in moves.moved if move.before is None and move.after is not None]
-    for row in new:
-        output.say(f"{item.tag}  {row.task}: {say_line(row)}")
-    say_moved([move for move in moves.moved if move.before is not None])
+        entered = enter_task(session, given.tag, draft, context.today())
+    say_entered(entered)
 
 
 def _edit(given: argparse.Namespace) -> None:

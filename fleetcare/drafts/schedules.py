@@ -7,7 +7,7 @@ from typing import Annotated, Literal, Self
 from pydantic import BeforeValidator, model_validator
 
 from fleetcare.domain.quantities import Figure
-from fleetcare.drafts.fields import parse_day_or_dial
+from fleetcare.drafts.fields import Text, parse_day_or_dial
 from fleetcare.drafts.reading_in import Draft, read_draft
 from fleetcare.drafts.tasks import TaskDraft
 from fleetcare.errors import FleetError, Misread, Refusals, Refused
@@ -48,8 +48,10 @@ def _start(text: str) -> Start | date | Figure:
         raise Misread(error.detail, f"write start, unset, a day or a dial figure; {error.remedy}") from None
 
 
-def _starts(texts: list[str]) -> tuple[Start | date | Figure, ...]:
-    return tuple(_start(text) for text in texts)
+def _starts(texts: list[str] | str) -> tuple[Start | date | Figure, ...]:
+    """Read a list of starts, or one text that joins them with semicolons."""
+    several = texts.split(";") if isinstance(texts, str) else texts
+    return tuple(_start(text.strip()) for text in several if text.strip())
 
 
 class StartDraft(Draft):
@@ -73,3 +75,9 @@ class StartDraft(Draft):
     def last_done(self) -> tuple[date | Figure, ...]:
         """The day and the dial figures given, else nothing."""
         return tuple(given for given in self.counts_from if not isinstance(given, str))
+
+
+class ApplyDraft(StartDraft):
+    """A schedule by its name or file, and what its tasks count from."""
+
+    name: Text

@@ -6,12 +6,12 @@ from datetime import date
 from decimal import Decimal
 from typing import TYPE_CHECKING
 
-from fleetcare.domain.engines import status_on
-from fleetcare.domain.quantities import plain
+from fleetcare.domain.quantities import COUNTED, plain
 from fleetcare.errors import Refused
 from fleetcare.operations.due_words import notes, say_due
 from fleetcare.operations.rows import fetch
 from fleetcare.operations.show import item_page
+from fleetcare.rulebook.schedules import shipped_schedules
 
 if TYPE_CHECKING:
     from sqlalchemy import Connection
@@ -24,41 +24,57 @@ if TYPE_CHECKING:
 class FormFacts:
     """`known` are names by what they name, likeliest first; `waiting` the lines of the item, worst first, said.
 
-    `sheets` names the sheet each task needs, for those that need one. `typed` is what an entry says, as typed.
+    `typed` is what an entry says, as typed.
     """
 
-    whose: str
-    status: str
-    meters: str
     known: Mapping[str, tuple[str, ...]]
+    whose: str = ""
+    meters: str = ""
     waiting: tuple[str, ...] = ()
-    sheets: Mapping[str, str] = field(default_factory=dict)
     typed: Mapping[str, str] = field(default_factory=dict)
 
 
 def form_facts(connection: "Connection", tag: str, on: date, entry: int | None = None) -> FormFacts:
-    """Load what a form on an engine or machine shows; refuses an unknown tag, and an entry there is not."""
+    """Load what a form on an engine or machine shows; refuses an unknown tag, and an entry there is not.
+
+    Without a tag, for something new, it is what is known of the whole yard.
+    """
+    if not tag:
+        return FormFacts(known=_known(connection))
     page = item_page(connection, tag, on)
     item = page.facts.item
     due = [row.task for row in page.rows]
-    versions = {task.name: task.version_on(on) for task in page.facts.tasks if task.removed_on is None}
+    tasks = [task.name for task in page.facts.tasks if task.removed_on is None]
     machine = f"in {item.machine}" if item.machine not in {"", item.tag} else ""
     return FormFacts(
         whose=", ".join(word for word in (f"{item.name} {machine}".strip(), item.site) if word),
-        status=status_on(item.spells, on) if item.is_engine else "",
         meters="; ".join(filter(None, map(_shown_last, page.facts.counters.values()))),
-        known={
-            "task": tuple(dict.fromkeys([*due, *versions])),
-            "people": _names(connection, "select name from person order by id desc"),
-            "machines": _names(
-                connection, "select tag from item where not is_engine and withdrawn_on is null order by tag"
-            ),
-            "parts": _names(connection, "select distinct name from log_part order by name"),
-        },
+        known={**_known(connection), "task": tuple(dict.fromkeys([*due, *tasks]))},
         waiting=tuple(map(_waiting, page.rows)),
-        sheets={name: version.needs_sheet for name, version in versions.items() if version.needs_sheet},
         typed=entry_as_typed(connection, entry) if entry is not None else {},
     )
+
+
+def _known(connection: "Connection") -> dict[str, tuple[str, ...]]:
+    """Give the names known in the yard by what they name; people last named first."""
+    return {
+        "people": _names(connection, "select name from person order by id desc"),
+        "sites": _names(connection, "select name from site order by name"),
+        "machines": _names(
+            connection, "select tag from item where not is_engine and withdrawn_on is null order by tag"
+        ),
+        "parts": _names(connection, "select distinct name from log_part order by name"),
+        **words_known(),
+    }
+
+
+def words_known() -> dict[str, tuple[str, ...]]:
+    """Give what is known without a yard: shipped schedules, and the words some fields are written in."""
+    return {
+        "schedules": tuple(schedule.id for schedule in shipped_schedules()),
+        "meter kinds": tuple(COUNTED),
+        "fuels": ("diesel", "petrol"),
+    }
 
 
 def entry_as_typed(connection: "Connection", number: int) -> dict[str, str]:

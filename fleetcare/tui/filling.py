@@ -86,6 +86,15 @@ class FillingScreen(LoadingScreen):
 
         return form_facts(connection, self.subject.tag, on, self.subject.entry)
 
+    def fail(self, error: FleetError) -> None:
+        """Say what is wrong; where there is no file yet, the first thing in it can be added all the same."""
+        if self.has_file or self.subject.tag:
+            super().fail(error)
+        elif self.facts is None:
+            from fleetcare.operations.form_facts import FormFacts, words_known
+
+            self.show(FormFacts(words_known()))
+
     def show(self, found: "FormFacts") -> None:
         """Fill in what it opens with, where nobody typed; when the file changed only what is known changes."""
         is_first, self.facts = self.facts is None, found

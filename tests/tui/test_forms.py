@@ -2,10 +2,12 @@
 
 import sqlite3
 from contextlib import closing
+from datetime import date
 from pathlib import Path
 
 import pytest
 
+from fleetcare.context import Context
 from fleetcare.tui.forms.base import Subject
 from fleetcare.tui.screens.due import DueScreen
 from fleetcare.tui.screens.form import FormScreen
@@ -180,6 +182,28 @@ async def test_a_correction_does_not_leave_out_what_an_entry_says(opened: Opened
 async def test_an_entry_is_taken_back_with_a_reason(opened: Opened) -> None:
     async with opened("down", "e", "h", "v", *"wrong engine", "ctrl+s", size=(100, 30)) as pilot:
         assert "Entry 6 (scheduled) of PS-1 voids entry 1." in " ".join(seen(pilot))
+
+
+async def test_a_newcomer_gets_from_an_empty_folder_to_a_due_line_and_logged_work(
+    opened: Opened, tmp_path: Path
+) -> None:
+    new = Context(str(tmp_path / "new.db"), date(2026, 5, 1))
+    async with opened(context=new, size=(100, 30)) as pilot:
+        assert [
+            line for line in seen(pilot) if "Add a first engine: 2 shows the engines, and there a adds one." in line
+        ]
+        await press(pilot, "2", "a", *"P-01", "enter", "enter", "enter", "enter", "right", "enter", *"2024-01-10")
+        await press(pilot, "enter", "0", "enter", "space", "ctrl+s")
+        assert line_with(pilot, "P-01 added.")
+        await press(pilot, "x", "t", *"Oil", "enter", *"250h; 12mo", "ctrl+s")
+        assert "Oil added to P-01. P-01 Oil: overdue, 250 h or 2025-01-10" in " ".join(" ".join(seen(pilot)).split())
+        await press(pilot, "1", "w", *"1234", "enter", *"Fenn", "ctrl+s")
+        assert line_with(pilot, "clear", "P-01", "Oil", "1484 h", "2027-05-01")
+
+
+async def test_an_engine_gets_the_tasks_of_a_schedule(opened: Opened) -> None:
+    async with opened("2", "down", "x", "d", *"diesel-g", "right", "enter", *"2026-02-10; 4800h", "ctrl+s", size=(100, 30)) as pilot:
+        assert "tasks of diesel-genset added." in " ".join(seen(pilot))
 
 
 async def test_what_is_half_typed_is_there_again_and_stored_only_by_the_key(opened: Opened, db: Path) -> None:

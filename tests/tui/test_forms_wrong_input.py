@@ -40,6 +40,21 @@ WRONG = {
     ("withdraw", "on"): ("2026-13-01", "there is no day 2026-13-01"),
     ("move", "machine"): ("", "goes into a machine or out of one; give “Into” or “Take it out”"),
     ("move", "on"): ("1 May", "'1 May' is not a date"),
+    ("engine", "tag"): ("", "this is missing"),
+    ("engine", "meter"): ("hour", "no meter counts 'hour'"),
+    ("engine", "in_service"): ("2024", "'2024' is not a date"),
+    ("engine", "start_at"): ("nought", "'nought' is not"),
+    ("engine", "cylinders"): ("six", "'six'"),
+    ("engine", "firing_order"): ("1-2-3", "1-2-3"),
+    ("task", "name"): ("", "this is missing"),
+    ("task", "every"): ("sometimes", "'sometimes'"),
+    ("task", "first"): ("soon", "'soon'"),
+    ("task", "ahead"): ("a bit", "'a bit'"),
+    ("task", "grace"): ("some", "'some'"),
+    ("task", "last_done"): ("spring", "'spring'"),
+    ("task", "part"): ("Oil filter:none", "none"),
+    ("schedule", "name"): ("", "this is missing"),
+    ("schedule", "counts_from"): ("maybe", "'maybe'"),
 }
 # What only the database can tell is wrong, or several fields together: said at the foot, the cursor in the field.
 REFUSED = {
@@ -57,9 +72,29 @@ REFUSED = {
     ("stand-down", "on"): ("2026-05-02", "2026-05-02 has not come yet"),
     ("return", "on"): ("2026-05-02", "2026-05-02 has not come yet"),
     ("move", "machine"): ("PH-7", "'PH-7'"),
+    ("engine", "tag"): ("PS-2", "PS-2"),
+    ("engine", "machine"): ("PH-7", "'PH-7'"),
+    ("task", "name"): ("Oil and filter", "Oil and filter"),
+    ("schedule", "name"): ("nonesuch", "'nonesuch'"),
 }
 # Fields in which nothing can be wrong: text of one's own, and a yes or no.
-FREE = {"by", "note", "why", "repair", "defect", "position", "part_done", "follow_up", "out"}
+FREE = {
+    "by",
+    "note",
+    "why",
+    "repair",
+    "defect",
+    "position",
+    "part_done",
+    "follow_up",
+    "out",
+    "as_new",
+    "name",
+    "site",
+    "fuel",
+    "work",
+    "source",
+}
 # What the other fields of a form need for the refusal to be about this one.
 BESIDE = {
     "defer": {"until": "2026-06-01", "why": "x", "by": "Harbin"},
@@ -67,6 +102,9 @@ BESIDE = {
     "swap": {"old_last": "302", "new_first": "0"},
     "reading": {"value": "310"},
     "void": {"by": "Harbin"},
+    "engine": {"tag": "PS-7", "cylinders": "6"},
+    "task": {"name": "Belts", "every": "500h"},
+    "schedule": {"name": "diesel-genset"},
     "move": {"machine": "PH-1"},
 }
 

@@ -68,7 +68,7 @@ class Answer:
 class Form:
     """A form by its name. `draft` gives the draft's class, `fixed` what it holds that is not asked.
 
-    `store` runs the operation on the draft, with what an answer said. `start` gives the values a form opens with.
+    `store` runs the operation on subject and draft, with what an answer said. `start` gives the values a form opens with.
     One `is_on_task` is about the task of its subject, any other about the whole engine or machine, or an entry.
     With `only_changes` a field left as it was is not sent, and one that was filled cannot be emptied.
     """
@@ -77,7 +77,7 @@ class Form:
     title: str
     fields: tuple[Field, ...]
     draft: "Callable[[], type[Draft]]"
-    store: "Callable[[Session, Any, date, Mapping[str, bool]], Entered]"
+    store: "Callable[[Session, Subject, Any, date, Mapping[str, bool]], Entered]"
     fixed: "Callable[[Subject, date], Mapping[str, object]]" = lambda subject, on: {"tag": subject.tag}
     start: "Callable[[FormFacts, Subject, date], Mapping[str, str]]" = lambda facts, subject, on: {"on": on.isoformat()}
     above: "Callable[[FormFacts], tuple[str, Sequence[str]]]" = lambda facts: ("", ())

@@ -5,7 +5,7 @@ from datetime import date
 from typing import TYPE_CHECKING
 
 from fleetcare.domain.engines import Status
-from fleetcare.tui.forms.base import BY, ON, WHY, Field, Form
+from fleetcare.tui.forms.base import BY, ON, WHY, Field, Form, Subject
 
 if TYPE_CHECKING:
     from sqlalchemy.orm import Session
@@ -28,8 +28,10 @@ def _return_draft() -> "type[Draft]":
     return ReturnDraft
 
 
-def _becomes(status: Status) -> "Callable[[Session, StatusDraft, date, Mapping[str, bool]], Entered]":
-    def store(session: "Session", draft: "StatusDraft", today: date, said: Mapping[str, bool]) -> "Entered":
+def _becomes(status: Status) -> "Callable[[Session, Subject, StatusDraft, date, Mapping[str, bool]], Entered]":
+    def store(
+        session: "Session", subject: Subject, draft: "StatusDraft", today: date, said: Mapping[str, bool]
+    ) -> "Entered":
         from fleetcare.operations.entering import enter_status
 
         return enter_status(session, draft, status, today)
@@ -47,7 +49,7 @@ def _fit_draft() -> "type[Draft]":
     return FitDraft
 
 
-def _move(session: "Session", draft: "FitDraft", today: date, said: Mapping[str, bool]) -> "Entered":
+def _move(session: "Session", subject: Subject, draft: "FitDraft", today: date, said: Mapping[str, bool]) -> "Entered":
     from fleetcare.operations.entering import enter_move
 
     return enter_move(session, draft, today)

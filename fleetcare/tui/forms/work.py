@@ -38,7 +38,7 @@ def _log_draft() -> "type[Draft]":
     return LogDraft
 
 
-def _log(session: "Session", draft: "LogDraft", today: date, said: Mapping[str, bool]) -> "Entered":
+def _log(session: "Session", subject: Subject, draft: "LogDraft", today: date, said: Mapping[str, bool]) -> "Entered":
     from fleetcare.operations.entering import enter_work
 
     return enter_work(session, draft, today, said)
@@ -54,7 +54,9 @@ def _correction_draft() -> "type[Draft]":
     return CorrectionDraft
 
 
-def _correct(session: "Session", draft: "CorrectionDraft", today: date, said: Mapping[str, bool]) -> "Entered":
+def _correct(
+    session: "Session", subject: Subject, draft: "CorrectionDraft", today: date, said: Mapping[str, bool]
+) -> "Entered":
     from fleetcare.operations.entering import enter_correction
 
     return enter_correction(session, draft, today)
@@ -66,7 +68,9 @@ def _deferral_draft() -> "type[Draft]":
     return DeferralDraft
 
 
-def _defer(session: "Session", draft: "DeferralDraft", today: date, said: Mapping[str, bool]) -> "Entered":
+def _defer(
+    session: "Session", subject: Subject, draft: "DeferralDraft", today: date, said: Mapping[str, bool]
+) -> "Entered":
     from fleetcare.operations.entering import enter_deferral
 
     return enter_deferral(session, draft, today)

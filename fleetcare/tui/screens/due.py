@@ -24,14 +24,13 @@ if TYPE_CHECKING:
 
 EMPTY = (
     "There is nothing here yet.\n \n"
-    "Add an engine and what it needs in another window; it appears here by itself:\n \n"
-    "fleetcare engine add P-01 --meter hours\n"
-    'fleetcare task add P-01 "Oil and filter" --every 250h --every 12mo\n \n'
+    "Add a first engine: 2 shows the engines, and there a adds one. Then x gives it the tasks of a ready-made "
+    "schedule (d), or a task of your own (t), and from then on its lines stand here.\n \n"
     "Or look around first in a fleet that is made up: fleetcare demo"
 )
 NO_LINES = (
     "No engine has a task that is due by anything.\n \n"
-    "fleetcare schedule list shows ready-made sets of tasks, fleetcare schedule apply gives them to an engine."
+    "2 shows the engines; there x gives the one under the cursor the tasks of a ready-made schedule (d), or a task (t)."
 )
 NO_MATCH = "No line is like that. The key a shows all again."
 

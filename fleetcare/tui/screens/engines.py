@@ -94,6 +94,12 @@ class EnginesScreen(FindingScreen):
         row: YardRow | None = self.query_one(LongList).current
         return Subject(row.tag) if row is not None else None
 
+    def action_add(self) -> None:
+        """Add an engine."""
+        from fleetcare.tui.forms.base import Subject
+
+        self.open_form("engine", Subject(""))
+
     def action_item(self) -> None:
         """Open the page of the engine or machine under the cursor."""
         from fleetcare.tui.screens.item import ItemScreen

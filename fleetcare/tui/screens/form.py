@@ -109,7 +109,7 @@ class FormScreen(FillingScreen):
         """Store it. Runs in a thread: touches no widget."""
         try:
             with self.context.write() as session:
-                entered = self.form.store(session, draft, self.context.today(), said)
+                entered = self.form.store(session, self.subject, draft, self.context.today(), said)
         except FleetError as error:
             self.post_message(self.NotStored(error, was_asked=bool(said)))
         else:
