@@ -134,9 +134,17 @@ class Span:
         return f"{self.count} {self.unit}"
 
 
+_PLACES = 15
+"""Decimals kept in a base unit: far more than any dial has, few enough to drop what dividing left behind."""
+
+
 def to_base(value: Decimal, unit: str) -> Decimal:
-    """Turn a figure in `unit` into the base unit of its kind; exact."""
-    return value * UNITS[unit].to_base
+    """Turn a figure in `unit` into the base unit of its kind.
+
+    Exact for every figure a person types; one that came out of `from_base` comes back as it went in.
+    """
+    factor = UNITS[unit].to_base
+    return value if factor == 1 else round(value * factor, _PLACES)
 
 
 def from_base(value: Decimal, unit: str) -> Decimal:

@@ -3,6 +3,8 @@
 from decimal import Decimal
 
 import pytest
+from hypothesis import given
+from hypothesis import strategies as st
 
 from fleetcare.domain.quantities import (
     BASE_UNIT,
@@ -40,6 +42,12 @@ def test_an_amount_keeps_what_was_entered_beside_its_base_figure() -> None:
 @pytest.mark.parametrize("unit", UNITS)
 def test_a_figure_survives_the_way_to_the_base_unit_and_back(unit: str) -> None:
     assert from_base(to_base(Decimal("1234.5"), unit), unit) == Decimal("1234.5")
+
+
+@pytest.mark.parametrize("unit", ["mi", "galus", "galimp"])
+@given(figure=st.decimals(0, 999_999_999, places=3))
+def test_a_figure_typed_in_the_base_unit_comes_back_from_another_as_it_was(unit: str, figure: Decimal) -> None:
+    assert to_base(from_base(figure, unit), unit) == figure
 
 
 @pytest.mark.parametrize(
