@@ -15,6 +15,7 @@ from fleetcare.rules.due.row import unit_of
 
 _MONTHS = ("Jan", "Feb", "Mar", "Apr", "May", "Jun", "Jul", "Aug", "Sep", "Oct", "Nov", "Dec")
 _WEEKDAYS = ("Mon", "Tue", "Wed", "Thu", "Fri", "Sat", "Sun")
+_MOST_NAMED = 3
 _WORTH_A_WORD = (State.OVERDUE, State.DUE, State.NEAR)
 
 
@@ -80,7 +81,10 @@ def _say_effects(line: Understood, outcome: Outcome) -> Iterator[str]:
         yield f"said already by {_readings(outcome.known)}"
 
 
-def _readings(numbers: Iterable[int]) -> str:
+def _readings(numbers: tuple[int, ...]) -> str:
+    """Name a few readings by their numbers, count many."""
+    if len(numbers) > _MOST_NAMED:
+        return f"{len(numbers)} readings"
     return ", ".join(f"reading {number}" for number in numbers)
 
 

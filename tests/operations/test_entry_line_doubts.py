@@ -74,6 +74,12 @@ def test_what_was_answered_is_stored(ctx: Context, back: Reader) -> None:
     assert rows(ctx, "select reading_id, mark from reading_mark") == [(5, "suspect"), (6, "suspect")]
 
 
+def test_many_readings_that_would_be_set_aside_are_counted(ctx: Context, back: Reader) -> None:
+    for figure in ("1210", "1220"):
+        store(ctx, back(f"p3 {figure}"))
+    assert back("p3 900 sure").sentence.endswith("set aside as suspect: 4 readings")
+
+
 @pytest.mark.parametrize(
     ("text", "words", "answers"),
     [
