@@ -143,8 +143,9 @@ def to_base(value: Decimal, unit: str) -> Decimal:
 
     Exact for every figure a person types; one that came out of `from_base` comes back as it went in.
     """
-    factor = UNITS[unit].to_base
-    return value if factor == 1 else round(value * factor, _PLACES)
+    base = value * UNITS[unit].to_base
+    rounded = round(base, _PLACES)
+    return base if base == rounded else rounded
 
 
 def from_base(value: Decimal, unit: str) -> Decimal:
