@@ -21,11 +21,17 @@ from fleetcare.drafts.entry_understood import Taken, Understood
 from fleetcare.drafts.entry_vocabulary import ItemWords, Vocabulary
 from fleetcare.drafts.entry_words import Word, split_words
 
+LONGEST = 500
+"""Most characters of a line: more is no line but a text, and would take too long to be read with every key."""
+
 _CANNOT_BE_KEPT = re.compile("[\ud800-\udfff]")  # half a character: no file can hold it
 
 
 def understand(text: str, vocabulary: Vocabulary) -> Understood:
     """Take a line apart. What can be two things, or nothing, is asked about and never guessed."""
+    if len(text) > LONGEST:
+        asked = f"a line holds {LONGEST} characters, leave out what is over"
+        return Understood(text, vocabulary.on, questions=(Question(LONGEST, len(text), asked),))
     words = split_words(text)
     groups = [(group, different_ways(group)) for group in _groups(_best_pieces(text, words, vocabulary))]
     settled = [piece for _, ways in groups if len(ways) == 1 for piece in ways[0]]
@@ -43,13 +49,15 @@ def understand(text: str, vocabulary: Vocabulary) -> Understood:
 
 
 def _best_pieces(text: str, words: Sequence[Word], vocabulary: Vocabulary) -> list[Piece]:
-    """Read the line once for each of its words that can be a tag, and give the pieces of the best readings."""
+    """Read the line once for each tag its words can be, and give the pieces of the best readings."""
     tags = tag_pieces(words, vocabulary)
-    spans: list[tuple[int, int] | None] = [*sorted({(tag.first, tag.end) for tag in tags})]
-    readings = []
-    for span in spans or [None]:
-        names = {tag.name for tag in tags if (tag.first, tag.end) == span}
-        item = vocabulary.item(min(names)) if len(names) == 1 else None
+    spans: dict[tuple[str, ...], tuple[int, int]] = {}
+    for tag in tags:
+        span = tag.first, tag.end
+        spans.setdefault(tuple(one.name for one in tags if (one.first, one.end) == span), span)
+    readings = [choose(len(words), pieces(text, words, vocabulary, None))] if not spans else []
+    for names, span in spans.items():
+        item = vocabulary.item(names[0]) if len(names) == 1 else None
         known = [replace(tag, is_firm=tag.is_firm or (tag.first, tag.end) == span) for tag in tags]
         readings.append(choose(len(words), [*known, *pieces(text, words, vocabulary, item)]))
     least = min(cost for cost, _ in readings)

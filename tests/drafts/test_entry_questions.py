@@ -2,7 +2,7 @@
 
 import pytest
 
-from fleetcare.drafts.entry_line import understand
+from fleetcare.drafts.entry_line import LONGEST, understand
 from fleetcare.drafts.entry_questions import Question
 from fleetcare.drafts.entry_vocabulary import ItemWords, Vocabulary
 from tests.drafts.entry_yard import HOURS, MONDAY, YARD
@@ -175,6 +175,17 @@ def test_a_gallon_that_is_a_person_leaves_the_number_open() -> None:
 def test_two_ways_that_come_to_the_same_are_no_question() -> None:
     line = understand("p3 oil a fenw 9", YARD)
     assert (line.questions, line.tasks, line.by) == ((), ("Oil and filter",), "Ada Fenwick")
+
+
+def test_a_number_that_is_a_tag_may_be_its_figure_too() -> None:
+    line = understand("12 oil 12", YARD)
+    assert (line.questions, line.tag, [str(figure) for figure in line.figures]) == ((), "12", ["12 h"])
+
+
+def test_a_line_is_no_longer_than_it_can_be_read_with_every_key() -> None:
+    text = "p3 note " + "x" * LONGEST
+    assert understand(text[:LONGEST], YARD).questions == ()
+    assert question(text).asked == "a line holds 500 characters, leave out what is over"
 
 
 def test_in_a_yard_without_anything_every_line_asks_whose_it_is() -> None:
