@@ -1,9 +1,10 @@
 """Work, readings, deferrals and corrections as somebody states them."""
 
+from collections.abc import Sequence
 from datetime import date
-from typing import Annotated, Self
+from typing import Annotated, Any, Self
 
-from pydantic import BeforeValidator, model_validator
+from pydantic import BeforeValidator, create_model, model_validator
 
 from fleetcare.domain.quantities import Figure, parse_dial
 from fleetcare.drafts.fields import Day, DaysOrDials, Dial, Dials, Hours, Litres, MeterKind, Note, Parts, Text, Texts
@@ -44,6 +45,25 @@ class ReadingDraft(Draft):
         if self.unmetered is not None and self.replaced is None:
             raise Refused("--unmetered belongs to a replaced meter", "give --replaced OLD_LAST NEW_FIRST as well")
         return self
+
+
+class RoundDraft(Draft):
+    """Readings of several meters on one day; those of each are a field of `round_draft`."""
+
+    on: Day
+    by: Text | None = None
+
+    @model_validator(mode="after")
+    def _check_any(self) -> Self:
+        if not self.model_fields_set - {"on", "by"}:
+            raise Refused("nothing was read", "give at least one figure")
+        return self
+
+
+def round_draft(names: Sequence[str]) -> type[RoundDraft]:
+    """Make the draft of a round with a field of that name for the meters of each engine or machine."""
+    figures: dict[str, Any] = dict.fromkeys(names, (Dials, ()))
+    return create_model("Round", __base__=RoundDraft, **figures)
 
 
 class SwapDraft(Draft):

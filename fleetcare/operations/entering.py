@@ -86,6 +86,15 @@ def enter_reading(session: "Session", draft: "ReadingDraft", today: date) -> Ent
     return Entered([*recorded_words(recorded, draft.on)], [*moved_words(moves.moved)])
 
 
+def enter_round(session: "Session", drafts: Sequence[ReadingDraft], today: date) -> Entered:
+    """Store the readings of a round, all or none."""
+    entered = [enter_reading(session, draft, today) for draft in drafts]
+    count = f"{len(entered)} {'reading' if len(entered) == 1 else 'readings'} stored."
+    return Entered(
+        [count, *(line for one in entered for line in one.said[1:])], [line for one in entered for line in one.moved]
+    )
+
+
 def enter_deferral(session: "Session", draft: "DeferralDraft", today: date) -> Entered:
     """Store a deferral of the due point a task has now."""
     with watch_moves(session, draft.tag, today) as moves:

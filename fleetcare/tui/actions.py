@@ -68,6 +68,7 @@ ACTIONS = (
     Action("engines", "r", "write('reading')", "reading", "write down what its meter shows"),
     Action("engines", "x", "more", "more", "write down a status, a move or a new meter of it"),
     Action("engines", "a", "add", "add", "add an engine"),
+    Action("engines", "o", "round", "round", "write down what all meters of this site show"),
     Action("engines", "slash", "find", "find", "show only those that hold some words"),
     Action("engines", "n", "to_group(1)", "next group", "go to the next site", in_foot=False),
     Action("engines", "p", "to_group(-1)", "group before", "go to the site before", in_foot=False),

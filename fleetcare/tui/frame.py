@@ -77,7 +77,8 @@ class Notice(Widget):
 
     def _wrapped(self, width: int) -> list[str]:
         lines = [line for said in self._lines for line in wrap(said, max(width, 1))]
-        return lines[:_MOST_LINES]
+        over = lines[_MOST_LINES - 1 :]
+        return [*lines[: _MOST_LINES - 1], fit(" ".join(over), max(width, 1)).rstrip()] if over else lines
 
 
 class KeyLine(Widget):

@@ -119,5 +119,6 @@ class LoadingScreen(FramedScreen):
             self.follow()
 
     def _still_reading(self, worker: Worker[None]) -> None:
-        if worker is self._worker and not worker.is_finished and not self._has_failed:
+        is_quiet = not self._has_failed and not self.notice.display  # what was said of a thing stored stays
+        if worker is self._worker and not worker.is_finished and is_quiet:
             self.notice.say("Reading …", is_about_reading=True)

@@ -6,7 +6,7 @@ from typing import TYPE_CHECKING
 from fleetcare.tui.loading import LoadingScreen
 
 if TYPE_CHECKING:
-    from fleetcare.tui.forms.base import Subject
+    from fleetcare.tui.forms.base import Form, Subject
 
 
 class WritingScreen(LoadingScreen):
@@ -25,9 +25,14 @@ class WritingScreen(LoadingScreen):
     def open_form(self, name: str, subject: "Subject") -> None:
         """Open the form of a name on a subject."""
         from fleetcare.tui.forms.all import FORMS
+
+        self.show_form(FORMS[name], subject)
+
+    def show_form(self, form: "Form", subject: "Subject") -> None:
+        """Open a form on a subject."""
         from fleetcare.tui.screens.form import FormScreen
 
-        self.app.push_screen(FormScreen(FORMS[name], subject), self._written)
+        self.app.push_screen(FormScreen(form, subject), self._written)
 
     def action_more(self) -> None:
         """Choose what else to write down about what the cursor is on."""

@@ -160,10 +160,10 @@ async def test_a_file_that_is_no_database_is_said_with_the_way_out(
 async def test_a_missing_database_says_how_to_begin_and_shows_when_it_is_made(opened: Opened, tmp_path: Path) -> None:
     path = tmp_path / "new.db"
     async with opened(size=(100, 30), context=Context(str(path))) as pilot:
-        assert line_with(pilot, "fleetcare engine add P-01")
+        assert line_with(pilot, "Add a first engine: 2 shows the engines, and there a adds one.")
         assert not path.exists()
         type_in(path, "engine", "add", "P-01", "--in-service", "2024-01-10")
         await follow(pilot)
-        assert line_with(pilot, "fleetcare schedule list")
+        assert line_with(pilot, "x gives the one under the cursor the tasks of a ready-made schedule")
         assert isinstance(pilot.app, FleetApp)
         assert pilot.app.status() == 0

@@ -119,6 +119,14 @@ async def test_work_at_a_figure_that_is_right_as_it_stands_is_logged_with_it(ope
     assert rows(db, "select value from reading where entry_id = 6") == [("30",)]
 
 
+async def test_a_figure_said_otherwise_than_it_was_typed_is_asked_about_too(opened: Opened) -> None:
+    async with opened(size=(100, 30)) as pilot:
+        await form_with(pilot, "log", OIL, {"at": "30.50h"})
+        await press(pilot, "ctrl+s")
+        assert line_with(pilot, "30.5 h on 2026-05-01 does not fit reading 12 of PS-1 (302 h on 2026-04-30)")
+        assert line_with(pilot, "r  it is right as it stands")
+
+
 async def test_a_new_meter_is_written_down_in_the_place_of_a_reading(opened: Opened, db: Path) -> None:
     async with opened(size=(100, 30)) as pilot:
         await form_with(pilot, "reading", Subject("PS-1"), {"value": "3"})
@@ -202,7 +210,9 @@ async def test_a_newcomer_gets_from_an_empty_folder_to_a_due_line_and_logged_wor
 
 
 async def test_an_engine_gets_the_tasks_of_a_schedule(opened: Opened) -> None:
-    async with opened("2", "down", "x", "d", *"diesel-g", "right", "enter", *"2026-02-10; 4800h", "ctrl+s", size=(100, 30)) as pilot:
+    async with opened(
+        "2", "down", "x", "d", *"diesel-g", "right", "enter", *"2026-02-10; 4800h", "ctrl+s", size=(100, 30)
+    ) as pilot:
         assert "tasks of diesel-genset added." in " ".join(seen(pilot))
 
 

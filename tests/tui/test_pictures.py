@@ -48,6 +48,7 @@ SCREENS = {
     "log-large": Picture(LARGE, ("down", "w", *"305", "enter", *"f")),
     "return": Picture(SMALL, ("x", "r")),
     "more": Picture(SMALL, ("x",)),
+    "round": Picture(SMALL, ("2", "o", *"Fenn", "enter", *"25", "enter", *"4811", "ctrl+s")),
 }
 
 

@@ -1,10 +1,9 @@
 """Forms on what is new: an engine, a task, the tasks of a schedule."""
 
-from collections.abc import Mapping
 from datetime import date
 from typing import TYPE_CHECKING
 
-from fleetcare.tui.forms.base import Field, Form, Subject
+from fleetcare.tui.forms.base import Field, Form, Said, Subject
 
 if TYPE_CHECKING:
     from sqlalchemy.orm import Session
@@ -22,9 +21,7 @@ def _engine_draft() -> "type[Draft]":
     return EngineDraft
 
 
-def _add_engine(
-    session: "Session", subject: Subject, draft: "EngineDraft", today: date, said: Mapping[str, bool]
-) -> "Entered":
+def _add_engine(session: "Session", subject: Subject, draft: "EngineDraft", today: date, said: Said) -> "Entered":
     from fleetcare.operations.adding import enter_item
 
     return enter_item(session, draft, today)
@@ -36,9 +33,7 @@ def _task_draft() -> "type[Draft]":
     return TaskDraft
 
 
-def _add_task(
-    session: "Session", subject: Subject, draft: "TaskDraft", today: date, said: Mapping[str, bool]
-) -> "Entered":
+def _add_task(session: "Session", subject: Subject, draft: "TaskDraft", today: date, said: Said) -> "Entered":
     from fleetcare.operations.adding import enter_task
 
     return enter_task(session, subject.tag, draft, today)
@@ -50,9 +45,7 @@ def _apply_draft() -> "type[Draft]":
     return ApplyDraft
 
 
-def _apply(
-    session: "Session", subject: Subject, draft: "ApplyDraft", today: date, said: Mapping[str, bool]
-) -> "Entered":
+def _apply(session: "Session", subject: Subject, draft: "ApplyDraft", today: date, said: Said) -> "Entered":
     from fleetcare.operations.adding import enter_schedule
 
     return enter_schedule(session, subject.tag, draft, today)

@@ -5,7 +5,7 @@ from collections.abc import Callable, Mapping, Sequence
 from dataclasses import dataclass, field
 from typing import TYPE_CHECKING, Any
 
-from fleetcare.errors import FleetError
+from fleetcare.errors import Doubted, FleetError
 
 if TYPE_CHECKING:
     from datetime import date
@@ -23,6 +23,10 @@ _OPTION = re.compile(r"--([a-z][a-z-]+)(?: [A-Z][A-Z_|:]*)?")
 _FIGURE = re.compile(r"^([0-9][0-9.]*) ?[A-Za-z]+$")
 
 
+Said = Mapping[str, Mapping[str, bool]]
+"""What was answered about doubtful fields, by their names."""
+
+
 @dataclass(frozen=True, slots=True)
 class Subject:
     """What a form is about: an engine or machine, and a task or an entry of it. `preset` are fields filled in ahead."""
@@ -38,7 +42,8 @@ class Field:
     """One labelled line of a form, by the name it has in the draft.
 
     `known` names what is suggested for it (see FormFacts.known). A yes or no is one key. One that is
-    `kept_for_shift` is filled in again on the next form. `several` values stand between semicolons.
+    `kept_for_shift` is filled in again on the next form. `several` values stand between semicolons. On a form about
+    several engines or machines `tag` is whose field it is.
     """
 
     name: str
@@ -48,6 +53,7 @@ class Field:
     is_yes_no: bool = False
     several: bool = False
     kept_for_shift: bool = False
+    tag: str = ""
 
 
 @dataclass(frozen=True, slots=True)
@@ -68,7 +74,7 @@ class Answer:
 class Form:
     """A form by its name. `draft` gives the draft's class, `fixed` what it holds that is not asked.
 
-    `store` runs the operation on subject and draft, with what an answer said. `start` gives the values a form opens with.
+    `store` runs the operation on subject and draft, with what was answered. `start` gives the values a form opens with.
     One `is_on_task` is about the task of its subject, any other about the whole engine or machine, or an entry.
     With `only_changes` a field left as it was is not sent, and one that was filled cannot be emptied.
     """
@@ -77,7 +83,7 @@ class Form:
     title: str
     fields: tuple[Field, ...]
     draft: "Callable[[], type[Draft]]"
-    store: "Callable[[Session, Subject, Any, date, Mapping[str, bool]], Entered]"
+    store: "Callable[[Session, Subject, Any, date, Said], Entered]"
     fixed: "Callable[[Subject, date], Mapping[str, object]]" = lambda subject, on: {"tag": subject.tag}
     start: "Callable[[FormFacts, Subject, date], Mapping[str, str]]" = lambda facts, subject, on: {"on": on.isoformat()}
     above: "Callable[[FormFacts], tuple[str, Sequence[str]]]" = lambda facts: ("", ())
@@ -95,18 +101,20 @@ class Form:
         return self.title.format(tag=subject.tag, task=subject.task, entry=subject.entry)
 
     def field_of(self, error: FleetError, values: Mapping[str, str]) -> str:
-        """Name the field an error is about: the option it names, else what it says first of what was typed.
+        """Name the field an error is about: the option or tag it names, else what it says first of what was typed.
 
-        What is said of meters is about the first field of figures. "" where the words do not tell.
+        A doubt, and what is said of meters, is about the first field of figures. "" where the words do not tell.
         """
         said = f"{error.detail} {error.remedy}"
         named = [match.replace("-", "_") for match in _OPTION.findall(said)]
+        named += [one.name for one in self.fields if one.tag and _place_of(one.tag, error.detail) is not None]
         own = [one.name for one in self.fields]
         typed = {
             one.name: _place_of(values.get(one.name, ""), error.detail) for one in self.fields if not one.is_yes_no
         }
         places = {name: place for name, place in typed.items() if place is not None}
-        figures = [one.name for one in self.fields if one.known == METERS and "meter" in error.detail]
+        is_of_figures = isinstance(error, Doubted) or "meter" in error.detail
+        figures = [one.name for one in self.fields if one.known == METERS and is_of_figures]
         return next(
             iter([name for name in named if name in own] or sorted(places, key=places.__getitem__) or figures), ""
         )

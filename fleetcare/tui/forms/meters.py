@@ -1,10 +1,9 @@
 """Forms on meters: what one shows, and a new one in the place of an old one."""
 
-from collections.abc import Mapping
 from datetime import date
 from typing import TYPE_CHECKING
 
-from fleetcare.tui.forms.base import BY, METERS, NOTE, ON, Answer, Field, Form, Subject
+from fleetcare.tui.forms.base import BY, METERS, NOTE, ON, Answer, Field, Form, Said, Subject
 from fleetcare.tui.forms.work import RIGHT, WENT_ROUND
 
 if TYPE_CHECKING:
@@ -21,12 +20,10 @@ def _reading_draft() -> "type[Draft]":
     return ReadingDraft
 
 
-def _read(
-    session: "Session", subject: Subject, draft: "ReadingDraft", today: date, said: Mapping[str, bool]
-) -> "Entered":
+def _read(session: "Session", subject: Subject, draft: "ReadingDraft", today: date, said: Said) -> "Entered":
     from fleetcare.operations.entering import enter_reading
 
-    return enter_reading(session, draft.model_copy(update=dict(said)), today)
+    return enter_reading(session, draft.model_copy(update=said.get("value")), today)
 
 
 def _swap_draft() -> "type[Draft]":
@@ -35,7 +32,7 @@ def _swap_draft() -> "type[Draft]":
     return SwapDraft
 
 
-def _swap(session: "Session", subject: Subject, draft: "SwapDraft", today: date, said: Mapping[str, bool]) -> "Entered":
+def _swap(session: "Session", subject: Subject, draft: "SwapDraft", today: date, said: Said) -> "Entered":
     from fleetcare.operations.entering import enter_reading
 
     return enter_reading(session, draft.reading(), today)

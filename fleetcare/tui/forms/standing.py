@@ -1,11 +1,11 @@
 """Forms on how an engine stands: laid up, returned, stood down, withdrawn, moved to another machine."""
 
-from collections.abc import Callable, Mapping, Sequence
+from collections.abc import Callable, Sequence
 from datetime import date
 from typing import TYPE_CHECKING
 
 from fleetcare.domain.engines import Status
-from fleetcare.tui.forms.base import BY, ON, WHY, Field, Form, Subject
+from fleetcare.tui.forms.base import BY, ON, WHY, Field, Form, Said, Subject
 
 if TYPE_CHECKING:
     from sqlalchemy.orm import Session
@@ -28,10 +28,8 @@ def _return_draft() -> "type[Draft]":
     return ReturnDraft
 
 
-def _becomes(status: Status) -> "Callable[[Session, Subject, StatusDraft, date, Mapping[str, bool]], Entered]":
-    def store(
-        session: "Session", subject: Subject, draft: "StatusDraft", today: date, said: Mapping[str, bool]
-    ) -> "Entered":
+def _becomes(status: Status) -> "Callable[[Session, Subject, StatusDraft, date, Said], Entered]":
+    def store(session: "Session", subject: Subject, draft: "StatusDraft", today: date, said: Said) -> "Entered":
         from fleetcare.operations.entering import enter_status
 
         return enter_status(session, draft, status, today)
@@ -49,7 +47,7 @@ def _fit_draft() -> "type[Draft]":
     return FitDraft
 
 
-def _move(session: "Session", subject: Subject, draft: "FitDraft", today: date, said: Mapping[str, bool]) -> "Entered":
+def _move(session: "Session", subject: Subject, draft: "FitDraft", today: date, said: Said) -> "Entered":
     from fleetcare.operations.entering import enter_move
 
     return enter_move(session, draft, today)

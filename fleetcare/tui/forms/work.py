@@ -4,7 +4,7 @@ from collections.abc import Mapping
 from datetime import date
 from typing import TYPE_CHECKING
 
-from fleetcare.tui.forms.base import BY, METERS, NOTE, ON, WHY, Answer, Field, Form, Subject
+from fleetcare.tui.forms.base import BY, METERS, NOTE, ON, WHY, Answer, Field, Form, Said, Subject
 
 if TYPE_CHECKING:
     from sqlalchemy.orm import Session
@@ -38,10 +38,10 @@ def _log_draft() -> "type[Draft]":
     return LogDraft
 
 
-def _log(session: "Session", subject: Subject, draft: "LogDraft", today: date, said: Mapping[str, bool]) -> "Entered":
+def _log(session: "Session", subject: Subject, draft: "LogDraft", today: date, said: Said) -> "Entered":
     from fleetcare.operations.entering import enter_work
 
-    return enter_work(session, draft, today, said)
+    return enter_work(session, draft, today, said.get("at"))
 
 
 def _log_start(facts: "FormFacts", subject: Subject, on: date) -> Mapping[str, str]:
@@ -54,9 +54,7 @@ def _correction_draft() -> "type[Draft]":
     return CorrectionDraft
 
 
-def _correct(
-    session: "Session", subject: Subject, draft: "CorrectionDraft", today: date, said: Mapping[str, bool]
-) -> "Entered":
+def _correct(session: "Session", subject: Subject, draft: "CorrectionDraft", today: date, said: Said) -> "Entered":
     from fleetcare.operations.entering import enter_correction
 
     return enter_correction(session, draft, today)
@@ -68,9 +66,7 @@ def _deferral_draft() -> "type[Draft]":
     return DeferralDraft
 
 
-def _defer(
-    session: "Session", subject: Subject, draft: "DeferralDraft", today: date, said: Mapping[str, bool]
-) -> "Entered":
+def _defer(session: "Session", subject: Subject, draft: "DeferralDraft", today: date, said: Said) -> "Entered":
     from fleetcare.operations.entering import enter_deferral
 
     return enter_deferral(session, draft, today)

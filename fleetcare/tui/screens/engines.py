@@ -100,6 +100,16 @@ class EnginesScreen(FindingScreen):
 
         self.open_form("engine", Subject(""))
 
+    def action_round(self) -> None:
+        """Write down the meters of the site the cursor is in."""
+        from fleetcare.tui.forms.base import Subject
+        from fleetcare.tui.forms.round import round_form
+
+        here: YardRow | None = self.query_one(LongList).current
+        if here is not None and self.rows is not None:
+            rows = [row for row in self.rows if row.site == here.site]
+            self.show_form(round_form(here.site or "no site", rows), Subject(""))
+
     def action_item(self) -> None:
         """Open the page of the engine or machine under the cursor."""
         from fleetcare.tui.screens.item import ItemScreen

@@ -1,6 +1,6 @@
 """One form on the screen: read, stored, asked about where it is likely a slip, and left with what was stored."""
 
-from collections.abc import Iterator, Mapping, Sequence
+from collections.abc import Iterator, Sequence
 from functools import partial
 from typing import TYPE_CHECKING
 
@@ -8,13 +8,11 @@ from textual.message import Message
 
 from fleetcare.errors import Doubted, FleetError, Refused
 from fleetcare.tui.filling import FillingScreen
-from fleetcare.tui.forms.base import Answer, Subject
+from fleetcare.tui.forms.base import Answer, Form, Said, Subject
 from fleetcare.tui.widgets.question import Question
 
 if TYPE_CHECKING:
     from fleetcare.drafts.reading_in import Draft
-
-_FIGURES = ("at", "value")  # fields whose figures may be doubted
 
 
 class FormScreen(FillingScreen):
@@ -28,14 +26,19 @@ class FormScreen(FillingScreen):
             self.sentences = sentences
 
     class NotStored(Message):
-        """Nothing was stored, and why; `was_asked` is whether a doubt was answered before."""
+        """Nothing was stored, and why."""
 
-        def __init__(self, error: FleetError, *, was_asked: bool) -> None:
+        def __init__(self, error: FleetError) -> None:
             super().__init__()
-            self.error, self.was_asked = error, was_asked
+            self.error = error
 
     _draft: "Draft | None" = None
     """What is being stored, or asked about, just now."""
+
+    def __init__(self, form: Form, subject: Subject) -> None:
+        super().__init__(form, subject)
+        self._said: Said = {}
+        self._doubted = ""
 
     def action_back(self) -> None:
         """Leave; what is typed is kept. What is being stored just now is waited for."""
@@ -70,20 +73,23 @@ class FormScreen(FillingScreen):
         self.dismiss(message.sentences)
 
     def on_form_screen_not_stored(self, message: NotStored) -> None:
-        """Ask about a doubt, once; say anything else at the foot."""
-        if isinstance(message.error, Doubted) and self.form.answers and not message.was_asked:
-            self.query_one(Question).ask(message.error.detail, self.form.answers)
+        """Ask about a doubt, once a field; say anything else at the foot."""
+        error = message.error
+        doubted = self.form.field_of(error, self.values) if isinstance(error, Doubted) and self.form.answers else ""
+        if doubted and doubted not in self._said:
+            self._doubted = doubted
+            self.query_one(Question).ask(error.detail, self.form.answers)
             return
         self._draft = None
-        self.say_wrong("", message.error)
+        self.say_wrong("", error)
 
     def on_question_answered(self, message: Question.Answered) -> None:
         """Store as answered, or go back to what was typed, or on to the form an answer leads to."""
         answer, draft = message.answer, self._draft
         self._draft = None
-        self._to_figure()
+        self.rows[self._doubted].editor.focus()
         if answer.says and draft is not None:
-            self._begin(draft, answer.says)
+            self._begin(draft, {**self._said, self._doubted: answer.says})
         elif answer.leads_to:
             self._go_on(answer)
 
@@ -101,32 +107,27 @@ class FormScreen(FillingScreen):
                     Refused(f"{self.start[name]} cannot be left out", "take the entry back and log the work anew"),
                 )
 
-    def _begin(self, draft: "Draft", said: Mapping[str, bool]) -> None:
-        self._draft = draft
+    def _begin(self, draft: "Draft", said: Said) -> None:
+        self._draft, self._said = draft, said
         self.run_worker(partial(self._store, draft, said), thread=True, group="store", exit_on_error=False)
 
-    def _store(self, draft: "Draft", said: Mapping[str, bool]) -> None:
+    def _store(self, draft: "Draft", said: Said) -> None:
         """Store it. Runs in a thread: touches no widget."""
         try:
             with self.context.write() as session:
                 entered = self.form.store(session, self.subject, draft, self.context.today(), said)
         except FleetError as error:
-            self.post_message(self.NotStored(error, was_asked=bool(said)))
+            self.post_message(self.NotStored(error))
         else:
             self.post_message(self.Stored(entered.sentences()))
-
-    def _to_figure(self) -> None:
-        name = next((name for name in _FIGURES if name in self.rows), None)
-        if name is not None:
-            self.rows[name].editor.focus()
 
     def _go_on(self, answer: Answer) -> None:
         """Open the form an answer leads to, with the day and figure typed here."""
         from fleetcare.tui.forms.all import FORMS
 
         form, values = FORMS[answer.leads_to], self.values
-        carried = {"on": values["on"], "value": values.get("value") or values.get("at", "")}
-        subject = Subject(self.subject.tag, preset=carried)
+        carried = {"on": values["on"], "value": values[self._doubted]}
+        subject = Subject(self.rows[self._doubted].field.tag or self.subject.tag, preset=carried)
         self.app.push_screen(FormScreen(form, subject), partial(self._gone_on, answer))
 
     def _gone_on(self, answer: Answer, sentences: Sequence[str] | None) -> None:
