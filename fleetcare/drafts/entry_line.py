@@ -7,7 +7,8 @@ from datetime import date
 
 from fleetcare.drafts.entry_choose import choose
 from fleetcare.drafts.entry_figures import Figures, settle_figures
-from fleetcare.drafts.entry_parts import WHAT, Part, Piece, pieces, tag_pieces
+from fleetcare.drafts.entry_parts import WHAT, Part, Piece
+from fleetcare.drafts.entry_pieces import pieces, tag_pieces
 from fleetcare.drafts.entry_questions import (
     Choice,
     Question,
