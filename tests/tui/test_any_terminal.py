@@ -155,9 +155,9 @@ async def test_an_empty_database_says_how_to_begin_everywhere(
 ) -> None:
     context = Context(str(shutil.copy(new_database, tmp_path / "empty.db")))
     async with opened(context=context) as pilot:
-        assert line_with(pilot, "fleetcare engine add P-01")
+        assert line_with(pilot, "Add a first engine: 2 shows the engines, and there a adds one.")
         await press(pilot, "enter", "e", "f", "escape", "s", "c", "2", "enter")
-        assert line_with(pilot, "fleetcare engine add P-01")
+        assert line_with(pilot, "Add a first engine: 2 shows the engines, and there a adds one.")
 
 
 async def test_one_engine_without_tasks_says_what_comes_next(
@@ -166,7 +166,7 @@ async def test_one_engine_without_tasks_says_what_comes_next(
     path = Path(shutil.copy(new_database, tmp_path / "one.db"))
     type_in(path, "engine", "add", "P-01", "--in-service", "2024-01-10")
     async with opened(size=(100, 24), context=Context(str(path))) as pilot:
-        assert line_with(pilot, "fleetcare schedule list shows ready-made sets of tasks")
+        assert line_with(pilot, "x gives the one under the cursor the tasks of a ready-made schedule")
         await press(pilot, "2", "enter", "m")
         assert line_with(pilot, "No readings yet.")
 
