@@ -1,6 +1,7 @@
 """The command line as a tree of commands; each group stands in a file of its own and loads what it needs when run."""
 
 import argparse
+import re
 from collections.abc import Sequence
 from functools import cache
 
@@ -9,6 +10,9 @@ from fleetcare.cli import output
 from fleetcare.cli.parser import CommandParser
 from fleetcare.cli.screens import OpenScreens, shop_screens
 from fleetcare.errors import FleetError, Misread
+
+# What Python makes of bytes that are not UTF-8: lone surrogates.
+_OTHER_BYTES = re.compile("[\ud800-\udfff]")
 
 
 @cache
@@ -62,6 +66,7 @@ def build_parser() -> CommandParser:
 
 def _parse(arguments: Sequence[str]) -> argparse.Namespace:
     """Parse a command line; one without a command does not need the parsers of them all."""
+    _refuse_other_bytes(arguments)
     try:
         given, rest = CommandParser(prog="fleetcare", add_help=False).parse_known_args(arguments)
     except Misread:
@@ -70,6 +75,13 @@ def _parse(arguments: Sequence[str]) -> argparse.Namespace:
         return build_parser().parse_args(arguments)
     given.run = shop_screens
     return given
+
+
+def _refuse_other_bytes(arguments: Sequence[str]) -> None:
+    """Refuse what is no UTF-8: no file keeps it and no terminal shows it."""
+    for argument in arguments:
+        if _OTHER_BYTES.search(argument):
+            raise Misread(f"{argument!r} holds bytes that are not UTF-8 text", "type it in a terminal set to UTF-8")
 
 
 def run(arguments: Sequence[str], open_screens: OpenScreens) -> int:

@@ -127,3 +127,12 @@ def _fleetcare_process(*words: str, stdout: Any) -> subprocess.CompletedProcess[
     return subprocess.run(
         [sys.executable, "-m", "fleetcare", *words], stdout=stdout, stderr=subprocess.PIPE, check=False
     )
+
+
+@pytest.mark.parametrize(
+    "words", [("show", "a\udcff"), ("log", "P-01", "--note", "a\udcff"), ("--db", "a\udcff", "due")]
+)
+def test_bytes_that_are_no_text_are_refused_in_one_line(fleetcare: Runner, words: tuple[str, ...]) -> None:
+    ran = fleetcare(*words)
+    assert (ran.status, ran.out) == (2, "")
+    assert ran.err == "'a\\udcff' holds bytes that are not UTF-8 text; type it in a terminal set to UTF-8\n"
