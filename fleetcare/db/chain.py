@@ -5,10 +5,10 @@ Plain SQL and no tables, so that a card or a label can carry the ledger's head w
 
 import hashlib
 import json
-from collections.abc import Iterable, Iterator
-from typing import NamedTuple
+from collections.abc import Iterable, Iterator, Mapping, Sequence
+from typing import Any, NamedTuple
 
-from sqlalchemy import Connection, RowMapping
+from sqlalchemy import Connection
 
 GENESIS = "0" * 64  # what the first entry is sealed to
 
@@ -35,7 +35,6 @@ class Entry(NamedTuple):
         return f"{self.seq}:{self.hash}"
 
 
-# In the driver's own words, as every write asks them: taking a statement apart takes longer than answering it.
 _ALL = f"SELECT {', '.join(Entry._fields)} FROM ledger ORDER BY seq"
 _NEWEST = f"{_ALL} DESC LIMIT 1"
 _APPEND = f"INSERT INTO ledger ({', '.join(Entry._fields)}) VALUES ({', '.join('?' for _ in Entry._fields)})"
@@ -56,37 +55,44 @@ def seal(seq: int, kind: str, row_uid: str, payload_version: int, payload: str, 
 
 def entries(connection: Connection) -> Iterator[Entry]:
     """Give every entry of the ledger in order."""
-    for row in connection.exec_driver_sql(_ALL):
+    for row in _driver(connection).execute(_ALL):
         yield Entry(*row)
 
 
 def last_entry(connection: Connection) -> Entry:
     """Give the newest entry of the ledger, START while it has none."""
-    row = connection.exec_driver_sql(_NEWEST).one_or_none()
+    row = _driver(connection).execute(_NEWEST).fetchone()
     return Entry(*row) if row else START
 
 
-def append(connection: Connection, added: list[Entry]) -> None:
+def append(connection: Connection, added: Sequence[Entry]) -> None:
     """Store entries that follow from the last one."""
-    connection.exec_driver_sql(_APPEND, [tuple(entry) for entry in added])
+    _driver(connection).executemany(_APPEND, added)
 
 
-def rows(connection: Connection, table: str, ids: Iterable[int] | None = None) -> Iterator[RowMapping]:
+def rows(connection: Connection, table: str, ids: Iterable[int] | None = None) -> Iterator[dict[str, Any]]:
     """Give the rows of a table in id order, all or those with the given ids, every value as the file holds it.
 
     No column types are applied: what is sealed is what is stored, even where somebody spoilt it.
     """
-    everything = f"SELECT * FROM {connection.dialect.identifier_preparer.quote_identifier(table)}"
-    if ids is None:
-        yield from connection.exec_driver_sql(f"{everything} ORDER BY id").mappings()
-    else:
-        some = f"{everything} WHERE id IN (SELECT value FROM json_each(?)) ORDER BY id"
-        yield from connection.exec_driver_sql(some, (canonical(list(ids)),)).mappings()
+    some, values = "", []
+    if ids is not None:
+        some, values = "WHERE id IN (SELECT value FROM json_each(?))", [canonical(list(ids))]
+    name = connection.dialect.identifier_preparer.quote_identifier(table)
+    found = _driver(connection).execute(f"SELECT * FROM {name} {some} ORDER BY id", values)
+    columns = [column for column, *_ in found.description]
+    for row in found:
+        yield dict(zip(columns, row, strict=True))
 
 
-def payload(row: RowMapping) -> str:
+def _driver(connection: Connection) -> Any:
+    """Give the driver's connection, in the transaction that is open: what lies between takes longer than the answer."""
+    return connection.connection.driver_connection
+
+
+def payload(row: Mapping[str, Any]) -> str:
     """Give the payload of a row: figures and days as text, truth as 0 or 1, references as ids.
 
     Ids will do, because the payloads of the rows referred to hold those ids too.
     """
-    return canonical(dict(row))
+    return canonical(row)

@@ -40,6 +40,7 @@ def reading(path: Path, *, as_is: bool = False) -> Iterator[Connection]:
             current(path)
         connection = engine(path, query_only=True).connect()
     with using(path), connection:
+        connection.begin()
         yield connection
 
 

@@ -12,7 +12,7 @@ from fleetcare.domain import meters as facts
 from fleetcare.domain.quantities import Figure, Kind, from_base, plain, to_base
 from fleetcare.drafts.items import ItemDraft
 from fleetcare.errors import Refused
-from fleetcare.operations.find import FoundItem, FoundMeter, find_meters, pick_meter
+from fleetcare.operations.find import FoundItem, FoundMeter, find_fits, find_meters, pick_meter
 from fleetcare.operations.load import load_counters
 from fleetcare.operations.readings import NewReading, store_reading
 from fleetcare.operations.rows import fetch
@@ -25,7 +25,11 @@ _START_NOTE = "start figure"
 
 def add_meters(session: "Session", item: FoundItem, draft: ItemDraft, from_on: date | None) -> None:
     """Add the meters a draft names, counting from a day (None: since ever). Refuses a kind counted already."""
-    owned = {meter.kind for meter in _own_meters(session, item.id)}
+    owned = {
+        fit.meter.kind
+        for fit in find_fits(session.connection(), item.id)
+        if fit.meter.owner_id == item.id and fit.to_on is None
+    }
     for kind, unit in draft.meter:
         if kind in owned:
             raise Refused(
@@ -42,7 +46,7 @@ def add_meters(session: "Session", item: FoundItem, draft: ItemDraft, from_on: d
 
 def set_digits(session: "Session", item: FoundItem, draft: ItemDraft) -> None:
     """Set the digits of an item's own meters, which give their rollover. Refuses fewer than have been read."""
-    meters = _own_meters(session, item.id)
+    meters = _own_meters(session, item.id) if draft.meter_digits else []
     for kind, before, after in draft.meter_digits:
         fitting = [meter for meter in meters if kind in {None, meter.kind}]
         if len(fitting) != 1:

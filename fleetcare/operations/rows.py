@@ -18,11 +18,15 @@ Row = tuple[Any, ...]
 
 
 def fetch(connection: "Connection", sql: str, **values: object) -> Sequence[Row]:
-    """Give all rows of a statement. A name in it bound to a list or tuple stands for all of its values, however many."""
+    """Give all rows of a statement. A name in it bound to a list or tuple stands for all of its values, however many.
+
+    The driver is asked directly, in the transaction that is open: everything in between takes ten times as long as
+    it takes to answer.
+    """
     lists = tuple(name for name, value in values.items() if isinstance(value, list | tuple))
     bound = values | {name: json.dumps(values[name]) for name in lists}
-    # Asked in the driver's own words: taking a statement apart and together again takes longer than answering it.
-    return cast("Sequence[Row]", connection.exec_driver_sql(_with_lists(sql, lists), bound).all())
+    driver: Any = connection.connection.driver_connection
+    return cast("Sequence[Row]", driver.execute(_with_lists(sql, lists), bound).fetchall())
 
 
 @cache
