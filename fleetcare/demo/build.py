@@ -11,6 +11,7 @@ from fleetcare.db.session import copy, writing
 from fleetcare.demo.enter import enter
 from fleetcare.demo.history import history
 from fleetcare.demo.steps import Step, Verb
+from fleetcare.demo.yard_of import yard_of
 from fleetcare.exchange.csv_out import csv_text, write_new
 from fleetcare.operations.imports import read_import, store_import
 from fleetcare.operations.upkeep import refuse_taken
@@ -45,14 +46,14 @@ class Stamps:
         return f"{next(self._numbers):032x}"
 
 
-def build(out: Path, anchor: date) -> None:
+def build(out: Path, anchor: date, engines: int | None = None) -> None:
     """Write the demo fleet as it stands on the anchor day to the new file `out`; the same day gives the same rows.
 
-    It is built in a place of its own and copied when whole, so that no half of one ever carries the name. Raises
+    With `engines` it is a generated yard of so many. It is built in a place of its own and copied when whole, so that no half of one ever carries the name. Raises
     Refused where `out` is there already or the day leaves no room for a history, NoDatabase where it cannot be written.
     """
     refuse_taken(out)
-    steps, stamps = history(anchor), Stamps()
+    steps, stamps = history(anchor) if engines is None else history(anchor, yard_of(engines), changeover=0), Stamps()
     with TemporaryDirectory() as folder:
         path = Path(folder, "demo.db")
         with writing(path, stamps.moment, stamps.uid) as session:

@@ -7,15 +7,18 @@ from fleetcare.demo.fleet import ITEMS, SHOP
 from fleetcare.demo.items import Ago, Item, Shown
 from fleetcare.demo.odd import odd_readings
 from fleetcare.demo.steps import Step, Verb, in_order
-from fleetcare.demo.yard import Yard
+from fleetcare.demo.yard import CHANGEOVER, Yard
 
 _READER = "Quill"
 _MECHANICS = ("Fenn", "Quill")
 
 
-def history(anchor: date, items: Sequence[Item] = ITEMS) -> list[Step]:
-    """Give everything entered up to the anchor day, about some items, in order. Refuses a day too early for a history."""
-    yard = Yard(anchor, items)
+def history(anchor: date, items: Sequence[Item] = ITEMS, changeover: int = CHANGEOVER) -> list[Step]:
+    """Give everything entered up to the anchor day, about some items, in order. Refuses a day too early for a history.
+
+    `changeover` is how many days before it the tool came into use.
+    """
+    yard = Yard(anchor, items, changeover)
     steps = [Step(yard.changeover, yard.changeover, Verb.SETTING, values={"name": "shop-name", "value": SHOP})]
     for item in items:
         work = list(_work(yard, item))

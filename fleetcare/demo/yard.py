@@ -26,15 +26,18 @@ _PAST_THE_TURN = Decimal("0.4")
 class Yard:
     """Some items of the demo fleet seen from an anchor day. Meters go by the names their items give them."""
 
-    def __init__(self, anchor: date, items: Sequence[Item]) -> None:
-        """Work out all use up to `anchor`. Refuses a day so early that the history would begin before any can."""
+    def __init__(self, anchor: date, items: Sequence[Item], changeover: int = CHANGEOVER) -> None:
+        """Work out all use up to `anchor`. Refuses a day so early that the history would begin before any can.
+
+        `changeover` is how many days before it the tool came into use.
+        """
         earliest = FIRST_DAY + timedelta(days=max(item.came for item in items))
         if anchor < earliest:
             raise Refused(
                 f"the history of the demo fleet does not fit before {anchor}", f"give a day from {earliest} on"
             )
         self.anchor = anchor
-        self.changeover = self.ago(CHANGEOVER)
+        self.changeover = self.ago(changeover)
         self.came = {item.tag: self.ago(item.came) for item in items}
         self._rounds = tuple(self._round_days())
         self.meters: dict[str, Meter] = {}
