@@ -11,7 +11,7 @@ from decimal import Decimal
 from random import Random
 from typing import TYPE_CHECKING, Protocol
 
-from fleetcare.rules.due.calendar import add
+from dateutil.relativedelta import relativedelta
 
 if TYPE_CHECKING:
     from fleetcare.demo.yard import Yard
@@ -109,12 +109,12 @@ class Dated:
     def work(self, yard: "Yard", tag: str, task: str) -> Iterator[Work]:
         """Give the days, each a few days before the next one is due, so that none is late by the length of a month."""
         random = Random(f"{tag} {task}")
-        day = add(yard.ago(-self.left), -self.months, 0)
+        day = yard.ago(-self.left) - relativedelta(months=self.months)
         for _ in range(self.most):
             if day <= yard.came[tag]:
                 return
             yield day, yard.dial(tag, day) if tag in yard.meters else ""
-            day = add(day, -self.months, random.randint(0, 6))
+            day += timedelta(days=random.randint(0, 6)) - relativedelta(months=self.months)
 
 
 @dataclass(frozen=True, slots=True)
@@ -141,8 +141,8 @@ class Each:
             if number == self.missed:
                 continue
             if self.months:
-                back = (anchor.month - 1) % self.months + self.months * number
-                begins = add(anchor.replace(day=1), -back, 0)
+                begins = anchor.replace(day=1) - relativedelta(months=(anchor.month - 1) % self.months)
+                begins -= relativedelta(months=self.months * number)
                 day = begins + timedelta(days=7 + (1 - begins.weekday()) % 7)
             else:
                 day = anchor - timedelta(days=anchor.weekday() + 7 * number)

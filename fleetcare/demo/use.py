@@ -23,20 +23,17 @@ class Curve:
         rhythm: Rhythm,
         seed: str,
         extra: Mapping[date, int] | None = None,
-        idle: tuple[date, date] | None = None,
+        idle: tuple[date, date] = (date.max, date.max),
     ) -> None:
         """Begin at 0 on `first`. `extra` are tenths gained on single days besides, `idle` the days without any use."""
         self.first = first
-        random, days = Random(seed), map(date.fromordinal, range(first.toordinal() + 1, last.toordinal() + 1))
-        gained = [rhythm(day, random) for day in days]
+        random, days = Random(seed), [first + timedelta(days=n) for n in range(1, (last - first).days + 1)]
+        gained = {day: rhythm(day, random) for day in days}
         for day, more in (extra or {}).items():
-            if first < day <= last:
-                gained[(day - first).days - 1] += more
-        if idle is not None:
-            begins, ends = (max(1, (day - first).days) for day in idle)
-            for place in range(begins - 1, ends):
-                gained[place] = 0
-        self._tenths = list(accumulate(gained, initial=0))
+            if day in gained:
+                gained[day] += more
+        begins, ends = idle
+        self._tenths = list(accumulate((0 if begins <= day <= ends else gained[day] for day in days), initial=0))
         self.lift(Decimal(0))
 
     def lift(self, start: Decimal) -> None:

@@ -105,7 +105,7 @@ class Yard:
             extra[self.ago(meter.replaced)] = UNMETERED
         if meter.exercise is not None:
             extra |= dict.fromkeys(meter.exercise.days(self.anchor), _EXERCISE_TENTHS)
-        idle = (self.ago(meter.idle[0]), self.ago(meter.idle[1])) if meter.idle else None
+        idle = (self.ago(meter.idle[0]), self.ago(meter.idle[1])) if meter.idle else (date.max, date.max)
         curve = Curve(self.came[item.tag], self.anchor, meter.rhythm, meter.seed or item.tag, extra, idle)
         curve.lift(Decimal(meter.start))
         if meter.turned is not None:

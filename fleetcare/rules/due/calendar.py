@@ -1,9 +1,10 @@
 """Calendar arithmetic of due work: spans, unbroken chains, month ends and periods."""
 
-from calendar import monthrange
 from dataclasses import dataclass
 from datetime import date, timedelta
 from decimal import Decimal
+
+from dateutil.relativedelta import relativedelta
 
 from fleetcare.domain.quantities import Span
 from fleetcare.domain.schedules import Period
@@ -13,14 +14,12 @@ _MONTHS_IN = {Period.MONTH: 1, Period.QUARTER: 3, Period.YEAR: 12}
 
 def add(start: date, months: int, days: int) -> date:
     """Add whole months, clamped to the last day of the month reached, then days."""
-    year, month = divmod(start.year * 12 + start.month - 1 + months, 12)
-    last = monthrange(year, month + 1)[1]
-    return date(year, month + 1, min(start.day, last)) + timedelta(days=days)
+    return start + relativedelta(months=months, days=days)
 
 
 def month_end(day: date) -> date:
     """Give the last day of a day's month."""
-    return day.replace(day=monthrange(day.year, day.month)[1])
+    return day + relativedelta(day=31)
 
 
 def shorten(span: Span, factor: Decimal) -> Span:
