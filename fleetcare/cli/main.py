@@ -2,8 +2,9 @@
 
 import argparse
 import re
-from collections.abc import Sequence
+from collections.abc import Mapping, Sequence
 from functools import cache
+from importlib import import_module
 
 from fleetcare import __version__
 from fleetcare.cli import output
@@ -15,43 +16,32 @@ from fleetcare.errors import FleetError, Misread
 _OTHER_BYTES = re.compile("[\ud800-\udfff]")
 
 
-@cache
-def build_parser() -> CommandParser:
-    """Give the parser of the whole command line, made once; a parsed command carries its handler as `run`."""
-    # Loaded here, so that the screens need not wait for commands nobody named.
-    from fleetcare.cli import (
-        calc,
-        defer,
-        demo,
-        due,
-        forecast,
-        imports,
-        items,
-        log,
-        measure,
-        readings,
-        schedules,
-        settings,
-        tasks,
-        upkeep,
-    )
+_GROUPS: Mapping[str, tuple[str, ...]] = {
+    "due": ("due", "show"),
+    "items": ("engine", "machine"),
+    "tasks": ("task",),
+    "schedules": ("schedule",),
+    "readings": ("reading",),
+    "log": ("log", "correct"),
+    "measure": ("measure",),
+    "defer": ("defer",),
+    "forecast": ("forecast",),
+    "imports": ("import",),
+    "settings": ("setting",),
+    "upkeep": ("backup", "check", "upgrade"),
+    "demo": ("demo",),
+    "calc": ("calc",),
+}
+"""The files of this folder that hold commands, in the order of help, with the commands each adds."""
 
-    groups = (
-        due,
-        items,
-        tasks,
-        schedules,
-        readings,
-        log,
-        measure,
-        defer,
-        forecast,
-        imports,
-        settings,
-        upkeep,
-        demo,
-        calc,
-    )
+
+@cache
+def build_parser(command: str | None = None) -> CommandParser:
+    """Give the parser of the whole command line, made once; a parsed command carries its handler as `run`.
+
+    With a command known here it knows that one and those of the same file: nobody waits for commands nobody named.
+    """
+    groups = [name for name, commands in _GROUPS.items() if command in commands] or [*_GROUPS]
     parser = CommandParser(
         prog="fleetcare",
         description="What each engine of a small fleet needs next, with the working shown.",
@@ -60,7 +50,7 @@ def build_parser() -> CommandParser:
     parser.add_argument("--version", action="version", version=f"fleetcare {__version__}")
     commands = parser.add_subparsers(title="commands", metavar="COMMAND")
     for group in groups:
-        group.add_commands(commands)
+        import_module(f"fleetcare.cli.{group}").add_commands(commands)
     return parser
 
 
@@ -72,7 +62,7 @@ def _parse(arguments: Sequence[str]) -> argparse.Namespace:
     except Misread:
         rest = [*arguments]  # what is wrong is said by the command it belongs to
     if rest:
-        return build_parser().parse_args(arguments)
+        return build_parser(rest[0]).parse_args(arguments)
     given.run = shop_screens
     return given
 

@@ -1,5 +1,6 @@
 """What holds for every command: options in any place, one-line errors, exit statuses."""
 
+import argparse
 import os
 import subprocess
 import sys
@@ -35,6 +36,25 @@ def test_the_database_and_the_day_are_absent_where_nobody_gave_them() -> None:
     parsed = build_parser().parse_args(["calc", *SUM])
     assert "db" not in parsed
     assert "as_of" not in parsed
+
+
+def commands_of(parser: argparse.ArgumentParser) -> dict[str, argparse.ArgumentParser]:
+    """Give the commands a parser knows."""
+    (group,) = (action for action in parser._actions if isinstance(action, argparse._SubParsersAction))
+    return dict(group.choices)
+
+
+@pytest.mark.parametrize("command", commands_of(build_parser()))
+def test_the_parser_of_one_command_reads_it_as_the_parser_of_all_does(command: str) -> None:
+    alone, all_of_them = commands_of(build_parser(command)), commands_of(build_parser())
+    assert len(alone) < 4
+    assert alone[command].format_help() == all_of_them[command].format_help()
+
+
+def test_what_is_no_command_is_held_against_all_of_them(fleetcare: Runner) -> None:
+    ran = fleetcare("dew")
+    assert ran.status == 2
+    assert all(repr(command) in ran.err for command in commands_of(build_parser()))
 
 
 @pytest.mark.parametrize("words", [(), ("demo",), ("--as-of", "2026-05-01")], ids=" ".join)
