@@ -3,6 +3,7 @@
 FleetError
   Refused        understood, but it may not be done         exit status 1
     Doubted      likely a slip, unless somebody is sure     exit status 1
+    SheetWanted  not without a sheet of measurements        exit status 1
     Refusals     several at once: an import, a form         exit status 1
   Misread        a value that cannot be read as its kind     exit status 2
   NoDatabase     the database cannot be opened or written   exit status 3
@@ -40,6 +41,14 @@ class Refused(FleetError):
 
 class Doubted(Refused):
     """The request is likely a slip: it is done only if somebody says that it is right, or explains it."""
+
+
+class SheetWanted(Refused):
+    """The request needs a sheet of a kind, which did not come with it."""
+
+    def __init__(self, detail: str, remedy: str, kind: str) -> None:
+        super().__init__(detail, remedy)
+        self.kind = kind
 
 
 class Refusals(Refused):

@@ -5,6 +5,7 @@ from dataclasses import dataclass, field
 from datetime import date
 from decimal import Decimal
 from enum import StrEnum
+from typing import NamedTuple
 
 from fleetcare.domain.engines import Side
 
@@ -49,6 +50,14 @@ class Unjudged(StrEnum):
     OTHER_CONDITION = "other condition"
     UNDECIDED = "undecided"
     NO_LIMIT_OF_ITS_OWN = "no limit of its own"
+
+
+class CellKey(NamedTuple):
+    """Which value of a sheet: what is measured, at which point, and when."""
+
+    quantity: str
+    point: str
+    phase: Phase
 
 
 @dataclass(frozen=True, slots=True)

@@ -14,10 +14,11 @@ from fleetcare.errors import FleetError, Misread, Refused
 
 @dataclass(frozen=True, slots=True)
 class SheetRow:
-    """One row as typed: its number, to name it by, and its cells by column."""
+    """One row as typed: its number, to name it by, its cells by column, and whether somebody is sure of an odd value."""
 
     number: int
     cells: Mapping[str, str]
+    is_sure: bool = False
 
 
 @dataclass(frozen=True, slots=True)

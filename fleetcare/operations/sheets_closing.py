@@ -6,7 +6,7 @@ from datetime import date
 from types import MappingProxyType
 
 from fleetcare.domain.schedules import Task
-from fleetcare.errors import Refused
+from fleetcare.errors import Refused, SheetWanted
 from fleetcare.operations.sheets_judge import JudgedSheet
 from fleetcare.rules.due.due_list import item_lines
 from fleetcare.rules.due.facts import ItemFacts
@@ -37,9 +37,11 @@ def why_open(task: Task, on: date, sheets: Sheets) -> str:
 
 def refuse_without_sheet(task: Task, on: date, sheets: Sheets = NONE_CAME) -> None:
     """Refuse work on a task that needed a sheet on its day, where none that closes it came along."""
-    why = why_open(task, on, sheets)
+    why, kind = why_open(task, on, sheets), task.version_on(on).needs_sheet
+    if why and kind in sheets:
+        raise Refused(f"{task.name} {why}", _INCOMPLETE)
     if why:
-        raise Refused(f"{task.name} {why}", _INCOMPLETE if task.version_on(on).needs_sheet in sheets else _WITHOUT)
+        raise SheetWanted(f"{task.name} {why}", _WITHOUT, kind)
 
 
 def say_still_open(

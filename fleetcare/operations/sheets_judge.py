@@ -10,10 +10,9 @@ from typing import TYPE_CHECKING
 from fleetcare.domain.sheets import LASH, SHIM, Judgement, LashStand, Phase, Sheet, SheetValue
 from fleetcare.operations.find import FoundItem
 from fleetcare.operations.sheets_load import LashForm, lash_form, load_sheets
-from fleetcare.operations.sheets_values import DoubtedGap, doubt_of, read_value
 from fleetcare.rules.explain_lash import JudgedRow as JudgedRow
 from fleetcare.rules.explain_lash import judged_row, say_spec
-from fleetcare.rules.judge_lash import ANY, judge_sheet, judge_value, stand_of
+from fleetcare.rules.judge_lash import ANY, judge_sheet, stand_of
 from fleetcare.rules.lash_mending import mend
 from fleetcare.rules.lash_points import side_of
 
@@ -96,25 +95,6 @@ def sheet_of_entry(connection: "Connection", item: FoundItem, entry: int) -> Jud
 
 def _judge_stored(connection: "Connection", item: FoundItem, sheet: Sheet) -> JudgedSheet:
     return judge(lash_form(connection, item, sheet.on, but_from=sheet.entry), sheet)
-
-
-@dataclass(frozen=True, slots=True)
-class JudgedCell:
-    """One cell judged as typed: its value, its flat row, and the doubt about it, None where there is none."""
-
-    value: SheetValue
-    row: JudgedRow
-    doubt: DoubtedGap | None
-
-
-def judge_cell(
-    form: LashForm, point: str, phase: Phase, text: str, condition: str = "", unit: str | None = None
-) -> JudgedCell:
-    """Judge what was typed at a point at once. Raises Misread or Refused for what is no gap, in words for that cell."""
-    value = read_value(form, LASH, point, phase, text, unit)
-    judged = judge_value(value, side_of(point), form.spec, condition)
-    shims = {(point, phase): shim for point, shim in form.shims.items()}
-    return JudgedCell(value, _row(form, judged, shims, is_now=True), doubt_of(form, value))
 
 
 def _row(form: LashForm, judged: Judgement, shims: Mapping[tuple[str, Phase], Decimal], *, is_now: bool) -> JudgedRow:

@@ -15,7 +15,7 @@ from fleetcare.rules.lash_points import find_point
 def read_values(form: LashForm, sheet: SheetIn, *, sure: bool) -> tuple[SheetValue, ...]:
     """Read the values of a sheet. Raises Refusals with everything that is wrong with any cell, in the order of rows.
 
-    A gap that is more likely a slip is refused too unless `sure`; one no engine has is refused even then.
+    A gap that is more likely a slip is refused too unless `sure`, of it or of the sheet; one no engine has even then.
     """
     faults = list(cast("tuple[RowRefused, ...]", sheet.faults))
     rows: dict[tuple[str, str, Phase], int] = {}
@@ -31,7 +31,7 @@ def read_values(form: LashForm, sheet: SheetIn, *, sure: bool) -> tuple[SheetVal
             faults.append(RowRefused(plain.number, "point", detail, "keep one of them"))
         rows.setdefault(key, plain.number)
         doubted = doubt_of(form, value)
-        if doubted is not None and not (sure and doubted.is_possible):
+        if doubted is not None and not ((sure or plain.is_sure) and doubted.is_possible):
             faults.append(RowRefused(plain.number, "value", doubted.text, doubted.remedy))
         values.append(value)
     if faults:

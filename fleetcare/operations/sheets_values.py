@@ -19,10 +19,11 @@ from fleetcare.rules.nameplate import LashUnit
 
 @dataclass(frozen=True, slots=True)
 class DoubtedGap:
-    """A gap that is more likely a slip: why, in words that name the point and what was likely meant."""
+    """A gap that is more likely a slip: why, in words that name the point, and what was likely meant, as one types it."""
 
     text: str
     is_possible: bool
+    meant: tuple[str, ...] = ()
 
     @property
     def remedy(self) -> str:
@@ -36,7 +37,10 @@ def doubt_of(form: LashForm, value: SheetValue) -> DoubtedGap | None:
         return None
     ranges = form.spec.ranges if form.spec else {}
     found = doubt(value, ranges.get(side_of(value.point)), form.spec.unit if form.spec else "mm")
-    return DoubtedGap(say_doubt(value, found), found.is_possible) if found else None
+    if found is None:
+        return None
+    meant = tuple(f"{figure:f}" for figure, unit in found.meant if unit == value.unit)
+    return DoubtedGap(say_doubt(value, found), found.is_possible, meant)
 
 
 def read_value(form: LashForm, quantity: str, point: str, phase: Phase, text: str, unit: str | None) -> SheetValue:

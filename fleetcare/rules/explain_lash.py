@@ -1,14 +1,16 @@
 """A judged lash sheet in words and flat rows: what table, JSON and screen show, so that they cannot disagree."""
 
-from collections.abc import Mapping
+from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
 from datetime import date
 from decimal import Decimal
+from fractions import Fraction
 
 from fleetcare.domain.quantities import plain
 from fleetcare.domain.sheets import Judgement, LashSpec, Place, SheetValue, Unjudged
 from fleetcare.rules.lash_doubts import Doubt
 from fleetcare.rules.lash_mending import Mending
+from fleetcare.rules.lash_points import Stop
 
 _PLACES_SHOWN = 4
 
@@ -104,6 +106,22 @@ def say_doubt(value: SheetValue, doubt: Doubt) -> str:
     return f"{value} {value.unit} at {value.point}: {doubt.why}{f'; {meant} is likely meant' if meant else ''}"
 
 
+def say_stop(stops: Sequence[Stop], number: int) -> str:
+    """Say how to turn the crank to the stop of a number, from 0, and which points are set there."""
+    stop = stops[number]
+    names = " ".join(point.name for point in stop.points)
+    here = stop.position
+    if here is None:
+        return f"No firing order is known: see to it yourself that each valve is closed when it is measured. {names}"
+    before = stops[number - 1].position if number else None
+    turn = f"turn on {plain(_degrees(here.crank - before.crank))}°: " if before is not None else ""
+    standing = (
+        f"cylinder {here.tdc_compression} at TDC on compression" if here.tdc_compression else "no cylinder at TDC"
+    )
+    rocking = f", {here.rocking} rocking" if here.rocking else ""
+    return f"Stop {number + 1} of {len(stops)}: {turn}{standing}{rocking}. Here {names}"
+
+
 def say_spec(spec: LashSpec | None) -> str:
     """Say the limits a sheet is held against, side by side."""
     if spec is None or not spec.ranges:
@@ -123,6 +141,10 @@ _WHY_NOT: Mapping[Unjudged, str] = {
 def _say_off(least: Decimal, most: Decimal) -> str:
     """Say how far out a gap is: one figure, or from and to for an interval."""
     return _short(most) if least == most else f"{_short(least)} to {_short(most)}"
+
+
+def _degrees(angle: Fraction) -> Decimal:
+    return round(Decimal(angle.numerator) / angle.denominator, 0)
 
 
 def _short(figure: Decimal) -> str:

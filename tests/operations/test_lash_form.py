@@ -8,10 +8,9 @@ import pytest
 from fleetcare.context import Context
 from fleetcare.domain.engines import Bridged, Layout, Side
 from fleetcare.domain.sheets import Phase
-from fleetcare.errors import Misread
 from fleetcare.operations.find import find_item
-from fleetcare.operations.sheets_judge import judge_cell
 from fleetcare.operations.sheets_load import LashForm, open_form
+from fleetcare.operations.sheets_typed import CellKey, JudgedRow, read_typed
 from tests.operations.importing import engine
 from tests.operations.sheet_yard import FOUND_IN, LASH, take, yard_with_valves
 
@@ -54,6 +53,14 @@ def test_an_engine_with_nothing_but_cylinders_has_a_form_without_limits_and_orde
     assert found.notes == ("P-01 is taken to have 2 valves per cylinder, as nobody stated how many",)
 
 
+def found(ctx: Context, point: str, text: str) -> JudgedRow:
+    """Give the row of a gap found at a point, as judged while it is typed."""
+    key = CellKey("lash", point, Phase.FOUND)
+    row = read_typed(form(ctx), {key: text}).row(key)
+    assert row is not None
+    return row
+
+
 @pytest.mark.parametrize(
     ("point", "phase", "text", "verdict", "note", "last"),
     [
@@ -67,37 +74,36 @@ def test_a_cell_is_judged_as_it_is_typed(
 ) -> None:
     yard_with_valves(ctx)
     take(ctx, *FOUND_IN, on="2026-04-01")
-    cell = judge_cell(form(ctx), point, phase, text, "cold")
-    assert (cell.row.verdict, cell.row.note, cell.row.last, cell.doubt) == (verdict, note, last, None)
+    typed = read_typed(form(ctx), {CellKey("lash", point, phase): text}, "cold")
+    row = typed.row(CellKey("lash", point, phase))
+    assert row is not None
+    assert (row.verdict, row.note, row.last, typed.doubts) == (verdict, note, last, {})
 
 
 def test_a_cell_says_what_mends_it(ctx: Context) -> None:
     yard_with_valves(ctx, adjuster="screw", screw_pitch="1")
-    assert judge_cell(form(ctx), "2E", Phase.FOUND, "0.35").row.mending == "turn the screw 36° looser"
+    assert found(ctx, "2E", "0.35").mending == "turn the screw 36° looser"
 
 
 def test_a_cell_knows_the_shim_that_was_fitted(ctx: Context) -> None:
     yard_with_valves(ctx, adjuster="shim", shim_step="0.05")
     take(ctx, "shim,2E,left,2.75,", on="2026-04-01")
-    assert judge_cell(form(ctx), "2E", Phase.FOUND, "0.36").row.mending == "fit a 2.65 mm shim, which leaves 0.46 mm"
+    assert found(ctx, "2E", "0.36").mending == "fit a 2.65 mm shim, which leaves 0.46 mm"
 
 
 def test_a_doubted_cell_says_so_and_is_judged_all_the_same(ctx: Context) -> None:
     yard_with_valves(ctx)
-    cell = judge_cell(form(ctx), "1I", Phase.FOUND, "3.0")
-    assert cell.doubt is not None
-    assert cell.doubt.text.startswith("3.0 mm at 1I: it is 3 times the 0.3 mm where its check range ends")
-    assert (cell.doubt.is_possible, cell.doubt.remedy) == (True, "correct it, or give --sure if it is right")
-    assert cell.row.verdict == "alert"
-
-
-def test_a_cell_in_inches_on_a_form_in_millimetres_is_read_in_inches(ctx: Context) -> None:
-    yard_with_valves(ctx)
-    cell = judge_cell(form(ctx), "1I", Phase.FOUND, "10", unit="in")
-    assert (str(cell.value), cell.row.verdict, cell.row.limit_unit) == ("0.010", "in", "mm")
+    key = CellKey("lash", "1I", Phase.FOUND)
+    typed = read_typed(form(ctx), {key: "3.0"})
+    doubt = typed.doubts[key]
+    assert doubt.text.startswith("3.0 mm at 1I: it is 3 times the 0.3 mm where its check range ends")
+    assert (doubt.is_possible, doubt.meant) == (True, ("0.3",))
+    assert found(ctx, "1I", "3.0").verdict == "alert"
 
 
 def test_what_is_no_gap_is_said_in_words_for_the_cell(ctx: Context) -> None:
     yard_with_valves(ctx)
-    with pytest.raises(Misread, match=r"^'wide' is not a gap; write it like 0.25"):
-        judge_cell(form(ctx), "1I", Phase.FOUND, "wide")
+    key = CellKey("lash", "1I", Phase.FOUND)
+    typed = read_typed(form(ctx), {key: "wide", CellKey("lash", "1E", Phase.FOUND): "45"})
+    assert str(typed.wrong[key]).startswith("'wide' is not a gap; write it like 0.25")
+    assert [row.point for row in typed.judged.rows] == ["1E"]
