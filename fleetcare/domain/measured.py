@@ -1,0 +1,71 @@
+"""What was measured on an engine, as the rules see it: sheets of any kind, and what of the engine they ask for."""
+
+from collections.abc import Mapping
+from dataclasses import dataclass, field
+from datetime import date
+from decimal import Decimal
+
+from fleetcare.domain.sheets import SheetValue
+
+LASH = "lash"
+COMPRESSION = "compression"
+LEAKDOWN = "leakdown"
+RUN = "run"
+SPOT = "spot"
+OIL = "oil"
+
+SHEET_KINDS = (LASH, COMPRESSION, LEAKDOWN, RUN, SPOT, OIL)
+
+
+@dataclass(frozen=True, slots=True)
+class SheetWord:
+    """Something a sheet says in a word: the purpose of a run, where air is heard at a point, the method of a test."""
+
+    quantity: str
+    text: str
+    point: str = ""
+
+
+@dataclass(frozen=True, slots=True)
+class MeasuredSheet:
+    """Measurements taken together on a day, known by the entry they came with; values as entered, in their own units.
+
+    `gauge` is the gauge, tester or laboratory. `engine_hours` is the life total of the engine then. `received_on` is the
+    day results came, where they came later.
+    """
+
+    entry: int
+    kind: str
+    on: date
+    values: tuple[SheetValue, ...]
+    words: tuple[SheetWord, ...] = ()
+    gauge: str = ""
+    engine_hours: Decimal | None = None
+    received_on: date | None = None
+
+
+@dataclass(frozen=True, slots=True)
+class MeasuredEngine:
+    """What rules ask of an engine: empty, 0 or None where the nameplate does not say.
+
+    `banks` are its cylinders as they stand, row by row; `sump` is in L, `rated_kw` in kW.
+    """
+
+    tag: str
+    fuel: str = ""
+    cylinders: int = 0
+    banks: tuple[tuple[int, ...], ...] = ()
+    adjuster: str = ""
+    duty: str = ""
+    oil_grade: str = ""
+    sump: Decimal | None = None
+    rated_kw: Decimal | None = None
+    is_marine: bool | None = None
+
+
+@dataclass(frozen=True, slots=True)
+class Pools:
+    """Earlier samples that say what is usual, by quantity, in the unit of the quantity: figures only, no bounds."""
+
+    own: Mapping[str, tuple[Decimal, ...]] = field(default_factory=dict)
+    family: Mapping[str, tuple[Decimal, ...]] = field(default_factory=dict)

@@ -1,0 +1,284 @@
+"""Measurement rules as data: a handful of fixed shapes, the limits, and where each rule applies and comes from.
+
+Every shape works out one signed figure in the unit of the rule; the limits of the rule, low and high, are held against
+that figure. There is no expression language: what the shapes cannot say is a new shape.
+"""
+
+from collections.abc import Iterable, Mapping
+from dataclasses import dataclass, field
+from decimal import Decimal
+from enum import StrEnum
+
+from fleetcare.domain.sheets import Phase
+
+
+class Severity(StrEnum):
+    """How much a value calls for (ISO 13372): alert, look closer; alarm, act."""
+
+    ALERT = "alert"
+    ALARM = "alarm"
+
+
+def worst(severities: Iterable[Severity]) -> Severity:
+    """Give the graver of some severities, at least one."""
+    return Severity.ALARM if Severity.ALARM in set(severities) else Severity.ALERT
+
+
+class End(StrEnum):
+    """On which side a limit lies."""
+
+    LOW = "low"
+    HIGH = "high"
+
+
+@dataclass(frozen=True, slots=True)
+class Limit:
+    """A figure that may not be passed; `reach` says that standing on it is flagged already, else it passes."""
+
+    value: Decimal
+    reach: bool = False
+
+
+@dataclass(frozen=True, slots=True)
+class Limits:
+    """The limits on one side, None where there is none."""
+
+    alert: Limit | None = None
+    alarm: Limit | None = None
+
+    def __bool__(self) -> bool:
+        return self.alert is not None or self.alarm is not None
+
+
+class Basis(StrEnum):
+    """What of a value is held against bounds.
+
+    AS_MEASURED the value; LESS_NEW what it has above fresh oil, where that is known; NAMEPLATE percent of the rated kW;
+    YEAR the sum over the sheets of its calendar year; SPEC the value against the check range of the engine itself.
+    """
+
+    AS_MEASURED = "as measured"
+    LESS_NEW = "less new"
+    NAMEPLATE = "nameplate"
+    YEAR = "year"
+    SPEC = "spec"
+
+
+class By(StrEnum):
+    """How a figure is compared with another: percent of it, percent above it, or units above it; below is negative."""
+
+    RATIO = "ratio"
+    SHARE = "share"
+    DIFFERENCE = "difference"
+
+
+class Best(StrEnum):
+    """What of a sheet its values are compared with: the highest, the lowest or the mean of all points."""
+
+    HIGHEST = "highest"
+    LOWEST = "lowest"
+    MEAN = "mean"
+
+
+class Since(StrEnum):
+    """What a value is compared with: the last sheet with the same gauge, or the new oil (for a rate: since the change)."""
+
+    BEFORE = "before"
+    NEW = "new"
+
+
+class Pool(StrEnum):
+    """Whose samples say what is usual: the engine's own, or those of engines like it."""
+
+    OWN = "own"
+    FAMILY = "family"
+
+
+class Method(StrEnum):
+    """How samples become a limit; the limit of the rule is k or, for a percentile, the percentage.
+
+    MEAN mean + k s; ROBUST median + k 1.4826 MAD; PERCENTILE of the cumulative distribution (ASTM D7720 has both kinds).
+    """
+
+    MEAN = "mean"
+    ROBUST = "robust"
+    PERCENTILE = "percentile"
+
+
+@dataclass(frozen=True, slots=True)
+class Bounds:
+    """A value held against low and high limits."""
+
+    basis: Basis = Basis.AS_MEASURED
+
+
+@dataclass(frozen=True, slots=True)
+class AgainstSheet:
+    """Each point compared with the best or the mean of all points of its sheet."""
+
+    reference: Best
+    by: By
+
+
+@dataclass(frozen=True, slots=True)
+class Change:
+    """A value compared with the same point before, or with new oil."""
+
+    since: Since
+    by: By
+
+
+@dataclass(frozen=True, slots=True)
+class Rate:
+    """Change per `per` hours: between two samples of one fill, or since the oil change.
+
+    `is_corrected` takes make-up oil into account, since the change only; fewer than `least_hours` give no rate.
+    """
+
+    since: Since
+    per: int
+    is_corrected: bool = False
+    least_hours: Decimal = Decimal(0)
+
+
+@dataclass(frozen=True, slots=True)
+class Statistical:
+    """A value held against what `least_samples` or more samples of a pool say is usual."""
+
+    pool: Pool
+    method: Method
+    least_samples: int
+
+
+class Asks(StrEnum):
+    """What a condition of a pattern asks of a quantity.
+
+    FLAGGED_HIGH and FLAGGED_LOW: another rule flags it; CLEAR: none flags it high; WITHIN: it lies within limits, both
+    ends as the limits say; SAID: a word on a sheet is one of some.
+    """
+
+    FLAGGED_HIGH = "flagged high"
+    FLAGGED_LOW = "flagged low"
+    CLEAR = "clear"
+    WITHIN = "within"
+    SAID = "said"
+
+
+@dataclass(frozen=True, slots=True)
+class Condition:
+    """One condition of a pattern, on any of `quantities`.
+
+    WITHIN holds from `low` to `high`, a limit marked `beyond` being itself outside and one marked `reach` inside; `over`
+    divides by another quantity, `less_new` takes off fresh oil first. `side` picks the lash points of one side.
+    `is_optional` holds where nothing was measured.
+    """
+
+    quantities: tuple[str, ...]
+    asks: Asks
+    low: Limit | None = None
+    high: Limit | None = None
+    unit: str = ""
+    over: str = ""
+    less_new: bool = False
+    side: str = ""
+    words: tuple[str, ...] = ()
+    is_optional: bool = False
+
+
+class Where(StrEnum):
+    """Where all conditions of a pattern must hold: on the engine, at one cylinder, at two neighbours, at every one."""
+
+    ENGINE = "engine"
+    CYLINDER = "cylinder"
+    NEIGHBOURS = "neighbours"
+    EVERY = "every cylinder"
+
+
+@dataclass(frozen=True, slots=True)
+class Pattern:
+    """What several values say together: all conditions hold `at` a place. It then stands at least as `severity`.
+
+    Of patterns of one `table` only the first that matches counts, `row` by row: the gravest stands first. Flagged values
+    of `absorbs` belong to the same cause.
+    """
+
+    conditions: tuple[Condition, ...]
+    at: Where = Where.ENGINE
+    severity: Severity = Severity.ALERT
+    absorbs: tuple[str, ...] = ()
+    table: str = ""
+    row: int = 0
+
+
+Shape = Bounds | AgainstSheet | Change | Rate | Statistical | Pattern
+
+
+@dataclass(frozen=True, slots=True)
+class AppliesTo:
+    """Which engines a rule is for; what is empty or None asks nothing.
+
+    `grades` are oil grades as on the nameplate, or their hot part alone (40 is also 15W-40). What an engine's nameplate
+    does not say does not match what is asked.
+    """
+
+    fuels: tuple[str, ...] = ()
+    not_fuels: tuple[str, ...] = ()
+    cylinders_least: int | None = None
+    cylinders_most: int | None = None
+    adjusters: tuple[str, ...] = ()
+    duties: tuple[str, ...] = ()
+    engines: tuple[str, ...] = ()
+    grades: tuple[str, ...] = ()
+    is_marine: bool | None = None
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Rule:
+    """One measurement rule.
+
+    `kinds` are the kinds of sheet, `quantity` what is judged (empty for a pattern), `phases` and `points` which values
+    (empty: any but a wet test and fresh oil), `unit` that of the limits. `words` must be said on the sheet, `unless` must
+    not. A rule with a `preset` is off but for engines the shop names for that preset; where one applies, rules without a
+    preset and of the same `choice` give way. `cause` groups findings. `business_days` dates the next step from the day
+    the results came.
+    """
+
+    id: str
+    kinds: tuple[str, ...]
+    quantity: str
+    shape: Shape
+    unit: str = ""
+    low: Limits = Limits()
+    high: Limits = Limits()
+    phases: tuple[Phase, ...] = ()
+    points: tuple[str, ...] = ()
+    words: Mapping[str, tuple[str, ...]] = field(default_factory=dict)
+    unless: Mapping[str, tuple[str, ...]] = field(default_factory=dict)
+    applies: AppliesTo = AppliesTo()
+    preset: str = ""
+    choice: str = ""
+    cause: str
+    message: str
+    source: str
+    next_step: str
+    caution: str = ""
+    business_days: int | None = None
+    is_law: bool = False
+
+
+@dataclass(frozen=True, slots=True)
+class SwitchedOff:
+    """A shipped rule the shop does without, and why."""
+
+    id: str
+    why: str
+
+
+@dataclass(frozen=True, slots=True)
+class RuleBook:
+    """All rules, by id; the tags of the engines each preset is named for; the rules switched off; those overridden."""
+
+    rules: tuple[Rule, ...]
+    chosen: Mapping[str, tuple[str, ...]] = field(default_factory=dict)
+    off: tuple[SwitchedOff, ...] = ()
+    overridden: tuple[str, ...] = ()
