@@ -66,6 +66,21 @@ def round_draft(names: Sequence[str]) -> type[RoundDraft]:
     return create_model("Round", __base__=RoundDraft, **figures)
 
 
+class VoidDraft(Draft):
+    """A reading that counts for nothing, and why."""
+
+    reading: int
+    why: Text
+
+
+class RestoreDraft(Draft):
+    """A suspect or voided reading that counts again."""
+
+    reading: int
+    why: Note = ""
+    sure: bool = False
+
+
 class SwapDraft(Draft):
     """A new meter in the place of an old one; without `value` the new one still shows its first figure."""
 
@@ -92,7 +107,10 @@ class SwapDraft(Draft):
 
 
 class LogDraft(TakenSheet):
-    """What was done to an engine or machine on a day, and the sheet that came of it."""
+    """What was done to an engine or machine on a day, and the sheet that came of it.
+
+    `part_done` closes no task; `leave_open` not those their sheet does not close.
+    """
 
     tag: Text
     task: Texts = ()
@@ -106,6 +124,7 @@ class LogDraft(TakenSheet):
     follow_up: bool = False
     until: Day | None = None
     part_done: bool = False
+    leave_open: bool = False
     part: Parts = ()
     component: Note = ""
     downtime: Hours | None = None

@@ -75,7 +75,16 @@ def record_work(session: "Session", draft: LogDraft, today: date) -> Logged:
     if sheet is not None:
         logged.sheet = keep_sheet(session, entry, sheet)
     came = came_along(sheet, sure=draft.sure)
-    close_tasks(session, facts, entry, done, part_done=draft.part_done, logged=logged, sheets=came)
+    close_tasks(
+        session,
+        facts,
+        entry,
+        done,
+        part_done=draft.part_done,
+        leave_open=draft.leave_open,
+        logged=logged,
+        sheets=came,
+    )
     session.flush()
     logged.note_still_open(facts, entry, came)
     return logged
@@ -136,6 +145,7 @@ def close_tasks(
     task_ids: Sequence[int],
     *,
     part_done: bool,
+    leave_open: bool = False,
     logged: Logged,
     elsewhere: Sequence[int] = (),
     sheets: Sheets = NONE_CAME,
@@ -143,7 +153,8 @@ def close_tasks(
     """Store which tasks an entry closes, and what they cover; part-done work closes nothing. Whoever calls flushes.
 
     `facts` are those of its item, this entry's figures among them. Tasks done `elsewhere`, by another entry of the
-    same day, are not covered once more. `sheets` are the kinds that came along, each with why it closes nothing.
+    same day, are not covered once more. `sheets` are the kinds that came along, each with why it closes nothing; with
+    `leave_open` a task its sheet does not close is done in part.
     """
     tasks = {task.id: task for task in facts.tasks}
     covers = {task.id: task.version_on(entry.on).covers for task in facts.tasks}
@@ -151,7 +162,7 @@ def close_tasks(
     for task_id in dict.fromkeys(task_ids):
         task = tasks[task_id]
         version = task.version_on(entry.on)
-        if part_done:
+        if part_done or (leave_open and why_open(task, entry.on, sheets)):
             session.add(LogTask(entry_id=entry.id, task_id=task_id, part_done=True))
             logged.part_done.append(task.name)
             continue
