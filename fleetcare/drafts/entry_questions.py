@@ -34,11 +34,12 @@ _AFTER = {
 class Choice:
     """One answer to a question: what it says, and the text that then stands in place of the words asked about.
 
-    The text is None where the answer takes more than a line can say, and has a form of its own.
+    The text is None where the answer takes more than a line can say; it then leads to a form for a "sheet" or a "meter".
     """
 
     said: str
     text: str | None
+    leads_to: str = ""
 
 
 @dataclass(frozen=True, slots=True)

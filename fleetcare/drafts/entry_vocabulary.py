@@ -71,6 +71,11 @@ class Vocabulary:
             self._by_tag[item.tag.casefold()] = item
             self._by_key.setdefault(tag_key(item.tag), []).append(item.tag)
 
+    @property
+    def names_any(self) -> bool:
+        """Whether there is anything to write about."""
+        return bool(self._by_tag)
+
     def item(self, tag: str) -> ItemWords:
         """Give the item of a tag that is one."""
         return self._by_tag[tag.casefold()]

@@ -101,7 +101,7 @@ def _hold(connection: "Connection", item: FoundItem, line: Understood, dial: Dia
     meter = pick_meter(find_meters(connection, item.id, line.on), dial.figure, item.tag)
     new = NewReading(line.on, dial.figure, line.has_rolled_over)
     trial, collisions = hold_against_past(connection, item, meter, [new])
-    asked, typed, choices = "", typed_figure(dial.figure), [Choice("a new meter was fitted", None)]
+    asked, typed, choices = "", typed_figure(dial.figure), [Choice("a new meter was fitted", None, "meter")]
     try:
         refuse_unlike_dial(item, meter, new, trial)
         if collisions and not line.is_sure:
@@ -142,7 +142,7 @@ def _ask_for_sheets(facts: ItemFacts, line: Understood) -> Sequence[Question]:
         sheet = task.version_on(line.on).needs_sheet
         if sheet:
             start, end = where[task.name].start, where[task.name].end
-            choices = [Choice(f"with its {sheet} sheet", None)]
+            choices = [Choice(f"with its {sheet} sheet", None, "sheet")]
             if len(line.tasks) == 1:
                 choices.append(Choice("done in part, it stays open", f"{line.text[start:end]} part-done"))
             questions.append(Question(start, end, f"{task.name} closes only with its {sheet} sheet", tuple(choices)))

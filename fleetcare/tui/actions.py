@@ -5,7 +5,7 @@ from dataclasses import dataclass
 from textual.binding import Binding, BindingType
 
 EVERYWHERE = "everywhere"
-TYPED_IN = frozenset({"form"})
+TYPED_IN = frozenset({"form", "entry"})
 """Places where letters are typed, so that no letter does anything else."""
 
 _SAID = {
@@ -77,6 +77,7 @@ ACTIONS = (
     Action("item", "m", "part('meters')", "meters", "show meters, with the plot; again for the next meter"),
     Action("item", "l", "part('lines')", "lines", "show what it needs next"),
     Action("item", "h", "part('history')", "history", "show all that was done to it"),
+    Action("item", "g", "part('lash')", "lash", "show the gap at each valve over time; again for the next point"),
     Action("item", "w", "write('log')", "log", "log work done on it"),
     Action("item", "r", "write('reading')", "reading", "write down what its meter shows"),
     Action("item", "o", "write('defer')", "defer", "put off the line under the cursor", in_foot=False),
@@ -115,6 +116,12 @@ ACTIONS = (
     Action("form", "ctrl+n", "anew", "begin anew", "throw away what was typed and begin anew"),
     Action("form", "f1", "help", "keys", "show the keys of where you are"),
     Action("form", "escape", "back", "back", "leave; what is typed stays for the next time"),
+    Action("entry", "enter", "store", "store", "store the line as it is read back, or take the answer marked"),
+    Action("entry", "down", "answer(1)", "answers", "go to the answers to what is asked, and through them"),
+    Action("entry", "up", "answer(-1)", "answer before", "go to the answer before", in_foot=False),
+    Action("entry", "ctrl+n", "anew", "begin anew", "throw away what was typed and begin anew"),
+    Action("entry", "f1", "help", "keys", "show the keys of where you are"),
+    Action("entry", "escape", "back", "back", "close the line; what is typed stays for the next time"),
     Action("narrow", "enter,space", "choose", "choose", "choose what is under the cursor, or no longer"),
     Action("narrow", "n", "to_group(1)", "next group", "go to the next heading", in_foot=False),
     Action("narrow", "p", "to_group(-1)", "group before", "go to the heading before", in_foot=False),
@@ -123,6 +130,14 @@ ACTIONS = (
     Action("keys", "escape,question_mark", "back", "back", "go back to where you came from"),
     Action(EVERYWHERE, "1", "view('due')", "due", "what each engine needs next", in_foot=False),
     Action(EVERYWHERE, "2", "view('engines')", "engines", "all engines and machines", in_foot=False),
+    Action(
+        EVERYWHERE,
+        "i",
+        "entry_line",
+        "entry line",
+        "write work or a reading down in one line; what it would do is read back before it is stored",
+        in_foot=False,
+    ),
     Action(EVERYWHERE, "d", "daylight", "day or night", "change between dark and light colours", in_foot=False),
     Action(EVERYWHERE, "question_mark", "keys", "keys", "show the keys of where you are"),
     Action(EVERYWHERE, "q", "quit", "quit", "leave"),

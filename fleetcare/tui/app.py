@@ -68,6 +68,13 @@ class FleetApp(App[None]):
         if isinstance(self.screen, FramedScreen):
             self.push_screen(KeysScreen(self.screen.place))
 
+    def action_entry_line(self) -> None:
+        """Open the entry line over the screen in front, once."""
+        from fleetcare.tui.screens.entry import EntryScreen
+
+        if not any(isinstance(screen, EntryScreen) for screen in self.screen_stack):
+            self.push_screen(EntryScreen())
+
     def action_daylight(self) -> None:
         """Change between dark and light colours; sixteen are the terminal's own to change."""
         if self.theme == SIXTEEN.name:

@@ -28,7 +28,9 @@ if TYPE_CHECKING:
 KEEP_AFTER = 0.3
 """Seconds after a key until what is typed is kept."""
 
-_LEFT = "As you left it; Ctrl N throws it away and begins anew."
+LEFT = "As you left it; Ctrl N throws it away and begins anew."
+"""Said where what was kept is there again."""
+
 _MOST_NAMES = 12
 
 
@@ -78,7 +80,7 @@ class FillingScreen(LoadingScreen):
             self.rows[name].fill(kept[name])
             self._touched.add(name)
         if kept:
-            self.notice.say(_LEFT)
+            self.notice.say(LEFT)
 
     def read(self, connection: "Connection", on: "date", *, is_future: bool) -> "FormFacts":
         """Load what the form shows before anything is typed."""

@@ -18,7 +18,7 @@ from tests.house.conftest import ROOT, read
 README, DEVELOPERS, CHANGELOG = read("README.md"), read("DEVELOPERS.md"), read("CHANGELOG.md")
 DOCUMENTS = {"README.md": README, "DEVELOPERS.md": DEVELOPERS, "CHANGELOG.md": CHANGELOG}
 LONGEST_FOR_DEVELOPERS = 250
-CALLED = {"item": "engine's page"}
+CALLED = {"item": "engine's page", "entry": "entry line"}
 """What the README calls a place of the screens, where not by its own name."""
 KINDS = [kind for kind in vars(errors).values() if isinstance(kind, type) and issubclass(kind, errors.FleetError)]
 

@@ -8,6 +8,7 @@ from fleetcare.tui.app import FleetApp
 from fleetcare.tui.frame import FramedScreen
 from fleetcare.tui.screens.due import DueScreen
 from fleetcare.tui.screens.engines import EnginesScreen
+from fleetcare.tui.screens.entry import EntryScreen
 from fleetcare.tui.screens.form import FormScreen
 from fleetcare.tui.screens.item import ItemScreen
 from fleetcare.tui.screens.keys import KeysScreen
@@ -16,7 +17,17 @@ from fleetcare.tui.screens.narrow import NarrowScreen
 from fleetcare.tui.screens.working import WorkingScreen
 from tests.tui.conftest import Opened, line_with, press, seen, settle_down
 
-SCREENS = (DueScreen, EnginesScreen, FormScreen, ItemScreen, KeysScreen, MoreScreen, NarrowScreen, WorkingScreen)
+SCREENS = (
+    DueScreen,
+    EnginesScreen,
+    EntryScreen,
+    FormScreen,
+    ItemScreen,
+    KeysScreen,
+    MoreScreen,
+    NarrowScreen,
+    WorkingScreen,
+)
 
 
 def test_every_place_is_a_screen_and_every_screen_a_place() -> None:

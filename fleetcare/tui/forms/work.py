@@ -9,6 +9,7 @@ from fleetcare.tui.forms.base import BY, METERS, NOTE, ON, WHY, Answer, Field, F
 if TYPE_CHECKING:
     from sqlalchemy.orm import Session
 
+    from fleetcare.drafts.entry_understood import Understood
     from fleetcare.drafts.reading_in import Draft
     from fleetcare.drafts.work import CorrectionDraft, DeferralDraft, LogDraft
     from fleetcare.operations.entering import Entered
@@ -46,6 +47,17 @@ def _log(session: "Session", subject: Subject, draft: "LogDraft", today: date, s
 
 def _log_start(facts: "FormFacts", subject: Subject, on: date) -> Mapping[str, str]:
     return {"on": on.isoformat(), "task": subject.task}
+
+
+def log_preset(line: "Understood") -> dict[str, str]:
+    """Give what the form to log work is filled in with from an entry line."""
+    return {name: _as_typed(value) for name, value in line.work().items() if value}
+
+
+def _as_typed(value: object) -> str:
+    if isinstance(value, tuple):
+        return "; ".join(str(one) for one in value)
+    return "yes" if value is True else str(value)
 
 
 def _correction_draft() -> "type[Draft]":
