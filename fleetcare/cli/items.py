@@ -4,7 +4,7 @@ import argparse
 
 from fleetcare.cli import output
 from fleetcare.cli.parser import CommandParser, Commands
-from fleetcare.cli.shop import add_options, changes_of, context_of, null, option_label, options_of, say_moved
+from fleetcare.cli.shop import add_options, changes_of, context_of, null, option_label, options_of, say_entered
 from fleetcare.cli.spells import add_spell_commands
 from fleetcare.domain.quantities import plain, tenth
 from fleetcare.errors import Refused
@@ -83,27 +83,22 @@ def _add_item_options(parser: CommandParser, *, is_engine: bool) -> None:
 def _add(given: argparse.Namespace) -> None:
     from fleetcare.drafts.items import EngineDraft, MachineDraft
     from fleetcare.drafts.reading_in import read_draft
-    from fleetcare.operations.items import add_item
+    from fleetcare.operations.adding import enter_item
 
     context = context_of(given)
     kind = EngineDraft if given.is_engine else MachineDraft
     draft = read_draft(kind, options_of(given, "is_engine"), option_label)
     with context.write() as session:
-        item = add_item(session, draft, context.today())
-    output.say(f"{item.tag} added.")
+        entered = enter_item(session, draft, context.today())
+    say_entered(entered)
 
 
 def _edit(given: argparse.Namespace) -> None:
-    from fleetcare.drafts.items import EngineDraft, MachineDraft
-    from fleetcare.drafts.reading_in import read_draft
-    from fleetcare.operations.due import watch_moves
+    from fleetcare.operations.editing import enter_item_edit
     from fleetcare.operations.find import find_engine, find_machine
-    from fleetcare.operations.items import edit_item, stored_draft
 
     context = context_of(given)
-    options = changes_of(given, "is_engine")
-    if len(options) == 1:
-        raise Refused("nothing to edit", "give what should change, such as --site NAME")
+    options = changes_of(given, "is_engine", "tag")
     if options.keys() & {"machine", "position"}:
         raise Refused(
             "an engine moves between machines on a day", "use fleetcare engine fit TAG --machine TAG --on DATE"
@@ -111,12 +106,8 @@ def _edit(given: argparse.Namespace) -> None:
     with context.write() as session:
         find = find_engine if given.is_engine else find_machine
         item = find(session.connection(), given.tag)
-        stored = stored_draft(session, item)
-        draft = read_draft(EngineDraft if given.is_engine else MachineDraft, {**stored, **options}, option_label)
-        with watch_moves(session, item.tag, context.today()) as moves:
-            edit_item(session, item, draft, context.today())
-    output.say(f"{item.tag} edited.")
-    say_moved(moves.moved)
+        entered = enter_item_edit(session, item, options, context.today())
+    say_entered(entered)
 
 
 def _list(given: argparse.Namespace) -> None:

@@ -2,9 +2,8 @@
 
 import argparse
 
-from fleetcare.cli import output
 from fleetcare.cli.parser import Commands, day, whole
-from fleetcare.cli.shop import context_of, option_label, options_of, say_entered, say_moved
+from fleetcare.cli.shop import context_of, option_label, options_of, say_entered
 from fleetcare.errors import Misread
 
 
@@ -59,9 +58,9 @@ def _record(given: argparse.Namespace) -> None:
 
 
 def _amend(given: argparse.Namespace) -> None:
-    from fleetcare.operations.due import watch_items
-    from fleetcare.operations.readings import item_of_reading, restore_reading, void_reading
-    from fleetcare.operations.stored_words import suspect_words
+    from fleetcare.drafts.reading_in import read_draft
+    from fleetcare.drafts.work import RestoreDraft, VoidDraft
+    from fleetcare.operations.entering import enter_restored, enter_void
 
     others = (given.tag, given.value, given.meter, given.on, given.by, given.note, given.replaced, given.unmetered)
     if any(other is not None for other in others) or given.rolled_over or (given.sure and given.void is not None):
@@ -71,17 +70,11 @@ def _amend(given: argparse.Namespace) -> None:
     if given.void is not None and not (given.why or "").strip():
         raise Misread("--void needs a reason", "give --why TEXT")
     context = context_of(given)
-    suspects: tuple[int, ...] = ()
-    reading_id = given.void if given.void is not None else given.restore
     with context.write() as session:
-        item = item_of_reading(session, reading_id)
-        with watch_items(session, [item.id], context.today()) as moves:
-            if given.void is not None:
-                void_reading(session, reading_id, given.why.strip(), context.today())
-            else:
-                why = (given.why or "").strip()
-                suspects = restore_reading(session, reading_id, context.today(), why=why, sure=given.sure).suspects
-    output.say(f"Reading {reading_id} of {item.tag} {'is void' if given.void is not None else 'counts again'}.")
-    for line in suspect_words(suspects):
-        output.say(line)
-    say_moved(moves.moved)
+        if given.void is not None:
+            void = read_draft(VoidDraft, {"reading": given.void, "why": given.why}, option_label)
+            entered = enter_void(session, void, context.today())
+        else:
+            told = {"reading": given.restore, "why": given.why, "sure": given.sure}
+            entered = enter_restored(session, read_draft(RestoreDraft, told, option_label), context.today())
+    say_entered(entered)

@@ -6,11 +6,10 @@ from typing import TYPE_CHECKING
 
 from fleetcare.cli import output
 from fleetcare.cli.parser import Commands
-from fleetcare.cli.shop import context_of, option_label
+from fleetcare.cli.shop import context_of, option_label, say_entered
 from fleetcare.errors import Misread
 
 if TYPE_CHECKING:
-    from fleetcare.operations.schedules import Applied
     from fleetcare.rulebook.schedules import Schedule
 
 _NAME_HELP = "id of a shipped schedule, or a TOML file of your own"
@@ -140,32 +139,13 @@ def _texts(task: Mapping[str, object], field: str) -> list[str]:
 def _apply(given: argparse.Namespace) -> None:
     from fleetcare.drafts.reading_in import read_draft
     from fleetcare.drafts.schedules import StartDraft
-    from fleetcare.operations.schedules import apply_schedule
+    from fleetcare.operations.adding import enter_schedule
     from fleetcare.rulebook.schedules import find_schedule
 
     context = context_of(given)
     schedule = find_schedule(given.name)
     start = read_draft(StartDraft, {"counts_from": given.counts_from}, lambda _: option_label("from"))
     with context.write() as session:
-        applied = apply_schedule(session, schedule, given.tags, start, context.today())
-    for one in applied:
-        _say_applied(one, schedule.id)
-    output.say(schedule.note)
-
-
-def _say_applied(one: "Applied", schedule_id: str) -> None:
-    from fleetcare.operations.stored_words import say_line
-
-    tag = one.item.tag
-    output.say(f"{tag}: {len(one.added)} tasks of {schedule_id} added.")
-    rows = {row.task: row for row in one.rows}
-    for name in one.added:
-        output.say(f"{tag}  {name}: {say_line(rows[name]) if name in rows else 'no line until it is called for'}")
-    for name in one.left_out:
-        output.say(f"{tag}  {name}: left out, its hydraulic adjusters keep the lash")
-    for kind, names in one.uncounted.items():
-        group = "engine" if one.item.is_engine else "machine"
-        output.say(
-            f"{tag}  no meter counts {kind}, so {', '.join(names)} cannot fall due by {kind};"
-            f" add one with fleetcare {group} edit {tag} --meter {kind}"
-        )
+        entered = enter_schedule(session, schedule, given.tags, start, context.today())
+    for one in entered:
+        say_entered(one)

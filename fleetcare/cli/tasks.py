@@ -4,7 +4,7 @@ import argparse
 
 from fleetcare.cli import output
 from fleetcare.cli.parser import CommandParser, Commands, day
-from fleetcare.cli.shop import add_options, context_of, label_with, options_of, say_entered, say_moved
+from fleetcare.cli.shop import add_options, context_of, label_with, options_of, say_entered
 
 _REPEATED = {
     "--every": ("INTERVAL", "such as 250h, 10000km or 12mo; once for each kind"),
@@ -90,11 +90,7 @@ def _add(given: argparse.Namespace) -> None:
 
 def _edit(given: argparse.Namespace) -> None:
     from fleetcare.drafts.fields import parse_kind
-    from fleetcare.operations.due import watch_moves
-    from fleetcare.operations.find import find_item
-    from fleetcare.operations.listing import pausing_tasks
-    from fleetcare.operations.stored_words import pausing_words
-    from fleetcare.operations.tasks import edit_task
+    from fleetcare.operations.editing import enter_task_edit
 
     context = context_of(given)
     changes = {
@@ -105,14 +101,8 @@ def _edit(given: argparse.Namespace) -> None:
     without = [parse_kind(kind) for kind in given.without or ()]
     on = given.on or context.today()
     with context.write() as session:
-        item = find_item(session.connection(), given.tag)
-        with watch_moves(session, item.tag, context.today()) as moves:
-            name = edit_task(session, item, given.name, changes, without, on, context.today())
-        pausing = pausing_tasks(session.connection(), item.tag, context.today())
-    output.say(f"{name} of {item.tag} changed{'' if changes.keys() == {'last_done'} else f' from {on}'}.")
-    if changes.get("pause_while_laid_up") and name in pausing:
-        output.say(pausing_words(name))
-    say_moved(moves.moved)
+        entered = enter_task_edit(session, given.tag, given.name, changes, without, on, context.today())
+    say_entered(entered)
 
 
 def _list(given: argparse.Namespace) -> None:
@@ -131,15 +121,13 @@ def _list(given: argparse.Namespace) -> None:
 
 
 def _remove(given: argparse.Namespace) -> None:
-    from fleetcare.operations.due import watch_moves
-    from fleetcare.operations.find import find_item
-    from fleetcare.operations.tasks import remove_task
+    from fleetcare.drafts.reading_in import read_draft
+    from fleetcare.drafts.tasks import TaskEnd
+    from fleetcare.operations.editing import enter_task_end
 
     context = context_of(given)
-    on = given.on or context.today()
+    values = {"name": given.name, "on": given.on or context.today()}
+    draft = read_draft(TaskEnd, values, label_with(name="TASK"))
     with context.write() as session:
-        item = find_item(session.connection(), given.tag)
-        with watch_moves(session, item.tag, context.today()) as moves:
-            name = remove_task(session, item, given.name, on, context.today())
-    output.say(f"{name} of {item.tag} ended on {on}; its history stays.")
-    say_moved(moves.moved)
+        entered = enter_task_end(session, given.tag, draft, context.today())
+    say_entered(entered)

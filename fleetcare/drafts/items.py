@@ -62,8 +62,8 @@ def _as_new(value: object) -> bool:
     return answer
 
 
-class ItemDraft(Draft):
-    """What engines and machines share."""
+class ItemFields(Draft):
+    """What is told of engines and machines alike, each field by itself."""
 
     tag: Text
     name: Text | None = None
@@ -73,6 +73,10 @@ class ItemDraft(Draft):
     start_at: Dials = ()
     meter: Meters = ()
     meter_digits: Digits = ()
+
+
+class ItemDraft(ItemFields):
+    """An engine or a machine as a whole: its fields checked against each other."""
 
     @model_validator(mode="after")
     def _check_start(self) -> Self:
@@ -93,8 +97,8 @@ class MachineDraft(ItemDraft):
     """A machine: what engines are fitted in."""
 
 
-class EngineDraft(ItemDraft):
-    """An engine with its nameplate; lengths in mm, volume in L, power in kW, altitude in m."""
+class EngineFields(ItemFields):
+    """The nameplate of an engine, each field by itself; lengths in mm, volume in L, power in kW, altitude in m."""
 
     machine: Text | None = None
     position: Text | None = None
@@ -127,6 +131,14 @@ class EngineDraft(ItemDraft):
     rated_kw: Positive | None = None
     altitude: Number | None = None
 
+
+class ItemChanges(EngineFields):
+    """What should change of an engine or a machine; what is not given stays as it is."""
+
+
+class EngineDraft(EngineFields, ItemDraft):
+    """An engine as a whole: its fields checked against each other."""
+
     @model_validator(mode="after")
     def _check_nameplate(self) -> Self:
         if self.position is not None and self.machine is None:
@@ -158,6 +170,13 @@ class EngineDraft(ItemDraft):
     def _lash_figures(self) -> list[tuple[Decimal, Decimal, LashUnit] | tuple[Decimal, LashUnit]]:
         figures = (self.lash_intake, self.lash_exhaust, self.lash_set_intake, self.lash_set_exhaust)
         return [figure for figure in figures if figure is not None]
+
+
+class RenameDraft(Draft):
+    """A site or a person under the name known, and the name it should have."""
+
+    known: Text
+    name: Text
 
 
 class StatusDraft(Draft):

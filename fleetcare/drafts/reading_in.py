@@ -45,6 +45,11 @@ def try_draft(draft: type[DraftT], values: Mapping[str, object]) -> tuple[DraftT
         ]
 
 
+def as_option(field: str) -> str:
+    """Name a field as the option it is given with."""
+    return "--" + field.replace("_", "-")
+
+
 def _given(values: Mapping[str, object]) -> dict[str, object]:
     return {name: value for name, value in values.items() if value not in (None, "", [], ())}
 

@@ -10,6 +10,7 @@ from pydantic import model_validator
 from fleetcare.domain.quantities import Amount, Figure, Kind, Span
 from fleetcare.domain.schedules import Anchor, Combine, Period
 from fleetcare.drafts.fields import (
+    Day,
     DaysOrDials,
     Hours,
     Intervals,
@@ -44,8 +45,8 @@ class TriggerDraft:
     grid_origin: date | Figure | None = None
 
 
-class TaskDraft(Draft):
-    """A task's name, its intervals and its rules, checked against each other."""
+class TaskFields(Draft):
+    """A task's name, its intervals and its rules, each by itself."""
 
     name: Text
     every: Intervals = ()
@@ -73,6 +74,24 @@ class TaskDraft(Draft):
     part: Parts = ()
     caution: Note = ""
     source: Note = ""
+
+
+class TaskChanges(TaskFields):
+    """What should stand in a task from a day on, lists whole; what is neither given nor `cleared` stays as it is."""
+
+    on: Day
+    cleared: Texts = ()
+
+
+class TaskEnd(Draft):
+    """A task that is not needed any more from a day on."""
+
+    name: Text
+    on: Day
+
+
+class TaskDraft(TaskFields):
+    """A task as a whole, checked against itself."""
 
     @model_validator(mode="after")
     def _check(self) -> Self:

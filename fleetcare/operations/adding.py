@@ -1,5 +1,6 @@
 """What is new in the yard, stored and said: an engine or machine, a task, the tasks of a schedule."""
 
+from collections.abc import Sequence
 from datetime import date
 from typing import TYPE_CHECKING
 
@@ -11,17 +12,18 @@ from fleetcare.operations.listing import pausing_tasks
 from fleetcare.operations.schedules import apply_schedule
 from fleetcare.operations.stored_words import moved_words, pausing_words, say_line
 from fleetcare.operations.tasks import add_task
-from fleetcare.rulebook.schedules import find_schedule
 
 if TYPE_CHECKING:
     from sqlalchemy.orm import Session
 
-    from fleetcare.drafts.items import EngineDraft, MachineDraft
-    from fleetcare.drafts.schedules import ApplyDraft
+    from fleetcare.drafts.items import ItemDraft
+    from fleetcare.drafts.schedules import StartDraft
     from fleetcare.drafts.tasks import TaskDraft
+    from fleetcare.operations.schedules import Applied
+    from fleetcare.rulebook.schedules import Schedule
 
 
-def enter_item(session: "Session", draft: "EngineDraft | MachineDraft", today: date) -> Entered:
+def enter_item(session: "Session", draft: "ItemDraft", today: date) -> Entered:
     """Add an engine or a machine."""
     item = add_item(session, draft, today)
     return Entered([f"{item.tag} added."])
@@ -43,15 +45,28 @@ def enter_task(session: "Session", tag: str, draft: "TaskDraft", today: date) ->
     )
 
 
-def enter_schedule(session: "Session", tag: str, draft: "ApplyDraft", today: date) -> Entered:
-    """Give an engine or machine all tasks of a schedule."""
-    schedule = find_schedule(draft.name)
-    (applied,) = apply_schedule(session, schedule, [tag], draft, today)
-    entered = Entered([f"{applied.item.tag}: {len(applied.added)} tasks of {schedule.id} added."])
-    entered.notes = [f"{name} left out, its hydraulic adjusters keep the lash." for name in applied.left_out]
-    entered.notes += [
-        f"No meter counts {kind}, so {', '.join(names)} cannot fall due by {kind}."
-        for kind, names in applied.uncounted.items()
-    ]
-    entered.notes.append(schedule.note)
+def enter_schedule(
+    session: "Session", schedule: "Schedule", tags: Sequence[str], start: "StartDraft", today: date
+) -> list[Entered]:
+    """Give engines and machines all tasks of a schedule, and say of each what came of it; the caution comes last."""
+    entered = [_applied(one, schedule) for one in apply_schedule(session, schedule, tags, start, today)]
+    entered[-1].notes.append(schedule.note)
     return entered
+
+
+def _applied(one: "Applied", schedule: "Schedule") -> Entered:
+    tag, group = one.item.tag, "engine" if one.item.is_engine else "machine"
+    rows = {row.task: row for row in one.rows}
+    lines = {name: say_line(rows[name]) if name in rows else "no line until it is called for" for name in one.added}
+    return Entered(
+        [f"{tag}: {len(one.added)} tasks of {schedule.id} added."],
+        [f"{tag}  {name}: {line}" for name, line in lines.items()],
+        [
+            *(f"{tag}  {name}: left out, its hydraulic adjusters keep the lash" for name in one.left_out),
+            *(
+                f"{tag}  no meter counts {kind}, so {', '.join(names)} cannot fall due by {kind};"
+                f" add one with fleetcare {group} edit {tag} --meter {kind}"
+                for kind, names in one.uncounted.items()
+            ),
+        ],
+    )

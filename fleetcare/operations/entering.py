@@ -15,15 +15,21 @@ from fleetcare.operations.find import find_engine, find_item, find_machine, find
 from fleetcare.operations.items import fit_engine
 from fleetcare.operations.listing import pausing_tasks
 from fleetcare.operations.log import Logged, record_work, refuse_future
-from fleetcare.operations.readings import record_reading
+from fleetcare.operations.readings import item_of_reading, record_reading, restore_reading, void_reading
 from fleetcare.operations.spells import change_status
-from fleetcare.operations.stored_words import logged_words, moved_words, pausing_words, recorded_words
+from fleetcare.operations.stored_words import (
+    logged_words,
+    moved_words,
+    pausing_words,
+    recorded_words,
+    suspect_words,
+)
 
 if TYPE_CHECKING:
     from sqlalchemy.orm import Session
 
     from fleetcare.drafts.items import FitDraft, StatusDraft
-    from fleetcare.drafts.work import CorrectionDraft, DeferralDraft, LogDraft
+    from fleetcare.drafts.work import CorrectionDraft, DeferralDraft, LogDraft, RestoreDraft, VoidDraft
 
 
 @dataclass(slots=True)
@@ -93,6 +99,23 @@ def enter_round(session: "Session", drafts: Sequence[ReadingDraft], today: date)
     return Entered(
         [count, *(line for one in entered for line in one.said[1:])], [line for one in entered for line in one.moved]
     )
+
+
+def enter_void(session: "Session", draft: "VoidDraft", today: date) -> Entered:
+    """Let a reading count for nothing from now on."""
+    item = item_of_reading(session, draft.reading)
+    with watch_items(session, [item.id], today) as moves:
+        void_reading(session, draft.reading, draft.why, today)
+    return Entered([f"Reading {draft.reading} of {item.tag} is void."], [*moved_words(moves.moved)])
+
+
+def enter_restored(session: "Session", draft: "RestoreDraft", today: date) -> Entered:
+    """Let a suspect or voided reading count again."""
+    item = item_of_reading(session, draft.reading)
+    with watch_items(session, [item.id], today) as moves:
+        restored = restore_reading(session, draft.reading, today, why=draft.why, sure=draft.sure)
+    said = [f"Reading {draft.reading} of {item.tag} counts again.", *suspect_words(restored.suspects)]
+    return Entered(said, [*moved_words(moves.moved)])
 
 
 def enter_deferral(session: "Session", draft: "DeferralDraft", today: date) -> Entered:

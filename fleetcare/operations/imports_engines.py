@@ -2,7 +2,6 @@
 
 from collections.abc import Sequence
 from datetime import date
-from decimal import Decimal
 from typing import TYPE_CHECKING
 
 from fleetcare.domain.quantities import Figure, to_base
@@ -12,10 +11,10 @@ from fleetcare.exchange.csv_in import RowRefused
 from fleetcare.operations.find import FoundItem, find_machine
 from fleetcare.operations.imports_rows import Imported, Row, in_columns
 from fleetcare.operations.items import add_item, stored_draft
-from fleetcare.operations.rows import day, fetch, figure
+from fleetcare.operations.rows import fetch
+from fleetcare.operations.stored_items import stored_lash, stored_meters, stored_place
 
 if TYPE_CHECKING:
-    from sqlalchemy import Connection
     from sqlalchemy.orm import Session
 
 
@@ -93,11 +92,11 @@ def _differences(session: "Session", item: FoundItem, draft: EngineDraft) -> lis
     """Give the columns whose cell says otherwise than what is stored; empty cells say nothing."""
     stored = {
         **stored_draft(session, item),
-        **_stored_place(session.connection(), item.id),
-        **_stored_lash(session.connection(), item.id),
+        **stored_place(session.connection(), item.id),
+        **stored_lash(session.connection(), item.id),
     }
     given = [column for column in EngineDraft.model_fields if column in draft.model_fields_set - {"tag"}]
-    lists = {column: said for column, said in _stored_meters(session.connection(), item.id).items() if column in given}
+    lists = {column: said for column, said in stored_meters(session.connection(), item.id).items() if column in given}
     return [
         column
         for column in given
@@ -121,61 +120,3 @@ def _says_same(given: object, stored: object) -> bool:
         case str(), str():
             return given.casefold() == stored.casefold()
     return given == stored
-
-
-def _stored_place(connection: "Connection", item_id: int) -> dict[str, object]:
-    """Give what an engine is called, where it stands and since when, under the names a draft knows."""
-    ((name, site, in_service, as_new, machine, position),) = fetch(
-        connection,
-        "select item.name, site.name, item.in_service_on, item.as_new, machine.tag, fitting.position"
-        " from item left join site on site.id = item.site_id"
-        " left join fitting on fitting.engine_id = item.id and fitting.to_on is null"
-        " left join item machine on machine.id = fitting.machine_id where item.id = :id",
-        id=item_id,
-    )
-    return {
-        "name": name,
-        "site": site,
-        "in_service": day(in_service),
-        "as_new": bool(as_new),
-        "machine": machine,
-        "position": position,
-    }
-
-
-def _stored_meters(connection: "Connection", item_id: int) -> dict[str, list[object]]:
-    """Give the engine's own meters, their digits, and the figures it came with."""
-    meters = fetch(
-        connection,
-        "select meter.kind, meter.unit, meter.digits, coalesce(meter.decimals, 0) from meter"
-        " join meter_fit fit on fit.meter_id = meter.id and fit.item_id = meter.item_id"
-        " where meter.item_id = :id and fit.to_on is null",
-        id=item_id,
-    )
-    starts = fetch(connection, "select value, unit from start_figure where item_id = :id", id=item_id)
-    return {
-        "meter": [(kind, unit) for kind, unit, _, _ in meters],
-        "meter_digits": [(kind, digits, decimals) for kind, _, digits, decimals in meters],
-        "start_at": [Figure(Decimal(value), unit) for value, unit in starts],
-    }
-
-
-def _stored_lash(connection: "Connection", item_id: int) -> dict[str, object]:
-    """Give the newest lash spec, under the names a draft knows."""
-    rows = fetch(
-        connection,
-        "select unit, intake_low, intake_high, exhaust_low, exhaust_high, set_intake, set_exhaust, condition"
-        " from lash_spec where item_id = :id order by from_on desc, id desc limit 1",
-        id=item_id,
-    )
-    if not rows:
-        return {}
-    unit, *texts, condition = rows[0]
-    intake_low, intake_high, exhaust_low, exhaust_high, set_intake, set_exhaust = map(figure, texts)
-    return {
-        "lash_intake": (intake_low, intake_high, unit),
-        "lash_exhaust": (exhaust_low, exhaust_high, unit),
-        "lash_set_intake": (set_intake, unit),
-        "lash_set_exhaust": (set_exhaust, unit),
-        "lash_when": condition,
-    }

@@ -1,5 +1,6 @@
 """Work out of a file: one task done on one day a row, applied in the order it was done."""
 
+import shlex
 from collections.abc import Sequence
 from dataclasses import replace
 from datetime import date
@@ -17,7 +18,7 @@ from fleetcare.operations.load import entry_lives, item_facts, own_readings
 from fleetcare.operations.log import Logged, close_tasks
 from fleetcare.operations.names import person_id
 from fleetcare.operations.readings import NewReading, insert_readings
-from fleetcare.operations.sheets_closing import refuse_without_sheet
+from fleetcare.operations.sheets_closing import NONE_CAME, why_open
 from fleetcare.rules.due.facts import ItemFacts
 
 if TYPE_CHECKING:
@@ -46,10 +47,12 @@ def _without_sheets(connection: "Connection", fresh: Sequence[Work], today: date
     tasks = {task.id: task for each in facts for task in each.tasks}
     faults = []
     for work in fresh:
-        try:
-            refuse_without_sheet(tasks[work.task_id], work.on)
-        except Refused as error:
-            faults.append(RowRefused(work.number, "task", error.detail, error.remedy))
+        task = tasks[work.task_id]
+        why = why_open(task, work.on, NONE_CAME)
+        if why:
+            words = ["fleetcare", "log", work.item.tag, task.name, "--on", work.on.isoformat(), "--sheet", "FILE"]
+            remedy = f"leave the row out, and log it with its sheet: {shlex.join(words)}"
+            faults.append(RowRefused(work.number, "task", f"{task.name} {why}", remedy))
     return faults
 
 

@@ -15,36 +15,10 @@ from fleetcare.operations.find import FoundItem, find_machine
 from fleetcare.operations.fit_meters import add_meters, count_with_machine, restate_start, set_digits, stop_counting
 from fleetcare.operations.names import site_id
 from fleetcare.operations.rows import fetch
+from fleetcare.operations.stored_items import NAMEPLATE
 
 if TYPE_CHECKING:
     from sqlalchemy.orm import Session
-
-# Nameplate options of the command line and the columns they are kept in.
-NAMEPLATE = {
-    "duty": "duty",
-    "cylinders": "cylinders",
-    "layout": "layout",
-    "numbering": "numbering",
-    "firing_order": "firing_order",
-    "fuel": "fuel",
-    "bore": "bore_mm",
-    "stroke": "stroke_mm",
-    "rod": "rod_mm",
-    "compression_ratio": "compression_ratio",
-    "valves_per_cylinder": "valves_per_cylinder",
-    "intake_closes": "intake_closes_deg",
-    "bridged": "bridged",
-    "adjuster": "adjuster",
-    "screw_pitch": "screw_pitch_mm",
-    "screw_at": "screw_at",
-    "rocker_ratio": "rocker_ratio",
-    "shim_step": "shim_step_mm",
-    "oil_grade": "oil_grade",
-    "sump": "sump_l",
-    "rated_rpm": "rated_rpm",
-    "rated_kw": "rated_kw",
-    "altitude": "altitude_m",
-}
 
 
 def add_item(session: "Session", draft: ItemDraft, today: date) -> FoundItem:

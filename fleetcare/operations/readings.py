@@ -138,7 +138,7 @@ def restore_reading(session: "Session", reading_id: int, on: date, *, why: str =
     again = NewReading(row.on, Figure(row.value, row.unit), row.rolled_over)
     trial, collisions = hold_against_past(session.connection(), item, meter, [again])
     if collisions and not sure:
-        raise Refused(say_collision(item, meter, again, collisions[0]), "void that one first, or give --sure")
+        raise Doubted(say_collision(item, meter, again, collisions[0]), "void that one first, or give --sure")
     session.add(ReadingMark(reading_id=row.id, mark="restored", why=why, on=on))
     session.flush()
     suspects = _doubt_what_falls_off(session, meter, trial, on) if collisions else ()

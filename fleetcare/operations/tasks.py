@@ -17,20 +17,18 @@ from fleetcare.domain.quantities import (
     parse_interval,
     plain,
 )
-from fleetcare.drafts.reading_in import read_draft
+from fleetcare.drafts.reading_in import as_option, read_draft
 from fleetcare.drafts.tasks import LastDoneDraft, TaskDraft, TriggerDraft, kind_of, origin_kind
 from fleetcare.errors import FleetError, Refused
 from fleetcare.operations.find import FoundItem, find_meters, find_task
 from fleetcare.operations.log import refuse_future
 from fleetcare.operations.rows import fetch
 from fleetcare.operations.starts import set_last_done
+from fleetcare.operations.stored_tasks import BOUND, FLAGS, grid_read_on, stored_task
 from fleetcare.rules.due.covering import find_cycle
 
 if TYPE_CHECKING:
     from sqlalchemy.orm import Session
-
-_FLAGS = ("law", "insurer", "once", "on_condition", "pause_while_laid_up")
-_BOUND = ("every", "first", "ahead", "grace")
 
 
 def add_task(session: "Session", item: FoundItem, draft: TaskDraft, today: date) -> int:
@@ -65,21 +63,58 @@ def edit_task(
     them. A last-done alone makes no version. Refuses an edit that says nothing.
     """
     task_id = find_task(session.connection(), item, name)
-    task = session.get_one(Task, task_id)
     if not changes and not without:
         raise Refused("nothing to edit", "give what should change, such as --every 250h")
     if without or changes.keys() - {"last_done"}:
-        stored = _without(_stored(session, task_id, on), without, task.name)
-        merged = stored | {key: value for key, value in changes.items() if key not in _BOUND} | {"name": task.name}
-        for field in _BOUND:
-            merged[field] = _merged(field, stored[field], changes.get(field))
-        draft = read_draft(TaskDraft, merged, _label)
-        kept = None if changes.get("grid_origin") else _grid_on(session, task_id, on)
-        _add_version(session, item, task_id, draft, on, grid_on=kept or today)
-    if changes.get("last_done"):
-        told = read_draft(LastDoneDraft, {"last_done": changes["last_done"]}, _label)
+        stored = _without(stored_task(session.connection(), task_id, on), without, name)
+        bound = {field: _merged(field, stored[field], changes.get(field)) for field in BOUND}
+        _change(
+            session, item, task_id, stored | dict(changes) | bound, on, today, keeps_grid=not changes.get("grid_origin")
+        )
+    return _told_last_done(session, item, task_id, changes, today)
+
+
+def restate_task(
+    session: "Session", item: FoundItem, name: str, values: Mapping[str, object], on: date, today: date
+) -> str:
+    """Make a new version of a task from a day on in which these values stand, lists whole; give its name.
+
+    None takes a value away, what is left out stays. A last-done alone makes no version. Refuses to change nothing.
+    """
+    task_id = find_task(session.connection(), item, name)
+    if not values:
+        raise Refused("nothing to edit", "change what should be otherwise")
+    if values.keys() - {"last_done"}:
+        stored = stored_task(session.connection(), task_id, on)
+        _change(session, item, task_id, stored | dict(values), on, today, keeps_grid="grid_origin" not in values)
+    return _told_last_done(session, item, task_id, values, today)
+
+
+def _change(
+    session: "Session",
+    item: FoundItem,
+    task_id: int,
+    values: Mapping[str, object],
+    on: date,
+    today: date,
+    *,
+    keeps_grid: bool,
+) -> None:
+    """Store a version of all values; a grid that is kept goes on from the dial it was given at."""
+    whole = {**values, "name": session.get_one(Task, task_id).name}
+    draft = read_draft(TaskDraft, {key: value for key, value in whole.items() if key != "last_done"}, as_option)
+    kept = grid_read_on(session.connection(), task_id, on) if keeps_grid else None
+    _add_version(session, item, task_id, draft, on, grid_on=kept or today)
+
+
+def _told_last_done(
+    session: "Session", item: FoundItem, task_id: int, values: Mapping[str, object], today: date
+) -> str:
+    """Store when a task was last done, where that is told, and give the task's name."""
+    if values.get("last_done"):
+        told = read_draft(LastDoneDraft, {"last_done": values["last_done"]}, as_option)
         set_last_done(session, item, task_id, told.last_done, today)
-    return task.name
+    return session.get_one(Task, task_id).name
 
 
 def remove_task(session: "Session", item: FoundItem, name: str, on: date, today: date) -> str:
@@ -107,7 +142,7 @@ def _add_version(
         labour_hours=draft.labour,
         caution=draft.caution,
         source=draft.source,
-        **{flag: getattr(draft, flag) for flag in _FLAGS},
+        **{flag: getattr(draft, flag) for flag in FLAGS},
     )
     session.add(version)
     session.flush()
@@ -134,7 +169,7 @@ def _trigger_row(
         window_days=trigger.window_days,
         month_end=trigger.month_end,
     )
-    for field in _BOUND:
+    for field in BOUND:
         value: Amount | Span | None = getattr(trigger, field)
         if value is not None:
             number, unit = _entered(value)
@@ -178,73 +213,13 @@ def names_taken(session: "Session", item: FoundItem) -> set[str]:
     return {row[0] for row in rows}
 
 
-def _version_on(session: "Session", task_id: int, on: date) -> tuple[TaskVersion, Sequence[TaskTrigger]]:
-    """Give the version in force on a day with its triggers."""
-    versions = session.scalars(
-        select(TaskVersion)
-        .where(col(TaskVersion.task_id) == task_id, col(TaskVersion.from_on) <= on)
-        .order_by(col(TaskVersion.from_on), col(TaskVersion.id))
-    ).all()
-    triggers = session.scalars(
-        select(TaskTrigger).where(col(TaskTrigger.version_id) == versions[-1].id).order_by(col(TaskTrigger.place))
-    ).all()
-    return versions[-1], triggers
-
-
-def _grid_on(session: "Session", task_id: int, on: date) -> date | None:
-    """Give the day whose dial the grid's origin in force was read off, None where there is no such figure."""
-    _, triggers = _version_on(session, task_id, on)
-    return next((trigger.grid_on for trigger in triggers if trigger.grid_on is not None), None)
-
-
-def _stored(session: "Session", task_id: int, on: date) -> dict[str, Any]:
-    """Give the version in force on a day as the values of a draft."""
-    version, triggers = _version_on(session, task_id, on)
-    parts = session.scalars(select(TaskPart).where(col(TaskPart.version_id) == version.id))
-    covered = session.scalars(
-        select(Task)
-        .join(TaskCover, col(TaskCover.covered_id) == Task.id)
-        .where(col(TaskCover.version_id) == version.id, col(Task.removed_on).is_(None))
-    )
-    once_each = next((t.once_each for t in triggers if t.once_each), None)
-    window = next((t.window_days for t in triggers if t.window_days is not None), None)
-    values: dict[str, Any] = {
-        field: [
-            f"{plain(getattr(t, field))}{getattr(t, f'{field}_unit')}"
-            for t in triggers
-            if getattr(t, field) is not None
-        ]
-        for field in _BOUND
-    }
-    return values | {
-        "combine": version.combine,
-        "anchor": version.anchor,
-        "not_later_than": version.not_later_than,
-        "needs_sheet": version.needs_sheet,
-        "deferrable": None
-        if version.deferrable is _default_deferrable(version, once_each)
-        else _yes(version.deferrable),
-        "work": version.work,
-        "labour": version.labour_hours,
-        "caution": version.caution,
-        "source": version.source,
-        "once_each": once_each,
-        "window": f"{window}d" if window is not None else None,
-        "through_month_end": any(t.month_end for t in triggers),
-        "grid_origin": [f"{t.grid_origin}{t.grid_unit}" for t in triggers if t.grid_origin],
-        "part": [f"{part.name}:{plain(part.quantity)}" for part in parts],
-        "covers": [task.name for task in covered],
-        **{flag: getattr(version, flag) for flag in _FLAGS},
-    }
-
-
 def _without(stored: dict[str, Any], kinds: Sequence[Kind], name: str) -> dict[str, Any]:
     """Take the intervals of some kinds out of a draft's values, with all that binds to them."""
     there = {kind_of(parse_interval(text)) for text in stored["every"]}
     for kind in kinds:
         if kind not in there:
             raise Refused(f"{name} has no interval counting {kind}", "leave out that --without")
-    left = {field: [t for t in stored[field] if kind_of(parse_interval(t)) not in kinds] for field in _BOUND}
+    left = {field: [t for t in stored[field] if kind_of(parse_interval(t)) not in kinds] for field in BOUND}
     left["grid_origin"] = [text for text in stored["grid_origin"] if origin_kind(text) not in kinds]
     forms = ("once_each", "window", "through_month_end") if Kind.CALENDAR in kinds else ()
     return {**stored, **left, **dict.fromkeys(forms)}
@@ -256,20 +231,8 @@ def _merged(field: str, stored: Sequence[str], given: object) -> list[str]:
     try:
         replaced = {kind_of(parse_interval(text)) for text in fresh}
     except FleetError as error:
-        raise type(error)(f"{_label(field)}: {error.detail}", error.remedy) from None
+        raise type(error)(f"{as_option(field)}: {error.detail}", error.remedy) from None
     return [text for text in stored if kind_of(parse_interval(text)) not in replaced] + fresh
-
-
-def _label(field: str) -> str:
-    return "--" + field.replace("_", "-")
-
-
-def _default_deferrable(version: TaskVersion, once_each: str | None) -> bool:
-    return not (version.law or version.insurer or once_each)
-
-
-def _yes(value: bool) -> str:
-    return "yes" if value else "no"
 
 
 def _entered(value: Amount | Span) -> tuple[Decimal, str]:

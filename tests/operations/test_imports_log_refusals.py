@@ -45,10 +45,10 @@ def test_a_row_with_another_figure_than_the_entry_about_it_names_that_entry(
     assert take_in(yard, "log", SHORT, "P-01,Oil,2026-04-20,1480").known == 1
 
 
-def test_a_task_that_needs_a_sheet_is_refused_with_the_remedy_of_the_log_command(yard: Context) -> None:
+def test_a_task_that_needs_a_sheet_is_refused_and_leads_to_logging_it_with_its_sheet(yard: Context) -> None:
     lines = refusals(yard, "log", SHORT, "P-01,Lash,2026-04-20,1480", "P-01,Oill,2026-04-20,1480")
     wanted = [
-        "row 2, column task: Lash closes only with its lash sheet; give --part-done to keep a note",
+        "row 2, column task: Lash closes only with its lash sheet; leave the row out, and log it with its sheet",
         "row 3, column task: P-01 has no task 'Oill'; did you mean Oil?",
     ]
     assert beginnings(lines, wanted) == wanted

@@ -47,8 +47,11 @@ def _apply_draft() -> "type[Draft]":
 
 def _apply(session: "Session", subject: Subject, draft: "ApplyDraft", today: date, said: Said) -> "Entered":
     from fleetcare.operations.adding import enter_schedule
+    from fleetcare.rulebook.schedules import find_schedule
 
-    return enter_schedule(session, subject.tag, draft, today)
+    (entered,) = enter_schedule(session, find_schedule(draft.name), [subject.tag], draft, today)
+    entered.moved.clear()  # the new lines stand in the list below; what is said has three lines at the foot
+    return entered
 
 
 ENGINE = Form(
