@@ -9,6 +9,8 @@ compensated. It holds for metal too fine for the filter, without an oil change i
 from dataclasses import dataclass
 from decimal import Decimal
 
+from fleetcare.domain.quantities import plain
+from fleetcare.errors import Refused
 from fleetcare.rules.bounds import check_between, check_within
 
 MOST_PPM = 1_000_000  # by definition; the others are limits of sense
@@ -48,6 +50,36 @@ def wear_rate(
         check_between("top-up", added, 0, MOST_LITRES, "L")
         check_within("sump", sump, MOST_LITRES, "L")
         share = added / sump
-    factor = share / (1 - (-share).exp()) if share else Decimal(1)
+    factor = make_up_factor(share)
     shed = (ppm - fresh) * factor
     return WearRate(fresh + shed, 100 * shed / hours, share, factor)
+
+
+def make_up_factor(share: Decimal) -> Decimal:
+    """Give x / (1 - e^-x) for a top-up of x sumps: 1 without any, near 1 + x/2, always below 1 + x."""
+    return share / (1 - (-share).exp()) if share else Decimal(1)
+
+
+def steady_ppm(rate: WearRate, *, fresh: Decimal = Decimal(0)) -> Decimal | None:
+    """Give the level the metal tends to, and never reaches, at this wear and top-up; None without top-up: it has none.
+
+    C_inf = c_f + w/q of the mass balance above, with w and q told by the rate.
+    """
+    return fresh + (rate.corrected_ppm - fresh) / rate.make_up if rate.make_up else None
+
+
+def before_top_up(ppm: Decimal, *, added: Decimal, sump: Decimal, fresh: Decimal = Decimal(0)) -> Decimal:
+    """Give what a sample would have read just before `added` litres filled the sump up to its `sump` litres.
+
+    One lump of fresh oil, well mixed in: (C V - c_f A) / (V - A). Raises Refused for a figure that cannot be right.
+    """
+    check_between("metal", ppm, 0, MOST_PPM, "ppm")
+    check_between("metal in fresh oil", fresh, 0, MOST_PPM, "ppm")
+    check_within("sump", sump, MOST_LITRES, "L")
+    check_between("top-up", added, 0, MOST_LITRES, "L")
+    if added >= sump:
+        raise Refused(
+            f"top-up {plain(added)} L cannot be right, the sump holds {plain(sump)} L",
+            "give the litres added, less than the sump holds",
+        )
+    return (ppm * sump - fresh * added) / (sump - added)
