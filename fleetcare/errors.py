@@ -44,11 +44,11 @@ class Doubted(Refused):
 
 
 class SheetWanted(Refused):
-    """The request needs a sheet of a kind, which did not come with it."""
+    """The request needs a sheet of a kind, which did not come with it, for a task, or for none."""
 
-    def __init__(self, detail: str, remedy: str, kind: str) -> None:
+    def __init__(self, detail: str, remedy: str, kind: str, task: str = "") -> None:
         super().__init__(detail, remedy)
-        self.kind = kind
+        self.kind, self.task = kind, task
 
 
 class Refusals(Refused):

@@ -145,6 +145,14 @@ class LogDraft(TakenSheet):
         return self
 
 
+class MeasureDraft(LogDraft):
+    """Measurements taken without any work; their sheet may follow when the rest is read."""
+
+    @model_validator(mode="after")
+    def _check_what(self) -> Self:
+        return self
+
+
 class CorrectionDraft(SheetOptions):
     """What an entry should have said; what is not given stays as it was."""
 

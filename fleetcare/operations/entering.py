@@ -7,6 +7,7 @@ from typing import TYPE_CHECKING
 
 from fleetcare.domain.engines import Status
 from fleetcare.drafts.work import ReadingDraft
+from fleetcare.errors import SheetWanted
 from fleetcare.operations.against_past import NewReading, hold_against_past
 from fleetcare.operations.correct import correct_entry, item_of_entry
 from fleetcare.operations.deferrals import defer
@@ -62,6 +63,16 @@ def enter_work(
             _explain_figures(session, draft, explained)
         logged = record_work(session, draft, today)
     return Entered([*logged_words(logged, f"on {draft.on}")], [*moved_words(moves.moved)], logged=logged)
+
+
+def enter_measured(
+    session: "Session", draft: "MeasureDraft", kind: str, today: date, explained: Mapping[str, bool] | None = None
+) -> Entered:
+    """Store measurements taken without any work; raises SheetWanted, when all else is right, while there is no sheet."""
+    entered = enter_work(session, draft, today, explained)
+    if draft.sheet is None:
+        raise SheetWanted(f"what was measured on {draft.tag} is not written down yet", "fill in the sheet", kind)
+    return entered
 
 
 def _explain_figures(session: "Session", draft: "LogDraft", explained: Mapping[str, bool]) -> None:

@@ -41,7 +41,7 @@ def refuse_without_sheet(task: Task, on: date, sheets: Sheets = NONE_CAME) -> No
     if why and kind in sheets:
         raise Refused(f"{task.name} {why}", _INCOMPLETE)
     if why:
-        raise SheetWanted(f"{task.name} {why}", _WITHOUT, kind)
+        raise SheetWanted(f"{task.name} {why}", _WITHOUT, kind, task.name)
 
 
 def say_still_open(

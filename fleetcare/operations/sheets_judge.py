@@ -7,7 +7,8 @@ from datetime import date
 from decimal import Decimal
 from typing import TYPE_CHECKING
 
-from fleetcare.domain.sheets import LASH, SHIM, Judgement, LashStand, Phase, Sheet, SheetValue
+from fleetcare.domain.sheets import LASH, SHIM, Judgement, LashStand, Phase, Sheet
+from fleetcare.errors import Refused
 from fleetcare.operations.find import FoundItem
 from fleetcare.operations.sheets_load import LashForm, lash_form, load_sheets
 from fleetcare.rules.explain_lash import JudgedRow as JudgedRow
@@ -88,9 +89,11 @@ def last_sheet(connection: "Connection", item: FoundItem, on: date) -> JudgedShe
 
 
 def sheet_of_entry(connection: "Connection", item: FoundItem, entry: int) -> JudgedSheet:
-    """Load the lash sheet an entry stands with, and judge it."""
-    sheets = load_sheets(connection, item.id, date.max)
-    return _judge_stored(connection, item, next(sheet for sheet in sheets if sheet.entry == entry))
+    """Load the lash sheet an entry stands with, and judge it. Refuses an entry that stands with none."""
+    sheet = next((sheet for sheet in load_sheets(connection, item.id, date.max) if sheet.entry == entry), None)
+    if sheet is None:
+        raise Refused(f"entry {entry} of {item.tag} has no lash sheet", "choose one that has")
+    return _judge_stored(connection, item, sheet)
 
 
 def _judge_stored(connection: "Connection", item: FoundItem, sheet: Sheet) -> JudgedSheet:

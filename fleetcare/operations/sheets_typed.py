@@ -7,7 +7,7 @@ from decimal import Decimal
 from fleetcare.domain.quantities import plain
 from fleetcare.domain.sheets import LASH, SHIM, CellKey, Phase, Place, Sheet, SheetValue
 from fleetcare.drafts.sheets import SheetIn, SheetRow
-from fleetcare.errors import FleetError
+from fleetcare.errors import FleetError, Refused
 from fleetcare.operations.sheets_judge import JudgedRow, JudgedSheet, judge
 from fleetcare.operations.sheets_load import LashForm
 from fleetcare.operations.sheets_values import DoubtedGap, doubt_of, read_value
@@ -40,14 +40,19 @@ class TypedSheet:
         return row is not None and row.place in _OUT
 
 
-def read_typed(form: LashForm, typed: Typed, condition: str = "", gauge: str = "") -> TypedSheet:
-    """Read and judge what stands in the cells of an engine's sheet; nothing typed raises."""
+def read_typed(
+    form: LashForm, typed: Typed, condition: str = "", gauge: str = "", unit: str | None = None
+) -> TypedSheet:
+    """Read and judge what stands in the cells of an engine's sheet; gaps are in `unit`, else in that of the engine's limits.
+
+    Nothing typed raises.
+    """
     values: dict[CellKey, SheetValue] = {}
     wrong: dict[CellKey, FleetError] = {}
     for key, text in typed.items():
         if text.strip():
             try:
-                values[key] = read_value(form, *key, text.strip(), None)
+                values[key] = read_value(form, *key, text.strip(), unit)
             except FleetError as error:
                 wrong[key] = error
     doubts = {key: found for key, value in values.items() if (found := doubt_of(form, value)) is not None}
@@ -91,8 +96,7 @@ def say_cell(form: LashForm, typed: TypedSheet, key: CellKey) -> list[str]:
     if error is not None:
         parts.append("; ".join(error.lines()))
     elif row is not None:
-        parts += [f"{row.value} {row.unit} {row.verdict}".strip(), row.note, row.mending]
-        parts += [doubt.text] if doubt is not None else []
+        parts += [f"{row.value} {row.unit} {row.verdict}", row.note, row.mending if doubt is None else "likely a slip"]
     else:
         parts += _asked(form, typed, key)
     return [part for part in parts if part]
@@ -100,8 +104,12 @@ def say_cell(form: LashForm, typed: TypedSheet, key: CellKey) -> list[str]:
 
 def say_here(form: LashForm, key: CellKey) -> str:
     """Say where the crank must stand for a cell."""
-    at = next(n for n, stop in enumerate(form.stops) if any(point.name == key.point for point in stop.points))
-    return say_stop(form.stops, at)
+    return say_stop(form.stops, _stop_of(form, key))
+
+
+def points_here(form: LashForm, key: CellKey) -> frozenset[str]:
+    """Give the points that are measured with the crank where it must stand for a cell."""
+    return frozenset(point.name for point in form.stops[_stop_of(form, key)].points)
 
 
 def last_shown(form: LashForm, key: CellKey) -> str:
@@ -114,17 +122,31 @@ def last_shown(form: LashForm, key: CellKey) -> str:
     return str(last.value) if last is not None else ""
 
 
-def sheet_in(order: Sequence[CellKey], typed: Typed, sure: frozenset[CellKey]) -> SheetIn:
+def sheet_in(order: Sequence[CellKey], typed: Typed, sure: frozenset[CellKey], unit: str | None = None) -> SheetIn:
     """Give what is typed as the rows of a sheet, numbered by the place of their cells; `sure` ones are right as they look."""
-    return SheetIn(
-        tuple(
-            SheetRow(
-                number, {"quantity": key.quantity, "point": key.point, "phase": key.phase, "value": text}, key in sure
-            )
-            for number, key in enumerate(order)
-            if (text := typed.get(key, "").strip())
-        )
-    )
+    rows = []
+    for number, key in enumerate(order):
+        if text := typed.get(key, "").strip():
+            cells = {"quantity": key.quantity, "point": key.point, "phase": key.phase, "value": text}
+            gauged_in = {"unit": unit} if unit and key.quantity == LASH else {}
+            rows.append(SheetRow(number, {**cells, **gauged_in}, key in sure))
+    return SheetIn(tuple(rows))
+
+
+def typed_of(sheet: Sheet) -> tuple[Typed, str]:
+    """Give what would be typed to get the values of a stored sheet, and the unit of its gaps.
+
+    Refuses a sheet with gaps in two units: its cells have one.
+    """
+    units = {value.unit for value in sheet.values if value.quantity == LASH}
+    if len(units) > 1:
+        raise Refused(f"the sheet of entry {sheet.entry} has gaps in mm and in inches", "give it anew from a file")
+    texts = {CellKey(value.quantity, value.point, value.phase): str(value) for value in sheet.values}
+    return texts, next(iter(units), "")
+
+
+def _stop_of(form: LashForm, key: CellKey) -> int:
+    return next(n for n, stop in enumerate(form.stops) if any(point.name == key.point for point in stop.points))
 
 
 def _asked(form: LashForm, typed: TypedSheet, key: CellKey) -> list[str]:

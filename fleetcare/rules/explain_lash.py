@@ -81,7 +81,7 @@ def say_judgement(judged: Judgement, spec: LashSpec | None) -> str:
         return f"in {limits}"
     if judged.place is Place.UNDECIDED:
         return f"the blades straddle {_short(judged.limit)} {judged.unit}, the end of {limits}: use finer ones"
-    off = _say_off(judged.off_least, -judged.margin)
+    off = say_off(judged.off_least, -judged.margin)
     nothing = ", no gap is left: the valve may not close" if judged.value.ends[0] == 0 else ""
     return f"{off} {judged.unit} {judged.place} {limits}{nothing}"
 
@@ -107,19 +107,15 @@ def say_doubt(value: SheetValue, doubt: Doubt) -> str:
 
 
 def say_stop(stops: Sequence[Stop], number: int) -> str:
-    """Say how to turn the crank to the stop of a number, from 0, and which points are set there."""
-    stop = stops[number]
-    names = " ".join(point.name for point in stop.points)
-    here = stop.position
+    """Say how to turn the crank to the stop of a number, from 0, and how it stands there."""
+    here = stops[number].position
     if here is None:
-        return f"No firing order is known: see to it yourself that each valve is closed when it is measured. {names}"
+        return "No firing order is known: see to it yourself that each valve is closed when it is measured"
     before = stops[number - 1].position if number else None
     turn = f"turn on {plain(_degrees(here.crank - before.crank))}°: " if before is not None else ""
-    standing = (
-        f"cylinder {here.tdc_compression} at TDC on compression" if here.tdc_compression else "no cylinder at TDC"
-    )
+    standing = f"{here.tdc_compression} at TDC on compression" if here.tdc_compression else "no cylinder at TDC"
     rocking = f", {here.rocking} rocking" if here.rocking else ""
-    return f"Stop {number + 1} of {len(stops)}: {turn}{standing}{rocking}. Here {names}"
+    return f"Stop {number + 1} of {len(stops)}: {turn}{standing}{rocking}"
 
 
 def say_spec(spec: LashSpec | None) -> str:
@@ -138,7 +134,7 @@ _WHY_NOT: Mapping[Unjudged, str] = {
 }
 
 
-def _say_off(least: Decimal, most: Decimal) -> str:
+def say_off(least: Decimal, most: Decimal) -> str:
     """Say how far out a gap is: one figure, or from and to for an interval."""
     return _short(most) if least == most else f"{_short(least)} to {_short(most)}"
 

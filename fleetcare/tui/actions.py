@@ -5,7 +5,7 @@ from dataclasses import dataclass
 from textual.binding import Binding, BindingType
 
 EVERYWHERE = "everywhere"
-TYPED_IN = frozenset({"form", "entry"})
+TYPED_IN = frozenset({"form", "entry", "sheet"})
 """Places where letters are typed, so that no letter does anything else."""
 
 _SAID = {
@@ -23,6 +23,8 @@ _SAID = {
     "ctrl+s": "Ctrl S",
     "ctrl+n": "Ctrl N",
     "f1": "F1",
+    "pagedown": "PgDn",
+    "pageup": "PgUp",
 }
 
 
@@ -90,6 +92,7 @@ ACTIONS = (
     Action("working", "escape", "back", "back", "go back to where you came from"),
     Action("working", "e", "item", "engine", "open the page of the line's engine or machine"),
     Action("more", "enter", "choose", "open", "write down what is under the cursor"),
+    Action("more", "v", "write('lash')", "valve lash", "measure its valve lash without closing a task", in_foot=False),
     Action("more", "l", "write('lay-up')", "lay up", "it is laid up for a while", in_foot=False),
     Action(
         "more", "r", "write('return')", "return", "it returns to service; what waits for that is shown", in_foot=False
@@ -122,6 +125,16 @@ ACTIONS = (
     Action("entry", "ctrl+n", "anew", "begin anew", "throw away what was typed and begin anew"),
     Action("entry", "f1", "help", "keys", "show the keys of where you are"),
     Action("entry", "escape", "back", "back", "close the line; what is typed stays for the next time"),
+    Action("sheet", "ctrl+s", "store", "store", "write it down"),
+    Action(
+        "sheet", "enter,tab", "next(1)", "next", "go to the next value, in the order valves can be set", goes_on=True
+    ),
+    Action("sheet", "shift+tab", "next(-1)", "before", "go to the value before", in_foot=False, goes_on=True),
+    Action("sheet", "pagedown", "scroll(1)", "cautions", "scroll down, to the cautions below"),
+    Action("sheet", "pageup", "scroll(-1)", "up", "scroll up", in_foot=False),
+    Action("sheet", "ctrl+n", "anew", "begin anew", "throw away what was typed and begin anew"),
+    Action("sheet", "f1", "help", "keys", "show the keys of where you are"),
+    Action("sheet", "escape", "back", "back", "leave; what is typed stays for the next time"),
     Action("narrow", "enter,space", "choose", "choose", "choose what is under the cursor, or no longer"),
     Action("narrow", "n", "to_group(1)", "next group", "go to the next heading", in_foot=False),
     Action("narrow", "p", "to_group(-1)", "group before", "go to the heading before", in_foot=False),

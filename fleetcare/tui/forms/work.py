@@ -31,6 +31,7 @@ DEFECT = Field("defect", "Defect", "a defect seen")
 
 RIGHT = Answer("r", "it is right as it stands; older readings that do not fit it count no more", {"sure": True})
 WENT_ROUND = Answer("g", "the dial went round to 0", {"rolled_over": True})
+FIGURE_ANSWERS = (RIGHT, WENT_ROUND, Answer("n", "it is a new meter; write that down first", leads_to="swap"))
 
 
 def _log_draft() -> "type[Draft]":
@@ -104,7 +105,7 @@ LOG = Form(
     _log_draft,
     _log,
     start=_log_start,
-    answers=(RIGHT, WENT_ROUND, Answer("n", "it is a new meter; write that down first", leads_to="swap")),
+    answers=FIGURE_ANSWERS,
 )
 CORRECT = Form(
     "correct",

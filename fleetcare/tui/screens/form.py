@@ -1,36 +1,25 @@
 """One form on the screen: read, stored, asked about where it is likely a slip, and left with what was stored."""
 
-from collections.abc import Iterator, Sequence
+from collections.abc import Iterator, Mapping, Sequence
 from functools import partial
 from typing import TYPE_CHECKING
 
-from textual.message import Message
-
-from fleetcare.errors import Doubted, FleetError, Refused
+from fleetcare.errors import Doubted, FleetError, Refused, SheetWanted
 from fleetcare.tui.filling import FillingScreen
 from fleetcare.tui.forms.base import Answer, Form, Said, Subject
+from fleetcare.tui.sheets.base import SheetFor
+from fleetcare.tui.storing import StoringScreen
 from fleetcare.tui.widgets.question import Question
 
 if TYPE_CHECKING:
+    from sqlalchemy.orm import Session
+
     from fleetcare.drafts.reading_in import Draft
+    from fleetcare.operations.entering import Entered
 
 
-class FormScreen(FillingScreen):
+class FormScreen(StoringScreen, FillingScreen):
     """A form on a subject. It is left with what was stored, in sentences, or with None."""
-
-    class Stored(Message):
-        """It was stored; what that was, in sentences."""
-
-        def __init__(self, sentences: Sequence[str]) -> None:
-            super().__init__()
-            self.sentences = sentences
-
-    class NotStored(Message):
-        """Nothing was stored, and why."""
-
-        def __init__(self, error: FleetError) -> None:
-            super().__init__()
-            self.error = error
 
     _draft: "Draft | None" = None
     """What is being stored, or asked about, just now."""
@@ -64,17 +53,23 @@ class FormScreen(FillingScreen):
         if draft is not None and not wrong:
             self._begin(draft, {})
 
-    def on_form_screen_stored(self, message: Stored) -> None:
+    def on_storing_screen_stored(self, message: StoringScreen.Stored) -> None:
         """Go back with what was stored."""
+        self._leave(message.sentences)
+
+    def _leave(self, sentences: Sequence[str]) -> None:
         self.finish()
         for name, row in self.rows.items():
             if row.field.kept_for_shift and row.value.strip():
                 self.fleet_app.shift[name] = row.value.strip()
-        self.dismiss(message.sentences)
+        self.dismiss(sentences)
 
-    def on_form_screen_not_stored(self, message: NotStored) -> None:
-        """Ask about a doubt, once a field; say anything else at the foot."""
+    def on_storing_screen_not_stored(self, message: StoringScreen.NotStored) -> None:
+        """Ask about a doubt, once a field; go on to the sheet the work needs; say anything else at the foot."""
         error = message.error
+        if isinstance(error, SheetWanted) and self._draft is not None:
+            self._fill_in(error, self._draft)
+            return
         doubted = self.form.field_of(error, self.values) if isinstance(error, Doubted) and self.form.answers else ""
         if doubted and doubted not in self._said:
             self._doubted = doubted
@@ -109,17 +104,32 @@ class FormScreen(FillingScreen):
 
     def _begin(self, draft: "Draft", said: Said) -> None:
         self._draft, self._said = draft, said
-        self.run_worker(partial(self._store, draft, said), thread=True, group="store", exit_on_error=False)
+        self.store(partial(self._record, draft))
 
-    def _store(self, draft: "Draft", said: Said) -> None:
-        """Store it. Runs in a thread: touches no widget."""
-        try:
-            with self.context.write() as session:
-                entered = self.form.store(session, self.subject, draft, self.context.today(), said)
-        except FleetError as error:
-            self.post_message(self.NotStored(error))
-        else:
-            self.post_message(self.Stored(entered.sentences()))
+    def _record(self, draft: "Draft", session: "Session") -> "Entered":
+        return self.form.store(session, self.subject, draft, self.context.today(), self._said)
+
+    def _fill_in(self, wanted: SheetWanted, draft: "Draft") -> None:
+        """Open the sheet the work needs; it is stored together with what is typed here."""
+        from fleetcare.tui.screens.sheet import SheetScreen
+        from fleetcare.tui.sheets.all import SHEETS
+
+        self._draft = None
+        taken_on = getattr(draft, "on", None) or self.context.today()
+        about = SheetFor(self.subject.tag, taken_on, wanted.task, self.facts.whose if self.facts else "")
+        self.app.push_screen(
+            SheetScreen(SHEETS[wanted.kind], about, partial(self._record_with, draft)), self._filled_in
+        )
+
+    def _record_with(self, draft: "Draft", session: "Session", came: Mapping[str, object]) -> "Entered":
+        """Store what is typed here with the sheet that came along; both may tell of a defect."""
+        defects = [defect for defect in (getattr(draft, "defect", None), came.get("defect")) if defect]
+        told = {"defect": "; ".join(map(str, defects))} if defects else {}
+        return self._record(draft.model_copy(update={**came, **told}), session)
+
+    def _filled_in(self, sentences: Sequence[str] | None) -> None:
+        if sentences is not None:
+            self._leave(sentences)
 
     def _go_on(self, answer: Answer) -> None:
         """Open the form an answer leads to, with the day and figure typed here."""

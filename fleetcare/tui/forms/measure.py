@@ -1,0 +1,38 @@
+"""Forms on measurements taken without any work: who took them and at what figure; their sheet follows."""
+
+from collections.abc import Callable
+from datetime import date
+from typing import TYPE_CHECKING
+
+from fleetcare.domain.sheets import LASH
+from fleetcare.tui.forms.base import BY, NOTE, ON, Form, Said, Subject
+from fleetcare.tui.forms.work import AT, FIGURE_ANSWERS
+
+if TYPE_CHECKING:
+    from sqlalchemy.orm import Session
+
+    from fleetcare.drafts.reading_in import Draft
+    from fleetcare.drafts.work import MeasureDraft
+    from fleetcare.operations.entering import Entered
+
+
+def _draft() -> "type[Draft]":
+    from fleetcare.drafts.work import MeasureDraft
+
+    return MeasureDraft
+
+
+def _storing(kind: str) -> "Callable[[Session, Subject, MeasureDraft, date, Said], Entered]":
+    """Give what stores a sheet of a kind."""
+
+    def store(session: "Session", subject: Subject, draft: "MeasureDraft", today: date, said: Said) -> "Entered":
+        from fleetcare.operations.entering import enter_measured
+
+        return enter_measured(session, draft, kind, today, said.get("at"))
+
+    return store
+
+
+MEASURE_LASH = Form(
+    LASH, "Measure the valve lash of {tag}", (ON, AT, BY, NOTE), _draft, _storing(LASH), answers=FIGURE_ANSWERS
+)

@@ -1,0 +1,1 @@
+"""Sheets of measurements on the screen, one file for each kind."""
