@@ -106,7 +106,7 @@ def store_line(session: "Session", seen: ReadBack, on: date) -> "list[Entered]":
 
     now = read_back(session.connection(), seen.line.text, on)
     if now != seen:
-        raise Refused(f"the line does something else by now: {now.sentence}", "read it again, then store it")
+        raise Refused("the line would do something else by now", "read it again, then store it")
     if not now.can_be_stored:
         raise Refused(f"a question is open: {now.questions[0].asked}", "answer it, then store the line")
     entered = [enter_reading(session, read_draft(ReadingDraft, fields), on) for fields in now.line.readings()]

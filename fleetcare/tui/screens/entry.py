@@ -212,9 +212,11 @@ class EntryScreen(OneLineScreen):
         from fleetcare.tui.forms.work import log_preset
         from fleetcare.tui.screens.form import FormScreen
 
-        said = {**log_preset(line), "value": line.text[question.start : question.end]}
-        form = FormScreen(FORMS[_FORMS[choice.leads_to]], Subject(line.tag, preset=said))
-        self.app.push_screen(form, partial(self._led, line.text, choice.leads_to in _INSTEAD))
+        is_instead = choice.leads_to in _INSTEAD
+        figure = {"on": line.on.isoformat(), "value": line.text[question.start : question.end]}
+        subject = Subject(line.tag, preset=log_preset(line) if is_instead else figure)
+        form = FormScreen(FORMS[_FORMS[choice.leads_to]], subject)
+        self.app.push_screen(form, partial(self._led, line.text, is_instead))
 
     def _led(self, text: str, is_instead: bool, sentences: Sequence[str] | None) -> None:
         """Come back from a form an answer led to."""

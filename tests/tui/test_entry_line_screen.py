@@ -1,0 +1,393 @@
+"""The entry line on the screens: opened from anywhere, read back while it is typed, stored only as it was read back."""
+
+from datetime import date
+from pathlib import Path
+
+import pytest
+from textual.pilot import Pilot
+
+from fleetcare.context import Context
+from fleetcare.tui.frame import FramedScreen
+from fleetcare.tui.screens.engines import EnginesScreen
+from fleetcare.tui.screens.entry import EntryScreen
+from fleetcare.tui.screens.form import FormScreen
+from tests.tui.conftest import Opened, line_with, press, seen, settle_down, type_in
+from tests.tui.forms import stored
+
+OIL = "ps1 oil 310 fenn"
+OIL_BACK = "PS-1, oil and filter, 310 h on the dial, Fenn; next 560 h or 1 May 2027"
+
+
+async def type_line(pilot: Pilot[None], text: str) -> EntryScreen:
+    """Type into the entry line, opening it first where it is not open."""
+    if not isinstance(pilot.app.screen, EntryScreen):
+        await press(pilot, "i")
+    screen = pilot.app.screen
+    assert isinstance(screen, EntryScreen)
+    screen.editor.insert_text_at_cursor(text)
+    await settle_down(pilot)
+    return screen
+
+
+def said(pilot: Pilot[None]) -> str:
+    """Give what stands below the line typed, on one line."""
+    lines = seen(pilot)
+    place = next(number for number, line in enumerate(lines) if line.startswith("▌entry line"))
+    return " ".join(" ".join(lines[place + 1 :]).split())
+
+
+def form_in_front(pilot: Pilot[None]) -> FormScreen:
+    """Give the form an answer led to."""
+    screen = pilot.app.screen
+    assert isinstance(screen, FormScreen)
+    return screen
+
+
+@pytest.mark.parametrize(
+    "way",
+    [(), ("2",), ("e",), ("2", "enter"), ("e", "h"), ("enter",), ("f",), ("x",), ("question_mark",)],
+    ids=["due", "engines", "page", "page from engines", "history", "working", "narrow", "more", "keys"],
+)
+async def test_it_opens_over_every_screen_and_esc_gives_that_screen_back(opened: Opened, way: tuple[str, ...]) -> None:
+    async with opened(*way, size=(60, 18)) as pilot:
+        before, screen = seen(pilot), pilot.app.screen
+        await press(pilot, "i")
+        assert isinstance(pilot.app.screen, EntryScreen)
+        assert seen(pilot)[:9] == before[:9]
+        assert seen(pilot)[-1].startswith(" Enter store")
+        await press(pilot, "escape")
+        assert pilot.app.screen is screen
+        assert seen(pilot) == before
+
+
+async def test_letters_are_typed_and_do_nothing_else(opened: Opened) -> None:
+    async with opened("i", *"2diq?1") as pilot:
+        assert line_with(pilot, "▌entry line  2diq?1")
+        assert pilot.app.is_running
+
+
+async def test_what_is_typed_is_read_back_with_all_it_would_do(opened: Opened, db: Path) -> None:
+    before = stored(db)
+    async with opened("i") as pilot:
+        await pilot.press(*("space" if letter == " " else letter for letter in OIL))
+        await settle_down(pilot)
+        assert said(pilot).startswith(OIL_BACK)
+        assert "Enter stores it." in said(pilot)
+        assert line_with(pilot, "TR-1", "Hydraulic hoses")
+    assert stored(db) == before
+
+
+async def test_enter_stores_what_was_read_back_and_says_what_it_closed_and_moved(opened: Opened, db: Path) -> None:
+    before = stored(db)
+    async with opened() as pilot:
+        screen = await type_line(pilot, OIL)
+        await press(pilot, "enter")
+        assert "(scheduled) of PS-1 on 2026-05-01." in said(pilot)
+        assert "Done: Oil and filter." in said(pilot)
+        assert "→ 560 h on the dial" in said(pilot)
+        assert screen.text == ""
+        await press(pilot, "escape")
+        assert not isinstance(pilot.app.screen, EntryScreen)
+    assert stored(db) > before
+
+
+async def test_the_screen_below_shows_at_once_what_was_stored(opened: Opened) -> None:
+    async with opened("2", size=(100, 30)) as pilot:
+        await type_line(pilot, "sb1 25")
+        await press(pilot, "enter")
+        assert line_with(pilot, "▌SB-1", "25 h", "2026-05-01")
+        await press(pilot, "escape")
+        assert isinstance(pilot.app.screen, EnginesScreen)
+
+
+async def test_a_second_line_follows_the_first(opened: Opened, db: Path) -> None:
+    async with opened() as pilot:
+        await type_line(pilot, "sb1 25")
+        await press(pilot, "enter")
+        once = stored(db)
+        await type_line(pilot, "tr1 4911")
+        assert said(pilot).startswith("TR-1, 4911 h on the dial")
+        await press(pilot, "enter")
+        assert stored(db) > once
+
+
+async def test_enter_before_the_line_was_read_back_stores_nothing(opened: Opened, db: Path) -> None:
+    before = stored(db)
+    async with opened("i") as pilot:
+        screen = pilot.app.screen
+        assert isinstance(screen, EntryScreen)
+        screen.editor.value = "sb1 25"
+        screen.action_store()
+        await settle_down(pilot)
+        assert stored(db) == before
+        assert said(pilot).startswith("SB-1, 25 h on the dial")
+        await press(pilot, "enter")
+        assert stored(db) > before
+
+
+async def test_what_was_read_back_is_not_stored_for_another_text(opened: Opened, db: Path) -> None:
+    before = stored(db)
+    async with opened() as pilot:
+        screen = await type_line(pilot, "sb1 25")
+        screen.editor.value = "sb1 257"
+        screen.action_store()
+        await settle_down(pilot)
+    assert stored(db) == before
+
+
+async def test_enter_stores_once_however_often_it_is_pressed(opened: Opened, db: Path) -> None:
+    async with opened() as pilot:
+        await type_line(pilot, "sb1 25")
+        before = stored(db)
+        await pilot.press("enter", "enter", "enter")
+        await settle_down(pilot)
+        once = stored(db)
+        await press(pilot, "enter")
+        assert before < once == stored(db)
+
+
+async def test_what_another_window_changed_meanwhile_is_read_back_anew(opened: Opened, db: Path) -> None:
+    async with opened() as pilot:
+        screen = await type_line(pilot, OIL)
+        back = screen.back
+        type_in(db, "log", "PS-1", "Oil and filter", "--at", "305h", "--on", "2026-04-30")
+        type_in(db, "task", "edit", "PS-1", "Oil and filter", "--every", "100h", "--on", "2026-04-30")
+        before = stored(db)
+        assert screen.back is back
+        await press(pilot, "enter")
+        assert "410 h" in said(pilot)
+        assert stored(db) == before
+        await press(pilot, "enter")
+        assert stored(db) > before
+
+
+async def test_the_line_is_read_again_when_the_file_changes(opened: Opened, db: Path) -> None:
+    async with opened() as pilot:
+        screen = await type_line(pilot, "sb1 25 zoe")
+        assert "zoe: what is it?" in said(pilot)
+        type_in(db, "log", "TR-1", "--note", "looked at", "--by", "Zoe")
+        screen.follow()
+        await settle_down(pilot)
+        assert said(pilot).startswith("SB-1, 25 h on the dial, Zoe;")
+
+
+async def test_what_is_unclear_is_asked_and_an_answer_taken_with_arrow_and_enter(opened: Opened, db: Path) -> None:
+    before = stored(db)
+    async with opened() as pilot:
+        screen = await type_line(pilot, "sb1 zoe 25")
+        assert "zoe: what is it?" in said(pilot)
+        await press(pilot, "enter")
+        assert screen.text == "sb1 zoe 25"
+        assert line_with(pilot, "▌ done by zoe, a new name")
+        await press(pilot, "enter")
+        assert screen.text == "sb1 by zoe 25"
+        assert said(pilot).startswith("SB-1, 25 h on the dial, zoe (a new name);")
+    assert stored(db) == before
+
+
+async def test_the_mark_goes_up_to_none_and_down_to_the_last_answer(opened: Opened) -> None:
+    async with opened() as pilot:
+        screen = await type_line(pilot, "ps1 ")
+        assert "what was done, or what does the dial show?" in said(pilot)
+        await press(pilot, "up")
+        assert screen.marked == -1
+        await press(pilot, "down", "down", "down", "down", "down")
+        assert line_with(pilot, "▌ Coolant")
+        await press(pilot, "enter")
+        assert screen.text.split() == ["ps1", "task", "Coolant"]
+        assert said(pilot).startswith("PS-1, coolant; next 1 May 2029")
+        await press(pilot, "down")
+        assert said(pilot).startswith("PS-1, coolant; next 1 May 2029")
+
+
+async def test_many_answers_are_gone_through_a_few_at_a_time(opened: Opened, db: Path) -> None:
+    for name in ("Belts", "Hoses", "Anodes", "Mounts", "Injectors", "Starter", "Exhaust"):
+        type_in(db, "task", "add", "SB-1", name, "--every", "2y")
+    async with opened() as pilot:
+        await type_line(pilot, "sb1")
+        assert "Exhaust" not in said(pilot)
+        await press(pilot, *["down"] * 9)
+        assert line_with(pilot, "▌ Exhaust")
+        assert "9 answers" in said(pilot)
+
+
+async def test_how_many_questions_follow_is_said(opened: Opened) -> None:
+    async with opened() as pilot:
+        await type_line(pilot, "sb1 25 xyz uvw")
+        assert "xyz: what is it?" in said(pilot)
+        assert "then 1 more to answer" in said(pilot)
+
+
+async def test_a_question_without_answers_is_left_standing_by_enter(opened: Opened, db: Path) -> None:
+    before = stored(db)
+    async with opened() as pilot:
+        screen = await type_line(pilot, "25")
+        assert "which engine or machine?" in said(pilot)
+        await press(pilot, "enter", "down", "enter")
+        assert screen.text == "25"
+    assert stored(db) == before
+
+
+async def test_a_figure_that_breaks_with_the_past_is_asked_about_and_may_be_sure(opened: Opened, db: Path) -> None:
+    async with opened() as pilot:
+        screen = await type_line(pilot, "tr1 4811")
+        assert "4811 h on 2026-05-01 does not fit" in said(pilot)
+        await press(pilot, "enter")
+        assert line_with(pilot, "▌ it is right")
+        await press(pilot, "enter")
+        assert screen.text == "tr1 4811h sure"
+        assert "set aside as suspect" in said(pilot)
+
+
+async def test_a_new_meter_is_written_down_first_and_the_line_comes_back(opened: Opened, db: Path) -> None:
+    async with opened(size=(100, 30)) as pilot:
+        screen = await type_line(pilot, 'tr1 3 note "windy"')
+        await press(pilot, "down", "down", "enter")
+        form = form_in_front(pilot)
+        assert form.form.name == "swap"
+        assert {form.values["on"], form.values["value"], form.values["note"]} == {"2026-05-01", "3", ""}
+        await press(pilot, "escape")
+        assert screen.text == 'tr1 3 note "windy"'
+        await press(pilot, "enter")
+        form = form_in_front(pilot)
+        form.rows["old_last"].editor.value, form.rows["new_first"].editor.value = "4905", "0"
+        await press(pilot, "ctrl+s")
+        assert "shows 3 h on 2026-05-01" in said(pilot)
+        assert said(pilot).startswith('TR-1, 3 h on the dial, note "windy"; next ')
+
+
+async def test_work_that_needs_its_sheet_goes_on_in_the_form_with_what_was_understood(opened: Opened, db: Path) -> None:
+    type_in(db, "task", "add", "SB-1", "Lash check", "--every", "500h", "--needs-sheet", "lash")
+    async with opened(size=(100, 30)) as pilot:
+        await type_line(pilot, 'sb1 lash 25 fenn note "rain"')
+        assert "Lash check closes only with its lash sheet" in said(pilot)
+        await press(pilot, "down", "enter")
+        form = form_in_front(pilot)
+        assert (form.form.name, form.subject.tag) == ("log", "SB-1")
+        filled = {name: value for name, value in form.values.items() if value not in {"", "no"}}
+        assert filled == {"task": "Lash check", "on": "2026-05-01", "at": "25 h", "by": "Fenn", "note": "rain"}
+
+
+async def test_a_line_whose_form_was_stored_is_done(opened: Opened, db: Path) -> None:
+    type_in(db, "task", "add", "SB-1", "Lash check", "--every", "500h", "--needs-sheet", "lash")
+    async with opened(size=(100, 30)) as pilot:
+        screen = await type_line(pilot, "sb1 lash 25 fenn")
+        await press(pilot, "down", "enter")
+        form = form_in_front(pilot)
+        form.dismiss(["Entry 9 (scheduled) of SB-1."])
+        await settle_down(pilot)
+        assert screen.text == ""
+        assert "Entry 9 (scheduled) of SB-1." in said(pilot)
+
+
+async def test_esc_keeps_what_is_typed_for_the_next_time_and_ctrl_n_throws_it_away(opened: Opened, db: Path) -> None:
+    before = stored(db)
+    async with opened() as pilot:
+        await type_line(pilot, "ps1 oil 31")
+        await press(pilot, "escape", "2", "i")
+        assert "As you left it" in said(pilot)
+        assert line_with(pilot, "▌entry line  ps1 oil 31")
+        assert "PS-1, oil and filter, 31 h on the dial" in said(pilot)
+        await press(pilot, "ctrl+n", "escape", "i")
+        assert line_with(pilot, "▌entry line") == "▌entry line"
+    assert stored(db) == before
+
+
+async def test_what_was_stored_is_not_offered_again(opened: Opened) -> None:
+    async with opened() as pilot:
+        await type_line(pilot, "sb1 25")
+        await press(pilot, "enter", "escape", "i")
+        assert line_with(pilot, "▌entry line") == "▌entry line"
+
+
+async def test_a_draft_that_cannot_be_read_or_kept_is_said_and_stops_nothing(opened: Opened, ctx: Context) -> None:
+    async with opened() as pilot:
+        await type_line(pilot, "sb1")
+        await press(pilot, "escape")
+        kept = next(ctx.drafts_folder.iterdir())
+        kept.write_text("{", encoding="utf-8")
+        await press(pilot, "i")
+        assert "cannot be read any more" in said(pilot)
+        await press(pilot, "escape")
+        for path in ctx.drafts_folder.iterdir():
+            path.unlink()
+        ctx.drafts_folder.rmdir()
+        ctx.drafts_folder.write_text("no folder", encoding="utf-8")
+        await type_line(pilot, "sb1 25")
+        await press(pilot, "enter")
+        assert "Reading " in said(pilot)
+
+
+async def test_an_empty_database_says_how_to_begin(opened: Opened, new_database: Path, tmp_path: Path) -> None:
+    empty = Path(tmp_path / "empty.db")
+    empty.write_bytes(new_database.read_bytes())
+    context = Context(str(empty), date(2026, 5, 1), drafts=tmp_path / "drafts")
+    async with opened("i", context=context) as pilot:
+        assert "There is no engine yet" in said(pilot)
+        await type_line(pilot, "p3 oil")
+        assert "which engine or machine?" in said(pilot)
+
+
+async def test_a_missing_file_says_how_to_begin_and_keeps_what_is_typed(opened: Opened, tmp_path: Path) -> None:
+    context = Context(str(tmp_path / "none.db"), date(2026, 5, 1), drafts=tmp_path / "drafts")
+    async with opened("i", context=context) as pilot:
+        assert "There is no engine yet" in said(pilot)
+        await type_line(pilot, "p3 oil")
+        await press(pilot, "enter", "escape", "i")
+        assert line_with(pilot, "▌entry line  p3 oil")
+        assert not (tmp_path / "none.db").exists()
+
+
+async def test_a_file_that_went_bad_is_said_and_the_line_stays(opened: Opened, db: Path) -> None:
+    async with opened() as pilot:
+        screen = await type_line(pilot, "sb1 2")
+        db.write_bytes(b"not a database, but long enough to be one" * 100)
+        await type_line(pilot, "5")
+        assert screen.text == "sb1 25"
+        assert "not a" in said(pilot)
+
+
+async def test_hostile_names_are_shown_harmlessly_and_never_as_markup(opened: Opened, db: Path) -> None:
+    nasty = "Oil \x1b[2J[red]"
+    type_in(
+        db, "engine", "add", "[/b]", "--meter", "hours", "--in-service", "2024-01-10", "--start-at", "0", "--as-new"
+    )
+    type_in(db, "task", "add", "[/b]", nasty, "--every", "250h")
+    async with opened() as pilot:
+        await type_line(pilot, 'engine "[/b]" ')
+        assert line_with(pilot, "   Oil \\x1b[2J[red]")
+        await press(pilot, "down", "enter")
+        await type_line(pilot, " 20")
+        assert said(pilot).startswith("[/b], oil \\x1b[2J[red], 20 h on the dial")
+        await press(pilot, "enter")
+        assert "Done: Oil \\x1b[2J[red]." in said(pilot)
+
+
+async def test_a_window_too_small_to_show_all_of_it_stores_nothing(opened: Opened, db: Path) -> None:
+    before = stored(db)
+    async with opened(size=(30, 9)) as pilot:
+        await type_line(pilot, 'ps1 oil 310 fenn note "a long note that takes many lines of a narrow window"')
+        assert "…" in said(pilot)
+        await press(pilot, "enter")
+        assert stored(db) == before
+        await pilot.resize_terminal(80, 24)
+        await press(pilot, "enter")
+        assert stored(db) > before
+
+
+async def test_help_shows_the_keys_of_the_line_and_the_line_is_not_opened_twice(opened: Opened) -> None:
+    async with opened(size=(100, 40)) as pilot:
+        screen = await type_line(pilot, "sb1")
+        await press(pilot, "f1")
+        assert "go to the answers to what is asked" in "\n".join(seen(pilot))
+        await press(pilot, "i", "escape")
+        assert pilot.app.screen is screen
+
+
+async def test_without_colour_the_answer_marked_can_be_told(opened: Opened, monkeypatch: pytest.MonkeyPatch) -> None:
+    monkeypatch.setenv("NO_COLOR", "1")
+    async with opened() as pilot:
+        await type_line(pilot, "ps1")
+        await press(pilot, "down")
+        assert line_with(pilot, "▌ Oil and filter")
+        assert isinstance(pilot.app.screen, FramedScreen)
