@@ -7,6 +7,8 @@ from dataclasses import dataclass
 from decimal import Decimal
 from enum import StrEnum
 
+from fleetcare.domain.rule_book import End
+
 
 @dataclass(frozen=True, slots=True)
 class Point:
@@ -76,13 +78,6 @@ class Trend:
         return self.scatter * (1 + Decimal(1) / self.count + (x - self.mean_x) ** 2 / self.sxx).sqrt()
 
 
-class Bound(StrEnum):
-    """Which end of what is allowed a limit is; a value that touches it is still allowed."""
-
-    LEAST = "least"
-    MOST = "most"
-
-
 class Obstacle(StrEnum):
     """Why a figure is not told: a projection, then also a rate between two oil samples, then also a limit from samples."""
 
@@ -125,11 +120,12 @@ class Hindrance:
 class Projection:
     """The x between which a measure comes to its limit, with the stated coverage, and the likely one; plan by `early`.
 
+    `end` says on which side the limit lies; a value that touches it is not past it.
     Without them `hindrances` say why; with TOO_FAR alone `not_before` is the x up to which the limit is not expected.
     """
 
     limit: Decimal
-    bound: Bound
+    end: End
     coverage: Decimal
     trend: Trend | None
     early: Decimal | None = None

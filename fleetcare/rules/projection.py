@@ -9,7 +9,8 @@ from collections.abc import Iterator, Sequence
 from dataclasses import replace
 from decimal import Decimal
 
-from fleetcare.domain.trends import Bound, Hindrance, Obstacle, Point, Projection, Segment, Trend
+from fleetcare.domain.rule_book import End
+from fleetcare.domain.trends import Hindrance, Obstacle, Point, Projection, Segment, Trend
 from fleetcare.rules.student import t_quantile
 from fleetcare.rules.trends import degrees_of_freedom, fit_trend, watched
 
@@ -21,7 +22,7 @@ OLDEST_IN_INTERVALS = 2
 def project(
     segments: Sequence[Segment],
     limit: Decimal,
-    bound: Bound,
+    end: End,
     *,
     now: Decimal,
     interval: Decimal,
@@ -30,17 +31,18 @@ def project(
 ) -> Projection:
     """Tell the x at which a measure comes to a limit, from segments in order of time.
 
+    `end` says whether the limit is the low or the high end of what is allowed; a value that touches it is not past it.
     `now` is today's x, `interval` that between inspections, `coverage` the share of cases the range is to hold.
     `is_normalised` is False for oil whose values are not brought to hours on the oil and top-up. Raises Refused for a
     coverage that is not between 0 and 1, and for nothing else.
     """
     trend = fit_trend(segments)
     t = Decimal(t_quantile(float(coverage), trend.df if trend else 1))  # without a trend only the coverage is checked
-    told = Projection(limit, bound, coverage, trend)
+    told = Projection(limit, end, coverage, trend)
     hindrances = (
-        *_in_values(segments, limit, bound, is_normalised),
+        *_in_values(segments, limit, end, is_normalised),
         *_in_watching(segments, now, interval),
-        *_in_slope(segments, trend, bound, t),
+        *_in_slope(segments, trend, end, t),
     )
     if hindrances or trend is None:
         return replace(told, hindrances=hindrances)
@@ -66,12 +68,12 @@ def _last(segments: Sequence[Segment]) -> Point:
     return max([segment.points for segment in segments if segment.points][-1], key=lambda point: point.x)
 
 
-def _in_values(segments: Sequence[Segment], limit: Decimal, bound: Bound, is_normalised: bool) -> Iterator[Hindrance]:
+def _in_values(segments: Sequence[Segment], limit: Decimal, end: End, is_normalised: bool) -> Iterator[Hindrance]:
     """What is wrong with the values as they now stand; a limit passed before the last adjustment is none of it."""
     now_standing = segments[-1] if segments else Segment(())
     if now_standing.points:
         last = _last(segments).y
-        past = last < limit if bound is Bound.LEAST else last > limit
+        past = last < limit if end is End.LOW else last > limit
         if past:
             yield Hindrance(Obstacle.PAST_LIMIT, last, limit)
     if not is_normalised:
@@ -94,7 +96,7 @@ def _in_watching(segments: Sequence[Segment], now: Decimal, interval: Decimal) -
             yield Hindrance(Obstacle.OLD_VALUE, age, OLDEST_IN_INTERVALS * interval)
 
 
-def _in_slope(segments: Sequence[Segment], trend: Trend | None, bound: Bound, t: Decimal) -> Iterator[Hindrance]:
+def _in_slope(segments: Sequence[Segment], trend: Trend | None, end: End, t: Decimal) -> Iterator[Hindrance]:
     """What is wrong with the slope, where there are values enough to speak of one."""
     if degrees_of_freedom(segments) < FEWEST_DF:
         return
@@ -104,5 +106,5 @@ def _in_slope(segments: Sequence[Segment], trend: Trend | None, bound: Bound, t:
     gq = (t * trend.scatter / trend.slope) ** 2 / trend.sxx
     if gq >= 1:
         yield Hindrance(Obstacle.NO_SLOPE, gq, Decimal(1))
-    elif (trend.slope > 0) is (bound is Bound.LEAST):
+    elif (trend.slope > 0) is (end is End.LOW):
         yield Hindrance(Obstacle.AWAY, trend.slope, Decimal(0))

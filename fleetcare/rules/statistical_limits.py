@@ -109,8 +109,13 @@ def percentile_limit(
     return StatisticalLimit(value, Method.PERCENTILE, positions, percent, count)
 
 
+class _Spreading(NamedTuple):
+    formula: str
+    centre_and_spread: Callable[[Sequence[Decimal]], tuple[Decimal, Decimal]]
+
+
 def _limit(
-    values: Sequence[Decimal], method: Method, spreading: "_Spreading", multiple: Decimal, fewest: int, of_logs: bool
+    values: Sequence[Decimal], method: Method, spreading: _Spreading, multiple: Decimal, fewest: int, of_logs: bool
 ) -> StatisticalLimit | Hindrance:
     needed = max(fewest, 2)
     if len(values) < needed:
@@ -125,11 +130,6 @@ def _limit(
     limit = centre + multiple * spread
     value = limit.exp() if of_logs else limit
     return StatisticalLimit(value, method, spreading.formula, multiple, len(values), of_logs, +centre, +spread)
-
-
-class _Spreading(NamedTuple):
-    formula: str
-    centre_and_spread: Callable[[Sequence[Decimal]], tuple[Decimal, Decimal]]
 
 
 def _mean_and_deviation(values: Sequence[Decimal]) -> tuple[Decimal, Decimal]:

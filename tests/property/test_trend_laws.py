@@ -13,8 +13,8 @@ import pytest
 from hypothesis import assume, given
 from hypothesis import strategies as st
 
-from fleetcare.domain.rule_book import Method
-from fleetcare.domain.trends import Bound, Point, Projection, Segment
+from fleetcare.domain.rule_book import End, Method
+from fleetcare.domain.trends import Point, Projection, Segment
 from fleetcare.rules.projection import project
 from fleetcare.rules.statistical_limits import Positions, StatisticalLimit, percentile_limit, spread_limit
 from fleetcare.rules.trends import fit_trend
@@ -53,7 +53,7 @@ def anything(draw: st.DrawFn) -> list[Segment]:
 
 def projected(segments: list[Segment], limit: Decimal = LIMIT, coverage: str = "0.80") -> Projection:
     now = max(point.x for segment in segments for point in segment.points)
-    return project(segments, limit, Bound.LEAST, now=now, interval=INTERVAL, coverage=Decimal(coverage))
+    return project(segments, limit, End.LOW, now=now, interval=INTERVAL, coverage=Decimal(coverage))
 
 
 def ends(projection: Projection) -> tuple[Decimal, Decimal, Decimal]:
@@ -143,7 +143,7 @@ def test_the_limit_lies_at_the_ends_of_the_range_a_quantile_of_errors_from_the_l
 @given(
     anything(),
     st.integers(-4, 4).map(Decimal),
-    st.sampled_from(Bound),
+    st.sampled_from(End),
     st.integers(-9, 9).map(Decimal),
     st.integers(0, 4).map(Decimal),
     st.sampled_from(["0.01", "0.80", "0.999999"]).map(Decimal),
@@ -152,13 +152,13 @@ def test_the_limit_lies_at_the_ends_of_the_range_a_quantile_of_errors_from_the_l
 def test_whatever_was_measured_there_is_a_range_or_a_reason_against_it(
     segments: list[Segment],
     limit: Decimal,
-    bound: Bound,
+    end: End,
     now: Decimal,
     interval: Decimal,
     coverage: Decimal,
     is_normalised: bool,
 ) -> None:
-    told = project(segments, limit, bound, now=now, interval=interval, coverage=coverage, is_normalised=is_normalised)
+    told = project(segments, limit, end, now=now, interval=interval, coverage=coverage, is_normalised=is_normalised)
     assert (told.likely is None) == bool(told.hindrances)
     assert (told.early is None) == (told.late is None) == (told.likely is None)
 

@@ -16,7 +16,8 @@ from scipy import optimize, stats
 # statsmodels ships no types, and nobody else does.
 from statsmodels.regression.linear_model import OLS  # type: ignore[import-untyped]
 
-from fleetcare.domain.trends import Bound, Obstacle, Point, Projection, Segment, Trend
+from fleetcare.domain.rule_book import End
+from fleetcare.domain.trends import Obstacle, Point, Projection, Segment, Trend
 from fleetcare.rules.projection import project
 from fleetcare.rules.student import t_quantile
 from fleetcare.rules.trends import fit_trend
@@ -37,9 +38,7 @@ IRON = [a_segment("50 100 150 200", "12 19 30 37")]
 
 
 def lash_projected(coverage: str = "0.80", limit: str = "0.25") -> Projection:
-    return project(
-        LASH, Decimal(limit), Bound.LEAST, now=Decimal(4000), interval=Decimal(500), coverage=Decimal(coverage)
-    )
+    return project(LASH, Decimal(limit), End.LOW, now=Decimal(4000), interval=Decimal(500), coverage=Decimal(coverage))
 
 
 def fitted(segments: list[Segment]) -> Trend:
@@ -80,14 +79,14 @@ def test_a_valve_comes_to_its_limit_in_the_range_of_the_other_library(coverage: 
 def test_one_line_through_everything_would_hide_the_wear() -> None:
     everything = Segment(tuple(point for segment in LASH for point in segment.points))
     assert f"{fitted([everything]).slope:.3e}" == "-5.097e-6"
-    projection = project([everything], Decimal("0.25"), Bound.LEAST, now=Decimal(4000), interval=Decimal(500))
+    projection = project([everything], Decimal("0.25"), End.LOW, now=Decimal(4000), interval=Decimal(500))
     assert [hindrance.obstacle for hindrance in projection.hindrances] == [Obstacle.NO_SLOPE]
 
 
 def test_a_compression_22734_h_away_is_only_said_not_to_be_low_before_16000_h() -> None:
     trend = fitted(COMPRESSION)
     assert (trend.slope, f"{trend.scatter:.6f}", trend.df) == (Decimal("-0.000395"), "0.181659", 3)
-    projection = project(COMPRESSION, Decimal(22), Bound.LEAST, now=Decimal(8000), interval=Decimal(2000))
+    projection = project(COMPRESSION, Decimal(22), End.LOW, now=Decimal(8000), interval=Decimal(2000))
     (hindrance,) = projection.hindrances
     assert hindrance.obstacle is Obstacle.TOO_FAR
     assert hindrance.figure
@@ -98,7 +97,7 @@ def test_a_compression_22734_h_away_is_only_said_not_to_be_low_before_16000_h() 
 def test_a_lash_that_goes_up_and_down_has_no_slope() -> None:
     """gq = 309."""
     lash = [a_segment("0 500 1000 1500", ".40 .39 .41 .395")]
-    (hindrance,) = project(lash, Decimal("0.25"), Bound.LEAST, now=Decimal(1500), interval=Decimal(500)).hindrances
+    (hindrance,) = project(lash, Decimal("0.25"), End.LOW, now=Decimal(1500), interval=Decimal(500)).hindrances
     assert hindrance.obstacle is Obstacle.NO_SLOPE
     assert hindrance.figure
     assert round(hindrance.figure) == 309
@@ -109,7 +108,7 @@ def test_iron_of_one_fill_is_plain_least_squares() -> None:
     trend = fitted(IRON)
     assert (trend.slope, trend.value_at(Decimal(0))) == (Decimal("0.172"), Decimal("3.000"))
     assert (f"{trend.scatter:.3f}", f"{trend.slope_error:.5f}") == ("1.265", "0.01131")
-    projection = project(IRON, Decimal(100), Bound.MOST, now=Decimal(200), interval=Decimal(50))
+    projection = project(IRON, Decimal(100), End.HIGH, now=Decimal(200), interval=Decimal(50))
     (hindrance,) = projection.hindrances
     assert hindrance.obstacle is Obstacle.TOO_FAR
     assert hindrance.figure

@@ -4,7 +4,8 @@ from decimal import Decimal
 
 import pytest
 
-from fleetcare.domain.trends import Bound, Hindrance, Obstacle, Point, Projection, Segment
+from fleetcare.domain.rule_book import End
+from fleetcare.domain.trends import Hindrance, Obstacle, Point, Projection, Segment
 from fleetcare.errors import Refused
 from fleetcare.rules.projection import project
 
@@ -20,7 +21,7 @@ def a_segment(*points: str, opened: str | None = None) -> Segment:
 def asked(
     *segments: Segment,
     limit: str = "0.25",
-    bound: Bound = Bound.LEAST,
+    end: End = End.LOW,
     now: str = "2000",
     interval: str = "500",
     coverage: str = "0.80",
@@ -29,7 +30,7 @@ def asked(
     return project(
         segments,
         Decimal(limit),
-        bound,
+        end,
         now=Decimal(now),
         interval=Decimal(interval),
         coverage=Decimal(coverage),
@@ -54,7 +55,7 @@ def test_a_steady_wear_comes_to_its_limit_where_its_line_does() -> None:
 
 def test_a_rising_measure_comes_to_the_most_allowed() -> None:
     rising = a_segment("0 10", "50 20", "100 30", "150 40")
-    projection = asked(rising, limit="60", bound=Bound.MOST, now="150", interval="50")
+    projection = asked(rising, limit="60", end=End.HIGH, now="150", interval="50")
     assert {projection.early, projection.likely, projection.late} == {Decimal(250)}
 
 
@@ -101,9 +102,9 @@ def test_a_last_value_two_inspection_intervals_old_is_not_too_old_yet() -> None:
     assert asked(a_segment(*WORN), now="3001").hindrances == (old,)
 
 
-@pytest.mark.parametrize(("bound", "limit"), [(Bound.LEAST, "0.3001"), (Bound.MOST, "0.2999")])
-def test_a_last_value_past_its_limit_is_no_matter_of_a_projection(bound: Bound, limit: str) -> None:
-    projection = asked(a_segment(*WORN), bound=bound, limit=limit)
+@pytest.mark.parametrize(("end", "limit"), [(End.LOW, "0.3001"), (End.HIGH, "0.2999")])
+def test_a_last_value_past_its_limit_is_no_matter_of_a_projection(end: End, limit: str) -> None:
+    projection = asked(a_segment(*WORN), end=end, limit=limit)
     assert projection.hindrances[0] == Hindrance(Obstacle.PAST_LIMIT, Decimal("0.300"), Decimal(limit))
     assert projection.likely is None
 
@@ -118,11 +119,11 @@ def test_a_limit_passed_before_the_last_adjustment_is_passed_no_more() -> None:
 
 
 def test_a_slope_away_from_the_limit_never_comes_to_it() -> None:
-    projection = asked(a_segment(*WORN), limit="0.45", bound=Bound.MOST)
+    projection = asked(a_segment(*WORN), limit="0.45", end=End.HIGH)
     assert projection.trend
     assert projection.hindrances == (Hindrance(Obstacle.AWAY, projection.trend.slope, Decimal(0)),)
     rising = a_segment("0 10", "50 21", "100 30", "150 40")
-    assert why_not(asked(rising, limit="5", bound=Bound.LEAST, now="150", interval="50")) == [Obstacle.AWAY]
+    assert why_not(asked(rising, limit="5", end=End.LOW, now="150", interval="50")) == [Obstacle.AWAY]
 
 
 def test_a_level_value_has_no_slope() -> None:
