@@ -95,14 +95,14 @@ def read_back(connection: "Connection", text: str, on: date, vocabulary: Vocabul
     )
 
 
-def store_line(session: "Session", seen: ReadBack, on: date) -> "list[Entered]":
-    """Store a line as it was read back, and give what came of each part of it.
+def store_line(session: "Session", seen: ReadBack, on: date) -> "Entered":
+    """Store a line as it was read back, and give what came of it.
 
     Refuses one with an open question, and one that says or does something else by now than when it was read back.
     """
     from fleetcare.drafts.reading_in import read_draft
     from fleetcare.drafts.work import LogDraft, ReadingDraft
-    from fleetcare.operations.entering import enter_reading, enter_work
+    from fleetcare.operations.entering import Entered, enter_reading, enter_work
 
     now = read_back(session.connection(), seen.line.text, on)
     if now != seen:
@@ -112,4 +112,8 @@ def store_line(session: "Session", seen: ReadBack, on: date) -> "list[Entered]":
     entered = [enter_reading(session, read_draft(ReadingDraft, fields), on) for fields in now.line.readings()]
     if now.line.is_work:
         entered.append(enter_work(session, read_draft(LogDraft, now.line.work()), on))
-    return entered
+    return Entered(
+        [said for one in entered for said in one.said],
+        [moved for one in entered for moved in one.moved],
+        [note for one in entered for note in one.notes],
+    )

@@ -108,7 +108,7 @@ def back(ctx: Context) -> Reader:
 def store(ctx: Context, seen: ReadBack) -> list[str]:
     """Store a line as it was read back, and give all that was said of what came of it."""
     with ctx.write() as session:
-        return [said for entered in store_line(session, seen, TODAY) for said in entered.sentences()]
+        return store_line(session, seen, TODAY).sentences()
 
 
 def rows(ctx: Context, query: str) -> list[tuple[object, ...]]:

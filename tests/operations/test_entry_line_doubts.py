@@ -135,7 +135,7 @@ def test_a_line_that_says_or_does_something_else_by_now_is_not_stored(
 def test_a_line_read_back_yesterday_is_not_stored_today(ctx: Context) -> None:
     with ctx.read() as connection:
         seen = read_back(connection, "p3 oil 1210", TODAY.replace(day=19))
-    with pytest.raises(Refused, match="by now: P-03, oil and filter, 1210 h"), ctx.write() as session:
+    with pytest.raises(Refused, match="the line would do something else by now"), ctx.write() as session:
         store_line(session, seen, TODAY)
 
 

@@ -10,6 +10,7 @@ from fleetcare.errors import FleetError
 from fleetcare.tui.forms.base import Subject
 from fleetcare.tui.loading import LoadingScreen
 from fleetcare.tui.one_line import OneLineScreen
+from fleetcare.tui.storing import StoringScreen
 from fleetcare.tui.widgets.entry_said import HOW, NOBODY, lines_of, stored_lines
 from fleetcare.tui.widgets.form_fields import TextField
 from fleetcare.tui.widgets.said_lines import SaidLine
@@ -18,9 +19,11 @@ if TYPE_CHECKING:
     from datetime import date
 
     from sqlalchemy import Connection
+    from sqlalchemy.orm import Session
 
     from fleetcare.drafts.entry_questions import Choice, Question
     from fleetcare.drafts.entry_vocabulary import Vocabulary
+    from fleetcare.operations.entering import Entered
     from fleetcare.operations.entry_line import ReadBack
 
 _FORMS = {"sheet": "log", "meter": "swap"}
@@ -31,7 +34,7 @@ _INSTEAD = frozenset({"sheet"})
 _NO_ROOM = "There is no room to show all that this would do; make the window larger, then Enter stores it."
 
 
-class EntryScreen(OneLineScreen):
+class EntryScreen(StoringScreen, OneLineScreen):
     """A line to type in, over the screen it was opened from."""
 
     place = "entry"
@@ -51,27 +54,14 @@ class EntryScreen(OneLineScreen):
             super().__init__()
             self.error = error
 
-    class Stored(Message):
-        """A line was stored; what came of it, in sentences."""
-
-        def __init__(self, text: str, sentences: Sequence[str]) -> None:
-            super().__init__()
-            self.text, self.sentences = text, sentences
-
-    class NotStored(Message):
-        """Nothing was stored, and why."""
-
-        def __init__(self, error: FleetError) -> None:
-            super().__init__()
-            self.error = error
-
     def __init__(self) -> None:
         super().__init__()
         self.vocabulary: Vocabulary | None = None
         self.back: ReadBack | None = None
         """What stands on the screen; it is stored or answered only if it is of the very text typed."""
         self.marked = -1  # which answer, none
-        self._is_reading = self._is_storing = self._has_nobody = False
+        self._is_reading = self._has_nobody = False
+        self._storing: ReadBack | None = None
         self._stored: Sequence[SaidLine] = ()
 
     def read(self, connection: "Connection", on: "date", *, is_future: bool) -> "Vocabulary":
@@ -110,28 +100,27 @@ class EntryScreen(OneLineScreen):
         self._is_reading = False
         self.fail(message.error)
 
-    def on_entry_screen_stored(self, message: Stored) -> None:
+    def on_storing_screen_stored(self, message: StoringScreen.Stored) -> None:
         """Say what came of it. What was typed on behind it meanwhile is the next line."""
-        self._is_storing = False
-        self._finish(message.text, message.sentences)
+        storing, self._storing = self._storing, None
+        self._finish(storing.line.text if storing is not None else "", message.sentences)
 
-    def on_entry_screen_not_stored(self, message: NotStored) -> None:
+    def on_storing_screen_not_stored(self, message: StoringScreen.NotStored) -> None:
         """Say why, and read the line back again: something changed."""
-        self._is_storing, self.back = False, None
+        self._storing = self.back = None
         self.notice.say(*message.error.lines(), is_wrong=True)
         self.typed()
 
     def action_store(self) -> None:
         """Store what is read back, or take the answer marked. What is not read back yet is waited for."""
         back = self.back
-        if self.vocabulary is None or back is None or back.line.text != self.text or self._is_storing:
+        if self.vocabulary is None or back is None or back.line.text != self.text or self._storing:
             return
         if back.can_be_stored and not self.said.are_whole:
             self.notice.say(_NO_ROOM, is_wrong=True)
         elif back.can_be_stored:
-            self._is_storing = True
-            storing = partial(self._store, back, self.vocabulary.on)
-            self.run_worker(storing, thread=True, group="store", exit_on_error=False)
+            self._storing = back
+            self.store(partial(self._enter_line, back, self.vocabulary.on))
         elif self.marked < 0:
             self.action_answer(1)
         else:
@@ -145,7 +134,7 @@ class EntryScreen(OneLineScreen):
 
     def action_back(self) -> None:
         """Close the line; what is typed is kept. What is being stored just now is waited for."""
-        if not self._is_storing:
+        if self._storing is None:
             self.dismiss(None)
 
     def typed(self) -> None:
@@ -154,7 +143,7 @@ class EntryScreen(OneLineScreen):
         if not text.strip():
             self.back = None
             self.said.tell(self._stored or (NOBODY if self._has_nobody else HOW))
-        elif self.vocabulary is not None and not self._is_reading and not self._is_storing:
+        elif self.vocabulary is not None and not self._is_reading and self._storing is None:
             self._is_reading = True
             reading = partial(self._understand, text, self.vocabulary)
             self.run_worker(reading, thread=True, group="back", exit_on_error=False)
@@ -171,18 +160,11 @@ class EntryScreen(OneLineScreen):
         else:
             self.post_message(self.Understood(back, vocabulary))
 
-    def _store(self, back: "ReadBack", on: "date") -> None:
+    def _enter_line(self, back: "ReadBack", on: "date", session: "Session") -> "Entered":
         """Store a line as it was read back. Runs in a thread: touches no widget."""
         from fleetcare.operations.entry_line import store_line
 
-        try:
-            with self.context.write() as session:
-                entered = store_line(session, back, on)
-        except FleetError as error:
-            self.post_message(self.NotStored(error))
-        else:
-            sentences = [sentence for one in entered for sentence in one.sentences()]
-            self.post_message(self.Stored(back.line.text, sentences))
+        return store_line(session, back, on)
 
     def _show(self, back: "ReadBack", marked: int) -> None:
         """Show what was read back; only once it stands on the screen can it be stored."""
