@@ -110,7 +110,8 @@ def test_a_last_value_past_its_limit_is_no_matter_of_a_projection(end: End, limi
 
 
 def test_a_last_value_that_touches_its_limit_is_not_past_it() -> None:
-    assert Obstacle.PAST_LIMIT not in why_not(asked(a_segment(*WORN), limit="0.300"))
+    for end in End:
+        assert Obstacle.PAST_LIMIT not in why_not(asked(a_segment(*WORN), limit="0.300", end=end))
 
 
 def test_a_limit_passed_before_the_last_adjustment_is_passed_no_more() -> None:
@@ -132,10 +133,18 @@ def test_a_level_value_has_no_slope() -> None:
 
 
 def test_a_slope_lost_in_the_scatter_is_no_slope() -> None:
-    (hindrance,) = asked(a_segment("0 0.40", "500 0.38", "1000 0.41", "1500 0.38", "2000 0.39")).hindrances
+    """By hand: slope -25 / 2,500,000, s^2 0.00047 / 3, t 1.6377: gq = 1.681."""
+    lost = a_segment("0 0.40", "500 0.38", "1000 0.40", "1500 0.37", "2000 0.38")
+    (hindrance,) = asked(lost).hindrances
     assert hindrance.obstacle is Obstacle.NO_SLOPE
     assert hindrance.figure
-    assert hindrance.figure >= 1
+    assert round(hindrance.figure, 3) == Decimal("1.681")
+
+
+def test_a_slope_plain_at_one_coverage_is_lost_at_a_higher_one() -> None:
+    falling = a_segment("0 0.40", "500 0.38", "1000 0.38", "1500 0.36", "2000 0.36")
+    assert Obstacle.NO_SLOPE not in why_not(asked(falling))
+    assert why_not(asked(falling, coverage="0.9999")) == [Obstacle.NO_SLOPE]
 
 
 def test_values_all_taken_at_once_have_no_slope() -> None:

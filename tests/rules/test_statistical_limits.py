@@ -100,13 +100,14 @@ def test_a_sample_of_0_has_no_log() -> None:
 
 @pytest.mark.parametrize("method", [Method.MEAN, Method.ROBUST])
 @pytest.mark.parametrize("of_logs", [False, True])
-def test_samples_all_alike_would_flag_the_next_one_a_hair_above(method: Method, of_logs: bool) -> None:
+@pytest.mark.parametrize("ppm", ["3.7", "200"])  # twice the log of 200 has a digit more than is usual
+def test_samples_all_alike_would_flag_the_next_one_a_hair_above(method: Method, of_logs: bool, ppm: str) -> None:
     assert method is not Method.PERCENTILE
     for count in (2, 3, 4, 7):
-        limit = spread_limit(samples("3.7") * count, method, Decimal(3), fewest=2, of_logs=of_logs)
+        limit = spread_limit(samples(ppm) * count, method, Decimal(3), fewest=2, of_logs=of_logs)
         assert isinstance(limit, Hindrance)
         assert limit.obstacle is Obstacle.NO_SPREAD
-        assert limit.figure == pytest.approx(Decimal("3.7"))
+        assert limit.figure == pytest.approx(Decimal(ppm))
 
 
 def test_more_than_half_alike_have_no_median_distance() -> None:

@@ -64,6 +64,13 @@ def test_a_straight_wear_has_its_slope_no_scatter_and_a_line_through_every_value
     assert trend.slope_error == trend.error_at(Decimal(9000)) == 0
 
 
+def test_a_straight_wear_of_a_slope_that_never_ends_has_next_to_no_scatter() -> None:
+    trend = fit_trend([a_segment(("0", "0"), ("3", "2"), ("6", "4"))])
+    assert trend
+    assert trend.slope == pytest.approx(Decimal(2) / 3)
+    assert trend.scatter < Decimal("1e-40")
+
+
 def test_a_segment_of_one_value_sets_the_level_and_leaves_the_slope() -> None:
     worn = a_segment(("0", "0.40"), ("500", "0.38"), ("1000", "0.35"))
     alone, with_reset = fit_trend([worn]), fit_trend([worn, a_segment(("1000", "0.42"), opened="1000")])
