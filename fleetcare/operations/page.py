@@ -5,6 +5,8 @@ from datetime import date
 from typing import TYPE_CHECKING
 
 from fleetcare.operations.due_words import group_of
+from fleetcare.operations.find import find_item
+from fleetcare.operations.lash_past import Trends, lash_trends
 from fleetcare.operations.life_plot import LifeCurve, life_curves
 from fleetcare.operations.review import ReviewLine
 from fleetcare.operations.show import ItemPage, item_page
@@ -16,12 +18,13 @@ if TYPE_CHECKING:
 
 @dataclass(frozen=True, slots=True)
 class FullPage:
-    """A page; `cautions` are those of its tasks, by task."""
+    """A page; `cautions` are those of its tasks, by task; `lash` is the past of each lash point."""
 
     item: ItemPage
     lines: tuple[ReviewLine, ...]
     curves: tuple[LifeCurve, ...]
     cautions: tuple[Label, ...]
+    lash: Trends
 
 
 def full_page(connection: "Connection", tag: str, on: date, *, is_future: bool = False) -> FullPage:
@@ -36,4 +39,5 @@ def full_page(connection: "Connection", tag: str, on: date, *, is_future: bool =
         ),
         curves=tuple(life_curves(found.facts, found.lines, is_future=is_future)),
         cautions=tuple((line.task.name, line.version.caution) for line in found.lines if line.version.caution),
+        lash=lash_trends(connection, find_item(connection, tag, on=on, even_withdrawn=True), found.facts),
     )

@@ -1,4 +1,4 @@
-"""The page of an engine or machine: plate, meters, lines and history, to read."""
+"""The page of an engine or machine: plate, meters, lines, history and trends, to read."""
 
 from collections.abc import Iterable
 from typing import TYPE_CHECKING
@@ -16,8 +16,10 @@ from fleetcare.tui.widgets.columns import Cell, Column, Section
 from fleetcare.tui.widgets.detail import Detail
 from fleetcare.tui.widgets.long_list import LongList
 from fleetcare.tui.widgets.plot import Line, Plot, PlotView
+from fleetcare.tui.widgets.plot import say_day as say_along
 from fleetcare.tui.widgets.sheet import Block, Sheet
 from fleetcare.tui.widgets.text import columns_of, fit
+from fleetcare.tui.widgets.trend import TrendPart
 from fleetcare.tui.writing import WritingScreen
 
 if TYPE_CHECKING:
@@ -39,7 +41,8 @@ _STANDING = {
 }
 
 _MOST_METERS = 4  # lines; with more of them one scrolls
-PARTS = ("plate", "meters", "lines", "history")
+PARTS = ("plate", "meters", "lines", "history", "lash")
+_TRENDS = ("lash",)
 
 LINES = tuple(column for column in COLUMNS if column.title not in {"ENGINE", "SITE"})
 READINGS: tuple[Column["ReadingLine"], ...] = (
@@ -108,6 +111,7 @@ class ItemScreen(WritingScreen):
             Vertical(Sheet(), PlotView(), LongList(READINGS, lambda line: line.number), id="meters"),
             Vertical(LongList(LINES, lambda line: line.key), Detail(), id="lines"),
             Vertical(LongList(HISTORY, lambda entry: entry.number), Detail(), id="history"),
+            TrendPart("POINT", "lash"),
         )
         for part in with_parts:
             part.display = part.id == self.part
@@ -134,6 +138,7 @@ class ItemScreen(WritingScreen):
         self.query_one("#meters LongList", LongList).show([Section("", page.readings)], "No readings yet.")
         self.query_one("#lines LongList", LongList).show([Section("", found.lines)], "No tasks yet.")
         self.query_one("#history LongList", LongList).show([Section("", page.history)], "Nothing was logged yet.")
+        self.query_one("#lash", TrendPart).show(found.lash)
         self._plot()
         self._title()
 
@@ -153,10 +158,12 @@ class ItemScreen(WritingScreen):
         self.action_working()
 
     def action_part(self, part: str) -> None:
-        """Bring a part to the front; the meters again show the next meter."""
+        """Bring a part to the front; the meters again show the next meter, a trend the next of its subjects."""
         if part == "meters" == self.part:
             self.meter += 1
             self._plot()
+        if part in _TRENDS and part == self.part:
+            self.query_one(f"#{part}", TrendPart).step()
         self.part = part
         for one in PARTS:
             self.query_one(f"#{one}").display = one == part
@@ -204,22 +211,23 @@ class ItemScreen(WritingScreen):
     def _plot(self) -> None:
         curves = self.page.curves if self.page is not None else ()
         plot = plot_of(curves[self.meter % len(curves)], self.day) if curves else None
-        self.query_one(PlotView).show(plot)
+        self.query_one("#meters PlotView", PlotView).show(plot)
 
 
 def plot_of(curve: "LifeCurve", today: "date") -> Plot:
     """Draw a life total as read in full, what is likely dotted, the range thinly, and what falls due across."""
-    lines = [Line(curve.read, 1, "strong")]
+    read = [(day.toordinal(), total) for day, total in curve.read]
+    lines = [Line(read, 1, "strong")]
     if curve.ahead:
-        start = curve.read[-1]
+        start = read[-1]
         late = [(day, total) for total, _, _, day in curve.ahead if day is not None]
         horizon = max(likely for _, _, likely, _ in curve.ahead)
         lines += [
-            Line([start, *((likely, total) for total, _, likely, _ in curve.ahead)], 2),
-            Line([start, *((early, total) for total, early, _, _ in curve.ahead)], 5, "quiet"),
-            Line([start, *((day, total) for day, total in late if day <= horizon)], 5, "quiet"),
+            Line([start, *((likely.toordinal(), total) for total, _, likely, _ in curve.ahead)], 2),
+            Line([start, *((early.toordinal(), total) for total, early, _, _ in curve.ahead)], 5, "quiet"),
+            Line([start, *((day.toordinal(), total) for day, total in late if day <= horizon)], 5, "quiet"),
         ]
     said = "likely dotted, its range thin" if curve.ahead else f"no forecast: {curve.why_not}"
     levels = [(total, task) for total, task in curve.marks]
     legend = f"{curve.kind} of life: read solid, {said}"
-    return Plot(lines, levels, today, legend, curve.unit)
+    return Plot(lines, levels, legend, curve.unit, say_along, today.toordinal())

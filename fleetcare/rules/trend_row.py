@@ -1,0 +1,50 @@
+"""A measure over time as a flat row: what list, plot and words of a trend show, so that they cannot disagree."""
+
+from dataclasses import dataclass
+
+
+@dataclass(frozen=True, slots=True)
+class Dot:
+    """A value as it is drawn: how far along it lies, how high, and whether it was left by an adjustment."""
+
+    x: float
+    y: float
+    is_left: bool = False
+
+
+@dataclass(frozen=True, slots=True)
+class TrendRow:
+    """One subject of a trend, such as a lash point, in words and figures.
+
+    `verdict` is that of the `last` value, empty where there is none; `said` is all that is worth saying of it.
+    `segments` are the values to draw, cut at every adjustment; `limits` those in force, each with its word, and
+    `setting` what it is set to, with its word. `left_out` is how many values are not drawn.
+    """
+
+    name: str
+    last: str
+    stands: str
+    verdict: str
+    on: str
+    change: str
+    said: str
+    segments: tuple[tuple[Dot, ...], ...] = ()
+    limits: tuple[tuple[float, str], ...] = ()
+    setting: tuple[float, str] | None = None
+    left_out: int = 0
+
+
+@dataclass(frozen=True, slots=True)
+class Trends:
+    """All subjects of one kind of sheet on one engine. What is drawn is in `unit`, with so many `places`.
+
+    Along lie hours of life where `counts_hours`, else days (`date.toordinal`), up to `until`. Without rows `why_none`
+    says why, and what to do.
+    """
+
+    rows: tuple[TrendRow, ...] = ()
+    unit: str = ""
+    places: int = 0
+    counts_hours: bool = False
+    until: float = 0
+    why_none: str = ""
