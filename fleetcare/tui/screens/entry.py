@@ -34,7 +34,7 @@ _INSTEAD = frozenset({"sheet"})
 _NO_ROOM = "There is no room to show all that this would do; make the window larger, then Enter stores it."
 
 
-class EntryScreen(StoringScreen, OneLineScreen):
+class EntryScreen(OneLineScreen, StoringScreen):  # the style sheet knows a screen by its first base alone
     """A line to type in, over the screen it was opened from."""
 
     place = "entry"
