@@ -1,4 +1,4 @@
-"""A program killed in the middle of a form, in a real terminal: what was on the screen a second before is there again."""
+"""A program killed while somebody types, in a real terminal: what was on the screen a second before is there again."""
 
 import os
 import signal
@@ -25,5 +25,25 @@ async def test_what_was_typed_a_second_before_a_kill_is_there_again(opened: Open
         assert line_with(pilot, "Log work on TR-1")
         assert line_with(pilot, " Meter", "4911")
         assert line_with(pilot, "By ", "Qui")
+        assert line_with(pilot, "As you left it")
+    assert stored(db) == before
+
+
+async def test_an_entry_line_half_typed_before_a_kill_is_there_again_and_was_not_stored(
+    opened: Opened, db: Path
+) -> None:
+    before = stored(db)
+    command = (sys.executable, "-m", "fleetcare", "--db", str(db), "--as-of", TODAY)
+    with in_terminal(*command) as (process, terminal, _):
+        read_until(terminal, "OVERDUE")
+        os.write(terminal, b"i")
+        read_until(terminal, "in any order")
+        os.write(terminal, b"tr1 air 4911 qui")
+        read_until(terminal, "Enter stores it")
+        read_away(terminal, 1)
+        os.kill(process, signal.SIGKILL)
+    async with opened("i") as pilot:
+        assert line_with(pilot, "▌entry line  tr1 air 4911 qui")
+        assert line_with(pilot, "TR-1, air filter, 4911 h on the dial, Quill")
         assert line_with(pilot, "As you left it")
     assert stored(db) == before

@@ -23,6 +23,12 @@ class Picture(NamedTuple):
     size: tuple[int, int]
     keys: tuple[str, ...] = ()
     terminal: Mapping[str, str] = {}
+    is_bench: bool = False
+
+
+def _typed(text: str) -> tuple[str, ...]:
+    """Give the keys that type a text."""
+    return tuple("space" if letter == " " else letter for letter in text)
 
 
 SCREENS = {
@@ -46,6 +52,8 @@ SCREENS = {
     "log": Picture(SMALL, ("down", "w", *"30", "ctrl+s")),
     "log-no-colour": Picture(SMALL, ("down", "w", *"30x", "ctrl+s"), {"NO_COLOR": "1"}),
     "log-large": Picture(LARGE, ("down", "w", *"305", "enter", *"f")),
+    "entry": Picture(SMALL, ("i", *_typed("ps1 oil 310 fenn"))),
+    "entry-asked": Picture(SMALL, ("down", "i", *_typed("ps1 oil 29 fenn"), "down"), {"NO_COLOR": "1"}),
     "return": Picture(SMALL, ("x", "r")),
     "more": Picture(SMALL, ("x",)),
     "round": Picture(SMALL, ("2", "o", *"Fenn", "enter", *"25", "enter", *"4811", "ctrl+s")),
