@@ -69,3 +69,6 @@ class Pools:
 
     own: Mapping[str, tuple[Decimal, ...]] = field(default_factory=dict)
     family: Mapping[str, tuple[Decimal, ...]] = field(default_factory=dict)
+
+
+NO_POOLS = Pools()

@@ -152,11 +152,11 @@ QUANTITIES: Mapping[str, Quantity] = {
 
 
 def dimension(unit: str) -> str:
-    """Give what a unit measures; a figure without a unit has a dimension of its own."""
-    return UNITS[unit].dimension if unit else ""
+    """Give what a unit measures; no unit, or one that is not known here, converts to itself alone."""
+    return UNITS[unit].dimension if unit in UNITS else unit
 
 
-def exactly(value: Decimal, unit: str, into: str) -> Fraction:
+def exactly(value: Decimal | Fraction, unit: str, into: str) -> Fraction:
     """Convert a figure exactly. Both units are of one dimension; the same unit converts to itself whatever it is."""
     if unit == into:
         return Fraction(value)

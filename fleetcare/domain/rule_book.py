@@ -107,9 +107,10 @@ class Method(StrEnum):
 
 @dataclass(frozen=True, slots=True)
 class Bounds:
-    """A value held against low and high limits."""
+    """A value held against low and high limits; for SPEC, which has none of its own, `end` says which end of the range."""
 
     basis: Basis = Basis.AS_MEASURED
+    end: End | None = None
 
 
 @dataclass(frozen=True, slots=True)
@@ -169,8 +170,8 @@ class Condition:
     """One condition of a pattern, on any of `quantities`.
 
     WITHIN holds from `low` to `high`, a limit marked `beyond` being itself outside and one marked `reach` inside; `over`
-    divides by another quantity, `less_new` takes off fresh oil first. `side` picks the lash points of one side.
-    `is_optional` holds where nothing was measured.
+    divides by another quantity, `less_new` takes off fresh oil first; `calls_out` flags what lies within. `side` picks the
+    lash points of one side. `is_optional` holds where nothing was measured.
     """
 
     quantities: tuple[str, ...]
@@ -180,6 +181,7 @@ class Condition:
     unit: str = ""
     over: str = ""
     less_new: bool = False
+    calls_out: bool = False
     side: str = ""
     words: tuple[str, ...] = ()
     is_optional: bool = False
@@ -252,8 +254,8 @@ class Rule:
     high: Limits = Limits()
     phases: tuple[Phase, ...] = ()
     points: tuple[str, ...] = ()
-    words: Mapping[str, tuple[str, ...]] = field(default_factory=dict)
-    unless: Mapping[str, tuple[str, ...]] = field(default_factory=dict)
+    words: Mapping[str, tuple[str, ...]] = field(default_factory=dict, hash=False)
+    unless: Mapping[str, tuple[str, ...]] = field(default_factory=dict, hash=False)
     applies: AppliesTo = AppliesTo()
     preset: str = ""
     choice: str = ""

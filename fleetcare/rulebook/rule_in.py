@@ -1,0 +1,172 @@
+"""A measurement rule as a file states it, held to its form and read into the fact the rules work with.
+
+Whatever is not in form is told together, each with the field and how to mend it; a file of rules is data, and what the
+shapes do not say cannot be said.
+"""
+
+from typing import Annotated, Any, Self
+
+from pydantic import AfterValidator, BeforeValidator, Field, StringConstraints, model_validator
+
+from fleetcare.domain.measures import QUANTITIES, dimension
+from fleetcare.domain.rule_book import (
+    AgainstSheet,
+    AppliesTo,
+    Basis,
+    Bounds,
+    By,
+    Change,
+    End,
+    Limits,
+    Method,
+    Pattern,
+    Rate,
+    Rule,
+    Shape,
+    Statistical,
+)
+from fleetcare.domain.sheets import Phase
+from fleetcare.rulebook.rule_pieces import (
+    AgainstSheetIn,
+    AppliesIn,
+    BoundsIn,
+    ChangeIn,
+    ConditionIn,
+    Form,
+    Kind,
+    KnownUnit,
+    LimitsIn,
+    PatternIn,
+    RateIn,
+    Slug,
+    StatisticalIn,
+    Text,
+    Texts,
+    Words,
+    as_list,
+)
+
+SHAPES: dict[str, type[Any]] = {
+    "bounds": Bounds,
+    "against_sheet": AgainstSheet,
+    "change": Change,
+    "rate": Rate,
+    "statistical": Statistical,
+    "pattern": Pattern,
+}
+
+
+def _measured(value: str) -> str:
+    if value and value not in QUANTITIES:
+        raise ValueError(f"{value!r} is measured on no sheet|use one of {', '.join(QUANTITIES)}")
+    return value
+
+
+class RuleIn(Form):
+    """A whole rule."""
+
+    id: Slug
+    kinds: Annotated[tuple[Kind, ...], BeforeValidator(as_list), Field(min_length=1)]
+    quantity: Annotated[str, AfterValidator(_measured)] = ""
+    unit: KnownUnit = ""
+    bounds: BoundsIn | None = None
+    against_sheet: AgainstSheetIn | None = None
+    change: ChangeIn | None = None
+    rate: RateIn | None = None
+    statistical: StatisticalIn | None = None
+    pattern: PatternIn | None = None
+    condition: tuple[ConditionIn, ...] = ()
+    low: LimitsIn = LimitsIn()
+    high: LimitsIn = LimitsIn()
+    phases: Annotated[tuple[Phase, ...], BeforeValidator(as_list)] = ()
+    points: Texts = ()
+    words: Words = Field(default_factory=dict)
+    unless: Words = Field(default_factory=dict)
+    applies: AppliesIn = AppliesIn()
+    preset: Annotated[str, StringConstraints(pattern=r"^$|^[a-z0-9]+(-[a-z0-9]+)*$")] = ""
+    choice: str = ""
+    cause: Text
+    message: Text
+    source: Text
+    next_step: Text
+    caution: str = ""
+    business_days: Annotated[int, Field(ge=1, le=250)] | None = None
+    is_law: bool = False
+
+    @model_validator(mode="after")
+    def _check(self) -> Self:
+        shapes = [name for name in SHAPES if getattr(self, name) is not None]
+        if len(shapes) != 1:
+            raise ValueError(f"a rule has one shape, this has {len(shapes)}|give one of {', '.join(SHAPES)}")
+        if self.pattern is not None:
+            self._check_pattern()
+        else:
+            self._check_figures()
+        return self
+
+    def _check_pattern(self) -> None:
+        if self.quantity or self.low.fact or self.high.fact:
+            raise ValueError("quantity and limits of a pattern stand in its conditions|move them there")
+        if not any(condition.flags for condition in self.condition):
+            raise ValueError("no condition flags a value|ask one to be flagged, or let one call out its value")
+
+    def _check_figures(self) -> None:
+        if self.condition:
+            raise ValueError("conditions belong to a pattern|leave them out")
+        if not self.quantity:
+            raise ValueError("quantity is missing|say what is measured")
+        is_spec = self.bounds is not None and self.bounds.basis is Basis.SPEC
+        if is_spec is bool(self.low.fact or self.high.fact):
+            raise ValueError("limits: one is needed, but none with the check range of the engine|give low or high")
+        for end, limits in ((End.LOW, self.low.fact), (End.HIGH, self.high.fact)):
+            check_order(limits, end, counts_up=self._counts_up)
+        if not is_spec and dimension(self.unit) != self._asked_dimension():
+            raise ValueError(f"unit {self.unit!r} does not fit {self.quantity}|write one that does")
+
+    @property
+    def _counts_up(self) -> bool:
+        """Whether limits are multiples, which grow outwards on both sides."""
+        return self.statistical is not None and self.statistical.method is not Method.PERCENTILE
+
+    def _asked_dimension(self) -> str:
+        """Give what the unit of the limits must measure."""
+        compared = self.against_sheet or self.change
+        is_percent = compared is not None and compared.by is not By.DIFFERENCE
+        is_share = self.bounds is not None and self.bounds.basis is Basis.NAMEPLATE
+        if is_percent or is_share:
+            return "fraction"
+        return dimension(QUANTITIES[self.quantity].unit)
+
+    @property
+    def fact(self) -> Rule:
+        """The rule as the rules see it."""
+        plain = ("id", "kinds", "quantity", "unit", "phases", "points", "words", "unless", "preset", "choice")
+        texts = ("cause", "message", "source", "next_step", "caution", "business_days", "is_law")
+        return Rule(
+            **{name: getattr(self, name) for name in (*plain, *texts)},
+            shape=self._shape(),
+            low=self.low.fact,
+            high=self.high.fact,
+            applies=AppliesTo(**dict(self.applies)),
+        )
+
+    def _shape(self) -> Shape:
+        name = next(name for name in SHAPES if getattr(self, name) is not None)
+        fields = dict(getattr(self, name))
+        if name == "pattern":
+            fields["conditions"] = tuple(condition.fact for condition in self.condition)
+        shape: Shape = SHAPES[name](**fields)
+        return shape
+
+
+def check_order(limits: Limits, end: End, *, counts_up: bool = False) -> None:
+    """Refuse an alarm that comes before its alert: a figure out at an alarm must be out at the alert.
+
+    Multiples of a spread count up on the low side as well.
+    """
+    alert, alarm = limits.alert, limits.alarm
+    if alert is None or alarm is None:
+        return
+    further = alarm.value - alert.value if end is End.HIGH or counts_up else alert.value - alarm.value
+    if further < 0 or (further == 0 and alarm.reach and not alert.reach):
+        raise ValueError(f"{end}: the alarm comes before the alert|put the alarm further out")

@@ -1,0 +1,182 @@
+"""The rule book as data: TOML files of rules beside this module, and what a shop makes of them.
+
+A file lists its rules under `[[rule]]`; fields under `[defaults]` hold for each rule that does not give its own. A shop
+writes rules of its own the same way. A rule of a shop with the id of a shipped one may change its limits, or switch it
+off with a reason, and nothing else; `[[preset]]` names the engines a preset is for.
+"""
+
+import tomllib
+from collections.abc import Iterator, Mapping, Sequence
+from dataclasses import dataclass
+from decimal import Decimal
+from difflib import get_close_matches
+from functools import cache
+from pathlib import Path
+from typing import Any, TypeVar
+
+from pydantic import BaseModel, ValidationError
+
+from fleetcare.domain.rule_book import Rule, RuleBook
+from fleetcare.errors import Refusals, Refused
+from fleetcare.rulebook.overrides import Chosen, Override, override
+from fleetcare.rulebook.rule_in import RuleIn
+
+FOLDER = Path(__file__).parent / "rules"
+_Form = TypeVar("_Form", bound=BaseModel)
+_PARTS = ("rule", "preset", "defaults")
+
+
+@dataclass(frozen=True, slots=True)
+class ShopRules:
+    """What one shop file says: rules of its own, changes to shipped ones, and presets named for engines."""
+
+    rules: tuple[Rule, ...] = ()
+    overrides: tuple[Override, ...] = ()
+    chosen: tuple[Chosen, ...] = ()
+
+
+@cache
+def shipped_rules() -> tuple[Rule, ...]:
+    """Give every rule that comes with the program, file by file in the order they stand in."""
+    rules = [rule for path in sorted(FOLDER.glob("*.toml")) for rule in _all(_toml(path, path.name), path.name)]
+    _check_unique(rules, "the shipped rules")
+    return tuple(rules)
+
+
+def read_shop_rules(path: Path) -> ShopRules:
+    """Read a shop's own rules from a TOML file. Everything not in form is refused together, by file, rule and field."""
+    return shop_rules(_toml(path, path.name), path.name)
+
+
+def shop_rules(content: Mapping[str, Any], name: str) -> ShopRules:
+    """Read a shop's own rules from what a file, or the database, has of them; `name` says where it stands."""
+    wrong = [
+        Refused(f"{name}: {field} is not known here", "write [[rule]], [[preset]] or [defaults]")
+        for field in content
+        if field not in _PARTS
+    ]
+    shipped = {rule.id: rule for rule in shipped_rules()}
+    rules, overrides, chosen = [], [], []
+    for number, raw in enumerate(_tables(content, "rule", name, wrong), start=1):
+        where = _where(name, "rule", number, raw.get("id"))
+        if raw.get("id") in shipped:
+            change = _read(Override, raw, where, wrong)
+            overrides += [change] if change else []
+        else:
+            rule = _read(RuleIn, {**content.get("defaults", {}), **raw}, where, wrong)
+            rules += [rule.fact] if rule else []
+    presets = {rule.preset for rule in (*shipped.values(), *rules)} - {""}
+    for number, raw in enumerate(_tables(content, "preset", name, wrong), start=1):
+        where = _where(name, "preset", number, raw.get("name"))
+        choice = _read(Chosen, raw, where, wrong)
+        if choice and choice.name not in presets:
+            wrong.append(Refused(f"{where}: there is no such preset", f"name one of {', '.join(sorted(presets))}"))
+        chosen += [choice] if choice else []
+    _refuse(wrong)
+    _check_unique([*rules, *overrides], name)
+    return ShopRules(tuple(rules), tuple(overrides), tuple(chosen))
+
+
+def rule_book(*shops: ShopRules) -> RuleBook:
+    """Put the shipped rules and those of a shop together; of several changes to one rule the last counts.
+
+    Raises Refused for a change that does not fit the rule it changes.
+    """
+    changes = {change.id: change for shop in shops for change in shop.overrides}
+    own = {rule.id: rule for shop in shops for rule in shop.rules}
+    wrong: list[Refused] = []
+    rules = []
+    for rule in shipped_rules():
+        change = changes.get(rule.id)
+        try:
+            rules.append(override(rule, change) if change else rule)
+        except ValueError as fault:
+            wrong.append(_fault(f"rule {rule.id!r}", str(fault)))
+    _refuse(wrong)
+    chosen: dict[str, tuple[str, ...]] = {}
+    for choice in (choice for shop in shops for choice in shop.chosen):
+        chosen[choice.name] = tuple(dict.fromkeys((*chosen.get(choice.name, ()), *choice.engines)))
+    off = {change.id: change for change in changes.values() if change.off}
+    return RuleBook(
+        rules=tuple(rule for rule in (*rules, *own.values()) if rule.id not in off),
+        chosen=chosen,
+        off=tuple(change.switched_off for change in off.values()),
+        overridden=tuple(change.id for change in changes.values() if not change.off),
+    )
+
+
+def _toml(path: Path, name: str) -> Mapping[str, Any]:
+    try:
+        return tomllib.loads(path.read_text(encoding="utf-8-sig"), parse_float=Decimal)
+    except OSError as error:
+        raise Refused(f"cannot read {name}: {error.strerror}", "name a TOML file that can be read") from None
+    except UnicodeDecodeError:
+        raise Refused(f"{name} is not UTF-8 text", "save it as UTF-8") from None
+    except tomllib.TOMLDecodeError as error:
+        raise Refused(f"{name} is not TOML: {error}", "correct it there") from None
+
+
+def _all(content: Mapping[str, Any], name: str) -> Iterator[Rule]:
+    wrong: list[Refused] = []
+    for number, raw in enumerate(_tables(content, "rule", name, wrong), start=1):
+        rule = _read(RuleIn, {**content.get("defaults", {}), **raw}, _where(name, "rule", number, raw.get("id")), wrong)
+        if rule:
+            yield rule.fact
+    _refuse(wrong)
+
+
+def _tables(content: Mapping[str, Any], part: str, name: str, wrong: list[Refused]) -> list[Mapping[str, Any]]:
+    tables = content.get(part, [])
+    if isinstance(tables, list) and all(isinstance(table, Mapping) for table in tables):
+        return tables
+    wrong.append(Refused(f"{name}: {part} is no list of tables", f"begin each with [[{part}]] on a line of its own"))
+    return []
+
+
+def _where(name: str, part: str, number: int, called: object) -> str:
+    return f"{name}, {part} {called!r}" if isinstance(called, str) and called else f"{name}, {part} {number}"
+
+
+def _read(form: type[_Form], raw: Mapping[str, Any], where: str, wrong: list[Refused]) -> _Form | None:
+    try:
+        return form.model_validate(raw)
+    except ValidationError as error:
+        wrong.extend(_fault(_field(where, fault["loc"]), _say(form, fault)) for fault in error.errors())
+        return None
+
+
+def _field(where: str, place: Sequence[int | str]) -> str:
+    return f"{where}: {'.'.join(str(part) for part in place)}" if place else where
+
+
+def _say(form: type[BaseModel], fault: Mapping[str, Any]) -> str:
+    """Put a fault of a field as what is wrong and, behind a bar, how to mend it."""
+    field = str(fault["loc"][-1]) if fault["loc"] else ""
+    if fault["type"] == "missing":
+        return "it is missing|give it"
+    if fault["type"] == "extra_forbidden":
+        near = get_close_matches(field, form.model_fields, n=1)
+        meant = f"did you mean {near[0]}?" if near else "leave it out, or check its spelling"
+        return f"it is not known here|{meant}"
+    if fault["type"] == "value_error":
+        return str(fault["ctx"]["error"])
+    return f"{fault['input']!r} does not fit|{fault['msg'][0].lower()}{fault['msg'][1:]}"
+
+
+def _fault(where: str, said: str) -> Refused:
+    detail, _, remedy = said.partition("|")
+    return Refused(f"{where}: {detail}", remedy)
+
+
+def _check_unique(named: Sequence[Rule | Override], name: str) -> None:
+    ids = [one.id for one in named]
+    _refuse([Refused(f"{name}: {one!r} stands there twice", "give each an id of its own") for one in _twice(ids)])
+
+
+def _twice(ids: Sequence[str]) -> list[str]:
+    return sorted({one for one in ids if ids.count(one) > 1})
+
+
+def _refuse(wrong: Sequence[Refused]) -> None:
+    if wrong:
+        raise wrong[0] if len(wrong) == 1 else Refusals(wrong)

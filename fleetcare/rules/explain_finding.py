@@ -1,0 +1,169 @@
+"""A finding in words and as a flat row: what was measured, the limit and by how much it was passed, how it was worked out,
+since when, the source, what to do next, and the caution. The only prose of measurement rules; every list, file and
+screen shows this row, so that they cannot disagree.
+"""
+
+from collections.abc import Iterable
+from dataclasses import dataclass
+from datetime import date
+from decimal import Decimal
+
+from fleetcare.domain.cautions import GENERAL
+from fleetcare.domain.findings import Evidence, Finding, Signal, Step
+from fleetcare.domain.quantities import plain
+from fleetcare.domain.rule_book import AgainstSheet, Basis, Bounds, By, Change, End, Pattern, Rate, Rule, Since
+from fleetcare.rules.judging.values import title
+
+_PLACES = 4
+
+
+@dataclass(frozen=True, slots=True)
+class FindingRow:
+    """A finding, flat. Figures are those of its gravest signal, in `unit`, and None where only a pattern speaks.
+
+    `explanation` says it in a sentence or two, `working` number by number, `evidence` value by value.
+    """
+
+    engine: str
+    rule: str
+    severity: str
+    cause: str
+    subject: str
+    measured: Decimal | None
+    unit: str
+    limit: Decimal | None
+    margin: Decimal | None
+    since: date
+    source: str
+    explanation: str
+    working: tuple[str, ...]
+    evidence: tuple[str, ...]
+    next_step: str
+    caution: str
+    due_by: date | None
+
+
+def finding_row(finding: Finding) -> FindingRow:
+    """Flatten a finding."""
+    figure = finding.figure
+    return FindingRow(
+        engine=finding.engine,
+        rule=finding.rule,
+        severity=finding.severity,
+        cause=finding.cause,
+        subject=say_subject(finding.subject),
+        measured=figure.measured,
+        unit=say_unit(figure.rule),
+        limit=figure.limit,
+        margin=figure.margin,
+        since=finding.since,
+        source=" / ".join(_each(signal.rule.source for signal in finding.signals)),
+        explanation=say_finding(finding),
+        working=tuple(say_working(signal) for signal in finding.signals if signal.steps or signal.measured is not None),
+        evidence=tuple(say_evidence(value) for value in finding.evidence),
+        next_step=say_next_step(finding),
+        caution=" ".join((*_each(signal.rule.caution for signal in finding.signals), GENERAL)),
+        due_by=finding.due_by,
+    )
+
+
+def say_finding(finding: Finding) -> str:
+    """Say what a finding is: the cause and where, what leads there, each figure with its limit, and since when."""
+    where = f" at {say_subject(finding.subject)}" if finding.subject else ""
+    lead = f"{finding.cause}{where}: {finding.lead.rule.message}"
+    figures = _each(say_signal(signal) for signal in finding.signals if signal.measured is not None)
+    also = _each(
+        signal.rule.cause
+        for signal in finding.signals
+        if isinstance(signal.rule.shape, Pattern) and signal.rule.cause != finding.cause
+    )
+    parts = [lead, *figures, *(f"it would also fit {cause}" for cause in also), f"since {finding.since.isoformat()}"]
+    return "; ".join(parts)
+
+
+def say_signal(signal: Signal) -> str:
+    """Say one figure with its limit: "iron 120 ppm, 20 ppm above the alert limit of 100 ppm"."""
+    assert signal.measured is not None
+    assert signal.limit is not None
+    assert signal.margin is not None
+    unit = say_unit(signal.rule, signal.unit)
+    where = f" at {say_subject(signal.subject)}" if signal.subject else ""
+    told = f"{say_measured(signal.rule)}{where} {_figure(signal.measured, unit)}"
+    if signal.margin == 0:
+        return f"{told} reaches the {signal.severity} limit"
+    side = "above" if signal.end is End.HIGH else "below"
+    off, limit = _figure(-signal.margin, unit), _figure(signal.limit, unit)
+    return f"{told}, {off} {side} the {signal.severity} limit of {limit}"
+
+
+def say_measured(rule: Rule) -> str:
+    """Say what a rule works out of its quantity: "iron", "compression as a share of the highest"."""
+    name, shape = title(rule.quantity), rule.shape
+    if isinstance(shape, Bounds):
+        return f"{name}{_BASES.get(shape.basis, '')}"
+    if isinstance(shape, AgainstSheet):
+        return f"{name} {_COMPARED[shape.by]} the {shape.reference}{_OF_ALL.get(shape.reference, '')}"
+    if isinstance(shape, Change):
+        return f"{name} {_COMPARED[shape.by]} {'new oil' if shape.since is Since.NEW else 'the last test'}"
+    return f"rise of {name}" if isinstance(shape, Rate) else name
+
+
+def say_working(signal: Signal) -> str:
+    """Say how a figure was worked out, number by number: "iron 33 ppm, hours on the oil 200 h: 16.1 ppm per 100 h"."""
+    steps = ", ".join(say_step(step) for step in signal.steps)
+    if signal.measured is None:
+        return steps
+    result = _figure(signal.measured, say_unit(signal.rule, signal.unit))
+    told = f"{say_measured(signal.rule)} {result}"
+    return f"{told} ({signal.rule.id}){f' from {steps}' if steps else ''}"
+
+
+def say_step(step: Step) -> str:
+    """Say one number of the working with its label."""
+    return f"{step.label} {_figure(step.value, step.unit)}"
+
+
+def say_evidence(value: Evidence) -> str:
+    """Say a flagged value as it was entered, and when: "iron 120 ppm on 2026-04-20"."""
+    point = f" at {say_subject(value.point)}" if value.point else ""
+    phase = f", {value.phase}" if value.phase else ""
+    unit = f" {value.unit}" if value.unit else ""
+    return f"{title(value.quantity)}{point} {value.value}{unit}{phase} on {value.on.isoformat()}"
+
+
+def say_next_step(finding: Finding) -> str:
+    """Say what to do next: what the lead says, the day by which the law wants it, then what others add."""
+    steps = [
+        f"{signal.rule.next_step}, by {signal.due_by.isoformat()}" if signal.due_by else signal.rule.next_step
+        for signal in sorted(finding.signals, key=lambda one: one.due_by is None)
+    ]
+    return "; ".join(_each(steps))
+
+
+def say_subject(subject: str) -> str:
+    """Say where: a cylinder, two neighbours, a lash point, or the engine."""
+    if not subject:
+        return "the engine"
+    if not subject.replace("-", "").isdigit():
+        return subject
+    return f"cylinders {subject.replace('-', ' and ')}" if "-" in subject else f"cylinder {subject}"
+
+
+def say_unit(rule: Rule, unit: str = "") -> str:
+    """Say the unit of a figure of a rule: that of its limits, of a rate with its hours."""
+    own = unit or rule.unit
+    return f"{own} per {rule.shape.per} h" if isinstance(rule.shape, Rate) else own
+
+
+def _figure(value: Decimal, unit: str) -> str:
+    return f"{plain(round(value, _PLACES))}{f' {unit}' if unit else ''}"
+
+
+_BASES = {Basis.LESS_NEW: " above new oil", Basis.NAMEPLATE: " of the nameplate", Basis.YEAR: " of the year"}
+_COMPARED = {By.RATIO: "as a share of", By.SHARE: "against", By.DIFFERENCE: "less"}
+_OF_ALL = {"mean": " of all"}
+
+
+def _each(texts: Iterable[str]) -> list[str]:
+    """Give each text once, in order, those that say nothing left out."""
+    return [text for text in dict.fromkeys(texts) if text]

@@ -1,0 +1,1 @@
+"""Sheets held against the rule book: a module for each shape of rule, pure and exact."""

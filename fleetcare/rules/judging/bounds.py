@@ -1,0 +1,63 @@
+"""A value held against low and high limits: as measured, less new oil, as a share of the nameplate, over a year.
+
+Less new oil: elements that fresh oil may bring along (TM 38-301-4: its antifoam gives 3 to 7 ppm of silicon) count from
+the level of the fresh oil where that is known, else as measured, as the sources print them. A load in kW or hp counts as
+percent of the rated kW; one in percent is taken as it stands. A year's total sums the runs of the calendar year up to
+the sheet's own day whose words fit the rule.
+"""
+
+from collections.abc import Iterator
+from decimal import Decimal
+
+from fleetcare.domain.findings import Step
+from fleetcare.domain.measures import dimension
+from fleetcare.domain.rule_book import Basis, Bounds, Rule
+from fleetcare.rules.judging.facts import CannotTell, Figure, MeasuredFacts
+from fleetcare.rules.judging.spans import known
+from fleetcare.rules.judging.values import Measured, fresh_of, judged_phases, step, title, values_of
+from fleetcare.rules.judging.words import says
+
+
+def figures(rule: Rule, shape: Bounds, values: list[Measured], facts: MeasuredFacts) -> Iterator[Figure | CannotTell]:
+    """Give a figure for each value, in the unit of the rule; of a year's total one for the sheet."""
+    work = {Basis.LESS_NEW: _less_new, Basis.NAMEPLATE: _share_of_nameplate}.get(shape.basis, _as_measured)
+    sums = [values] if shape.basis is Basis.YEAR else [[one] for one in values]
+    for summed in sums:
+        try:
+            yield _total_of_year(rule, summed, facts) if shape.basis is Basis.YEAR else work(rule, summed[0], facts)
+        except CannotTell as why:
+            yield why
+
+
+def _as_measured(rule: Rule, one: Measured, facts: MeasuredFacts) -> Figure:
+    return Figure(one.point, one.within(rule.unit), one.evidence, rule.low, rule.high, one.used, one.steps)
+
+
+def _less_new(rule: Rule, one: Measured, facts: MeasuredFacts) -> Figure:
+    fresh = fresh_of(facts.sheet, facts.fresh, rule.quantity)
+    if fresh is None:
+        return _as_measured(rule, one, facts)
+    read, new = one.within(rule.unit), fresh.within(rule.unit)
+    steps = (step(title(rule.quantity), read, rule.unit), step("in new oil", new, rule.unit))
+    return Figure(one.point, read - new, one.evidence, rule.low, rule.high, (fresh.evidence,), steps)
+
+
+def _share_of_nameplate(rule: Rule, one: Measured, facts: MeasuredFacts) -> Figure:
+    if dimension(one.unit) != "power":
+        return _as_measured(rule, one, facts)
+    rated = facts.engine.rated_kw
+    if not rated:
+        raise CannotTell("the nameplate has no rated kW", one.point)
+    load = one.within("kW")
+    steps = (step("load", load, "kW"), Step("nameplate", rated, "kW"))
+    return Figure(one.point, load.over(known(rated)).times(100), one.evidence, rule.low, rule.high, (), steps)
+
+
+def _total_of_year(rule: Rule, values: list[Measured], facts: MeasuredFacts) -> Figure:
+    runs = [sheet for sheet in facts.earlier if sheet.on.year == facts.sheet.on.year and says(sheet, rule)]
+    before = [one for sheet in runs for one in judged_phases(values_of(sheet, rule.quantity), rule.phases, rule.points)]
+    own = sum((one.within(rule.unit) for one in values), known(0))
+    total = sum((one.within(rule.unit) for one in before), own)
+    steps = (step("this run", own, rule.unit), Step(f"runs in {facts.sheet.on.year}", Decimal(len(runs) + 1)))
+    used = tuple(one.evidence for one in (*values[:-1], *before))
+    return Figure("", total, values[-1].evidence, rule.low, rule.high, used, steps)

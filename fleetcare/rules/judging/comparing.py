@@ -1,0 +1,96 @@
+"""Values compared with others: with the best of their own sheet, with the sheet before, with new oil.
+
+Lowest to highest is the ratio of each to the highest: where the lowest is within the limit, all are. A change is that of
+the same point, from the newest earlier sheet with the same gauge; another gauge is not a trend. Percent are of the
+figure compared with, which must lie above 0.
+"""
+
+from collections.abc import Iterator
+from fractions import Fraction
+
+from fleetcare.domain.findings import Evidence
+from fleetcare.domain.rule_book import AgainstSheet, Best, By, Change, Rule, Since
+from fleetcare.rules.judging.facts import CannotTell, Figure, MeasuredFacts
+from fleetcare.rules.judging.spans import Span
+from fleetcare.rules.judging.values import (
+    Measured,
+    fresh_of,
+    same_place,
+    step,
+    title,
+    values_of,
+)
+
+_LEAST_POINTS = 2
+
+
+def against_sheet(
+    rule: Rule, shape: AgainstSheet, values: list[Measured], facts: MeasuredFacts
+) -> Iterator[Figure | CannotTell]:
+    """Compare each point with the best or the mean of all; one point alone cannot be compared."""
+    if len(values) < _LEAST_POINTS:
+        yield CannotTell("one point alone cannot be compared with others")
+        return
+    unit = values[0].unit if shape.by is not By.DIFFERENCE else rule.unit
+    spans = [(one, one.within(unit)) for one in values]
+    best = _best([span for _, span in spans], shape.reference)
+    for one, span in spans:
+        others = tuple(other.evidence for other in values if other is not one)
+        yield _compared(rule, shape.by, one, (span, best), unit, (shape.reference.value, others))
+
+
+def change(rule: Rule, shape: Change, values: list[Measured], facts: MeasuredFacts) -> Iterator[Figure | CannotTell]:
+    """Compare each value with the same point before, or with new oil."""
+    for one in values:
+        try:
+            then = _new(rule, facts) if shape.since is Since.NEW else before(rule.quantity, one, facts)
+            unit = rule.unit if shape.by is By.DIFFERENCE else then.unit
+            label = "new oil" if shape.since is Since.NEW else f"on {then.evidence.on.isoformat()}"
+            pair = (one.within(unit), then.within(unit))
+            yield _compared(rule, shape.by, one, pair, unit, (label, (then.evidence,)))
+        except CannotTell as why:
+            yield why
+
+
+def before(quantity: str, one: Measured, facts: MeasuredFacts) -> Measured:
+    """Give the same point's value of the newest earlier sheet with the same gauge. Raises CannotTell where there is none."""
+    if not facts.earlier:
+        raise CannotTell("there is no earlier sheet", one.point)
+    for sheet in reversed(facts.earlier):
+        if sheet.gauge == facts.sheet.gauge and (then := same_place(values_of(sheet, quantity), one)):
+            return then
+    raise CannotTell("no earlier sheet with the same gauge has this value", one.point)
+
+
+def _new(rule: Rule, facts: MeasuredFacts) -> Measured:
+    fresh = fresh_of(facts.sheet, facts.fresh, rule.quantity)
+    if fresh is None:
+        raise CannotTell("the value of new oil is not known")
+    return fresh
+
+
+def _best(spans: list[Span], reference: Best) -> Span:
+    if reference is Best.HIGHEST:
+        return Span(max(span.low for span in spans), max(span.high for span in spans))
+    if reference is Best.LOWEST:
+        return Span(min(span.low for span in spans), min(span.high for span in spans))
+    return Span(_mean([span.low for span in spans]), _mean([span.high for span in spans]))
+
+
+def _compared(
+    rule: Rule, by: By, one: Measured, pair: tuple[Span, Span], unit: str, told: tuple[str, tuple[Evidence, ...]]
+) -> Figure | CannotTell:
+    (figure, other), (label, used) = pair, told
+    if by is not By.DIFFERENCE and other.low <= 0:
+        return CannotTell(f"{label} is not above 0, so there is no percentage of it", one.point)
+    span = figure - other
+    if by is By.SHARE:
+        span = span.over(other).times(100)
+    elif by is By.RATIO:
+        span = figure.over(other).times(100)
+    steps = (step(title(rule.quantity), figure, unit), step(label, other, unit))
+    return Figure(one.point, span, one.evidence, rule.low, rule.high, (*one.used, *used), (*one.steps, *steps))
+
+
+def _mean(figures: list[Fraction]) -> Fraction:
+    return sum(figures, Fraction(0)) / len(figures)

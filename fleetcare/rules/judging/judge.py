@@ -1,0 +1,141 @@
+"""A sheet held against rules: every figure each rule works out, the signals of those past a limit, and what is left open.
+
+The rules are those for the engine (`applies.rules_for`). A rule whose inputs are absent says nothing, and why. The order
+of the values on the sheet, and their units, change nothing.
+"""
+
+from collections.abc import Iterable, Iterator, Sequence
+from dataclasses import dataclass, replace
+from datetime import date
+from typing import assert_never
+
+from fleetcare.domain.findings import Evidence, NotJudged, Signal
+from fleetcare.domain.rule_book import (
+    AgainstSheet,
+    Basis,
+    Bounds,
+    Change,
+    Pattern,
+    Rate,
+    Rule,
+    Statistical,
+    worst,
+)
+from fleetcare.domain.sheets import Verdict
+from fleetcare.rules.judging import bounds, comparing, rates, statistics
+from fleetcare.rules.judging.facts import CannotTell, Figure, MeasuredFacts
+from fleetcare.rules.judging.hold import hold
+from fleetcare.rules.judging.lash import lash_signals
+from fleetcare.rules.judging.patterns import match_patterns
+from fleetcare.rules.judging.values import Measured, by_number, contradictions, evidence_of, judged_phases, values_of
+from fleetcare.rules.judging.words import says, unsaid
+
+
+@dataclass(frozen=True, slots=True)
+class JudgedSheet:
+    """What rules make of a sheet: signals, why rules are silent, and a verdict for each value, as the engine stands."""
+
+    signals: tuple[Signal, ...]
+    not_judged: tuple[NotJudged, ...]
+    verdicts: tuple[tuple[Evidence, Verdict], ...]
+
+
+def judge(rules: Iterable[Rule], facts: MeasuredFacts) -> tuple[Signal, ...]:
+    """Give the signals of a sheet, each dated since when it is seen without a break."""
+    return judge_sheet(rules, facts).signals
+
+
+def inputs_missing(rules: Iterable[Rule], facts: MeasuredFacts) -> tuple[NotJudged, ...]:
+    """Give why rules for this kind of sheet say nothing of it, or of a value."""
+    return judge_sheet(rules, facts).not_judged
+
+
+def judge_sheet(rules: Iterable[Rule], facts: MeasuredFacts) -> JudgedSheet:
+    """Judge a sheet by the rules for its engine; those for other kinds of sheet are left aside."""
+    known = [rule for rule in rules if facts.sheet.kind in rule.kinds]
+    signals: list[Signal] = []
+    silent: list[NotJudged] = []
+    within: set[Evidence] = set()
+    for rule in known:
+        for told in _tell(rule, facts):
+            if isinstance(told, Signal):
+                signals.append(replace(told, since=_since(told, facts)))
+            elif isinstance(told, NotJudged):
+                silent.append(told)
+            else:
+                within.add(told)
+    patterns = [(rule, rule.shape) for rule in known if isinstance(rule.shape, Pattern) and says(facts.sheet, rule)]
+    signals += match_patterns(patterns, facts, signals)
+    return JudgedSheet(tuple(signals), tuple(dict.fromkeys(silent)), _verdicts(facts, signals, within))
+
+
+def _tell(rule: Rule, facts: MeasuredFacts) -> Iterator[Signal | NotJudged | Evidence]:
+    """Give for each value of a rule its signal, why there is none to tell, or the value itself where it is within."""
+    if isinstance(rule.shape, Pattern):
+        return
+    for quantity in unsaid(facts.sheet, rule):
+        yield NotJudged(rule, "", f"the sheet does not say {quantity.replace('_', ' ')}")
+    if not says(facts.sheet, rule):
+        return
+    if isinstance(rule.shape, Bounds) and rule.shape.basis is Basis.SPEC and rule.shape.end:
+        yield from lash_signals(rule, rule.shape.end, facts.lash.get(facts.sheet.entry, ()), facts.sheet)
+        return
+    for point in contradictions(facts.sheet, rule.quantity):
+        yield NotJudged(rule, point, "it was entered twice, with different values")
+    values = judged_phases(values_of(facts.sheet, rule.quantity), rule.phases, rule.points)
+    if not values:
+        yield NotJudged(rule, "", "it was not measured")
+    for figure in _figures(rule, values, facts):
+        if isinstance(figure, CannotTell):
+            yield NotJudged(rule, figure.subject, figure.why)
+        else:
+            yield hold(rule, figure, facts) or figure.flagged
+
+
+def _figures(rule: Rule, values: list[Measured], facts: MeasuredFacts) -> Iterable[Figure | CannotTell]:
+    shape = rule.shape
+    match shape:
+        case Bounds():
+            return bounds.figures(rule, shape, values, facts) if values else ()
+        case AgainstSheet():
+            return comparing.against_sheet(rule, shape, values, facts) if values else ()
+        case Change():
+            return comparing.change(rule, shape, values, facts)
+        case Rate():
+            return rates.figures(rule, shape, values, facts)
+        case Statistical():
+            return statistics.figures(rule, shape, values, facts) if values else ()
+        case Pattern():
+            return ()
+        case _:
+            assert_never(shape)
+
+
+def _since(signal: Signal, facts: MeasuredFacts) -> date:
+    """Give the day of the first sheet from which on a rule flagged this subject, sheets that could not tell passed over."""
+    since = signal.on
+    for place in range(len(facts.earlier) - 1, -1, -1):
+        then = replace(facts, sheet=facts.earlier[place], earlier=facts.earlier[:place])
+        told = list(_tell(signal.rule, then))
+        flagged = {(one.subject, one.end) for one in told if isinstance(one, Signal)}
+        if (signal.subject, signal.end) in flagged:
+            since = then.sheet.on
+        elif signal.subject in {one.point for one in told if isinstance(one, Evidence)}:
+            break
+    return since
+
+
+def _verdicts(
+    facts: MeasuredFacts, signals: Sequence[Signal], within: set[Evidence]
+) -> tuple[tuple[Evidence, Verdict], ...]:
+    """Give the verdict of each value: the gravest of its signals, `in` where some rule held it and none flagged it."""
+    values = {evidence_of(facts.sheet, value) for value in facts.sheet.values}
+    verdicts = []
+    for value in sorted(values, key=lambda one: (by_number(one.point), one.quantity, one.phase, one.value, one.unit)):
+        flagging = [signal for signal in signals if value in signal.flagged]
+        # A pattern is grave by what it puts together; a value is so by its own rules, if it has any.
+        own = [signal for signal in flagging if not isinstance(signal.rule.shape, Pattern)]
+        severities = [signal.severity for signal in own or flagging]
+        held = Verdict.IN if value in within else Verdict.NOT_JUDGED
+        verdicts.append((value, Verdict(worst(severities)) if severities else held))
+    return tuple(verdicts)
