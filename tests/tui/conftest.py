@@ -15,7 +15,8 @@ from fleetcare.cli.main import run
 from fleetcare.context import Context
 from fleetcare.tui.app import FleetApp
 from tests.cli.conftest import no_screens
-from tests.tui.yard import LINES
+from tests.conftest import NOW, counted_uids
+from tests.tui.yard import BENCH, LINES
 
 TODAY = "2026-05-01"
 
@@ -44,10 +45,27 @@ def terminal(monkeypatch: pytest.MonkeyPatch, tmp_path: Path) -> None:
 @pytest.fixture(scope="session")
 def made_yard(tmp_path_factory: pytest.TempPathFactory) -> Path:
     """The small yard, entered once a worker by its command lines; never written to."""
-    path = tmp_path_factory.mktemp("yard") / "yard.db"
-    for line in LINES.strip().splitlines():
+    return enter(tmp_path_factory.mktemp("yard") / "yard.db", LINES)
+
+
+@pytest.fixture(scope="session")
+def made_bench(tmp_path_factory: pytest.TempPathFactory) -> Path:
+    """The yard of engines whose valves are due, entered once a worker; never written to."""
+    return enter(tmp_path_factory.mktemp("bench") / "bench.db", BENCH)
+
+
+def enter(path: Path, lines: str) -> Path:
+    """Enter command lines into a database."""
+    for line in filter(None, lines.splitlines()):
         type_in(path, *shlex.split(line))
     return path
+
+
+@pytest.fixture
+def bench(made_bench: Path, tmp_path: Path) -> Context:
+    """The yard of engines whose valves are due, of the test's own, on 1 May 2026."""
+    path = shutil.copy(made_bench, tmp_path / "bench.db")
+    return Context(str(path), clock=lambda: NOW, uids=counted_uids())
 
 
 @pytest.fixture

@@ -11,6 +11,7 @@ from typing import NamedTuple
 
 import pytest
 
+from fleetcare.context import Context
 from tests.tui.conftest import Opened, seen
 
 PICTURES = Path(__file__).with_name("pictures")
@@ -60,12 +61,33 @@ SCREENS = {
 }
 
 
+def _sheet(engine: str, *keys: str, size: tuple[int, int] = SMALL, terminal: Mapping[str, str] = {}) -> Picture:
+    """Give the picture of the lash sheet of an engine of the bench, with some values in it."""
+    down = ("down",) * ("B-1", "B-2", "B-4", "B-6", "B-8").index(engine)
+    return Picture(size, (*down, "w", *"1000", "enter", *"Fenn", "ctrl+s", *keys), terminal, is_bench=True)
+
+
+_BLADES = (*"25", "enter", "enter", *"36", "enter", *"45", "enter", *"18")
+SCREENS |= {
+    "lash-single": _sheet("B-1", *"25", "enter", "enter", *"38", "enter", "enter", "ctrl+s"),
+    "lash-opposed": _sheet("B-2", *"5", "enter", "enter", *"12", "enter"),
+    "lash-four-valves": _sheet("B-4", *"25", "enter", "enter", *"15", "enter", *"2.75", "enter"),
+    "lash-six": _sheet("B-6", *_BLADES),
+    "lash-six-slip": _sheet("B-6", *"3.0", "enter"),
+    "lash-six-no-colour": _sheet("B-6", *_BLADES, terminal={"NO_COLOR": "1"}),
+    "lash-eight": _sheet("B-8", *_BLADES),
+    "lash-eight-large": _sheet("B-8", *_BLADES, size=LARGE),
+}
+
+
 @pytest.mark.parametrize("name", SCREENS)
-async def test_a_screen_looks_as_it_did(opened: Opened, monkeypatch: pytest.MonkeyPatch, name: str) -> None:
+async def test_a_screen_looks_as_it_did(
+    opened: Opened, bench: Context, monkeypatch: pytest.MonkeyPatch, name: str
+) -> None:
     picture = SCREENS[name]
     for variable, value in picture.terminal.items():
         monkeypatch.setenv(variable, value)
-    async with opened(*picture.keys, size=picture.size) as pilot:
+    async with opened(*picture.keys, size=picture.size, context=bench if picture.is_bench else None) as pilot:
         drawn = without_fonts(pilot.app.export_screenshot(title=f"fleetcare, {name}"))
         text = "\n".join(seen(pilot))
     path = PICTURES / f"{name}.svg"

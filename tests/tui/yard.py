@@ -47,3 +47,23 @@ reading TR-2 1066 --on 2026-02-09
 reading TR-2 1094 --on 2026-02-23
 engine withdraw PS-9 --on 2026-01-31 --why "main bearing"
 """
+
+_RANGES = (
+    "--lash-intake 0.20-0.30 --lash-exhaust 0.40-0.50 --lash-set-intake 0.25 --lash-set-exhaust 0.45 --lash-when cold"
+)
+_SCREWS = f"{_RANGES} --adjuster screw --screw-pitch 1"
+
+# Engines to set the valves of, one of each shape; their valves are due.
+BENCH = f"""
+engine add B-6 --name "Pump diesel" --site "North Sluice" --fuel diesel --cylinders 6 --layout inline --valves-per-cylinder 2 --firing-order 1-5-3-6-2-4 {_SCREWS} {_NEW}
+engine add B-8 --name "Standby set" --site "Board Yard" --fuel diesel --cylinders 8 --layout v --valves-per-cylinder 2 --firing-order 1-5-4-8-6-3-7-2 {_SCREWS} {_NEW}
+engine add B-4 --name "Lorry" --site "Board Yard" --fuel diesel --cylinders 4 --layout inline --valves-per-cylinder 4 --firing-order 1-3-4-2 {_RANGES} --adjuster shim --shim-step 0.05 {_NEW}
+engine add B-2 --name "Weed boat" --site "Ousel Outfall" --fuel petrol --cylinders 2 --layout opposed --valves-per-cylinder 2 --firing-order 1-2 --lash-intake 0.004-0.006in --lash-exhaust 0.010-0.014in {_NEW}
+engine add B-1 --name "Trash pump" --site "Ousel Outfall" --fuel petrol --cylinders 1 --layout single --valves-per-cylinder 2 {_SCREWS} {_NEW}
+""" + "".join(
+    f"""
+task add {tag} "Valve lash" --every 1000h --work lash --needs-sheet lash --last-done 2024-01-10 --last-done 0h
+reading {tag} 990 --on 2026-03-30
+"""
+    for tag in ("B-6", "B-8", "B-4", "B-2", "B-1")
+)

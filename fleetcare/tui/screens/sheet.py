@@ -60,7 +60,7 @@ class SheetScreen(StoringScreen):
         """Title, cells with the cautions below, what the cursor is on, and the place for a question."""
         yield FormTitle(self.kind.title.format(tag=self.about.tag))
         yield Static("", markup=False)
-        yield Grid()
+        yield Grid(self)
         yield Detail()
         yield Question()
 
@@ -109,7 +109,7 @@ class SheetScreen(StoringScreen):
             empty = (key for key in found.order if not self.texts.get(key))
             self.grid.go(next(empty, found.order[0]))
 
-    def on_grid_typed(self) -> None:
+    def cell_typed(self) -> None:
         """Judge what is typed, keep it soon, and forget what was answered about other values."""
         self._said.clear()
         if self.grid.cursor in self._sure:
@@ -118,7 +118,7 @@ class SheetScreen(StoringScreen):
         if self._timer is None:
             self._timer = self.set_timer(KEEP_AFTER, self._keep)
 
-    def on_grid_moved(self) -> None:
+    def cell_moved(self) -> None:
         """Say what the cursor is on."""
         self._say_here()
 
@@ -132,16 +132,18 @@ class SheetScreen(StoringScreen):
             self.dismiss(None)
 
     def action_next(self, step: int) -> None:
+        """Go to the next cell to fill in, or the one before."""
+        self.cell_left(step)
+
+    def cell_left(self, step: int) -> None:
         """Go to the next cell to fill in, or the one before; ask first about what is likely a slip."""
         key, read = self.grid.cursor, self.read_sheet
         if key is None or read is None or self.query_one(Question).display or self._ask_of_slip(key):
             return
         wanted = read.next(key, step)
-        if wanted is None and step > 0:
-            self.notice.say("That was the last one; Ctrl S stores it.")
-        elif wanted is not None:
-            self.notice.say()
-            self.grid.go(wanted)
+        is_last = wanted is None and step > 0
+        self.notice.say(*(["That was the last one; Ctrl S stores it."] if is_last else []))
+        self.grid.go(wanted or key)
 
     def action_anew(self) -> None:
         """Throw away what was typed and begin anew."""
@@ -217,7 +219,7 @@ class SheetScreen(StoringScreen):
             self._judge()
         elif answer.words.startswith("it is ") and self.read_sheet is not None:
             self.texts[key] = answer.words.removeprefix("it is ")
-            self.on_grid_typed()
+            self.cell_typed()
         else:
             return
         self.action_next(1)

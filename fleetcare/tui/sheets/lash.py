@@ -92,18 +92,20 @@ class ReadLash(ReadSheet):
 
     def about(self, key: CellKey) -> Sequence[tuple[str, str]]:
         """Give lines about a cell: where the crank stands for it, then what it holds."""
+        if key in self._unread:
+            return ((self.wrong()[key], "wrong"), ("", ""))
         if key == WHEN:
             asked = self._form.spec.condition if self._form.spec else "any"
             told = f"; its limits are for a {asked} engine" if asked != "any" else ""
             return (
-                ("c for cold, h for hot; empty: nobody says", "strong"),
-                (f"The engine when it was measured{told}", ""),
+                ("c for cold, h for hot; empty: nobody says", ""),
+                (f"How the engine was when measured{told}", "quiet"),
             )
         if key == UNIT:
             unit = self._form.spec.unit if self._form.spec else "mm"
-            return ((f"mm or in, the unit of the blades; empty: {unit}, as the limits are", "strong"), ("", ""))
+            return ((f"mm or in, as the blades are marked; empty: {unit}", ""), ("", ""))
         if key == GAUGE:
-            return (("the feeler gauge used, such as its number", "strong"), ("Another gauge is not a trend.", ""))
+            return (("the feeler gauge used, such as its number", ""), ("Another gauge is not a trend.", "quiet"))
         row = self._typed.row(key)
         tone = "wrong" if key in self._typed.wrong else _TONES[Verdict(row.verdict)] if row else ""
         what = f"{key.point} {'shim ' if key.quantity == SHIM else ''}{key.phase}"
@@ -124,7 +126,7 @@ class ReadLash(ReadSheet):
         wrong = {key: "; ".join(error.lines()) for key, error in self._typed.wrong.items()}
         for key, word in self._unread.items():
             wrong[key] = (
-                f"{word!r} is not known here; write {' or '.join(filter(None, _WORDS[key]))}, or leave it empty"
+                f"{word!r} is not known here; write {' or '.join(dict.fromkeys(filter(None, _WORDS[key].values())))}, or leave it empty"
             )
         return wrong
 

@@ -1,14 +1,12 @@
 """The cells of a sheet: drawn as they are laid out, typed into, and each marked with where its value lies."""
 
 from collections.abc import Mapping, Sequence
-from typing import ClassVar
+from typing import ClassVar, Protocol
 
 from rich.segment import Segment
 from rich.style import Style
 from textual import events
-from textual.binding import Binding, BindingType
 from textual.geometry import Region, Size
-from textual.message import Message
 from textual.scroll_view import ScrollView
 from textual.strip import Strip
 
@@ -22,32 +20,35 @@ _LINE = "_"
 _LEAST_DIGITS = 4
 _MOST_DIGITS = 7
 _MOST_TYPED = 40
+_STEPS = {"enter": 1, "tab": 1, "shift+tab": -1}
+_BESIDE = {"left": -1, "right": 1}
+_BEYOND = {"up": -1, "down": 1}
+
+
+class GridOwner(Protocol):
+    """Whoever the cells belong to: told at once of what happens in them."""
+
+    def cell_typed(self) -> None:
+        """What stands in the cell under the cursor changed."""
+
+    def cell_moved(self) -> None:
+        """The cursor stands on another cell."""
+
+    def cell_left(self, step: int) -> None:
+        """The cell was left for the next one to fill in, or with -1 for the one before."""
 
 
 class Grid(ScrollView, can_focus=True, inherit_bindings=False):
     """Cells in blocks with a cursor. What is typed on a cell takes the place of what stood there; Backspace mends it."""
 
-    BINDINGS: ClassVar[list[BindingType]] = [
-        Binding("left", "beside(-1)", show=False),
-        Binding("right", "beside(1)", show=False),
-        Binding("up", "beyond(-1)", show=False),
-        Binding("down", "beyond(1)", show=False),
-        Binding("backspace", "mend", show=False),
-        Binding("delete", "empty", show=False),
-    ]
     COMPONENT_CLASSES: ClassVar[set[str]] = {"grid--cursor", *TONE_CLASSES}
     DEFAULT_CSS = "Grid { overflow-x: hidden; scrollbar-size-vertical: 1; }"
 
-    class Typed(Message):
-        """What stands in the cell under the cursor changed."""
-
-    class Moved(Message):
-        """The cursor stands on another cell."""
-
-    def __init__(self) -> None:
+    def __init__(self, owner: GridOwner) -> None:
         super().__init__()
         self.texts: dict[CellKey, str] = {}
         self.cursor: CellKey | None = None
+        self._owner = owner
         self._blocks: Sequence[Matrix | Flow] = ()
         self._lasts: Mapping[CellKey, str] = {}
         self._below: Sequence[str] = ()
@@ -75,37 +76,34 @@ class Grid(ScrollView, can_focus=True, inherit_bindings=False):
             above = 2 if line <= 3 else 0  # the heads of the first rows stay with them
             self.scroll_to_region(Region(0, line - above, 1, 1 + above), animate=False, force=True)
         if is_other:
-            self.post_message(self.Moved())
-
-    def action_beside(self, step: int) -> None:
-        """Go to the cell on the left or right."""
-        if self.cursor is not None:
-            self.go(self._laid.beside(self.cursor, step))
-
-    def action_beyond(self, step: int) -> None:
-        """Go to the cell above or below."""
-        if self.cursor is not None:
-            self.go(self._laid.beyond(self.cursor, step))
-
-    def action_mend(self) -> None:
-        """Take away the last letter."""
-        if self.cursor is not None:
-            self._put(self.texts.get(self.cursor, "")[:-1])
-
-    def action_empty(self) -> None:
-        """Empty the cell."""
-        self._put("")
+            self._owner.cell_moved()
 
     def check_consume_key(self, key: str, character: str | None) -> bool:
         """Keep letters from meaning anything else."""
         return character is not None and character.isprintable()
 
     def on_key(self, event: events.Key) -> None:
-        """Type a letter."""
-        if event.character is not None and event.is_printable and self.cursor is not None:
-            before = "" if self._is_fresh else self.texts.get(self.cursor, "")
+        """Type a letter, move, or leave the cell. All here and at once, so that keys typed ahead keep their order."""
+        key, here = event.key, self.cursor
+        if here is None:
+            return
+        if key in _STEPS:
+            self._owner.cell_left(_STEPS[key])
+        elif key in _BESIDE:
+            self.go(self._laid.beside(here, _BESIDE[key]))
+        elif key in _BEYOND:
+            self.go(self._laid.beyond(here, _BEYOND[key]))
+        elif key == "backspace":
+            self._put(self.texts.get(here, "")[:-1])
+        elif key == "delete":
+            self._put("")
+        elif event.character is not None and event.is_printable:
+            before = "" if self._is_fresh else self.texts.get(here, "")
             self._put((before + event.character)[:_MOST_TYPED])
-            event.stop()
+        else:
+            return
+        event.stop()
+        event.prevent_default()
 
     def on_paste(self, event: events.Paste) -> None:
         """Take the first line of what is pasted."""
@@ -165,7 +163,7 @@ class Grid(ScrollView, can_focus=True, inherit_bindings=False):
     def _put(self, text: str) -> None:
         if self.cursor is not None:
             self.texts[self.cursor], self._is_fresh = text, False
-            self.post_message(self.Typed())
+            self._owner.cell_typed()
             self.refresh()
 
     def _lay(self) -> None:
