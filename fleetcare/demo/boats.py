@@ -6,6 +6,7 @@ from fleetcare.demo.plates import BOAT, OUTBOARD
 from fleetcare.demo.steps import Verb
 from fleetcare.demo.tasks import HOT_OIL, LASH, OIL
 from fleetcare.demo.use import now_and_then, scaled, weed_boat
+from fleetcare.demo.wear import Gauged
 
 _SLIPPING = {"name": "Slip, scrape and antifoul", "every": ["12mo"], "window": "15d", "labour": "16h"}
 _GEAR_OIL = {"name": "Reduction gear oil", "every": ["12mo"], "work": "drain", "caution": HOT_OIL}
@@ -93,11 +94,14 @@ BOATS = (
         (Meter("hours", "h", 318, scaled(now_and_then, 0.4), unread=11),),
         tasks=(
             Kept({**OIL, "every": ["100h", "12mo"]}, Dated(12, 64)),
-            Kept({**LASH, "every": ["300h"], "needs_sheet": "lash", "last_done": [Ago(400)]}),
+            Kept(
+                {**LASH, "every": ["300h"]}, Counted(300, 262, most=1), note="shims changed where a gap was near an end"
+            ),
             Kept(
                 {"name": "Spark plugs", "every": ["100h"], "work": "ignition", "part": ["Spark plug:4"]},
                 Counted(100, 55, most=2),
             ),
         ),
+        gauged=Gauged("Valve lash", every=4, pace=6),
     ),
 )

@@ -5,6 +5,7 @@ from datetime import date, timedelta
 
 from fleetcare.demo.fleet import ITEMS, SHOP
 from fleetcare.demo.items import Ago, Item, Shown
+from fleetcare.demo.lash import gauged_steps
 from fleetcare.demo.odd import odd_readings
 from fleetcare.demo.steps import Step, Verb, in_order
 from fleetcare.demo.yard import CHANGEOVER, Yard
@@ -21,7 +22,7 @@ def history(anchor: date, items: Sequence[Item] = ITEMS, changeover: int = CHANG
     yard = Yard(anchor, items, changeover)
     steps = [Step(yard.changeover, yard.changeover, Verb.SETTING, values={"name": "shop-name", "value": SHOP})]
     for item in items:
-        work = list(_work(yard, item))
+        work = [*_work(yard, item), *gauged_steps(yard, item, _mechanic(item))]
         steps += [*_arrival(yard, item), *work, *_told(yard, item), *_rounds(yard, item, work)]
     return in_order(steps)
 
@@ -46,14 +47,20 @@ def _arrival(yard: Yard, item: Item) -> Iterator[Step]:
 
 
 def _work(yard: Yard, item: Item) -> Iterator[Step]:
-    """Log every job done."""
-    by = _MECHANICS[sum(map(ord, item.tag)) % len(_MECHANICS)]
+    """Log every job done, save those a sheet came of."""
+    by = _mechanic(item)
     for kept in item.tasks:
+        if item.gauged is not None and kept.name == item.gauged.task:
+            continue
         note = kept.note
         for day, dial in kept.plan.work(yard, item.tag, kept.name):
             values = {"task": [kept.name], "at": [dial] if dial else [], "by": by, "note": note}
             yield _dated(yard, day, (Verb.CARD_WORK, Verb.LOG), item.tag, values)
             note = ""
+
+
+def _mechanic(item: Item) -> str:
+    return _MECHANICS[sum(map(ord, item.tag)) % len(_MECHANICS)]
 
 
 def _dated(yard: Yard, on: date, verbs: tuple[Verb, Verb], tag: str, values: Mapping[str, object]) -> Step:

@@ -9,6 +9,7 @@ from dataclasses import dataclass, field
 from fleetcare.demo.plans import Each, Never, Plan
 from fleetcare.demo.steps import Verb
 from fleetcare.demo.use import Rhythm
+from fleetcare.demo.wear import Gauged
 
 Values = Mapping[str, object]
 
@@ -83,7 +84,7 @@ class Told:
 class Item:
     """An engine or machine: its tag, the days since the register has it, what its plate says, and its history.
 
-    `schedule` names a shipped schedule and what its tasks count from.
+    `schedule` names a shipped schedule and what its tasks count from; `gauged` is how its valve lash was gauged.
     """
 
     tag: str
@@ -93,6 +94,7 @@ class Item:
     tasks: tuple[Kept, ...] = ()
     told: tuple[Told, ...] = ()
     schedule: tuple[str, object] | None = None
+    gauged: Gauged | None = None
     as_new: bool = False
     is_engine: bool = True
 

@@ -1,11 +1,14 @@
 """Tractors, diggers and small engines of the demo fleet."""
 
+from decimal import Decimal
+
 from fleetcare.demo.items import Ago, Item, Kept, Meter, Shown, Told
 from fleetcare.demo.plans import Counted, Dated, Each, FromNew
-from fleetcare.demo.plates import DIGGER, SMALL_DIESEL, SMALL_PETROL, TRACTOR
+from fleetcare.demo.plates import DIGGER, PETROL_TWIN, SMALL_DIESEL, SMALL_PETROL, TRACTOR
 from fleetcare.demo.steps import Verb
 from fleetcare.demo.tasks import AIR_FILTER, BELTS, BOOM, FUEL_FILTER, GREASE, HOSES, HYDRAULIC_OIL, LASH, OIL, WEEKLY
 from fleetcare.demo.use import digger, now_and_then, scaled, tractor
+from fleetcare.demo.wear import Gauged
 
 _YARD = {"site": "Board Yard"}
 _SMALL = scaled(now_and_then, 0.5)
@@ -34,6 +37,7 @@ _TRACTORS = (
                 },
             ),
         ),
+        gauged=Gauged("Valve lash", every=3),
         as_new=True,
     ),
     Item(
@@ -209,6 +213,7 @@ _SMALL_ENGINES = (
             Kept({**OIL, "every": ["200h", "12mo"]}, Dated(12, 118)),
             Kept({**LASH, "every": ["400h"]}, Counted(400, 170)),
         ),
+        gauged=Gauged("Valve lash", every=4, pace=3),
         told=(Told(20, Verb.LOG, {"defect": "Fuel tap drips", "follow_up": True, "until": Ago(6), "by": "Fenn"}),),
     ),
     Item(
@@ -222,6 +227,7 @@ _SMALL_ENGINES = (
             Kept("Air cleaner", FromNew(50, 50)),
             Kept("Annual service", Dated(12, 130), note="pull cord renewed as well"),
         ),
+        gauged=Gauged(every=2, pace=10),
         as_new=True,
     ),
     Item(
@@ -233,6 +239,18 @@ _SMALL_ENGINES = (
             Kept({**OIL, "name": "Oil", "every": ["100h", "6mo"]}, Dated(6, -18, most=3)),
             Kept({"name": "Blades", "every": ["25h"], "work": "inspection"}, Counted(25, 9, most=6)),
         ),
+        gauged=Gauged(every=3, pace=10, blades=Decimal("0.02")),
+    ),
+    Item(
+        "MP-4",
+        1088,
+        {**PETROL_TWIN, "name": "Portable fire pump", "rated_kw": "16", "site": "Ousel Outfall"},
+        (Meter("hours", "h", 204, _SMALL, unread=9),),
+        tasks=(
+            Kept({**OIL, "name": "Oil", "every": ["100h", "12mo"]}, Dated(12, 88)),
+            Kept({**LASH, "every": ["200h", "36mo"]}, Dated(36, 250)),
+        ),
+        gauged=Gauged("Valve lash", every=4, pace=10),
     ),
     Item(
         "WL-1",

@@ -36,6 +36,7 @@ BIG_PUMP: Plate = {
     **SIX,
     "adjuster": "screw",
     "valves_per_cylinder": "4",
+    "bridged": "both",
     "duty": "land drainage pump",
     "bore": "158",
     "stroke": "186",
@@ -82,6 +83,10 @@ V_SET: Plate = {
     "fuel": "diesel",
     "adjuster": "screw",
     "valves_per_cylinder": "4",
+    "bridged": "both",
+    "lash_intake": "0.35-0.45",
+    "lash_exhaust": "0.55-0.65",
+    "lash_when": "cold",
     "duty": "standby",
     "bore": "128",
     "stroke": "140",
@@ -135,6 +140,7 @@ OUTBOARD: Plate = {
     **FOUR,
     "fuel": "petrol",
     "adjuster": "shim",
+    "shim_step": "0.05",
     "valves_per_cylinder": "4",
     "duty": "survey",
     "bore": "65",
@@ -145,7 +151,19 @@ OUTBOARD: Plate = {
     "oil_grade": "10W-30",
     "sump": "2.8",
 }
-SMALL_DIESEL: Plate = {**THREE, **_SCREW_2V, "duty": "utility", "bore": "84", "stroke": "90", "oil_grade": "15W-40"}
+SMALL_DIESEL: Plate = {
+    **THREE,
+    **_SCREW_2V,
+    "lash_intake": "0.15-0.25",
+    "lash_exhaust": "0.15-0.25",
+    "lash_set_intake": "0.20",
+    "lash_set_exhaust": "0.20",
+    "lash_when": "cold",
+    "duty": "utility",
+    "bore": "84",
+    "stroke": "90",
+    "oil_grade": "15W-40",
+}
 SMALL_PETROL: Plate = {
     "cylinders": "1",
     "layout": "single",
@@ -162,4 +180,16 @@ SMALL_PETROL: Plate = {
     "oil_grade": "10W-30",
     "sump": "0.6",
     "rated_rpm": "3600",
+}
+PETROL_TWIN: Plate = {
+    **SMALL_PETROL,
+    "cylinders": "2",
+    "layout": "opposed",
+    "firing_order": "1-2",
+    "bore": "80",
+    "stroke": "68",
+    "lash_intake": "0.08-0.14",
+    "lash_exhaust": "0.12-0.18",
+    "oil_grade": "10W-30",
+    "sump": "1.7",
 }

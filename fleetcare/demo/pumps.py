@@ -18,6 +18,7 @@ from fleetcare.demo.tasks import (
     OIL,
 )
 from fleetcare.demo.use import scaled, winter_pump
+from fleetcare.demo.wear import Gauged
 
 _SERVICE: Mapping[str, object] = {"anchor": "on-grid", "work": "drain", "caution": HOT_OIL, "labour": "2h"}
 _WEEDSCREEN: Mapping[str, object] = {
@@ -63,6 +64,7 @@ _NORTH_SLUICE = (
                 {"repair": "Raw water pump seal renewed", "component": "raw water pump", "downtime": "5h"},
             ),
         ),
+        gauged=Gauged("Valve lash", every=3, hot=1),
     ),
     Item(
         "PS-02",
@@ -78,6 +80,7 @@ _NORTH_SLUICE = (
             Kept({"name": "1000 h service", "every": ["1000h"], **_SERVICE, "covers": ["500 h service"]}, OnGrid(1000)),
             Kept({**LASH, "every": ["1000h"], "needs_sheet": "lash", "last_done": [Ago(300)]}),
         ),
+        gauged=Gauged(every=3, skipped=4),
         as_new=True,
     ),
 )
@@ -97,6 +100,7 @@ _CRAKE_DROVE = (
         tasks=(
             Kept({**OIL, "every": ["300h"]}, Counted(250, 14)),
             Kept({**FUEL_FILTER, "every": ["500h"], "grace": ["25h"]}, Counted(500, -9)),
+            Kept({**LASH, "every": ["1000h"]}, Counted(1000, 190), note="exhaust of 4 had closed; set"),
             Kept(INJECTORS),
             Kept({"name": "Timing gear", "every": ["6000h"], "last_done": ["4000h"], "work": "inspection"}),
         ),
@@ -115,6 +119,8 @@ _CRAKE_DROVE = (
                 },
             ),
         ),
+        # A seat that burns away: white smoke, an injector not yet tested, and a gap that closes.
+        gauged=Gauged("Valve lash", every=2, closing={"4E": 50}),
     ),
     Item(
         "PS-06",
@@ -130,7 +136,9 @@ _CRAKE_DROVE = (
             Kept("Quarterly look-round", Dated(3, 41, most=3)),
             Kept("Tank water drained", Dated(3, 6, most=3), note="half a litre of water, no sludge"),
             Kept("Annual service", Dated(12, 75, most=2)),
+            Kept("Valve lash", Counted(1000, 700, most=1)),
         ),
+        gauged=Gauged("Valve lash", every=4),
         told=(Told(75, Verb.LOG, {"repair": "Fan belt renewed, frayed at the edge", "part": ["Fan belt:1"]}),),
     ),
 )
@@ -186,6 +194,7 @@ _HERN_CORNER = (
             Kept({"name": "Big-end bolts", "every": ["8000h"], "work": "inspection", "labour": "12h"}),
         ),
         told=(Told(96, Verb.LOG, {"top_up": "6L", "by": "Fenn"}),),
+        gauged=Gauged("Valve bridges and lash", every=4),
     ),
 )
 _WITHY_LODE = (

@@ -6,6 +6,7 @@ from fleetcare.demo.plates import GAS_SET, SET, V_SET
 from fleetcare.demo.steps import Verb
 from fleetcare.demo.tasks import BATTERIES, BELTS, COOLANT, EXERCISE, OIL, WEEKLY
 from fleetcare.demo.use import now_and_then, self_test, standby
+from fleetcare.demo.wear import Gauged
 
 _LOAD_TEST = {
     "name": "Load test",
@@ -78,6 +79,7 @@ SETS = (
             ),
             Kept({**BATTERIES, "every": ["36mo"], "part": ["Battery 12 V:4"]}, Dated(36, 200)),
         ),
+        gauged=Gauged(every=6, pace=3),
     ),
     Item(
         "SB-05",

@@ -17,7 +17,13 @@ OIL: Values = {
     "part": ["Oil filter:1"],
     "caution": HOT_OIL,
 }
-LASH: Values = {"name": "Valve lash", "work": "lash", "labour": "3h", "caution": ROTATING}
+LASH: Values = {
+    "name": "Valve lash",
+    "work": "lash",
+    "needs_sheet": "lash",
+    "labour": "3h",
+    "caution": ROTATING,
+}
 FUEL_FILTER: Values = {
     "name": "Fuel filter",
     "work": "filter",

@@ -52,7 +52,8 @@ _KINDS = (
     _Kind("CP", "Compressor", SMALL_DIESEL, now_and_then),
 )
 
-_COUNTED: tuple[tuple[Values, int], ...] = ((OIL, 250), (FUEL_FILTER, 500), (AIR_FILTER, 500), (LASH, 1000))
+_LASH = {**LASH, "needs_sheet": ""}  # nothing is measured here: all work comes from files of cards
+_COUNTED: tuple[tuple[Values, int], ...] = ((OIL, 250), (FUEL_FILTER, 500), (AIR_FILTER, 500), (_LASH, 1000))
 """Tasks by running hours, with how many."""
 
 _DATED: tuple[tuple[Values, int], ...] = ((COOLANT, 24), (BATTERIES, 6), (BELTS, 12), (HOSES, 12), (LIFTING, 12))
