@@ -5,8 +5,6 @@ from dataclasses import dataclass, field, replace
 from datetime import date
 from typing import TYPE_CHECKING
 
-from fleetcare.domain.lines import PastWork
-from fleetcare.domain.log import Done
 from fleetcare.domain.meters import LifeFigure, Reading
 from fleetcare.domain.quantities import Kind
 from fleetcare.domain.schedules import Task
@@ -24,11 +22,12 @@ from fleetcare.operations.against_past import (
     say_collision,
     what_falls_off,
 )
+from fleetcare.operations.closing import closings, done_by, say_open
 from fleetcare.operations.find import FoundItem, FoundMeter, find_item, find_meters, pick_meter
-from fleetcare.operations.load import Trial, entry_lives, item_facts, own_readings
-from fleetcare.rules.due.covering import closure
+from fleetcare.operations.load import Trial, item_facts
+from fleetcare.operations.sheets_closing import NONE_CAME, why_open
+from fleetcare.rules.due.closing import Closing, with_done
 from fleetcare.rules.due.facts import ItemFacts
-from fleetcare.rules.due.replay import replay
 
 if TYPE_CHECKING:
     from sqlalchemy import Connection
@@ -140,68 +139,38 @@ def _ask_for_sheets(facts: ItemFacts, line: Understood) -> Sequence[Question]:
     questions = []
     for task in _tasks_named(facts, line):
         sheet = task.version_on(line.on).needs_sheet
-        if sheet:
+        if why := why_open(task, line.on, NONE_CAME):
             start, end = where[task.name].start, where[task.name].end
             choices = [Choice(f"with its {sheet} sheet", None, "sheet")]
             if len(line.tasks) == 1:
                 choices.append(Choice("done in part, it stays open", f"{line.text[start:end]} part-done"))
-            questions.append(Question(start, end, f"{task.name} closes only with its {sheet} sheet", tuple(choices)))
+            questions.append(Question(start, end, f"{task.name} {why}", tuple(choices)))
     return questions
 
 
 def _do_work(outcome: Outcome, line: Understood) -> None:
     """Let the tasks of a line be done, and with them what they cover, as the log does when it is stored."""
     facts = outcome.facts
-    tasks = {task.id: task for task in facts.tasks}
-    covers = {task.id: task.version_on(line.on).covers for task in facts.tasks}
-    done = Done(_ENTRY, _ENTRY, line.on, entry_lives(facts.counters, own_readings(facts.counters), _ENTRY, line.on))
+    done = done_by(facts, _ENTRY, line.on)
     named = [task.id for task in _tasks_named(facts, line)]
-    stored: list[int] = []
-    for big in [tasks[task_id] for task_id in named]:
-        work = _work_of(facts, big, done)
-        stored.append(big.id)
-        _note(outcome, big, work)
-        if work.counted:
-            outcome.closed.append(big)
-        for task in [tasks[task_id] for task_id in closure(covers, big.id) if task_id in tasks]:
-            version = task.version_on(line.on)
-            if task.id in (*named, *stored) or task.removed_on is not None or version.on_condition:
-                continue
-            work = _work_of(facts, task, done)
-            if version.needs_sheet:
-                outcome.open.append((task, f"it closes only with its {version.needs_sheet} sheet"))
-                continue
-            _note(outcome, task, work)
-            if work.counted:
-                stored.append(task.id)
-                outcome.covered.append((task, big))
-    counted = {trigger.kind for task_id in stored for trigger in tasks[task_id].version_on(line.on).counted}
+    stored: list[Task] = []
+    for one in closings(facts, done, named, NONE_CAME, "say what the dial showed"):
+        if not one.closes:
+            outcome.open.append((one.task, say_open(one)))
+        elif one.along_with is None:
+            outcome.closed.append(one.task)
+        else:
+            outcome.covered.append((one.task, one.along_with))
+        if one.closes and (one.work.served or one.work.note):
+            outcome.periods.append((one.task, _say_period(one)))
+        if one.closes or one.along_with is None:
+            stored.append(one.task)
+    counted = {trigger.kind for task in stored for trigger in task.version_on(line.on).counted}
     outcome.assumed = {kind: life for kind, life in done.life.items() if kind in counted and life.approximate}
-    outcome.facts = _with_done(facts, stored, done)
+    outcome.facts = with_done(facts, [task.id for task in stored], done)
 
 
-def _note(outcome: Outcome, task: Task, work: PastWork) -> None:
-    """Keep what is worth saying of work on a task: the period it serves, or why it counts for none."""
-    if not work.counted:
-        outcome.open.append((task, work.note))
-    elif work.served or work.note:
-        said = f"serves {work.served}" if work.served else f"{work.note}, the next one stays open"
-        outcome.periods.append((task, said))
-
-
-def _work_of(facts: ItemFacts, task: Task, done: Done) -> PastWork:
-    """Say what an entry does to a task. Refuses work without a figure the task needs."""
-    for trigger in task.version_on(done.on).counted:
-        if trigger.kind in facts.counters and trigger.kind not in done.life:
-            raise Refused(
-                f"{task.name} counts {trigger.kind}, and no reading of {facts.item.tag} lies on or before {done.on}",
-                "say what the dial showed",
-            )
-    past = replay(_with_done(facts, [task.id], done), task).past
-    return next(work for work in past if work.number == done.number)
-
-
-def _with_done(facts: ItemFacts, task_ids: Sequence[int], done: Done) -> ItemFacts:
-    """Add an entry to the work done on some tasks."""
-    more = {task_id: (*facts.done.get(task_id, ()), done) for task_id in task_ids}
-    return replace(facts, done={**facts.done, **more})
+def _say_period(closing: Closing) -> str:
+    """Say which period work serves, or why it serves none."""
+    work = closing.work
+    return f"serves {work.served}" if work.served else f"{work.note}, the next one stays open"

@@ -1,22 +1,21 @@
 """Write down what was done: tasks with what they cover, repairs, defects with follow-ups, top-ups."""
 
 from collections.abc import Sequence
-from dataclasses import dataclass, field, replace
+from dataclasses import dataclass, field
 from datetime import date
 from decimal import Decimal
 from typing import TYPE_CHECKING
 
 from fleetcare.db.tables import LogEntry, LogPart, LogTask
-from fleetcare.domain.lines import PastWork
 from fleetcare.domain.log import Done
 from fleetcare.domain.quantities import Figure, plain
 from fleetcare.domain.schedules import Task
-from fleetcare.domain.schedules import TaskVersion as Version
 from fleetcare.drafts.work import LogDraft
 from fleetcare.errors import Refused
+from fleetcare.operations.closing import closings, done_by, say_open
 from fleetcare.operations.find import FoundItem, find_item, find_meters, find_task, pick_meter
 from fleetcare.operations.follow_ups import on_condition, raise_follow_ups
-from fleetcare.operations.load import entry_lives, item_facts, own_readings
+from fleetcare.operations.load import item_facts
 from fleetcare.operations.names import person_id
 from fleetcare.operations.readings import NewReading, store_reading
 from fleetcare.operations.sheets import fresh_sheet, keep_sheet
@@ -26,12 +25,10 @@ from fleetcare.operations.sheets_closing import (
     came_along,
     refuse_without_sheet,
     say_still_open,
-    why_open,
 )
 from fleetcare.operations.sheets_judge import JudgedSheet
-from fleetcare.rules.due.covering import closure
+from fleetcare.rules.due.closing import Closing
 from fleetcare.rules.due.facts import ItemFacts
-from fleetcare.rules.due.replay import replay
 from fleetcare.rules.due.row import unit_of
 from fleetcare.rules.explain import say_amount
 
@@ -156,87 +153,45 @@ def close_tasks(
     same day, are not covered once more. `sheets` are the kinds that came along, each with why it closes nothing; with
     `leave_open` a task its sheet does not close is done in part.
     """
-    tasks = {task.id: task for task in facts.tasks}
-    covers = {task.id: task.version_on(entry.on).covers for task in facts.tasks}
-    named = [*task_ids, *elsewhere]
-    for task_id in dict.fromkeys(task_ids):
-        task = tasks[task_id]
-        version = task.version_on(entry.on)
-        if part_done or (leave_open and why_open(task, entry.on, sheets)):
-            session.add(LogTask(entry_id=entry.id, task_id=task_id, part_done=True))
-            logged.part_done.append(task.name)
-            continue
-        refuse_without_sheet(task, entry.on, sheets)
-        work = _preview(facts, task, version, entry)
-        row = LogTask(entry_id=entry.id, task_id=task_id, served_period=work.served)
-        session.add(row)
-        logged.closed.append(task.name)
-        logged.notes.extend(_say_no_figure(facts, task, version, entry))
-        if work.note:
-            logged.notes.append(_say_note(task, work))
-        along = closure(covers, task_id)
-        if along:
+    if part_done:
+        _note_part_done(session, facts, entry, task_ids, logged)
+        return
+    done = done_by(facts, entry.id, entry.on)
+    named: dict[int, LogTask] = {}
+    for one in closings(facts, done, task_ids, sheets, "give the dial figure with --at", elsewhere):
+        row = LogTask(entry_id=entry.id, task_id=one.task.id, served_period=one.work.served)
+        if one.along_with is None:
+            refuse_without_sheet(one.task, entry.on, sheets)
+            named[one.task.id] = row
+            session.add(row)
+            logged.closed.append(one.task.name)
+            logged.notes += [*_say_no_figure(facts, one.task, done), *_say_note(one)]
+        elif one.closes:
             session.flush()  # only a stored row can be named by what it covers
-            _cover(session, facts, tasks, along, named, entry, row, logged, sheets)
-
-
-def _cover(
-    session: "Session",
-    facts: ItemFacts,
-    tasks: dict[int, Task],
-    covered: Sequence[int],
-    named: list[int],
-    entry: LogEntry,
-    big: LogTask,
-    logged: Logged,
-    sheets: Sheets,
-) -> None:
-    """Log the small jobs a big one does along with it, save those without their sheet or outside their window."""
-    for task_id in covered:
-        task = tasks.get(task_id)
-        if task is None or task_id in named or task.removed_on is not None:
-            continue
-        version = task.version_on(entry.on)
-        if version.on_condition:
-            continue
-        work = _preview(facts, task, version, entry)
-        if why := why_open(task, entry.on, sheets):
-            logged.notes.append(f"{task.name} stays open: it {why}")
-        elif not work.counted:
-            logged.notes.append(f"{task.name} stays open: {work.note}")
+            row.covered_by_id = named[one.along_with.id].id
+            session.add(row)
+            logged.covered.append((one.task.name, one.along_with.name))
         else:
-            session.add(LogTask(entry_id=entry.id, task_id=task_id, covered_by_id=big.id, served_period=work.served))
-            named.append(task_id)
-            logged.covered.append((task.name, tasks[big.task_id].name))
+            logged.notes.append(f"{one.task.name} stays open: {say_open(one)}")
 
 
-def _preview(facts: ItemFacts, task: Task, version: Version, entry: LogEntry) -> PastWork:
-    """Say what an entry will do to a task, before it is stored. Refuses work without a figure the task needs."""
-    lives = entry_lives(facts.counters, own_readings(facts.counters), entry.id, entry.on)
-    for trigger in version.counted:
-        if trigger.kind in facts.counters and trigger.kind not in lives:
-            raise Refused(
-                f"{task.name} counts {trigger.kind}, and no reading of {facts.item.tag} lies on or before {entry.on}",
-                "give the dial figure with --at",
-            )
-    calendar = version.calendar
-    if calendar is None or (calendar.once_each is None and calendar.window_days is None):
-        return PastWork(entry.id, entry.id, entry.on)  # nothing else can leave a task open, or serves a period
-    done = Done(entry.id, entry.id, entry.on, lives)
-    entries = (*facts.done.get(task.id, ()), done)
-    past = replay(replace(facts, done={**facts.done, task.id: entries}), task).past
-    return next(work for work in past if work.number == entry.id)
+def _note_part_done(
+    session: "Session", facts: ItemFacts, entry: LogEntry, task_ids: Sequence[int], logged: Logged
+) -> None:
+    names = {task.id: task.name for task in facts.tasks}
+    for task_id in dict.fromkeys(task_ids):
+        session.add(LogTask(entry_id=entry.id, task_id=task_id, part_done=True))
+        logged.part_done.append(names[task_id])
 
 
-def _say_no_figure(facts: ItemFacts, task: Task, version: Version, entry: LogEntry) -> list[str]:
+def _say_no_figure(facts: ItemFacts, task: Task, done: Done) -> list[str]:
     """Say what work counts from that has no figure, and no later reading yet to tell what the dial showed."""
-    lives = entry_lives(facts.counters, own_readings(facts.counters), entry.id, entry.on)
     notes = []
-    for trigger in version.counted:
+    for trigger in task.version_on(done.on).counted:
         counter = facts.counters.get(trigger.kind)
         latest = counter.latest if counter is not None else None
-        is_counting = counter is not None and counter.life_at(Decimal(0), entry.on) is not None
-        if latest is not None and is_counting and latest.on < entry.on and lives[trigger.kind].approximate:
+        is_counting = counter is not None and counter.life_at(Decimal(0), done.on) is not None
+        if latest is not None and is_counting and latest.on < done.on and done.life[trigger.kind].approximate:
             shown = say_amount(latest.life, unit_of(facts, trigger.kind))
             notes.append(
                 f"{task.name} counts from ~{shown}, the reading of {latest.on}, until a later one is there;"
@@ -245,10 +200,11 @@ def _say_no_figure(facts: ItemFacts, task: Task, version: Version, entry: LogEnt
     return notes
 
 
-def _say_note(task: Task, work: PastWork) -> str:
-    if work.counted:
-        return f"{task.name}: {work.note}; the next period stays open"
-    return f"{task.name} stays open: {work.note}, so this work does not count"
+def _say_note(closing: Closing) -> list[str]:
+    name, work = closing.task.name, closing.work
+    if not work.counted:
+        return [f"{name} stays open: {work.note}, so this work does not count"]
+    return [f"{name}: {work.note}; the next period stays open"] if work.note else []
 
 
 def _kinds(draft: LogDraft, has_tasks: bool) -> list[tuple[str, str]]:
