@@ -13,8 +13,8 @@ from fleetcare.rules.lash_past import Aside, PastValue, PointPast
 from fleetcare.rules.trend_row import Dot, TrendRow
 from fleetcare.rules.trends import cut_at_adjustments
 
-PLACES: Mapping[str, int] = {"mm": 2, "in": 3}
-"""How many decimals a gap is drawn with."""
+PLACES: Mapping[str, int] = {"mm": 3, "in": 4}
+"""How many decimals stand at the side of a plot: one more than a gauge has, as its marks fall between blades."""
 
 _BRIDGE = 2
 _FEW = 2

@@ -43,7 +43,7 @@ def measured(ctx: Context) -> Context:
 def test_each_point_stands_over_the_hours_of_life_cut_where_it_was_set(ctx: Context) -> None:
     found = trends(measured(ctx))
     assert [row.name for row in found.rows] == ["1I", "1E", "2I", "2E"]
-    assert (found.unit, found.places, found.counts_hours, found.until) == ("mm", 2, True, 1500)
+    assert (found.unit, found.places, found.counts_hours, found.until) == ("mm", 3, True, 1500)
     assert [[(dot.x, dot.y, dot.is_left) for dot in segment] for segment in row(ctx).segments] == [
         [(500, 0.45, False), (1000, 0.39, False)],
         [(1000, 0.46, True), (1500, 0.42, False)],
@@ -118,7 +118,7 @@ def test_a_machine_has_no_valves(ctx: Context) -> None:
 
 def test_limits_in_inches_are_drawn_in_inches_and_engines_without_any_say_so(ctx: Context) -> None:
     engine(ctx, "P-01", cylinders=2, lash_exhaust="0.016-0.020in")
-    assert (trends(ctx).unit, trends(ctx).places) == ("in", 3)
+    assert (trends(ctx).unit, trends(ctx).places) == ("in", 4)
     engine(ctx, "P-02", cylinders=1)
     assert trends(ctx, "P-02").unit == "mm"
     assert [row.stands for row in trends(ctx, "P-02").rows] == ["never measured"] * 2

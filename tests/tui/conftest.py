@@ -69,6 +69,13 @@ def bench(made_bench: Path, tmp_path: Path) -> Context:
 
 
 @pytest.fixture
+def demo(tmp_path: Path) -> Context:
+    """The demo fleet as it is committed, a copy of the test's own, on the day it stands on."""
+    path = shutil.copy(Path(__file__).parents[2] / "demo_fleet.db", tmp_path / "demo.db")
+    return Context(str(path), clock=lambda: NOW, uids=counted_uids())
+
+
+@pytest.fixture
 def db(made_yard: Path, tmp_path: Path) -> Path:
     """The small yard, of the test's own."""
     return Path(shutil.copy(made_yard, tmp_path / "yard.db"))

@@ -11,7 +11,6 @@ from typing import NamedTuple
 
 import pytest
 
-from fleetcare.context import Context
 from tests.tui.conftest import Opened, seen
 
 PICTURES = Path(__file__).with_name("pictures")
@@ -19,12 +18,12 @@ SMALL, LARGE = (80, 24), (120, 40)
 
 
 class Picture(NamedTuple):
-    """What is pressed, in which size, and what the terminal says of itself."""
+    """What is pressed, in which size, what the terminal says of itself, and the fixture of another yard than the small one."""
 
     size: tuple[int, int]
     keys: tuple[str, ...] = ()
     terminal: Mapping[str, str] = {}
-    is_bench: bool = False
+    yard: str = ""
 
 
 def _typed(text: str) -> tuple[str, ...]:
@@ -64,7 +63,7 @@ SCREENS = {
 def _sheet(engine: str, *keys: str, size: tuple[int, int] = SMALL, terminal: Mapping[str, str] = {}) -> Picture:
     """Give the picture of the lash sheet of an engine of the bench, with some values in it."""
     down = ("down",) * ("B-1", "B-2", "B-4", "B-6", "B-8").index(engine)
-    return Picture(size, (*down, "w", *"1000", "enter", *"Fenn", "ctrl+s", *keys), terminal, is_bench=True)
+    return Picture(size, (*down, "w", *"1000", "enter", *"Fenn", "ctrl+s", *keys), terminal, "bench")
 
 
 _BLADES = (*"25", "enter", "enter", *"36", "enter", *"45", "enter", *"18")
@@ -79,15 +78,22 @@ SCREENS |= {
     "lash-eight-large": _sheet("B-8", *_BLADES, size=LARGE),
 }
 
+_CLOSING = ("2", "slash", *"ps-03", "enter", "enter", "g", *("down",) * 7)
+SCREENS |= {
+    "trend-closing": Picture(SMALL, _CLOSING, {"NO_COLOR": "1"}, "demo"),
+    "trend-closing-large": Picture(LARGE, _CLOSING, yard="demo"),
+}
+
 
 @pytest.mark.parametrize("name", SCREENS)
 async def test_a_screen_looks_as_it_did(
-    opened: Opened, bench: Context, monkeypatch: pytest.MonkeyPatch, name: str
+    opened: Opened, request: pytest.FixtureRequest, monkeypatch: pytest.MonkeyPatch, name: str
 ) -> None:
     picture = SCREENS[name]
     for variable, value in picture.terminal.items():
         monkeypatch.setenv(variable, value)
-    async with opened(*picture.keys, size=picture.size, context=bench if picture.is_bench else None) as pilot:
+    context = request.getfixturevalue(picture.yard) if picture.yard else None
+    async with opened(*picture.keys, size=picture.size, context=context) as pilot:
         drawn = without_fonts(pilot.app.export_screenshot(title=f"fleetcare, {name}"))
         text = "\n".join(seen(pilot))
     path = PICTURES / f"{name}.svg"
