@@ -7,10 +7,11 @@ from textual.containers import Horizontal
 from textual.widgets import Input, Static
 
 from fleetcare.tui.frame import Notice
+from fleetcare.tui.widgets.plain_input import PlainInput
 from fleetcare.tui.writing import WritingScreen
 
 
-class FindLine(Input):
+class FindLine(PlainInput):
     """What is typed narrows the list at once; Enter keeps it, Esc takes it back."""
 
     BINDINGS: ClassVar[list[BindingType]] = [Binding("escape", "take_back", show=False)]

@@ -7,6 +7,7 @@ import pytest
 from textual.pilot import Pilot
 
 from fleetcare.context import Context
+from fleetcare.tui.finding import FindLine
 from fleetcare.tui.frame import FramedScreen
 from fleetcare.tui.screens.engines import EnginesScreen
 from fleetcare.tui.screens.entry import EntryScreen
@@ -391,3 +392,15 @@ async def test_without_colour_the_answer_marked_can_be_told(opened: Opened, monk
         await press(pilot, "down")
         assert line_with(pilot, "▌ Oil and filter")
         assert isinstance(pilot.app.screen, FramedScreen)
+
+
+async def test_what_is_pasted_cannot_drive_the_terminal(opened: Opened) -> None:
+    async with opened() as pilot:
+        screen = await type_line(pilot, "sb1 \x1b[2J\u202e 25")
+        assert line_with(pilot, "▌entry line  sb1 \ufffd[2J\ufffd 25")
+        assert screen.text == "sb1 \x1b[2J\u202e 25"
+        assert "\\x1b[2J\\u202e: what is it?" in said(pilot)
+    async with opened("slash") as pilot:
+        pilot.app.screen.query_one(FindLine).insert_text_at_cursor("\x9b31m")
+        await settle_down(pilot)
+        assert line_with(pilot, "find \ufffd31m")
