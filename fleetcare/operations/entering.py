@@ -30,7 +30,7 @@ if TYPE_CHECKING:
     from sqlalchemy.orm import Session
 
     from fleetcare.drafts.items import FitDraft, StatusDraft
-    from fleetcare.drafts.work import CorrectionDraft, DeferralDraft, LogDraft, RestoreDraft, VoidDraft
+    from fleetcare.drafts.work import CorrectionDraft, DeferralDraft, LogDraft, MeasureDraft, RestoreDraft, VoidDraft
 
 
 @dataclass(slots=True)

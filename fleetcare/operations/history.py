@@ -20,7 +20,10 @@ if TYPE_CHECKING:
 
 @dataclass(frozen=True, slots=True)
 class HistoryEntry:
-    """One log entry as it stands in the history; superseded and voided ones stay readable."""
+    """One log entry as it stands in the history; superseded and voided ones stay readable.
+
+    `tasks` names what it closed, `sheet` the kind of sheet it stands with, empty without one.
+    """
 
     number: int
     on: date
@@ -29,6 +32,8 @@ class HistoryEntry:
     by: str
     figures: str
     remark: str
+    tasks: str = ""
+    sheet: str = ""
 
 
 @dataclass(frozen=True, slots=True)
@@ -119,7 +124,17 @@ def _entry(row: Row, told: _Told, figures: str) -> HistoryEntry:
         f"{plain(Decimal(downtime))} h out of service" if downtime else "",
         note,
     ]
-    return HistoryEntry(number, known_day(day), kind, _joined(what, "; "), by, figures, _say_chain(*chain))
+    return HistoryEntry(
+        number=number,
+        on=known_day(day),
+        kind=kind,
+        what=_joined(what, "; "),
+        by=by,
+        figures=figures,
+        remark=_say_chain(*chain),
+        tasks=", ".join(name for _, name, part, covered in told.tasks if not part and not covered),
+        sheet=next((sheet for _, sheet, *_ in told.sheets), ""),
+    )
 
 
 def _say_sheet(kind: str, condition: str, gauge: str, values: int) -> str:

@@ -25,6 +25,7 @@ from fleetcare.operations.sheets_closing import (
     came_along,
     refuse_without_sheet,
     say_still_open,
+    why_open,
 )
 from fleetcare.operations.sheets_judge import JudgedSheet
 from fleetcare.rules.due.closing import Closing
@@ -153,9 +154,10 @@ def close_tasks(
     same day, are not covered once more. `sheets` are the kinds that came along, each with why it closes nothing; with
     `leave_open` a task its sheet does not close is done in part.
     """
-    if part_done:
-        _note_part_done(session, facts, entry, task_ids, logged)
-        return
+    tasks = {task.id: task for task in facts.tasks}
+    in_part = [one for one in task_ids if part_done or (leave_open and why_open(tasks[one], entry.on, sheets))]
+    _note_part_done(session, facts, entry, in_part, logged)
+    task_ids = [one for one in task_ids if one not in in_part]
     done = done_by(facts, entry.id, entry.on)
     named: dict[int, LogTask] = {}
     for one in closings(facts, done, task_ids, sheets, "give the dial figure with --at", elsewhere):

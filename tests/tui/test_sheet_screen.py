@@ -10,6 +10,7 @@ from fleetcare.context import Context
 from fleetcare.domain.sheets import CellKey, Phase
 from fleetcare.tui.forms.base import Subject
 from fleetcare.tui.screens.due import DueScreen
+from fleetcare.tui.screens.item import ItemScreen
 from fleetcare.tui.screens.sheet import SheetScreen
 from fleetcare.tui.writing import WritingScreen
 from tests.tui.conftest import Opened, line_with, press, seen, settle_down
@@ -317,3 +318,45 @@ async def test_the_cautions_of_the_job_stand_below_the_valves(opened: Opened, be
         assert line_with(pilot, "Shut the engine down and isolate it")
         await press(pilot, "pagedown")
         assert line_with(pilot, "The engine maker's manual comes before these limits")
+
+
+async def stored_sheet(pilot: Pilot[None]) -> SheetScreen:
+    """Store a sheet of the single and open it again from the history of its engine."""
+    await sheet_of(pilot, SINGLE)
+    await enter_all(pilot, "25", "", "36", "45")
+    await press(pilot, "ctrl+s")
+    pilot.app.push_screen(ItemScreen("B-1"))
+    await press(pilot, "h", "s")
+    screen = pilot.app.screen
+    assert isinstance(screen, SheetScreen)
+    return screen
+
+
+async def test_a_stored_sheet_is_opened_from_the_history_and_mended(opened: Opened, bench: Context) -> None:
+    async with opened(size=SMALL, context=bench) as pilot:
+        screen = await stored_sheet(pilot)
+        assert line_with(pilot, " E ", "0.36<", "0.45·")
+        screen.grid.go(CellKey("lash", "1E", Phase.FOUND))
+        await press(pilot, *"39", "ctrl+s")
+        assert isinstance(pilot.app.screen, ItemScreen)
+        assert "corrects entry 1" in said(pilot)
+    now = "select value from sheet_value v join sheet s on s.id = v.sheet_id where s.entry_id = 2 order by v.id"
+    assert rows(bench, now) == [("0.25",), ("0.39",), ("0.45",)]
+    assert rows(bench, "select count(*) from sheet_value where sheet_id = 1") == [(3,)]
+
+
+async def test_a_sheet_mended_to_close_nothing_leaves_its_task_open(opened: Opened, bench: Context) -> None:
+    async with opened(size=SMALL, context=bench) as pilot:
+        screen = await stored_sheet(pilot)
+        screen.grid.go(CellKey("lash", "1E", Phase.LEFT))
+        await press(pilot, "delete", "ctrl+s")
+        assert line_with(pilot, "Valve lash does not close with this sheet: 1E found out and not set.")
+        await press(pilot, "o")
+        assert "Done in part, still open: Valve lash." in said(pilot)
+
+
+async def test_an_entry_without_a_sheet_has_none_to_open(opened: Opened, bench: Context) -> None:
+    async with opened(size=SMALL, context=bench) as pilot:
+        pilot.app.push_screen(ItemScreen("B-1"))
+        await press(pilot, "h", "s")
+        assert line_with(pilot, "put the cursor on an entry with a sheet")

@@ -1,6 +1,7 @@
 """The page of an engine or machine: plate, meters, lines, history and trends, to read."""
 
-from collections.abc import Iterable
+from collections.abc import Iterable, Mapping
+from functools import partial
 from typing import TYPE_CHECKING
 
 from textual.containers import Vertical
@@ -26,7 +27,9 @@ if TYPE_CHECKING:
     from datetime import date
 
     from sqlalchemy import Connection
+    from sqlalchemy.orm import Session
 
+    from fleetcare.operations.entering import Entered
     from fleetcare.operations.life_plot import LifeCurve
     from fleetcare.operations.page import FullPage
     from fleetcare.operations.review import ReviewLine
@@ -191,6 +194,25 @@ class ItemScreen(WritingScreen):
         else:
             self.notice.say("Turn to the history (h) and put the cursor on an entry.")
 
+    def action_sheet(self) -> None:
+        """Open the sheet of the entry under the cursor of the history, to read or to mend."""
+        entry: HistoryEntry | None = self.query_one("#history LongList", LongList).current
+        if self.part == "history" and entry is not None and entry.sheet:
+            self.open_sheet(entry)
+        else:
+            self.notice.say("Turn to the history (h) and put the cursor on an entry with a sheet.")
+
+    def open_sheet(self, entry: "HistoryEntry") -> None:
+        """Open the sheet of an entry."""
+        from fleetcare.tui.screens.sheet import SheetScreen
+        from fleetcare.tui.sheets.all import SHEETS
+        from fleetcare.tui.sheets.base import SheetFor
+
+        whose = self.page.item.facts.item.name if self.page is not None else ""
+        about = SheetFor(self.tag, entry.on, entry.tasks, f"entry {entry.number}  {whose}", entry.number)
+        enter = partial(_mend_sheet, entry.number, self.context.today())
+        self.app.push_screen(SheetScreen(SHEETS[entry.sheet], about, enter), self._written)
+
     def action_working(self) -> None:
         """Show how the line under the cursor comes about."""
         from fleetcare.tui.screens.working import WorkingScreen
@@ -212,6 +234,17 @@ class ItemScreen(WritingScreen):
         curves = self.page.curves if self.page is not None else ()
         plot = plot_of(curves[self.meter % len(curves)], self.day) if curves else None
         self.query_one("#meters PlotView", PlotView).show(plot)
+
+
+def _mend_sheet(entry: int, today: "date", session: "Session", came: "Mapping[str, object]") -> "Entered":
+    """Correct the sheet of an entry."""
+    from fleetcare.drafts.work import CorrectionDraft
+    from fleetcare.operations.entering import enter_correction
+
+    given = {name: value for name, value in came.items() if value is not None}
+    if given.pop("leave_open", False):
+        given["part_done"] = True
+    return enter_correction(session, CorrectionDraft.model_validate({"entry": entry, **given}), today)
 
 
 def plot_of(curve: "LifeCurve", today: "date") -> Plot:

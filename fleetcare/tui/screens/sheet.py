@@ -181,7 +181,7 @@ class SheetScreen(StoringScreen):
             return
         if any(self._ask_of_slip(key) for key in read.slips()):
             return
-        for ask in read.asks(self.about.task):
+        for ask in read.asks(self.about):
             if ask.name not in self._said:
                 self._asked = ask.name
                 self.query_one(Question).ask(ask.words, ask.answers)

@@ -77,8 +77,8 @@ class ReadSheet(ABC):
         """Give the cell to fill in after one, or before it; None where there is none."""
 
     @abstractmethod
-    def asks(self, task: str) -> Sequence[Ask]:
-        """Give what is to be asked before it is stored as the sheet of a task, or of none."""
+    def asks(self, about: SheetFor) -> Sequence[Ask]:
+        """Give what is to be asked before it is stored for what it was taken for."""
 
     @abstractmethod
     def came(self, said: Mapping[str, bool]) -> Mapping[str, object]:

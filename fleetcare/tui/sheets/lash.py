@@ -146,15 +146,15 @@ class ReadLash(ReadSheet):
             at += step
         return None
 
-    def asks(self, task: str) -> Sequence[Ask]:
+    def asks(self, about: SheetFor) -> Sequence[Ask]:
         """Ask what to do with a task the sheet does not close, and about what is left out of limits."""
         judged, asks = self._typed.judged, []
         why, defect = judged.why_open(), judged.defect()
-        if task and why:
+        if about.task and why:
             stays = Answer("o", "keep what is typed; it stays open", {"leave_open": True})
             closes = Answer("s", "I am sure: close it as it stands", {"sure": True})
-            asks.append(Ask("open", f"{task} does not close with this sheet: {why}.", (stays, closes)))
-        if defect:
+            asks.append(Ask("open", f"{about.task} does not close with this sheet: {why}.", (stays, closes)))
+        if defect and about.entry is None:
             raise_it = Answer("f", "raise a follow-up, due at once", {"follow_up": True})
             asks.append(Ask("defect", f"{defect}.", (raise_it, Answer("w", "store it without one"))))
         return asks
