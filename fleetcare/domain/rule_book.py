@@ -212,7 +212,10 @@ class Pattern:
     row: int = 0
 
 
-Shape = Bounds | AgainstSheet | Change | Rate | Statistical | Pattern
+SingleShape = Bounds | AgainstSheet | Change | Rate | Statistical
+"""The shapes that work out a figure for each value."""
+
+Shape = SingleShape | Pattern
 
 
 @dataclass(frozen=True, slots=True)

@@ -6,7 +6,7 @@ percent of the rated kW; one in percent is taken as it stands. A year's total su
 the sheet's own day whose words fit the rule.
 """
 
-from collections.abc import Iterator
+from collections.abc import Sequence
 from decimal import Decimal
 
 from fleetcare.domain.findings import Step
@@ -18,25 +18,27 @@ from fleetcare.rules.judging.values import Measured, fresh_of, judged_phases, st
 from fleetcare.rules.judging.words import says
 
 
-def figures(rule: Rule, shape: Bounds, values: list[Measured], facts: MeasuredFacts) -> Iterator[Figure | CannotTell]:
-    """Give a figure for each value, in the unit of the rule; of a year's total one for the sheet."""
-    work = {Basis.LESS_NEW: _less_new, Basis.NAMEPLATE: _share_of_nameplate}.get(shape.basis, _as_measured)
-    sums = [values] if shape.basis is Basis.YEAR else [[one] for one in values]
-    for summed in sums:
-        try:
-            yield _total_of_year(rule, summed, facts) if shape.basis is Basis.YEAR else work(rule, summed[0], facts)
-        except CannotTell as why:
-            yield why
+def figure(rule: Rule, shape: Bounds, one: Measured, values: Sequence[Measured], facts: MeasuredFacts) -> Figure:
+    """Give the figure of a value, in the unit of the rule; of a year's total that of all values of the sheet."""
+    match shape.basis:
+        case Basis.YEAR:
+            return _total_of_year(rule, values, facts)
+        case Basis.LESS_NEW:
+            return _less_new(rule, one, facts)
+        case Basis.NAMEPLATE:
+            return _share_of_nameplate(rule, one, facts)
+        case _:
+            return _as_measured(rule, one)
 
 
-def _as_measured(rule: Rule, one: Measured, facts: MeasuredFacts) -> Figure:
+def _as_measured(rule: Rule, one: Measured) -> Figure:
     return Figure(one.point, one.within(rule.unit), one.evidence, rule.low, rule.high, one.used, one.steps)
 
 
 def _less_new(rule: Rule, one: Measured, facts: MeasuredFacts) -> Figure:
     fresh = fresh_of(facts.sheet, facts.fresh, rule.quantity)
     if fresh is None:
-        return _as_measured(rule, one, facts)
+        return _as_measured(rule, one)
     read, new = one.within(rule.unit), fresh.within(rule.unit)
     steps = (step(title(rule.quantity), read, rule.unit), step("in new oil", new, rule.unit))
     return Figure(one.point, read - new, one.evidence, rule.low, rule.high, (fresh.evidence,), steps)
@@ -44,7 +46,7 @@ def _less_new(rule: Rule, one: Measured, facts: MeasuredFacts) -> Figure:
 
 def _share_of_nameplate(rule: Rule, one: Measured, facts: MeasuredFacts) -> Figure:
     if dimension(one.unit) != "power":
-        return _as_measured(rule, one, facts)
+        return _as_measured(rule, one)
     rated = facts.engine.rated_kw
     if not rated:
         raise CannotTell("the nameplate has no rated kW", one.point)
@@ -53,7 +55,7 @@ def _share_of_nameplate(rule: Rule, one: Measured, facts: MeasuredFacts) -> Figu
     return Figure(one.point, load.over(known(rated)).times(100), one.evidence, rule.low, rule.high, (), steps)
 
 
-def _total_of_year(rule: Rule, values: list[Measured], facts: MeasuredFacts) -> Figure:
+def _total_of_year(rule: Rule, values: Sequence[Measured], facts: MeasuredFacts) -> Figure:
     runs = [sheet for sheet in facts.earlier if sheet.on.year == facts.sheet.on.year and says(sheet, rule)]
     before = [one for sheet in runs for one in judged_phases(values_of(sheet, rule.quantity), rule.phases, rule.points)]
     own = sum((one.within(rule.unit) for one in values), known(0))

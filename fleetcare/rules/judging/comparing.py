@@ -5,7 +5,7 @@ the same point, from the newest earlier sheet with the same gauge; another gauge
 figure compared with, which must lie above 0.
 """
 
-from collections.abc import Iterator
+from collections.abc import Sequence
 from fractions import Fraction
 
 from fleetcare.domain.findings import Evidence
@@ -14,6 +14,7 @@ from fleetcare.rules.judging.facts import CannotTell, Figure, MeasuredFacts
 from fleetcare.rules.judging.spans import Span
 from fleetcare.rules.judging.values import (
     Measured,
+    alike,
     fresh_of,
     same_place,
     step,
@@ -25,31 +26,24 @@ _LEAST_POINTS = 2
 
 
 def against_sheet(
-    rule: Rule, shape: AgainstSheet, values: list[Measured], facts: MeasuredFacts
-) -> Iterator[Figure | CannotTell]:
-    """Compare each point with the best or the mean of all; one point alone cannot be compared."""
-    if len(values) < _LEAST_POINTS:
-        yield CannotTell("one point alone cannot be compared with others")
-        return
-    unit = values[0].unit if shape.by is not By.DIFFERENCE else rule.unit
-    spans = [(one, one.within(unit)) for one in values]
-    best = _best([span for _, span in spans], shape.reference)
-    for one, span in spans:
-        others = tuple(other.evidence for other in values if other is not one)
-        yield _compared(rule, shape.by, one, (span, best), unit, (shape.reference.value, others))
+    rule: Rule, shape: AgainstSheet, one: Measured, values: Sequence[Measured], facts: MeasuredFacts
+) -> Figure:
+    """Compare a point with the best or the mean of all; one point alone cannot be compared."""
+    peers = [other for other in values if alike(other.phase) is alike(one.phase)]
+    if len(peers) < _LEAST_POINTS:
+        raise CannotTell("one point alone cannot be compared with others", one.point)
+    unit = rule.unit if shape.by is By.DIFFERENCE else peers[0].unit
+    best = _best([other.within(unit) for other in peers], shape.reference)
+    others = tuple(other.evidence for other in peers if other is not one)
+    return _compared(rule, shape.by, one, (one.within(unit), best), unit, (shape.reference.value, others))
 
 
-def change(rule: Rule, shape: Change, values: list[Measured], facts: MeasuredFacts) -> Iterator[Figure | CannotTell]:
-    """Compare each value with the same point before, or with new oil."""
-    for one in values:
-        try:
-            then = _new(rule, facts) if shape.since is Since.NEW else before(rule.quantity, one, facts)
-            unit = rule.unit if shape.by is By.DIFFERENCE else then.unit
-            label = "new oil" if shape.since is Since.NEW else f"on {then.evidence.on.isoformat()}"
-            pair = (one.within(unit), then.within(unit))
-            yield _compared(rule, shape.by, one, pair, unit, (label, (then.evidence,)))
-        except CannotTell as why:
-            yield why
+def change(rule: Rule, shape: Change, one: Measured, values: Sequence[Measured], facts: MeasuredFacts) -> Figure:
+    """Compare a value with the same point before, or with new oil."""
+    then = _new(rule, facts) if shape.since is Since.NEW else before(rule.quantity, one, facts)
+    unit = rule.unit if shape.by is By.DIFFERENCE else then.unit
+    label = "new oil" if shape.since is Since.NEW else f"on {then.evidence.on.isoformat()}"
+    return _compared(rule, shape.by, one, (one.within(unit), then.within(unit)), unit, (label, (then.evidence,)))
 
 
 def before(quantity: str, one: Measured, facts: MeasuredFacts) -> Measured:
@@ -79,10 +73,10 @@ def _best(spans: list[Span], reference: Best) -> Span:
 
 def _compared(
     rule: Rule, by: By, one: Measured, pair: tuple[Span, Span], unit: str, told: tuple[str, tuple[Evidence, ...]]
-) -> Figure | CannotTell:
+) -> Figure:
     (figure, other), (label, used) = pair, told
     if by is not By.DIFFERENCE and other.low <= 0:
-        return CannotTell(f"{label} is not above 0, so there is no percentage of it", one.point)
+        raise CannotTell(f"{label} is not above 0, so there is no percentage of it", one.point)
     span = figure - other
     if by is By.SHARE:
         span = span.over(other).times(100)

@@ -18,6 +18,7 @@ from fleetcare.domain.rule_book import (
     Pattern,
     Rate,
     Rule,
+    SingleShape,
     Statistical,
     worst,
 )
@@ -56,10 +57,10 @@ def judge_sheet(rules: Iterable[Rule], facts: MeasuredFacts) -> JudgedSheet:
     signals: list[Signal] = []
     silent: list[NotJudged] = []
     within: set[Evidence] = set()
-    for rule in known:
-        for told in _tell(rule, facts):
+    for rule, shape in [(rule, rule.shape) for rule in known if not isinstance(rule.shape, Pattern)]:
+        for told in _tell(rule, shape, facts):
             if isinstance(told, Signal):
-                signals.append(replace(told, since=_since(told, facts)))
+                signals.append(replace(told, since=_since(told, shape, facts)))
             elif isinstance(told, NotJudged):
                 silent.append(told)
             else:
@@ -69,58 +70,56 @@ def judge_sheet(rules: Iterable[Rule], facts: MeasuredFacts) -> JudgedSheet:
     return JudgedSheet(tuple(signals), tuple(dict.fromkeys(silent)), _verdicts(facts, signals, within))
 
 
-def _tell(rule: Rule, facts: MeasuredFacts) -> Iterator[Signal | NotJudged | Evidence]:
+def _tell(rule: Rule, shape: SingleShape, facts: MeasuredFacts) -> Iterator[Signal | NotJudged | Evidence]:
     """Give for each value of a rule its signal, why there is none to tell, or the value itself where it is within."""
-    if isinstance(rule.shape, Pattern):
-        return
     for quantity in unsaid(facts.sheet, rule):
         yield NotJudged(rule, "", f"the sheet does not say {quantity.replace('_', ' ')}")
     if not says(facts.sheet, rule):
         return
-    if isinstance(rule.shape, Bounds) and rule.shape.basis is Basis.SPEC and rule.shape.end:
-        yield from lash_signals(rule, rule.shape.end, facts.lash.get(facts.sheet.entry, ()), facts.sheet)
+    if isinstance(shape, Bounds) and shape.end is not None:
+        yield from lash_signals(rule, shape.end, facts.lash.get(facts.sheet.entry, ()), facts.sheet)
         return
     for point in contradictions(facts.sheet, rule.quantity):
         yield NotJudged(rule, point, "it was entered twice, with different values")
     values = judged_phases(values_of(facts.sheet, rule.quantity), rule.phases, rule.points)
     if not values:
         yield NotJudged(rule, "", "it was not measured")
-    for figure in _figures(rule, values, facts):
-        if isinstance(figure, CannotTell):
-            yield NotJudged(rule, figure.subject, figure.why)
+    # A year's total is one figure, whatever the number of values it is told by.
+    is_total = isinstance(shape, Bounds) and shape.basis is Basis.YEAR
+    for one in values[-1:] if is_total else values:
+        try:
+            figure = _figure(rule, shape, one, values, facts)
+        except CannotTell as why:
+            yield NotJudged(rule, why.subject, why.why)
         else:
             yield hold(rule, figure, facts) or figure.flagged
 
 
-def _figures(rule: Rule, values: list[Measured], facts: MeasuredFacts) -> Iterable[Figure | CannotTell]:
-    shape = rule.shape
+def _figure(rule: Rule, shape: SingleShape, one: Measured, values: Sequence[Measured], facts: MeasuredFacts) -> Figure:
     match shape:
         case Bounds():
-            return bounds.figures(rule, shape, values, facts) if values else ()
+            return bounds.figure(rule, shape, one, values, facts)
         case AgainstSheet():
-            return comparing.against_sheet(rule, shape, values, facts) if values else ()
+            return comparing.against_sheet(rule, shape, one, values, facts)
         case Change():
-            return comparing.change(rule, shape, values, facts)
+            return comparing.change(rule, shape, one, values, facts)
         case Rate():
-            return rates.figures(rule, shape, values, facts)
+            return rates.figure(rule, shape, one, values, facts)
         case Statistical():
-            return statistics.figures(rule, shape, values, facts) if values else ()
-        case Pattern():
-            return ()
+            return statistics.figure(rule, shape, one, values, facts)
         case _:
             assert_never(shape)
 
 
-def _since(signal: Signal, facts: MeasuredFacts) -> date:
+def _since(signal: Signal, shape: SingleShape, facts: MeasuredFacts) -> date:
     """Give the day of the first sheet from which on a rule flagged this subject, sheets that could not tell passed over."""
     since = signal.on
     for place in range(len(facts.earlier) - 1, -1, -1):
         then = replace(facts, sheet=facts.earlier[place], earlier=facts.earlier[:place])
-        told = list(_tell(signal.rule, then))
-        flagged = {(one.subject, one.end) for one in told if isinstance(one, Signal)}
-        if (signal.subject, signal.end) in flagged:
+        told = list(_tell(signal.rule, shape, then))
+        if any(isinstance(one, Signal) and (one.subject, one.end) == (signal.subject, signal.end) for one in told):
             since = then.sheet.on
-        elif signal.subject in {one.point for one in told if isinstance(one, Evidence)}:
+        elif any(isinstance(one, Evidence) and signal.subject in {one.point, ""} for one in told):
             break
     return since
 

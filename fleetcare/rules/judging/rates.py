@@ -8,7 +8,7 @@ Not across an oil change: the oil is another where its hours went down, or where
 the two. What top-up is large is common practice: a tenth of the sump.
 """
 
-from collections.abc import Iterator
+from collections.abc import Sequence
 from decimal import Decimal
 
 from fleetcare.domain.findings import Evidence, Step
@@ -26,16 +26,13 @@ from fleetcare.rules.oil_rates import OilSample, rate_between
 _LARGE_TOP_UP = Decimal("0.1")
 
 
-def figures(rule: Rule, shape: Rate, values: list[Measured], facts: MeasuredFacts) -> Iterator[Figure | CannotTell]:
-    """Give the rate of each value, in the unit of the rule per `per` hours."""
+def figure(rule: Rule, shape: Rate, one: Measured, values: Sequence[Measured], facts: MeasuredFacts) -> Figure:
+    """Give the rate of a value, in the unit of the rule per `per` hours."""
     work = _since_change if shape.since is Since.NEW else _of_oil if facts.sheet.kind == OIL else _of_engine
-    for one in values:
-        try:
-            yield work(rule, shape, one, facts)
-        except CannotTell as why:
-            yield why
-        except Refused as error:  # a figure that cannot be right, as the sums of the bench say
-            yield CannotTell(error.detail, one.point)
+    try:
+        return work(rule, shape, one, facts)
+    except Refused as error:  # a figure that cannot be right, as the sums of the bench say
+        raise CannotTell(error.detail, one.point) from None
 
 
 def _of_engine(rule: Rule, shape: Rate, one: Measured, facts: MeasuredFacts) -> Figure:

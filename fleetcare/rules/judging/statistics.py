@@ -4,7 +4,7 @@ The limit of the rule is k, or the percentage of a percentile; low limits count 
 than the rule asks for give no limit.
 """
 
-from collections.abc import Iterator
+from collections.abc import Sequence
 from dataclasses import replace
 from decimal import Decimal
 
@@ -23,24 +23,14 @@ _NAMES = {
 }
 
 
-def figures(
-    rule: Rule, shape: Statistical, values: list[Measured], facts: MeasuredFacts
-) -> Iterator[Figure | CannotTell]:
-    """Give each value with the limits that the pool makes of the rule's."""
+def figure(rule: Rule, shape: Statistical, one: Measured, values: Sequence[Measured], facts: MeasuredFacts) -> Figure:
+    """Give a value with the limits that the pool makes of the rule's."""
     pool = (facts.pools.own if shape.pool is Pool.OWN else facts.pools.family).get(rule.quantity, ())
     samples = tuple(decimal(exactly(value, QUANTITIES[rule.quantity].unit, rule.unit)) for value in pool)
-    try:
-        low, low_steps = _limits(shape, samples, rule.low, -1)
-        high, high_steps = _limits(shape, samples, rule.high, 1)
-    except CannotTell as why:
-        yield why
-        return
-    steps = (Step("samples", Decimal(len(samples))), *(high_steps or low_steps))
-    for one in values:
-        try:
-            yield Figure(one.point, one.within(rule.unit), one.evidence, low, high, one.used, (*one.steps, *steps))
-        except CannotTell as why:
-            yield why
+    low, low_steps = _limits(shape, samples, rule.low, -1)
+    high, high_steps = _limits(shape, samples, rule.high, 1)
+    steps = (*one.steps, Step("samples", Decimal(len(samples))), *(high_steps or low_steps))
+    return Figure(one.point, one.within(rule.unit), one.evidence, low, high, one.used, steps)
 
 
 def _limits(

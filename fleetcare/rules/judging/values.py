@@ -103,9 +103,14 @@ def single(sheet: MeasuredSheet, quantity: str) -> Measured | None:
 def same_place(values: Iterable[Measured], one: Measured) -> Measured | None:
     """Find the value at the point and in the phase of another; a dry value and one without a phase are alike."""
     for other in values:
-        if other.point == one.point and _alike(other.phase) is _alike(one.phase):
+        if other.point == one.point and alike(other.phase) is alike(one.phase):
             return other
     return None
+
+
+def alike(phase: Phase) -> Phase:
+    """Give the phase as it compares: a dry value and one without a phase are alike."""
+    return Phase.NONE if phase is Phase.DRY else phase
 
 
 def fresh_of(sheet: MeasuredSheet, fresh: Sequence[SheetValue], quantity: str) -> Measured | None:
@@ -127,10 +132,6 @@ def title(quantity: str) -> str:
 def step(label: str, span: Span, unit: str) -> Step:
     """Give a number of the working; of a span its high end, labelled so."""
     return Step(label if span.is_known else f"{label}, at most", decimal(span.high), unit)
-
-
-def _alike(phase: Phase) -> Phase:
-    return Phase.NONE if phase is Phase.DRY else phase
 
 
 def _in_order(values: Iterable[Measured]) -> tuple[Measured, ...]:
