@@ -63,6 +63,15 @@ class KeptDrafts:
             place = aside if aside.exists() else path
             raise Refused("what was half typed here cannot be read any more", f"it is in {place}") from error
 
+    def of(self, database: str) -> list[DraftKey]:
+        """Give what is kept for a database; a file that cannot be read is left to whoever opens its form."""
+        keys = []
+        for path in sorted(self.folder.glob("*.json")):
+            with suppress(OSError, ValueError, KeyError, TypeError):  # said when its form is opened
+                kept = json.loads(path.read_text(encoding="utf-8"))
+                keys.append(DraftKey(str(kept["database"]), str(kept["form"]), str(kept["subject"])))
+        return [key for key in keys if key.database == database]
+
     def drop(self, key: DraftKey) -> None:
         """Keep nothing any more: it was stored or thrown away."""
         with suppress(OSError):  # a leftover is offered once more, and said to be one

@@ -78,3 +78,11 @@ def test_only_whoever_typed_it_can_read_it(tmp_path: Path) -> None:
     KeptDrafts(tmp_path).keep(KEY, TYPED)
     (path,) = tmp_path.iterdir()
     assert stat.S_IMODE(path.stat().st_mode) == 0o600
+
+
+def test_what_is_kept_for_a_database_is_listed_and_damaged_files_are_passed_over(tmp_path: Path) -> None:
+    drafts = KeptDrafts(tmp_path)
+    drafts.keep(KEY, TYPED)
+    drafts.keep(KEY._replace(database="/shop/other.db"), TYPED)
+    (tmp_path / "x.json").write_text("[1]")
+    assert drafts.of("/shop/yard.db") == [KEY]

@@ -360,3 +360,13 @@ async def test_an_entry_without_a_sheet_has_none_to_open(opened: Opened, bench: 
         pilot.app.push_screen(ItemScreen("B-1"))
         await press(pilot, "h", "s")
         assert line_with(pilot, "put the cursor on an entry with a sheet")
+
+
+async def test_what_lies_half_typed_is_said_at_the_next_start(opened: Opened, bench: Context) -> None:
+    async with opened(size=SMALL, context=bench) as pilot:
+        await sheet_of(pilot, SINGLE)
+        await press(pilot, "2", "escape", "escape")
+    async with opened(size=SMALL, context=bench) as pilot:
+        assert line_with(pilot, "Half typed and kept:", "log B-1", "sheet lash B-1")
+        await press(pilot, "escape")
+        assert "Half typed" not in said(pilot)

@@ -105,6 +105,14 @@ class DueScreen(FindingScreen):
         yield LongList(COLUMNS, lambda line: line.key)
         yield Detail()
 
+    def on_mount(self) -> None:
+        """Say what lies half typed since last time."""
+        super().on_mount()
+        kept = self.fleet_app.drafts.of(str(self.context.path.absolute()))
+        if kept:
+            what = ", ".join(f"{key.form} {key.subject}".strip() for key in kept)
+            self.notice.say(f"Half typed and kept: {what}. Open it again to go on, or Ctrl N there throws it away.")
+
     def read(self, connection: "Connection", on: date, *, is_future: bool) -> Review:
         """Load the review."""
         return review(connection, on, is_future=is_future)
