@@ -1,7 +1,6 @@
 """`schedule`: named sets of tasks, shipped or of the shop's own, to look at and to give to engines and machines."""
 
 import argparse
-from collections.abc import Mapping
 from typing import TYPE_CHECKING
 
 from fleetcare.cli import output
@@ -91,6 +90,8 @@ def _as_json(schedule: "Schedule") -> dict[str, object]:
 
 
 def _say_schedule(schedule: "Schedule") -> None:
+    from fleetcare.rulebook.schedule_words import say_every, say_rest
+
     output.say(f"{schedule.id}: {schedule.name}")
     for label in ("engines", "fuel", "duty", "source", "note"):
         output.say(f"{label + ':':<9}{getattr(schedule, label) or '-'}")
@@ -98,7 +99,7 @@ def _say_schedule(schedule: "Schedule") -> None:
     output.say(
         output.table(
             ["task", "every", "work", "also"],
-            [[task["name"], _say_every(task), task.get("work", ""), _say_rest(task)] for task in schedule.tasks],
+            [[task["name"], say_every(task), task.get("work", ""), say_rest(task)] for task in schedule.tasks],
         )
     )
     for label in ("caution", "source"):
@@ -106,34 +107,6 @@ def _say_schedule(schedule: "Schedule") -> None:
             names = [str(task["name"]) for task in schedule.tasks if task.get(label) == text]
             if text and text != schedule.source:
                 output.say(f"\n{label} ({', '.join(names)}): {text}")
-
-
-def _say_every(task: Mapping[str, object]) -> str:
-    if task.get("on_condition"):
-        return "on condition"
-    words = " or ".join(_texts(task, "every"))
-    if task.get("once_each"):
-        words = " or ".join(filter(None, (words, f"once each {task['once_each']}")))
-    first = " or ".join(_texts(task, "first"))
-    return f"{words}, first {first}" if first else words
-
-
-def _say_rest(task: Mapping[str, object]) -> str:
-    """Say what else a task is: law, sheet, what it covers, and every option that is given as plain text."""
-    words = [mark.replace("_", " ") for mark, value in task.items() if value is True and mark != "on_condition"]
-    if task.get("needs_sheet"):
-        words.append(f"closes with its {task['needs_sheet']} sheet")
-    for field in ("ahead", "grace", "anchor", "combine", "not_later_than", "window", "deferrable", "labour", "part"):
-        if texts := _texts(task, field):
-            words.append(f"{field.replace('_', ' ')} {', '.join(texts)}")
-    if covers := _texts(task, "covers"):
-        words.append(f"covers {', '.join(covers)}")
-    return "; ".join(words)
-
-
-def _texts(task: Mapping[str, object], field: str) -> list[str]:
-    value = task.get(field, [])
-    return [str(text) for text in value] if isinstance(value, list) else [str(value)]
 
 
 def _apply(given: argparse.Namespace) -> None:

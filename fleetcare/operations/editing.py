@@ -28,7 +28,7 @@ def enter_item_edit(session: "Session", item: FoundItem, changes: Mapping[str, o
     Refuses to change nothing, and what cannot stand beside what stays.
     """
     if not changes:
-        raise Refused("nothing to edit", "give what should change, such as --site NAME")
+        raise Refused("nothing to edit", "give what should change")
     whole = {**stored_draft(session, item), **changes, "tag": item.tag}
     draft = read_draft(EngineDraft if item.is_engine else MachineDraft, whole, as_option)
     with watch_moves(session, item.tag, today) as moves:

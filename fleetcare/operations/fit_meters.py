@@ -58,8 +58,8 @@ def set_digits(session: "Session", item: FoundItem, draft: ItemDraft) -> None:
         for reading in _accepted(session, item, meter.kind, meter.id):
             if reading.value >= 10**before:
                 raise Refused(
-                    f"reading {reading.id} of {item.tag} shows {plain(reading.value)} {meter.unit},"
-                    f" which does not fit on {before} digits",
+                    f"--meter-digits {before}.{after} has no room for reading {reading.id} of {item.tag},"
+                    f" {plain(reading.value)} {meter.unit}",
                     "count the digits before the point again",
                 )
         meter.digits, meter.decimals = before, after

@@ -32,6 +32,7 @@ class FormFacts:
     meters: str = ""
     waiting: tuple[str, ...] = ()
     typed: Mapping[str, str] = field(default_factory=dict)
+    is_engine: bool = True
 
 
 def form_facts(connection: "Connection", tag: str, on: date, entry: int | None = None) -> FormFacts:
@@ -51,6 +52,7 @@ def form_facts(connection: "Connection", tag: str, on: date, entry: int | None =
         meters="; ".join(filter(None, map(_shown_last, page.facts.counters.values()))),
         known={**_known(connection), "task": tuple(dict.fromkeys([*due, *tasks]))},
         waiting=tuple(map(_waiting, page.rows)),
+        is_engine=item.is_engine,
         typed=entry_as_typed(connection, entry) if entry is not None else {},
     )
 

@@ -5,10 +5,7 @@ from dataclasses import dataclass
 from datetime import date
 from typing import TYPE_CHECKING
 
-from sqlalchemy import select
-from sqlmodel import col
-
-from fleetcare.db.tables import Engine, Item
+from fleetcare.db.tables import Item
 from fleetcare.domain.quantities import Kind
 from fleetcare.drafts.schedules import StartDraft, read_tasks
 from fleetcare.drafts.tasks import TaskDraft
@@ -16,11 +13,14 @@ from fleetcare.errors import Refusals, Refused
 from fleetcare.operations.due import DueRow, Filters, due_rows
 from fleetcare.operations.find import FoundItem, find_item, find_meters
 from fleetcare.operations.load_tasks import load_start_figures
+from fleetcare.operations.rows import fetch
 from fleetcare.operations.starts import set_last_done, set_start
 from fleetcare.operations.tasks import add_task, names_taken
-from fleetcare.rulebook.schedules import Schedule
+from fleetcare.rulebook.schedule_words import say_every
+from fleetcare.rulebook.schedules import Schedule, find_schedule
 
 if TYPE_CHECKING:
+    from sqlalchemy import Connection
     from sqlalchemy.orm import Session
 
 
@@ -63,12 +63,12 @@ def _objections(
         return [Refused(f"{schedule.id} is for engines and {item.tag} is a machine", "name the engine fitted in it")]
     row = session.get_one(Item, item.id)
     wrong = []
-    taken = names_taken(session, item)
+    taken = names_taken(session.connection(), item)
     there = [draft.name for draft in drafts if draft.name.casefold() in taken]
     if there:
         wrong.append(
             Refused(
-                f"{item.tag} has already: {', '.join(there)}",
+                f"{item.tag} has these of {schedule.id} already: {', '.join(there)}",
                 f"end them with fleetcare task remove {item.tag} NAME, or take them out of a file of your own:"
                 f" fleetcare schedule show {schedule.id} --toml --out FILE.toml",
             )
@@ -89,17 +89,28 @@ def _missing_start(session: "Session", row: Item, item: FoundItem, drafts: Seque
     """Say what an item lacks for its tasks to count from its start."""
     edit = f"fleetcare {'engine' if item.is_engine else 'machine'} edit {item.tag} --in-service DATE"
     if row.in_service_on is None:
-        return [Refused(f"{item.tag} has no in-service day to count from", f"give it with {edit} --start-at VALUE")]
+        return [
+            Refused(
+                f"{item.tag} has no in-service day for --from start to count from",
+                f"give it with {edit} --start-at VALUE",
+            )
+        ]
     known = load_start_figures(session.connection(), [item.id]).get(item.id, {})
     metered = {meter.kind for meter in find_meters(session.connection(), item.id, date.max)}
     missing = sorted((_counted(drafts) & metered) - set(known))
     if not missing:
         return []
-    return [Refused(f"{item.tag} has no start figure of {', '.join(missing)}", f"give it with {edit} --start-at VALUE")]
+    return [
+        Refused(
+            f"{item.tag} has no start figure of {', '.join(missing)} for --from start to count from",
+            f"give it with {edit} --start-at VALUE",
+        )
+    ]
 
 
 def _apply(session: "Session", item: FoundItem, drafts: Sequence[TaskDraft], start: StartDraft, today: date) -> Applied:
-    left_out = _not_needed(session, item, drafts)
+    sheets = {draft.name: draft.needs_sheet for draft in drafts}
+    left_out = _not_needed(session.connection(), item, sheets)
     kept = [draft for draft in drafts if draft.name not in left_out]
     for draft in kept:
         covers = tuple(name for name in draft.covers if name.casefold() not in {out.casefold() for out in left_out})
@@ -122,12 +133,27 @@ def _apply(session: "Session", item: FoundItem, drafts: Sequence[TaskDraft], sta
     )
 
 
-def _not_needed(session: "Session", item: FoundItem, drafts: Sequence[TaskDraft]) -> tuple[str, ...]:
-    """Give the tasks that set the lash, where hydraulic adjusters keep it."""
-    engine = session.scalars(select(Engine).where(col(Engine.item_id) == item.id)).one_or_none()
-    if engine is None or engine.adjuster != "hydraulic":
-        return ()
-    return tuple(draft.name for draft in drafts if draft.needs_sheet == "lash")
+def what_it_adds(connection: "Connection", tag: str, name: str) -> list[str]:
+    """Say each task a schedule would give an engine or machine, and what stands against it; nothing is stored.
+
+    Refuses an unknown schedule or tag, and a file that is not in order.
+    """
+    schedule, item = find_schedule(name), find_item(connection, tag)
+    drafts = {draft.name: draft for draft in read_tasks(schedule)}
+    taken = names_taken(connection, item)
+    left_out = _not_needed(connection, item, {task: draft.needs_sheet for task, draft in drafts.items()})
+    against = dict.fromkeys(left_out, "left out, hydraulic adjusters keep the lash")
+    against |= {task: f"{item.tag} has one already" for task in drafts if task.casefold() in taken}
+    return [
+        "; ".join(filter(None, (f"{task}: {say_every(options)}", against.get(task, ""))))
+        for task, options in zip(drafts, schedule.tasks, strict=True)
+    ]
+
+
+def _not_needed(connection: "Connection", item: FoundItem, sheets: Mapping[str, str | None]) -> tuple[str, ...]:
+    """Give the tasks that set the lash, of some with the sheets they need, where hydraulic adjusters keep it."""
+    hydraulic = fetch(connection, "select 1 from engine where item_id = :id and adjuster = 'hydraulic'", id=item.id)
+    return tuple(name for name, sheet in sheets.items() if sheet == "lash") if hydraulic else ()
 
 
 def _counted(drafts: Sequence[TaskDraft]) -> set[Kind]:

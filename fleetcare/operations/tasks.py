@@ -28,13 +28,14 @@ from fleetcare.operations.stored_tasks import BOUND, FLAGS, grid_read_on, stored
 from fleetcare.rules.due.covering import find_cycle
 
 if TYPE_CHECKING:
+    from sqlalchemy import Connection
     from sqlalchemy.orm import Session
 
 
 def add_task(session: "Session", item: FoundItem, draft: TaskDraft, today: date) -> int:
     """Add a task to an item and give its id. Refuses a name the item has already, and a cycle in covering."""
     key = draft.name.casefold()
-    if key in names_taken(session, item):
+    if key in names_taken(session.connection(), item):
         raise Refused(
             f"{item.tag} has a task {draft.name!r} already", "choose another name, or use fleetcare task edit"
         )
@@ -206,9 +207,8 @@ def _refuse_cycle(session: "Session", item: FoundItem, task_id: int) -> None:
         )
 
 
-def names_taken(session: "Session", item: FoundItem) -> set[str]:
+def names_taken(connection: "Connection", item: FoundItem) -> set[str]:
     """Give the names, casefolded, of the tasks an item has."""
-    connection = session.connection()
     rows = fetch(connection, "select name_key from task where item_id = :item and removed_on is null", item=item.id)
     return {row[0] for row in rows}
 

@@ -1,15 +1,20 @@
 """A screen with fields to fill in: what is typed is kept as it is typed, and names known are suggested."""
 
-from collections.abc import Iterable
+from collections.abc import Iterable, Sequence
+from contextlib import suppress
+from dataclasses import replace
+from functools import partial
 from typing import TYPE_CHECKING
 
 from textual.containers import VerticalScroll
 from textual.events import DescendantFocus
+from textual.message import Message
 from textual.widget import Widget
+from textual.worker import get_current_worker
 
-from fleetcare.errors import FleetError, Refused
+from fleetcare.errors import FleetError, Refusals, Refused
 from fleetcare.tui.drafts_kept import DraftKey
-from fleetcare.tui.forms.base import METERS, Form, Subject
+from fleetcare.tui.forms.base import METERS, Form, Preview, Subject
 from fleetcare.tui.frame import TopBar, say_day
 from fleetcare.tui.loading import LoadingScreen
 from fleetcare.tui.widgets.detail import Detail
@@ -37,6 +42,13 @@ _MOST_NAMES = 12
 class FillingScreen(LoadingScreen):
     """The fields of a form on a subject, as somebody fills them in."""
 
+    class Previewed(Message):
+        """What is typed would bring this: a heading and lines, or nothing that can be told yet."""
+
+        def __init__(self, title: str = "", lines: Sequence[str] = ()) -> None:
+            super().__init__()
+            self.title, self.lines = title, lines
+
     place = "form"
     AUTO_FOCUS = "TextField, YesNo"
 
@@ -53,7 +65,7 @@ class FillingScreen(LoadingScreen):
     def body(self) -> Iterable[Widget]:
         """What it is about, its fields, help on the one the cursor is in, and the place for a question."""
         yield FormTitle(self.form.heading(self.subject))
-        yield VerticalScroll(FormHead(), *self.rows.values(), can_focus=False)
+        yield VerticalScroll(FormHead(), *self._grouped(), FormHead(id="preview"), can_focus=False)
         yield Detail()
         yield Question()
 
@@ -86,7 +98,8 @@ class FillingScreen(LoadingScreen):
         """Load what the form shows before anything is typed."""
         from fleetcare.operations.form_facts import form_facts
 
-        return form_facts(connection, self.subject.tag, on, self.subject.entry)
+        facts = form_facts(connection, self.subject.tag, on, self.subject.entry)
+        return replace(facts, typed={**facts.typed, **self.form.typed(connection, self.subject, on)})
 
     def fail(self, error: FleetError) -> None:
         """Say what is wrong; where there is no file yet, the first thing in it can be added all the same."""
@@ -102,6 +115,8 @@ class FillingScreen(LoadingScreen):
         is_first, self.facts = self.facts is None, found
         self.query_one(FormTitle).tell(found.whose)
         self.query_one(FormHead).tell(*self.form.above(found))
+        for row in self.rows.values():
+            row.allow(found.is_engine or not row.field.of_engines)
         if is_first:
             kept = {
                 name: self.fleet_app.shift.get(name, "") for name, row in self.rows.items() if row.field.kept_for_shift
@@ -109,6 +124,11 @@ class FillingScreen(LoadingScreen):
             self.start = {**kept, **self.form.start(found, self.subject, self.day), **self.subject.preset}
             self._fill()
         self._help()
+        self._preview()
+
+    def on_filling_screen_previewed(self, message: Previewed) -> None:
+        """Show what would be added or changed by what is typed now."""
+        self.query_one("#preview", FormHead).tell(message.title, message.lines)
 
     def on_input_changed(self, event: TextField.Changed) -> None:
         """Keep what is typed, and suggest by it."""
@@ -136,7 +156,7 @@ class FillingScreen(LoadingScreen):
     def on_descendant_focus(self, event: DescendantFocus) -> None:
         """Mark the line the cursor is in and say what belongs there."""
         for row in self.rows.values():
-            row.mark(row.editor is event.widget)
+            row.mark(row.editor is self.focused)
         self._help()
 
     def on_unmount(self) -> None:
@@ -170,20 +190,39 @@ class FillingScreen(LoadingScreen):
             row.say_wrong("")
 
     def say_wrong(self, name: str, error: FleetError) -> None:
-        """Say an error beside the field of a name; one of no field at the foot, the cursor going where it tells."""
-        text = self.form.in_own_words("; ".join(error.lines()))
-        if name in self.rows:
-            self.rows[name].say_wrong(text)
-        else:
-            self.notice.say(text, is_wrong=True)
-            name = self.form.field_of(error, self.values)
-        if name in self.rows:
-            self.rows[name].editor.focus()
+        """Say an error beside the field of a name, else the one its words tell; one of no field at the foot."""
+        for one in reversed(error.errors if isinstance(error, Refusals) else (error,)):
+            text, place = self.form.in_own_words("; ".join(one.lines())), name or self.form.field_of(one, self.values)
+            if place in self.rows:
+                self.rows[place].say_wrong(text)
+                self.rows[place].editor.focus()
+            else:
+                self.notice.say(text, is_wrong=True)
 
     def finish(self) -> None:
         """Keep nothing any more: it was stored."""
         self.is_done = True
         self.fleet_app.drafts.drop(self.key)
+
+    def _grouped(self) -> Iterable[Widget]:
+        """Give the fields, each group under its heading."""
+        for row in self.rows.values():
+            if row.heading is not None:
+                yield row.heading
+            yield row
+
+    def _preview(self) -> None:
+        """Work out in a thread what is typed would bring."""
+        if self.form.preview is not None:
+            work = partial(self._run_preview, self.form.preview, self.values)
+            self.run_worker(work, thread=True, group="preview", exclusive=True, exit_on_error=False)
+
+    def _run_preview(self, preview: Preview, values: dict[str, str]) -> None:
+        worker, found = get_current_worker(), self.Previewed()
+        with suppress(FleetError), self.context.read() as connection:
+            found = self.Previewed(*preview(connection, self.subject, values, self.context.today()))
+        if not worker.is_cancelled:
+            self.post_message(found)
 
     def _fill(self) -> None:
         """Put into untouched fields what they open with, and the cursor where something is still to be typed."""
@@ -196,6 +235,7 @@ class FillingScreen(LoadingScreen):
 
     def _typed(self, editor: Widget) -> None:
         self._touched |= {name for name, row in self.rows.items() if row.editor is editor}
+        self._preview()
         if self._timer is None:
             self._timer = self.set_timer(KEEP_AFTER, self._keep)
         self._help()
@@ -221,9 +261,8 @@ class FillingScreen(LoadingScreen):
             return []
         typed = row.typed.casefold()
         held = {part.strip().casefold() for part in row.value.split(";")}
-        fitting = [
-            n for n in self.facts.known.get(row.field.known, ()) if typed in n.casefold() and n.casefold() not in held
-        ]
+        known = row.field.choices or self.facts.known.get(row.field.known, ())
+        fitting = [n for n in known if typed in n.casefold() and n.casefold() not in held]
         return sorted(fitting, key=lambda name: not name.casefold().startswith(typed))
 
     def _help(self) -> None:

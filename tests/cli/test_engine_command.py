@@ -150,7 +150,7 @@ def test_a_new_start_figure_moves_the_lines_that_count_from_it(open_yard: Opener
         (("--in-service", "2026-02-01"), "P-01 started at 0 h on 2024-01-10; give --start-at for the new day as well"),
         (("--in-service", "2026-04-02", "--start-at", "1000"), "reading 2 of P-01 on 2026-04-01 lies before --in-serv"),
         (("--in-service", "2026-01-10", "--start-at", "1001"), "1001 h on 2026-01-10 does not fit reading 2 of P-01"),
-        (("--meter-digits", "3.1"), "reading 2 of P-01 shows 1000 h, which does not fit on 3 digits"),
+        (("--meter-digits", "3.1"), "--meter-digits 3.1 has no room for reading 2 of P-01, 1000 h"),
         (("--meter-digits", "distance:6.0"), "--meter-digits 6.0 binds to no meter of P-01"),
         (("--meter", "hours"), "a meter of P-01 counts hours already; a new one is told by fleetcare reading --repl"),
         (("--machine", "LR-1"), "an engine moves between machines on a day; use fleetcare engine fit TAG"),

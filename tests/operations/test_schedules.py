@@ -129,13 +129,13 @@ def test_a_dial_figure_alone_leaves_the_calendar_unset(ctx: Context, ditch: str)
 def test_from_start_is_refused_where_no_first_day_is_known(ctx: Context, ditch: str) -> None:
     engine(ctx, "P-02", **USED)
     (line,) = refusal(ctx, ditch, "P-02", start=("start",))
-    assert line.startswith("P-02 has no in-service day to count from; give it with fleetcare engine edit P-02")
+    assert line.startswith("P-02 has no in-service day for --from start to count from; give it with fleetcare engine edit P-02")
 
 
 def test_from_start_is_refused_where_a_meter_has_no_start_figure(ctx: Context, ditch: str) -> None:
     engine(ctx, "P-02", **USED, in_service="2026-01-10")
     (line,) = refusal(ctx, ditch, "P-02", start=("start",))
-    assert line.startswith("P-02 has no start figure of hours; give it with fleetcare engine edit P-02")
+    assert line.startswith("P-02 has no start figure of hours for --from start to count from; give it with fleetcare engine edit P-02")
 
 
 @pytest.mark.parametrize(
@@ -171,8 +171,8 @@ def test_task_names_an_item_has_already_are_refused_by_name_for_every_item_at_on
         item = find_item(session.connection(), "P-01")
         add_task(session, item, read_draft(TaskDraft, {"name": "OIL", "every": ["100h"]}), TODAY)
     first, second = refusal(ctx, ditch, "P-01", "P-02")
-    assert first.startswith("P-01 has already: Oil; end them with fleetcare task remove P-01 NAME")
-    assert second.startswith("P-02 has already: Oil, Lash, Compression, Big service;")
+    assert first.startswith(f"P-01 has these of {ditch} already: Oil; end them with fleetcare task remove P-01 NAME")
+    assert second.startswith(f"P-02 has these of {ditch} already: Oil, Lash, Compression, Big service;")
 
 
 def test_a_task_that_was_ended_does_not_stand_in_the_way(ctx: Context, ditch: str) -> None:

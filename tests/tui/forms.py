@@ -21,10 +21,15 @@ async def form_with(pilot: Pilot[None], name: str, subject: Subject, values: Map
     await settle_down(pilot)
     form = pilot.app.screen
     assert isinstance(form, FormScreen)
-    for field, text in values.items():
-        form.rows[field].editor.value = text
+    fill_in(form, values)
     await settle_down(pilot)
     return form
+
+
+def fill_in(form: FormScreen, values: Mapping[str, str]) -> None:
+    """Put values in the fields of a form as if they were typed."""
+    for field, text in values.items():
+        form.rows[field].editor.value = text
 
 
 def stored(db: Path) -> int:

@@ -14,6 +14,7 @@ from fleetcare.tui.screens.item import ItemScreen
 from fleetcare.tui.screens.keys import KeysScreen
 from fleetcare.tui.screens.more import MoreScreen
 from fleetcare.tui.screens.narrow import NarrowScreen
+from fleetcare.tui.screens.tasks import TasksScreen
 from fleetcare.tui.screens.working import WorkingScreen
 from tests.tui.conftest import Opened, line_with, press, seen, settle_down
 
@@ -26,6 +27,7 @@ SCREENS = (
     KeysScreen,
     MoreScreen,
     NarrowScreen,
+    TasksScreen,
     WorkingScreen,
 )
 

@@ -1,18 +1,23 @@
-"""Forms on what is new: an engine, a task, the tasks of a schedule."""
+"""Forms on what is new: an engine, a machine, a task, the tasks of a schedule."""
 
+from collections.abc import Mapping, Sequence
 from datetime import date
 from typing import TYPE_CHECKING
 
 from fleetcare.tui.forms.base import Field, Form, Said, Subject
+from fleetcare.tui.forms.fields_item import CYLINDERS, FIRING_ORDER, FUEL, METER, NAME, SITE, START
+from fleetcare.tui.forms.fields_task import RARER, USUAL
 
 if TYPE_CHECKING:
+    from sqlalchemy import Connection
     from sqlalchemy.orm import Session
 
-    from fleetcare.drafts.items import EngineDraft
+    from fleetcare.drafts.items import ItemDraft
     from fleetcare.drafts.reading_in import Draft
     from fleetcare.drafts.schedules import ApplyDraft
     from fleetcare.drafts.tasks import TaskDraft
     from fleetcare.operations.entering import Entered
+    from fleetcare.operations.form_facts import FormFacts
 
 
 def _engine_draft() -> "type[Draft]":
@@ -21,7 +26,7 @@ def _engine_draft() -> "type[Draft]":
     return EngineDraft
 
 
-def _add_engine(session: "Session", subject: Subject, draft: "EngineDraft", today: date, said: Said) -> "Entered":
+def _add_item(session: "Session", subject: Subject, draft: "ItemDraft", today: date, said: Said) -> "Entered":
     from fleetcare.operations.adding import enter_item
 
     return enter_item(session, draft, today)
@@ -54,47 +59,61 @@ def _apply(session: "Session", subject: Subject, draft: "ApplyDraft", today: dat
     return entered
 
 
+def _machine_draft() -> "type[Draft]":
+    from fleetcare.drafts.items import MachineDraft
+
+    return MachineDraft
+
+
+def _preview(
+    connection: "Connection", subject: Subject, values: Mapping[str, str], on: date
+) -> tuple[str, Sequence[str]]:
+    from fleetcare.operations.schedules import what_it_adds
+
+    return "WOULD ADD", what_it_adds(connection, subject.tag, values["name"].strip())
+
+
+def _nothing(facts: "FormFacts", subject: Subject, on: date) -> Mapping[str, str]:
+    return {}
+
+
+TAG = Field("tag", "Tag", "the shop's tag, such as P-01")
 ENGINE = Form(
     "engine",
     "Add an engine",
     (
-        Field("tag", "Tag", "the shop's tag, such as P-01"),
-        Field("name", "Name", "what people call it"),
-        Field("site", "Site", "where it stands", "sites"),
+        TAG,
+        NAME,
+        SITE,
         Field("machine", "In", "tag of the machine it is fitted in, if any", "machines"),
-        Field("meter", "Meter", "hours, distance, fuel or starts; distance:mi for miles", "meter kinds", several=True),
-        Field("in_service", "In service", "its first day here, year-month-day"),
-        Field("start_at", "Starts at", "what the dial showed on that day, such as 0 or 1875h", several=True),
-        Field("as_new", "As new", "new or overhauled: every task counts from that day and figure", is_yes_no=True),
-        Field("fuel", "Fuel", "such as diesel", "fuels"),
-        Field("cylinders", "Cylinders", "how many"),
-        Field("firing_order", "Firing order", "such as 1-5-3-6-2-4"),
+        METER,
+        *START,
+        FUEL,
+        CYLINDERS,
+        FIRING_ORDER,
     ),
     _engine_draft,
-    _add_engine,
+    _add_item,
     fixed=lambda subject, on: {},
-    start=lambda facts, subject, on: {},
+    start=_nothing,
+)
+MACHINE = Form(
+    "machine",
+    "Add a machine: what engines are fitted in",
+    (TAG, NAME, SITE, METER, *START),
+    _machine_draft,
+    _add_item,
+    fixed=lambda subject, on: {},
+    start=_nothing,
 )
 TASK = Form(
     "task",
     "Add a task to {tag}",
-    (
-        Field("name", "Task", "a short name, such as Oil and filter"),
-        Field("every", "Every", "how often, such as 250h; 12mo", several=True),
-        Field("first", "First", "the first interval, where it is another, such as 50h", several=True),
-        Field(
-            "ahead", "Near from", "how long before it counts as near; left empty a tenth of the interval", several=True
-        ),
-        Field("grace", "Grace", "what it may run over, such as 10h", several=True),
-        Field("last_done", "Last done", "the day, the dial figure, or both, such as 2026-01-15; 900h", several=True),
-        Field("work", "Kind of work", "such as drain, filter, lash, inspection"),
-        Field("part", "Parts", "parts it takes, such as Oil filter:1", "parts", several=True),
-        Field("source", "Source", "where this interval stands"),
-    ),
+    (Field("name", "Task", "a short name, such as Oil and filter"), *USUAL, *RARER),
     _task_draft,
     _add_task,
     fixed=lambda subject, on: {},
-    start=lambda facts, subject, on: {},
+    start=_nothing,
 )
 SCHEDULE = Form(
     "schedule",
@@ -106,10 +125,12 @@ SCHEDULE = Form(
             "Count from",
             "start, unset, or when last done: 2026-02-10; 760h; of a new engine nothing",
             several=True,
+            option="from",
         ),
     ),
     _apply_draft,
     _apply,
     fixed=lambda subject, on: {},
-    start=lambda facts, subject, on: {},
+    start=_nothing,
+    preview=_preview,
 )

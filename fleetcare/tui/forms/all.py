@@ -1,7 +1,9 @@
 """Every form, by name."""
 
-from fleetcare.tui.forms.adding import ENGINE, SCHEDULE, TASK
-from fleetcare.tui.forms.meters import READING, SWAP
+from fleetcare.tui.forms.adding import ENGINE, MACHINE, SCHEDULE, TASK
+from fleetcare.tui.forms.editing import EDIT, PERSON_NAME, SITE_NAME, TASK_EDIT, TASK_END
+from fleetcare.tui.forms.measure import MEASURE_LASH
+from fleetcare.tui.forms.meters import READING, RESTORE_READING, SWAP, VOID_READING
 from fleetcare.tui.forms.standing import LAY_UP, MOVE, RETURN, STAND_DOWN, WITHDRAW
 from fleetcare.tui.forms.work import CORRECT, DEFER, LOG, VOID
 
@@ -12,15 +14,24 @@ FORMS = {
         CORRECT,
         VOID,
         DEFER,
+        MEASURE_LASH,
         READING,
         SWAP,
+        VOID_READING,
+        RESTORE_READING,
         LAY_UP,
         RETURN,
         STAND_DOWN,
         WITHDRAW,
         MOVE,
         ENGINE,
+        MACHINE,
+        EDIT,
         TASK,
+        TASK_EDIT,
+        TASK_END,
         SCHEDULE,
+        SITE_NAME,
+        PERSON_NAME,
     )
 }

@@ -1,16 +1,16 @@
-"""Forms on meters: what one shows, and a new one in the place of an old one."""
+"""Forms on meters: what one shows, readings that were wrong or right after all, a new one in place of an old one."""
 
 from datetime import date
 from typing import TYPE_CHECKING
 
-from fleetcare.tui.forms.base import BY, METERS, NOTE, ON, Answer, Field, Form, Said, Subject
+from fleetcare.tui.forms.base import BY, METERS, NOTE, ON, WHY, Answer, Field, Form, Said, Subject
 from fleetcare.tui.forms.work import RIGHT, WENT_ROUND
 
 if TYPE_CHECKING:
     from sqlalchemy.orm import Session
 
     from fleetcare.drafts.reading_in import Draft
-    from fleetcare.drafts.work import ReadingDraft, SwapDraft
+    from fleetcare.drafts.work import ReadingDraft, RestoreDraft, SwapDraft, VoidDraft
     from fleetcare.operations.entering import Entered
 
 
@@ -36,6 +36,30 @@ def _swap(session: "Session", subject: Subject, draft: "SwapDraft", today: date,
     from fleetcare.operations.entering import enter_reading
 
     return enter_reading(session, draft.reading(), today)
+
+
+def _void_draft() -> "type[Draft]":
+    from fleetcare.drafts.work import VoidDraft
+
+    return VoidDraft
+
+
+def _void(session: "Session", subject: Subject, draft: "VoidDraft", today: date, said: Said) -> "Entered":
+    from fleetcare.operations.entering import enter_void
+
+    return enter_void(session, draft, today)
+
+
+def _restore_draft() -> "type[Draft]":
+    from fleetcare.drafts.work import RestoreDraft
+
+    return RestoreDraft
+
+
+def _restore(session: "Session", subject: Subject, draft: "RestoreDraft", today: date, said: Said) -> "Entered":
+    from fleetcare.operations.entering import enter_restored
+
+    return enter_restored(session, draft.model_copy(update=said.get("why")), today)
 
 
 READING = Form(
@@ -65,4 +89,23 @@ SWAP = Form(
     ),
     _swap_draft,
     _swap,
+)
+VOID_READING = Form(
+    "void-reading",
+    "Take back reading {reading} of {tag}: it counts for nothing",
+    (WHY,),
+    _void_draft,
+    _void,
+    fixed=lambda subject, on: {"reading": subject.reading},
+    start=lambda facts, subject, on: {},
+)
+RESTORE_READING = Form(
+    "restore-reading",
+    "Bring back reading {reading} of {tag}: it counts again",
+    (WHY,),
+    _restore_draft,
+    _restore,
+    fixed=lambda subject, on: {"reading": subject.reading},
+    start=lambda facts, subject, on: {},
+    answers=(RIGHT,),
 )

@@ -94,11 +94,19 @@ class EnginesScreen(FindingScreen):
         row: YardRow | None = self.query_one(LongList).current
         return Subject(row.tag) if row is not None else None
 
-    def action_add(self) -> None:
-        """Add an engine."""
+    def action_add(self, name: str) -> None:
+        """Open a form that is about nothing there is yet, or about no engine."""
         from fleetcare.tui.forms.base import Subject
 
-        self.open_form("engine", Subject(""))
+        self.open_form(name, Subject(""))
+
+    def action_rename_site(self) -> None:
+        """Give the site the cursor is in another name."""
+        from fleetcare.tui.forms.base import Subject
+
+        here: YardRow | None = self.query_one(LongList).current
+        if here is not None and here.site:
+            self.open_form("site-name", Subject("", preset={"known": here.site}))
 
     def action_round(self) -> None:
         """Write down the meters of the site the cursor is in."""

@@ -16,8 +16,11 @@ COLUMNS: tuple[Column[Action], ...] = (
 )
 
 
+_OPENS = ("write(", "tasks")
+
+
 class MoreScreen(FramedScreen):
-    """The list. It is left with the name of the form chosen, or with None."""
+    """The list. It is left with what was chosen, as the screen below does it, or with None."""
 
     place = "more"
 
@@ -32,7 +35,7 @@ class MoreScreen(FramedScreen):
     def on_mount(self) -> None:
         """Fill it."""
         self.query_one(TopBar).tell(say_day(self.context.today()))
-        forms = [action for action in actions_of(self.place) if action.method.startswith("write(")]
+        forms = [action for action in actions_of(self.place) if action.method.startswith(_OPENS)]
         self.query_one(LongList).show([Section(self.tag, forms, "strong")])
 
     def on_long_list_opened(self) -> None:
@@ -43,11 +46,15 @@ class MoreScreen(FramedScreen):
         """Choose what is under the cursor."""
         action: Action | None = self.query_one(LongList).current
         if action is not None:
-            self.action_write(action.method[len("write('") : -len("')")])
+            self.dismiss(action.method)
 
     def action_write(self, name: str) -> None:
         """Choose a form."""
-        self.dismiss(name)
+        self.dismiss(f"write('{name}')")
+
+    def action_tasks(self) -> None:
+        """Choose the tasks."""
+        self.dismiss("tasks")
 
     def action_back(self) -> None:
         """Choose nothing."""

@@ -12,12 +12,13 @@ from textual.widgets import Input, Static
 
 from fleetcare.domain.printable import clean
 from fleetcare.tui.forms.base import Field
+from fleetcare.tui.widgets.plain_input import PlainInput
 
 _EDGE = "▌"
 _WRONG = "! "
 
 
-class TextField(Input):
+class TextField(PlainInput):
     """A line of text; at its end → takes the name suggested, if there is one."""
 
     class Taken(Message):
@@ -81,6 +82,7 @@ class FieldRow(Horizontal):
         self.editor: TextField | YesNo = YesNo() if field.is_yes_no else TextField()
         self._label = Static(f" {field.label}", classes="label", markup=False)
         self._error = Static("", classes="error", markup=False)
+        self.heading = Static(f" {field.group}", classes="group", markup=False) if field.group else None
         super().__init__()
 
     def compose(self) -> Iterator[Widget]:
@@ -92,6 +94,11 @@ class FieldRow(Horizontal):
     def value(self) -> str:
         """What stands in it."""
         return self.editor.value
+
+    def allow(self, is_asked: bool) -> None:
+        """Show it, with the heading above it, or hide it where it is not asked."""
+        for widget in filter(None, (self.heading, self)):
+            widget.display = is_asked
 
     def fill(self, text: str) -> None:
         """Put text in it, not as if somebody typed it."""
@@ -118,6 +125,8 @@ class FieldRow(Horizontal):
         """Say what is wrong with it; nothing takes that away."""
         self._error.update(Content(f"{_WRONG}{clean(text)}" if text else ""))
         self._error.display = bool(text)
+        if text:  # it stands below the field, which may be the last line in sight
+            self.call_after_refresh(self.scroll_visible, animate=False)
 
     def mark(self, is_here: bool) -> None:
         """Mark the line the cursor is in, with or without colour."""

@@ -33,8 +33,8 @@ class FormTitle(Widget):
 class FormHead(Widget):
     """A heading with lines under it; without lines it takes no room."""
 
-    def __init__(self) -> None:
-        super().__init__()
+    def __init__(self, id: str | None = None) -> None:
+        super().__init__(id=id)
         self._title: str = ""
         self._sentences: Sequence[str] = ()
 
