@@ -52,13 +52,11 @@ def _log_start(facts: "FormFacts", subject: Subject, on: date) -> Mapping[str, s
 
 def log_preset(line: "Understood") -> dict[str, str]:
     """Give what the form to log work is filled in with from an entry line."""
-    return {name: _as_typed(value) for name, value in line.work().items() if value}
-
-
-def _as_typed(value: object) -> str:
-    if isinstance(value, tuple):
-        return "; ".join(str(one) for one in value)
-    return "yes" if value is True else str(value)
+    return {
+        name: "; ".join(map(str, value)) if isinstance(value, tuple) else str(value)
+        for name, value in line.work().items()
+        if value
+    }
 
 
 def _correction_draft() -> "type[Draft]":
