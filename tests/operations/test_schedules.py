@@ -129,13 +129,17 @@ def test_a_dial_figure_alone_leaves_the_calendar_unset(ctx: Context, ditch: str)
 def test_from_start_is_refused_where_no_first_day_is_known(ctx: Context, ditch: str) -> None:
     engine(ctx, "P-02", **USED)
     (line,) = refusal(ctx, ditch, "P-02", start=("start",))
-    assert line.startswith("P-02 has no in-service day for --from start to count from; give it with fleetcare engine edit P-02")
+    assert line.startswith(
+        "P-02 has no in-service day for --from start to count from; give it with fleetcare engine edit P-02"
+    )
 
 
 def test_from_start_is_refused_where_a_meter_has_no_start_figure(ctx: Context, ditch: str) -> None:
     engine(ctx, "P-02", **USED, in_service="2026-01-10")
     (line,) = refusal(ctx, ditch, "P-02", start=("start",))
-    assert line.startswith("P-02 has no start figure of hours for --from start to count from; give it with fleetcare engine edit P-02")
+    assert line.startswith(
+        "P-02 has no start figure of hours for --from start to count from; give it with fleetcare engine edit P-02"
+    )
 
 
 @pytest.mark.parametrize(

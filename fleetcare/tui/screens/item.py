@@ -194,6 +194,26 @@ class ItemScreen(WritingScreen):
         else:
             self.notice.say("Turn to the history (h) and put the cursor on an entry.")
 
+    def action_take_back(self) -> None:
+        """Take back the reading under the cursor where meters are in front, else the entry."""
+        if self.part == "meters":
+            self._write_on_reading("void-reading")
+        else:
+            self.action_entry("void")
+
+    def action_bring_back(self) -> None:
+        """Let the reading under the cursor count again."""
+        self._write_on_reading("restore-reading")
+
+    def _write_on_reading(self, form: str) -> None:
+        from fleetcare.tui.forms.base import Subject
+
+        reading: ReadingLine | None = self.query_one("#meters LongList", LongList).current
+        if self.part == "meters" and reading is not None:
+            self.open_form(form, Subject(self.tag, reading=reading.number))
+        else:
+            self.notice.say("Turn to the meters (m) and put the cursor on a reading.")
+
     def action_sheet(self) -> None:
         """Open the sheet of the entry under the cursor of the history, to read or to mend."""
         entry: HistoryEntry | None = self.query_one("#history LongList", LongList).current
