@@ -105,10 +105,7 @@ def draw(plot: Plot, width: int, height: int) -> list[list[tuple[str, str]]]:
     values = [value for _, value in points] + [value for value, _ in edges]
     low, high = min(values), max(values)
     high = high if high > low else low + 1
-    labels = {
-        round((rows - 1) * n / (_TICKS - 1)): f"{high - (high - low) * n / (_TICKS - 1):.{plot.places}f} {plot.unit}"
-        for n in range(_TICKS)
-    }
+    labels = _labels(plot, low, high, rows)
     left = max(columns_of(label) for label in labels.values()) + 1
     edge = max((columns_of(word) + 1 for _, word in edges), default=0)
     along = [along for along, _ in points] + ([plot.until] if plot.until is not None else [])
@@ -130,6 +127,15 @@ def draw(plot: Plot, width: int, height: int) -> list[list[tuple[str, str]]]:
     ]
     below = " " * (left + 1) + _along_below(first, last, plot, field)
     return [*lines, [(below, "quiet")], [(fit(f" {plot.legend}", width), "quiet")]]
+
+
+def _labels(plot: Plot, low: float, high: float, rows: int) -> dict[int, str]:
+    """Give the rows that have a value at their side, evenly from the top to the bottom."""
+    steps = _TICKS - 1
+    return {
+        round((rows - 1) * n / steps): f"{high - (high - low) * n / steps:.{plot.places}f} {plot.unit}"
+        for n in range(_TICKS)
+    }
 
 
 class _Field:
