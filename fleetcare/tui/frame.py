@@ -105,7 +105,7 @@ class FramedScreen(Screen[Any]):
     """A screen with the frame around its body. `place` names its actions."""
 
     place: ClassVar[str] = ""
-    AUTO_FOCUS = "LongList, Sheet"
+    AUTO_FOCUS = "LongList, Prose"
 
     def __init_subclass__(cls, **settings: Any) -> None:
         cls.BINDINGS = bindings(cls.place)

@@ -18,7 +18,7 @@ from fleetcare.tui.widgets.detail import Detail
 from fleetcare.tui.widgets.long_list import LongList
 from fleetcare.tui.widgets.plot import Line, Plot, PlotView
 from fleetcare.tui.widgets.plot import say_day as say_along
-from fleetcare.tui.widgets.sheet import Block, Sheet
+from fleetcare.tui.widgets.prose import Block, Prose
 from fleetcare.tui.widgets.text import columns_of, fit
 from fleetcare.tui.widgets.trend import TrendPart
 from fleetcare.tui.writing import WritingScreen
@@ -110,8 +110,8 @@ class ItemScreen(WritingScreen):
         """The title, and a container for each part."""
         yield PartsBar()
         with_parts = (
-            Vertical(Sheet(), id="plate"),
-            Vertical(Sheet(), PlotView(), LongList(READINGS, lambda line: line.number), id="meters"),
+            Vertical(Prose(), id="plate"),
+            Vertical(Prose(), PlotView(), LongList(READINGS, lambda line: line.number), id="meters"),
             Vertical(LongList(LINES, lambda line: line.key), Detail(), id="lines"),
             Vertical(LongList(HISTORY, lambda entry: entry.number), Detail(), id="history"),
             TrendPart("POINT", "lash"),
@@ -132,10 +132,10 @@ class ItemScreen(WritingScreen):
         self.query_one(TopBar).tell(say_day(self.day))
         page = found.item
         cautions = [Block("CAUTIONS", found.cautions)] if found.cautions else []
-        self.query_one("#plate Sheet", Sheet).show(
+        self.query_one("#plate Prose", Prose).show(
             [Block(labels=page.nameplate), *cautions, Block(text=GENERAL, tone="quiet")]
         )
-        meters = self.query_one("#meters Sheet", Sheet)
+        meters = self.query_one("#meters Prose", Prose)
         meters.styles.height = min(max(len(page.meters), 1), _MOST_METERS)
         meters.show([Block(labels=page.meters, text="" if page.meters else "no meter")])
         self.query_one("#meters LongList", LongList).show([Section("", page.readings)], "No readings yet.")
@@ -170,7 +170,7 @@ class ItemScreen(WritingScreen):
         self.part = part
         for one in PARTS:
             self.query_one(f"#{one}").display = one == part
-        self.query_one(f"#{part}").query("LongList, Sheet").last().focus()
+        self.query_one(f"#{part}").query("LongList, Prose").last().focus()
         self._title()
 
     def action_turn(self, step: int) -> None:

@@ -7,7 +7,7 @@ from textual.widget import Widget
 from fleetcare.tui.actions import actions_of
 from fleetcare.tui.frame import FramedScreen
 from fleetcare.tui.looks import MARKS
-from fleetcare.tui.widgets.sheet import Block, Sheet
+from fleetcare.tui.widgets.prose import Block, Prose
 
 _MOVING = [
     ("↑ ↓", "move from line to line"),
@@ -37,12 +37,12 @@ class KeysScreen(FramedScreen):
         self.about = about
 
     def body(self) -> Iterable[Widget]:
-        """One sheet."""
-        yield Sheet()
+        """One text."""
+        yield Prose()
 
     def on_mount(self) -> None:
         """Fill it: nothing needs to be read."""
         own = [(" ".join(action.keys_said), action.tells) for action in actions_of(self.about)]
         marks = [(MARKS[tone], meaning) for tone, meaning in _MEANT.items()]
         blocks = [Block("KEYS", own), Block("MOVING", _MOVING), Block("MARKS", marks)]
-        self.query_one(Sheet).show(blocks)
+        self.query_one(Prose).show(blocks)

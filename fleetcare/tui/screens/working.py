@@ -8,7 +8,7 @@ from textual.widget import Widget
 from fleetcare.domain.cautions import GENERAL
 from fleetcare.tui.frame import TopBar, say_day
 from fleetcare.tui.loading import LoadingScreen
-from fleetcare.tui.widgets.sheet import Block, Sheet
+from fleetcare.tui.widgets.prose import Block, Prose
 
 if TYPE_CHECKING:
     from datetime import date
@@ -30,8 +30,8 @@ class WorkingScreen(LoadingScreen):
         self.tag, self.task_name = tag, task
 
     def body(self) -> Iterable[Widget]:
-        """One sheet."""
-        yield Sheet()
+        """One text."""
+        yield Prose()
 
     def read(self, connection: "Connection", on: "date", *, is_future: bool) -> Working:
         """Load working and history."""
@@ -43,7 +43,7 @@ class WorkingScreen(LoadingScreen):
         """Lay them out."""
         working, past = found
         self.query_one(TopBar).tell(say_day(self.day))
-        self.query_one(Sheet).show(
+        self.query_one(Prose).show(
             [
                 Block(f"{self.tag}  {self.task_name}", working),
                 *([Block("HISTORY", past)] if past else []),

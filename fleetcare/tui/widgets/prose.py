@@ -1,4 +1,4 @@
-"""A sheet of labelled sentences to read and scroll: a working, a nameplate, the keys."""
+"""A text of labelled sentences to read and scroll: a working, a nameplate, the keys."""
 
 from collections.abc import Sequence
 from dataclasses import dataclass
@@ -26,11 +26,11 @@ class Block:
     tone: str = ""
 
 
-class Sheet(ScrollView, can_focus=True):
+class Prose(ScrollView, can_focus=True):
     """Blocks of text, wrapped to the width there is, always literal."""
 
-    COMPONENT_CLASSES: ClassVar[set[str]] = {*TONE_CLASSES, "sheet--heading"}
-    DEFAULT_CSS = "Sheet { overflow-x: hidden; scrollbar-size-vertical: 1; }"
+    COMPONENT_CLASSES: ClassVar[set[str]] = {*TONE_CLASSES, "prose--heading"}
+    DEFAULT_CSS = "Prose { overflow-x: hidden; scrollbar-size-vertical: 1; }"
 
     def __init__(self) -> None:
         super().__init__()
@@ -52,7 +52,7 @@ class Sheet(ScrollView, can_focus=True):
         number, width = y + self.scroll_offset.y, self.scrollable_content_region.width
         segments = [Segment(" " * _MARGIN, self.rich_style)]
         for text, tone in self._lines[number] if number < len(self._lines) else ():
-            style = self.get_component_rich_style("sheet--heading", partial=True) if tone == "heading" else None
+            style = self.get_component_rich_style("prose--heading", partial=True) if tone == "heading" else None
             segments.append(Segment(text, self.rich_style + (style or tone_style(self, tone if not style else ""))))
         return Strip(segments).adjust_cell_length(width, self.rich_style)
 
