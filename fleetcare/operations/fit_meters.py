@@ -74,7 +74,7 @@ def restate_start(session: "Session", item: FoundItem, draft: ItemDraft, *, is_n
     if not draft.start_at:
         return
     assert draft.in_service is not None
-    meters = find_meters(session.connection(), item.id, draft.in_service)
+    meters = _meters_from(session, item, draft.in_service)
     seen: set[Kind] = set()
     own = [meter for meter in meters if meter.owner_id == item.id]
     for figure in draft.start_at:
@@ -91,6 +91,16 @@ def restate_start(session: "Session", item: FoundItem, draft: ItemDraft, *, is_n
             f"{item.tag} counts as new but has no start figure of {', '.join(sorted(left))}", "give --start-at for each"
         )
     session.flush()
+
+
+def _meters_from(session: "Session", item: FoundItem, on: date) -> list[FoundMeter]:
+    """Give the meters counting for an item on its first day; an own one that began later begins with it."""
+    fits = find_fits(session.connection(), item.id)
+    meters = {fit.meter.kind: fit.meter for fit in fits if fit.counts_on(on)}
+    for fit in fits:
+        if fit.meter.owner_id == item.id and fit.from_on is not None and on < fit.from_on:
+            meters.setdefault(fit.meter.kind, fit.meter)
+    return list(meters.values())
 
 
 def count_with_machine(session: "Session", engine: FoundItem, machine: FoundItem, on: date) -> None:

@@ -230,8 +230,9 @@ class FillingScreen(LoadingScreen):
             if name not in self._touched:
                 row.fill(self.start.get(name, ""))
         if not self._touched:
-            first = next((row for row in self.rows.values() if not row.value), None)
-            (first or next(iter(self.rows.values()))).editor.focus()
+            rows = [row for row in self.rows.values() if row.display]
+            empty = [row for row in rows if not row.value and not self.form.is_edit]
+            (*empty, *rows)[0].editor.focus()
 
     def _typed(self, editor: Widget) -> None:
         self._touched |= {name for name, row in self.rows.items() if row.editor is editor}

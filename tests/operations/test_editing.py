@@ -113,6 +113,11 @@ def test_an_edit_of_nothing_is_refused(yard: Context) -> None:
     assert refused(yard, lambda: change(yard, "P-01")).startswith("nothing to edit")
 
 
+def test_a_first_day_may_move_back_before_the_meter_began(yard: Context) -> None:
+    assert change(yard, "P-01", in_service="2023-12-01", start_at="0") == ["P-01 edited."]
+    assert reading(yard, "P-01", "2023-12-24", "12")
+
+
 def test_a_machine_is_edited_too(yard: Context) -> None:
     assert change(yard, "PH-1", name="Pump house", meter="starts") == ["PH-1 edited."]
 
