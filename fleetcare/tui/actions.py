@@ -90,6 +90,7 @@ ACTIONS = (
     Action("item", "c", "entry('correct')", "correct", "correct the entry under the cursor of the history"),
     Action("item", "v", "take_back", "take back", "take back the entry or reading under the cursor: it is not true"),
     Action("item", "b", "bring_back", "bring back", "let the reading under the cursor count again", in_foot=False),
+    Action("item", "s", "sheet", "sheet", "open the sheet of the entry under the cursor of the history, to mend it"),
     Action("item", "left", "turn(-1)", "left", "turn to the part on the left", in_foot=False),
     Action("item", "right", "turn(1)", "right", "turn to the part on the right", in_foot=False),
     Action("item", "enter", "working", "working", "show how the line comes about", in_foot=False),
@@ -137,10 +138,8 @@ ACTIONS = (
     Action("entry", "f1", "help", "keys", "show the keys of where you are"),
     Action("entry", "escape", "back", "back", "close the line; what is typed stays for the next time"),
     Action("sheet", "ctrl+s", "store", "store", "write it down"),
-    Action(
-        "sheet", "enter,tab", "next(1)", "next", "go to the next value, in the order valves can be set", goes_on=True
-    ),
-    Action("sheet", "shift+tab", "next(-1)", "before", "go to the value before", in_foot=False, goes_on=True),
+    Action("sheet", "enter,tab", "next(1)", "next", "go to the next value, in the order valves can be set"),
+    Action("sheet", "shift+tab", "next(-1)", "before", "go to the value before", in_foot=False),
     Action("sheet", "pagedown", "scroll(1)", "cautions", "scroll down, to the cautions below"),
     Action("sheet", "pageup", "scroll(-1)", "up", "scroll up", in_foot=False),
     Action("sheet", "ctrl+n", "anew", "begin anew", "throw away what was typed and begin anew"),
