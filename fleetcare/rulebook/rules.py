@@ -38,7 +38,9 @@ class ShopRules:
 @cache
 def shipped_rules() -> tuple[Rule, ...]:
     """Give every rule that comes with the program, file by file in the order they stand in."""
-    rules = [rule for path in sorted(FOLDER.glob("*.toml")) for rule in _all(_toml(path, path.name), path.name)]
+    rules: list[Rule] = []
+    for path in sorted(FOLDER.glob("*.toml")):
+        rules += _read_file(_toml(path, path.name), path.name, {}).rules
     _check_unique(rules, "the shipped rules")
     return tuple(rules)
 
@@ -50,31 +52,7 @@ def read_shop_rules(path: Path) -> ShopRules:
 
 def shop_rules(content: Mapping[str, Any], name: str) -> ShopRules:
     """Read a shop's own rules from what a file, or the database, has of them; `name` says where it stands."""
-    wrong = [
-        Refused(f"{name}: {field} is not known here", "write [[rule]], [[preset]] or [defaults]")
-        for field in content
-        if field not in _PARTS
-    ]
-    shipped = {rule.id: rule for rule in shipped_rules()}
-    rules, overrides, chosen = [], [], []
-    for number, raw in enumerate(_tables(content, "rule", name, wrong), start=1):
-        where = _where(name, "rule", number, raw.get("id"))
-        if raw.get("id") in shipped:
-            change = _read(Override, raw, where, wrong)
-            overrides += [change] if change else []
-        else:
-            rule = _read(RuleIn, {**content.get("defaults", {}), **raw}, where, wrong)
-            rules += [rule.fact] if rule else []
-    presets = {rule.preset for rule in (*shipped.values(), *rules)} - {""}
-    for number, raw in enumerate(_tables(content, "preset", name, wrong), start=1):
-        where = _where(name, "preset", number, raw.get("name"))
-        choice = _read(Chosen, raw, where, wrong)
-        if choice and choice.name not in presets:
-            wrong.append(Refused(f"{where}: there is no such preset", f"name one of {', '.join(sorted(presets))}"))
-        chosen += [choice] if choice else []
-    _refuse(wrong)
-    _check_unique([*rules, *overrides], name)
-    return ShopRules(tuple(rules), tuple(overrides), tuple(chosen))
+    return _read_file(content, name, {rule.id: rule for rule in shipped_rules()})
 
 
 def rule_book(*shops: ShopRules) -> RuleBook:
@@ -116,25 +94,51 @@ def _toml(path: Path, name: str) -> Mapping[str, Any]:
         raise Refused(f"{name} is not TOML: {error}", "correct it there") from None
 
 
-def _all(content: Mapping[str, Any], name: str) -> Iterator[Rule]:
-    wrong: list[Refused] = []
-    for number, raw in enumerate(_tables(content, "rule", name, wrong), start=1):
-        rule = _read(RuleIn, {**content.get("defaults", {}), **raw}, _where(name, "rule", number, raw.get("id")), wrong)
-        if rule:
-            yield rule.fact
+def _read_file(content: Mapping[str, Any], name: str, shipped: Mapping[str, Rule]) -> ShopRules:
+    wrong = [
+        Refused(f"{name}: {field} is not known here", "write [[rule]], [[preset]] or [defaults]")
+        for field in content
+        if field not in _PARTS
+    ]
+    rules, overrides, chosen = [], [], []
+    for where, raw in _tables(content, "rule", name, wrong):
+        if raw.get("id") in shipped:
+            change = _read(Override, raw, where, wrong)
+            overrides += [change] if change else []
+        else:
+            rule = _read(RuleIn, {**_defaults(content, name), **raw}, where, wrong)
+            rules += [rule.fact] if rule else []
+    presets = {rule.preset for rule in (*shipped.values(), *rules)} - {""}
+    for where, raw in _tables(content, "preset", name, wrong):
+        choice = _read(Chosen, raw, where, wrong)
+        if choice and choice.name not in presets:
+            wrong.append(Refused(f"{where}: there is no such preset", f"name one of {', '.join(sorted(presets))}"))
+        chosen += [choice] if choice else []
     _refuse(wrong)
+    _check_unique([*rules, *overrides], name)
+    return ShopRules(tuple(rules), tuple(overrides), tuple(chosen))
 
 
-def _tables(content: Mapping[str, Any], part: str, name: str, wrong: list[Refused]) -> list[Mapping[str, Any]]:
+def _defaults(content: Mapping[str, Any], name: str) -> Mapping[str, Any]:
+    defaults = content.get("defaults", {})
+    if isinstance(defaults, Mapping):
+        return defaults
+    raise Refused(f"{name}: defaults is no table", "begin it with [defaults] on a line of its own")
+
+
+def _tables(
+    content: Mapping[str, Any], part: str, name: str, wrong: list[Refused]
+) -> Iterator[tuple[str, Mapping[str, Any]]]:
+    """Give each table of a part of a file with where it stands: by id or name, else by number."""
     tables = content.get(part, [])
-    if isinstance(tables, list) and all(isinstance(table, Mapping) for table in tables):
-        return tables
-    wrong.append(Refused(f"{name}: {part} is no list of tables", f"begin each with [[{part}]] on a line of its own"))
-    return []
-
-
-def _where(name: str, part: str, number: int, called: object) -> str:
-    return f"{name}, {part} {called!r}" if isinstance(called, str) and called else f"{name}, {part} {number}"
+    if not isinstance(tables, list) or not all(isinstance(table, Mapping) for table in tables):
+        wrong.append(
+            Refused(f"{name}: {part} is no list of tables", f"begin each with [[{part}]] on a line of its own")
+        )
+        return
+    for number, table in enumerate(tables, start=1):
+        called = table.get("id", table.get("name"))
+        yield f"{name}, {part} {repr(called) if isinstance(called, str) and called else number}", table
 
 
 def _read(form: type[_Form], raw: Mapping[str, Any], where: str, wrong: list[Refused]) -> _Form | None:

@@ -1,7 +1,7 @@
 """Signals of an engine put together: one finding for each cause, with everything that speaks for it.
 
 Every flagged value is evidence of exactly one finding. Patterns choose first, the graver before the milder and the one
-with more conditions before the one with fewer: a pattern takes the values it flags, with all that is said of them, and
+with more conditions, then with more values, before the others: a pattern takes the values it flags, with all that is said of them, and
 names the cause. A pattern whose values all belong to another already speaks for that finding. What no pattern took goes
 by cause and subject, the cause being that of the gravest rule that flags the value, a law before a preset. So no finding
 is milder than the worst of its evidence, and nothing flagged is left out.
@@ -50,6 +50,7 @@ def _rank(signal: Signal) -> tuple[object, ...]:
     return (
         signal.severity is not Severity.ALARM,
         -conditions,
+        -len(signal.flagged),
         not signal.rule.is_law,
         signal.rule.id,
         signal.subject,
