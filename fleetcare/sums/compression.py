@@ -1,27 +1,14 @@
 """The bench sum on compression: what a cylinder should show while cranking."""
 
-import argparse
 from decimal import Decimal
 
-from fleetcare.cli.calc.answers import Answer, add_sum, all_or_none, shown
-from fleetcare.cli.parser import Commands, number
 from fleetcare.domain.quantities import plain
+from fleetcare.sums.base import Answer, Given, Option, Sum, all_or_none, shown
 
 _CLOSING = ("intake-closes", "stroke", "rod")
 
 
-def add_sums(sums: Commands) -> None:
-    """Add `cranking-pressure`."""
-    cranking = add_sum(sums, "cranking-pressure", "what a compression gauge should about show", _cranking_pressure)
-    cranking.add_argument("--compression-ratio", type=number, required=True, metavar="CR", help="such as 9.5")
-    cranking.add_argument("--altitude", type=number, default=Decimal(0), metavar="M", help="of the site, m (0)")
-    cranking.add_argument("--exponent", type=number, metavar="N", help="polytropic (1.3)")
-    cranking.add_argument("--intake-closes", type=number, metavar="DEG", help="degrees after bottom dead centre")
-    cranking.add_argument("--stroke", type=number, metavar="MM", help="stroke in mm")
-    cranking.add_argument("--rod", type=number, metavar="MM", help="length of the rod between centres in mm")
-
-
-def _cranking_pressure(given: argparse.Namespace) -> Answer:
+def _cranking_pressure(given: Given) -> Answer:
     from fleetcare.rules.compression import USUAL_EXPONENT, USUAL_EXPONENTS, IntakeClosing, cranking_pressure
 
     known = all_or_none(given, *_CLOSING)
@@ -56,3 +43,20 @@ def _cranking_pressure(given: argparse.Namespace) -> Answer:
 
 def _tenth(value: Decimal) -> str:
     return plain(round(value, 1))
+
+
+SUMS = (
+    Sum(
+        "cranking-pressure",
+        "what a compression gauge should about show",
+        (
+            Option("compression-ratio", "such as 9.5", "CR", is_required=True, plate="compression_ratio"),
+            Option("altitude", "of the site, m (0)", "M", default=Decimal(0), plate="altitude_m"),
+            Option("exponent", "polytropic (1.3)", "N"),
+            Option("intake-closes", "degrees after bottom dead centre", "DEG", plate="intake_closes_deg"),
+            Option("stroke", "stroke in mm", "MM", plate="stroke_mm"),
+            Option("rod", "length of the rod between centres in mm", "MM", plate="rod_mm"),
+        ),
+        _cranking_pressure,
+    ),
+)

@@ -1,32 +1,12 @@
 """Bench sums on what bore, stroke and speed make of each other, and on fuel use on the road."""
 
-import argparse
 from decimal import Decimal
 
-from fleetcare.cli.calc.answers import Answer, add_sum, shown
-from fleetcare.cli.parser import Commands, number, whole
 from fleetcare.domain.quantities import plain
+from fleetcare.sums.base import Answer, Given, Option, Sum, Takes, shown
 
 
-def add_sums(sums: Commands) -> None:
-    """Add `piston-speed`, `displacement` and `fuel-use`."""
-    speed = add_sum(sums, "piston-speed", "mean piston speed from stroke and speed", _piston_speed)
-    speed.add_argument("--stroke", type=number, required=True, metavar="MM", help="stroke in mm")
-    speed.add_argument("--rpm", type=number, required=True, help="engine speed in turns a minute")
-
-    swept = add_sum(sums, "displacement", "litres swept, and how bore and stroke compare", _displacement)
-    swept.add_argument("--bore", type=number, required=True, metavar="MM", help="bore in mm")
-    swept.add_argument("--stroke", type=number, required=True, metavar="MM", help="stroke in mm")
-    swept.add_argument("--cylinders", type=whole, required=True, metavar="N", help="number of cylinders")
-
-    fuel = add_sum(sums, "fuel-use", "L/100 km and miles per gallon, each from the other", _fuel_use)
-    one = fuel.add_mutually_exclusive_group(required=True)
-    one.add_argument("--litres-per-100km", type=number, metavar="L", help="litres per 100 km")
-    one.add_argument("--mpg-us", type=number, metavar="MPG", help="miles per US gallon")
-    one.add_argument("--mpg-imp", type=number, metavar="MPG", help="miles per imperial gallon")
-
-
-def _piston_speed(given: argparse.Namespace) -> Answer:
+def _piston_speed(given: Given) -> Answer:
     from fleetcare.rules import geometry
 
     speed = geometry.mean_piston_speed(given.stroke, given.rpm)
@@ -36,7 +16,7 @@ def _piston_speed(given: argparse.Namespace) -> Answer:
     )
 
 
-def _displacement(given: argparse.Namespace) -> Answer:
+def _displacement(given: Given) -> Answer:
     from fleetcare.rules import geometry
 
     swept = geometry.displacement(given.bore, given.stroke, given.cylinders)
@@ -48,7 +28,7 @@ def _displacement(given: argparse.Namespace) -> Answer:
     )
 
 
-def _fuel_use(given: argparse.Namespace) -> Answer:
+def _fuel_use(given: Given) -> Answer:
     from fleetcare.rules.fuel_use import Scale, fuel_use, reciprocal_constant
 
     values: dict[Scale, Decimal | None] = {
@@ -65,3 +45,37 @@ def _fuel_use(given: argparse.Namespace) -> Answer:
         f"{plain(value)} {scale} is {others}: L/100 km = {us} / mpg (US) = {imperial} / mpg (imperial).",
         {"litres_per_100km": use.litres_per_100km, "mpg_us": use.mpg_us, "mpg_imp": use.mpg_imp},
     )
+
+
+SUMS = (
+    Sum(
+        "piston-speed",
+        "mean piston speed from stroke and speed",
+        (
+            Option("stroke", "stroke in mm", "MM", is_required=True, plate="stroke_mm"),
+            Option("rpm", "engine speed in turns a minute", is_required=True, plate="rated_rpm"),
+        ),
+        _piston_speed,
+    ),
+    Sum(
+        "displacement",
+        "litres swept, and how bore and stroke compare",
+        (
+            Option("bore", "bore in mm", "MM", is_required=True, plate="bore_mm"),
+            Option("stroke", "stroke in mm", "MM", is_required=True, plate="stroke_mm"),
+            Option("cylinders", "number of cylinders", "N", takes=Takes.WHOLE, is_required=True, plate="cylinders"),
+        ),
+        _displacement,
+    ),
+    Sum(
+        "fuel-use",
+        "L/100 km and miles per gallon, each from the other",
+        (
+            Option("litres-per-100km", "litres per 100 km", "L"),
+            Option("mpg-us", "miles per US gallon", "MPG"),
+            Option("mpg-imp", "miles per imperial gallon", "MPG"),
+        ),
+        _fuel_use,
+        is_one_of=True,
+    ),
+)

@@ -1,13 +1,11 @@
 """The bench sum on valve order: which valves may be set at which position of the crank."""
 
-import argparse
 from collections.abc import Sequence
 from decimal import Decimal
 from typing import TYPE_CHECKING, Any
 
-from fleetcare.cli.calc.answers import Answer, add_sum, all_or_none, shown
-from fleetcare.cli.parser import Commands, number
 from fleetcare.domain.quantities import plain
+from fleetcare.sums.base import Answer, Given, Option, Sum, Takes, all_or_none, shown
 
 if TYPE_CHECKING:
     from fractions import Fraction
@@ -22,30 +20,7 @@ _TIMING = {
 }
 
 
-def _numbers(text: str) -> list[Decimal]:
-    return [number(part) for part in text.split("-")]
-
-
-def add_sums(sums: Commands) -> None:
-    """Add `valve-order`."""
-    order = add_sum(sums, "valve-order", "which valves may be set at which crank position", _valve_order)
-    order.add_argument("--firing-order", required=True, metavar="ORDER", help="cylinders as they fire: 1-5-3-6-2-4")
-    order.add_argument(
-        "--method",
-        choices=("two-position", "one-by-one"),
-        help="two stops of the crank (default where the cam allows it), or one for each cylinder",
-    )
-    for name, meaning in _TIMING.items():
-        order.add_argument(f"--{name}", type=number, metavar="DEG", help=meaning)
-    order.add_argument(
-        "--intervals",
-        type=_numbers,
-        metavar="DEG-DEG-...",
-        help="degrees of crank from each firing to the next where they are not even",
-    )
-
-
-def _valve_order(given: argparse.Namespace) -> Answer:
+def _valve_order(given: Given) -> Answer:
     from fleetcare.rules import valve_order
     from fleetcare.rules.nameplate import check_firing_order
 
@@ -127,3 +102,35 @@ def _decimal(angle: "Fraction") -> Decimal:
 
 def _degrees(angle: "Fraction") -> str:
     return f"{shown(_decimal(angle))}°"
+
+
+SUMS = (
+    Sum(
+        "valve-order",
+        "which valves may be set at which crank position",
+        (
+            Option(
+                "firing-order",
+                "cylinders as they fire: 1-5-3-6-2-4",
+                "ORDER",
+                takes=Takes.TEXT,
+                is_required=True,
+                plate="firing_order",
+            ),
+            Option(
+                "method",
+                "two stops of the crank (default where the cam allows it), or one for each cylinder",
+                takes=Takes.TEXT,
+                words=("two-position", "one-by-one"),
+            ),
+            *(Option(name, meaning, "DEG") for name, meaning in _TIMING.items()),
+            Option(
+                "intervals",
+                "degrees of crank from each firing to the next where they are not even",
+                "DEG-DEG-...",
+                takes=Takes.NUMBERS,
+            ),
+        ),
+        _valve_order,
+    ),
+)

@@ -1,39 +1,10 @@
 """Bench sums on oil: its viscosity, the grade it can be, and the wear it shows."""
 
-import argparse
-
-from fleetcare.cli.calc.answers import Answer, add_sum, all_or_none, shown
-from fleetcare.cli.parser import CommandParser, Commands, number
 from fleetcare.domain.quantities import plain
+from fleetcare.sums.base import Answer, Given, Option, Sum, all_or_none, shown
 
 
-def add_sums(sums: Commands) -> None:
-    """Add `viscosity-index`, `viscosity`, `grade` and `wear-rate`."""
-    _add_pair(add_sum(sums, "viscosity-index", "viscosity index from two viscosities", _viscosity_index))
-
-    viscosity = add_sum(sums, "viscosity", "viscosity at another temperature", _viscosity)
-    _add_pair(viscosity)
-    viscosity.add_argument("--at", type=number, required=True, metavar="C", help="temperature in °C")
-
-    grade = add_sum(sums, "grade", "the SAE J300 grades a new oil can be", _grade)
-    grade.add_argument("--kv100", type=number, required=True, metavar="CST", help="mm²/s (cSt) at 100 °C")
-    grade.add_argument("--hths", type=number, metavar="MPAS", help="high-shear viscosity at 150 °C, mPa·s")
-
-    wear = add_sum(sums, "wear-rate", "wear metal per 100 h, corrected for top-up", _wear_rate)
-    wear.add_argument("--ppm", type=number, required=True, help="metal in the sample, ppm or mg/kg")
-    wear.add_argument("--hours", type=number, required=True, metavar="H", help="hours on the oil")
-    wear.add_argument("--top-up", type=number, metavar="L", help="litres added since the oil was fresh")
-    wear.add_argument("--sump", type=number, metavar="L", help="litres in the sump")
-
-
-def _add_pair(parser: CommandParser) -> None:
-    for name, temperature in (("kv40", 40), ("kv100", 100)):
-        parser.add_argument(
-            f"--{name}", type=number, required=True, metavar="CST", help=f"mm²/s (cSt) at {temperature} °C"
-        )
-
-
-def _viscosity_index(given: argparse.Namespace) -> Answer:
+def _viscosity_index(given: Given) -> Answer:
     from fleetcare.rules.viscosity import viscosity_index
 
     index = viscosity_index(given.kv40, given.kv100)
@@ -50,7 +21,7 @@ def _viscosity_index(given: argparse.Namespace) -> Answer:
     )
 
 
-def _viscosity(given: argparse.Namespace) -> Answer:
+def _viscosity(given: Given) -> Answer:
     from fleetcare.rules.viscosity import walther
 
     line = walther(given.kv40, given.kv100)
@@ -64,7 +35,7 @@ def _viscosity(given: argparse.Namespace) -> Answer:
     )
 
 
-def _grade(given: argparse.Namespace) -> Answer:
+def _grade(given: Given) -> Answer:
     from fleetcare.rules.j300 import THIN_WINTER_GRADES, grade_oil
 
     grading = grade_oil(given.kv100, given.hths)
@@ -91,7 +62,7 @@ def _grade(given: argparse.Namespace) -> Answer:
     )
 
 
-def _wear_rate(given: argparse.Namespace) -> Answer:
+def _wear_rate(given: Given) -> Answer:
     from fleetcare.rules.oil import TRUSTED_MAKE_UP, wear_rate
 
     make_up = (given.top_up, given.sump) if all_or_none(given, "top-up", "sump") else None
@@ -113,3 +84,39 @@ def _wear_rate(given: argparse.Namespace) -> Answer:
             "uncorrected_ppm_per_100h": 100 * given.ppm / given.hours,
         },
     )
+
+
+_PAIR = (
+    Option("kv40", "mm²/s (cSt) at 40 °C", "CST", is_required=True),
+    Option("kv100", "mm²/s (cSt) at 100 °C", "CST", is_required=True),
+)
+
+SUMS = (
+    Sum("viscosity-index", "viscosity index from two viscosities", _PAIR, _viscosity_index),
+    Sum(
+        "viscosity",
+        "viscosity at another temperature",
+        (*_PAIR, Option("at", "temperature in °C", "C", is_required=True)),
+        _viscosity,
+    ),
+    Sum(
+        "grade",
+        "the SAE J300 grades a new oil can be",
+        (
+            Option("kv100", "mm²/s (cSt) at 100 °C", "CST", is_required=True),
+            Option("hths", "high-shear viscosity at 150 °C, mPa·s", "MPAS"),
+        ),
+        _grade,
+    ),
+    Sum(
+        "wear-rate",
+        "wear metal per 100 h, corrected for top-up",
+        (
+            Option("ppm", "metal in the sample, ppm or mg/kg", is_required=True),
+            Option("hours", "hours on the oil", "H", is_required=True),
+            Option("top-up", "litres added since the oil was fresh", "L"),
+            Option("sump", "litres in the sump", "L", plate="sump_l"),
+        ),
+        _wear_rate,
+    ),
+)
