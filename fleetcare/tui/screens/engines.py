@@ -5,10 +5,11 @@ from typing import TYPE_CHECKING
 
 from textual.widget import Widget
 
+from fleetcare.errors import FleetError
 from fleetcare.tui.finding import FindingScreen
 from fleetcare.tui.frame import TopBar, say_day
 from fleetcare.tui.looks import MARKS, tone_of
-from fleetcare.tui.screens.due import EMPTY, NO_MATCH
+from fleetcare.tui.screens.due import NO_MATCH
 from fleetcare.tui.widgets.columns import Cell, Column, Section
 from fleetcare.tui.widgets.long_list import LongList
 
@@ -21,6 +22,11 @@ if TYPE_CHECKING:
     from fleetcare.tui.forms.base import Subject
 
 _WITHDRAWN = "withdrawn"
+EMPTY = (
+    "There is nothing here yet.\n \n"
+    "a adds an engine, m a machine such as a lorry or a pump house that engines are fitted in. What an engine sits in "
+    "comes first, if you keep tasks or meters of it."
+)
 
 
 def _needs(row: "YardRow") -> Cell:
@@ -69,6 +75,12 @@ class EnginesScreen(FindingScreen):
         """Show them, narrowed as before."""
         self.rows = found
         self.rearrange()
+
+    def fail(self, error: FleetError) -> None:
+        """Where there is no file yet, say how to begin beside what is wrong."""
+        super().fail(error)
+        if self.rows is None:
+            self.query_one(LongList).show([], "" if self.has_file else EMPTY)
 
     def rearrange(self) -> None:
         """Show those that hold the words wanted, by site; withdrawn ones last."""
