@@ -2,9 +2,15 @@
 
 from collections.abc import Mapping
 from decimal import Decimal
+from typing import TYPE_CHECKING
 
+from fleetcare.operations.find import find_item
+from fleetcare.operations.rows import fetch
 from fleetcare.rules.explain import Label
 from fleetcare.rules.geometry import displacement, mean_piston_speed
+
+if TYPE_CHECKING:
+    from sqlalchemy import Connection
 
 
 def derived_figures(plate: Mapping[str, object]) -> list[Label]:
@@ -24,3 +30,13 @@ def derived_figures(plate: Mapping[str, object]) -> list[Label]:
 def _figure(plate: Mapping[str, object], name: str) -> Decimal | None:
     value = plate.get(name)
     return Decimal(str(value)) if value is not None else None
+
+
+def plate_values(connection: "Connection", tag: str) -> dict[str, str]:
+    """Give what an engine's nameplate says, column by column, what it does not say left out; nothing for a machine."""
+    item = find_item(connection, tag)
+    columns = [row[1] for row in fetch(connection, "pragma table_info(engine)")]
+    rows = fetch(connection, "select * from engine where item_id = :id", id=item.id)
+    return {
+        name: str(value) for row in rows for name, value in zip(columns, row, strict=True) if value not in (None, "")
+    }

@@ -5,7 +5,7 @@ from dataclasses import dataclass
 from textual.binding import Binding, BindingType
 
 EVERYWHERE = "everywhere"
-TYPED_IN = frozenset({"form", "entry", "sheet"})
+TYPED_IN = frozenset({"form", "entry", "sheet", "sum"})
 """Places where letters are typed, so that no letter does anything else."""
 
 _SAID = {
@@ -91,6 +91,7 @@ ACTIONS = (
     Action("item", "v", "take_back", "take back", "take back the entry or reading under the cursor: it is not true"),
     Action("item", "b", "bring_back", "bring back", "let the reading under the cursor count again", in_foot=False),
     Action("item", "s", "sheet", "sheet", "open the sheet of the entry under the cursor of the history, to mend it"),
+    Action("item", "u", "sums", "bench sums", "work out a bench sum, filled from its nameplate", in_foot=False),
     Action("item", "left", "turn(-1)", "left", "turn to the part on the left", in_foot=False),
     Action("item", "right", "turn(1)", "right", "turn to the part on the right", in_foot=False),
     Action("item", "enter", "working", "working", "show how the line comes about", in_foot=False),
@@ -145,6 +146,12 @@ ACTIONS = (
     Action("sheet", "ctrl+n", "anew", "begin anew", "throw away what was typed and begin anew"),
     Action("sheet", "f1", "help", "keys", "show the keys of where you are"),
     Action("sheet", "escape", "back", "back", "leave; what is typed stays for the next time"),
+    Action("sums", "enter", "open", "open", "work out the sum under the cursor"),
+    Action("sums", "escape", "back", "back", "go back to where you came from"),
+    Action("sum", "enter,down,tab", "next(1)", "next figure", "go to the next figure", goes_on=True),
+    Action("sum", "up,shift+tab", "next(-1)", "figure before", "go to the figure before", in_foot=False, goes_on=True),
+    Action("sum", "f1", "help", "keys", "show the keys of where you are"),
+    Action("sum", "escape", "back", "back", "go back to the list of sums"),
     Action("narrow", "enter,space", "choose", "choose", "choose what is under the cursor, or no longer"),
     Action("narrow", "n", "to_group(1)", "next group", "go to the next heading", in_foot=False),
     Action("narrow", "p", "to_group(-1)", "group before", "go to the heading before", in_foot=False),

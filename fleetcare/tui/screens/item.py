@@ -233,6 +233,12 @@ class ItemScreen(WritingScreen):
         enter = partial(_mend_sheet, entry.number, self.context.today())
         self.app.push_screen(SheetScreen(SHEETS[entry.sheet], about, enter), self._written)
 
+    def action_sums(self) -> None:
+        """Open the bench sums, filled from the nameplate."""
+        from fleetcare.tui.screens.sums import SumsScreen
+
+        self.app.push_screen(SumsScreen(self.tag))
+
     def action_working(self) -> None:
         """Show how the line under the cursor comes about."""
         from fleetcare.tui.screens.working import WorkingScreen
