@@ -12,6 +12,9 @@ from sqlalchemy import Connection
 
 GENESIS = "0" * 64  # what the first entry is sealed to
 
+DERIVED = ("judged_engine",)
+"""Tables whose rows are worked out from all others and may be dropped at any time: the ledger knows none of them."""
+
 
 class Entry(NamedTuple):
     """One entry of the ledger: the row `row_uid` of the table `kind`, as it was stored or changed."""

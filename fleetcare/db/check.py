@@ -8,7 +8,7 @@ from collections.abc import Iterator
 
 from sqlalchemy import Connection, text
 
-from fleetcare.db.chain import START, Entry, entries, last_entry, payload, rows
+from fleetcare.db.chain import DERIVED, START, Entry, entries, last_entry, payload, rows
 from fleetcare.db.session import HEAD, revision
 from fleetcare.errors import Misread
 
@@ -80,6 +80,8 @@ def _rows(connection: Connection, newest: Newest) -> Iterator[str]:
         "AND name NOT IN ('ledger', 'alembic_version') ORDER BY name"
     )
     for table, has_uid in connection.execute(tables).all():
+        if table in DERIVED:
+            continue
         if not has_uid:
             yield f"the table {table} is none of fleetcare's"
             continue

@@ -19,7 +19,7 @@ from fleetcare.errors import NoDatabase
 if TYPE_CHECKING:
     from sqlalchemy.orm import Session
 
-HEAD = "20261201_first_tables"
+HEAD = "20261202_findings"
 """The newest revision in `migrations/`, kept here so that opening need not load them."""
 
 PATIENCE = 30.0

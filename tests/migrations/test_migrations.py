@@ -22,6 +22,7 @@ from fleetcare.db.tables import Item, Site, metadata
 from fleetcare.errors import NoDatabase
 from fleetcare.operations import upkeep
 
+COMMITTED = Path(__file__).parents[2] / "demo_fleet.db"
 NEXT = "20270101_next"
 REVISION = f"""
 import sqlalchemy as sa
@@ -201,3 +202,32 @@ def test_checking_an_older_file_says_so_and_does_not_upgrade_it(
         f"the tables are those of {session.HEAD}, this program's are those of {NEXT}",
     )
     assert older.read_bytes() == before
+
+
+# A file as the first release of the tables left it
+
+
+def counted(path: Path) -> dict[str, int]:
+    """How many rows each table of a file holds."""
+    with closing(sqlite3.connect(path)) as connection:
+        names = [name for (name,) in connection.execute("SELECT name FROM sqlite_master WHERE type = 'table'")]
+        return {name: connection.execute(f'SELECT count(*) FROM "{name}"').fetchone()[0] for name in names}
+
+
+@pytest.fixture
+def of_the_first_tables(tmp_path: Path) -> Path:
+    """The demo fleet in the tables of the first revision."""
+    path = Path(shutil.copy(COMMITTED, tmp_path / "yard.db"))
+    with session.engine(path, foreign_keys=False).begin() as connection:
+        command.downgrade(migrate.config(migrate.scripts_folder(), connection), "20261201_first_tables")
+    return path
+
+
+def test_a_file_of_the_first_tables_keeps_every_row_and_is_sound(of_the_first_tables: Path) -> None:
+    before = counted(of_the_first_tables)
+    assert "finding_answer" not in before
+    with Context(str(of_the_first_tables)).read() as connection:
+        assert session.revision(connection) == session.HEAD
+    after = counted(of_the_first_tables)
+    assert {name: after[name] for name in before} == before
+    assert upkeep.check(Context(str(of_the_first_tables))).problems == ()

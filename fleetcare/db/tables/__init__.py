@@ -1,6 +1,7 @@
 """Every table, in one place to import from."""
 
 from fleetcare.db.columns import Row, Stored
+from fleetcare.db.tables.findings import FindingAnswer, JudgedEngine, ShopRules
 from fleetcare.db.tables.items import (
     DutyFactor,
     Engine,
@@ -41,8 +42,10 @@ __all__ = [
     "DeferralFigure",
     "DutyFactor",
     "Engine",
+    "FindingAnswer",
     "Fitting",
     "Item",
+    "JudgedEngine",
     "LashSpec",
     "LedgerEntry",
     "LogEntry",
@@ -58,6 +61,7 @@ __all__ = [
     "Setting",
     "Sheet",
     "SheetValue",
+    "ShopRules",
     "Site",
     "StartFigure",
     "StatusSpell",
