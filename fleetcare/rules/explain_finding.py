@@ -53,13 +53,13 @@ def finding_row(finding: Finding) -> FindingRow:
         cause=finding.cause,
         subject=say_subject(finding.subject),
         measured=figure.measured,
-        unit=say_unit(figure.rule),
+        unit=say_unit(figure.rule, figure.unit),
         limit=figure.limit,
         margin=figure.margin,
         since=finding.since,
         source=" / ".join(_each(signal.rule.source for signal in finding.signals)),
         explanation=say_finding(finding),
-        working=tuple(say_working(signal) for signal in finding.signals if signal.steps or signal.measured is not None),
+        working=tuple(say_working(signal) for signal in finding.signals if signal.measured is not None),
         evidence=tuple(say_evidence(value) for value in finding.evidence),
         next_step=say_next_step(finding),
         caution=" ".join((*_each(signal.rule.caution for signal in finding.signals), GENERAL)),
@@ -109,12 +109,10 @@ def say_measured(rule: Rule) -> str:
 
 
 def say_working(signal: Signal) -> str:
-    """Say how a figure was worked out, number by number: "iron 33 ppm, hours on the oil 200 h: 16.1 ppm per 100 h"."""
+    """Say how a figure was worked out, number by number: "rise of iron 16 ppm per 100 h (its rule) from …"."""
+    assert signal.measured is not None
     steps = ", ".join(say_step(step) for step in signal.steps)
-    if signal.measured is None:
-        return steps
-    result = _figure(signal.measured, say_unit(signal.rule, signal.unit))
-    told = f"{say_measured(signal.rule)} {result}"
+    told = f"{say_measured(signal.rule)} {_figure(signal.measured, say_unit(signal.rule, signal.unit))}"
     return f"{told} ({signal.rule.id}){f' from {steps}' if steps else ''}"
 
 
@@ -156,7 +154,9 @@ def say_unit(rule: Rule, unit: str = "") -> str:
 
 
 def _figure(value: Decimal, unit: str) -> str:
-    return f"{plain(round(value, _PLACES))}{f' {unit}' if unit else ''}"
+    """Write a figure to four decimals, and one that would be rounded to nothing with its first digit."""
+    shown = round(value, _PLACES) or Decimal(f"{value:.1g}")
+    return f"{plain(shown)}{f' {unit}' if unit else ''}"
 
 
 _BASES = {Basis.LESS_NEW: " above new oil", Basis.NAMEPLATE: " of the nameplate", Basis.YEAR: " of the year"}

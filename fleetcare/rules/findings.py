@@ -35,6 +35,8 @@ def merge(engine: str, signals: Iterable[Signal]) -> tuple[Finding, ...]:
 def _claim(signal: Signal, owners: dict[Evidence, _Key], grouped: dict[_Key, list[Signal]]) -> None:
     free = [value for value in signal.flagged if value not in owners]
     key = (signal.rule.cause, signal.subject) if free else owners[signal.flagged[0]]
+    if not free and any((one.rule.id, one.subject) == (signal.rule.id, signal.subject) for one in grouped[key]):
+        return  # the same pattern, seen again from the sheet of another kind
     for value in free:
         owners[value] = key
     taken = [value for value in signal.flagged if owners[value] != key]

@@ -150,7 +150,7 @@ def test_every_flagged_value_is_evidence_of_exactly_one_finding_and_none_is_mild
 def test_every_signal_speaks_in_exactly_one_finding(about: MeasuredFacts) -> None:
     signals = (*judge(RULES, about), *about.standing)
     spoken = [(one.rule.id, one.subject) for finding in merge("P-01", signals) for one in finding.signals]
-    assert sorted(spoken) == sorted((one.rule.id, one.subject) for one in signals)
+    assert sorted(spoken) == sorted({(one.rule.id, one.subject) for one in signals})
 
 
 @given(measured(), st.randoms(use_true_random=False))

@@ -98,6 +98,12 @@ def test_a_pattern_whose_values_all_belong_to_another_speaks_for_that_finding() 
     assert [value.quantity for value in finding.evidence] == ["K", "Na"]
 
 
+def test_a_pattern_seen_again_from_the_sheet_of_another_kind_speaks_once() -> None:
+    valve = fits("closing valve", "lash", "pressure", subject="3")
+    (finding,) = merge("P-01", (valve, replace(valve, on=date(2026, 4, 1))))
+    assert len(finding.signals) == 1
+
+
 def test_two_patterns_of_one_cause_are_one_finding() -> None:
     table = fits("suspected", "K", "Na", severity=ALARM)
     table = replace(table, rule=replace(table.rule, cause="coolant"))

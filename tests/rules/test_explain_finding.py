@@ -1,0 +1,171 @@
+"""A finding in words: what was measured, the limit, by how much, how worked out, since when, the source, what to do."""
+
+from dataclasses import replace
+from decimal import Decimal
+
+import pytest
+
+from fleetcare.domain.cautions import GENERAL
+from fleetcare.domain.findings import Finding
+from fleetcare.domain.rule_book import (
+    AgainstSheet,
+    Asks,
+    Basis,
+    Best,
+    Bounds,
+    By,
+    Change,
+    Condition,
+    Limits,
+    Method,
+    Pattern,
+    Pool,
+    Rate,
+    Rule,
+    Shape,
+    Since,
+    Statistical,
+)
+from fleetcare.rules.explain_finding import (
+    finding_row,
+    say_evidence,
+    say_finding,
+    say_measured,
+    say_next_step,
+    say_signal,
+    say_subject,
+    say_unit,
+    say_working,
+)
+from fleetcare.rules.findings import merge
+from fleetcare.rules.judging.facts import MeasuredFacts
+from fleetcare.rules.judging.judge import judge
+from tests.builders import day
+from tests.rules.measured import a_rule, a_sheet, beyond, facts, one_signal, pressures, reach, value
+
+
+def found(about: MeasuredFacts, *rules: Rule) -> Finding:
+    """The one finding of some rules."""
+    (finding,) = merge("P-01", judge(rules, about))
+    return finding
+
+
+def test_a_finding_is_said_with_its_figure_its_limit_and_since_when() -> None:
+    about = facts(a_sheet(value("Fe", "120")), earlier=(a_sheet(value("Fe", "110"), days=30),))
+    assert say_finding(found(about, a_rule())) == (
+        "iron wear: liners, shafts, gears; iron 120 ppm, 20 ppm above the alert limit of 100 ppm; since 2026-03-18"
+    )
+
+
+def test_the_row_of_a_finding_has_the_figures_of_its_gravest_signal_and_every_source_once() -> None:
+    mild = a_rule(id="preset", source="a handbook", caution="Hot oil burns.")
+    grave = a_rule(id="trend", high=Limits(alarm=beyond("90")), source="a manual", caution="Hot oil burns.")
+    row = finding_row(found(facts(a_sheet(value("Fe", "120"))), mild, grave))
+    assert (row.engine, row.rule, row.severity, row.cause, row.subject) == (
+        "P-01",
+        "trend",
+        "alarm",
+        "iron wear",
+        "the engine",
+    )
+    assert (row.measured, row.unit, row.limit, row.margin) == (Decimal(120), "ppm", Decimal(90), Decimal(-30))
+    assert row.source == "a manual / a handbook"
+    assert row.caution == f"Hot oil burns. {GENERAL}"
+    assert row.working == ("iron 120 ppm (trend)", "iron 120 ppm (preset)")
+    assert row.evidence == ("iron 120 ppm on 2026-04-17",)
+    assert (row.next_step, row.due_by) == ("sample again", None)
+
+
+def test_a_pattern_alone_has_no_figure_and_one_beside_it_says_what_else_would_fit() -> None:
+    asked = (Condition(("Fe",), Asks.WITHIN, low=beyond("50"), unit="ppm", calls_out=True),)
+    pattern = a_rule(id="worn", quantity="", unit="", high=Limits(), shape=Pattern(asked), cause="worn liners")
+    also = replace(pattern, id="also", cause="dirt")
+    about = facts(a_sheet(value("Fe", "60")))
+    row = finding_row(found(about, pattern))
+    assert (row.measured, row.unit, row.working) == (None, "", ())
+    said = say_finding(found(facts(a_sheet(value("Fe", "120"))), pattern, also, a_rule()))
+    assert said == (
+        "dirt: liners, shafts, gears; iron 120 ppm, 20 ppm above the alert limit of 100 ppm;"
+        " it would also fit worn liners; since 2026-04-17"
+    )
+
+
+def test_a_cylinder_is_named_and_a_fall_is_below() -> None:
+    rule = a_rule(
+        id="r75",
+        kinds=("compression",),
+        quantity="pressure",
+        shape=AgainstSheet(Best.HIGHEST, By.RATIO),
+        unit="%",
+        low=Limits(alarm=beyond("75")),
+        high=Limits(),
+        cause="low compression",
+    )
+    finding = found(facts(pressures("400", "280")), rule)
+    assert say_finding(finding).startswith("low compression at cylinder 2: ")
+    assert say_signal(finding.lead) == (
+        "compression as a share of the highest at cylinder 2 70 %, 5 % below the alarm limit of 75 %"
+    )
+    assert say_working(finding.lead) == (
+        "compression as a share of the highest 70 % (r75) from compression 280 psi, highest 400 psi"
+    )
+
+
+def test_a_figure_that_only_reaches_its_limit_says_so() -> None:
+    signal = one_signal(a_rule(high=Limits(reach("100"))), facts(a_sheet(value("Fe", "100"))))
+    assert say_signal(signal) == "iron 100 ppm reaches the alert limit"
+
+
+def test_a_hair_above_a_limit_is_never_rounded_to_nothing() -> None:
+    signal = one_signal(a_rule(), facts(a_sheet(value("Fe", "100.000004"))))
+    assert say_signal(signal) == "iron 100 ppm, 0.000004 ppm above the alert limit of 100 ppm"
+
+
+@pytest.mark.parametrize(
+    ("shape", "said"),
+    [
+        (Bounds(), "iron"),
+        (Bounds(Basis.LESS_NEW), "iron above new oil"),
+        (Bounds(Basis.NAMEPLATE), "iron of the nameplate"),
+        (Bounds(Basis.YEAR), "iron of the year"),
+        (AgainstSheet(Best.MEAN, By.DIFFERENCE), "iron less the mean of all"),
+        (AgainstSheet(Best.LOWEST, By.SHARE), "iron against the lowest"),
+        (Change(Since.NEW, By.SHARE), "iron against new oil"),
+        (Change(Since.BEFORE, By.RATIO), "iron as a share of the last test"),
+        (Rate(Since.NEW, 100), "rise of iron"),
+        (Statistical(Pool.OWN, Method.ROBUST, 10), "iron"),
+    ],
+)
+def test_what_a_rule_works_out_has_a_name(shape: Shape, said: str) -> None:
+    assert say_measured(a_rule(shape=shape)) == said
+
+
+def test_a_rate_is_per_its_hours() -> None:
+    assert say_unit(a_rule(shape=Rate(Since.NEW, 100))) == "ppm per 100 h"
+    assert say_unit(a_rule(), "mm") == "mm"
+
+
+@pytest.mark.parametrize(
+    ("subject", "said"),
+    [("", "the engine"), ("3", "cylinder 3"), ("2-3", "cylinders 2 and 3"), ("3E", "3E"), ("next", "next")],
+)
+def test_a_subject_is_named(subject: str, said: str) -> None:
+    assert say_subject(subject) == said
+
+
+def test_evidence_is_said_as_it_was_entered() -> None:
+    sheet = a_sheet(value("lash", "0.25..0.30", point="3E", phase="found"), value("ph", "4", ""), kind="lash")
+    rules = [
+        a_rule(id="lash", kinds=("lash",), quantity="lash", unit="mm", low=Limits(beyond("0.4")), high=Limits()),
+        a_rule(id="ph", kinds=("lash",), quantity="ph", unit="", low=Limits(beyond("4.5")), high=Limits()),
+    ]
+    said = [say_evidence(one.flagged[0]) for one in judge(rules, facts(sheet))]
+    assert said == ["valve lash at 3E 0.25..0.30 mm, found on 2026-04-17", "initial pH 4 on 2026-04-17"]
+
+
+def test_the_step_the_law_dates_comes_first() -> None:
+    law = a_rule(id="law", high=Limits(beyond("100")), business_days=2, next_step="change the oil", is_law=True)
+    finding = found(facts(a_sheet(value("Fe", "300"))), a_rule(), law)
+    assert finding.lead.rule.id == "iron"
+    assert say_next_step(finding) == "change the oil, by 2026-04-21; sample again"
+    assert finding_row(finding).due_by == day("2026-04-21")
