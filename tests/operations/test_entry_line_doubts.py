@@ -147,3 +147,10 @@ def test_an_engine_withdrawn_since_the_vocabulary_was_loaded_is_said(ctx: Contex
     with ctx.read() as connection:
         (question,) = read_back(connection, "p3 oil 1234", TODAY, words).questions
     assert question.asked == "P-03 is withdrawn since 2026-04-20; add it anew with fleetcare engine add"
+
+
+@pytest.mark.parametrize(("text", "leads_to"), [("p3 valve lash 1210", "sheet"), ("p3 oil 5", "meter")])
+def test_an_answer_that_no_line_can_hold_says_what_it_leads_to(back: Reader, text: str, leads_to: str) -> None:
+    (question,) = back(text).questions
+    assert [choice.leads_to for choice in question.choices if choice.text is None] == [leads_to]
+    assert {choice.leads_to for choice in question.choices if choice.text is not None} == {""}
