@@ -32,7 +32,7 @@ async def test_what_is_missing_and_what_is_wrong_is_said_while_it_is_typed(opene
         assert line_with(pilot, "! '0.35x' is not a number")
         await press(pilot, "backspace", "enter", *"0.25", "enter", "1")
         assert screen.rows["pitch"].value == "1"
-        assert line_with(pilot, "Turn the screw 36° tighter (0.1 turn)")
+        assert line_with(pilot, "Turn the screw 36° tighter")
 
 
 async def test_a_word_is_one_of_those_there_are(opened: Opened) -> None:
