@@ -101,7 +101,11 @@ def places_of(sheets: Sequence[Sheet], hours: CounterHistory | None) -> dict[int
 
 
 def lash_past(
-    points: Sequence[LashPoint], sheets: Sequence[Sheet], specs: tuple[LashSpec, ...], at: Mapping[int, Decimal], on: date
+    points: Sequence[LashPoint],
+    sheets: Sequence[Sheet],
+    specs: tuple[LashSpec, ...],
+    at: Mapping[int, Decimal],
+    on: date,
 ) -> tuple[PointPast, ...]:
     """Give the past of each point up to a day, in the order of the points; those only sheets know of come last."""
     newest = spec_on(specs, on)
@@ -150,4 +154,3 @@ def _why_aside(judged: Judgement, conditions: set[str], at: Decimal | None) -> A
 
 def _is_same(found: PastValue, left: PastValue) -> bool:
     return found.entry == left.entry and found.ends == left.ends
-
