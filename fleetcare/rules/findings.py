@@ -22,7 +22,7 @@ def merge(engine: str, signals: Iterable[Signal]) -> tuple[Finding, ...]:
     ranked = sorted(signals, key=_rank)
     owners: dict[Evidence, _Key] = {}
     grouped: dict[_Key, list[Signal]] = defaultdict(list)
-    for signal in [one for one in ranked if isinstance(one.rule.shape, Pattern) and one.flagged]:
+    for signal in _once(one for one in ranked if isinstance(one.rule.shape, Pattern) and one.flagged):
         _claim(signal, owners, grouped)
     singles = [one for one in ranked if not isinstance(one.rule.shape, Pattern)]
     for signal in singles:
@@ -32,11 +32,19 @@ def merge(engine: str, signals: Iterable[Signal]) -> tuple[Finding, ...]:
     return tuple(sorted(findings, key=lambda one: (one.severity is not Severity.ALARM, one.cause, one.subject)))
 
 
+def _once(patterns: Iterable[Signal]) -> list[Signal]:
+    """Give each pattern once at its place: one across kinds of sheet is seen from the sheet of every kind."""
+    told: dict[tuple[str, str], Signal] = {}
+    for signal in patterns:
+        first = told.setdefault((signal.rule.id, signal.subject), signal)
+        flagged = tuple(sorted({*first.flagged, *signal.flagged}))
+        told[signal.rule.id, signal.subject] = replace(first, flagged=flagged)
+    return list(told.values())
+
+
 def _claim(signal: Signal, owners: dict[Evidence, _Key], grouped: dict[_Key, list[Signal]]) -> None:
     free = [value for value in signal.flagged if value not in owners]
     key = (signal.rule.cause, signal.subject) if free else owners[signal.flagged[0]]
-    if not free and any((one.rule.id, one.subject) == (signal.rule.id, signal.subject) for one in grouped[key]):
-        return  # the same pattern, seen again from the sheet of another kind
     for value in free:
         owners[value] = key
     taken = [value for value in signal.flagged if owners[value] != key]
