@@ -18,7 +18,7 @@ if TYPE_CHECKING:
     from fleetcare.operations.entering import Entered
 
 
-class FormScreen(StoringScreen, FillingScreen):
+class FormScreen(FillingScreen, StoringScreen):
     """A form on a subject. It is left with what was stored, in sentences, or with None."""
 
     _draft: "Draft | None" = None
