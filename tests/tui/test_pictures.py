@@ -56,6 +56,8 @@ SCREENS = {
     "entry-asked": Picture(SMALL, ("down", "i", *_typed("ps1 oil 29 fenn"), "down"), {"NO_COLOR": "1"}),
     "return": Picture(SMALL, ("x", "r")),
     "more": Picture(SMALL, ("x",)),
+    "edit": Picture(SMALL, ("down", "x", "e", *("down",) * 10, *"six", "ctrl+s")),
+    "schedule": Picture(SMALL, ("down", "x", "d", *"diesel-g", "right")),
     "round": Picture(SMALL, ("2", "o", *"Fenn", "enter", *"25", "enter", *"4811", "ctrl+s")),
 }
 

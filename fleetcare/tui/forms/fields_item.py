@@ -20,7 +20,7 @@ _ENGINE = (
     Field("duty", "Duty", "what it is used for, such as standby", group="ENGINE"),
     FUEL,
     CYLINDERS,
-    Field("layout", "Layout", "how they stand", choices=("inline", "v", "opposed", "single")),
+    Field("layout", "Layout", "how its cylinders stand", choices=("inline", "v", "opposed", "single")),
     Field("numbering", "Numbering", "of the cylinders of a V", choices=("by-bank", "alternating")),
     FIRING_ORDER,
     Field("bore", "Bore, mm", "such as 114"),
