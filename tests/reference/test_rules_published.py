@@ -60,6 +60,8 @@ def test_a_differential_reading_is_a_leak_in_percent_and_sixty_over_eighty_is_no
     signals = judge(_chosen(), facts(sheet))
     assert {str(one.severity) for one in signals} == ({severity} if severity else set())
     assert ("leakdown-differential" in {one.rule.id for one in signals}) is (severity == "alarm")
+    shared = replace(sheet, values=(value("supply", supply, "psi"), *sheet.values[1:]))
+    assert {one.rule.id for one in judge(_chosen(), facts(shared))} == {one.rule.id for one in signals}
 
 
 STANDBY = replace(ENGINE, duty="standby")

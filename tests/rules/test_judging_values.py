@@ -52,6 +52,14 @@ def test_a_leak_is_worked_out_of_supply_and_held_where_it_was_not_entered() -> N
     ]
 
 
+def test_a_supply_without_a_point_is_that_of_every_cylinder() -> None:
+    sheet = a_sheet(value("supply", "80", "psi"), value("held", "72", "psi", "1"), value("held", "60", "psi", "2"))
+    assert [(one.point, decimal(one.span.low)) for one in values_of(sheet, "leak")] == [
+        ("1", Decimal(10)),
+        ("2", Decimal(25)),
+    ]
+
+
 @pytest.mark.parametrize(
     "others",
     [

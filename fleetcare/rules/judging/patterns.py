@@ -169,13 +169,14 @@ def _said(condition: Condition, cylinder: int | None, scene: _Scene) -> _Match |
 
 
 def _values(condition: Condition, cylinder: int | None, scene: _Scene) -> list[Measured]:
-    """Give the values of the first sheet that has any of the quantities, at the place."""
+    """Give the values of the first sheet that has any of the quantities, at the place; one without a point is of all."""
     found = (
         [
             one
             for quantity in condition.quantities
             for one in values_of(sheet, quantity)
-            if one.phase not in {Phase.WET, Phase.NEW} and _is_at(one.point, quantity, condition.side, cylinder)
+            if one.phase not in {Phase.WET, Phase.NEW}
+            and (not one.point or _is_at(one.point, quantity, condition.side, cylinder))
         ]
         for sheet in scene.sheets
     )

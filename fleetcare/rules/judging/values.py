@@ -7,7 +7,7 @@ supply across a fixed orifice (FAA AC 43.13-1B, 8-14), and `wet_gain`, 100 (wet 
 import re
 from collections import defaultdict
 from collections.abc import Iterable, Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from fractions import Fraction
 
 from fleetcare.domain.findings import Evidence, Step
@@ -156,7 +156,8 @@ def _leaks(sheet: MeasuredSheet, known_points: set[str]) -> list[Measured]:
     leaks = []
     supplies = _entered(sheet, SUPPLY)
     for held in _entered(sheet, HELD):
-        supply = same_place(supplies, held)
+        # A supply without a point is that of every cylinder.
+        supply = same_place(supplies, held) or same_place(supplies, replace(held, point=""))
         if supply is None or held.point in known_points or not can_convert(held.unit, supply.unit):
             continue
         given, kept = supply.span, held.within(supply.unit)
