@@ -78,7 +78,7 @@ def test_a_meter_that_was_never_read_leaves_the_line_unset() -> None:
 def test_an_entry_without_a_figure_leaves_the_line_unset_and_names_the_entry() -> None:
     task = a_task(every("250h"), origin=new_at(0))
     due = line(task, on=ON, done=[done("2026-04-01", entry=7)], hours=100)
-    assert (due.state, due.reason) == (State.UNSET, "entry 7 has no hours figure; correct it and give --at")
+    assert (due.state, due.reason) == (State.UNSET, "entry 7 has no hours figure; correct it with what the dial showed")
 
 
 # From done

@@ -33,7 +33,7 @@ _PHRASES = tuple(
         ),
         ("first give fleetcare reading .+ --sure", "first write it down as a reading: r"),
         ("see fleetcare show TAG for", "see its page for"),
-        (r"bring it back with --restore \d+", "bring it back: b on its page"),
+        (r"bring it back with --restore \S+", "bring it back: b on its page"),
         (r"--restore \d+ brings it back", "b on its page brings it back"),
         (", or enter another reading with --rolled-over before it", ""),
         (", or a later --as-of", ""),
