@@ -34,8 +34,9 @@ def test_a_value_entered_twice_alike_counts_once_and_one_entered_differently_not
     sheet = a_sheet(value("Fe", "20"), value("Fe", "20"), value("Cu", "3"), value("Cu", "4"))
     assert len(values_of(sheet, "Fe")) == 1
     assert values_of(sheet, "Cu") == ()
-    assert contradictions(sheet, "Cu") == ("",)
-    assert contradictions(sheet, "Fe") == ()
+    assert contradictions(sheet, "Cu", ()) == ("",)
+    assert contradictions(sheet, "Fe", ()) == ()
+    assert contradictions(sheet, "Cu", (Phase.LEFT,)) == ()
 
 
 def test_a_leak_is_worked_out_of_supply_and_held_where_it_was_not_entered() -> None:

@@ -41,6 +41,15 @@ class JudgedSheet:
     verdicts: tuple[tuple[Evidence, Verdict], ...]
 
 
+@dataclass(frozen=True, slots=True)
+class Told:
+    """What single rules say of a sheet: signals, the values each holds to be within its limits, and why some are silent."""
+
+    signals: tuple[Signal, ...]
+    within: tuple[tuple[Rule, Evidence], ...]
+    silent: tuple[NotJudged, ...]
+
+
 def judge(rules: Iterable[Rule], facts: MeasuredFacts) -> tuple[Signal, ...]:
     """Give the signals of a sheet, each dated since when it is seen without a break."""
     return judge_sheet(rules, facts).signals
@@ -54,20 +63,28 @@ def inputs_missing(rules: Iterable[Rule], facts: MeasuredFacts) -> tuple[NotJudg
 def judge_sheet(rules: Iterable[Rule], facts: MeasuredFacts) -> JudgedSheet:
     """Judge a sheet by the rules for its engine; those for other kinds of sheet are left aside."""
     known = [rule for rule in rules if facts.sheet.kind in rule.kinds]
+    told = tell(known, facts)
+    signals = [replace(one, since=_since(one, facts)) for one in told.signals]
+    patterns = [(rule, rule.shape) for rule in known if isinstance(rule.shape, Pattern) and says(facts.sheet, rule)]
+    signals += match_patterns(patterns, facts, signals)
+    within = {value for _, value in told.within}
+    return JudgedSheet(tuple(signals), tuple(dict.fromkeys(told.silent)), _verdicts(facts, signals, within))
+
+
+def tell(rules: Iterable[Rule], facts: MeasuredFacts) -> Told:
+    """Hold a sheet against rules for its kind, patterns left aside; signals are not dated yet."""
     signals: list[Signal] = []
+    within: list[tuple[Rule, Evidence]] = []
     silent: list[NotJudged] = []
-    within: set[Evidence] = set()
-    for rule, shape in [(rule, rule.shape) for rule in known if not isinstance(rule.shape, Pattern)]:
+    for rule, shape in [(rule, rule.shape) for rule in rules if not isinstance(rule.shape, Pattern)]:
         for told in _tell(rule, shape, facts):
             if isinstance(told, Signal):
-                signals.append(replace(told, since=_since(told, shape, facts)))
+                signals.append(told)
             elif isinstance(told, NotJudged):
                 silent.append(told)
             else:
-                within.add(told)
-    patterns = [(rule, rule.shape) for rule in known if isinstance(rule.shape, Pattern) and says(facts.sheet, rule)]
-    signals += match_patterns(patterns, facts, signals)
-    return JudgedSheet(tuple(signals), tuple(dict.fromkeys(silent)), _verdicts(facts, signals, within))
+                within.append((rule, told))
+    return Told(tuple(signals), tuple(within), tuple(silent))
 
 
 def _tell(rule: Rule, shape: SingleShape, facts: MeasuredFacts) -> Iterator[Signal | NotJudged | Evidence]:
@@ -79,7 +96,7 @@ def _tell(rule: Rule, shape: SingleShape, facts: MeasuredFacts) -> Iterator[Sign
     if isinstance(shape, Bounds) and shape.end is not None:
         yield from lash_signals(rule, shape.end, facts.lash.get(facts.sheet.entry, ()), facts.sheet)
         return
-    for point in contradictions(facts.sheet, rule.quantity):
+    for point in contradictions(facts.sheet, rule.quantity, rule.phases):
         yield NotJudged(rule, point, "it was entered twice, with different values")
     values = judged_phases(values_of(facts.sheet, rule.quantity), rule.phases, rule.points)
     if not values:
@@ -111,15 +128,15 @@ def _figure(rule: Rule, shape: SingleShape, one: Measured, values: Sequence[Meas
             assert_never(shape)
 
 
-def _since(signal: Signal, shape: SingleShape, facts: MeasuredFacts) -> date:
+def _since(signal: Signal, facts: MeasuredFacts) -> date:
     """Give the day of the first sheet from which on a rule flagged this subject, sheets that could not tell passed over."""
     since = signal.on
     for place in range(len(facts.earlier) - 1, -1, -1):
         then = replace(facts, sheet=facts.earlier[place], earlier=facts.earlier[:place])
-        told = list(_tell(signal.rule, shape, then))
-        if any(isinstance(one, Signal) and (one.subject, one.end) == (signal.subject, signal.end) for one in told):
+        told = tell([signal.rule], then)
+        if any((one.subject, one.end) == (signal.subject, signal.end) for one in told.signals):
             since = then.sheet.on
-        elif any(isinstance(one, Evidence) and signal.subject in {one.point, ""} for one in told):
+        elif any(signal.subject in {one.point, ""} for _, one in told.within):
             break
     return since
 

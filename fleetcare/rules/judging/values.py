@@ -80,18 +80,15 @@ def values_of(sheet: MeasuredSheet, quantity: str) -> tuple[Measured, ...]:
     return _in_order(entered)
 
 
-def contradictions(sheet: MeasuredSheet, quantity: str) -> tuple[str, ...]:
-    """Give the points at which a quantity was entered twice with different values."""
-    return tuple(sorted({point for (point, _), values in _grouped(sheet, quantity).items() if len(values) > 1}))
+def contradictions(sheet: MeasuredSheet, quantity: str, phases: Sequence[Phase]) -> tuple[str, ...]:
+    """Give the points at which a quantity was entered twice with different values, in the phases that are judged."""
+    grouped = _grouped(sheet, quantity)
+    return tuple(sorted({p for (p, phase), ones in grouped.items() if len(ones) > 1 and _is_judged(phase, phases)}))
 
 
 def judged_phases(values: Iterable[Measured], phases: Sequence[Phase], points: Sequence[str]) -> list[Measured]:
     """Pick the values of some phases and points; of any but a wet test and fresh oil, and of all, where none are named."""
-    return [
-        one
-        for one in values
-        if (one.phase in phases if phases else one.phase not in _ASIDE) and (not points or one.point in points)
-    ]
+    return [one for one in values if _is_judged(one.phase, phases) and (not points or one.point in points)]
 
 
 def single(sheet: MeasuredSheet, quantity: str) -> Measured | None:
@@ -132,6 +129,10 @@ def title(quantity: str) -> str:
 def step(label: str, span: Span, unit: str) -> Step:
     """Give a number of the working; of a span its high end, labelled so."""
     return Step(label if span.is_known else f"{label}, at most", decimal(span.high), unit)
+
+
+def _is_judged(phase: Phase, phases: Sequence[Phase]) -> bool:
+    return phase in phases if phases else phase not in _ASIDE
 
 
 def _in_order(values: Iterable[Measured]) -> tuple[Measured, ...]:
