@@ -2,11 +2,9 @@
 
 import argparse
 
-from fleetcare.cli import output
 from fleetcare.cli.parser import Commands, day
-from fleetcare.cli.shop import context_of, label_with, option_label, options_of, say_entered, say_moved
+from fleetcare.cli.shop import context_of, label_with, option_label, options_of, say_entered
 from fleetcare.domain.engines import Status
-from fleetcare.domain.quantities import plain
 
 _STATUSES = (
     ("withdraw", Status.WITHDRAWN, "take out of the fleet; history stays, the tag is free again"),
@@ -76,15 +74,10 @@ def _status(given: argparse.Namespace) -> None:
 def _factor(given: argparse.Namespace) -> None:
     from fleetcare.drafts.items import FactorDraft
     from fleetcare.drafts.reading_in import read_draft
-    from fleetcare.operations.due import watch_moves
-    from fleetcare.operations.find import find_item
-    from fleetcare.operations.spells import set_factor
+    from fleetcare.operations.entering import enter_factor
 
     context = context_of(given)
     draft = read_draft(FactorDraft, options_of(given), label_with(kind="KIND", factor="F"))
     with context.write() as session:
-        item = find_item(session.connection(), draft.tag)
-        with watch_moves(session, item.tag, context.today()) as moves:
-            set_factor(session, item, draft.kind, draft.factor, draft.on, draft.why)
-    output.say(f"{item.tag}: {draft.kind} intervals × {plain(draft.factor)} from {draft.on} ({draft.why}).")
-    say_moved(moves.moved)
+        entered = enter_factor(session, draft, context.today())
+    say_entered(entered)

@@ -6,6 +6,7 @@ from datetime import date
 from typing import TYPE_CHECKING
 
 from fleetcare.domain.engines import Status
+from fleetcare.domain.quantities import plain
 from fleetcare.drafts.work import ReadingDraft
 from fleetcare.errors import SheetWanted
 from fleetcare.operations.against_past import NewReading, hold_against_past
@@ -17,7 +18,7 @@ from fleetcare.operations.items import fit_engine
 from fleetcare.operations.listing import pausing_tasks
 from fleetcare.operations.log import Logged, record_work, refuse_future
 from fleetcare.operations.readings import item_of_reading, record_reading, restore_reading, void_reading
-from fleetcare.operations.spells import change_status
+from fleetcare.operations.spells import change_status, set_factor
 from fleetcare.operations.stored_words import (
     logged_words,
     moved_words,
@@ -29,7 +30,7 @@ from fleetcare.operations.stored_words import (
 if TYPE_CHECKING:
     from sqlalchemy.orm import Session
 
-    from fleetcare.drafts.items import FitDraft, StatusDraft
+    from fleetcare.drafts.items import FactorDraft, FitDraft, StatusDraft
     from fleetcare.drafts.work import CorrectionDraft, DeferralDraft, LogDraft, MeasureDraft, RestoreDraft, VoidDraft
 
 
@@ -153,6 +154,15 @@ def enter_status(session: "Session", draft: "StatusDraft", status: Status, today
         [pausing_words(name) for name in pausing] if status is Status.LAID_UP else [],
         waiting=waiting,
     )
+
+
+def enter_factor(session: "Session", draft: "FactorDraft", today: date) -> Entered:
+    """Shorten the intervals of a kind from a day on."""
+    item = find_item(session.connection(), draft.tag)
+    with watch_moves(session, item.tag, today) as moves:
+        set_factor(session, item, draft.kind, draft.factor, draft.on, draft.why)
+    said = f"{item.tag}: {draft.kind} intervals × {plain(draft.factor)} from {draft.on} ({draft.why})."
+    return Entered([said], [*moved_words(moves.moved)])
 
 
 def enter_move(session: "Session", draft: "FitDraft", today: date) -> Entered:

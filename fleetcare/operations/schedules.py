@@ -133,10 +133,10 @@ def _apply(session: "Session", item: FoundItem, drafts: Sequence[TaskDraft], sta
     )
 
 
-def what_it_adds(connection: "Connection", tag: str, name: str) -> list[str]:
-    """Say each task a schedule would give an engine or machine, and what stands against it; nothing is stored.
+def what_it_adds(connection: "Connection", tag: str, name: str) -> tuple[list[str], str]:
+    """Say each task a schedule would give an engine or machine and what stands against it, and where it comes from.
 
-    Refuses an unknown schedule or tag, and a file that is not in order.
+    Nothing is stored. Refuses an unknown schedule or tag, and a file that is not in order.
     """
     schedule, item = find_schedule(name), find_item(connection, tag)
     drafts = {draft.name: draft for draft in read_tasks(schedule)}
@@ -144,10 +144,11 @@ def what_it_adds(connection: "Connection", tag: str, name: str) -> list[str]:
     left_out = _not_needed(connection, item, {task: draft.needs_sheet for task, draft in drafts.items()})
     against = dict.fromkeys(left_out, "left out, hydraulic adjusters keep the lash")
     against |= {task: f"{item.tag} has one already" for task in drafts if task.casefold() in taken}
-    return [
+    tasks = [
         "; ".join(filter(None, (f"{task}: {say_every(options)}", against.get(task, ""))))
         for task, options in zip(drafts, schedule.tasks, strict=True)
     ]
+    return tasks, schedule.source
 
 
 def _not_needed(connection: "Connection", item: FoundItem, sheets: Mapping[str, str | None]) -> tuple[str, ...]:

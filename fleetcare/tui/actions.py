@@ -99,6 +99,11 @@ ACTIONS = (
     Action("working", "e", "item", "engine", "open the page of the line's engine or machine"),
     Action("more", "enter", "choose", "open", "write down what is under the cursor"),
     Action("more", "v", "write('lash')", "valve lash", "measure its valve lash without closing a task", in_foot=False),
+    Action("more", "c", "write('compression')", "compression", "measure its compression", in_foot=False),
+    Action("more", "a", "write('leakdown')", "leak-down", "measure where its cylinders lose test air", in_foot=False),
+    Action("more", "u", "write('run')", "test run", "write down a test run", in_foot=False),
+    Action("more", "p", "write('spot')", "spot readings", "pressures and temperatures as read off", in_foot=False),
+    Action("more", "o", "write('oil')", "oil sample", "what the laboratory found in its oil", in_foot=False),
     Action("more", "l", "write('lay-up')", "lay up", "it is laid up for a while", in_foot=False),
     Action(
         "more", "r", "write('return')", "return", "it returns to service; what waits for that is shown", in_foot=False
@@ -107,6 +112,7 @@ ACTIONS = (
     Action("more", "w", "write('withdraw')", "withdraw", "it leaves the fleet; its history stays", in_foot=False),
     Action("more", "m", "write('move')", "move", "it goes into another machine, or out of its own", in_foot=False),
     Action("more", "n", "write('swap')", "new meter", "its meter was replaced by another", in_foot=False),
+    Action("more", "f", "write('factor')", "hard use", "its intervals are shortened: dust, short trips", in_foot=False),
     Action("more", "e", "write('edit')", "plate", "change its nameplate, site, start or meters", in_foot=False),
     Action("more", "t", "write('task')", "task", "a task it needs from now on", in_foot=False),
     Action("more", "k", "tasks", "all tasks", "all its tasks, to change or end them", in_foot=False),

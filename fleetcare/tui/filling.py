@@ -19,7 +19,7 @@ from fleetcare.tui.frame import TopBar, say_day
 from fleetcare.tui.loading import LoadingScreen
 from fleetcare.tui.widgets.detail import Detail
 from fleetcare.tui.widgets.form_fields import FieldRow, TextField, YesNo
-from fleetcare.tui.widgets.form_head import FormHead, FormTitle
+from fleetcare.tui.widgets.form_head import FormFoot, FormHead, FormTitle
 from fleetcare.tui.widgets.question import Question
 
 if TYPE_CHECKING:
@@ -65,7 +65,7 @@ class FillingScreen(LoadingScreen):
     def body(self) -> Iterable[Widget]:
         """What it is about, its fields, help on the one the cursor is in, and the place for a question."""
         yield FormTitle(self.form.heading(self.subject))
-        yield VerticalScroll(FormHead(), *self._grouped(), FormHead(id="preview"), can_focus=False)
+        yield VerticalScroll(FormHead(), *self._grouped(), FormFoot(), can_focus=False)
         yield Detail()
         yield Question()
 
@@ -128,7 +128,7 @@ class FillingScreen(LoadingScreen):
 
     def on_filling_screen_previewed(self, message: Previewed) -> None:
         """Show what would be added or changed by what is typed now."""
-        self.query_one("#preview", FormHead).tell(message.title, message.lines)
+        self.query_one(FormFoot).tell(message.title, message.lines)
 
     def on_input_changed(self, event: TextField.Changed) -> None:
         """Keep what is typed, and suggest by it."""

@@ -17,7 +17,8 @@ from fleetcare.errors import FleetError, Refused
 from fleetcare.operations.due import due_rows
 from fleetcare.operations.find import find_item
 from fleetcare.operations.items import add_item
-from fleetcare.operations.schedules import Applied, apply_schedule
+from fleetcare.operations.listing import list_tasks
+from fleetcare.operations.schedules import Applied, apply_schedule, what_it_adds
 from fleetcare.operations.spells import change_status
 from fleetcare.operations.tasks import add_task, remove_task
 from fleetcare.rulebook.schedules import find_schedule
@@ -254,3 +255,22 @@ def test_a_withdrawn_engine_is_given_nothing(ctx: Context, ditch: str) -> None:
     with ctx.write() as session:
         change_status(session, find_item(session.connection(), "P-01"), Status.WITHDRAWN, date(2026, 4, 1))
     assert refusal(ctx, ditch, "P-01") == ["P-01 is withdrawn since 2026-04-01; add it anew with fleetcare engine add"]
+
+
+def test_what_a_schedule_would_add_is_said_with_what_stands_against_it_and_stored_by_nobody(
+    ctx: Context, ditch: str
+) -> None:
+    engine(ctx, "P-01", adjuster="hydraulic")
+    with ctx.write() as session:
+        item = find_item(session.connection(), "P-01")
+        add_task(session, item, read_draft(TaskDraft, {"name": "OIL", "every": ["100h"]}), TODAY)
+    with ctx.read() as connection:
+        tasks, source = what_it_adds(connection, "P-01", ditch)
+        assert [row.name for row in list_tasks(connection, "P-01", TODAY)] == ["OIL"]
+    assert tasks == [
+        "Oil: 250h or 12mo; P-01 has one already",
+        "Lash: 1000h; left out, hydraulic adjusters keep the lash",
+        "Compression: on condition",
+        "Big service: 24mo",
+    ]
+    assert source == "workshop book"

@@ -60,6 +60,12 @@ _STANDING: Cases = {
     ],
     ("move", "on"): [("1 May", "'1 May' is not a date"), NOT_COME],
 }
+_FACTOR: Cases = {
+    ("factor", "kind"): [MISSING, ("days", "'days' is no kind of trigger; use one of hours")],
+    ("factor", "factor"): [MISSING, ("half", "'half' is not a number"), ("1.5", "a duty factor of 1.5 cannot be")],
+    ("factor", "on"): [("now", "'now' is not a date")],
+    ("factor", "why"): [MISSING],
+}
 _ITEMS: Cases = {
     ("engine", "tag"): [MISSING, ("PS-2", "the tag 'PS-2' belongs to an engine in use")],
     ("engine", "machine"): [("PH-7", "no engine or machine has the tag 'PH-7'")],
@@ -168,7 +174,7 @@ _NAMES: Cases = {
     ("person-name", "known"): [MISSING, ("Nobody", "there is no person 'Nobody'; choose one of")],
     ("person-name", "name"): [MISSING, ("QUILL", "there is a person 'Quill' already; write another name")],
 }
-WRONG: Cases = {**_WORK, **_METERS, **_STANDING, **_ITEMS, **_PLATE, **_TASKS, **_NAMES}
+WRONG: Cases = {**_WORK, **_METERS, **_STANDING, **_FACTOR, **_ITEMS, **_PLATE, **_TASKS, **_NAMES}
 
 SAID_ELSEWHERE = {
     ("log", "follow_up", "yes"): "defect",
@@ -199,6 +205,7 @@ BESIDE = {
     "task": {"name": "Belts", "every": "500h"},
     "schedule": {"name": "emergency-exercise"},
     "move": {"machine": "PH-1"},
+    "factor": {"kind": "hours", "factor": "0.8", "why": "dust"},
     "site-name": {"known": "North Sluice", "name": "North Gate"},
     "person-name": {"known": "Fenn", "name": "Fen"},
 }

@@ -70,7 +70,8 @@ def _preview(
 ) -> tuple[str, Sequence[str]]:
     from fleetcare.operations.schedules import what_it_adds
 
-    return "WOULD ADD", what_it_adds(connection, subject.tag, values["name"].strip())
+    tasks, source = what_it_adds(connection, subject.tag, values["name"].strip())
+    return f"WOULD ADD  {len(tasks)}", [*tasks, f"from {source}"]
 
 
 def _nothing(facts: "FormFacts", subject: Subject, on: date) -> Mapping[str, str]:

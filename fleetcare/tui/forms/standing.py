@@ -1,6 +1,7 @@
-"""Forms on how an engine stands: laid up, returned, stood down, withdrawn, moved to another machine."""
+"""Forms on how an engine stands: laid up, returned, stood down, withdrawn, moved, in hard use."""
 
 from collections.abc import Callable, Sequence
+from dataclasses import replace
 from datetime import date
 from typing import TYPE_CHECKING
 
@@ -10,7 +11,7 @@ from fleetcare.tui.forms.base import BY, ON, WHY, Field, Form, Said, Subject
 if TYPE_CHECKING:
     from sqlalchemy.orm import Session
 
-    from fleetcare.drafts.items import FitDraft, StatusDraft
+    from fleetcare.drafts.items import FactorDraft, FitDraft, StatusDraft
     from fleetcare.drafts.reading_in import Draft
     from fleetcare.operations.entering import Entered
     from fleetcare.operations.form_facts import FormFacts
@@ -38,7 +39,7 @@ def _becomes(status: Status) -> "Callable[[Session, Subject, StatusDraft, date, 
 
 
 def _waiting(facts: "FormFacts") -> tuple[str, Sequence[str]]:
-    return "BEFORE RETURN", facts.waiting or ("nothing waits",)
+    return f"BEFORE RETURN  {len(facts.waiting)}", facts.waiting or ("nothing waits",)
 
 
 def _fit_draft() -> "type[Draft]":
@@ -51,6 +52,18 @@ def _move(session: "Session", subject: Subject, draft: "FitDraft", today: date, 
     from fleetcare.operations.entering import enter_move
 
     return enter_move(session, draft, today)
+
+
+def _factor_draft() -> "type[Draft]":
+    from fleetcare.drafts.items import FactorDraft
+
+    return FactorDraft
+
+
+def _factor(session: "Session", subject: Subject, draft: "FactorDraft", today: date, said: Said) -> "Entered":
+    from fleetcare.operations.entering import enter_factor
+
+    return enter_factor(session, draft, today)
 
 
 _FIELDS = (ON, WHY, BY)
@@ -76,4 +89,16 @@ MOVE = Form(
     ),
     _fit_draft,
     _move,
+)
+FACTOR = Form(
+    "factor",
+    "Hard use of {tag}: intervals shortened",
+    (
+        Field("kind", "Intervals", "of which kind", choices=("hours", "distance", "fuel", "starts", "calendar")),
+        Field("factor", "Times", "above 0, up to 1; 1 ends an earlier one"),
+        ON,
+        replace(WHY, tells="such as dust, short trips, salt"),
+    ),
+    _factor_draft,
+    _factor,
 )

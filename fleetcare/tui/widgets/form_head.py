@@ -33,8 +33,8 @@ class FormTitle(Widget):
 class FormHead(Widget):
     """A heading with lines under it; without lines it takes no room."""
 
-    def __init__(self, id: str | None = None) -> None:
-        super().__init__(id=id)
+    def __init__(self) -> None:
+        super().__init__()
         self._title: str = ""
         self._sentences: Sequence[str] = ()
 
@@ -55,5 +55,9 @@ class FormHead(Widget):
     def _lines(self, width: int) -> list[str]:
         lines = [line for said in self._sentences for line in wrap(said, max(width - 2, 1), most=2)]
         over = len(lines) - _MOST_LINES
-        lines = [*lines[:_MOST_LINES], f"… and {over} lines more, on its page"] if over > 1 else lines
-        return [f" {self._title}  {len(self._sentences)}", *(f"  {line}" for line in lines)]
+        lines = [*lines[:_MOST_LINES], f"… and {over} lines more"] if over > 1 else lines
+        return [f" {self._title}", *(f"  {line}" for line in lines)]
+
+
+class FormFoot(FormHead):
+    """What the fields, as they are filled in now, would bring; below them."""
