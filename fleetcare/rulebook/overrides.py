@@ -5,8 +5,8 @@ from typing import Annotated, Self
 
 from pydantic import BeforeValidator, Field, model_validator
 
-from fleetcare.domain.rule_book import End, Limits, Method, Rule, Statistical, SwitchedOff
-from fleetcare.rulebook.rule_in import check_order
+from fleetcare.domain.rule_book import End, Limits, Rule, SwitchedOff
+from fleetcare.rulebook.rule_in import check_limits
 from fleetcare.rulebook.rule_pieces import Form, LimitsIn, Slug, Text, as_list
 
 
@@ -64,6 +64,5 @@ def _changed(rule: Rule, end: End, shipped: Limits, given: LimitsIn | None) -> L
     if not shipped:
         raise ValueError(f"it has no {end} limits|change the side it has, or write a rule of your own")
     limits = Limits(given.fact.alert or shipped.alert, given.fact.alarm or shipped.alarm)
-    counts_up = isinstance(rule.shape, Statistical) and rule.shape.method is not Method.PERCENTILE
-    check_order(limits, end, counts_up=counts_up)
+    check_limits(rule.shape, limits, end)
     return limits

@@ -119,23 +119,18 @@ class RuleIn(Form):
         if is_spec is bool(self.low.fact or self.high.fact):
             raise ValueError("limits: one is needed, but none with the check range of the engine|give low or high")
         for end, limits in ((End.LOW, self.low.fact), (End.HIGH, self.high.fact)):
-            check_order(limits, end, counts_up=self._counts_up)
-        if not is_spec and dimension(self.unit) != self._asked_dimension():
-            raise ValueError(f"unit {self.unit!r} does not fit {self.quantity}|write one that does")
+            check_limits(self._shape(), limits, end)
+        if not is_spec and not self._unit_fits():
+            raise ValueError(f"unit {self.unit!r} does not fit {self.quantity}|write one that does, % for a share")
 
-    @property
-    def _counts_up(self) -> bool:
-        """Whether limits are multiples, which grow outwards on both sides."""
-        return self.statistical is not None and self.statistical.method is not Method.PERCENTILE
-
-    def _asked_dimension(self) -> str:
-        """Give what the unit of the limits must measure."""
+    def _unit_fits(self) -> bool:
+        """Whether the limits are in a unit of what the shape works out: of a comparison percent, else of the quantity."""
         compared = self.against_sheet or self.change
         is_percent = compared is not None and compared.by is not By.DIFFERENCE
         is_share = self.bounds is not None and self.bounds.basis is Basis.NAMEPLATE
         if is_percent or is_share:
-            return "fraction"
-        return dimension(QUANTITIES[self.quantity].unit)
+            return self.unit == "%"
+        return dimension(self.unit) == dimension(QUANTITIES[self.quantity].unit)
 
     @property
     def fact(self) -> Rule:
@@ -159,14 +154,20 @@ class RuleIn(Form):
         return shape
 
 
-def check_order(limits: Limits, end: End, *, counts_up: bool = False) -> None:
-    """Refuse an alarm that comes before its alert: a figure out at an alarm must be out at the alert.
+def check_limits(shape: Shape, limits: Limits, end: End) -> None:
+    """Refuse limits on one side that cannot be meant: an alarm before its alert, or no multiple, or no percentage.
 
-    Multiples of a spread count up on the low side as well.
+    A figure out at an alarm must be out at the alert. Multiples of a spread count outwards on both sides.
     """
     alert, alarm = limits.alert, limits.alarm
-    if alert is None or alarm is None:
-        return
-    further = alarm.value - alert.value if end is End.HIGH or counts_up else alert.value - alarm.value
-    if further < 0 or (further == 0 and alarm.reach and not alert.reach):
-        raise ValueError(f"{end}: the alarm comes before the alert|put the alarm further out")
+    counts_up = isinstance(shape, Statistical) and shape.method is not Method.PERCENTILE
+    if alert is not None and alarm is not None:
+        further = alarm.value - alert.value if end is End.HIGH or counts_up else alert.value - alarm.value
+        if further < 0 or (further == 0 and alarm.reach and not alert.reach):
+            raise ValueError(f"{end}: the alarm comes before the alert|put the alarm further out")
+    if isinstance(shape, Statistical):
+        figures = [limit.value for limit in (alert, alarm) if limit is not None]
+        if counts_up and not all(figure > 0 for figure in figures):
+            raise ValueError(f"{end}: a limit is no multiple of the spread|give figures above 0, on both sides")
+        if not counts_up and not all(0 < figure < 100 for figure in figures):
+            raise ValueError(f"{end}: a limit is no percentage of the samples|give figures between 0 and 100")

@@ -20,8 +20,8 @@ from fleetcare.domain.rule_book import Rule, RuleBook
 from fleetcare.errors import Refusals, Refused
 from fleetcare.rulebook.overrides import Chosen, Override, override
 from fleetcare.rulebook.rule_in import RuleIn
+from fleetcare.rulebook.shipped import rule_files
 
-FOLDER = Path(__file__).parent / "rules"
 _Form = TypeVar("_Form", bound=BaseModel)
 _PARTS = ("rule", "preset", "defaults")
 
@@ -39,7 +39,7 @@ class ShopRules:
 def shipped_rules() -> tuple[Rule, ...]:
     """Give every rule that comes with the program, file by file in the order they stand in."""
     rules: list[Rule] = []
-    for path in sorted(FOLDER.glob("*.toml")):
+    for path in rule_files():
         rules += _read_file(_toml(path, path.name), path.name, {}).rules
     _check_unique(rules, "the shipped rules")
     return tuple(rules)
@@ -48,6 +48,11 @@ def shipped_rules() -> tuple[Rule, ...]:
 def read_shop_rules(path: Path) -> ShopRules:
     """Read a shop's own rules from a TOML file. Everything not in form is refused together, by file, rule and field."""
     return shop_rules(_toml(path, path.name), path.name)
+
+
+def read_shop_text(text: str, name: str) -> ShopRules:
+    """Read a shop's own rules from TOML text that stands under a name, as `read_shop_rules` does from a file."""
+    return shop_rules(_parsed(text, name), name)
 
 
 def shop_rules(content: Mapping[str, Any], name: str) -> ShopRules:
@@ -84,12 +89,22 @@ def rule_book(*shops: ShopRules) -> RuleBook:
 
 
 def _toml(path: Path, name: str) -> Mapping[str, Any]:
+    return _parsed(read_rule_file(path, name), name)
+
+
+def read_rule_file(path: Path, name: str) -> str:
+    """Give the text of a file of rules. Raises Refused where it cannot be read."""
     try:
-        return tomllib.loads(path.read_text(encoding="utf-8-sig"), parse_float=Decimal)
+        return path.read_text(encoding="utf-8-sig")
     except OSError as error:
         raise Refused(f"cannot read {name}: {error.strerror}", "name a TOML file that can be read") from None
     except UnicodeDecodeError:
         raise Refused(f"{name} is not UTF-8 text", "save it as UTF-8") from None
+
+
+def _parsed(text: str, name: str) -> Mapping[str, Any]:
+    try:
+        return tomllib.loads(text, parse_float=Decimal)
     except tomllib.TOMLDecodeError as error:
         raise Refused(f"{name} is not TOML: {error}", "correct it there") from None
 

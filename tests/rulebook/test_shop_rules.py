@@ -162,6 +162,19 @@ BAD = {
     "no engines": ('[[preset]]\nname = "zzzz-ci"\nengines = []\n', "preset 'zzzz-ci': engines: [] does not fit"),
     "defaults": ("defaults = 3\n" + OWN, "shop.toml: defaults is no table; begin it with [defaults]"),
     "no number": (OWN.replace("beyond = 350.5", "beyond = true"), "low.alarm.beyond: True does not fit"),
+    "share in ppm": (
+        OWN.replace("bounds = {}", 'change = { since = "before", by = "share" }').replace('"psi"', '"ppm"'),
+        "unit 'ppm' does not fit pressure; write one that does, % for a share",
+    ),
+    "nan": (OWN.replace("beyond = 350.5", "beyond = nan"), "low.alarm.beyond: Decimal('NaN') does not fit"),
+    "no multiple": (
+        '[[rule]]\nid = "oil-viscosity-own"\nlow = { alert = { beyond = -3 } }\n',
+        "low: a limit is no multiple of the spread; give figures above 0",
+    ),
+    "no percentage": (
+        '[[rule]]\nid = "oil-fe-family"\nhigh = { alarm = { beyond = 120 } }\n',
+        "high: a limit is no percentage of the samples; give figures between 0 and 100",
+    ),
     "not toml": ("= 3", "shop.toml is not TOML: "),
 }
 
