@@ -7,13 +7,17 @@ from pathlib import Path
 
 import pytest
 
+from fleetcare.domain.engines import Side
 from fleetcare.domain.measured import MeasuredSheet, Pools
 from fleetcare.domain.rule_book import Rule
+from fleetcare.domain.sheets import LashSpec
 from fleetcare.rulebook.rules import rule_book, shipped_rules, shop_rules
 from fleetcare.rules.findings import merge
+from fleetcare.rules.judge_lash import judge_value
 from fleetcare.rules.judging.applies import rules_for
 from fleetcare.rules.judging.judge import judge
 from fleetcare.rules.judging.values import values_of
+from fleetcare.rules.lash_points import side_of
 from tests.builders import day
 from tests.rules.measured import ENGINE, a_sheet, facts, pressures, told, value
 
@@ -267,3 +271,27 @@ def test_two_low_neighbours_are_a_gasket() -> None:
     sheet = pressures("445", "440", "300", "310", "440", "438", wet={3: "305", 4: "312"})
     (finding,) = merge("P-01", judge(_chosen(), facts(sheet)))
     assert (finding.cause, finding.subject) == ("head gasket between two cylinders", "3-4")
+
+
+@pytest.mark.parametrize(
+    ("point", "wet", "causes"),
+    [
+        ("3E", "305", {("closing exhaust valve", "3")}),
+        ("3I", "305", {("closing intake valve", "3")}),
+        ("3E", "345", {("worn rings or bore", "3"), ("closing valve", "3E")}),
+        ("2E", "305", {("leaking valves", "3"), ("closing valve", "2E")}),
+    ],
+)
+def test_a_closing_valve_and_a_low_cylinder_that_oil_does_not_raise_are_one_finding_about_it(
+    point: str, wet: str, causes: set[tuple[str, str]]
+) -> None:
+    """TM 5-3820-245-14&P p. 169: too small a gap loses compression; TM 1-1500-204-23-1 step (e): lash first."""
+    gap = value("lash", "0.30", point=point, phase="found")
+    lash = a_sheet(gap, kind="lash", days=9)
+    spec = LashSpec(lash.on, "mm", "any", dict.fromkeys(Side, (Decimal("0.40"), Decimal("0.50"))))
+    judged = {lash.entry: (judge_value(gap, side_of(point), spec, ""),)}
+    standing = judge(_chosen(), facts(lash, lash=judged))
+    sheet = pressures("445", "440", "300", "435", "440", "438", wet={3: wet})
+    signals = judge(_chosen(), facts(sheet, others=(lash,), standing=standing))
+    findings = merge("P-01", (*standing, *signals))
+    assert {(one.cause, one.subject) for one in findings} == causes
