@@ -14,7 +14,11 @@ from fleetcare.domain.quantities import plain
 from fleetcare.domain.rule_book import AgainstSheet, Basis, Bounds, By, Change, End, Pattern, Rate, Rule, Since
 from fleetcare.rules.judging.values import title
 
-_PLACES = 4
+_PLACES = ((10, 2), (1, 3), (0, 4))
+"""Decimals shown of a worked figure of at least so much: two of 67.42 %, four of a gap of 0.0508 mm."""
+
+_AS_TYPED = 3
+"""A figure with no more decimals is shown whole: gauges and laboratories give no more."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -83,12 +87,17 @@ def say_finding(finding: Finding) -> str:
 
 def say_signal(signal: Signal) -> str:
     """Say one figure with its limit: "iron 120 ppm, 20 ppm above the alert limit of 100 ppm"."""
+    where = f" at {say_subject(signal.subject)}" if signal.subject else ""
+    return f"{say_measured(signal.rule)}{where} {say_against(signal)}"
+
+
+def say_against(signal: Signal) -> str:
+    """Say a figure against its limit: "120 ppm, 20 ppm above the alert limit of 100 ppm"."""
     assert signal.measured is not None
     assert signal.limit is not None
     assert signal.margin is not None
     unit = say_unit(signal.rule, signal.unit)
-    where = f" at {say_subject(signal.subject)}" if signal.subject else ""
-    told = f"{say_measured(signal.rule)}{where} {_figure(signal.measured, unit)}"
+    told = _figure(signal.measured, unit)
     if signal.margin == 0:
         return f"{told} reaches the {signal.severity} limit"
     side = "above" if signal.end is End.HIGH else "below"
@@ -154,8 +163,12 @@ def say_unit(rule: Rule, unit: str = "") -> str:
 
 
 def _figure(value: Decimal, unit: str) -> str:
-    """Write a figure to four decimals, and one that would be rounded to nothing with its first digit."""
-    shown = round(value, _PLACES) or Decimal(f"{value:.1g}")
+    """Write a figure with its unit: as typed, or one that was worked out to the decimals its size asks for.
+
+    One that would be rounded to nothing has its first digit.
+    """
+    places = next(places for least, places in _PLACES if abs(value) >= least)
+    shown = value if round(value, _AS_TYPED) == value else round(value, places) or Decimal(f"{value:.1g}")
     return f"{plain(shown)}{f' {unit}' if unit else ''}"
 
 

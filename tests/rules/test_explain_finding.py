@@ -122,6 +122,20 @@ def test_a_hair_above_a_limit_is_never_rounded_to_nothing() -> None:
 
 
 @pytest.mark.parametrize(
+    ("iron", "said"),
+    [
+        ("167.41573", "167.42 ppm, 67.42 ppm above"),
+        ("101.23456", "101.23 ppm, 1.235 ppm above"),
+        ("100.05084", "100.05 ppm, 0.0508 ppm above"),
+        ("167.415", "167.415 ppm, 67.415 ppm above"),
+    ],
+)
+def test_a_figure_has_the_decimals_its_size_asks_for(iron: str, said: str) -> None:
+    signal = one_signal(a_rule(), facts(a_sheet(value("Fe", iron))))
+    assert say_signal(signal) == f"iron {said} the alert limit of 100 ppm"
+
+
+@pytest.mark.parametrize(
     ("shape", "said"),
     [
         (Bounds(), "iron"),
