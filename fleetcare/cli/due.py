@@ -5,14 +5,14 @@ from collections.abc import Sequence
 from typing import TYPE_CHECKING
 
 from fleetcare.cli import output
-from fleetcare.cli.measure import sheet_table
 from fleetcare.cli.parser import Commands, whole
+from fleetcare.cli.sheet_words import lash_table, measures_table
 from fleetcare.cli.shop import context_of, null
 from fleetcare.domain.cautions import GENERAL
 from fleetcare.domain.lines import State
 
 if TYPE_CHECKING:
-    from fleetcare.operations.sheets_judge import JudgedSheet
+    from fleetcare.operations.sheet_report import SheetReport
     from fleetcare.operations.show import ItemPage
     from fleetcare.rules.due.row import DueRow
 
@@ -153,15 +153,16 @@ def _page_blocks(page: "ItemPage") -> list[tuple[str, str]]:
     ]
 
 
-def _sheet(judged: "JudgedSheet | None") -> str:
-    """Give a sheet point by point, with what it was held against."""
-    if judged is None:
+def _sheet(report: "SheetReport | None") -> str:
+    """Give a sheet value by value, with what it was held against."""
+    if report is None:
         return ""
-    sheet = judged.sheet
+    sheet, lash = report.sheet, report.lash
     parts = [f"entry {sheet.entry}, {sheet.on}", sheet.condition, sheet.gauge and f"gauge {sheet.gauge}", sheet.by]
     told = ", ".join(output.clean(part) for part in parts if part)
-    notes = "".join(f"\n{note}" for note in judged.notes())
-    return f"{told}; limits: {judged.limits}\n{sheet_table(judged)}{notes}"
+    notes = "".join(f"\n{note}" for note in (lash.notes() if lash else report.notes))
+    table = lash_table(lash) if lash else measures_table(report)
+    return f"{told}{f'; limits: {lash.limits}' if lash else ''}\n{table}{notes}"
 
 
 def _block(headers: Sequence[str], rows: Sequence[Sequence[object]]) -> str:

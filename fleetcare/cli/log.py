@@ -4,12 +4,14 @@ import argparse
 from typing import TYPE_CHECKING
 
 from fleetcare.cli import output
-from fleetcare.cli.measure import add_sheet_options, read_sheet_option, say_sheet
+from fleetcare.cli.measure import add_sheet_options, read_sheet_option
 from fleetcare.cli.parser import CommandParser, Commands, day, whole
+from fleetcare.cli.sheet_words import say_report
 from fleetcare.cli.shop import changes_of, context_of, label_with, option_label, options_of
 
 if TYPE_CHECKING:
     from fleetcare.operations.entering import Entered
+    from fleetcare.operations.sheet_report import SheetReport
 
 
 def add_commands(commands: Commands) -> None:
@@ -55,19 +57,22 @@ def _log(given: argparse.Namespace) -> None:
     from fleetcare.drafts.reading_in import read_draft
     from fleetcare.drafts.work import LogDraft
     from fleetcare.operations.entering import enter_work
+    from fleetcare.operations.sheet_report import report_logged
 
     context = context_of(given)
     values = options_of(given) | {"on": given.on or context.today(), "sheet": read_sheet_option(given.sheet)}
     draft = read_draft(LogDraft, values, label_with(task="TASK"))
     with context.write() as session:
         entered = enter_work(session, draft, context.today())
-    _say(entered)
+        report = report_logged(session.connection(), entered.logged, context.today())
+    _say(entered, report)
 
 
 def _correct(given: argparse.Namespace) -> None:
     from fleetcare.drafts.reading_in import read_draft
     from fleetcare.drafts.work import CorrectionDraft
     from fleetcare.operations.entering import enter_correction
+    from fleetcare.operations.sheet_report import report_logged
 
     context = context_of(given)
     sheet = read_sheet_option(given.sheet)
@@ -76,14 +81,16 @@ def _correct(given: argparse.Namespace) -> None:
     )
     with context.write() as session:
         entered = enter_correction(session, draft, context.today())
-    _say(entered, judged_anew=bool(draft.model_fields_set & {"sheet", "when", "on"}))
+        is_judged_anew = draft.model_fields_set & {"sheet", "when", "on", "received"}
+        report = report_logged(session.connection(), entered.logged, context.today()) if is_judged_anew else None
+    _say(entered, report)
 
 
-def _say(entered: "Entered", *, judged_anew: bool = True) -> None:
+def _say(entered: "Entered", report: "SheetReport | None") -> None:
     """Print what an entry stored, its sheet where it is judged anew, and the lines it moved."""
     for line in entered.said:
         output.say(line)
-    if judged_anew and entered.logged is not None and entered.logged.sheet is not None:
-        say_sheet(entered.logged.sheet)
+    if report is not None:
+        say_report(report)
     for line in entered.moved:
         output.say(line)

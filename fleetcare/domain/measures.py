@@ -156,6 +156,12 @@ def dimension(unit: str) -> str:
     return UNITS[unit].dimension if unit in UNITS else unit
 
 
+def in_base(value: Decimal, unit: str) -> Fraction:
+    """Give a figure in the base unit of what it measures; one without a unit stays as it is."""
+    known = UNITS.get(unit)
+    return Fraction(value) * known.factor + known.offset if known else Fraction(value)
+
+
 def exactly(value: Decimal | Fraction, unit: str, into: str) -> Fraction:
     """Convert a figure exactly. Both units are of one dimension; the same unit converts to itself whatever it is."""
     if unit == into:

@@ -74,7 +74,7 @@ class LashPoint:
 class SheetValue:
     """One value as entered, in its own unit: a figure, or `low` (goes) and `high` (does not go).
 
-    `qualifier` is "<" for a bound, "ND" for nothing detected.
+    `qualifier` is "<" for a bound, "ND" for nothing detected; something said in a word has that word for it, and no value.
     """
 
     quantity: str
@@ -105,7 +105,7 @@ class SheetValue:
 class Sheet:
     """Measurements taken together on a day, known by the entry they came with.
 
-    `condition` is cold, hot or empty where nobody said.
+    `condition` is cold, hot or empty where nobody said. `received_on` is the day results came, where they came later.
     """
 
     entry: int
@@ -116,6 +116,8 @@ class Sheet:
     gauge: str = ""
     by: str = ""
     note: str = ""
+    lab_number: str = ""
+    received_on: date | None = None
 
 
 @dataclass(frozen=True, slots=True)

@@ -6,9 +6,10 @@ from typing import Annotated, Any, Literal, Self
 
 from pydantic import BeforeValidator, InstanceOf, model_validator
 
+from fleetcare.domain.measured import SHEET_KINDS
 from fleetcare.domain.sheets import LASH, SHIM, Phase
-from fleetcare.drafts.fields import Text
-from fleetcare.drafts.reading_in import Draft
+from fleetcare.drafts.fields import Day, Text
+from fleetcare.drafts.reading_in import Draft, as_option
 from fleetcare.errors import FleetError, Misread, Refused
 
 
@@ -29,26 +30,6 @@ class SheetIn:
     faults: tuple[FleetError, ...] = ()
 
 
-class SheetOptions(Draft):
-    """What an entry may bring along: a sheet, the gauge and condition it was taken with, and that it is right as it is."""
-
-    sheet: InstanceOf[SheetIn] | None = None
-    gauge: Text | None = None
-    when: Literal["cold", "hot"] | None = None
-    sure: bool = False
-
-
-class TakenSheet(SheetOptions):
-    """A sheet that comes with an entry of its own day; what only a sheet has is refused without one."""
-
-    @model_validator(mode="after")
-    def _check_sheet(self) -> Self:
-        given = [name for name in ("gauge", "when", "sure") if self.sheet is None and getattr(self, name)]
-        if given:
-            raise Refused(f"--{given[0]} says how a sheet was taken", "give the sheet with --sheet FILE as well")
-        return self
-
-
 def _one_of(words: Mapping[str, Any], otherwise: Callable[[str], FleetError]) -> Callable[[object], Any]:
     """Read one of some words, whatever its case."""
 
@@ -59,6 +40,39 @@ def _one_of(words: Mapping[str, Any], otherwise: Callable[[str], FleetError]) ->
         return words[word]
 
     return read
+
+
+_kind = _one_of(
+    {kind: kind for kind in SHEET_KINDS},
+    lambda text: Misread(f"{text!r} is no kind of sheet", f"use {', '.join(SHEET_KINDS)}"),
+)
+
+
+class SheetOptions(Draft):
+    """What an entry may bring along: a sheet, what it was taken with and when results came, and that it is right as it is.
+
+    Without a `kind` it is of the kind a task of the entry needs, else of the one its quantities belong to.
+    """
+
+    sheet: InstanceOf[SheetIn] | None = None
+    kind: Annotated[str, BeforeValidator(_kind)] | None = None
+    gauge: Text | None = None
+    when: Literal["cold", "hot"] | None = None
+    received: Day | None = None
+    lab_no: Text | None = None
+    sure: bool = False
+
+
+class TakenSheet(SheetOptions):
+    """A sheet that comes with an entry of its own day; what only a sheet has is refused without one."""
+
+    @model_validator(mode="after")
+    def _check_sheet(self) -> Self:
+        told = ("gauge", "when", "received", "lab_no", "sure")
+        given = [name for name in told if self.sheet is None and getattr(self, name)]
+        if given:
+            raise Refused(f"{as_option(given[0])} says how a sheet was taken", "give the sheet with --sheet FILE as well")
+        return self
 
 
 _quantity = _one_of(
@@ -83,3 +97,13 @@ class LashRow(Draft):
     phase: Annotated[Phase, BeforeValidator(_phase)] = Phase.FOUND
     value: Text
     unit: Annotated[Literal["mm", "in"], BeforeValidator(_unit)] | None = None
+
+
+class MeasureRow(Draft):
+    """A row of any other sheet, as typed: what each cell may be depends on its quantity, and on the engine."""
+
+    quantity: Text
+    point: str = ""
+    phase: str = ""
+    value: Text
+    unit: str = ""

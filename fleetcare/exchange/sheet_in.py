@@ -7,7 +7,7 @@ from fleetcare.drafts.sheets import SheetIn, SheetRow
 from fleetcare.errors import Refused
 from fleetcare.exchange.csv_in import MOST_BYTES, read_file, read_rows
 
-REQUIRED, OPTIONAL = ("quantity", "point", "value"), ("phase", "unit")
+REQUIRED, OPTIONAL = ("quantity", "value"), ("point", "phase", "unit")
 
 
 def read_sheet(name: str) -> SheetIn:

@@ -141,7 +141,7 @@ def _carry_sheet(
     """Give the new entry the sheet of the old one, or the one restated, and say what it closes."""
     sheet = carried_sheet(session, item, old, draft, new.on)
     if sheet is not None:
-        logged.sheet = keep_sheet(session, new, sheet)
+        logged.sheet = keep_sheet(session, new, sheet.sheet)
     return came_along(sheet, sure=draft.sure)
 
 

@@ -10,6 +10,7 @@ from fleetcare.db.tables import LogEntry, LogPart, LogTask
 from fleetcare.domain.log import Done
 from fleetcare.domain.quantities import Figure, plain
 from fleetcare.domain.schedules import Task
+from fleetcare.domain.sheets import Sheet
 from fleetcare.drafts.work import LogDraft
 from fleetcare.errors import Refused
 from fleetcare.operations.closing import closings, done_by, say_open
@@ -27,7 +28,6 @@ from fleetcare.operations.sheets_closing import (
     say_still_open,
     why_open,
 )
-from fleetcare.operations.sheets_judge import JudgedSheet
 from fleetcare.rules.due.closing import Closing
 from fleetcare.rules.due.facts import ItemFacts
 from fleetcare.rules.due.row import unit_of
@@ -48,7 +48,7 @@ class Logged:
     part_done: list[str] = field(default_factory=list)
     raised: list[str] = field(default_factory=list)
     notes: list[str] = field(default_factory=list)
-    sheet: JudgedSheet | None = None
+    sheet: Sheet | None = None
 
     def note_still_open(self, facts: ItemFacts, entry: LogEntry, sheets: Sheets) -> None:
         """Note which tasks the sheet of an entry could close and did not."""
@@ -71,7 +71,7 @@ def record_work(session: "Session", draft: LogDraft, today: date) -> Logged:
     store_figures(session, item, entry, draft.at)
     facts = item_facts(session.connection(), today, [item.id])[0]
     if sheet is not None:
-        logged.sheet = keep_sheet(session, entry, sheet)
+        logged.sheet = keep_sheet(session, entry, sheet.sheet)
     came = came_along(sheet, sure=draft.sure)
     close_tasks(
         session,

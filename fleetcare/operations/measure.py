@@ -7,8 +7,8 @@ from typing import TYPE_CHECKING
 from fleetcare.drafts.work import LogDraft
 from fleetcare.operations.find import find_item
 from fleetcare.operations.log import record_work, refuse_future
+from fleetcare.operations.sheet_report import SheetReport, report_sheet
 from fleetcare.operations.sheets import known_entry, take_sheet
-from fleetcare.operations.sheets_judge import JudgedSheet, sheet_of_entry
 
 if TYPE_CHECKING:
     from sqlalchemy.orm import Session
@@ -18,7 +18,7 @@ if TYPE_CHECKING:
 class Measured:
     """A sheet with the entry it stands with, whether that is new, and what is worth saying of the tasks."""
 
-    sheet: JudgedSheet
+    report: SheetReport
     is_new: bool
     notes: tuple[str, ...] = ()
 
@@ -34,7 +34,7 @@ def measure(session: "Session", draft: LogDraft, today: date) -> Measured:
     assert sheet is not None
     known = known_entry(session, item, sheet.sheet)
     if known is not None:
-        return Measured(sheet_of_entry(session.connection(), item, known), is_new=False)
+        return Measured(report_sheet(session.connection(), item, known, today), is_new=False)
     logged = record_work(session, draft, today)
     entry, _ = logged.entries[0]
-    return Measured(sheet_of_entry(session.connection(), item, entry), is_new=True, notes=tuple(logged.notes))
+    return Measured(report_sheet(session.connection(), item, entry, today), is_new=True, notes=tuple(logged.notes))

@@ -1,11 +1,10 @@
-"""Take, judge, store and carry over the lash sheet that comes with an entry."""
+"""Take, judge, store and carry over the sheet that comes with an entry, of whatever kind."""
 
 import hashlib
 from collections.abc import Sequence
-from dataclasses import replace
+from dataclasses import dataclass, replace
 from datetime import date
-from decimal import Decimal
-from typing import TYPE_CHECKING
+from typing import TYPE_CHECKING, cast
 
 from sqlalchemy import select
 from sqlmodel import col
@@ -13,34 +12,86 @@ from sqlmodel import col
 from fleetcare.db.tables import LogEntry
 from fleetcare.db.tables import Sheet as SheetTable
 from fleetcare.db.tables import SheetValue as ValueTable
+from fleetcare.domain.measures import in_base
 from fleetcare.domain.quantities import plain
-from fleetcare.domain.sheets import LASH, Sheet, SheetValue
-from fleetcare.drafts.sheets import SheetOptions
+from fleetcare.domain.sheet_kinds import KINDS, WORDS
+from fleetcare.domain.sheets import LASH, SHIM, Sheet, SheetValue
+from fleetcare.drafts.sheets import SheetIn, SheetOptions
 from fleetcare.errors import Refused
 from fleetcare.operations.find import FoundItem
+from fleetcare.operations.measures_cells import MeasureForm, measure_form
+from fleetcare.operations.measures_read import read_measures
+from fleetcare.operations.sheets_closing import needed_sheets
 from fleetcare.operations.sheets_judge import JudgedSheet, judge
 from fleetcare.operations.sheets_load import lash_form, load_values, open_form
 from fleetcare.operations.sheets_read import read_values
-from fleetcare.rules.lash import MM_PER
+from fleetcare.rules.judging.spans import decimal
+from fleetcare.rules.sheet_complete import why_incomplete
 
 if TYPE_CHECKING:
     from sqlalchemy import Connection
     from sqlalchemy.orm import Session
 
 
-def take_sheet(connection: "Connection", item: FoundItem, typed: SheetOptions, on: date) -> JudgedSheet | None:
-    """Read a typed sheet of an engine and judge it by the spec in force on its day; None where none was typed.
+@dataclass(frozen=True, slots=True)
+class TakenSheet:
+    """A sheet other than the lash sheet, as read; it is judged when it is stored, beside those before it."""
+
+    form: MeasureForm
+    sheet: Sheet
+
+    def why_open(self) -> str:
+        """Say why the sheet closes no task, empty where it does."""
+        return why_incomplete(self.sheet.kind, self.sheet.values, self.form.engine)
+
+
+AnySheet = JudgedSheet | TakenSheet
+"""A sheet of whatever kind that comes with an entry."""
+
+
+def take_sheet(connection: "Connection", item: FoundItem, typed: SheetOptions, on: date) -> AnySheet | None:
+    """Read a typed sheet of an engine, and judge its lash by the spec in force on its day; None where none was typed.
 
     Nothing is stored. Raises Refusals with everything that is wrong with it.
     """
     if typed.sheet is None:
         return None
-    form = open_form(connection, item, on)
-    values = read_values(form, typed.sheet, sure=typed.sure)
-    return judge(form, Sheet(0, LASH, on, values, typed.when or "", typed.gauge or ""))
+    if typed.received is not None and typed.received < on:
+        raise Refused(f"results cannot have come on {typed.received}, before {on}", "correct --received or --on")
+    kind = _kind_of(connection, item, typed, typed.sheet, on)
+    if kind == LASH:
+        form = open_form(connection, item, on)
+        values = read_values(form, typed.sheet, sure=typed.sure)
+        return judge(form, _restated(Sheet(0, LASH, on, values), typed))
+    measures = measure_form(connection, item, kind, on)
+    values = read_measures(measures, typed.sheet, sure=typed.sure)
+    return TakenSheet(measures, _restated(Sheet(0, kind, on, values), typed))
 
 
-def fresh_sheet(session: "Session", item: FoundItem, typed: SheetOptions, on: date) -> JudgedSheet | None:
+def _restated(sheet: Sheet, typed: SheetOptions) -> Sheet:
+    """Give a sheet with what was said of it now; what was not said stays as it was."""
+    return replace(
+        sheet,
+        condition=typed.when or sheet.condition,
+        gauge=typed.gauge or sheet.gauge,
+        lab_number=typed.lab_no or sheet.lab_number,
+        received_on=typed.received or sheet.received_on,
+    )
+
+
+def _kind_of(connection: "Connection", item: FoundItem, typed: SheetOptions, sheet: SheetIn, on: date) -> str:
+    """Give the kind of a sheet: as stated, else the one a task of its entry needs, else that most of its rows belong to."""
+    if typed.kind:
+        return typed.kind
+    needed = needed_sheets(connection, item, cast("tuple[str, ...]", getattr(typed, "task", ())), on)
+    quantities = [row.cells.get("quantity", "").casefold() for row in sheet.rows]
+    known = {LASH: {LASH, SHIM}} | {kind.name: {one.casefold() for one in kind.quantities} for kind in KINDS.values()}
+    rows = {kind: sum(quantity in names for quantity in quantities) for kind, names in known.items()}
+    likely = [kind for kind in rows if kind in needed and rows[kind]] or list(rows)
+    return max(likely, key=lambda kind: rows[kind])
+
+
+def fresh_sheet(session: "Session", item: FoundItem, typed: SheetOptions, on: date) -> AnySheet | None:
     """Take a sheet as `take_sheet` does, and refuse one that is stored already."""
     sheet = take_sheet(session.connection(), item, typed, on)
     known = known_entry(session, item, sheet.sheet) if sheet is not None else None
@@ -52,9 +103,8 @@ def fresh_sheet(session: "Session", item: FoundItem, typed: SheetOptions, on: da
     return sheet
 
 
-def keep_sheet(session: "Session", entry: LogEntry, judged: JudgedSheet) -> JudgedSheet:
-    """Store a judged sheet with its entry, under a key that tells it again; give it with the entry's number."""
-    sheet = judged.sheet
+def keep_sheet(session: "Session", entry: LogEntry, sheet: Sheet) -> Sheet:
+    """Store a sheet with its entry, under a key that tells it again; give it with the entry's number."""
     key = _key(entry.item_id, sheet)
     times = len(_rows_of(session, key))
     row = SheetTable(
@@ -64,6 +114,8 @@ def keep_sheet(session: "Session", entry: LogEntry, judged: JudgedSheet) -> Judg
         taken_on=sheet.on,
         conditions=sheet.condition,
         gauge=sheet.gauge,
+        lab_number=sheet.lab_number,
+        received_on=sheet.received_on,
         import_key=f"{key} {times + 1}" if times else key,
     )
     session.add(row)
@@ -83,7 +135,7 @@ def keep_sheet(session: "Session", entry: LogEntry, judged: JudgedSheet) -> Judg
             )
         )
     session.flush()
-    return replace(judged, sheet=replace(sheet, entry=entry.id))
+    return replace(sheet, entry=entry.id)
 
 
 def known_entry(session: "Session", item: FoundItem, sheet: Sheet) -> int | None:
@@ -97,25 +149,25 @@ def known_entry(session: "Session", item: FoundItem, sheet: Sheet) -> int | None
     return None
 
 
-def carried_sheet(
-    session: "Session", item: FoundItem, old: LogEntry, typed: SheetOptions, on: date
-) -> JudgedSheet | None:
+def carried_sheet(session: "Session", item: FoundItem, old: LogEntry, typed: SheetOptions, on: date) -> AnySheet | None:
     """Give the sheet a correction leaves an entry with: the one typed, else its own with what was restated of it.
 
     Refuses to restate what a sheet was taken with where there is none.
     """
-    restated = take_sheet(session.connection(), item, typed, on)
-    rows = session.scalars(
-        select(SheetTable).where(col(SheetTable.entry_id) == old.id, col(SheetTable.kind) == LASH)
-    ).all()
-    if restated is None and not rows and (typed.when or typed.gauge):
+    connection = session.connection()
+    restated = take_sheet(connection, item, typed, on)
+    rows = session.scalars(select(SheetTable).where(col(SheetTable.entry_id) == old.id)).all()
+    if restated is None and not rows and (typed.when or typed.gauge or typed.received or typed.lab_no):
         raise Refused(f"entry {old.id} has no sheet", "give one with --sheet FILE")
     if restated is not None or not rows:
         return restated
     (row,) = rows
-    values = load_values(session.connection(), [row.id]).get(row.id, ())
-    kept = Sheet(0, row.kind, on, values, typed.when or row.conditions, typed.gauge or row.gauge)
-    return judge(lash_form(session.connection(), item, on), kept)
+    values = load_values(connection, [row.id]).get(row.id, ())
+    stored = Sheet(0, row.kind, on, values, row.conditions, row.gauge, "", "", row.lab_number, row.received_on)
+    kept = _restated(stored, typed)
+    if kept.kind == LASH:
+        return judge(lash_form(connection, item, on), kept)
+    return TakenSheet(measure_form(connection, item, kept.kind, on), kept)
 
 
 def _later(session: "Session", entry: LogEntry) -> LogEntry | None:
@@ -137,9 +189,7 @@ def _key(item_id: int, sheet: Sheet) -> str:
 
 
 def _line(value: SheetValue) -> str:
-    goes, stops = (plain(_mm(end, value.unit)) for end in value.ends)
+    if value.quantity in WORDS:
+        return f"{value.quantity},{value.point},{value.qualifier}"
+    goes, stops = (plain(decimal(in_base(end, value.unit))) for end in value.ends)
     return f"{value.quantity},{value.point},{value.phase},{goes},{stops}"
-
-
-def _mm(figure: Decimal, unit: str) -> Decimal:
-    return figure * MM_PER[unit]

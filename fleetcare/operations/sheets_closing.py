@@ -4,12 +4,18 @@ import shlex
 from collections.abc import Mapping, Sequence
 from datetime import date
 from types import MappingProxyType
+from typing import TYPE_CHECKING, Protocol
 
 from fleetcare.domain.schedules import Task
+from fleetcare.domain.sheets import Sheet
 from fleetcare.errors import Refused, SheetWanted
-from fleetcare.operations.sheets_judge import JudgedSheet
+from fleetcare.operations.find import FoundItem
+from fleetcare.operations.rows import fetch
 from fleetcare.rules.due.due_list import item_lines
 from fleetcare.rules.due.facts import ItemFacts
+
+if TYPE_CHECKING:
+    from sqlalchemy import Connection
 
 Sheets = Mapping[str, str]
 """The kinds of sheet that came along with an entry, each with why it closes no task, empty where it does."""
@@ -20,7 +26,35 @@ _WITHOUT = "give --part-done to keep a note of the work until the sheet is there
 _INCOMPLETE = "add what is wanting, or give --sure to close it as it stands, or --part-done to keep it open"
 
 
-def came_along(sheet: JudgedSheet | None, *, sure: bool) -> Sheets:
+class ComesAlong(Protocol):
+    """A sheet of whatever kind, and why it closes no task."""
+
+    @property
+    def sheet(self) -> Sheet:
+        """The sheet."""
+
+    def why_open(self) -> str:
+        """Say why it closes no task, empty where it does."""
+
+
+def needed_sheets(connection: "Connection", item: FoundItem, names: Sequence[str], on: date) -> frozenset[str]:
+    """Give the kinds of sheet that some tasks of an item, as somebody names them, needed on a day."""
+    rows = fetch(
+        connection,
+        "select task.id, version.needs_sheet, version.from_on from task join task_version version"
+        " on version.task_id = task.id where task.item_id = :item and task.name_key in :names"
+        " order by version.from_on, version.id",
+        item=item.id,
+        names=[" ".join(name.split()).casefold() for name in names],
+    )
+    needed: dict[int, str] = {}
+    for task, kind, from_on in rows:
+        if task not in needed or from_on <= on.isoformat():
+            needed[task] = kind
+    return frozenset(filter(None, needed.values()))
+
+
+def came_along(sheet: ComesAlong | None, *, sure: bool) -> Sheets:
     """Give the kind of a sheet and why it closes no task; where somebody is sure it closes as it stands."""
     return NONE_CAME if sheet is None else {sheet.sheet.kind: "" if sure else sheet.why_open()}
 

@@ -85,7 +85,7 @@ def judge(form: LashForm, sheet: Sheet) -> JudgedSheet:
 def last_sheet(connection: "Connection", item: FoundItem, on: date) -> JudgedSheet | None:
     """Load an engine's newest lash sheet up to a day and judge it, None where it has none."""
     sheets = load_sheets(connection, item.id, on)
-    return _judge_stored(connection, item, sheets[-1]) if sheets else None
+    return judge_stored(connection, item, sheets[-1]) if sheets else None
 
 
 def sheet_of_entry(connection: "Connection", item: FoundItem, entry: int) -> JudgedSheet:
@@ -93,10 +93,11 @@ def sheet_of_entry(connection: "Connection", item: FoundItem, entry: int) -> Jud
     sheet = next((sheet for sheet in load_sheets(connection, item.id, date.max) if sheet.entry == entry), None)
     if sheet is None:
         raise Refused(f"entry {entry} of {item.tag} has no lash sheet", "choose one that has")
-    return _judge_stored(connection, item, sheet)
+    return judge_stored(connection, item, sheet)
 
 
-def _judge_stored(connection: "Connection", item: FoundItem, sheet: Sheet) -> JudgedSheet:
+def judge_stored(connection: "Connection", item: FoundItem, sheet: Sheet) -> JudgedSheet:
+    """Judge a stored lash sheet by the spec of its day, beside what the sheets before it said."""
     return judge(lash_form(connection, item, sheet.on, but_from=sheet.entry), sheet)
 
 

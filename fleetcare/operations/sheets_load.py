@@ -1,4 +1,4 @@
-"""Lash sheets out of rows: what decides how a valve is judged, and what the sheets before said."""
+"""Sheets out of rows, and of the lash sheet what decides how a valve is judged, and what the sheets before said."""
 
 from collections.abc import Mapping, Sequence
 from dataclasses import dataclass, field
@@ -10,7 +10,7 @@ from fleetcare.domain.engines import Adjuster, Bridged, Layout, Side, ValveTrain
 from fleetcare.domain.sheets import LASH, SHIM, LashPoint, LashSpec, Phase, Sheet, SheetValue, spec_on
 from fleetcare.errors import Refused
 from fleetcare.operations.find import FoundItem
-from fleetcare.operations.rows import Row, fetch, figure, grouped, known_day
+from fleetcare.operations.rows import Row, day, fetch, figure, grouped, known_day
 from fleetcare.rules.explain_lash import LastValue
 from fleetcare.rules.lash_points import Stop, banks, lash_points, lash_walk
 from fleetcare.rules.nameplate import check_firing_order
@@ -108,17 +108,22 @@ def load_train(connection: "Connection", item: FoundItem) -> tuple[ValveTrain, t
 
 def load_specs(connection: "Connection", item_id: int) -> tuple[LashSpec, ...]:
     """Load an engine's lash specs in the order they came into force."""
+    return specs_of(connection, [item_id]).get(item_id, ())
+
+
+def specs_of(connection: "Connection", item_ids: Sequence[int]) -> dict[int, tuple[LashSpec, ...]]:
+    """Load the lash specs of some engines, each one's in the order they came into force, by engine."""
     rows = fetch(
         connection,
-        "select from_on, unit, condition, intake_low, intake_high, exhaust_low, exhaust_high, set_intake, set_exhaust"
-        " from lash_spec where item_id = :id order by from_on, id",
-        id=item_id,
+        "select item_id, from_on, unit, condition, intake_low, intake_high, exhaust_low, exhaust_high, set_intake,"
+        " set_exhaust from lash_spec where item_id in :ids order by from_on, id",
+        ids=list(item_ids),
     )
-    return tuple(_spec(row) for row in rows)
+    return {item: tuple(_spec(row) for row in found) for item, found in grouped(rows).items()}
 
 
 def _spec(row: Row) -> LashSpec:
-    from_on, unit, condition, *texts = row
+    _, from_on, unit, condition, *texts = row
     intake_low, intake_high, exhaust_low, exhaust_high, set_intake, set_exhaust = map(figure, texts)
     ranges = {Side.INTAKE: (intake_low, intake_high), Side.EXHAUST: (exhaust_low, exhaust_high)}
     settings = {Side.INTAKE: set_intake, Side.EXHAUST: set_exhaust}
@@ -136,7 +141,7 @@ def load_sheets(connection: "Connection", item_id: int, on: date, kind: str = LA
     rows = fetch(
         connection,
         "select sheet.id, sheet.entry_id, sheet.taken_on, sheet.conditions, sheet.gauge, coalesce(person.name, ''),"
-        " entry.note from sheet join log_entry entry on entry.id = sheet.entry_id"
+        " entry.note, sheet.lab_number, sheet.received_on from sheet join log_entry entry on entry.id = sheet.entry_id"
         " left join person on person.id = entry.person_id"
         " where sheet.item_id = :id and sheet.kind = :kind and sheet.taken_on <= :on and not entry.is_void"
         " and not exists (select 1 from log_entry later where later.supersedes_id = entry.id)"
@@ -147,8 +152,8 @@ def load_sheets(connection: "Connection", item_id: int, on: date, kind: str = LA
     )
     values = load_values(connection, [row[0] for row in rows])
     return [
-        Sheet(entry, kind, known_day(taken_on), values.get(sheet, ()), condition, gauge, by, note)
-        for sheet, entry, taken_on, condition, gauge, by, note in rows
+        Sheet(entry, kind, known_day(taken_on), values.get(sheet, ()), condition, gauge, by, note, lab, day(received))
+        for sheet, entry, taken_on, condition, gauge, by, note, lab, received in rows
     ]
 
 

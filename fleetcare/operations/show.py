@@ -8,16 +8,16 @@ from typing import TYPE_CHECKING
 
 from fleetcare.domain.engines import Status, StatusSpell, status_on
 from fleetcare.domain.lines import DueLine
+from fleetcare.domain.measured import SHEET_KINDS
 from fleetcare.domain.quantities import plain, tenth
 from fleetcare.domain.schedules import Task
-from fleetcare.domain.sheets import LASH
 from fleetcare.operations.find import FoundItem, find_item, find_task
 from fleetcare.operations.history import HistoryEntry as HistoryEntry
 from fleetcare.operations.history import item_history
 from fleetcare.operations.load import item_facts
 from fleetcare.operations.plate_figures import derived_figures
 from fleetcare.operations.rows import fetch
-from fleetcare.operations.sheets_judge import JudgedSheet, last_sheet
+from fleetcare.operations.sheet_report import SheetReport, last_report
 from fleetcare.rules.due.due_list import in_order, item_lines
 from fleetcare.rules.due.facts import ItemFacts
 from fleetcare.rules.due.replay import replay
@@ -108,13 +108,14 @@ def task_working(
     return working, past[::-1]
 
 
-def task_sheet(connection: "Connection", tag: str, name: str, on: date) -> JudgedSheet | None:
-    """Give the newest lash sheet of the engine of a task that is about lash, judged; None for any other task."""
+def task_sheet(connection: "Connection", tag: str, name: str, on: date) -> SheetReport | None:
+    """Give the newest sheet of the kind a task is about, judged; None where it is about none, or there is none yet."""
     item = find_item(connection, tag, on=on, even_withdrawn=True)
     task_id = find_task(connection, item, name, on=on, even_ended=True)
     task = next(task for task in item_facts(connection, on, [item.id])[0].tasks if task.id == task_id)
     version = task.version_on(on)
-    return last_sheet(connection, item, on) if LASH in {version.needs_sheet, version.work} else None
+    kind = next((kind for kind in (version.needs_sheet, version.work) if kind in SHEET_KINDS), "")
+    return last_report(connection, item, on, kind) if kind and item.is_engine else None
 
 
 def _why_no_line(facts: ItemFacts, task: Task) -> str:

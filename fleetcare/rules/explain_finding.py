@@ -63,7 +63,7 @@ def finding_row(finding: Finding) -> FindingRow:
         since=finding.since,
         source=" / ".join(_each(signal.rule.source for signal in finding.signals)),
         explanation=say_finding(finding),
-        working=tuple(say_working(signal) for signal in finding.signals if signal.measured is not None),
+        working=tuple(say_working(signal) for signal in finding.signals if signal.steps or signal.measured is not None),
         evidence=tuple(say_evidence(value) for value in finding.evidence),
         next_step=say_next_step(finding),
         caution=" ".join((*_each(signal.rule.caution for signal in finding.signals), GENERAL)),
@@ -88,7 +88,7 @@ def say_finding(finding: Finding) -> str:
 def say_signal(signal: Signal) -> str:
     """Say one figure with its limit: "iron 120 ppm, 20 ppm above the alert limit of 100 ppm"."""
     where = f" at {say_subject(signal.subject)}" if signal.subject else ""
-    return f"{say_measured(signal.rule)}{where} {say_against(signal)}"
+    return f"{_named(signal)}{where} {say_against(signal)}"
 
 
 def say_against(signal: Signal) -> str:
@@ -119,9 +119,10 @@ def say_measured(rule: Rule) -> str:
 
 def say_working(signal: Signal) -> str:
     """Say how a figure was worked out, number by number: "rise of iron 16 ppm per 100 h (its rule) from …"."""
-    assert signal.measured is not None
     steps = ", ".join(say_step(step) for step in signal.steps)
-    told = f"{say_measured(signal.rule)} {_figure(signal.measured, say_unit(signal.rule, signal.unit))}"
+    if signal.measured is None:
+        return f"{signal.rule.cause} ({signal.rule.id}) from {steps}"
+    told = f"{_named(signal)} {_figure(signal.measured, say_unit(signal.rule, signal.unit))}"
     return f"{told} ({signal.rule.id}){f' from {steps}' if steps else ''}"
 
 
@@ -139,12 +140,9 @@ def say_evidence(value: Evidence) -> str:
 
 
 def say_next_step(finding: Finding) -> str:
-    """Say what to do next: what the lead says, the day by which the law wants it, then what others add."""
-    steps = [
-        f"{signal.rule.next_step}, by {signal.due_by.isoformat()}" if signal.due_by else signal.rule.next_step
-        for signal in sorted(finding.signals, key=lambda one: one.due_by is None)
-    ]
-    return "; ".join(_each(steps))
+    """Say what to do next: first what is to be done by a day, then what the lead says."""
+    dated = [f"{one.rule.next_step}, by {one.due_by.isoformat()}" for one in finding.signals if one.due_by]
+    return "; ".join(_each([*dated, *([] if finding.lead.due_by else [finding.lead.rule.next_step])]))
 
 
 def say_subject(subject: str) -> str:
@@ -160,6 +158,14 @@ def say_unit(rule: Rule, unit: str = "") -> str:
     """Say the unit of a figure of a rule: that of its limits, of a rate with its hours."""
     own = unit or rule.unit
     return f"{own} per {rule.shape.per} h" if isinstance(rule.shape, Rate) else own
+
+
+def _named(signal: Signal) -> str:
+    """Name the figure of a signal; of a rule that takes off new oil, whether that was known."""
+    shape = signal.rule.shape
+    if isinstance(shape, Bounds) and shape.basis is Basis.LESS_NEW and not signal.used:
+        return f"{title(signal.rule.quantity)} (new oil not known, nothing taken off)"
+    return say_measured(signal.rule)
 
 
 def _figure(value: Decimal, unit: str) -> str:

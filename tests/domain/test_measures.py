@@ -6,7 +6,7 @@ from fractions import Fraction
 import pint
 import pytest
 
-from fleetcare.domain.measures import UNITS, can_convert, dimension, exactly, read_unit
+from fleetcare.domain.measures import UNITS, can_convert, dimension, exactly, in_base, read_unit
 from fleetcare.errors import Misread
 
 REGISTRY: pint.UnitRegistry[float] = pint.UnitRegistry()
@@ -87,3 +87,9 @@ def test_a_unit_is_read_as_people_spell_it(quantity: str, text: str, unit: str) 
 def test_a_unit_that_does_not_fit_is_refused_with_those_that_do(quantity: str, text: str) -> None:
     with pytest.raises(Misread, match=f"is no unit of {quantity}"):
         read_unit(quantity, text)
+
+
+def test_a_figure_in_its_base_unit_is_the_same_whatever_unit_it_came_in() -> None:
+    assert in_base(Decimal("0.010"), "in") == in_base(Decimal("0.254"), "mm")
+    assert in_base(Decimal(212), "°F") == in_base(Decimal(100), "°C") == 100
+    assert in_base(Decimal("4.9"), "") == Fraction("4.9")

@@ -58,6 +58,12 @@ def take(ctx: Context, *rows: str, on: str = "2026-05-01", **values: object) -> 
         return measure(session, draft, TODAY)
 
 
+def lash_of(measured: Measured) -> JudgedSheet:
+    """The lash sheet that was measured."""
+    assert measured.report.lash is not None
+    return measured.report.lash
+
+
 def do(ctx: Context, *names: str, rows: tuple[str, ...] = FOUND_IN, on: str = "2026-05-01", **values: object) -> Logged:
     """Log work on P-01 with a sheet of some rows."""
     with ctx.write() as session:

@@ -19,6 +19,7 @@ from tests.operations.importing import correct, engine, entries, machine, readin
 from tests.operations.sheet_yard import (
     FOUND_IN,
     ONE_OUT,
+    lash_of,
     newest,
     open_points,
     refused,
@@ -65,7 +66,7 @@ def test_a_sheet_comes_back_with_all_that_was_said_of_it(yard: Context) -> None:
     measured = take(
         yard, *ONE_OUT, on="2026-04-20", when="cold", gauge="F2", by="Fenn", note="after cooling", at=["1480h"]
     )
-    assert (measured.is_new, measured.sheet.sheet.entry) == (True, 1)
+    assert (measured.is_new, measured.report.sheet.entry) == (True, 1)
     with yard.read() as connection:
         (sheet,) = load_sheets(connection, find_item(connection, "P-01").id, date(2026, 5, 1))
     assert (sheet.entry, sheet.kind, sheet.on, sheet.condition, sheet.gauge) == (
@@ -76,7 +77,7 @@ def test_a_sheet_comes_back_with_all_that_was_said_of_it(yard: Context) -> None:
         "F2",
     )
     assert (sheet.by, sheet.note, len(sheet.values)) == ("Fenn", "after cooling", 4)
-    assert sheet == measured.sheet.sheet
+    assert sheet == measured.report.sheet
     assert ("P-01", "2026-04-20", "1480h") in readings(yard)
     assert entries(yard) == [(1, "2026-04-20", "", "Fenn", "after cooling")]
 
@@ -93,7 +94,7 @@ def test_one_that_would_close_nothing_says_nothing_of_tasks(yard: Context) -> No
 
 
 def test_a_sheet_says_what_was_found_out_and_offers_to_raise_what_is_left_so(yard: Context) -> None:
-    judged = take(yard, *ONE_OUT, "lash,2E,left,38,").sheet
+    judged = lash_of(take(yard, *ONE_OUT, "lash,2E,left,38,"))
     assert verdicts(judged) == ["1I in", "1E in", "2I in", "2E alert", "2E* alarm"]
     assert (judged.stand.found_out, judged.stand.left_out) == (("2E",), ("2E",))
     assert judged.defect() == "Valve lash left out of limits: 2E 0.38 mm"
@@ -103,7 +104,7 @@ def test_a_sheet_says_what_was_found_out_and_offers_to_raise_what_is_left_so(yar
 
 
 def test_all_in_offers_nothing(yard: Context) -> None:
-    judged = take(yard, *FOUND_IN).sheet
+    judged = lash_of(take(yard, *FOUND_IN))
     assert (judged.defect(), judged.raise_command()) == ("", "")
 
 
@@ -112,7 +113,7 @@ def test_the_same_values_of_the_same_day_are_stored_once_in_whatever_order_and_u
     before = check(yard)
     for rows in (FOUND_IN, FOUND_IN[::-1], ("lash,1i,,25,mm", *FOUND_IN[1:]), ("lash,1I,,0.250,mm", *FOUND_IN[1:])):
         again = take(yard, *rows, when="hot", gauge="other")
-        assert (again.is_new, again.sheet.sheet.entry, again.sheet.sheet.condition) == (False, 1, "cold")
+        assert (again.is_new, again.report.sheet.entry, again.report.sheet.condition) == (False, 1, "cold")
     assert check(yard) == before
 
 
@@ -151,7 +152,7 @@ def test_an_older_sheet_is_judged_by_the_spec_of_its_day(yard: Context) -> None:
     take(yard, *FOUND_IN, on="2026-04-20")
     edit(yard, date(2026, 4, 25), lash_exhaust="0.46-0.50", lash_set_exhaust="0.48")
     assert verdicts(newest(yard))[1] == "1E in"
-    assert verdicts(take(yard, *FOUND_IN).sheet)[1] == "1E alert"
+    assert verdicts(lash_of(take(yard, *FOUND_IN)))[1] == "1E alert"
 
 
 def test_the_first_spec_holds_for_sheets_older_than_it(ctx: Context) -> None:
@@ -170,7 +171,7 @@ def test_a_setting_outside_its_check_range_is_refused(yard: Context) -> None:
 def test_what_each_point_showed_last_stands_beside(yard: Context) -> None:
     take(yard, *ONE_OUT, "lash,2E,left,0.46,", on="2026-04-01")
     take(yard, "lash,2E,found,0.44,", on="2026-04-20")
-    rows = take(yard, *FOUND_IN).sheet.rows
+    rows = lash_of(take(yard, *FOUND_IN)).rows
     assert [row.last for row in rows] == [
         "0.25 mm on 2026-04-01",
         "0.45 mm on 2026-04-01",
@@ -189,37 +190,37 @@ def test_a_sheet_typed_late_takes_its_place_in_time(yard: Context) -> None:
 
 
 def test_a_hot_reading_is_kept_and_not_held_against_cold_limits(yard: Context) -> None:
-    judged = take(yard, *ONE_OUT, when="hot").sheet
+    judged = lash_of(take(yard, *ONE_OUT, when="hot"))
     assert set(verdicts(judged)) == {"1I not judged", "1E not judged", "2I not judged", "2E not judged"}
     assert {row.note for row in judged.rows} == {"the limits are for a cold engine"}
     assert judged.notes() == ("not judged as they stand: 1I, 1E, 2I, 2E",)
 
 
 def test_a_sheet_that_does_not_say_cold_or_hot_says_what_it_is_taken_for(yard: Context) -> None:
-    assert take(yard, *ONE_OUT).sheet.notes() == (
+    assert lash_of(take(yard, *ONE_OUT)).notes() == (
         "nobody said whether the engine was cold or hot; it is taken to be cold, as the limits ask",
     )
 
 
 def test_an_unfinished_sheet_is_kept_and_says_what_is_missing(yard: Context) -> None:
-    judged = take(yard, *FOUND_IN[:2], when="cold").sheet
+    judged = lash_of(take(yard, *FOUND_IN[:2], when="cold"))
     assert judged.notes() == ("not measured: 2I, 2E",)
 
 
 def test_the_shim_fitted_last_time_tells_which_to_fit_now(ctx: Context) -> None:
     yard_with_valves(ctx, adjuster="shim", shim_step="0.05")
     take(ctx, "shim,1I,found,2.70,", "shim,1I,left,2.75,", on="2026-04-20")
-    (row,) = take(ctx, "lash,1I,found,0.19,").sheet.rows
+    (row,) = lash_of(take(ctx, "lash,1I,found,0.19,")).rows
     assert row.mending == "fit a 2.7 mm shim, which leaves 0.24 mm"
-    found, _ = take(ctx, "lash,1I,found,0.19,", "shim,1I,found,2.80,").sheet.rows
+    found, _ = lash_of(take(ctx, "lash,1I,found,0.19,", "shim,1I,found,2.80,")).rows
     assert found.mending == "fit a 2.75 mm shim, which leaves 0.24 mm"
 
 
 def test_a_left_gap_is_mended_from_the_shim_that_was_left(ctx: Context) -> None:
     yard_with_valves(ctx, adjuster="shim", shim_step="0.05")
-    rows = take(
-        ctx, "lash,1I,found,0.19,", "shim,1I,found,2.80,", "lash,1I,left,0.31,", "shim,1I,left,2.65,"
-    ).sheet.rows
+    rows = lash_of(
+        take(ctx, "lash,1I,found,0.19,", "shim,1I,found,2.80,", "lash,1I,left,0.31,", "shim,1I,left,2.65,")
+    ).rows
     assert [row.mending for row in rows] == ["", "fit a 2.7 mm shim, which leaves 0.26 mm", "", ""]
 
 
@@ -234,7 +235,7 @@ def test_points_the_nameplate_no_longer_has_stay_readable(yard: Context) -> None
 
 def test_valves_nobody_counted_are_taken_for_two_and_it_says_so(ctx: Context) -> None:
     yard_with_valves(ctx, valves_per_cylinder=None)
-    assert take(ctx, *FOUND_IN, when="cold").sheet.notes() == (
+    assert lash_of(take(ctx, *FOUND_IN, when="cold")).notes() == (
         "P-01 is taken to have 2 valves per cylinder, as nobody stated how many",
     )
 
@@ -263,7 +264,7 @@ def test_a_day_to_come_is_refused(yard: Context) -> None:
 
 
 def test_the_phase_of_a_fact_is_the_word_of_the_file(yard: Context) -> None:
-    (value,) = take(yard, "lash,1I,LEFT,0.25,").sheet.sheet.values
+    (value,) = take(yard, "lash,1I,LEFT,0.25,").report.sheet.values
     assert (value.phase, value.value) == (Phase.LEFT, Decimal("0.25"))
 
 

@@ -35,7 +35,7 @@ def test_its_sheet_closes_the_work_and_stands_with_its_entry(yard: Context) -> N
     judged = newest(yard)
     assert judged is not None
     assert (judged.sheet.entry, judged.sheet.gauge) == (1, "F2")
-    assert judged.sheet == logged.sheet.sheet if logged.sheet else False
+    assert judged.sheet == logged.sheet if logged.sheet else False
     assert check(yard).problems == ()
 
 

@@ -1,0 +1,209 @@
+"""Sheets as the rules see them, of one engine or of many at once: facts out of rows, with plain SQL."""
+
+import sys
+from collections.abc import Mapping, Sequence
+from dataclasses import dataclass, field
+from datetime import date
+from decimal import Decimal
+from typing import TYPE_CHECKING
+
+from fleetcare.domain.engines import Adjuster, Bridged, Layout, ValveTrain
+from fleetcare.domain.measured import LASH, OIL, MeasuredEngine, MeasuredSheet, Pools, SheetWord
+from fleetcare.domain.measures import QUANTITIES, can_convert, exactly
+from fleetcare.domain.quantities import Kind
+from fleetcare.domain.sheet_kinds import GRADE, WORDS
+from fleetcare.domain.sheets import Judgement, LashSpec, Phase, Sheet, SheetValue, spec_on
+from fleetcare.operations.load import entry_lives, load_counters, own_readings
+from fleetcare.operations.rows import Row, day, fetch, figure, known_day
+from fleetcare.operations.sheets_load import USUAL_VALVES, load_values, specs_of
+from fleetcare.rules.judge_engine import Background
+from fleetcare.rules.judge_lash import judge_sheet
+from fleetcare.rules.judging.spans import decimal
+from fleetcare.rules.lash_points import banks, lash_points
+
+if TYPE_CHECKING:
+    from sqlalchemy import Connection
+
+_COUNTS = (
+    "not entry.is_void and not exists (select 1 from log_entry later where later.supersedes_id = entry.id)"
+    " and sheet.taken_on <= :on"
+)
+"""Sheets up to a day whose entry was neither superseded nor voided."""
+
+
+@dataclass(frozen=True, slots=True)
+class EngineSheets:
+    """An engine as rules ask for it, with all its sheets up to a day, oldest first, and what is known beside them."""
+
+    item_id: int
+    engine: MeasuredEngine
+    sheets: tuple[MeasuredSheet, ...] = ()
+    background: Background = field(default_factory=Background)
+
+
+def measured_sheet(sheet: Sheet, engine_hours: Decimal | None = None) -> MeasuredSheet:
+    """Give a sheet as rules see it: its words apart from its values."""
+    return MeasuredSheet(
+        entry=sheet.entry,
+        kind=sheet.kind,
+        on=sheet.on,
+        values=tuple(value for value in sheet.values if value.quantity not in WORDS),
+        words=tuple(SheetWord(one.quantity, one.qualifier, one.point) for one in sheet.values if one.quantity in WORDS),
+        gauge=sheet.gauge,
+        engine_hours=engine_hours,
+        received_on=sheet.received_on,
+    )
+
+
+def load_engine_sheets(
+    connection: "Connection", on: date, ids: Sequence[int] | None = None, newest: tuple[date, int] | None = None
+) -> list[EngineSheets]:
+    """Load engines (all that have a sheet, or those of some ids) with their sheets, in the order of tags, seen on a day.
+
+    Sheets after `newest`, the day and the entry of one, are left out.
+    """
+    plates = _load_plates(connection, ids)
+    last = newest or (on, sys.maxsize)
+    sheets = _load_sheets(connection, [row[0] for row in plates], on, last)
+    fresh = _load_fresh(connection, last[0])
+    specs = specs_of(connection, [item for item, own in sheets.items() if any(one.kind == LASH for one, _ in own)])
+    conditions = {one.entry: condition for own in sheets.values() for one, condition in own}
+    found = []
+    for row in plates:
+        own = tuple(sheet for sheet, _ in sheets.get(row[0], ()))
+        if not own and ids is None:
+            continue
+        engine, train = _engine(row)
+        background = Background(
+            fresh=fresh.get(_grade(own, engine), ()),
+            pools=Pools(own=_pool(own)),
+            lash=_judge_lash(own, train, specs.get(row[0], ()), conditions),
+        )
+        found.append(EngineSheets(row[0], engine, own, background))
+    return found
+
+
+def load_measured_engine(connection: "Connection", item_id: int) -> MeasuredEngine | None:
+    """Load an engine as rules ask for it, None for a machine."""
+    rows = _load_plates(connection, [item_id])
+    return _engine(rows[0])[0] if rows else None
+
+
+def _load_plates(connection: "Connection", ids: Sequence[int] | None) -> Sequence[Row]:
+    chosen = "" if ids is None else " where item.id in :ids"
+    return fetch(
+        connection,
+        "select item.id, item.tag, fuel, cylinders, layout, numbering, valves_per_cylinder, bridged, adjuster, duty,"
+        f" oil_grade, sump_l, rated_kw from engine join item on item.id = engine.item_id{chosen} order by item.tag, item.id",
+        **({} if ids is None else {"ids": list(ids)}),
+    )
+
+
+def _engine(row: Row) -> tuple[MeasuredEngine, ValveTrain | None]:
+    """Give an engine, and its valves where the number of cylinders is known."""
+    _, tag, fuel, cylinders, layout, numbering, valves, bridged, adjuster, duty, grade, sump, rated = row
+    train = None
+    if cylinders is not None:
+        train = ValveTrain(
+            cylinders=cylinders,
+            valves_per_cylinder=valves or USUAL_VALVES,
+            bridged=Bridged(bridged or Bridged.NONE),
+            layout=Layout(layout) if layout else None,
+            numbering=numbering,
+            firing_order=(),
+            adjuster=Adjuster(adjuster),
+        )
+    return MeasuredEngine(
+        tag=tag,
+        fuel=fuel,
+        cylinders=cylinders or 0,
+        banks=banks(train) if train else (),
+        adjuster=adjuster,
+        duty=duty,
+        oil_grade=grade,
+        sump=figure(sump),
+        rated_kw=figure(rated),
+    ), train
+
+
+def _load_sheets(
+    connection: "Connection", ids: Sequence[int], on: date, last: tuple[date, int]
+) -> dict[int, list[tuple[MeasuredSheet, str]]]:
+    """Load the sheets of some engines up to the last, oldest first, each with its condition, by engine."""
+    rows = fetch(
+        connection,
+        "select sheet.item_id, sheet.id, sheet.entry_id, sheet.kind, sheet.taken_on, sheet.conditions, sheet.gauge,"
+        " sheet.received_on from sheet join log_entry entry on entry.id = sheet.entry_id"
+        f" where sheet.item_id in :ids and {_COUNTS} and (sheet.taken_on, sheet.entry_id) <= (:on, :entry)"
+        " order by sheet.taken_on, sheet.entry_id, sheet.id",
+        ids=list(ids),
+        on=last[0].isoformat(),
+        entry=last[1],
+    )
+    values = load_values(connection, [row[1] for row in rows])
+    owners = list(dict.fromkeys(row[0] for row in rows))
+    counters = load_counters(connection, owners, on)
+    own = {item: own_readings(found) for item, found in counters.items()}
+    sheets: dict[int, list[tuple[MeasuredSheet, str]]] = {}
+    for item, sheet_id, entry, kind, taken_on, condition, gauge, received in rows:
+        taken = known_day(taken_on)
+        life = entry_lives(counters.get(item, {}), own.get(item, {}), entry, taken).get(Kind.HOURS)
+        sheet = Sheet(entry, kind, taken, values.get(sheet_id, ()), condition, gauge, received_on=day(received))
+        sheets.setdefault(item, []).append((measured_sheet(sheet, life.value if life else None), condition))
+    return sheets
+
+
+def _load_fresh(connection: "Connection", on: date) -> dict[str, tuple[SheetValue, ...]]:
+    """Load what new oil has, by grade: of each quantity the newest reference, whichever engine's sheet it came with."""
+    rows = fetch(
+        connection,
+        "select coalesce((select qualifier from sheet_value word where word.sheet_id = sheet.id"
+        f" and word.quantity = '{GRADE}'), engine.oil_grade), fresh.quantity, fresh.value, fresh.unit, fresh.qualifier"
+        " from sheet_value fresh join sheet on sheet.id = fresh.sheet_id"
+        " join log_entry entry on entry.id = sheet.entry_id join engine on engine.item_id = sheet.item_id"
+        f" where fresh.phase = 'new' and {_COUNTS} order by sheet.taken_on, sheet.entry_id, fresh.id",
+        on=on.isoformat(),
+    )
+    by_grade: dict[str, dict[str, SheetValue]] = {}
+    for grade, quantity, value, unit, qualifier in rows:
+        fresh = SheetValue(quantity, "", Phase.NEW, figure(value), None, None, unit, qualifier)
+        by_grade.setdefault(_key(grade), {})[quantity] = fresh
+    return {grade: tuple(values.values()) for grade, values in by_grade.items() if grade}
+
+
+def _grade(sheets: Sequence[MeasuredSheet], engine: MeasuredEngine) -> str:
+    """Give the grade in the engine: what its newest oil sheet that names one says, else its nameplate."""
+    said = (word.text for sheet in reversed(sheets) for word in sheet.words if word.quantity == GRADE)
+    return _key(next(said, engine.oil_grade))
+
+
+def _key(grade: str) -> str:
+    """Give a grade as it compares: SAE 15W-40 and 15w40 are one."""
+    return grade.casefold().replace("sae", "").replace("-", "").replace(" ", "")
+
+
+def _pool(sheets: Sequence[MeasuredSheet]) -> dict[str, tuple[Decimal, ...]]:
+    """Give the plain figures of an engine's oil samples but the newest, by quantity, each in the unit of the quantity."""
+    pool: dict[str, list[Decimal]] = {}
+    for sheet in [one for one in sheets if one.kind == OIL][:-1]:
+        for value in sheet.values:
+            into = QUANTITIES[value.quantity].unit
+            is_plain = value.value is not None and not value.qualifier and value.phase is Phase.NONE
+            if is_plain and value.value is not None and can_convert(value.unit, into):
+                pool.setdefault(value.quantity, []).append(decimal(exactly(value.value, value.unit, into)))
+    return {quantity: tuple(figures) for quantity, figures in pool.items()}
+
+
+def _judge_lash(
+    sheets: Sequence[MeasuredSheet],
+    train: ValveTrain | None,
+    specs: tuple[LashSpec, ...],
+    conditions: Mapping[int, str],
+) -> dict[int, tuple[Judgement, ...]]:
+    """Hold every lash sheet against the spec of its day, by entry."""
+    points = lash_points(train) if train else ()
+    return {
+        one.entry: judge_sheet(one.values, points, spec_on(specs, one.on), conditions[one.entry])
+        for one in sheets
+        if one.kind == LASH
+    }

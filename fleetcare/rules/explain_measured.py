@@ -1,0 +1,118 @@
+"""A judged sheet other than the lash sheet in words and flat rows: what table, JSON and screen show."""
+
+from collections.abc import Iterable, Sequence
+from dataclasses import dataclass
+from decimal import Decimal
+
+from fleetcare.domain.findings import Evidence, NotJudged, Signal
+from fleetcare.domain.quantities import plain
+from fleetcare.domain.rule_book import Bounds, Pattern, Rule, Severity
+from fleetcare.domain.sheets import Phase, Verdict
+from fleetcare.rules.explain_finding import say_against, say_measured, say_unit
+from fleetcare.rules.judging.judge import JudgedSheet
+from fleetcare.rules.judging.values import title
+
+_NO_RULE = "no rule is about it"
+_ASIDE = {Phase.WET: "of the wet test, to compare with", Phase.NEW: "fresh oil, to compare with"}
+_JUDGED_AS = {"held": "leak"}
+"""What is judged in the place of a value: the leak of a pair of pressures stands with the pressure held."""
+
+
+@dataclass(frozen=True, slots=True)
+class MeasuredRow:
+    """One value with its verdict, flat. `value` is as a sheet file has it.
+
+    Of what a rule worked out of it `measured`, `limit` and `margin` are in `limit_unit`, and None where only a pattern
+    speaks or nothing flags it. `why` says what the verdict rests on, `rule` and `source` whose it is.
+    """
+
+    quantity: str
+    title: str
+    point: str
+    phase: str
+    value: str
+    unit: str
+    verdict: str
+    why: str
+    rule: str = ""
+    measured: Decimal | None = None
+    limit: Decimal | None = None
+    margin: Decimal | None = None
+    limit_unit: str = ""
+    source: str = ""
+
+
+def measured_rows(judged: JudgedSheet, rules: Sequence[Rule], order: Sequence[str]) -> tuple[MeasuredRow, ...]:
+    """Flatten the values of a judged sheet, quantities in an order, points as the engine stands."""
+    places = {quantity: place for place, quantity in enumerate(order)}
+    verdicts = sorted(judged.verdicts, key=lambda pair: places.get(pair[0].quantity, len(places)))
+    return tuple(_row(value, verdict, judged, rules) for value, verdict in verdicts)
+
+
+def _row(value: Evidence, verdict: Verdict, judged: JudgedSheet, rules: Sequence[Rule]) -> MeasuredRow:
+    signal = _gravest(signal for signal in judged.signals if value in signal.flagged)
+    rule = signal.rule if signal else _held_by(value, judged.not_judged, rules) if verdict is Verdict.IN else None
+    return MeasuredRow(
+        quantity=value.quantity,
+        title=title(value.quantity),
+        point=value.point,
+        phase=value.phase,
+        value=value.value,
+        unit=value.unit,
+        verdict=verdict,
+        why=_why(value, signal, rule, judged.not_judged),
+        rule=rule.id if rule else "",
+        measured=signal.measured if signal else None,
+        limit=signal.limit if signal else None,
+        margin=signal.margin if signal else None,
+        limit_unit=say_unit(signal.rule, signal.unit) if signal and signal.measured is not None else "",
+        source=rule.source if rule else "",
+    )
+
+
+def _why(value: Evidence, signal: Signal | None, rule: Rule | None, silent: Sequence[NotJudged]) -> str:
+    if signal is not None:
+        return say_past(signal)
+    if rule is not None:
+        return say_limits(rule)
+    if value.phase in _ASIDE:
+        return _ASIDE[value.phase]
+    judged_as = _JUDGED_AS.get(value.quantity, value.quantity)
+    whys = (one.why for one in silent if one.rule.quantity == judged_as and one.subject in {value.point, ""})
+    return "; ".join(dict.fromkeys(whys)) or _NO_RULE
+
+
+def say_past(signal: Signal) -> str:
+    """Say past which limit a value is and by how much; what is compared with another is named."""
+    if signal.measured is None:
+        return signal.rule.message
+    is_plain = signal.rule.shape == Bounds()
+    return say_against(signal) if is_plain else f"{say_measured(signal.rule)} {say_against(signal)}"
+
+
+def say_limits(rule: Rule) -> str:
+    """Say the first limits of a rule a value lies within: "iron up to 100 ppm", "oil pressure from 100 kPa"."""
+    low, high = (end.alert or end.alarm for end in (rule.low, rule.high))
+    ends = (low and f"from {plain(low.value)}", high and f"up to {plain(high.value)}")
+    return " ".join(part for part in (say_measured(rule), *ends, say_unit(rule)) if part)
+
+
+def _held_by(value: Evidence, silent: Sequence[NotJudged], rules: Sequence[Rule]) -> Rule | None:
+    """Give the first rule that held a value against limits, the plainest before those that compare; None for a pattern."""
+    judged_as = _JUDGED_AS.get(value.quantity, value.quantity)
+    left_out = {one.rule.id for one in silent if one.subject in {value.point, ""}}
+    held = [
+        rule
+        for rule in rules
+        if rule.quantity == judged_as and not isinstance(rule.shape, Pattern) and rule.id not in left_out
+    ]
+    return min(held, key=lambda rule: not isinstance(rule.shape, Bounds), default=None)
+
+
+def _gravest(signals: Iterable[Signal]) -> Signal | None:
+    """Give the gravest signal of a value, one with a figure before a pattern."""
+    return min(
+        signals,
+        key=lambda one: (isinstance(one.rule.shape, Pattern), one.severity is not Severity.ALARM, one.rule.id),
+        default=None,
+    )
