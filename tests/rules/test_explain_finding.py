@@ -82,7 +82,7 @@ def test_a_pattern_alone_has_no_figure_and_one_beside_it_says_what_else_would_fi
     also = replace(pattern, id="also", cause="dirt")
     about = facts(a_sheet(value("Fe", "60")))
     row = finding_row(found(about, pattern))
-    assert (row.measured, row.unit, row.working) == (None, "", ())
+    assert (row.measured, row.unit, row.working) == (None, "", ("worn liners (worn) from iron 60 ppm",))
     said = say_finding(found(facts(a_sheet(value("Fe", "120"))), pattern, also, a_rule()))
     assert said == (
         "dirt: liners, shafts, gears; iron 120 ppm, 20 ppm above the alert limit of 100 ppm;"
@@ -154,6 +154,20 @@ def test_what_a_rule_works_out_has_a_name(shape: Shape, said: str) -> None:
     assert say_measured(a_rule(shape=shape)) == said
 
 
+def test_what_was_taken_off_for_new_oil_is_said_and_also_that_it_is_not_known() -> None:
+    rule = a_rule(shape=Bounds(Basis.LESS_NEW))
+    sheet = a_sheet(value("Fe", "120"))
+    bare = one_signal(rule, facts(sheet))
+    assert say_working(bare) == "iron (new oil not known, nothing taken off) 120 ppm (iron)"
+    known = one_signal(rule, facts(sheet, fresh=(value("Fe", "5", phase="new"),)))
+    assert say_signal(known) == "iron above new oil 115 ppm, 15 ppm above the alert limit of 100 ppm"
+
+
+def test_of_several_steps_the_lead_says_the_next_one() -> None:
+    other = a_rule(id="trend", next_step="look at the filter")
+    assert say_next_step(found(facts(a_sheet(value("Fe", "120"))), a_rule(), other)) == "sample again"
+
+
 def test_a_rate_is_per_its_hours() -> None:
     assert say_unit(a_rule(shape=Rate(Since.NEW, 100))) == "ppm per 100 h"
     assert say_unit(a_rule(), "mm") == "mm"
@@ -183,3 +197,5 @@ def test_the_step_the_law_dates_comes_first() -> None:
     assert finding.lead.rule.id == "iron"
     assert say_next_step(finding) == "change the oil, by 2026-04-21; sample again"
     assert finding_row(finding).due_by == day("2026-04-21")
+    alone = found(facts(a_sheet(value("Fe", "300"))), law)
+    assert say_next_step(alone) == "change the oil, by 2026-04-21"

@@ -10,14 +10,14 @@ from dataclasses import dataclass
 from itertools import pairwise
 from typing import assert_never
 
-from fleetcare.domain.findings import Evidence, Signal
+from fleetcare.domain.findings import Evidence, Signal, Step
 from fleetcare.domain.measured import MeasuredSheet
 from fleetcare.domain.rule_book import Asks, Condition, End, Pattern, Rule, Where, worst
 from fleetcare.domain.sheets import Phase
 from fleetcare.rules.judging.facts import CannotTell, MeasuredFacts
 from fleetcare.rules.judging.hold import due_on
 from fleetcare.rules.judging.spans import Side, Span
-from fleetcare.rules.judging.values import Measured, cylinder_of, fresh_of, values_of
+from fleetcare.rules.judging.values import Measured, cylinder_of, fresh_of, step, title, values_of
 from fleetcare.rules.judging.words import words_of
 from fleetcare.rules.lash_points import side_of
 
@@ -26,10 +26,11 @@ _LASH = "lash"
 
 @dataclass(frozen=True, slots=True)
 class _Match:
-    """What a condition that holds calls out, and what else it rests on."""
+    """What a condition that holds calls out, what else it rests on, and the number that lies within."""
 
     flagged: tuple[Evidence, ...] = ()
     used: tuple[Evidence, ...] = ()
+    steps: tuple[Step, ...] = ()
 
 
 @dataclass(frozen=True, slots=True)
@@ -79,6 +80,7 @@ def _matches(rule: Rule, pattern: Pattern, scene: _Scene) -> Iterator[Signal]:
             on=scene.facts.sheet.on,
             flagged=tuple(sorted(flagged)),
             used=tuple(sorted(used)),
+            steps=tuple(dict.fromkeys(number for match in found for number in match.steps)),
             due_by=due_on(rule, scene.facts),
         )
 
@@ -154,7 +156,9 @@ def _within(condition: Condition, cylinder: int | None, scene: _Scene) -> _Match
         except CannotTell:
             continue
         if _lies_within(span, condition):
-            return _Match((one.evidence,), used) if condition.calls_out else _Match((), (one.evidence, *used))
+            steps = (step(_label(condition, one), span, condition.unit),)
+            flagged = (one.evidence,) if condition.calls_out else ()
+            return _Match(flagged, (one.evidence, *used), steps)
     return None
 
 
@@ -195,6 +199,13 @@ def _span(condition: Condition, one: Measured, scene: _Scene) -> tuple[Span, tup
     if other.low <= 0:
         raise CannotTell("there is none of the other quantity")
     return span.over(other), (*one.used, *used, others[0].evidence, *seen)
+
+
+def _label(condition: Condition, one: Measured) -> str:
+    """Name the number that lies within: "silicon to aluminium, both above new oil", "wet gain at 3"."""
+    over = f" to {title(condition.over)}" if condition.over else ""
+    above = f",{' both' if over else ''} above new oil" if condition.less_new else ""
+    return f"{title(one.quantity)}{over}{above}{f' at {one.point}' if one.point else ''}"
 
 
 def _above_new(condition: Condition, one: Measured, scene: _Scene, unit: str) -> tuple[Span, tuple[Evidence, ...]]:
