@@ -1,7 +1,7 @@
 """Signals of an engine put together: one finding for each cause, with everything that speaks for it.
 
 Every flagged value is evidence of exactly one finding. Patterns choose first, the graver before the milder and the one
-with more conditions, then with more values, before the others: a pattern takes the values it flags, with all that is said of them, and
+that puts more together before the others: a pattern takes the values it flags, with all that is said of them, and
 names the cause. A pattern whose values all belong to another already speaks for that finding. What no pattern took goes
 by cause and subject, the cause being that of the gravest rule that flags the value, a law before a preset. So no finding
 is milder than the worst of its evidence, and nothing flagged is left out.
@@ -12,9 +12,10 @@ from collections.abc import Iterable
 from dataclasses import replace
 
 from fleetcare.domain.findings import Evidence, Finding, Signal
-from fleetcare.domain.rule_book import Pattern, Severity
+from fleetcare.domain.rule_book import Asks, Pattern, Severity
 
 _Key = tuple[str, str]
+_PUT_TOGETHER = {Asks.FLAGGED_HIGH, Asks.FLAGGED_LOW, Asks.SAID}
 
 
 def merge(engine: str, signals: Iterable[Signal]) -> tuple[Finding, ...]:
@@ -54,12 +55,16 @@ def _claim(signal: Signal, owners: dict[Evidence, _Key], grouped: dict[_Key, lis
 
 
 def _rank(signal: Signal) -> tuple[object, ...]:
-    """Order signals so that whatever leads comes first, however they were entered."""
+    """Order signals so that whatever leads comes first, however they were entered.
+
+    Of patterns those that put together what others say come before those that only hold values against limits.
+    """
     shape = signal.rule.shape
-    conditions = len(shape.conditions) if isinstance(shape, Pattern) else 0
+    conditions = shape.conditions if isinstance(shape, Pattern) else ()
     return (
         signal.severity is not Severity.ALARM,
-        -conditions,
+        -sum(condition.asks in _PUT_TOGETHER for condition in conditions),
+        -len(conditions),
         -len(signal.flagged),
         not signal.rule.is_law,
         signal.rule.id,

@@ -7,19 +7,13 @@ from pathlib import Path
 
 import pytest
 
-from fleetcare.domain.engines import Side
 from fleetcare.domain.measured import MeasuredSheet, Pools
-from fleetcare.domain.rule_book import Rule
-from fleetcare.domain.sheets import LashSpec
-from fleetcare.rulebook.rules import rule_book, shipped_rules, shop_rules
+from fleetcare.rulebook.rules import rule_book, shipped_rules
 from fleetcare.rules.findings import merge
-from fleetcare.rules.judge_lash import judge_value
 from fleetcare.rules.judging.applies import rules_for
 from fleetcare.rules.judging.judge import judge
-from fleetcare.rules.judging.values import values_of
-from fleetcare.rules.lash_points import side_of
 from tests.builders import day
-from tests.rules.measured import ENGINE, a_sheet, facts, pressures, told, value
+from tests.rules.measured import ENGINE, a_sheet, facts, rules_named, told, value
 
 RULES = {rule.id: rule for rule in shipped_rules()}
 PUBLISHED = list(
@@ -33,39 +27,6 @@ def test_a_shipped_limit_is_the_published_one(row: dict[str, str]) -> None:
     limit = getattr(getattr(rule, row["side"]), row["level"])
     assert (rule.quantity, rule.unit, limit.value) == (row["quantity"], row["unit"], Decimal(row["figure"]))
     assert limit.reach is (row["passes_at"] == "no")
-
-
-def _chosen(*presets: str) -> tuple[Rule, ...]:
-    shop = shop_rules({"preset": [{"name": name, "engines": "P-01"} for name in presets]}, "shop")
-    return rules_for(rule_book(shop), ENGINE)
-
-
-@pytest.mark.parametrize(
-    ("preset", "out"), [("", {}), ("compression-s25", {("compression-s25", "3"): "alarm"}), ("compression-a20", {})]
-)
-def test_the_published_compression_set_is_examined_by_its_own_rule_and_passes_by_two_others(
-    preset: str, out: dict[tuple[str, str], str]
-) -> None:
-    """TM 5-3895-359-14&P table 2: 445, 440, 405, 435 psi, spread 40; R75 0.910 and A20 405 > 345 pass."""
-    rules = _chosen(*([preset] if preset else []))
-    assert told(rules, facts(pressures("445", "440", "405", "435"))) == out
-
-
-@pytest.mark.parametrize(
-    ("supply", "held", "leak", "severity"),
-    [("80", "72", "10", None), ("80", "60", "25", "alert"), ("80", "58", "27.5", "alarm"), ("100", "92", "8", None)],
-)
-def test_a_differential_reading_is_a_leak_in_percent_and_sixty_over_eighty_is_not_suspect_yet(
-    supply: str, held: str, leak: str, severity: str | None
-) -> None:
-    """FAA AC 43.13-1B 8-14b(5): in excess of 25 % is suspect; 80/72 is 10.0 %, 80/58 27.5 %, 100/92 8.0 %."""
-    sheet = a_sheet(value("supply", supply, "psi", "3"), value("held", held, "psi", "3"), kind="leakdown")
-    assert [one.span.low for one in values_of(sheet, "leak")] == [Decimal(leak)]
-    signals = judge(_chosen(), facts(sheet))
-    assert {str(one.severity) for one in signals} == ({severity} if severity else set())
-    assert ("leakdown-differential" in {one.rule.id for one in signals}) is (severity == "alarm")
-    shared = replace(sheet, values=(value("supply", supply, "psi"), *sheet.values[1:]))
-    assert {one.rule.id for one in judge(_chosen(), facts(shared))} == {one.rule.id for one in signals}
 
 
 STANDBY = replace(ENGINE, duty="standby")
@@ -119,8 +80,8 @@ def test_fifty_hours_of_other_running_count_in_the_hundred_of_a_calendar_year(no
         run("9000", "emergency", 10),
     )
     about = facts(run(now, "other", 0), earlier=earlier)
-    assert {one.rule.id for one in judge(_chosen("zzzz-emergency-hours"), about)} == out
-    assert judge(_chosen(), about) == ()
+    assert {one.rule.id for one in judge(rules_named("zzzz-emergency-hours"), about)} == out
+    assert judge(rules_named(), about) == ()
 
 
 NEW_OIL = (value("tbn", "10.0", phase="new"), value("kv100", "14.5", phase="new"))
@@ -134,10 +95,10 @@ def test_the_worked_sample_of_the_oil_analysis_option_is_condemned_below_thirty_
     sheet = a_sheet(
         value("tbn", base_number), value("kv100", "12.2"), value("water", "0.1"), received_on=day("2026-04-16")
     )
-    law = [one for one in judge(_chosen("zzzz-ci"), facts(sheet, fresh=NEW_OIL)) if one.rule.is_law]
+    law = [one for one in judge(rules_named("zzzz-ci"), facts(sheet, fresh=NEW_OIL)) if one.rule.is_law]
     assert {one.rule.id for one in law} == out
     assert {one.due_by for one in law} == ({day("2026-04-20")} if out else set())
-    assert not any(one.rule.is_law for one in judge(_chosen(), facts(sheet, fresh=NEW_OIL)))
+    assert not any(one.rule.is_law for one in judge(rules_named(), facts(sheet, fresh=NEW_OIL)))
 
 
 @pytest.mark.parametrize(
@@ -159,7 +120,7 @@ def test_law_limits_are_strict_in_decimal_arithmetic(
 ) -> None:
     """40 CFR 63.6625(i), (j): below 30 %, more than 20 %, 3.0 mg KOH/g, 0.5 %; binary floats fail two of these."""
     about = facts(a_sheet(value(quantity, used)), fresh=(value(quantity, new, phase="new"),))
-    assert any(one.rule.is_law for one in judge(_chosen(preset), about)) is is_out
+    assert any(one.rule.is_law for one in judge(rules_named(preset), about)) is is_out
 
 
 @pytest.mark.parametrize(
@@ -181,7 +142,7 @@ def test_aluminium_potassium_and_sodium_are_read_by_the_gravest_row(
 ) -> None:
     """Detroit Diesel letter 07 TS-37 (26 June 2007), all three columns must match."""
     sheet = a_sheet(value("Al", aluminium), value("K", potassium), value("Na", sodium))
-    rows = [one.rule.id for one in judge(_chosen(), facts(sheet)) if getattr(one.rule.shape, "table", "")]
+    rows = [one.rule.id for one in judge(rules_named(), facts(sheet)) if getattr(one.rule.shape, "table", "")]
     assert rows == ([pattern] if pattern else [])
 
 
@@ -195,7 +156,7 @@ def test_dust_of_the_earths_crust_and_of_test_dust_is_told_by_its_silicon_and_al
     """Upper crust 66.6 % SiO2, 15.4 % Al2O3 (3.8); ISO 12103-1 68 to 76 %, 10 to 15 % (4.0 to 6.7); molar masses."""
     silicon, aluminium = Decimal(silica) * Decimal("0.4674"), Decimal(alumina) * Decimal("0.5293")
     sheet = a_sheet(value("Si", f"{silicon:f}"), value("Al", f"{aluminium:f}"))
-    ids = {one.rule.id for one in judge(_chosen(), facts(sheet))}
+    ids = {one.rule.id for one in judge(rules_named(), facts(sheet))}
     assert ("pattern-dirt-ratio" in ids) is is_dust
 
 
@@ -241,7 +202,7 @@ def test_one_outlier_in_twenty_samples_does_not_move_the_engines_own_limits(iron
 def test_elements_that_rise_together_are_one_finding_of_one_cause(values: dict[str, str], cause: str) -> None:
     """TM 10-6640-233-10 Table 2-13, TM 38-301-4, ASTM D5185; the triple of rings and liners: common practice."""
     sheet = a_sheet(*(value(quantity, text) for quantity, text in values.items()))
-    (finding,) = merge("P-01", judge(_chosen(), facts(sheet)))
+    (finding,) = merge("P-01", judge(rules_named(), facts(sheet)))
     assert finding.cause == cause
     assert {one.quantity for one in finding.evidence} == set(values)
 
@@ -252,46 +213,5 @@ def test_sodium_alone_in_a_marine_engine_is_sea_water() -> None:
     sheet = a_sheet(value("Na", "120"), value("K", "3"))
     (finding,) = merge("B-01", judge(rules_for(rule_book(), boat), facts(sheet, engine=boat)))
     assert finding.cause == "sea water in the oil"
-    (ashore,) = merge("P-01", judge(_chosen(), facts(sheet)))
+    (ashore,) = merge("P-01", judge(rules_named(), facts(sheet)))
     assert ashore.cause == "sodium"
-
-
-@pytest.mark.parametrize(
-    ("wet", "cause"),
-    [({3: "310"}, "leaking valves"), ({3: "345"}, "worn rings or bore")],
-)
-def test_a_wet_test_tells_rings_from_valves(wet: dict[int, str], cause: str) -> None:
-    """TM 5-4210-230-14&P-1, GM: clearly better with oil is rings; that 10 % counts is common practice."""
-    (finding,) = merge("P-01", judge(_chosen(), facts(pressures("445", "440", "300", "435", "440", "438", wet=wet))))
-    assert (finding.cause, finding.subject) == (cause, "3")
-
-
-def test_two_low_neighbours_are_a_gasket() -> None:
-    """TM 5-4210-230-14&P-1, GM: two adjacent cylinders low, oil changes nothing: head gasket between them."""
-    sheet = pressures("445", "440", "300", "310", "440", "438", wet={3: "305", 4: "312"})
-    (finding,) = merge("P-01", judge(_chosen(), facts(sheet)))
-    assert (finding.cause, finding.subject) == ("head gasket between two cylinders", "3-4")
-
-
-@pytest.mark.parametrize(
-    ("point", "wet", "causes"),
-    [
-        ("3E", "305", {("closing exhaust valve", "3")}),
-        ("3I", "305", {("closing intake valve", "3")}),
-        ("3E", "345", {("worn rings or bore", "3"), ("closing valve", "3E")}),
-        ("2E", "305", {("leaking valves", "3"), ("closing valve", "2E")}),
-    ],
-)
-def test_a_closing_valve_and_a_low_cylinder_that_oil_does_not_raise_are_one_finding_about_it(
-    point: str, wet: str, causes: set[tuple[str, str]]
-) -> None:
-    """TM 5-3820-245-14&P p. 169: too small a gap loses compression; TM 1-1500-204-23-1 step (e): lash first."""
-    gap = value("lash", "0.30", point=point, phase="found")
-    lash = a_sheet(gap, kind="lash", days=9)
-    spec = LashSpec(lash.on, "mm", "any", dict.fromkeys(Side, (Decimal("0.40"), Decimal("0.50"))))
-    judged = {lash.entry: (judge_value(gap, side_of(point), spec, ""),)}
-    standing = judge(_chosen(), facts(lash, lash=judged))
-    sheet = pressures("445", "440", "300", "435", "440", "438", wet={3: wet})
-    signals = judge(_chosen(), facts(sheet, others=(lash,), standing=standing))
-    findings = merge("P-01", (*standing, *signals))
-    assert {(one.cause, one.subject) for one in findings} == causes

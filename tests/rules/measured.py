@@ -24,6 +24,8 @@ from fleetcare.domain.rule_book import (
     Statistical,
 )
 from fleetcare.domain.sheets import Phase, SheetValue
+from fleetcare.rulebook.rules import rule_book, shop_rules
+from fleetcare.rules.judging.applies import rules_for
 from fleetcare.rules.judging.facts import MeasuredFacts
 from fleetcare.rules.judging.judge import judge
 
@@ -109,6 +111,12 @@ def one_signal(rule: Rule, about: MeasuredFacts) -> Signal:
     """The only signal of a rule."""
     (signal,) = judge([rule], about)
     return signal
+
+
+def rules_named(*presets: str) -> tuple[Rule, ...]:
+    """The shipped rules for P-01, with these presets named for it."""
+    shop = shop_rules({"preset": [{"name": name, "engines": "P-01"} for name in presets]}, "shop")
+    return rules_for(rule_book(shop), ENGINE)
 
 
 def facts_with(rule: Rule, figure: Decimal) -> MeasuredFacts:

@@ -92,6 +92,12 @@ def test_the_graver_pattern_chooses_first_then_the_one_of_more_conditions_then_o
     assert put(fits("a", "Na"), fits("b", "Na", "K"))[0] == ("b", "alert", ["K", "Na"])
 
 
+def test_a_pattern_that_puts_together_what_others_say_comes_before_one_that_holds_values_against_limits() -> None:
+    bare = fits("a bare limit", "held", conditions=3)
+    bare = replace(bare, rule=replace(bare.rule, shape=Pattern((Condition(("held",), Asks.WITHIN),) * 3)))
+    assert put(bare, fits("heard at the exhaust", "held"))[0] == ("heard at the exhaust", "alert", ["held"])
+
+
 def test_a_pattern_whose_values_all_belong_to_another_speaks_for_that_finding() -> None:
     (finding,) = merge("P-01", (fits("coolant", "Na", "K", conditions=3), fits("sea water", "Na")))
     assert [one.rule.id for one in finding.signals] == ["coolant", "sea water"]
