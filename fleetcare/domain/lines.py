@@ -4,11 +4,15 @@ from dataclasses import dataclass, field
 from datetime import date
 from decimal import Decimal
 from enum import StrEnum
+from typing import TYPE_CHECKING
 
 from fleetcare.domain.engines import Item, Status
 from fleetcare.domain.forecasts import Forecast
 from fleetcare.domain.quantities import Kind, Span
 from fleetcare.domain.schedules import Deferral, Task, TaskVersion, Trigger
+
+if TYPE_CHECKING:
+    from fleetcare.domain.wear import Pull
 
 
 class State(StrEnum):
@@ -66,8 +70,8 @@ class NextPoint:
 class TriggerLine:
     """One trigger of a line on the day asked about.
 
-    `own` is the task's own point, `point` the one in force; `remaining` = point - now, days for a
-    calendar trigger. `share` is remaining over the interval. All None where the trigger is unset,
+    `own` is the task's own point, `point` the one in force: deferred, or moved forward by `pull`; `remaining` =
+    point - now, days for a calendar trigger. `share` is remaining over the interval. All None where the trigger is unset,
     and then `unset_because` says what to enter.
     """
 
@@ -85,6 +89,7 @@ class TriggerLine:
     forecast: Forecast | None = None
     estimated: State | None = None
     likely_now: Decimal | None = None
+    pull: "Pull | None" = None
 
     @property
     def kind(self) -> Kind:
@@ -95,6 +100,11 @@ class TriggerLine:
     def own(self) -> Point | None:
         """The task's own due point."""
         return self.next.point if self.next else None
+
+    @property
+    def grace(self) -> Decimal:
+        """What may pass after the point in force: nothing after one pulled forward, as after a deferred one."""
+        return self.next.grace if self.next and self.pull is None else Decimal(0)
 
 
 @dataclass(frozen=True, slots=True)

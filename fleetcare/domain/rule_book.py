@@ -10,6 +10,7 @@ from decimal import Decimal
 from enum import StrEnum
 
 from fleetcare.domain.sheets import Phase
+from fleetcare.domain.trends import End as End
 
 
 class Severity(StrEnum):
@@ -22,13 +23,6 @@ class Severity(StrEnum):
 def worst(severities: Iterable[Severity]) -> Severity:
     """Give the graver of some severities, at least one."""
     return Severity.ALARM if Severity.ALARM in set(severities) else Severity.ALERT
-
-
-class End(StrEnum):
-    """On which side a limit lies."""
-
-    LOW = "low"
-    HIGH = "high"
 
 
 @dataclass(frozen=True, slots=True)

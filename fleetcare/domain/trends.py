@@ -7,7 +7,12 @@ from dataclasses import dataclass
 from decimal import Decimal
 from enum import StrEnum
 
-from fleetcare.domain.rule_book import End
+
+class End(StrEnum):
+    """On which side a limit lies."""
+
+    LOW = "low"
+    HIGH = "high"
 
 
 @dataclass(frozen=True, slots=True)

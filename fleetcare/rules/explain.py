@@ -138,6 +138,10 @@ def _explain_trigger(line: DueLine, trigger: TriggerLine, facts: ItemFacts) -> l
     if trigger.next is None:
         return [(kind.value, f"{say_trigger(trigger.trigger, unit)}: unset, {trigger.unset_because}")]
     labels = [(kind.value, _say_sum(line, trigger, trigger.next, facts, unit))]
+    if facts.wears:
+        from fleetcare.rules.explain_next_check import explain_next_check  # not worth loading without
+
+        labels += explain_next_check(line, trigger, facts)
     labels.append(("", _say_now(trigger, trigger.next, facts, unit)))
     if kind is not Kind.CALENDAR and trigger.forecast is not None:
         labels.append(("", _say_forecast(trigger, unit)))
@@ -189,7 +193,7 @@ def _say_now(trigger: TriggerLine, next_point: NextPoint, facts: ItemFacts, unit
         when = f", read {read.on.isoformat()}" if read is not None else ""
         now = f"now {say_amount(trigger.now, unit)}{when}"
         left = say_left(from_base(trigger.remaining, unit), unit)
-        ahead, grace = say_amount(next_point.ahead, unit), say_amount(next_point.grace, unit)
+        ahead, grace = say_amount(next_point.ahead, unit), say_amount(trigger.grace, unit)
     else:
         now = f"today {trigger.now.isoformat() if trigger.now else ''}"
         left = say_left(trigger.remaining, "d")

@@ -5,12 +5,11 @@ lies within the range of a single value there: the roots u of (d - b u)^2 = t^2 
 (Fieller's form). They are finite, and have the likely x between them, where gq = t^2 s^2 / (b^2 Sxx) < 1.
 """
 
-from collections.abc import Iterator, Sequence
+from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import replace
 from decimal import Decimal
 
-from fleetcare.domain.rule_book import End
-from fleetcare.domain.trends import Hindrance, Obstacle, Point, Projection, Segment, Trend
+from fleetcare.domain.trends import End, Hindrance, Obstacle, Point, Projection, Segment, Trend
 from fleetcare.rules.student import t_quantile
 from fleetcare.rules.trends import degrees_of_freedom, fit_trend, watched
 
@@ -36,9 +35,35 @@ def project(
     `is_normalised` is False for oil whose values are not brought to hours on the oil and top-up. Raises Refused for a
     coverage that is not between 0 and 1, and for nothing else.
     """
+    return _told(Projection(limit, end, coverage, fit_trend(segments)), segments, now, interval, is_normalised)
+
+
+def project_on(
+    segments: Sequence[Segment], limits: Mapping[End, Decimal], *, now: Decimal, interval: Decimal
+) -> Projection:
+    """Project as `project` does, to the one of one or two limits that is passed, else moved to, else nearer."""
     trend = fit_trend(segments)
-    t = Decimal(t_quantile(float(coverage), trend.df if trend else 1))  # without a trend only the coverage is checked
-    told = Projection(limit, end, coverage, trend)
+    end = _end_ahead(segments, trend, limits)
+    return _told(Projection(limits[end], end, FOUR_IN_FIVE, trend), segments, now, interval, is_normalised=True)
+
+
+def _end_ahead(segments: Sequence[Segment], trend: Trend | None, limits: Mapping[End, Decimal]) -> End:
+    if len(limits) == 1:
+        return next(iter(limits))
+    below, above = _last(segments).y - limits[End.LOW], limits[End.HIGH] - _last(segments).y
+    if trend is None or not trend.slope or min(below, above) < 0:
+        return End.LOW if below <= above else End.HIGH
+    return End.LOW if trend.slope < 0 else End.HIGH
+
+
+def _told(
+    told: Projection, segments: Sequence[Segment], now: Decimal, interval: Decimal, is_normalised: bool
+) -> Projection:
+    """Fill in a projection of which limit and trend are known."""
+    trend, limit, end = told.trend, told.limit, told.end
+    t = Decimal(
+        t_quantile(float(told.coverage), trend.df if trend else 1)
+    )  # without a trend only the coverage is checked
     hindrances = (
         *_in_values(segments, limit, end, is_normalised),
         *_in_watching(segments, now, interval),

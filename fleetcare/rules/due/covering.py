@@ -70,8 +70,7 @@ def _comes_in_time(big: DueLine, line: DueLine) -> bool:
     same_kind = _will_call(big, decider.kind)
     if same_kind is not None:
         assert decider.point is not None
-        assert decider.next is not None
-        return apart(same_kind, decider.point) <= decider.next.grace
+        return apart(same_kind, decider.point) <= decider.grace
     return (
         decider.forecast is not None
         and decider.forecast.likely is not None

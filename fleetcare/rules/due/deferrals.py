@@ -21,6 +21,7 @@ class Standing:
     remaining: Decimal
     state: State
     deferred: bool = False
+    pulled: bool = False
 
 
 def has_ended(deferral: Deferral, today: date, lives: Mapping[Kind, Decimal]) -> bool:
@@ -58,12 +59,24 @@ def move_of(deferral: Deferral, version: TaskVersion, kind: Kind, ended: bool) -
     return Move(min(figures, default=None), ended, until_on)
 
 
-def stand(next_point: NextPoint, now: Point, today: date, move: Move | None) -> Standing:
+def stand(
+    next_point: NextPoint, now: Point, today: date, move: Move | None, pulled_to: Decimal | None = None
+) -> Standing:
     """Work out how a trigger stands against its point in force.
 
     A deferred point has no grace, and past its own point a trigger is never better than near. One that counts
     is due on the day it is deferred to where it is past its own point by then, and not called for before.
+    One pulled forward, with its usual ahead, is due from there on, and overdue by the point it had without.
     """
+    standing = _unpulled(next_point, now, today, move)
+    if pulled_to is None or apart(pulled_to, standing.point) >= 0:
+        return standing
+    remaining = apart(pulled_to, now)
+    state = state_of(max(remaining, _NO_GRACE), next_point.ahead, _NO_GRACE)
+    return Standing(pulled_to, remaining, worst([standing.state, state]), pulled=True)
+
+
+def _unpulled(next_point: NextPoint, now: Point, today: date, move: Move | None) -> Standing:
     own = apart(next_point.point, now)
     own_state = _own_state(next_point, own, today)
     if move is None or move.ended:

@@ -7,11 +7,12 @@ from fleetcare.domain.engines import status_on
 from fleetcare.domain.forecasts import Forecast
 from fleetcare.domain.lines import DueLine, State, TriggerLine
 from fleetcare.domain.quantities import Kind, Span
-from fleetcare.domain.schedules import Call, Combine, Deferral, Task, TaskVersion
+from fleetcare.domain.schedules import Call, Combine, Deferral, Task, TaskVersion, Trigger
 from fleetcare.rules.due.deferrals import Move, has_ended, move_of
 from fleetcare.rules.due.facts import ItemFacts
 from fleetcare.rules.due.outlook import Outlook
 from fleetcare.rules.due.points import next_points
+from fleetcare.rules.due.pulls import pull_of
 from fleetcare.rules.due.replay import Replay, deferral_of, replay
 from fleetcare.rules.due.states import combine, deciding, worst
 from fleetcare.rules.due.trigger_line import calendar_line, trigger_line
@@ -38,17 +39,15 @@ def due_line(facts: ItemFacts, task: Task, outlooks: dict[Kind, Outlook]) -> Due
         triggers: tuple[TriggerLine, ...] = (calendar_line(span, call.on, facts.on, move(Kind.CALENDAR)),)
     else:
         points = next_points(facts, task, version, replayed.marks, facts.on)
-        triggers = tuple(
-            trigger_line(
-                trigger,
-                points[trigger.kind][0] if trigger.kind in points else None,
-                replayed,
-                facts.on,
-                outlooks.get(trigger.kind),
-                move(trigger.kind),
-            )
-            for trigger in version.triggers
-        )
+
+        def held(trigger: Trigger) -> TriggerLine:
+            kind, moved = trigger.kind, move(trigger.kind)
+            point = points[kind][0] if kind in points else None
+            standing = deferral if moved is not None and not ended else None
+            pull = pull_of(facts, version, kind, point, lives.get(kind), replayed.last_done_on, standing)
+            return trigger_line(trigger, point, replayed, facts.on, outlooks.get(kind), moved, pull)
+
+        triggers = tuple(map(held, version.triggers))
     return _assembled(facts, task, version, replayed, triggers, deferral, ended, call)
 
 
@@ -70,14 +69,14 @@ def _assembled(
     call: Call | None,
 ) -> DueLine:
     """Combine the triggers of a line."""
-    how = version.combine
-    decider = deciding(how, triggers)
+    how, counting = _counting(version.combine, triggers)
+    decider = deciding(how, counting)
     limit = _not_later_than(facts, version, replayed)
     if limit is not None and worst([limit.state, decider.state]) is not decider.state:
         decider = limit
     state = decider.state
     bound = limit.point if limit is not None and isinstance(limit.point, date) else None
-    early, likely, late = _dates(how, triggers, bound)
+    early, likely, late = _dates(how, counting, bound)
     unset = next((t.unset_because for t in triggers if t.state is State.UNSET), "")
     return DueLine(
         item=facts.item,
@@ -92,7 +91,7 @@ def _assembled(
         reason=unset if state is State.UNSET else (deferral.why if deferral else ""),
         not_later_than=bound,
         called_because=call.why if call is not None else "",
-        estimated=_estimated(how, triggers, limit),
+        estimated=_estimated(how, counting, limit),
         early_on=early,
         likely_on=likely,
         late_on=late,
@@ -101,6 +100,13 @@ def _assembled(
         deferral_ended=ended,
         past=replayed.past,
     )
+
+
+def _counting(how: Combine, triggers: tuple[TriggerLine, ...]) -> tuple[Combine, tuple[TriggerLine, ...]]:
+    """Give how a line's triggers are combined, and which: one pulled forward does not wait for the last of them."""
+    if how is Combine.FIRST or all(trigger.pull is None for trigger in triggers):
+        return how, triggers
+    return Combine.FIRST, tuple(t for t in triggers if t.pull is not None or t.state is State.UNSET)
 
 
 def _not_later_than(facts: ItemFacts, version: TaskVersion, replayed: Replay) -> TriggerLine | None:

@@ -85,7 +85,7 @@ def due_row(line: DueLine, facts: ItemFacts) -> DueRow:
         late_date=line.late_on,
         deferred_until=_deferred_until(line, facts),
         covered_by=line.covered_by,
-        reason=line.reason,
+        reason=_reason(line),
         machine=line.item.machine,
         engine_status=line.status.value if line.item.is_engine else "",
         meter_unit=unit,
@@ -93,6 +93,16 @@ def due_row(line: DueLine, facts: ItemFacts) -> DueRow:
         own_due_at=_in_unit(counted.own, unit) if counted is not None else None,
         own_due_on=_day(calendar.own) if calendar is not None else None,
     )
+
+
+def _reason(line: DueLine) -> str:
+    """Say why a line is unset, else what pulls it forward and why it was deferred."""
+    pulls = [trigger.pull for trigger in line.triggers if trigger.pull is not None]
+    if not pulls:
+        return line.reason
+    from fleetcare.rules.explain_next_check import say_pull  # not worth loading where nothing is pulled
+
+    return "; ".join([*map(say_pull, pulls), *([line.reason] if line.reason else [])])
 
 
 def unit_of(facts: ItemFacts, kind: Kind) -> str:

@@ -4,6 +4,7 @@ from collections.abc import Callable
 from dataclasses import replace
 from datetime import date
 from decimal import Decimal
+from typing import TYPE_CHECKING
 
 from fleetcare.domain.forecasts import Forecast
 from fleetcare.domain.lines import NextPoint, Point, State, TriggerLine
@@ -16,6 +17,9 @@ from fleetcare.rules.due.points import Marks
 from fleetcare.rules.due.replay import Replay
 from fleetcare.rules.due.triggers import calendar_ahead
 
+if TYPE_CHECKING:
+    from fleetcare.domain.wear import Pull
+
 NEVER_DONE = "not known when it was last done; log it, or enter a last-done"
 NO_DAY = "the day it counts from is not known; log it, or enter the day of the last-done"
 
@@ -27,6 +31,7 @@ def trigger_line(
     on: date,
     outlook: Outlook | None,
     move: Move | None,
+    pull: "Pull | None" = None,
 ) -> TriggerLine:
     """Give one trigger's line on a day; unset where it has no point, or its meter no reading."""
     now: Point | None = on if trigger.kind is Kind.CALENDAR else (outlook.now if outlook else None)
@@ -34,12 +39,12 @@ def trigger_line(
         return TriggerLine(trigger, State.UNSET, unset_because=_why_unset(trigger.kind, next_point, replayed, outlook))
     if move is not None:
         next_point = without_grace(next_point)
-    line = _held(trigger, next_point, now, on, move, outlook)
+    line = _held(trigger, next_point, now, on, move, outlook, pull)
     approximate = trigger.kind in replayed.marks.approximate
     line = replace(line, counts_from=_counts_from(replayed.marks, trigger.kind), approximate=approximate)
     if outlook is None or outlook.likely_now is None:
         return line
-    estimated = stand(next_point, outlook.likely_now, on, move).state
+    estimated = stand(next_point, outlook.likely_now, on, move, pull.at if pull is not None else None).state
     return replace(line, estimated=estimated, likely_now=outlook.likely_now)
 
 
@@ -52,9 +57,15 @@ def calendar_line(interval: Span, counts_from: date, on: date, move: Move | None
 
 
 def _held(
-    trigger: Trigger, next_point: NextPoint, now: Point, on: date, move: Move | None, outlook: Outlook | None
+    trigger: Trigger,
+    next_point: NextPoint,
+    now: Point,
+    on: date,
+    move: Move | None,
+    outlook: Outlook | None,
+    pull: "Pull | None" = None,
 ) -> TriggerLine:
-    standing = stand(next_point, now, on, move)
+    standing = stand(next_point, now, on, move, pull.at if pull is not None else None)
     return TriggerLine(
         trigger=trigger,
         state=standing.state,
@@ -65,6 +76,7 @@ def _held(
         share=standing.remaining / _length(next_point.interval),
         deferred=standing.deferred,
         forecast=_forecast(next_point, standing, move, outlook),
+        pull=pull if standing.pulled else None,
     )
 
 

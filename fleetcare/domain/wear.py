@@ -1,0 +1,43 @@
+"""What wears from sheet to sheet, and the next check it pulls forward."""
+
+from collections.abc import Mapping
+from dataclasses import dataclass
+from datetime import date
+from decimal import Decimal
+
+from fleetcare.domain.quantities import Kind
+from fleetcare.domain.trends import End, Projection, Segment
+
+
+@dataclass(frozen=True, slots=True)
+class Wear:
+    """What one subject, such as the lash point 3E, showed over the life totals of a kind, and its limits, in one unit.
+
+    `work` is the kind of sheet it stands on, and so of the tasks that will measure it again. `segments` hold a value at
+    least, `limits` a limit at least; `measured_on` is the day of the newest value.
+    """
+
+    work: str
+    subject: str
+    kind: Kind
+    unit: str
+    segments: tuple[Segment, ...]
+    limits: Mapping[End, Decimal]
+    measured_on: date
+
+
+@dataclass(frozen=True, slots=True)
+class Pull:
+    """The life total at which a subject is to be checked again, ahead of its task's own point, and the projection why.
+
+    `at` is the early end of the projection, or where it was measured last if that end lies before it.
+    """
+
+    wear: Wear
+    projection: Projection
+    at: Decimal
+
+    @property
+    def is_reached(self) -> bool:
+        """Whether the limit may have been reached when it was measured last."""
+        return self.projection.early is not None and self.projection.early < self.at
