@@ -82,11 +82,17 @@ class Context:
 
     @contextmanager
     def read(self) -> "Iterator[Connection]":
-        """Give a connection for plain SQL that cannot write and sees one state. Raises NoDatabase."""
-        from fleetcare.db.session import reading
+        """Give a connection for plain SQL that cannot write and sees one state. Raises NoDatabase.
+
+        What was worked out on the way and can be worked out again is kept afterwards, if the file can be written then.
+        """
+        from fleetcare.db.session import keep_derived, reading
 
         with reading(self.path) as connection:
             yield connection
+            derived = connection.info.pop("derived", None)
+        if derived is not None:
+            keep_derived(self.path, derived)
 
     @contextmanager
     def write(self) -> "Iterator[Session]":
@@ -94,14 +100,22 @@ class Context:
 
         A missing file is made, a missing folder only if it is the person's own.
         """
+        from fleetcare.db.chain import last_entry
         from fleetcare.db.failures import opening
         from fleetcare.db.session import writing
+        from fleetcare.operations.judged_rows import measured_since
 
         if not self._database:
             with opening(self.path):
                 _own_folder().mkdir(parents=True, exist_ok=True)
         with writing(self.path, self._clock, self._uids) as session:
+            before = last_entry(session.connection()).seq
             yield session
+            session.flush()
+            if measured := measured_since(session.connection(), before):
+                from fleetcare.operations.judged import refresh_measured  # most writes measure nothing
+
+                refresh_measured(session.connection(), measured)
 
     def _local_day(self) -> date:
         return self._clock().astimezone().date()

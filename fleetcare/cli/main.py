@@ -24,6 +24,8 @@ _GROUPS: Mapping[str, tuple[str, ...]] = {
     "readings": ("reading",),
     "log": ("log", "correct"),
     "measure": ("measure",),
+    "findings": ("findings", "answer"),
+    "rules": ("rules",),
     "defer": ("defer",),
     "forecast": ("forecast",),
     "imports": ("import",),

@@ -14,6 +14,7 @@ if TYPE_CHECKING:
     from fleetcare.operations.due import Moved
     from fleetcare.operations.entering import Entered
 
+_SOON_DONE = 100  # engines that are judged before anybody begins to wonder
 # What parsing leaves beside the options themselves.
 _NOT_OPTIONS = frozenset({"db", "as_of", "run", "json"})
 
@@ -75,3 +76,9 @@ def add_options(parser: argparse.ArgumentParser, options: Mapping[str, tuple[str
     """Add plain options that take one text each: name to (what stands for the value, help)."""
     for name, (metavar, text) in options.items():
         parser.add_argument(name, metavar=metavar, help=text, **settings)
+
+
+def say_progress(done: int, of: int) -> None:
+    """Say on stderr how far long work has come, where there is enough of it to wait for."""
+    if of > _SOON_DONE:
+        output.complain(f"Judged {done} of {of} engines.")

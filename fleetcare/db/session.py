@@ -12,6 +12,7 @@ from pathlib import Path
 from typing import TYPE_CHECKING, Any
 
 from sqlalchemy import URL, Connection, Engine, NullPool, create_engine, event, text
+from sqlalchemy.exc import SQLAlchemyError
 
 from fleetcare.db.failures import newer, opening, using
 from fleetcare.errors import NoDatabase
@@ -24,6 +25,9 @@ HEAD = "20261202_findings"
 
 PATIENCE = 30.0
 """Seconds to wait for another program's write to end."""
+
+_IMPATIENCE = 0.1
+"""Seconds to wait to write what could as well be left unwritten."""
 
 
 @contextmanager
@@ -115,14 +119,20 @@ def revision(connection: Connection) -> str | None:
     return found
 
 
-def engine(path: Path, *, query_only: bool = False, foreign_keys: bool = True) -> Engine:
+def keep_derived(path: Path, write: Callable[[Connection], None]) -> None:
+    """Let what is derived be written to the file at `path` if that can be done at once; nothing is lost if it cannot."""
+    with suppress(SQLAlchemyError, sqlite3.Error, OSError), engine(path, patience=_IMPATIENCE).begin() as connection:
+        write(connection)
+
+
+def engine(path: Path, *, query_only: bool = False, foreign_keys: bool = True, patience: float = PATIENCE) -> Engine:
     """Give an engine for the existing file at `path`; unless `query_only` its transactions lock out other writers."""
 
     def connect() -> sqlite3.Connection:
         # mode=rw and not ro, because a reader may be the first to come after a power cut and must roll back.
         # The driver's own transactions are off: they begin too late, and without the lock.
         uri = f"{path.absolute().as_uri()}?mode=rw"
-        connection = sqlite3.connect(uri, uri=True, timeout=PATIENCE, isolation_level=None)
+        connection = sqlite3.connect(uri, uri=True, timeout=patience, isolation_level=None)
         try:
             connection.execute(f"PRAGMA query_only = {query_only:d}")
             connection.execute(f"PRAGMA foreign_keys = {foreign_keys:d}")

@@ -14,6 +14,7 @@ from fleetcare.demo.steps import Step, Verb
 from fleetcare.demo.yard_of import yard_of
 from fleetcare.exchange.csv_out import csv_text, write_new
 from fleetcare.operations.imports import read_import, store_import
+from fleetcare.operations.judged import refresh
 from fleetcare.operations.upkeep import refuse_taken
 
 if TYPE_CHECKING:
@@ -58,6 +59,8 @@ def build(out: Path, anchor: date, engines: int | None = None) -> None:
         path = Path(folder, "demo.db")
         with writing(path, stamps.moment, stamps.uid) as session:
             _enter(session, steps, stamps, Path(folder))
+            session.flush()
+            refresh(session.connection())  # whoever opens it first should not have to wait for its findings
         copy(path, out)
 
 

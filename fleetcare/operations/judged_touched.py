@@ -1,0 +1,92 @@
+"""Which engines entries of the ledger may have changed the judging of.
+
+The ledger has every row that is stored or changed, so nothing passes this by. A kind of row that is not known here touches
+every engine: too much judging is safe, too little is not.
+"""
+
+import json
+from collections.abc import Callable
+from typing import TYPE_CHECKING, Any
+
+from fleetcare.operations.rows import fetch
+
+if TYPE_CHECKING:
+    from sqlalchemy import Connection
+
+_OF_ITEM = frozenset({"engine", "lash_spec", "log_entry", "meter_fit", "sheet", "start_figure"})
+"""Rows that say whose they are in `item_id`."""
+
+_BY_METER = frozenset({"meter", "meter_fit", "reading", "reading_mark"})
+"""Rows of a meter, which counts for whoever it is fitted to."""
+
+NEVER = frozenset(
+    {
+        "deferral",
+        "deferral_figure",
+        "duty_factor",
+        "finding_answer",  # answers are held against what was judged each time they are asked for
+        "fitting",  # whom a meter counts for stands in meter_fit
+        "log_part",
+        "log_task",
+        "origin_figure",
+        "person",
+        "shop_rules",  # told by the digest of the rules
+        "site",
+        "status_spell",
+        "task",
+        "task_call",
+        "task_cover",
+        "task_origin",
+        "task_part",
+        "task_trigger",
+        "task_version",
+    }
+)
+"""Rows judging does not look at."""
+
+_EVERYBODY = 0
+_METERS = "select item_id from meter_fit where meter_id = :meter"
+_SHEET = "select item_id from sheet where id = :sheet"
+_NEW_OIL = (
+    "select 1 from sheet join sheet_value on sheet_value.sheet_id = sheet.id where sheet.entry_id = :entry"
+    " and sheet_value.phase = 'new' limit 1"
+)
+_MARKED = "select meter_id from reading where id = :reading"
+
+
+def touched(connection: "Connection", since: int) -> Callable[[int, int], bool]:
+    """Give a test of whether the engine of a number was touched after an entry of the ledger; none are before `since`."""
+    newest: dict[int, int] = {}
+    rows = fetch(connection, "select seq, kind, payload from ledger where seq > :since order by seq", since=since)
+    for seq, kind, payload in rows:
+        if kind not in NEVER:
+            for item in _items(connection, kind, json.loads(payload)):
+                newest[item] = seq
+    return lambda item, seq: max(newest.get(item, 0), newest.get(_EVERYBODY, 0)) > seq
+
+
+def _items(connection: "Connection", kind: str, row: dict[str, Any]) -> set[int]:
+    """Give the engines a row may touch."""
+    if kind == "item":
+        return {row["id"]}
+    if kind == "sheet_value":
+        is_new_oil = row["phase"] == "new"  # every engine with that grade may be held against it
+        return {_EVERYBODY} if is_new_oil else _of(connection, _SHEET, sheet=row["sheet_id"])
+    if kind == "log_entry" and row["supersedes_id"] is not None:
+        is_new_oil = bool(fetch(connection, _NEW_OIL, entry=row["supersedes_id"]))
+        return {_EVERYBODY} if is_new_oil else {row["item_id"]}
+    items = {row["item_id"]} if kind in _OF_ITEM else set()
+    if kind in _BY_METER:
+        items |= _of(connection, _METERS, meter=_meter(connection, kind, row))
+    return items if kind in _OF_ITEM | _BY_METER else {_EVERYBODY}
+
+
+def _meter(connection: "Connection", kind: str, row: dict[str, Any]) -> int:
+    if kind == "reading_mark":
+        return next(iter(_of(connection, _MARKED, reading=row["reading_id"])))
+    number: int = row["id"] if kind == "meter" else row["meter_id"]
+    return number
+
+
+def _of(connection: "Connection", sql: str, **values: int) -> set[int]:
+    return {row[0] for row in fetch(connection, sql, **values)}
