@@ -4,7 +4,7 @@ from collections.abc import Sequence
 from typing import TYPE_CHECKING
 
 from fleetcare.cli import output
-from fleetcare.domain.quantities import plain
+from fleetcare.domain.quantities import plain, tenth
 
 if TYPE_CHECKING:
     from fleetcare.operations.findings import EngineFinding
@@ -24,7 +24,7 @@ def say_report(report: "SheetReport") -> None:
     if sheet.received_on is not None:
         taken.append(f"received {sheet.received_on}")
     if lash is None and report.engine_hours is not None:
-        taken.append(f"{plain(report.engine_hours)} h of life")
+        taken.append(f"{plain(tenth(report.engine_hours))} h of life")
     told = ", ".join(filter(None, taken))
     output.say(f"{report.title} of {report.tag} on {sheet.on}{f', {told}' if told else ''}.")
     if lash is not None:
@@ -66,7 +66,7 @@ def _say_out(judged: "JudgedSheet") -> str:
 
 def _say_measures(report: "SheetReport") -> None:
     for column, word in report.words:
-        where = f" of {word.point}" if word.point else ""
+        where = f" at {word.point}" if word.point else ""
         output.say(f"{column.title[0].upper()}{column.title[1:]}{where}: {word.qualifier}.")
     if report.rows:
         output.say(measures_table(report))

@@ -110,7 +110,7 @@ KINDS: Mapping[str, SheetKind] = {
                 Column("supply", At.CYLINDER, shared=True),
                 Column("held", At.CYLINDER),
             ),
-            (WordColumn("heard", "heard at", At.CYLINDER, ("intake", "exhaust", "crankcase", "coolant", "next")),),
+            (WordColumn("heard", "air heard", At.CYLINDER, ("intake", "exhaust", "crankcase", "coolant", "next")),),
         ),
         SheetKind(
             SPOT,
