@@ -10,11 +10,12 @@ from fleetcare.domain.sheet_kinds import KINDS, WordColumn
 from fleetcare.domain.sheets import LASH, Sheet, SheetValue
 from fleetcare.errors import Refused
 from fleetcare.operations.find import FoundItem
-from fleetcare.operations.findings import EngineFinding, book_in_force, engine_findings, judge_sheets
+from fleetcare.operations.findings import EngineFinding, engine_findings, judge_sheets, known_findings
 from fleetcare.operations.measured import load_engine_sheets
 from fleetcare.operations.rows import fetch, known_day
 from fleetcare.operations.sheets_judge import JudgedSheet, judge_stored
 from fleetcare.operations.sheets_load import load_sheets
+from fleetcare.operations.shop_book import book_in_force
 from fleetcare.rules.explain_measured import MeasuredRow, measured_rows
 from fleetcare.rules.judging.applies import rules_for
 from fleetcare.rules.sheet_complete import missing_cylinders, why_incomplete
@@ -76,9 +77,10 @@ def report_sheet(connection: "Connection", item: FoundItem, entry: int, on: date
     """
     sheet = _stored(connection, item, entry)
     (found,) = load_engine_sheets(connection, on, [item.id], newest=(sheet.on, entry))
-    book = book_in_force()
+    book = book_in_force(connection, on)
     judged = judge_sheets(found, book)
-    findings = tuple(one for one in engine_findings(judged) if entry in one.sheets)
+    known = known_findings(connection, found, book, on)
+    findings = tuple(one for one in engine_findings(judged, known) if entry in one.sheets)
     hours = next(one.engine_hours for one in found.sheets if one.entry == entry)
     if sheet.kind == LASH:
         lash = judge_stored(connection, item, sheet)
