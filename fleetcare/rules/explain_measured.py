@@ -14,6 +14,11 @@ from fleetcare.rules.judging.values import title
 
 _NO_RULE = "no rule is about it"
 _ASIDE = {Phase.WET: "of the wet test, to compare with", Phase.NEW: "fresh oil, to compare with"}
+_WORKED_WITH = {
+    "supply": "to work the leak out with",
+    "hours_on_oil": "to work rates out with",
+    "top_up": "to work rates out with",
+}
 _JUDGED_AS = {"held": "leak"}
 """What is judged in the place of a value: the leak of a pair of pressures stands with the pressure held."""
 
@@ -77,6 +82,8 @@ def _why(value: Evidence, signal: Signal | None, rule: Rule | None, silent: Sequ
         return say_limits(rule)
     if value.phase in _ASIDE:
         return _ASIDE[value.phase]
+    if value.quantity in _WORKED_WITH:
+        return _WORKED_WITH[value.quantity]
     judged_as = _JUDGED_AS.get(value.quantity, value.quantity)
     whys = (one.why for one in silent if one.rule.quantity == judged_as and one.subject in {value.point, ""})
     return "; ".join(dict.fromkeys(whys)) or _NO_RULE

@@ -230,7 +230,7 @@ def test_new_oil_is_known_by_its_grade_whichever_engine_it_was_sampled_for(yard:
     assert [(value.quantity, str(value)) for value in loaded(yard).background.fresh] == [("tbn", "10.0")]
     report = take(yard, "oil", "tbn,,,4.9,", "grade,,,15W-40,").report
     (row,) = report.rows
-    assert (row.verdict, row.rule, row.measured) == ("alert", "oil-tbn", 49)
+    assert (row.verdict, row.rule, row.measured) == ("alert", "oil-tbn", Decimal(49))
     assert not take(yard, "oil", "tbn,,,4.9,", "grade,,,10W-30,", on="2026-04-30").report.findings
 
 
@@ -254,7 +254,7 @@ def test_a_finding_rests_on_the_sheets_up_to_the_one_shown(yard: Context) -> Non
     take(yard, "spot", "coolant,,,104,", on="2026-04-20")
     late = take(yard, "spot", "coolant,,,112,", on="2026-04-25").report
     assert [(one.id, one.row.severity, one.row.since) for one in late.findings] == [
-        ("2-spot-coolant", "alarm", date(2026, 4, 20))
+        ("1-spot-coolant", "alarm", date(2026, 4, 20))
     ]
     early = take(yard, "spot", "coolant,,,104,", on="2026-04-20").report
     assert [(one.id, one.row.severity) for one in early.findings] == [("1-spot-coolant", "alert")]

@@ -73,6 +73,11 @@ def test_fresh_oil_and_wet_tests_are_there_to_compare_with() -> None:
     assert wet[1].why == "of the wet test, to compare with"
 
 
+def test_what_others_are_worked_out_with_says_so() -> None:
+    assert row(value("hours_on_oil", "240"), a_rule()).why == "to work rates out with"
+    assert row(value("supply", "80", point="1"), a_rule(), kind="leakdown").why == "to work the leak out with"
+
+
 def test_what_is_compared_with_another_value_is_named() -> None:
     low = rows(pressures("400", "280"))[1]
     assert low.verdict == "alarm"
