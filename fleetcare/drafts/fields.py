@@ -45,7 +45,7 @@ def _several(parse: Callable[[object], Any]) -> Callable[[object], Any]:
 
     def read(value: object) -> tuple[Any, ...]:
         if isinstance(value, str):
-            return tuple(parse(part) for part in value.split(";") if part.strip())
+            return tuple(parse(part.strip()) for part in value.split(";") if part.strip())
         assert isinstance(value, Iterable)
         return tuple(parse(part) for part in value)
 

@@ -194,8 +194,8 @@ class FillingScreen(LoadingScreen):
         for one in reversed(error.errors if isinstance(error, Refusals) else (error,)):
             text, place = self.form.in_own_words("; ".join(one.lines())), name or self.form.field_of(one, self.values)
             if place in self.rows:
-                self.rows[place].say_wrong(text)
                 self.rows[place].editor.focus()
+                self.rows[place].say_wrong(text)  # after it, as this scrolls further than the cursor does
             else:
                 self.notice.say(text, is_wrong=True)
 

@@ -119,6 +119,11 @@ async def test_a_site_gets_another_name(opened: Opened) -> None:
         assert isinstance(pilot.app.screen, EnginesScreen)
 
 
+async def test_what_stands_at_no_site_is_said_how_to_give_one(opened: Opened) -> None:
+    async with opened("2", "m", *"PH-2", "ctrl+s", *("up",) * 5, "s") as pilot:
+        assert line_with(pilot, "PH-2 stands at no site yet; x, then e, gives it one.")
+
+
 async def test_a_person_gets_another_name(opened: Opened, db: Path) -> None:
     async with opened("2", "b", *"Qui", "right", "enter", *"Quill Marsh", "ctrl+s") as pilot:
         assert line_with(pilot, "Quill is called Quill Marsh now.")

@@ -35,7 +35,7 @@ async def test_wrong_input_in_any_field_is_said_beside_it_and_nothing_is_stored(
             await press(pilot, "ctrl+s")
             assert pilot.app.screen is form, f"{field} {text!r} was stored"
             amiss += [f"{field} {text!r}: {word}" for word in _wrongs(form, seen(pilot), field, text, said)]
-            await press(pilot, "ctrl+n")
+            form.action_anew()
     assert "\n".join(amiss) == ""
     assert stored(db) == before
 

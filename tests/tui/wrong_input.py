@@ -1,5 +1,6 @@
 """What is typed wrongly into each field of each form, and what is then said beside it."""
 
+from fleetcare.tui.forms.all import FORMS
 from fleetcare.tui.forms.fields_task import RARER, USUAL
 
 MISSING = ("", "this is missing")
@@ -34,8 +35,6 @@ _WORK: Cases = {
     ],
     ("defer", "why"): [MISSING],
     ("defer", "by"): [MISSING],
-    ("lash", "on"): [("May", "'May' is not a date")],
-    ("lash", "at"): [("many", "'many' is not")],
 }
 _METERS: Cases = {
     ("reading", "value"): [MISSING, ("lots", "'lots' is not"), ("5km", "no meter counts distance of PS-1")],
@@ -174,7 +173,15 @@ _NAMES: Cases = {
     ("person-name", "known"): [MISSING, ("Nobody", "there is no person 'Nobody'; choose one of")],
     ("person-name", "name"): [MISSING, ("QUILL", "there is a person 'Quill' already; write another name")],
 }
-WRONG: Cases = {**_WORK, **_METERS, **_STANDING, **_FACTOR, **_ITEMS, **_PLATE, **_TASKS, **_NAMES}
+_MEASURES: Cases = {
+    (form.name, field): cases
+    for form in FORMS.values()
+    if [one.name for one in form.fields] == ["on", "at", "by", "note"]
+    for field, cases in (("on", [("May", "'May' is not a date")]), ("at", [("many", "'many' is not")]))
+}
+"""Forms on measurements alone: what is measured goes on a sheet, not on the form."""
+
+WRONG: Cases = {**_MEASURES, **_WORK, **_METERS, **_STANDING, **_FACTOR, **_ITEMS, **_PLATE, **_TASKS, **_NAMES}
 
 SAID_ELSEWHERE = {
     ("log", "follow_up", "yes"): "defect",

@@ -119,6 +119,8 @@ class EnginesScreen(FindingScreen):
         here: YardRow | None = self.query_one(LongList).current
         if here is not None and here.site:
             self.open_form("site-name", Subject("", preset={"known": here.site}))
+        elif here is not None:
+            self.notice.say(f"{here.tag} stands at no site yet; x, then e, gives it one.")
 
     def action_round(self) -> None:
         """Write down the meters of the site the cursor is in."""
