@@ -8,8 +8,7 @@ from decimal import Decimal
 from typing import TYPE_CHECKING
 
 from fleetcare.domain.engines import Adjuster, Bridged, Layout, ValveTrain
-from fleetcare.domain.measured import LASH, OIL, MeasuredEngine, MeasuredSheet, Pools, SheetWord
-from fleetcare.domain.measures import QUANTITIES, can_convert, exactly
+from fleetcare.domain.measured import LASH, MeasuredEngine, MeasuredSheet, SheetWord
 from fleetcare.domain.quantities import Kind
 from fleetcare.domain.sheet_kinds import GRADE, WORDS
 from fleetcare.domain.sheets import Judgement, LashSpec, Phase, Sheet, SheetValue, spec_on
@@ -18,7 +17,6 @@ from fleetcare.operations.rows import Row, day, fetch, figure, known_day
 from fleetcare.operations.sheets_load import USUAL_VALVES, load_values, specs_of
 from fleetcare.rules.judge_engine import Background
 from fleetcare.rules.judge_lash import judge_sheet
-from fleetcare.rules.judging.spans import decimal
 from fleetcare.rules.lash_points import banks, lash_points
 
 if TYPE_CHECKING:
@@ -76,7 +74,6 @@ def load_engine_sheets(
         engine, train = _engine(row)
         background = Background(
             fresh=fresh.get(_grade(own, engine), ()),
-            pools=Pools(own=_pool(own)),
             lash=_judge_lash(own, train, specs.get(row[0], ()), conditions),
         )
         found.append(EngineSheets(row[0], engine, own, background))
@@ -180,18 +177,6 @@ def _grade(sheets: Sequence[MeasuredSheet], engine: MeasuredEngine) -> str:
 def _key(grade: str) -> str:
     """Give a grade as it compares: SAE 15W-40 and 15w40 are one."""
     return grade.casefold().replace("sae", "").replace("-", "").replace(" ", "")
-
-
-def _pool(sheets: Sequence[MeasuredSheet]) -> dict[str, tuple[Decimal, ...]]:
-    """Give the plain figures of an engine's oil samples but the newest, by quantity, each in the unit of the quantity."""
-    pool: dict[str, list[Decimal]] = {}
-    for sheet in [one for one in sheets if one.kind == OIL][:-1]:
-        for value in sheet.values:
-            into = QUANTITIES[value.quantity].unit
-            is_plain = value.value is not None and not value.qualifier and value.phase is Phase.NONE
-            if is_plain and value.value is not None and can_convert(value.unit, into):
-                pool.setdefault(value.quantity, []).append(decimal(exactly(value.value, value.unit, into)))
-    return {quantity: tuple(figures) for quantity, figures in pool.items()}
 
 
 def _judge_lash(

@@ -49,16 +49,18 @@ AnySheet = JudgedSheet | TakenSheet
 """A sheet of whatever kind that comes with an entry."""
 
 
-def take_sheet(connection: "Connection", item: FoundItem, typed: SheetOptions, on: date) -> AnySheet | None:
+def take_sheet(
+    connection: "Connection", item: FoundItem, typed: SheetOptions, on: date, likely: frozenset[str] = frozenset()
+) -> AnySheet | None:
     """Read a typed sheet of an engine, and judge its lash by the spec in force on its day; None where none was typed.
 
-    Nothing is stored. Raises Refusals with everything that is wrong with it.
+    Where nobody says its kind it may well be one of the `likely` ones. Nothing is stored. Raises Refusals with everything that is wrong with it.
     """
     if typed.sheet is None:
         return None
     if typed.received is not None and typed.received < on:
         raise Refused(f"results cannot have come on {typed.received}, before {on}", "correct --received or --on")
-    kind = _kind_of(connection, item, typed, typed.sheet, on)
+    kind = typed.kind or _kind_of(connection, item, typed, typed.sheet, on, likely)
     if kind == LASH:
         form = open_form(connection, item, on)
         values = read_values(form, typed.sheet, sure=typed.sure)
@@ -79,16 +81,15 @@ def _restated(sheet: Sheet, typed: SheetOptions) -> Sheet:
     )
 
 
-def _kind_of(connection: "Connection", item: FoundItem, typed: SheetOptions, sheet: SheetIn, on: date) -> str:
-    """Give the kind of a sheet: as stated, else the one a task of its entry needs, else that most of its rows belong to."""
-    if typed.kind:
-        return typed.kind
-    needed = needed_sheets(connection, item, cast("tuple[str, ...]", getattr(typed, "task", ())), on)
+def _kind_of(
+    connection: "Connection", item: FoundItem, typed: SheetOptions, sheet: SheetIn, on: date, likely: frozenset[str]
+) -> str:
+    """Give the kind of a sheet: a likely one, or one a task of its entry needs, else that most of its rows belong to."""
+    wanted = likely | needed_sheets(connection, item, cast("tuple[str, ...]", getattr(typed, "task", ())), on)
     quantities = [row.cells.get("quantity", "").casefold() for row in sheet.rows]
     known = {LASH: {LASH, SHIM}} | {kind.name: {one.casefold() for one in kind.quantities} for kind in KINDS.values()}
     rows = {kind: sum(quantity in names for quantity in quantities) for kind, names in known.items()}
-    likely = [kind for kind in rows if kind in needed and rows[kind]] or list(rows)
-    return max(likely, key=lambda kind: rows[kind])
+    return max([kind for kind in rows if kind in wanted and rows[kind]] or rows, key=lambda kind: rows[kind])
 
 
 def fresh_sheet(session: "Session", item: FoundItem, typed: SheetOptions, on: date) -> AnySheet | None:
@@ -155,8 +156,8 @@ def carried_sheet(session: "Session", item: FoundItem, old: LogEntry, typed: She
     Refuses to restate what a sheet was taken with where there is none.
     """
     connection = session.connection()
-    restated = take_sheet(connection, item, typed, on)
     rows = session.scalars(select(SheetTable).where(col(SheetTable.entry_id) == old.id)).all()
+    restated = take_sheet(connection, item, typed, on, frozenset(row.kind for row in rows))
     if restated is None and not rows and (typed.when or typed.gauge or typed.received or typed.lab_no):
         raise Refused(f"entry {old.id} has no sheet", "give one with --sheet FILE")
     if restated is not None or not rows:

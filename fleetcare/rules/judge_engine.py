@@ -16,11 +16,12 @@ from fleetcare.rules.findings import merge
 from fleetcare.rules.judging.applies import rules_for
 from fleetcare.rules.judging.facts import MeasuredFacts
 from fleetcare.rules.judging.judge import JudgedSheet, judge, judge_sheet
+from fleetcare.rules.judging.pools import own_pools
 
 
 @dataclass(frozen=True, slots=True)
 class Background:
-    """What is known beside the sheets of an engine; see `MeasuredFacts`."""
+    """What is known beside the sheets of an engine; see `MeasuredFacts`. Its own pool is told by the sheets themselves."""
 
     fresh: tuple[SheetValue, ...] = ()
     pools: Pools = NO_POOLS
@@ -57,12 +58,14 @@ def judge_engine(
 
 
 def _facts(sheets: Sequence[MeasuredSheet], engine: MeasuredEngine, background: Background) -> MeasuredFacts:
+    """Give what the newest of some sheets of a kind, oldest first, is judged by; its own pool is that of those before."""
+    *_, own = own_pools(sheets)
     return MeasuredFacts(
         engine=engine,
         sheet=sheets[-1],
         earlier=tuple(sheets[:-1]),
         fresh=background.fresh,
-        pools=background.pools,
+        pools=replace(background.pools, own=own),
         lash=background.lash,
         holidays=background.holidays,
     )

@@ -234,11 +234,12 @@ def test_new_oil_is_known_by_its_grade_whichever_engine_it_was_sampled_for(yard:
     assert not take(yard, "oil", "tbn,,,4.9,", "grade,,,10W-30,", on="2026-04-30").report.findings
 
 
-def test_earlier_plain_figures_of_an_engine_say_what_is_usual(yard: Context) -> None:
-    take(yard, "oil", "Fe,,,0.0045,%", "Cu,,,<5,", "Fe,,new,2,", on="2026-04-01")
-    take(yard, "oil", "Fe,,,50,", on="2026-04-10")
-    take(yard, "oil", "Fe,,,55,", on="2026-04-20")
-    assert loaded(yard).background.pools.own == {"Fe": (Decimal(45), Decimal(50))}
+def test_a_sheet_given_anew_is_of_the_kind_it_was_where_it_may_be(yard: Context) -> None:
+    take(yard, "run")
+    correct(yard, 1, sheet=sheet(*SPOT))
+    assert [kept.kind for kept in loaded(yard).sheets] == ["run"]
+    correct(yard, 2, sheet=sheet(*PRESSURES))
+    assert [kept.kind for kept in loaded(yard).sheets] == ["compression"]
 
 
 def test_lash_is_judged_by_the_spec_of_its_day_for_the_rules_too(ctx: Context) -> None:

@@ -4,13 +4,13 @@ from decimal import Decimal
 from itertools import permutations
 
 from fleetcare.domain.engines import Side
-from fleetcare.domain.measured import MeasuredSheet, Pools
-from fleetcare.domain.rule_book import RuleBook
+from fleetcare.domain.measured import MeasuredSheet
+from fleetcare.domain.rule_book import Limits, Method, Pool, RuleBook, Statistical
 from fleetcare.domain.sheets import LashSpec, Verdict
 from fleetcare.rulebook.rules import rule_book
 from fleetcare.rules.judge_engine import Background, JudgedEngine, judge_engine
 from fleetcare.rules.judge_lash import judge_value
-from tests.rules.measured import ENGINE, a_rule, a_sheet, pressures, value
+from tests.rules.measured import ENGINE, a_rule, a_sheet, beyond, pressures, value
 
 IRON = RuleBook((a_rule(),))
 
@@ -66,8 +66,14 @@ def test_the_order_of_sheets_changes_nothing() -> None:
     assert len({tuple(causes(*order)) for order in permutations(sheets)}) == 1
 
 
-def test_what_is_known_beside_the_sheets_is_handed_on() -> None:
+def test_what_new_oil_has_is_handed_on() -> None:
     sheet = a_sheet(value("tbn", "4"))
-    fresh = Background(fresh=(value("tbn", "10", phase="new"),), pools=Pools())
     assert not judged(sheet, book=rule_book()).findings
-    assert judged(sheet, book=rule_book(), background=fresh).findings
+    assert judged(sheet, book=rule_book(), background=Background((value("tbn", "10", phase="new"),))).findings
+
+
+def test_what_is_usual_is_told_by_the_samples_before_the_newest() -> None:
+    iron = a_rule(shape=Statistical(Pool.OWN, Method.MEAN, 3), high=Limits(beyond("3")))
+    before = [a_sheet(value("Fe", text), days=days) for days, text in ((30, "40"), (20, "42"), (10, "44"))]
+    (finding,) = judged(*before, a_sheet(value("Fe", "60")), book=RuleBook((iron,))).findings
+    assert finding.figure.limit == 48  # mean 42, standard deviation 2
