@@ -65,7 +65,8 @@ def _known(connection: "Connection") -> dict[str, tuple[str, ...]]:
         "machines": _names(
             connection, "select tag from item where not is_engine and withdrawn_on is null order by tag"
         ),
-        "parts": _names(connection, "select distinct name from log_part order by name"),
+        "parts": _names(connection, "select name from task_part union select name from log_part order by name"),
+        "work kinds": _names(connection, "select distinct work from task_version where work <> '' order by work"),
         **words_known(),
     }
 

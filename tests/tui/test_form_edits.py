@@ -85,6 +85,15 @@ async def test_a_task_is_changed_from_a_day_on(opened: Opened, db: Path) -> None
     assert rows(db, "select count(*) from task_part") == [(1,)]
 
 
+async def test_parts_and_kinds_of_work_named_before_are_suggested(opened: Opened) -> None:
+    async with opened() as pilot:
+        form = await form_with(pilot, "task", Subject("PS-1"), {})
+        for field, text, suggested in (("part", "oil", "Oil filter"), ("work", "cool", "coolant")):
+            form.rows[field].editor.focus()
+            await press(pilot, *text)
+            assert line_with(pilot, f"→ takes {suggested}")
+
+
 async def test_tasks_without_a_line_are_changed_and_ended_from_their_list(opened: Opened, db: Path) -> None:
     type_in(db, "task", "add", "PS-1", "Governor", "--on-condition")
     async with opened("down", "x", "k") as pilot:
