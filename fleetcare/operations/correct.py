@@ -15,7 +15,7 @@ from fleetcare.operations.find import FoundItem, find_task
 from fleetcare.operations.load import item_facts
 from fleetcare.operations.log import Logged, close_tasks, refuse_future, store_figures
 from fleetcare.operations.names import person_id
-from fleetcare.operations.sheets import carried_sheet, keep_sheet
+from fleetcare.operations.sheets import carried_sheet, check_received, keep_sheet
 from fleetcare.operations.sheets_closing import Sheets, came_along
 
 if TYPE_CHECKING:
@@ -30,6 +30,7 @@ def correct_entry(session: "Session", draft: CorrectionDraft, today: date) -> Lo
     """
     old = _current(session, draft.entry)
     refuse_future(draft.on or old.on, today)
+    check_received(draft, draft.on or old.on, today)
     new = _void(session, old, draft) if draft.void else _restated(session, old, draft)
     session.add(new)
     session.flush()

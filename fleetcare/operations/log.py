@@ -19,7 +19,7 @@ from fleetcare.operations.follow_ups import on_condition, raise_follow_ups
 from fleetcare.operations.load import item_facts
 from fleetcare.operations.names import person_id
 from fleetcare.operations.readings import NewReading, store_reading
-from fleetcare.operations.sheets import fresh_sheet, keep_sheet
+from fleetcare.operations.sheets import check_received, fresh_sheet, keep_sheet
 from fleetcare.operations.sheets_closing import (
     NONE_CAME,
     Sheets,
@@ -60,6 +60,7 @@ def record_work(session: "Session", draft: LogDraft, today: date) -> Logged:
     """Store what was done on a day. Everything a draft says stands in one entry of each kind."""
     item = find_item(session.connection(), draft.tag)
     refuse_future(draft.on, today)
+    check_received(draft, draft.on, today)
     sheet = fresh_sheet(session, item, draft, draft.on)
     tasks = [find_task(session.connection(), item, name) for name in draft.task]
     called = on_condition(session, tasks) if draft.follow_up else []

@@ -8,7 +8,7 @@ from fleetcare.drafts.work import LogDraft
 from fleetcare.operations.find import find_item
 from fleetcare.operations.log import record_work, refuse_future
 from fleetcare.operations.sheet_report import SheetReport, report_sheet
-from fleetcare.operations.sheets import known_entry, take_sheet
+from fleetcare.operations.sheets import check_received, known_entry, take_sheet
 
 if TYPE_CHECKING:
     from sqlalchemy.orm import Session
@@ -29,6 +29,7 @@ def measure(session: "Session", draft: LogDraft, today: date) -> Measured:
     Raises Refused for a day to come, Refusals with everything that is wrong with the sheet.
     """
     refuse_future(draft.on, today)
+    check_received(draft, draft.on, today)
     item = find_item(session.connection(), draft.tag)
     sheet = take_sheet(session.connection(), item, draft, draft.on)
     assert sheet is not None

@@ -54,12 +54,11 @@ def take_sheet(
 ) -> AnySheet | None:
     """Read a typed sheet of an engine, and judge its lash by the spec in force on its day; None where none was typed.
 
-    Where nobody says its kind it may well be one of the `likely` ones. Nothing is stored. Raises Refusals with everything that is wrong with it.
+    Where nobody says its kind it may well be one of the `likely` ones. Nothing is stored. Raises Refusals with everything
+    that is wrong with it.
     """
     if typed.sheet is None:
         return None
-    if typed.received is not None and typed.received < on:
-        raise Refused(f"results cannot have come on {typed.received}, before {on}", "correct --received or --on")
     kind = typed.kind or _kind_of(connection, item, typed, typed.sheet, on, likely)
     if kind == LASH:
         form = open_form(connection, item, on)
@@ -68,6 +67,19 @@ def take_sheet(
     measures = measure_form(connection, item, kind, on)
     values = read_measures(measures, typed.sheet, sure=typed.sure)
     return TakenSheet(measures, _restated(Sheet(0, kind, on, values), typed))
+
+
+def check_received(typed: SheetOptions, on: date, today: date) -> None:
+    """Refuse results that came before the sheet was taken, or have not come yet."""
+    if typed.received is None:
+        return
+    if typed.received < on:
+        raise Refused(f"results cannot have come on {typed.received}, before {on}", "correct --received or --on")
+    if typed.received > today:
+        raise Refused(
+            f"results cannot have come on {typed.received}, today counts as {today}",
+            "correct --received, or give a later --as-of",
+        )
 
 
 def _restated(sheet: Sheet, typed: SheetOptions) -> Sheet:

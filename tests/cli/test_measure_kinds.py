@@ -245,7 +245,7 @@ def test_logging_with_a_sheet_closes_the_task_and_prints_the_judgement(pump: Run
     ]
     assert "Alarm 1-pattern-valves-3" in ran.out
     assert "low" not in pump("correct", "1", "--note", "x").out
-    assert "Alarm 3-pattern-valves-3" in pump("correct", "2", "--on", "2026-04-30").out
+    assert "-pattern-valves-3: leaking valves" in pump("correct", "2", "--on", "2026-04-30").out
 
 
 def test_a_task_shows_its_last_sheet_value_by_value(pump: Runner, write: Writer) -> None:

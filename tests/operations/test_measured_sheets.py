@@ -207,10 +207,14 @@ def test_a_machine_has_nothing_to_measure(ctx: Context) -> None:
     ]
 
 
-def test_results_cannot_come_before_the_sample(yard: Context) -> None:
-    assert refused(yard, lambda ctx: take(ctx, "oil", received="2026-04-30")) == [
-        "results cannot have come on 2026-04-30, before 2026-05-01; correct --received or --on"
-    ]
+def test_results_come_after_the_sample_and_not_tomorrow(yard: Context) -> None:
+    before = "results cannot have come on 2026-04-30, before 2026-05-01; correct --received or --on"
+    tomorrow = "results cannot have come on 2026-05-02, today counts as 2026-05-01; correct --received, or give a later --as-of"
+    assert refused(yard, lambda ctx: take(ctx, "oil", received="2026-04-30")) == [before]
+    assert refused(yard, lambda ctx: take(ctx, "oil", received="2026-05-02")) == [tomorrow]
+    take(yard, "oil")
+    assert refused(yard, lambda ctx: correct(ctx, 1, received="2026-04-30")) == [before]
+    assert refused(yard, lambda ctx: correct(ctx, 1, received="2026-05-02")) == [tomorrow]
 
 
 def test_where_nobody_stated_the_cylinders_any_can_be_measured_and_it_says_so(ctx: Context) -> None:
