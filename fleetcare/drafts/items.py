@@ -7,13 +7,14 @@ from pydantic import BeforeValidator, model_validator
 
 from fleetcare.domain.engines import Bridged, Layout
 from fleetcare.drafts.fields import Count, Day, Dials, Digits, KindField, Meters, Note, Number, Positive, Text
-from fleetcare.drafts.reading_in import Draft
+from fleetcare.drafts.reading_in import Draft, as_option
 from fleetcare.errors import Misread, Refused
 from fleetcare.rules.bounds import check_between
 from fleetcare.rules.geometry import MOST_CYLINDERS, MOST_MM, MOST_RPM
 from fleetcare.rules.lash_points import check_bridges
 from fleetcare.rules.lash_setting import MOST_PITCH_MM, MOST_ROCKER_RATIO
 from fleetcare.rules.nameplate import (
+    UNIT_WORDS,
     LashUnit,
     check_firing_order,
     check_layout,
@@ -157,19 +158,26 @@ class EngineDraft(EngineFields, ItemDraft):
             if self.valves_per_cylinder is None:
                 raise Refused("a bridge needs the number of valves", "give --valves-per-cylinder as well")
             check_bridges(self.valves_per_cylinder, Bridged(self.bridged))
-        units = {given[-1] for given in self._lash_figures()}
-        if len(units) > 1:
-            raise Refused("the lash figures mix mm and inches", "give all of them in one unit")
+        for name, given in self.lash_figures().items():
+            if given[-1] != self.lash_unit:
+                units = f"{UNIT_WORDS[given[-1]]}, another lash figure in {UNIT_WORDS[str(self.lash_unit)]}"
+                raise Refused(f"{as_option(name)} is in {units}", "give all of them in one unit")
         return self
 
     @property
     def lash_unit(self) -> LashUnit | None:
         """The unit the lash figures are in, None where there are none."""
-        return next((given[-1] for given in self._lash_figures()), None)
+        return next((given[-1] for given in self.lash_figures().values()), None)
 
-    def _lash_figures(self) -> list[tuple[Decimal, Decimal, LashUnit] | tuple[Decimal, LashUnit]]:
-        figures = (self.lash_intake, self.lash_exhaust, self.lash_set_intake, self.lash_set_exhaust)
-        return [figure for figure in figures if figure is not None]
+    def lash_figures(self) -> dict[str, tuple[Decimal, Decimal, LashUnit] | tuple[Decimal, LashUnit]]:
+        """Give the lash figures that are stated, by their names."""
+        figures = {
+            "lash_intake": self.lash_intake,
+            "lash_exhaust": self.lash_exhaust,
+            "lash_set_intake": self.lash_set_intake,
+            "lash_set_exhaust": self.lash_set_exhaust,
+        }
+        return {name: figure for name, figure in figures.items() if figure is not None}
 
 
 class RenameDraft(Draft):

@@ -10,12 +10,14 @@ from sqlmodel import col
 from fleetcare.db.tables import Engine, Fitting, Item, LashSpec, StartFigure
 from fleetcare.domain.quantities import plain
 from fleetcare.drafts.items import EngineDraft, ItemDraft
+from fleetcare.drafts.reading_in import as_option
 from fleetcare.errors import Refused
 from fleetcare.operations.find import FoundItem, find_machine
 from fleetcare.operations.fit_meters import add_meters, count_with_machine, restate_start, set_digits, stop_counting
 from fleetcare.operations.names import site_id
 from fleetcare.operations.rows import fetch
 from fleetcare.operations.stored_items import NAMEPLATE
+from fleetcare.rules.nameplate import UNIT_WORDS
 
 if TYPE_CHECKING:
     from sqlalchemy.orm import Session
@@ -164,7 +166,9 @@ def _add_lash_spec(session: "Session", item_id: int, draft: EngineDraft, from_on
     kept = {name: getattr(old, name) for name, value in given.items() if value is None and old is not None}
     kept = {name: value for name, value in kept.items() if value is not None}
     if old is not None and kept and draft.lash_unit not in {None, old.unit}:
-        raise Refused(f"the other lash figures are in {old.unit}", "give these in the same unit, or all of them anew")
+        first = as_option(next(iter(draft.lash_figures())))
+        units = f"{UNIT_WORDS[str(draft.lash_unit)]}, the lash figures that stay are in {UNIT_WORDS[old.unit]}"
+        raise Refused(f"{first} is in {units}", "give it in the same unit, or all of them anew")
     figures = given | kept
     for side in ("intake", "exhaust"):
         _refuse_setting_out_of_range(side, figures[f"{side}_low"], figures[f"{side}_high"], figures[f"set_{side}"])

@@ -10,6 +10,8 @@ from fleetcare.domain.quantities import plain
 from fleetcare.errors import Misread, Refused
 
 LashUnit = Literal["mm", "in"]
+UNIT_WORDS = {"mm": "mm", "in": "inches"}
+"""Units of lash as they are said in a sentence."""
 
 _ORDER = re.compile(r"[0-9]{1,3}(?:-[0-9]{1,3})*", re.ASCII)
 _RANGE = re.compile(r"\s*(\d*\.?\d+)\s*-\s*(\d*\.?\d+)\s*(mm|in)?\s*", re.ASCII)

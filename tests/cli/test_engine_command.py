@@ -121,7 +121,10 @@ def test_an_edit_is_held_against_the_nameplate_there_is(pump: Runner) -> None:
 def test_lash_figures_in_another_unit_take_the_place_of_all_or_none(pump: Runner) -> None:
     pump("engine", "edit", "P-01", "--lash-intake", "0.20-0.30", "--lash-exhaust", "0.40-0.50", "--lash-when", "cold")
     ran = pump("engine", "edit", "P-01", "--lash-intake", "0.008-0.012in")
-    assert ran.err == "the other lash figures are in mm; give these in the same unit, or all of them anew\n"
+    assert (
+        ran.err
+        == "--lash-intake is in inches, the lash figures that stay are in mm; give it in the same unit, or all of them anew\n"
+    )
     both = ("--lash-intake", "0.008-0.012in", "--lash-exhaust", "0.016-0.020in")
     assert pump("engine", "edit", "P-01", *both).status == 0
     assert "lash exhaust  check 0.016 to 0.020 in, cold" in pump("show", "P-01").out

@@ -46,6 +46,17 @@ async def test_a_nameplate_opens_with_what_is_in_force_and_only_what_changed_is_
     assert rows(db, "select intake_low, intake_high from lash_spec") == [("0.20", "0.30")]
 
 
+async def test_a_lash_figure_in_another_unit_is_said_beside_it(opened: Opened) -> None:
+    async with opened() as pilot:
+        lash = {"lash_intake": "0.20-0.30", "lash_set_exhaust": "0.018in"}
+        form = await form_with(pilot, "edit", Subject("PS-1"), lash)
+        await press(pilot, "ctrl+s")
+        assert "“Set exhaust” is in inches, another lash figure in mm; give all of them in one unit" in said(
+            seen(pilot)
+        )
+        assert form.rows["lash_set_exhaust"].editor.has_focus
+
+
 async def test_first_day_and_figure_are_sent_together(opened: Opened, db: Path) -> None:
     async with opened() as pilot:
         await form_with(pilot, "edit", Subject("TR-2"), {"in_service": "2023-05-01"})

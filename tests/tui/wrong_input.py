@@ -113,7 +113,10 @@ _PLATE: Cases = {
     ("edit", "screw_at"): [("top", "'top' is not known")],
     ("edit", "rocker_ratio"): [("big", "'big'"), ("99", "rocker ratio 99 cannot be right")],
     ("edit", "shim_step"): [("5", "shim step 5 mm cannot be right")],
-    ("edit", "lash_intake"): [("0.3", "'0.3' is not a lash range"), ("0.3-0.2", "runs backwards")],
+    ("edit", "lash_intake"): [
+        ("0.3", "'0.3' is not a lash range"),
+        ("0.3-0.2", "runs backwards"),
+    ],
     ("edit", "lash_set_intake"): [("tight", "'tight' is not a lash")],
     ("edit", "lash_exhaust"): [("wide", "'wide' is not a lash range")],
     ("edit", "lash_set_exhaust"): [("0", "0 cannot be right")],
