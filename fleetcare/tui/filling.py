@@ -103,7 +103,9 @@ class FillingScreen(LoadingScreen):
 
     def fail(self, error: FleetError) -> None:
         """Say what is wrong; where there is no file yet, the first thing in it can be added all the same."""
-        if self.has_file or self.subject.tag:
+        if isinstance(error, Refused):
+            self.notice.say(*map(self.form.in_own_words, error.lines()), is_wrong=True, is_about_reading=True)
+        elif self.has_file or self.subject.tag:
             super().fail(error)
         elif self.facts is None:
             from fleetcare.operations.form_facts import FormFacts, words_known
@@ -191,13 +193,16 @@ class FillingScreen(LoadingScreen):
 
     def say_wrong(self, name: str, error: FleetError) -> None:
         """Say an error beside the field of a name, else the one its words tell; one of no field at the foot."""
-        for one in reversed(error.errors if isinstance(error, Refusals) else (error,)):
-            text, place = self.form.in_own_words("; ".join(one.lines())), name or self.form.field_of(one, self.values)
+        places: dict[str, list[str]] = {}
+        for one in error.errors if isinstance(error, Refusals) else (error,):
+            place = name or self.form.field_of(one, self.values)
+            places.setdefault(place, []).append(self.form.in_own_words("; ".join(one.lines())))
+        for place, texts in reversed(places.items()):
             if place in self.rows:
                 self.rows[place].editor.focus()
-                self.rows[place].say_wrong(text)  # after it, as this scrolls further than the cursor does
+                self.rows[place].say_wrong(" ! ".join(texts))  # after it, as this scrolls further than the cursor does
             else:
-                self.notice.say(text, is_wrong=True)
+                self.notice.say(*texts, is_wrong=True)
 
     def finish(self) -> None:
         """Keep nothing any more: it was stored."""

@@ -96,6 +96,20 @@ async def test_a_task_is_changed_from_a_day_on(opened: Opened, db: Path) -> None
     assert rows(db, "select count(*) from task_part") == [(1,)]
 
 
+async def test_what_cannot_be_changed_any_more_says_so_when_its_form_opens(opened: Opened) -> None:
+    async with opened() as pilot:
+        await form_with(pilot, "edit", Subject("PS-9"), {})
+        assert "PS-9 is withdrawn since 2026-01-31; add it anew: 2, then a" in said(seen(pilot))
+
+
+async def test_all_that_is_wrong_with_a_file_of_ones_own_is_said_beside_it(opened: Opened) -> None:
+    Path("mine.toml").write_text('name = "Mine"\nsource = "us"\n[[task]]\nname = "Oil"\nevery = 5\n', encoding="utf-8")
+    async with opened() as pilot:
+        await form_with(pilot, "schedule", Subject("TR-2"), {"name": "mine.toml", "counts_from": "unset"})
+        await press(pilot, "ctrl+s")
+        assert "! mine.toml: note is missing; give it at the top of the file ! mine.toml, task" in said(seen(pilot))
+
+
 async def test_parts_and_kinds_of_work_named_before_are_suggested(opened: Opened) -> None:
     async with opened() as pilot:
         form = await form_with(pilot, "task", Subject("PS-1"), {})
