@@ -71,7 +71,9 @@ class TakenSheet(SheetOptions):
         told = ("gauge", "when", "received", "lab_no", "sure")
         given = [name for name in told if self.sheet is None and getattr(self, name)]
         if given:
-            raise Refused(f"{as_option(given[0])} says how a sheet was taken", "give the sheet with --sheet FILE as well")
+            raise Refused(
+                f"{as_option(given[0])} says how a sheet was taken", "give the sheet with --sheet FILE as well"
+            )
         return self
 
 

@@ -199,6 +199,16 @@ def test_every_kind_says_what_it_found(pump: Runner, write: Writer, kind: str, r
     assert pump("check").status == 0
 
 
+def test_a_sheet_of_words_alone_is_kept_and_says_that_nothing_was_measured(pump: Runner, write: Writer) -> None:
+    out = pump("measure", "leakdown", "P-01", write("heard,1,,intake,"), "--when", "hot").out.splitlines()
+    assert out[:4] == [
+        "Leak-down of P-01 on 2026-05-01, hot, 1300 h of life.",
+        "Air heard at 1: intake.",
+        "Note: cylinders 1, 2, 3, 4, 5, 6 not measured.",
+        "0 values.",
+    ]
+
+
 def test_the_columns_that_are_not_needed_may_be_left_out(pump: Runner, monkeypatch: pytest.MonkeyPatch) -> None:
     monkeypatch.setattr(sys, "stdin", io.TextIOWrapper(io.BytesIO(b"quantity,value\nFe,45\n")))
     assert pump("measure", "oil", "P-01", "-").out.splitlines()[-1] == "Kept as entry 1 of P-01."

@@ -7,8 +7,11 @@ import pytest
 
 from fleetcare.context import Context
 from fleetcare.domain.measured import SheetWord
+from fleetcare.errors import Refused
+from fleetcare.operations.find import find_item
 from fleetcare.operations.measured import load_engine_sheets
 from fleetcare.operations.rows import fetch
+from fleetcare.operations.sheet_report import report_sheet
 from fleetcare.operations.upkeep import check
 from tests.operations.importing import TODAY, correct, engine, log, machine
 from tests.operations.measure_yard import (
@@ -263,6 +266,12 @@ def test_a_finding_rests_on_the_sheets_up_to_the_one_shown(yard: Context) -> Non
     ]
     early = take(yard, "spot", "coolant,,,104,", on="2026-04-20").report
     assert [(one.id, one.row.severity) for one in early.findings] == [("1-spot-coolant", "alert")]
+
+
+def test_an_entry_without_a_sheet_has_none_to_show(yard: Context) -> None:
+    log(yard, "2026-05-01", note="looked at")
+    with yard.read() as connection, pytest.raises(Refused, match="entry 1 of P-01 has no sheet"):
+        report_sheet(connection, find_item(connection, "P-01"), 1, TODAY)
 
 
 def test_findings_of_other_sheets_are_not_told_with_this_one(yard: Context) -> None:
