@@ -4,6 +4,7 @@ from collections.abc import Mapping
 from dataclasses import dataclass, field
 from datetime import date
 from decimal import Decimal
+from typing import Any
 
 from fleetcare.domain.sheets import SheetValue
 
@@ -42,6 +43,8 @@ class MeasuredSheet:
     gauge: str = ""
     engine_hours: Decimal | None = None
     received_on: date | None = None
+    memo: dict[tuple[str, str], Any] = field(default_factory=dict, init=False, repr=False, compare=False)
+    """What rules look up on this very sheet again and again, worked out once; no part of what was measured."""
 
 
 @dataclass(frozen=True, slots=True)

@@ -6,9 +6,8 @@ pattern stands while it matches the newest sheets, and as long as none of the va
 stands then is merged into findings, so every flagged value is evidence of exactly one.
 """
 
-from collections.abc import Iterable, Sequence
+from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import dataclass, field, replace
-from datetime import date
 
 from fleetcare.domain.findings import Evidence, Finding, Signal
 from fleetcare.domain.measured import MeasuredEngine, MeasuredSheet
@@ -18,9 +17,14 @@ from fleetcare.rules.findings import merge
 from fleetcare.rules.judge_engine import Background
 from fleetcare.rules.judging.facts import MeasuredFacts
 from fleetcare.rules.judging.judge import tell
-from fleetcare.rules.judging.patterns import match_patterns
+from fleetcare.rules.judging.patterns import match_patterns, may_match
 from fleetcare.rules.judging.pools import own_pools
+from fleetcare.rules.judging.screen import Screened, screened
+from fleetcare.rules.judging.values import HELD, LEAK, PRESSURE, SUPPLY, WET_GAIN
 from fleetcare.rules.judging.words import says
+
+_SOURCES = {LEAK: (SUPPLY, HELD), WET_GAIN: (PRESSURE,)}
+"""What is worked out of other values, and of which."""
 
 _ASIDE = (Phase.WET, Phase.NEW)
 _Said = tuple[str, str, End | None]  # rule, subject, end
@@ -34,15 +38,33 @@ class Standing:
     findings: tuple[Finding, ...]
 
 
+@dataclass(frozen=True, slots=True)
+class _OfKind:
+    """The rules for a kind of sheet: single ones, patterns, and everything on any sheet that those patterns look at."""
+
+    singles: tuple[Screened, ...]
+    patterns: tuple[tuple[Rule, Pattern], ...]
+    looks_at: frozenset[str]
+
+
 @dataclass(slots=True)
 class _Walk:
-    """What stands on the way: the newest facts and the signals of each kind of sheet, patterns, and who measured what last."""
+    """What stands on the way, by kind of sheet: the newest facts, what is measured on them, and what is told.
+
+    `standing` is what single rules told last, `newest` what they tell of the newest sheet; `matched` are the patterns
+    seen from it. `patterns` stand on the engine, `measured` says on which entry a value was measured last.
+    """
 
     facts: dict[str, MeasuredFacts] = field(default_factory=dict)
-    signals: dict[str, dict[_Said, Signal]] = field(default_factory=dict)
+    quantities: dict[str, frozenset[str]] = field(default_factory=dict)
+    standing: dict[str, dict[_Said, Signal]] = field(default_factory=dict)
     newest: dict[str, tuple[Signal, ...]] = field(default_factory=dict)
+    matched: dict[str, list[Signal]] = field(default_factory=dict)
     patterns: dict[tuple[str, str], Signal] = field(default_factory=dict)
     measured: dict[tuple[str, str], int] = field(default_factory=dict)
+
+
+_NO_RULES = _OfKind((), (), frozenset())
 
 
 def judge_history(
@@ -52,10 +74,7 @@ def judge_history(
     background: Background,
 ) -> tuple[Standing, ...]:
     """Judge the sheets of an engine, oldest first, by the rules for it; its own pool is that of the samples before each."""
-    by_kind: dict[str, list[Rule]] = {}
-    for rule in rules:
-        for kind in rule.kinds:
-            by_kind.setdefault(kind, []).append(rule)
+    by_kind = _by_kind(rules)
     walk, standings = _Walk(), []
     for sheet, pool in zip(sheets, own_pools(sheets), strict=True):
         facts = MeasuredFacts(
@@ -67,11 +86,12 @@ def judge_history(
             lash=background.lash,
             holidays=background.holidays,
         )
-        walk.facts[sheet.kind] = facts
-        _take_in(walk, facts, by_kind.get(sheet.kind, ()))
-        _match(walk, by_kind)
-        standing = [signal for told in walk.signals.values() for signal in told.values()]
-        standings.append(Standing(sheet, merge(engine.tag, [*standing, *walk.patterns.values()])))
+        changed = walk.quantities.get(sheet.kind, frozenset()) | _quantities(sheet)
+        walk.facts[sheet.kind], walk.quantities[sheet.kind] = facts, _quantities(sheet)
+        _take_in(walk, facts, by_kind.get(sheet.kind, _NO_RULES))
+        _match(walk, by_kind, sheet.kind, changed)
+        signals = [*(one for told in walk.standing.values() for one in told.values()), *walk.patterns.values()]
+        standings.append(Standing(sheet, merge(engine.tag, signals) if signals else ()))
     return tuple(standings)
 
 
@@ -79,55 +99,96 @@ def _earlier(before: MeasuredFacts | None) -> tuple[MeasuredSheet, ...]:
     return (*before.earlier, before.sheet) if before else ()
 
 
-def _take_in(walk: _Walk, facts: MeasuredFacts, rules: Iterable[Rule]) -> None:
+def _by_kind(rules: Sequence[Rule]) -> dict[str, _OfKind]:
+    """Sort rules by the kinds of sheet they are for."""
+    found = {}
+    for kind in {kind for rule in rules for kind in rule.kinds}:
+        known = [rule for rule in rules if kind in rule.kinds]
+        patterns = tuple((rule, rule.shape) for rule in known if isinstance(rule.shape, Pattern))
+        singles = tuple(screened(rule) for rule in known if not isinstance(rule.shape, Pattern))
+        looks_at = {quantity for _, pattern in patterns for quantity in _looked_at(pattern)}
+        found[kind] = _OfKind(singles, patterns, frozenset(looks_at))
+    return found
+
+
+def _looked_at(pattern: Pattern) -> set[str]:
+    """Give all quantities and words a pattern looks at."""
+    named = {name for one in pattern.conditions for name in (*one.quantities, one.over)} | {*pattern.absorbs}
+    return named | {source for name in named for source in _SOURCES.get(name, ())}
+
+
+def _quantities(sheet: MeasuredSheet) -> frozenset[str]:
+    """Give all that stands on a sheet, and what is worked out of it."""
+    named = {value.quantity for value in sheet.values} | {word.quantity for word in sheet.words}
+    return frozenset(named | {name for name, sources in _SOURCES.items() if named & {*sources}})
+
+
+def _take_in(walk: _Walk, facts: MeasuredFacts, rules: _OfKind) -> None:
     """Let what a sheet tells replace what stood of the same rules and subjects, dated since when it stands."""
     kind = facts.sheet.kind
-    before, now = walk.signals.get(kind, {}), {}
-    told = tell(rules, facts)
+    before, now = walk.standing.get(kind, {}), {}
+    asked = {rule for rule, _, _ in before}
+    measured = walk.quantities[kind]
+    close = [
+        one.rule
+        for one in rules.singles
+        if one.rule.quantity in measured and (one.rule.id in asked or not one.is_clear(facts))
+    ]
+    told = tell(close, facts)
     for signal in told.signals:
         said = _said(signal)
         since = before[said].since if said in before else signal.on
         now[said] = replace(signal, since=since)
     walk.newest[kind] = tuple(now.values())
-    flagged = {(rule, subject) for rule, subject, _ in now}
-    within = {(rule.id, point) for rule, value in told.within for point in (value.point, "")}
-    kept = {said: signal for said, signal in before.items() if said[:2] not in flagged | within}
-    walk.signals[kind] = kept | now
+    if before or now:
+        flagged = {(rule, subject) for rule, subject, _ in now}
+        within = {(rule.id, point) for rule, value in told.within for point in (value.point, "")}
+        kept = {said: signal for said, signal in before.items() if said[:2] not in flagged | within}
+        walk.standing[kind] = kept | now
     for value in facts.sheet.values:
         if value.phase not in _ASIDE:
             walk.measured[value.quantity, value.point] = facts.sheet.entry
 
 
-def _match(walk: _Walk, rules: dict[str, list[Rule]]) -> None:
+def _match(walk: _Walk, rules: Mapping[str, _OfKind], kind: str, changed: frozenset[str]) -> None:
     """Match the patterns anew; one that no longer matches stands until a value of it is measured again."""
+    for name, facts in walk.facts.items():
+        known = rules.get(name, _NO_RULES)
+        # Where the nameplate does not say which cylinders there are, any sheet may.
+        if name == kind or known.looks_at & changed or not facts.engine.cylinders:
+            walk.matched[name] = _matches(walk, facts, known.patterns)
     matched: dict[tuple[str, str], Signal] = {}
-    for kind, facts in walk.facts.items():
-        patterns = [
-            (rule, rule.shape)
-            for rule in rules.get(kind, ())
-            if isinstance(rule.shape, Pattern) and says(facts.sheet, rule)
-        ]
-        others = tuple(other.sheet for name, other in walk.facts.items() if name != kind)
-        standing = tuple(signal for name, told in walk.newest.items() if name != kind for signal in told)
-        scene = replace(facts, others=others, standing=standing)
-        for signal in match_patterns(patterns, scene, walk.newest[kind]):
-            said = (signal.rule.id, signal.subject)
-            if said not in matched or matched[said].on < signal.on:
-                matched[said] = signal
+    for signal in (one for told in walk.matched.values() for one in told):
+        said = (signal.rule.id, signal.subject)
+        if said not in matched or matched[said].on < signal.on:
+            matched[said] = signal
     for said, signal in walk.patterns.items():
         if said in matched:
-            matched[said] = replace(matched[said], since=_since(signal))
+            matched[said] = replace(matched[said], since=signal.since or signal.on)
         elif not any(_is_measured_again(walk, value) for value in signal.flagged):
             matched[said] = signal
     walk.patterns = matched
 
 
+def _matches(walk: _Walk, facts: MeasuredFacts, patterns: Iterable[tuple[Rule, Pattern]]) -> list[Signal]:
+    """Match patterns as seen from the newest sheet of a kind."""
+    kind = facts.sheet.kind
+    flagged = {(signal.rule.quantity, signal.end) for told in walk.newest.values() for signal in told}
+    measured = frozenset().union(*walk.quantities.values())
+    possible = [
+        (rule, pattern)
+        for rule, pattern in patterns
+        if may_match(pattern, flagged, measured) and says(facts.sheet, rule)
+    ]
+    if not possible:
+        return []
+    others = tuple(other.sheet for name, other in walk.facts.items() if name != kind)
+    standing = tuple(signal for name, told in walk.newest.items() if name != kind for signal in told)
+    return match_patterns(possible, replace(facts, others=others, standing=standing), walk.newest[kind])
+
+
 def _said(signal: Signal) -> _Said:
     return signal.rule.id, signal.subject, signal.end
-
-
-def _since(signal: Signal) -> date:
-    return signal.since or signal.on
 
 
 def _is_measured_again(walk: _Walk, value: Evidence) -> bool:

@@ -5,7 +5,7 @@ every cylinder. Conditions look at the signals of the sheet and at what stands o
 the values of all of them. What was not measured holds for no condition, unless that is optional.
 """
 
-from collections.abc import Iterable, Iterator, Sequence
+from collections.abc import Iterable, Iterator, Sequence, Set
 from dataclasses import dataclass
 from itertools import pairwise
 from typing import assert_never
@@ -22,6 +22,7 @@ from fleetcare.rules.judging.words import words_of
 from fleetcare.rules.lash_points import side_of
 
 _LASH = "lash"
+_FLAGGED = {Asks.FLAGGED_HIGH: End.HIGH, Asks.FLAGGED_LOW: End.LOW}
 
 
 @dataclass(frozen=True, slots=True)
@@ -64,9 +65,8 @@ def match_patterns(
 
 def _matches(rule: Rule, pattern: Pattern, scene: _Scene) -> Iterator[Signal]:
     for subject, cylinders in _places(pattern.at, scene.facts):
-        matches = [_hold(condition, cylinder, scene) for cylinder in cylinders for condition in pattern.conditions]
-        found = [match for match in matches if match is not None]
-        if len(found) < len(matches):
+        found = _hold_all(pattern.conditions, cylinders, scene)
+        if found is None:
             continue
         absorbed = [signal for signal in scene.signals if _absorbs(pattern, signal, cylinders)]
         flagged = {value for match in found for value in match.flagged}
@@ -83,6 +83,30 @@ def _matches(rule: Rule, pattern: Pattern, scene: _Scene) -> Iterator[Signal]:
             steps=tuple(dict.fromkeys(number for match in found for number in match.steps)),
             due_by=due_on(rule, scene.facts),
         )
+
+
+def may_match(pattern: Pattern, flagged: Set[tuple[str, End | None]], measured: Set[str]) -> bool:
+    """Whether a pattern can match anywhere, by what is flagged and what is measured at all: it spares looking closer."""
+    return all(_may_hold(condition, flagged, measured) for condition in pattern.conditions)
+
+
+def _may_hold(condition: Condition, flagged: Set[tuple[str, End | None]], measured: Set[str]) -> bool:
+    end = _FLAGGED.get(condition.asks)
+    if end is not None:
+        return any((quantity, end) in flagged for quantity in condition.quantities)
+    return condition.is_optional or not measured.isdisjoint(condition.quantities)
+
+
+def _hold_all(conditions: Sequence[Condition], cylinders: Sequence[int | None], scene: _Scene) -> list[_Match] | None:
+    """Give what every condition rests on at every one of some cylinders, None where one of them does not hold."""
+    found = []
+    for cylinder in cylinders:
+        for condition in conditions:
+            match = _hold(condition, cylinder, scene)
+            if match is None:
+                return None
+            found.append(match)
+    return found
 
 
 def _places(where: Where, facts: MeasuredFacts) -> Iterator[tuple[str, tuple[int | None, ...]]]:

@@ -26,5 +26,9 @@ def _figures(sheet: MeasuredSheet) -> Iterator[tuple[str, Decimal]]:
     for value in sheet.values:
         into = QUANTITIES[value.quantity].unit
         is_plain = not value.qualifier and value.phase is Phase.NONE
-        if is_plain and value.value is not None and can_convert(value.unit, into):
+        if not is_plain or value.value is None:
+            continue
+        if value.unit == into:
+            yield value.quantity, value.value
+        elif can_convert(value.unit, into):
             yield value.quantity, decimal(exactly(value.value, value.unit, into))

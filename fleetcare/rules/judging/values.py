@@ -5,7 +5,6 @@ supply across a fixed orifice (FAA AC 43.13-1B, 8-14), and `wet_gain`, 100 (wet 
 """
 
 import re
-from collections import defaultdict
 from collections.abc import Iterable, Sequence
 from dataclasses import dataclass, replace
 from fractions import Fraction
@@ -72,6 +71,14 @@ def read(sheet: MeasuredSheet, value: SheetValue) -> Measured:
 
 def values_of(sheet: MeasuredSheet, quantity: str) -> tuple[Measured, ...]:
     """Give the values of a quantity, as the engine stands; a point with contradictory ones is left out."""
+    key = ("values", quantity)
+    if key not in sheet.memo:
+        sheet.memo[key] = _worked_out(sheet, quantity)
+    values: tuple[Measured, ...] = sheet.memo[key]
+    return values
+
+
+def _worked_out(sheet: MeasuredSheet, quantity: str) -> tuple[Measured, ...]:
     entered = _entered(sheet, quantity)
     if quantity == LEAK:
         return _in_order([*entered, *_leaks(sheet, {one.point for one in entered})])
@@ -141,12 +148,20 @@ def _in_order(values: Iterable[Measured]) -> tuple[Measured, ...]:
 
 def _grouped(sheet: MeasuredSheet, quantity: str) -> dict[tuple[str, Phase], list[SheetValue]]:
     """Give the different values of each point and phase; one that was entered twice counts once."""
-    grouped: dict[tuple[str, Phase], list[SheetValue]] = defaultdict(list)
-    for value in sorted(sheet.values, key=str):
-        values = grouped[value.point, value.phase]
-        if value.quantity == quantity and value not in values:
-            values.append(value)
+    key = ("entered", "")
+    if key not in sheet.memo:
+        sheet.memo[key] = _by_quantity(sheet)
+    grouped: dict[tuple[str, Phase], list[SheetValue]] = sheet.memo[key].get(quantity, {})
     return grouped
+
+
+def _by_quantity(sheet: MeasuredSheet) -> dict[str, dict[tuple[str, Phase], list[SheetValue]]]:
+    found: dict[str, dict[tuple[str, Phase], list[SheetValue]]] = {}
+    for value in sorted(sheet.values, key=str):
+        values = found.setdefault(value.quantity, {}).setdefault((value.point, value.phase), [])
+        if value not in values:
+            values.append(value)
+    return found
 
 
 def _entered(sheet: MeasuredSheet, quantity: str) -> list[Measured]:
