@@ -10,7 +10,7 @@ from fleetcare.drafts.sheets import SheetIn, SheetRow
 from fleetcare.errors import FleetError, Refused
 from fleetcare.operations.sheets_judge import JudgedRow, JudgedSheet, judge
 from fleetcare.operations.sheets_load import LashForm
-from fleetcare.operations.sheets_values import DoubtedGap, doubt_of, read_value
+from fleetcare.operations.sheets_values import SaidDoubt, doubt_of, read_value
 from fleetcare.rules.explain_lash import say_stop
 from fleetcare.rules.lash_points import side_of
 
@@ -27,7 +27,7 @@ class TypedSheet:
     judged: JudgedSheet
     values: Mapping[CellKey, SheetValue]
     wrong: Mapping[CellKey, FleetError]
-    doubts: Mapping[CellKey, DoubtedGap]
+    doubts: Mapping[CellKey, SaidDoubt]
 
     def row(self, key: CellKey) -> JudgedRow | None:
         """Give the flat row of a cell, None where no value stands in it."""

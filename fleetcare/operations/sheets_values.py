@@ -18,8 +18,8 @@ from fleetcare.rules.nameplate import LashUnit
 
 
 @dataclass(frozen=True, slots=True)
-class DoubtedGap:
-    """A gap that is more likely a slip: why, in words that name the point, and what was likely meant, as one types it."""
+class SaidDoubt:
+    """A value that is more likely a slip: why, in words that name the point, and what was likely meant, as one types it."""
 
     text: str
     is_possible: bool
@@ -31,7 +31,7 @@ class DoubtedGap:
         return "correct it, or give --sure if it is right" if self.is_possible else "correct it, or its unit"
 
 
-def doubt_of(form: LashForm, value: SheetValue) -> DoubtedGap | None:
+def doubt_of(form: LashForm, value: SheetValue) -> SaidDoubt | None:
     """Give the doubt about a value of a form, None where there is none."""
     if value.quantity != LASH:
         return None
@@ -40,7 +40,7 @@ def doubt_of(form: LashForm, value: SheetValue) -> DoubtedGap | None:
     if found is None:
         return None
     meant = tuple(f"{figure:f}" for figure, unit in found.meant if unit == value.unit)
-    return DoubtedGap(say_doubt(value, found), found.is_possible, meant)
+    return SaidDoubt(say_doubt(value, found), found.is_possible, meant)
 
 
 def read_value(form: LashForm, quantity: str, point: str, phase: Phase, text: str, unit: str | None) -> SheetValue:

@@ -99,6 +99,11 @@ ACTIONS = (
     Action("working", "e", "item", "engine", "open the page of the line's engine or machine"),
     Action("more", "enter", "choose", "open", "write down what is under the cursor"),
     Action("more", "v", "write('lash')", "valve lash", "measure its valve lash without closing a task", in_foot=False),
+    Action("more", "c", "write('compression')", "compression", "measure its compression", in_foot=False),
+    Action("more", "a", "write('leakdown')", "leak-down", "measure where its cylinders lose test air", in_foot=False),
+    Action("more", "u", "write('run')", "test run", "write down a test run", in_foot=False),
+    Action("more", "p", "write('spot')", "spot readings", "pressures and temperatures as read off", in_foot=False),
+    Action("more", "o", "write('oil')", "oil sample", "what the laboratory found in its oil", in_foot=False),
     Action("more", "l", "write('lay-up')", "lay up", "it is laid up for a while", in_foot=False),
     Action(
         "more", "r", "write('return')", "return", "it returns to service; what waits for that is shown", in_foot=False

@@ -87,6 +87,23 @@ SCREENS |= {
 }
 
 
+def _measured(key: str, *texts: str, size: tuple[int, int] = SMALL) -> Picture:
+    """Give the picture of a sheet the rule book judges, of the inline six of the bench, with values in it."""
+    typed = [letter for text in texts for letter in (*text, "enter")]
+    return Picture(size, ("down", "down", "down", "x", key, *"1000", "enter", *"Fenn", "ctrl+s", *typed), yard="bench")
+
+
+_OIL = ("240", "0", "102", "14.1", "2.2", "2.4", "", "0.25", "1.1", "0.9", "ND", "", "12", "9", "", "131", "2", "24")
+SCREENS |= {
+    "compression": _measured("c", "25bar", "25", "17", "25", "24", "25", "25", "25", "17.2"),
+    "leakdown": _measured("a", "80psi", "72psi", "58", "ex", "74"),
+    "run": _measured("u", "test", "", "20", "20"),
+    "spot": _measured("p", "90", "104", "", "1.2"),
+    "oil": _measured("o", *_OIL),
+    "oil-large": _measured("o", *_OIL, size=LARGE),
+}
+
+
 @pytest.mark.parametrize("name", SCREENS)
 async def test_a_screen_looks_as_it_did(
     opened: Opened, request: pytest.FixtureRequest, monkeypatch: pytest.MonkeyPatch, name: str

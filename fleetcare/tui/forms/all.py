@@ -2,7 +2,7 @@
 
 from fleetcare.tui.forms.adding import ENGINE, MACHINE, SCHEDULE, TASK
 from fleetcare.tui.forms.editing import EDIT, PERSON_NAME, SITE_NAME, TASK_EDIT, TASK_END
-from fleetcare.tui.forms.measure import MEASURE_LASH
+from fleetcare.tui.forms.measure import MEASURES
 from fleetcare.tui.forms.meters import READING, RESTORE_READING, SWAP, VOID_READING
 from fleetcare.tui.forms.standing import FACTOR, LAY_UP, MOVE, RETURN, STAND_DOWN, WITHDRAW
 from fleetcare.tui.forms.work import CORRECT, DEFER, LOG, VOID
@@ -14,7 +14,7 @@ FORMS = {
         CORRECT,
         VOID,
         DEFER,
-        MEASURE_LASH,
+        *MEASURES,
         READING,
         SWAP,
         VOID_READING,

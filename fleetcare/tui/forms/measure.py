@@ -4,7 +4,7 @@ from collections.abc import Callable
 from datetime import date
 from typing import TYPE_CHECKING
 
-from fleetcare.domain.sheets import LASH
+from fleetcare.domain.measured import COMPRESSION, LASH, LEAKDOWN, OIL, RUN, SPOT
 from fleetcare.tui.forms.base import BY, NOTE, ON, Form, Said, Subject
 from fleetcare.tui.forms.work import AT, FIGURE_ANSWERS
 
@@ -33,6 +33,15 @@ def _storing(kind: str) -> "Callable[[Session, Subject, MeasureDraft, date, Said
     return store
 
 
-MEASURE_LASH = Form(
-    LASH, "Measure the valve lash of {tag}", (ON, AT, BY, NOTE), _draft, _storing(LASH), answers=FIGURE_ANSWERS
+MEASURES = tuple(
+    Form(kind, f"{title} of {{tag}}", (ON, AT, BY, NOTE), _draft, _storing(kind), answers=FIGURE_ANSWERS)
+    for kind, title in (
+        (LASH, "Valve lash"),
+        (COMPRESSION, "Compression"),
+        (LEAKDOWN, "Leak-down"),
+        (RUN, "Test run"),
+        (SPOT, "Spot readings"),
+        (OIL, "Oil sample"),
+    )
 )
+"""A form for each kind of sheet, by its name."""

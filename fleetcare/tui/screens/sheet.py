@@ -101,7 +101,7 @@ class SheetScreen(StoringScreen):
         is_first, self._opened = self._opened is None, found
         self.query_one(FormTitle).tell(self.about.whose)
         self.query_one(Static).update(Content("\n".join(f" {clean(line)}" for line in found.limits)))
-        self.grid.draw(found.blocks, found.lasts, found.below)
+        self.grid.draw(found.blocks, found.lasts)
         if is_first and not self.texts:
             self.texts.update(found.start)
         self._judge()
@@ -252,7 +252,7 @@ class SheetScreen(StoringScreen):
         key = self.grid.cursor
         if self.read_sheet is not None and key is not None:
             self.query_one(Detail).tell(*self.read_sheet.about(key))
-            self.grid.tell(self.read_sheet.shown(), self.read_sheet.here(key))
+            self.grid.tell(self.read_sheet.shown(), self.read_sheet.here(key), self.read_sheet.below())
 
     def _keep(self) -> None:
         """Keep what is typed."""

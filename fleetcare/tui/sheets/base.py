@@ -8,7 +8,7 @@ from typing import TYPE_CHECKING
 
 from fleetcare.domain.sheets import CellKey
 from fleetcare.tui.forms.base import Answer
-from fleetcare.tui.sheets.layout import Flow, Matrix, Shown
+from fleetcare.tui.sheets.layout import Blocks, Shown
 
 if TYPE_CHECKING:
     from sqlalchemy import Connection
@@ -61,6 +61,10 @@ class ReadSheet(ABC):
         """Give lines of (words, tone) about a cell."""
 
     @abstractmethod
+    def below(self) -> Sequence[str]:
+        """Give what is to be read below the cells: what it says of the engine, and the cautions of the job."""
+
+    @abstractmethod
     def here(self, key: CellKey) -> frozenset[CellKey]:
         """Give the cells that are filled in together with one."""
 
@@ -89,11 +93,10 @@ class OpenSheet(ABC):
     """A sheet of one engine on one day, as it is before anything is typed: `start` are the texts it opens with."""
 
     start: Texts
-    blocks: Sequence[Matrix | Flow]
+    blocks: Blocks
     order: Sequence[CellKey]
     lasts: Mapping[CellKey, str]
     limits: Sequence[str]
-    below: Sequence[str]
 
     @abstractmethod
     def read(self, texts: Texts, sure: frozenset[CellKey]) -> ReadSheet:

@@ -51,7 +51,6 @@ class OpenLash(OpenSheet):
         self.blocks = (Flow((("Engine cold or hot", WHEN, 5), ("Unit", UNIT, 3), ("Gauge", GAUGE, 24))), *_banks(form))
         self.lasts = {key: last for key in self.order if (last := last_shown(form, key))}
         self.limits = (read_typed(form, {}).judged.limits, *form.notes, _LEGEND)
-        self.below = CAUTIONS
 
     def read(self, texts: Texts, sure: frozenset[CellKey]) -> "ReadLash":
         """Read and judge what is typed."""
@@ -113,6 +112,10 @@ class ReadLash(ReadSheet):
             (say_here(self._form, key), "quiet"),
             (f"{what}: {', '.join(say_cell(self._form, self._typed, key))}", tone),
         )
+
+    def below(self) -> Sequence[str]:
+        """Give the cautions of the job."""
+        return CAUTIONS
 
     def here(self, key: CellKey) -> frozenset[CellKey]:
         """Give the cells that are filled in with the crank as it stands for one."""

@@ -12,6 +12,7 @@ from fleetcare.tui.widgets.text import columns_of, fit
 
 _EDGE = 1  # before each cell, for the cursor
 _MARK = 1  # behind each cell, for where its value lies
+_BETWEEN = 2  # columns of a listing
 _NO_CRANK = 20  # columns below which no crank is drawn between banks
 
 
@@ -46,6 +47,17 @@ class Flow:
     """Labelled cells one after the other, each of a width of its own."""
 
     items: tuple[tuple[str, CellKey, int], ...]
+
+
+@dataclass(frozen=True, slots=True)
+class Listing:
+    """Labelled cells below each other, in as many columns as there is room for; `phases` head the cells of each."""
+
+    phases: tuple[str, ...]
+    items: tuple[tuple[str, tuple[CellKey, ...]], ...]
+
+
+Blocks = Sequence["Matrix | Flow | Listing"]
 
 
 @dataclass(frozen=True, slots=True)
@@ -93,9 +105,7 @@ class Laid:
         return key
 
 
-def lay_out(
-    blocks: Sequence[Matrix | Flow], width: int, height: int, digits: int, lasts: Mapping[CellKey, str]
-) -> Laid:
+def lay_out(blocks: Blocks, width: int, height: int, digits: int, lasts: Mapping[CellKey, str]) -> Laid:
     """Lay out blocks below each other; `digits` is how wide a value is, `lasts` what cells showed last.
 
     What was last stands below its row where that leaves all lines in sight.
@@ -106,15 +116,18 @@ def lay_out(
     return laid
 
 
-def _lay(blocks: Sequence[Matrix | Flow], width: int, digits: int, lasts: Mapping[CellKey, str]) -> Laid:
+def _lay(blocks: Blocks, width: int, digits: int, lasts: Mapping[CellKey, str]) -> Laid:
     lines: list[tuple[Text | Place, ...]] = []
-    before: Matrix | Flow | None = None
+    before: Matrix | Flow | Listing | None = None
     for block in blocks:
         if isinstance(block, Matrix) and isinstance(before, Matrix):
             lines.append((_crank(block, width, digits),))
         elif before is not None:
             lines.append(())
-        lines += _matrix(block, width, digits, lasts) if isinstance(block, Matrix) else _flow(block, width)
+        if isinstance(block, Matrix):
+            lines += _matrix(block, width, digits, lasts)
+        else:
+            lines += _flow(block, width) if isinstance(block, Flow) else _listing(block, width, digits, lasts)
         before = block
     line_of = {part.key: number for number, line in enumerate(lines) for part in line if isinstance(part, Place)}
     return Laid(tuple(lines), line_of)
@@ -177,6 +190,34 @@ def _flow(block: Flow, width: int) -> Iterator[tuple[Text | Place, ...]]:
         line += [Text(at, label, "quiet"), Place(at + columns_of(label), key, wide)]
         at += needs + 1
     yield tuple(line)
+
+
+def _listing(
+    block: Listing, width: int, digits: int, lasts: Mapping[CellKey, str]
+) -> Iterator[tuple[Text | Place, ...]]:
+    """Lay out labelled cells column by column; a cell with a last value has it behind."""
+    cell = _EDGE + digits + _MARK
+    label = max(columns_of(name) for name, _ in block.items) + 1
+    last = digits + 1 if lasts else 0
+    column = label + cell * len(block.phases) + last + _BETWEEN
+    count = max(min((width - 1 + _BETWEEN) // column, len(block.items)), 1)
+    rows = -(-len(block.items) // count)
+    starts = [1 + number * column for number in range(count)]
+    heads = [*block.phases, *(["last"] if last else [])]
+    if any(heads):
+        yield tuple(
+            Text(start + label + place * cell + _EDGE, fit(head, cell - _EDGE), "quiet")
+            for start in starts
+            for place, head in enumerate(heads)
+        )
+    for row in range(rows):
+        line: list[Text | Place] = []
+        for start, (name, keys) in zip(starts, block.items[row::rows], strict=False):
+            at = start + label
+            line += [Text(start, name, ""), *(Place(at + n * cell, key, digits) for n, key in enumerate(keys))]
+            if last and keys[0] in lasts:
+                line.append(Text(at + len(keys) * cell + _EDGE, fit(lasts[keys[0]], digits), "quiet"))
+        yield tuple(line)
 
 
 def _label_width(block: Matrix) -> int:

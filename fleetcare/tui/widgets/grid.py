@@ -12,7 +12,7 @@ from textual.strip import Strip
 
 from fleetcare.domain.sheets import CellKey
 from fleetcare.tui.looks import TONE_CLASSES, tone_style
-from fleetcare.tui.sheets.layout import Flow, Laid, Matrix, Place, Shown, lay_out
+from fleetcare.tui.sheets.layout import Blocks, Flow, Laid, Place, Shown, lay_out
 from fleetcare.tui.widgets.text import columns_of, fit, wrap
 
 _CURSOR = "▌"
@@ -49,22 +49,24 @@ class Grid(ScrollView, can_focus=True, inherit_bindings=False):
         self.texts: dict[CellKey, str] = {}
         self.cursor: CellKey | None = None
         self._owner = owner
-        self._blocks: Sequence[Matrix | Flow] = ()
+        self._blocks: Blocks = ()
         self._lasts: Mapping[CellKey, str] = {}
+        self._flowing: set[CellKey] = set()  # cells as wide as they are, whatever the others hold
         self._below: Sequence[str] = ()
         self._shown: Mapping[CellKey, Shown] = {}
         self._here: frozenset[CellKey] = frozenset()
         self._laid = Laid(())
         self._is_fresh = True  # whether the next letter begins the cell anew
 
-    def draw(self, blocks: Sequence[Matrix | Flow], lasts: Mapping[CellKey, str], below: Sequence[str]) -> None:
-        """Show other blocks, what their cells showed last, and lines to read below them."""
-        self._blocks, self._lasts, self._below = blocks, lasts, below
+    def draw(self, blocks: Blocks, lasts: Mapping[CellKey, str]) -> None:
+        """Show other blocks, and what their cells showed last."""
+        self._blocks, self._lasts = blocks, lasts
+        self._flowing = {key for block in blocks if isinstance(block, Flow) for _, key, _ in block.items}
         self._lay()
 
-    def tell(self, shown: Mapping[CellKey, Shown], here: frozenset[CellKey]) -> None:
-        """Show other values and marks; cells filled in `here`, together with that under the cursor, are lined."""
-        self._shown, self._here = shown, here
+    def tell(self, shown: Mapping[CellKey, Shown], here: frozenset[CellKey], below: Sequence[str]) -> None:
+        """Show other values and marks, and lines to read below; cells filled in `here`, with that under the cursor, are lined."""
+        self._shown, self._here, self._below = shown, here, below
         self._lay()
 
     def go(self, key: CellKey) -> None:
@@ -108,7 +110,8 @@ class Grid(ScrollView, can_focus=True, inherit_bindings=False):
     def on_paste(self, event: events.Paste) -> None:
         """Take the first line of what is pasted."""
         if self.cursor is not None:
-            self._put(event.text.strip().partition("\n")[0][:_MOST_TYPED])
+            first = event.text.strip().partition("\n")[0]
+            self._put("".join(letter for letter in first if letter.isprintable())[:_MOST_TYPED])
             event.stop()
 
     def on_click(self, event: events.Click) -> None:
@@ -171,7 +174,7 @@ class Grid(ScrollView, can_focus=True, inherit_bindings=False):
         if not self._blocks or size.width < 1:
             return
         lasts = {key: _short(last) for key, last in self._lasts.items()}
-        words = [_short(shown.words) for key, shown in self._shown.items() if key.phase]
+        words = [_short(shown.words) for key, shown in self._shown.items() if key not in self._flowing]
         digits = min(max([_LEAST_DIGITS, *map(columns_of, [*words, *lasts.values()])]), _MOST_DIGITS)
         self._laid = lay_out(self._blocks, size.width - 1, size.height, digits, lasts)
         below = self._read_below()
