@@ -14,6 +14,7 @@ from fleetcare.operations.entries import first_entries, first_of
 from fleetcare.operations.load_tasks import load_start_figures, load_tasks
 from fleetcare.operations.rows import Row, day, fetch, grouped, known_day
 from fleetcare.operations.settings import stale_days
+from fleetcare.operations.wears import load_wears
 from fleetcare.rules.due.facts import ItemFacts
 from fleetcare.rules.meters import CounterHistory, counter_history, dial_on
 
@@ -43,6 +44,7 @@ def item_facts(
     done = _load_done(connection, found, on, counters)
     stale = stale_days(connection)
     starts = load_start_figures(connection, found)
+    wears = load_wears(connection, on, tasks, counters)
     return [
         ItemFacts(
             item=item,
@@ -52,6 +54,7 @@ def item_facts(
             start_life=starts.get(item.id, {}),
             stale_days=stale,
             on=on,
+            wears=wears.get(item.id, ()),
         )
         for item in items
     ]

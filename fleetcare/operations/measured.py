@@ -12,9 +12,10 @@ from fleetcare.domain.measured import LASH, MeasuredEngine, MeasuredSheet, Sheet
 from fleetcare.domain.quantities import Kind
 from fleetcare.domain.sheet_kinds import GRADE, WORDS
 from fleetcare.domain.sheets import Judgement, LashSpec, Phase, Sheet, SheetValue, spec_on
+from fleetcare.operations.lash_specs import USUAL_VALVES, specs_of
 from fleetcare.operations.load import entry_lives, load_counters, own_readings
 from fleetcare.operations.rows import Row, day, fetch, figure, known_day
-from fleetcare.operations.sheets_load import USUAL_VALVES, load_values, specs_of
+from fleetcare.operations.sheets_load import load_values
 from fleetcare.rules.judge_engine import Background
 from fleetcare.rules.judge_lash import judge_sheet
 from fleetcare.rules.lash_points import banks, lash_points

@@ -39,5 +39,5 @@ def full_page(connection: "Connection", tag: str, on: date, *, is_future: bool =
         ),
         curves=tuple(life_curves(found.facts, found.lines, is_future=is_future)),
         cautions=tuple((line.task.name, line.version.caution) for line in found.lines if line.version.caution),
-        lash=lash_trends(connection, find_item(connection, tag, on=on, even_withdrawn=True), found.facts),
+        lash=lash_trends(connection, find_item(connection, tag, on=on, even_withdrawn=True), found.facts, found.lines),
     )

@@ -6,20 +6,18 @@ from datetime import date
 from decimal import Decimal
 from typing import TYPE_CHECKING
 
-from fleetcare.domain.engines import Adjuster, Bridged, Layout, Side, ValveTrain
+from fleetcare.domain.engines import Adjuster, Bridged, Layout, ValveTrain
 from fleetcare.domain.sheets import LASH, SHIM, LashPoint, LashSpec, Phase, Sheet, SheetValue, spec_on
 from fleetcare.errors import Refused
 from fleetcare.operations.find import FoundItem
-from fleetcare.operations.rows import Row, day, fetch, figure, grouped, known_day
+from fleetcare.operations.lash_specs import USUAL_VALVES, load_specs
+from fleetcare.operations.rows import day, fetch, figure, grouped, known_day
 from fleetcare.rules.explain_lash import LastValue
 from fleetcare.rules.lash_points import Stop, banks, lash_points, lash_walk
 from fleetcare.rules.nameplate import check_firing_order
 
 if TYPE_CHECKING:
     from sqlalchemy import Connection
-
-USUAL_VALVES = 2
-"""Per cylinder, where the nameplate does not say: common practice."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -104,36 +102,6 @@ def load_train(connection: "Connection", item: FoundItem) -> tuple[ValveTrain, t
     )
     assumed = f"{item.tag} is taken to have {USUAL_VALVES} valves per cylinder, as nobody stated how many"
     return train, () if valves else (assumed,)
-
-
-def load_specs(connection: "Connection", item_id: int) -> tuple[LashSpec, ...]:
-    """Load an engine's lash specs in the order they came into force."""
-    return specs_of(connection, [item_id]).get(item_id, ())
-
-
-def specs_of(connection: "Connection", item_ids: Sequence[int]) -> dict[int, tuple[LashSpec, ...]]:
-    """Load the lash specs of some engines, each one's in the order they came into force, by engine."""
-    rows = fetch(
-        connection,
-        "select item_id, from_on, unit, condition, intake_low, intake_high, exhaust_low, exhaust_high, set_intake,"
-        " set_exhaust from lash_spec where item_id in :ids order by from_on, id",
-        ids=list(item_ids),
-    )
-    return {item: tuple(_spec(row) for row in found) for item, found in grouped(rows).items()}
-
-
-def _spec(row: Row) -> LashSpec:
-    _, from_on, unit, condition, *texts = row
-    intake_low, intake_high, exhaust_low, exhaust_high, set_intake, set_exhaust = map(figure, texts)
-    ranges = {Side.INTAKE: (intake_low, intake_high), Side.EXHAUST: (exhaust_low, exhaust_high)}
-    settings = {Side.INTAKE: set_intake, Side.EXHAUST: set_exhaust}
-    return LashSpec(
-        from_on=known_day(from_on),
-        unit=unit,
-        condition=condition,
-        ranges={side: (low, high) for side, (low, high) in ranges.items() if low is not None and high is not None},
-        settings={side: setting for side, setting in settings.items() if setting is not None},
-    )
 
 
 def load_sheets(connection: "Connection", item_id: int, on: date, kind: str = LASH) -> list[Sheet]:

@@ -5,12 +5,13 @@ from decimal import Decimal
 
 from fleetcare.domain.quantities import plain
 from fleetcare.domain.sheets import LashSpec, Place, Unjudged
-from fleetcare.domain.trends import Segment
+from fleetcare.domain.trends import Projection, Segment
 from fleetcare.rules.explain import say_amount
 from fleetcare.rules.explain_lash import say_judgement, say_off
+from fleetcare.rules.explain_projection import say_ahead
 from fleetcare.rules.lash import MM_PER
 from fleetcare.rules.lash_past import Aside, PastValue, PointPast
-from fleetcare.rules.trend_row import Dot, TrendRow
+from fleetcare.rules.trend_row import Ahead, Dot, TrendRow
 from fleetcare.rules.trends import cut_at_adjustments
 
 PLACES: Mapping[str, int] = {"mm": 3, "in": 4}
@@ -22,14 +23,27 @@ _ROUNDED = 4
 _NAMED = 2
 
 
-def trend_row(past: PointPast, spec: LashSpec | None, tag: str, *, counts_hours: bool) -> TrendRow:
-    """Flatten the past of a point of the engine `tag`; `spec` is the one in force now."""
+def trend_row(
+    past: PointPast,
+    spec: LashSpec | None,
+    tag: str,
+    *,
+    counts_hours: bool,
+    projection: Projection | None = None,
+    why_not: str = "",
+) -> TrendRow:
+    """Flatten the past of a point of the engine `tag`; `spec` is the one in force now.
+
+    `projection` is in the unit of the spec; without one `why_not` says why no point has one.
+    """
     unit = spec.unit if spec is not None else "mm"
     segments = cut_at_adjustments(past.checks)
     last = past.last
     limits = spec.ranges.get(past.side) if spec is not None else None
     setting = spec.settings.get(past.side) if spec is not None else None
     said = [f"{_headline(past, counts_hours)}.", *_more(past, spec, segments, tag, counts_hours)]
+    if projection is not None or (why_not and past.checks):
+        said.insert(1, f"{_first_up(say_ahead(projection, unit, 'h') if projection is not None else why_not)}.")
     drawn = tuple(_drawn(segment, MM_PER[unit]) for segment in segments if segment.points)
     return TrendRow(
         name=past.name,
@@ -45,7 +59,28 @@ def trend_row(past: PointPast, spec: LashSpec | None, tag: str, *, counts_hours:
         ),
         setting=(float(setting), f"set {setting:f}") if setting is not None else None,
         left_out=len(past.aside),
+        ahead=_ahead(projection, drawn),
     )
+
+
+def _ahead(projection: Projection | None, drawn: Sequence[Sequence[Dot]]) -> Ahead | None:
+    """Give what is drawn beyond the last value, from the line there."""
+    if projection is None or projection.trend is None or projection.likely is None:
+        return None
+    assert projection.early is not None
+    assert projection.late is not None
+    x = drawn[-1][-1].x
+    return Ahead(
+        start=Dot(x, float(projection.trend.value_at(Decimal(x)))),
+        limit=float(projection.limit),
+        early=float(projection.early),
+        likely=float(projection.likely),
+        late=float(projection.late),
+    )
+
+
+def _first_up(text: str) -> str:
+    return text[:1].upper() + text[1:]
 
 
 def _drawn(segment: Segment, unit_mm: Decimal) -> tuple[Dot, ...]:

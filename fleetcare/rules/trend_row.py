@@ -13,12 +13,23 @@ class Dot:
 
 
 @dataclass(frozen=True, slots=True)
+class Ahead:
+    """Where a trend goes on from its last value: `start`, the limit it comes to, and where early, likely and late."""
+
+    start: Dot
+    limit: float
+    early: float
+    likely: float
+    late: float
+
+
+@dataclass(frozen=True, slots=True)
 class TrendRow:
     """One subject of a trend, such as a lash point, in words and figures.
 
     `verdict` is that of the `last` value, empty where there is none; `said` is all that is worth saying of it.
     `segments` are the values to draw, cut at every adjustment; `limits` those in force, each with its word, and
-    `setting` what it is set to, with its word. `left_out` is how many values are not drawn.
+    `setting` what it is set to, with its word. `left_out` is how many values are not drawn, `ahead` is what is projected.
     """
 
     name: str
@@ -32,6 +43,7 @@ class TrendRow:
     limits: tuple[tuple[float, str], ...] = ()
     setting: tuple[float, str] | None = None
     left_out: int = 0
+    ahead: Ahead | None = None
 
 
 @dataclass(frozen=True, slots=True)

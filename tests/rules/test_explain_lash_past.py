@@ -7,10 +7,12 @@ import pytest
 from fleetcare.domain.engines import Side
 from fleetcare.domain.sheets import LashSpec, Sheet
 from fleetcare.rules.explain_lash_past import trend_row
+from fleetcare.rules.projection import project_on
 from fleetcare.rules.trend_row import Dot, TrendRow
 from tests.builders import day
 from tests.rules.test_judge_lash import a_spec, a_value
 from tests.rules.test_lash_past import a_sheet, found, left, past_of
+from tests.rules.wearing import a_wear
 
 SPEC = a_spec(settings={Side.EXHAUST: Decimal("0.45")})
 
@@ -156,3 +158,37 @@ def test_a_spec_in_inches_is_drawn_in_inches() -> None:
 def test_a_point_the_nameplate_no_longer_has_says_so() -> None:
     stranger = row(a_sheet("2026-01-01", found("0.45", "9E")), point="9E")
     assert "By its nameplate the engine has no such point." in stranger.said
+
+
+def projected(limit: str = "0.40") -> TrendRow:
+    past = past_of(*CLOSING, specs=(SPEC,))
+    wear = a_wear(("0 500 1000 1500", ".45 .44 .432 .42", None), low=limit)
+    projection = project_on(wear.segments, wear.limits, now=Decimal(1500), interval=Decimal(500))
+    return trend_row(past, SPEC, "PS-1", counts_hours=True, projection=projection, why_not="not asked")
+
+
+def test_a_row_says_how_fast_and_when_it_comes_to_its_limit_and_draws_it_from_the_last_value() -> None:
+    row = projected()
+    assert row.said.startswith(
+        "1E, exhaust valve: found 0.43 mm on 2026-01-01 at 3000 h, in 0.40 to 0.50 mm."
+        " Falls 0.02 mm in 1000 h: reaches 0.40 mm by "
+    )
+    assert row.ahead is not None
+    assert (row.ahead.start.x, row.ahead.limit) == (3000, 0.40)
+    assert row.ahead.early < row.ahead.likely < row.ahead.late
+
+
+def test_a_row_that_is_not_projected_says_why_and_draws_nothing_ahead() -> None:
+    row = projected("0.20")
+    assert "Falls 0.02 mm in 1000 h; 0.20 mm not before about 3000 h." in row.said
+    assert row.ahead is None
+
+
+def test_a_row_says_why_no_point_is_projected_where_there_is_a_line_to_speak_of() -> None:
+    past = past_of(*CLOSING, specs=(SPEC,))
+    assert (
+        "Not projected: nobody asks."
+        in trend_row(past, SPEC, "PS-1", counts_hours=True, why_not="not projected: nobody asks").said
+    )
+    never = trend_row(past_of(), SPEC, "PS-1", counts_hours=True, why_not="not projected: nobody asks")
+    assert "projected" not in never.said

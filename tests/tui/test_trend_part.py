@@ -59,6 +59,30 @@ async def test_the_key_again_goes_on_to_the_next_point_and_from_the_last_to_the_
         assert line_with(pilot, "1I over hours of life")
 
 
+def closes_evenly(db: Path) -> None:
+    """Exhaust 2 gauged four times cold, and a task that gauges it every 800 h."""
+    last = ("--last-done", "2025-12-01", "--last-done", "40h")
+    type_in(db, "task", "add", "PS-1", "Exhaust gap", "--every", "800h", "--needs-sheet", "lash", *last)
+    for on, gap in (("2024-08-01", 49), ("2025-01-01", 475), ("2025-05-20", 46), ("2026-04-29", 42)):
+        sheet(db, on, f"lash,2E,found,0.{gap},")
+
+
+async def test_the_way_to_the_limit_is_drawn_beyond_the_last_value_and_said(opened: Opened, closing: Path) -> None:
+    closes_evenly(closing)
+    async with opened(*TO_PS_1, "g", *["down"] * 3) as pilot:
+        assert line_with(pilot, "▌2E")
+        assert line_with(pilot, "2E over hours of life: ○ found, ● set to, likely dotted")
+        assert line_with(pilot, "Falls 0.07 mm in 1000 h: reaches 0.40 mm by 1652 to 1720 h")
+        assert line_with(pilot, "412 h", "1719 h")  # beyond today's figure
+        assert sum("┊" in line for line in seen(pilot)) > 3  # where it is likely reached
+
+
+async def test_the_due_list_says_what_pulls_a_line_forward(opened: Opened, closing: Path) -> None:
+    closes_evenly(closing)
+    async with opened("slash", *"gap", "enter") as pilot:
+        assert line_with(pilot, "pulled forward: 2E reaches 0.40 mm by 1652")
+
+
 async def test_what_cannot_be_drawn_says_why_and_what_to_do(opened: Opened, closing: Path) -> None:
     async with opened(*TO_PS_1, "g", "down", "down") as pilot:
         assert line_with(pilot, "2I, intake valve: never measured. Measure it: x and v on this page, or")

@@ -12,7 +12,7 @@ from fleetcare.tui.widgets.long_list import LongList
 from fleetcare.tui.widgets.plot import Line, Mark, Plot, PlotView, say_day
 
 if TYPE_CHECKING:
-    from fleetcare.operations.lash_past import TrendRow, Trends
+    from fleetcare.operations.lash_past import Ahead, TrendRow, Trends
 
 _TONES = {"in": "clear", "alert": "due", "alarm": "overdue"}
 _MARKS = {"in": "-", "alert": "!", "alarm": "!!"}
@@ -81,17 +81,30 @@ def plot_of(row: "TrendRow", trends: "Trends") -> Plot:
         Mark(dot.x, dot.y, _LEFT, "strong", found.get(dot.x)) if dot.is_left else Mark(dot.x, dot.y, _FOUND, "strong")
         for dot in dots
     ]
+    if row.ahead is not None:
+        lines += _lines_ahead(row.ahead, dots[0].x)
     over = "hours of life" if trends.counts_hours else "days"
     aside = f", {row.left_out} not drawn" if row.left_out else ""
     return Plot(
         lines=lines,
         levels=(),
-        legend=f"{row.name} over {over}: {_FOUND} found, {_LEFT} set to{aside}",
+        legend=f"{row.name} over {over}: {_FOUND} found, {_LEFT} set to{', likely dotted' if row.ahead else ''}{aside}",
         unit=trends.unit,
         say=(lambda along: f"{along:.0f} h") if trends.counts_hours else say_day,
+        here=row.ahead.likely if row.ahead is not None else None,
         until=trends.until,
         marks=marks,
         limits=row.limits,
         settings=[row.setting] if row.setting is not None else [],
         places=trends.places,
     )
+
+
+def _lines_ahead(ahead: "Ahead", first: float) -> Iterator[Line]:
+    """Draw the likely way to the limit dotted and both ends of its range thin, no further ahead than was watched."""
+    start, furthest = ahead.start, 2 * ahead.start.x - first
+    for at, every, tone in ((ahead.likely, 3, ""), (ahead.early, 6, "quiet"), (ahead.late, 6, "quiet")):
+        if at > start.x:
+            along = min(at, furthest)
+            value = start.y + (ahead.limit - start.y) * (along - start.x) / (at - start.x)
+            yield Line([(start.x, start.y), (along, value)], every, tone)
