@@ -10,7 +10,7 @@ from textual.widget import Widget
 from fleetcare.errors import FleetError
 from fleetcare.operations.due_words import Group, notes, say_dial, say_due, say_likely, say_remaining
 from fleetcare.operations.review import Facet, Order, Review, ReviewLine, Wanted, arrange, review
-from fleetcare.tui.finding import FindingScreen
+from fleetcare.tui.searching import SearchingScreen
 from fleetcare.tui.frame import TopBar, say_day
 from fleetcare.tui.looks import MARKS, tone_of
 from fleetcare.tui.widgets.columns import Cell, Column, Section
@@ -87,7 +87,7 @@ def in_words(line: ReviewLine) -> tuple[tuple[str, str], ...]:
     return tuple(line for line in lines if line[0])
 
 
-class DueScreen(FindingScreen):
+class DueScreen(SearchingScreen):
     """The due list."""
 
     place = "due"

@@ -6,7 +6,7 @@ from typing import TYPE_CHECKING
 from textual.widget import Widget
 
 from fleetcare.errors import FleetError
-from fleetcare.tui.finding import FindingScreen
+from fleetcare.tui.searching import SearchingScreen
 from fleetcare.tui.frame import TopBar, say_day
 from fleetcare.tui.looks import MARKS, tone_of
 from fleetcare.tui.screens.due import NO_MATCH
@@ -52,7 +52,7 @@ COLUMNS: tuple[Column["YardRow"], ...] = (
 )
 
 
-class EnginesScreen(FindingScreen):
+class EnginesScreen(SearchingScreen):
     """The list of engines and machines."""
 
     place = "engines"

@@ -36,7 +36,7 @@ class FindBar(Horizontal):
         super().__init__(Static("find"), FindLine(text))
 
 
-class FindingScreen(WritingScreen):
+class SearchingScreen(WritingScreen):
     """A screen with a line to type words in."""
 
     def __init__(self) -> None:
