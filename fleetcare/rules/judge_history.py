@@ -8,6 +8,7 @@ stands then is merged into findings, so every flagged value is evidence of exact
 
 from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import dataclass, field, replace
+from datetime import date
 
 from fleetcare.domain.findings import Evidence, Finding, Signal
 from fleetcare.domain.measured import MeasuredEngine, MeasuredSheet
@@ -162,12 +163,11 @@ def _match(walk: _Walk, rules: Mapping[str, _OfKind], kind: str, changed: frozen
         said = (signal.rule.id, signal.subject)
         if said not in matched or matched[said].on < signal.on:
             matched[said] = signal
+    now = {said: replace(signal, since=_began(walk.patterns.get(said, signal))) for said, signal in matched.items()}
     for said, signal in walk.patterns.items():
-        if said in matched:
-            matched[said] = replace(matched[said], since=signal.since or signal.on)
-        elif not any(_is_measured_again(walk, value) for value in signal.flagged):
-            matched[said] = signal
-    walk.patterns = matched
+        if said not in now and not any(_is_measured_again(walk, value) for value in signal.flagged):
+            now[said] = signal
+    walk.patterns = now
 
 
 def _matches(walk: _Walk, facts: MeasuredFacts, patterns: Iterable[tuple[Rule, Pattern]]) -> list[Signal]:
@@ -189,6 +189,10 @@ def _matches(walk: _Walk, facts: MeasuredFacts, patterns: Iterable[tuple[Rule, P
 
 def _said(signal: Signal) -> _Said:
     return signal.rule.id, signal.subject, signal.end
+
+
+def _began(signal: Signal) -> date:
+    return signal.since or signal.on
 
 
 def _is_measured_again(walk: _Walk, value: Evidence) -> bool:
