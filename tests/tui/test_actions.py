@@ -14,6 +14,8 @@ from fleetcare.tui.screens.item import ItemScreen
 from fleetcare.tui.screens.keys import KeysScreen
 from fleetcare.tui.screens.more import MoreScreen
 from fleetcare.tui.screens.narrow import NarrowScreen
+from fleetcare.tui.screens.sheet import SheetScreen
+from fleetcare.tui.screens.sums import SumScreen, SumsScreen
 from fleetcare.tui.screens.tasks import TasksScreen
 from fleetcare.tui.screens.working import WorkingScreen
 from tests.tui.conftest import Opened, line_with, press, seen, settle_down
@@ -27,6 +29,9 @@ SCREENS = (
     KeysScreen,
     MoreScreen,
     NarrowScreen,
+    SheetScreen,
+    SumScreen,
+    SumsScreen,
     TasksScreen,
     WorkingScreen,
 )

@@ -10,7 +10,7 @@ from fleetcare.tui.forms.all import FORMS
 from fleetcare.tui.forms.words import on_screen, options_in
 
 ROOT = Path(__file__).parents[2] / "fleetcare"
-ELSEWHERE = ("imports", "sheets", "entry", "measure", "settings", "upkeep", "csv_")
+ELSEWHERE = ("answer", "findings", "rule_", "imports", "sheets", "entry", "measure", "settings", "upkeep", "csv_")
 """Modules, by how they begin, that no form leads to."""
 
 ANSWERED = {"sure", "rolled-over", "replaced"}
