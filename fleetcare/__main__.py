@@ -1,5 +1,6 @@
 """Where the program starts, and where whatever went wrong becomes one line and an exit status."""
 
+import gc
 import sys
 from collections.abc import Sequence
 from typing import TYPE_CHECKING
@@ -12,6 +13,8 @@ INTERRUPTED = 130
 
 def main(arguments: Sequence[str] | None = None) -> int:
     """Run a command line (the process's own by default) and give its exit status; never a traceback."""
+    # Next to nothing made while starting is garbage; looking for it as often as usual takes a tenth of a due list.
+    gc.set_threshold(50_000, 20, 20)
     try:
         return _run(sys.argv[1:] if arguments is None else arguments)
     except KeyboardInterrupt:  # while loading, too
@@ -40,10 +43,6 @@ def _run(arguments: Sequence[str]) -> int:
 
 def open_screens(context: "Context") -> int:
     """Show the screens until they are left. Loaded only here: no command pays for what it does not show."""
-    import gc
-
-    # Next to nothing made while starting is garbage; looking for it as often as usual takes a twentieth of the start.
-    gc.set_threshold(50_000, 20, 20)
     from fleetcare.tui.app import run_screens
 
     return run_screens(context)

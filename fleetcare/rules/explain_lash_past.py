@@ -93,7 +93,7 @@ def _drawn(segment: Segment, unit_mm: Decimal) -> tuple[Dot, ...]:
 
 
 def _say_value(value: PastValue) -> str:
-    return f"{value.judged.value} {value.judged.value.unit}"
+    return f"{value.entered} {value.entered.unit}"
 
 
 def _stands(value: PastValue) -> str:
@@ -150,7 +150,7 @@ def _more(
 
 def _say_taken(value: PastValue, counts_hours: bool) -> str:
     at = f" at {say_amount(value.at, 'h')}" if counts_hours and value.at is not None else ""
-    return f"{value.judged.value.phase} {_say_value(value)} on {value.on.isoformat()}{at}"
+    return f"{value.entered.phase} {_say_value(value)} on {value.on.isoformat()}{at}"
 
 
 def _say_aside(values: Sequence[PastValue]) -> str:

@@ -54,13 +54,21 @@ def judge_value(value: SheetValue, side: Side, spec: LashSpec | None, condition:
     """Judge one value of a point on a side; `condition` is cold, hot or empty where nobody said."""
     if value.quantity != LASH:
         return Judgement(value, Verdict.NOT_JUDGED, unjudged=Unjudged.NO_LIMIT_OF_ITS_OWN)
-    if spec is None:
-        return Judgement(value, Verdict.NOT_JUDGED, unjudged=Unjudged.NO_SPEC)
-    if side not in spec.ranges:
-        return Judgement(value, Verdict.NOT_JUDGED, unjudged=Unjudged.NO_RANGE)
-    if ANY not in {spec.condition, condition or ANY} and spec.condition != condition:
-        return Judgement(value, Verdict.NOT_JUDGED, unjudged=Unjudged.OTHER_CONDITION)
+    why = why_unjudged(side, spec, condition)
+    if spec is None or why is not None:
+        return Judgement(value, Verdict.NOT_JUDGED, unjudged=why)
     return _hold(value, spec.ranges[side], spec.unit)
+
+
+def why_unjudged(side: Side, spec: LashSpec | None, condition: str) -> Unjudged | None:
+    """Say why no gap of a side can be judged, None where each can."""
+    if spec is None:
+        return Unjudged.NO_SPEC
+    if side not in spec.ranges:
+        return Unjudged.NO_RANGE
+    if ANY not in {spec.condition, condition or ANY} and spec.condition != condition:
+        return Unjudged.OTHER_CONDITION
+    return None
 
 
 def stand_of(judged: Sequence[Judgement], points: Sequence[LashPoint]) -> LashStand:

@@ -8,10 +8,13 @@ import re
 from collections.abc import Mapping
 from dataclasses import dataclass
 from decimal import Decimal
+from typing import TYPE_CHECKING
 
 from fleetcare.domain.sheets import Place
 from fleetcare.errors import Misread, Refused
-from fleetcare.rules.nameplate import LashUnit
+
+if TYPE_CHECKING:
+    from fleetcare.rules.nameplate import LashUnit
 
 # NIST SP 811 (2008), Appendix B: 1 in = 25.4 mm exactly.
 MM_PER: Mapping[str, Decimal] = {"mm": Decimal(1), "in": Decimal("25.4")}
@@ -48,7 +51,7 @@ class Standing:
     off_most: Decimal
 
 
-def read_gap(text: str, unit: LashUnit) -> Gap:
+def read_gap(text: str, unit: "LashUnit") -> Gap:
     """Read what was gauged, in `unit`: "0.25", "0,25", bare blade digits, or a go / no-go range "0.25..0.30".
 
     Bare digits are blade markings: in mm one or two are hundredths and three thousandths (5 is 0.05, 30 is 0.30, 152
@@ -83,7 +86,7 @@ def judge(gap: Gap, least: Decimal, most: Decimal) -> Standing:
     return Standing(place, off_least, off_most)
 
 
-def _blade(text: str, unit: LashUnit, typed: str) -> Decimal:
+def _blade(text: str, unit: "LashUnit", typed: str) -> Decimal:
     text = text.strip()
     if _POINTED.fullmatch(text):
         return Decimal(text.replace(",", "."))

@@ -17,9 +17,9 @@ from enum import StrEnum
 from itertools import groupby
 
 from fleetcare.domain.engines import Side
-from fleetcare.domain.sheets import LASH, Judgement, LashPoint, LashSpec, Phase, Sheet, spec_on
+from fleetcare.domain.sheets import LASH, Judgement, LashPoint, LashSpec, Phase, Sheet, SheetValue, spec_on
 from fleetcare.domain.trends import Check
-from fleetcare.rules.judge_lash import ANY, judge_value
+from fleetcare.rules.judge_lash import ANY, judge_value, why_unjudged
 from fleetcare.rules.lash import MM_PER
 from fleetcare.rules.lash_points import side_of
 from fleetcare.rules.meters import CounterHistory
@@ -45,19 +45,24 @@ class PastValue:
     at: Decimal | None
     taken: str
     spec: LashSpec | None
-    judged: Judgement
+    entered: SheetValue
     aside: Aside | None
+
+    @property
+    def judged(self) -> Judgement:
+        """What the spec says of it, worked out anew each time: a trend of many values asks for none."""
+        return judge_value(self.entered, side_of(self.entered.point), self.spec, self.taken)
 
     @property
     def is_left(self) -> bool:
         """Whether the valve was set and left at it."""
-        return self.judged.value.phase is Phase.LEFT
+        return self.entered.phase is Phase.LEFT
 
     @property
     def ends(self) -> tuple[Decimal, Decimal]:
         """The least and the most it can be, mm."""
-        goes, stops = self.judged.value.ends
-        return goes * MM_PER[self.judged.value.unit], stops * MM_PER[self.judged.value.unit]
+        goes, stops = self.entered.ends
+        return goes * MM_PER[self.entered.unit], stops * MM_PER[self.entered.unit]
 
     @property
     def gap(self) -> Decimal:
@@ -112,7 +117,7 @@ def lash_past(
     values: dict[str, list[PastValue]] = {point.name: [] for point in points}
     for sheet in sheets:
         for value in _read(sheet, spec_on(specs, sheet.on), newest, at.get(sheet.entry)):
-            past = values.setdefault(value.judged.value.point, [])
+            past = values.setdefault(value.entered.point, [])
             if not (value.is_left and past and _is_same(past[-1], value)):
                 past.append(value)
     valves = {point.name: point.valves for point in points}
@@ -125,28 +130,26 @@ def lash_past(
 def _checks(values: Sequence[PastValue]) -> Iterator[Check]:
     for _, same in groupby(values, key=lambda value: value.entry):
         sheet = tuple(same)
-        gaps = {value.judged.value.phase: value.gap for value in sheet if value.aside is None}
+        gaps = {value.entered.phase: value.gap for value in sheet if value.aside is None}
         at, is_set = sheet[0].at, sheet[-1].is_left
         if at is not None and (gaps or is_set):
             yield Check(at, gaps.get(Phase.FOUND), gaps.get(Phase.LEFT), is_set)
 
 
 def _read(sheet: Sheet, spec: LashSpec | None, newest: LashSpec | None, at: Decimal | None) -> list[PastValue]:
-    """Judge the gaps of a sheet, those found first."""
+    """Give the gaps of a sheet, those found first."""
     values = []
+    taken = sheet.condition or (spec.condition if spec is not None else ANY)
+    asked = newest.condition if newest is not None else ANY
     for value in sorted(sheet.values, key=lambda one: one.phase is Phase.LEFT):
         if value.quantity == LASH:
-            judged = judge_value(value, side_of(value.point), spec, sheet.condition)
-            taken = sheet.condition or (spec.condition if spec is not None else ANY)
-            asked = newest.condition if newest is not None else ANY
-            aside = _why_aside(judged, {taken, asked}, at)
-            values.append(PastValue(sheet.entry, sheet.on, at, sheet.condition, spec, judged, aside))
+            why = why_unjudged(side_of(value.point), spec, sheet.condition)
+            aside = Aside.NOT_JUDGED if why is not None else _why_aside({taken, asked}, at)
+            values.append(PastValue(sheet.entry, sheet.on, at, sheet.condition, spec, value, aside))
     return values
 
 
-def _why_aside(judged: Judgement, conditions: set[str], at: Decimal | None) -> Aside | None:
-    if judged.limits is None:
-        return Aside.NOT_JUDGED
+def _why_aside(conditions: set[str], at: Decimal | None) -> Aside | None:
     if len(conditions) > 1 and ANY not in conditions:
         return Aside.OTHER_CONDITION
     return Aside.NO_HOURS if at is None else None

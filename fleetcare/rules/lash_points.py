@@ -6,11 +6,14 @@ Of an odd number of valves the intake has one more: common practice. The order o
 
 from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
+from typing import TYPE_CHECKING
 
 from fleetcare.domain.engines import Bridged, Layout, Side, ValveTrain
 from fleetcare.domain.sheets import LashPoint
 from fleetcare.errors import Refused
-from fleetcare.rules.valve_order import Position, easiest_order, firing_angles
+
+if TYPE_CHECKING:
+    from fleetcare.rules.valve_order import Position
 
 _LETTER = {Side.INTAKE: "I", Side.EXHAUST: "E"}
 _UNDER_A_BRIDGE = 2
@@ -20,7 +23,7 @@ _UNDER_A_BRIDGE = 2
 class Stop:
     """The points set at one stop of the crank, cylinder by cylinder; `position` is None where no order is known."""
 
-    position: Position | None
+    position: "Position | None"
     points: tuple[LashPoint, ...]
 
 
@@ -67,6 +70,8 @@ def lash_walk(train: ValveTrain) -> tuple[Stop, ...]:
     order = train.firing_order or ((1,) if train.cylinders == 1 else ())
     if not order:
         return (Stop(None, points),)
+    from fleetcare.rules.valve_order import easiest_order, firing_angles  # only who walks the points needs it
+
     _, positions = easiest_order(firing_angles(order))
     return tuple(Stop(position, _set_at(points, position)) for position in positions)
 
@@ -109,6 +114,6 @@ def _of_cylinder(train: ValveTrain, cylinder: int) -> list[LashPoint]:
     return points
 
 
-def _set_at(points: Sequence[LashPoint], position: Position) -> tuple[LashPoint, ...]:
+def _set_at(points: Sequence[LashPoint], position: "Position") -> tuple[LashPoint, ...]:
     cylinders = {Side.INTAKE: position.intake, Side.EXHAUST: position.exhaust}
     return tuple(point for point in points if point.cylinder in cylinders[point.side])
