@@ -15,7 +15,7 @@ from fleetcare.operations.measured import load_engine_sheets
 from fleetcare.operations.rows import fetch, known_day
 from fleetcare.operations.sheets_judge import JudgedSheet, judge_stored
 from fleetcare.operations.sheets_load import load_sheets
-from fleetcare.operations.shop_book import book_in_force
+from fleetcare.operations.shop_book import usable_book
 from fleetcare.rules.explain_measured import MeasuredRow, measured_rows
 from fleetcare.rules.judging.applies import rules_for
 from fleetcare.rules.sheet_complete import missing_cylinders, why_incomplete
@@ -77,14 +77,14 @@ def report_sheet(connection: "Connection", item: FoundItem, entry: int, on: date
     """
     sheet = _stored(connection, item, entry)
     (found,) = load_engine_sheets(connection, on, [item.id], newest=(sheet.on, entry))
-    book = book_in_force(connection, on)
+    book, notes = usable_book(connection, on)
     judged = judge_sheets(found, book)
     known = known_findings(connection, found, book, on)
     findings = tuple(one for one in engine_findings(judged, known) if entry in one.sheets)
     hours = next(one.engine_hours for one in found.sheets if one.entry == entry)
     if sheet.kind == LASH:
         lash = judge_stored(connection, item, sheet)
-        return SheetReport(item.tag, "Valve lash", sheet, hours, (), findings, lash=lash)
+        return SheetReport(item.tag, "Valve lash", sheet, hours, (), findings, notes=notes, lash=lash)
     kind = KINDS[sheet.kind]
     return SheetReport(
         tag=item.tag,
@@ -95,7 +95,7 @@ def report_sheet(connection: "Connection", item: FoundItem, entry: int, on: date
         findings=findings,
         missing=missing_cylinders(sheet.kind, sheet.values, found.engine),
         incomplete=why_incomplete(sheet.kind, sheet.values, found.engine),
-        notes=_unknown_cylinders(item.tag, sheet, found.engine.cylinders),
+        notes=(*notes, *_unknown_cylinders(item.tag, sheet, found.engine.cylinders)),
     )
 
 

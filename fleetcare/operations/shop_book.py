@@ -11,6 +11,7 @@ from functools import lru_cache
 from typing import TYPE_CHECKING
 
 from fleetcare import __version__
+from fleetcare.errors import Refused
 from fleetcare.operations.rows import fetch, known_day
 from fleetcare.rulebook.shipped import shipped_digest
 
@@ -61,6 +62,17 @@ def book_of(texts: tuple[ShopText, ...]) -> "RuleBook":
 def book_in_force(connection: "Connection", on: date) -> "RuleBook":
     """Give the rules that hold for the shop on a day."""
     return book_of(shop_texts(connection, on))
+
+
+def usable_book(connection: "Connection", on: date) -> tuple["RuleBook", tuple[str, ...]]:
+    """Give the rules that hold on a day, or the shipped ones alone where the shop's no longer fit them, and say so.
+
+    A sheet is to be taken whatever became of the rules.
+    """
+    try:
+        return book_in_force(connection, on), ()
+    except Refused as error:
+        return book_of(()), (f"judged by the shipped rules alone, the shop's own do not fit them: {error.lines()[0]}",)
 
 
 @lru_cache(maxsize=4)

@@ -92,7 +92,11 @@ def _rejudge(
 ) -> Rejudged:
     after = tuple(sorted(after, key=lambda one: one.name))
     notes = _unknown_engines(connection, after)
-    had = _standing(connection, before, on, None)
+    try:
+        had = _standing(connection, before, on, None)
+    except Refused as error:
+        had = _Standing({}, ())
+        notes = (*notes, f"the rules before did not fit this program, so nothing went: {error.lines()[0]}")
     has = _standing(connection, after, on, progress)
     came = tuple(row for key, row in has.rows.items() if key not in had.rows)
     went = tuple(row for key, row in had.rows.items() if key not in has.rows)

@@ -136,8 +136,8 @@ def _statistical(shape: Statistical, rule: Rule) -> Iterable[str]:
 def _made(shape: Statistical, limit: Limit) -> str:
     if shape.method is Method.PERCENTILE:
         return f"{plain(limit.value)} % of them"
-    centre, spread = ("mean", "s") if shape.method is Method.MEAN else ("median", "1.4826 × median distance")
-    return f"the {centre} by more than {plain(limit.value)} {spread}"
+    centre, spread = ("mean", "s") if shape.method is Method.MEAN else ("median", "1.4826 median distances")
+    return f"the {centre} by more than {plain(limit.value)} × {spread}"
 
 
 def _condition(condition: Condition) -> str:

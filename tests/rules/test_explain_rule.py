@@ -48,11 +48,11 @@ NONE = Limits()
         (a_rule(shape=Bounds(Basis.SPEC, End.LOW)), "the low end of the engine's own check range"),
         (
             a_rule(shape=Statistical(Pool.OWN, Method.MEAN, 10), high=Limits(beyond("2"), beyond("3"))),
-            "alert above the mean by more than 2 s, alarm above the mean by more than 3 s",
+            "alert above the mean by more than 2 × s, alarm above the mean by more than 3 × s",
         ),
         (
             a_rule(shape=Statistical(Pool.OWN, Method.ROBUST, 10), low=Limits(beyond("2")), high=NONE),
-            "alert below the median by more than 2 1.4826 × median distance",
+            "alert below the median by more than 2 × 1.4826 median distances",
         ),
         (
             a_rule(shape=Statistical(Pool.FAMILY, Method.PERCENTILE, 30), high=Limits(beyond("95"))),

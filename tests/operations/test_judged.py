@@ -1,0 +1,252 @@
+"""What is kept of judged engines is what judging them anew gives, after every kind of write, and it may go at any time."""
+
+import shutil
+import sqlite3
+from collections.abc import Callable, Iterator
+from contextlib import closing, contextmanager
+from datetime import date
+from pathlib import Path
+
+import pytest
+from sqlalchemy import text
+
+from fleetcare.context import Context
+from fleetcare.db.chain import DERIVED
+from fleetcare.db.tables import metadata
+from fleetcare.errors import Refused
+from fleetcare.operations import judged, judged_touched
+from fleetcare.operations.finding_rows import finding_rows
+from fleetcare.operations.judged import finding_lives_on, judge_anew
+from fleetcare.operations.judged_rows import kept_rows, sheet_owners
+from fleetcare.operations.rows import fetch
+from fleetcare.operations.shop_book import shop_texts
+from fleetcare.operations.upkeep import check
+from tests.cli.conftest import set_up
+from tests.operations.importing import TODAY
+
+SHEETS = {
+    "low": ("pressure,1,dry,27,bar", "pressure,2,dry,19,bar", "pressure,3,dry,27,bar"),
+    "fine": ("pressure,1,dry,27,bar", "pressure,2,dry,26,bar", "pressure,3,dry,27,bar"),
+    "iron": ("Fe,,,150,ppm", "tbn,,,4,", "Si,,,30,ppm", "grade,,,15W-40,", "hours_on_oil,,,200,h"),
+    "more": ("Fe,,,250,ppm", "tbn,,,4,", "grade,,,15W-40,", "hours_on_oil,,,200,h"),
+    "new": ("Fe,,,10,ppm", "tbn,,new,10,", "Si,,new,15,ppm", "grade,,,15W-40,"),
+    "tight": ("lash,1I,found,0.25,", "lash,1E,found,0.36,", "lash,2I,found,0.25,", "lash,2E,found,0.45,"),
+    "hot": ("coolant,,,104,",),
+}
+
+YARD = """
+    machine add W-1 --meter hours
+    engine add P-01 --cylinders 3 --fuel diesel --meter hours --sump 8 --oil-grade 15W-40
+    engine add P-02 --cylinders 2 --firing-order 1-2 --fuel diesel --meter hours --lash-exhaust 0.40-0.50 --lash-intake 0.20-0.30
+    engine add P-03 --cylinders 3 --fuel diesel --machine W-1 --in-service 2026-01-01
+    engine add P-04 --cylinders 3 --fuel diesel --meter hours
+    reading P-01 1000 --on 2026-01-01
+    reading W-1 500 --on 2026-01-01
+    measure compression P-01 low.csv --on 2026-03-01
+    measure oil P-01 iron.csv --on 2026-03-02
+    measure lash P-02 tight.csv --on 2026-03-03
+    measure oil P-03 iron.csv --on 2026-03-04
+"""
+
+WRITES = """
+    measure compression P-01 fine.csv --on 2026-04-01
+    measure oil P-01 more.csv --on 2026-04-02 --at 1200h
+    measure oil P-01 iron.csv --on 2026-02-02
+    measure spot P-04 hot.csv --on 2026-04-03
+    correct 2 --on 2026-03-05
+    correct 1 --void --why wrong-engine
+    log P-01 --top-up 4L --on 2026-03-20 --at 1100h
+    reading P-01 1300 --on 2026-04-20
+    reading W-1 700 --on 2026-04-20
+    reading --void 5 --why misread
+    reading --restore 5
+    reading P-01 5 --on 2026-04-25 --replaced 1310 0
+    engine edit P-02 --lash-exhaust 0.30-0.50
+    engine edit P-01 --oil-grade 10W-30
+    engine edit P-01 --sump 12
+    engine add P-05 --cylinders 1 --meter hours
+    measure oil P-04 new.csv --on 2026-02-01
+    setting shop-name Fen
+    engine fit P-03 --out --on 2026-05-01
+    engine lay-up P-02 --on 2026-04-29
+    engine factor P-01 hours 0.5 --on 2026-04-01 --why dust
+    rules --use shop.toml --why stricter --by Fenn
+    answer FINDING --accept --why known --by Fenn
+    rules --drop shop --why enough --by Fenn
+    answer FINDING --follow-up --why look --by Fenn
+    engine withdraw P-02 --on 2026-04-30 --why sold
+"""
+SHOP = '[[rule]]\nid = "oil-fe"\nhigh = { alert = { beyond = 40 } }\n'
+
+
+@pytest.fixture
+def files(tmp_path: Path, monkeypatch: pytest.MonkeyPatch) -> None:
+    """The sheets and the shop's rules as files of the folder one works in."""
+    monkeypatch.chdir(tmp_path)
+    for name, rows in SHEETS.items():
+        Path(f"{name}.csv").write_text("\n".join(["quantity,point,phase,value,unit", *rows]))
+    Path("shop.toml").write_text(SHOP)
+
+
+@pytest.fixture
+def yard(ctx: Context, files: None) -> Context:
+    """A yard in which things were measured."""
+    set_up(ctx.path, YARD)
+    return Context(str(ctx.path), TODAY)
+
+
+def assert_holds(ctx: Context, on: date = TODAY) -> None:
+    """What is read is what judging everything anew gives, now and again once it is kept."""
+    for _ in range(2):
+        with ctx.read() as connection:
+            assert finding_lives_on(connection, on) == judge_anew(connection, on, shop_texts(connection, on))
+    assert check(ctx).problems == ()
+
+
+def stale(ctx: Context) -> list[int]:
+    """The engines whose rows do not hold as of the newest entry of the ledger."""
+    with ctx.read() as connection:
+        head = fetch(connection, "select max(seq) from ledger")[0][0]
+        rows = kept_rows(connection, sheet_owners(connection))
+        return [item for item in sheet_owners(connection) if item not in rows or rows[item].seq < head]
+
+
+@contextmanager
+def counted(monkeypatch: pytest.MonkeyPatch) -> Iterator[list[int]]:
+    """The engines judged inside."""
+    judging, done = judged.judge_lives, list[int]()
+
+    def count(found: judged.EngineSheets, *more: object) -> object:
+        done.append(found.item_id)
+        return judging(found, *more)  # type: ignore[arg-type]
+
+    with monkeypatch.context() as patched:
+        patched.setattr(judged, "judge_lives", count)
+        yield done
+
+
+def test_after_every_kind_of_write_what_is_read_is_what_judging_anew_gives(yard: Context) -> None:
+    assert_holds(yard)
+    for line in filter(None, map(str.strip, WRITES.splitlines())):
+        with yard.read() as connection:
+            waiting = [row.id for row in finding_rows(connection, TODAY) if row.state == "open"]
+        set_up(yard.path, line.replace("FINDING", waiting[0]))
+        assert_holds(yard)
+        assert_holds(yard, date(2026, 3, 10))
+
+
+def test_every_table_is_known_to_touch_an_engine_or_never_to() -> None:
+    touching = judged_touched._OF_ITEM | judged_touched._BY_METER | {"item", "sheet_value"}
+    assert not touching & judged_touched.NEVER
+    everybody = {"setting"}
+    assert set(metadata.tables) == touching | judged_touched.NEVER | everybody | {"ledger", *DERIVED}
+
+
+def test_a_row_of_a_kind_that_is_not_known_touches_every_engine(yard: Context) -> None:
+    set_up(yard.path, "setting shop-name Fen")
+    with yard.read() as connection:
+        seq = fetch(connection, "select max(seq) from ledger")[0][0]
+        is_touched = judged_touched.touched(connection, seq - 1)
+        assert is_touched(1, seq - 1)
+        assert not is_touched(1, seq)
+
+
+def test_a_measured_engine_is_judged_before_its_sheet_counts_as_stored(
+    yard: Context, monkeypatch: pytest.MonkeyPatch
+) -> None:
+    assert_holds(yard)
+    set_up(yard.path, "measure compression P-01 fine.csv --on 2026-04-01")
+    with counted(monkeypatch) as done, yard.read() as connection:
+        finding_lives_on(connection, TODAY)
+    assert done == []
+
+
+def test_a_write_that_leaves_the_facts_as_they_were_judges_nobody(
+    yard: Context, monkeypatch: pytest.MonkeyPatch
+) -> None:
+    assert_holds(yard)
+    set_up(yard.path, "log P-01 --repair Belt --on 2026-04-20")
+    with counted(monkeypatch) as done, yard.read() as connection:
+        finding_lives_on(connection, TODAY)
+    assert done == []
+    assert stale(yard) == []
+
+
+def test_only_engines_that_a_write_touched_are_judged_again(yard: Context, monkeypatch: pytest.MonkeyPatch) -> None:
+    assert_holds(yard)
+    set_up(yard.path, "engine edit P-03 --sump 20")
+    with counted(monkeypatch) as done, yard.read() as connection:
+        finding_lives_on(connection, TODAY)
+        (item,) = fetch(connection, "select id from item where tag = 'P-03'")[0]
+    assert done == [item]
+
+
+@pytest.mark.parametrize("drop", ["delete from judged_engine", "delete from judged_engine where item_id % 2 = 0"])
+def test_rows_may_be_dropped_at_any_time(yard: Context, drop: str) -> None:
+    assert_holds(yard)
+    with closing(sqlite3.connect(yard.path)) as connection, connection:
+        connection.execute(drop)
+    assert check(yard).problems == ()
+    assert_holds(yard)
+    assert stale(yard) == []
+
+
+def test_rows_of_another_program_are_made_anew(yard: Context) -> None:
+    with closing(sqlite3.connect(yard.path)) as connection, connection:
+        connection.execute("update judged_engine set book = 'older', content = 'in another form'")
+    assert_holds(yard)
+
+
+def test_a_file_that_cannot_be_written_is_read_all_the_same(yard: Context) -> None:
+    with closing(sqlite3.connect(yard.path)) as connection, connection:
+        connection.execute("delete from judged_engine")
+    with closing(sqlite3.connect(yard.path)) as other:
+        other.execute("begin immediate")
+        with yard.read() as connection:
+            assert any(finding_lives_on(connection, TODAY).values())
+        other.rollback()
+    assert len(stale(yard)) == 3
+    assert_holds(yard)
+    assert stale(yard) == []
+
+
+def test_a_row_never_takes_the_place_of_one_that_holds_longer(yard: Context) -> None:
+    with yard.read() as connection:
+        rows = list(kept_rows(connection, sheet_owners(connection)).values())
+    with yard.write() as session:
+        judged.keep(session.connection(), [row.at(row.seq - 1)._replace(content="[]") for row in rows])
+    with yard.read() as connection:
+        assert list(kept_rows(connection, sheet_owners(connection)).values()) == rows
+
+
+def test_rules_that_no_longer_fit_the_program_hinder_no_writing_and_are_said_to_whoever_asks(yard: Context) -> None:
+    with closing(sqlite3.connect(yard.path)) as connection, connection:
+        connection.execute(
+            "insert into person (uid, recorded_at, name, name_key) values ('p', '2026-01-01', 'Old', 'old')"
+        )
+        connection.execute(
+            "insert into shop_rules (uid, recorded_at, name, text, is_dropped, from_on, why, person_id)"
+            " select 'r', '2026-01-01', 'shop', '[[rule]]', 0, '2026-01-01', 'x', id from person where uid = 'p'"
+        )
+    set_up(yard.path, "measure compression P-01 fine.csv --on 2026-04-01")
+    with yard.read() as connection, pytest.raises(Refused, match="shop, rule 1"):
+        finding_lives_on(connection, TODAY)
+
+
+def test_a_copy_of_the_file_brings_what_is_kept_along(
+    yard: Context, tmp_path: Path, monkeypatch: pytest.MonkeyPatch
+) -> None:
+    assert_holds(yard)
+    copy = Context(str(shutil.copy(yard.path, tmp_path / "copy.db")), TODAY)
+    with counted(monkeypatch) as done, copy.read() as connection:
+        assert any(finding_lives_on(connection, TODAY).values())
+        assert connection.execute(text("select count(*) from judged_engine")).scalar_one() == 3
+    assert done == []
+
+
+def test_judging_everybody_tells_how_far_it_has_come(yard: Context) -> None:
+    told: list[tuple[int, int]] = []
+    progress: Callable[[int, int], None] = lambda done, of: told.append((done, of))  # noqa: E731  # shorter so
+    with yard.read() as connection:
+        judge_anew(connection, TODAY, (), progress)
+    assert told == [(3, 3)]
