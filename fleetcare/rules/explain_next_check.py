@@ -4,7 +4,7 @@ from decimal import Decimal
 from typing import TYPE_CHECKING
 
 from fleetcare.domain.lines import DueLine, TriggerLine
-from fleetcare.domain.quantities import BASE_UNIT, plain
+from fleetcare.domain.quantities import BASE_UNIT, Kind, plain
 from fleetcare.rules.due.facts import ItemFacts
 from fleetcare.rules.due.pulls import foreseen_for
 from fleetcare.rules.explain_projection import say_ahead, say_obstacles, say_reached
@@ -12,12 +12,11 @@ from fleetcare.rules.explain_projection import say_ahead, say_obstacles, say_rea
 if TYPE_CHECKING:
     from fleetcare.domain.wear import Pull
 
-_TENTH = Decimal("0.1")
 
-
-def say_pull(pull: "Pull") -> str:
+def say_pull(pull: "Pull", facts: ItemFacts) -> str:
     """Say in short what pulls: "pulled forward: 3E reaches 0.40 mm by 4310 to 4620 h"."""
-    reached = say_reached(pull.projection, pull.wear.unit, BASE_UNIT[pull.wear.kind])
+    kind = pull.wear.kind
+    reached = say_reached(pull.projection, pull.wear.unit, BASE_UNIT[kind], _of_life(facts, kind))
     return f"pulled forward: {pull.wear.subject} {reached}{', due now' if pull.is_reached else ''}"
 
 
@@ -26,34 +25,46 @@ def explain_next_check(line: DueLine, trigger: TriggerLine, facts: ItemFacts) ->
     foreseen = foreseen_for(facts, line, trigger)
     if not foreseen:
         return []
-    over = BASE_UNIT[trigger.kind]
+    over, of = BASE_UNIT[trigger.kind], _of_life(facts, trigger.kind)
     pulling = trigger.pull.wear.subject if trigger.pull is not None else ""
     later = [
-        f"{one.wear.subject} {say_reached(one.projection, one.wear.unit, over)}"
+        f"{one.wear.subject} {say_reached(one.projection, one.wear.unit, over, of)}"
         for one in foreseen
         if one.projection.early is not None and one.wear.subject != pulling
     ]
     labels = [
-        ("pulled forward", _say_sum(trigger.pull, trigger) if trigger.pull is not None else ""),
+        ("pulled forward", _say_sum(trigger.pull, trigger, facts) if trigger.pull is not None else ""),
         ("also reached", ", ".join(later)),
         ("not projected", say_obstacles([(one.wear.subject, one.projection) for one in foreseen])),
     ]
     return [(label, text) for label, text in labels if text]
 
 
-def _say_sum(pull: "Pull", trigger: TriggerLine) -> str:
+def _say_sum(pull: "Pull", trigger: TriggerLine, facts: ItemFacts) -> str:
     """Say which subject, how fast, when at its limit, and how much earlier than the own point that is."""
-    over, wear, trend = BASE_UNIT[pull.wear.kind], pull.wear, pull.projection.trend
+    over, of, wear = BASE_UNIT[pull.wear.kind], _of_life(facts, pull.wear.kind), pull.wear
     assert isinstance(trigger.own, Decimal)
-    assert trend is not None
+    dial = facts.counters[wear.kind].dial_of(pull.at) if of else None
+    at = f"{_tenth(pull.at)} {over}{f', {_tenth(dial)} {over} on the dial' if dial is not None else ''}"
     when = (
-        f"the early end is behind it: due from its last value at {plain(round(pull.at, 1))} {over}"
+        f"the early end is behind it: due from its last value at {at}"
         if pull.is_reached
-        else f"to be checked at the early end, {plain(round(pull.at, 1))} {over}"
+        else f"to be checked at the early end, {at}"
     )
-    values = f"{trend.df} degrees of freedom, measured last on {wear.measured_on.isoformat()}"
-    earlier = plain((trigger.own - pull.at).quantize(_TENTH))
+    count = sum(len(segment.points) for segment in wear.segments)
     return (
-        f"{wear.subject} {say_ahead(pull.projection, wear.unit, over)} (four times in five; {values});"
-        f" {when}, {earlier} {over} before its own point"
+        f"{wear.subject} {say_ahead(pull.projection, wear.unit, over, of)} (four times in five; {count} values, the last of"
+        f" {wear.measured_on.isoformat()}); {when}: {_tenth(trigger.own - pull.at)} {over} before its own point"
     )
+
+
+def _of_life(facts: ItemFacts, kind: Kind) -> str:
+    """Give what is said after life totals the dial does not show."""
+    counter = facts.counters[kind]
+    assert counter.latest is not None
+    life = counter.latest.life
+    return "" if counter.dial_of(life) == life else " of life"
+
+
+def _tenth(figure: Decimal) -> str:
+    return plain(round(figure, 1))

@@ -20,18 +20,21 @@ def say_slope(trend: Trend, unit: str, over: str) -> str:
     return f"{'falls' if gain < 0 else 'rises'} {plain(abs(rounded))} {unit} in {_THOUSAND} {over}"
 
 
-def say_reached(projection: Projection, unit: str, over: str) -> str:
-    """Say between which figures a limit is reached, rounded outwards to whole ones: "reaches 0.40 mm by 6947 to 7193 h"."""
+def say_reached(projection: Projection, unit: str, over: str, of: str = "") -> str:
+    """Say between which figures a limit is reached, rounded outwards to whole ones: "reaches 0.40 mm by 6947 to 7193 h".
+
+    `of` stands after figures that are not those of the dial: " of life".
+    """
     assert projection.early is not None
     assert projection.late is not None
-    return f"reaches {projection.limit:f} {unit} by {_whole(projection.early)} to {_whole(projection.late, ROUND_CEILING)} {over}"
+    return f"reaches {projection.limit:f} {unit} by {_whole(projection.early)} to {_whole(projection.late, ROUND_CEILING)} {over}{of}"
 
 
-def say_ahead(projection: Projection, unit: str, over: str) -> str:
+def say_ahead(projection: Projection, unit: str, over: str, of: str = "") -> str:
     """Say all a projection tells: slope, range and likely figure, or the slope where one is seen, and why no more."""
     trend, hindrances = projection.trend, projection.hindrances
     if projection.likely is not None and trend is not None:
-        reached = say_reached(projection, unit, over)
+        reached = say_reached(projection, unit, over, of)
         return f"{say_slope(trend, unit, over)}: {reached}, likely {_whole(projection.likely, ROUND_HALF_EVEN)} {over}"
     loud = [hindrance for hindrance in hindrances if hindrance.obstacle in _LOUD] or list(hindrances)
     why = "; ".join(_say_hindrance(hindrance, projection, unit, over) for hindrance in loud)

@@ -1,8 +1,11 @@
 """What pulls a line forward, in words: the working of the line, its row, and its note."""
 
+from dataclasses import replace
 from decimal import Decimal
 
 from fleetcare.domain.lines import DueLine
+from fleetcare.domain.meters import Counter, Meter, MeterFit, Reading
+from fleetcare.domain.quantities import Kind
 from fleetcare.domain.schedules import Task
 from fleetcare.domain.wear import Wear
 from fleetcare.operations.due_words import notes
@@ -10,7 +13,8 @@ from fleetcare.rules.due.due_list import item_lines
 from fleetcare.rules.due.facts import ItemFacts
 from fleetcare.rules.due.row import DueRow, due_row
 from fleetcare.rules.explain import explain
-from tests.builders import a_deferral, a_task, every, facts, last_done
+from fleetcare.rules.meters import counter_history
+from tests.builders import a_deferral, a_task, day, every, facts, last_done
 from tests.rules.test_due_pulls import lash
 from tests.rules.wearing import a_wear
 
@@ -33,15 +37,27 @@ def row(task: Task | None = None, hours: float = 4000, *wears: Wear) -> DueRow:
 def test_the_working_says_which_point_how_fast_when_and_how_much_earlier() -> None:
     assert working()["pulled forward"] == (
         "3E falls 0.049 mm in 1000 h: reaches 0.25 mm by 5975 to 6238 h, likely 6102 h (four times in five;"
-        " 7 degrees of freedom, measured last on 2026-04-20); to be checked at the early end, 5975.1 h,"
+        " 11 values, the last of 2026-04-20); to be checked at the early end, 5975.1 h:"
         " 524.9 h before its own point"
     )
+
+
+def test_after_a_new_meter_figures_are_said_to_be_of_life_and_what_the_dial_shows_there() -> None:
+    old, new = Meter(1, Kind.HOURS, "h"), Meter(2, Kind.HOURS, "h")
+    swap = day("2026-04-21")
+    fits = (MeterFit(old, None, Decimal(0), swap, Decimal(4000)), MeterFit(new, swap, Decimal(0)))
+    readings = (Reading(1, 1, day("2026-04-20"), Decimal(4000)), Reading(2, 2, day("2026-05-01"), Decimal(10)))
+    counter = counter_history(Counter(Kind.HOURS, Decimal(0), fits, readings), day("2026-05-01"))
+    known = replace(facts(lash(), on="2026-05-01", wears=(a_wear(),)), counters={Kind.HOURS: counter})
+    found = item_lines(known, recorded_only=True)[0]
+    assert due_row(found, known).reason == "pulled forward: 3E reaches 0.25 mm by 5975 to 6238 h of life"
+    assert "early end, 5975.1 h, 1975.1 h on the dial: 524.9 h before" in dict(explain(found, known))["pulled forward"]
 
 
 def test_an_early_end_behind_it_says_it_is_due_from_its_last_value() -> None:
     past = a_wear(("2000 2500 3000 3500 4000", ".40 .38 .35 .33 .312", None), low="0.31")
     said = working(lash("2000h"), 4000, past)["pulled forward"]
-    assert said.endswith("the early end is behind it: due from its last value at 4000 h, 2000 h before its own point")
+    assert said.endswith("the early end is behind it: due from its last value at 4000 h: 2000 h before its own point")
     assert row(lash("2000h"), 4000, past).reason.endswith(", due now")
 
 

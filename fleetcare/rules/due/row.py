@@ -85,7 +85,7 @@ def due_row(line: DueLine, facts: ItemFacts) -> DueRow:
         late_date=line.late_on,
         deferred_until=_deferred_until(line, facts),
         covered_by=line.covered_by,
-        reason=_reason(line),
+        reason=_reason(line, facts),
         machine=line.item.machine,
         engine_status=line.status.value if line.item.is_engine else "",
         meter_unit=unit,
@@ -95,14 +95,14 @@ def due_row(line: DueLine, facts: ItemFacts) -> DueRow:
     )
 
 
-def _reason(line: DueLine) -> str:
+def _reason(line: DueLine, facts: ItemFacts) -> str:
     """Say why a line is unset, else what pulls it forward and why it was deferred."""
     pulls = [trigger.pull for trigger in line.triggers if trigger.pull is not None]
     if not pulls:
         return line.reason
     from fleetcare.rules.explain_next_check import say_pull  # not worth loading where nothing is pulled
 
-    return "; ".join([*map(say_pull, pulls), *([line.reason] if line.reason else [])])
+    return "; ".join([*(say_pull(pull, facts) for pull in pulls), *([line.reason] if line.reason else [])])
 
 
 def unit_of(facts: ItemFacts, kind: Kind) -> str:
