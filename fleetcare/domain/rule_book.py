@@ -75,9 +75,13 @@ class Best(StrEnum):
 
 
 class Since(StrEnum):
-    """What a value is compared with: the last sheet with the same gauge, or the new oil (for a rate: since the change)."""
+    """What a value is compared with: the last sheet with the same gauge, the highest of all points on that, or the new oil.
+
+    For a rate NEW is since the oil change.
+    """
 
     BEFORE = "before"
+    BEST_BEFORE = "best before"
     NEW = "new"
 
 

@@ -6,6 +6,7 @@ from typing import TYPE_CHECKING
 
 from fleetcare.operations.due_words import group_of
 from fleetcare.operations.find import find_item
+from fleetcare.operations.finding_rows import FindingRecord, finding_rows
 from fleetcare.operations.lash_past import Trends, lash_trends
 from fleetcare.operations.life_plot import LifeCurve, life_curves
 from fleetcare.operations.review import ReviewLine
@@ -18,13 +19,14 @@ if TYPE_CHECKING:
 
 @dataclass(frozen=True, slots=True)
 class FullPage:
-    """A page; `cautions` are those of its tasks, by task; `lash` is the past of each lash point."""
+    """A page; `cautions` are those of its tasks, by task; `lash` is the past of each lash point, a machine has no `findings`."""
 
     item: ItemPage
     lines: tuple[ReviewLine, ...]
     curves: tuple[LifeCurve, ...]
     cautions: tuple[Label, ...]
     lash: Trends
+    findings: tuple[FindingRecord, ...]
 
 
 def full_page(connection: "Connection", tag: str, on: date, *, is_future: bool = False) -> FullPage:
@@ -38,6 +40,7 @@ def full_page(connection: "Connection", tag: str, on: date, *, is_future: bool =
             for row, line in zip(found.rows, found.lines, strict=True)
         ),
         curves=tuple(life_curves(found.facts, found.lines, is_future=is_future)),
+        findings=tuple(row for row in finding_rows(connection, on) if row.engine == found.facts.item.tag),
         cautions=tuple((line.task.name, line.version.caution) for line in found.lines if line.version.caution),
         lash=lash_trends(connection, find_item(connection, tag, on=on, even_withdrawn=True), found.facts, found.lines),
     )

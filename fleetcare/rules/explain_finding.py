@@ -97,11 +97,11 @@ def say_against(signal: Signal) -> str:
     assert signal.limit is not None
     assert signal.margin is not None
     unit = say_unit(signal.rule, signal.unit)
-    told = _figure(signal.measured, unit)
+    told = say_figure(signal.measured, unit)
     if signal.margin == 0:
         return f"{told} reaches the {signal.severity} limit"
     side = "above" if signal.end is End.HIGH else "below"
-    off, limit = _figure(-signal.margin, unit), _figure(signal.limit, unit)
+    off, limit = say_figure(-signal.margin, unit), say_figure(signal.limit, unit)
     return f"{told}, {off} {side} the {signal.severity} limit of {limit}"
 
 
@@ -113,7 +113,7 @@ def say_measured(rule: Rule) -> str:
     if isinstance(shape, AgainstSheet):
         return f"{name} {_COMPARED[shape.by]} the {shape.reference}{_OF_ALL.get(shape.reference, '')}"
     if isinstance(shape, Change):
-        return f"{name} {_COMPARED[shape.by]} {'new oil' if shape.since is Since.NEW else 'the last test'}"
+        return f"{name} {_COMPARED[shape.by]} {_BEFORE[shape.since]}"
     return f"rise of {name}" if isinstance(shape, Rate) else name
 
 
@@ -122,13 +122,13 @@ def say_working(signal: Signal) -> str:
     steps = ", ".join(say_step(step) for step in signal.steps)
     if signal.measured is None:
         return f"{signal.rule.cause} ({signal.rule.id}) from {steps}"
-    told = f"{_named(signal)} {_figure(signal.measured, say_unit(signal.rule, signal.unit))}"
+    told = f"{_named(signal)} {say_figure(signal.measured, say_unit(signal.rule, signal.unit))}"
     return f"{told} ({signal.rule.id}){f' from {steps}' if steps else ''}"
 
 
 def say_step(step: Step) -> str:
     """Say one number of the working with its label."""
-    return f"{step.label} {_figure(step.value, step.unit)}"
+    return f"{step.label} {say_figure(step.value, step.unit)}"
 
 
 def say_evidence(value: Evidence) -> str:
@@ -168,7 +168,7 @@ def _named(signal: Signal) -> str:
     return say_measured(signal.rule)
 
 
-def _figure(value: Decimal, unit: str) -> str:
+def say_figure(value: Decimal, unit: str) -> str:
     """Write a figure with its unit: as typed, or one that was worked out to the decimals its size asks for.
 
     One that would be rounded to nothing has its first digit.
@@ -181,6 +181,7 @@ def _figure(value: Decimal, unit: str) -> str:
 _BASES = {Basis.LESS_NEW: " above new oil", Basis.NAMEPLATE: " of the nameplate", Basis.YEAR: " of the year"}
 _COMPARED = {By.RATIO: "as a share of", By.SHARE: "against", By.DIFFERENCE: "less"}
 _OF_ALL = {"mean": " of all"}
+_BEFORE = {Since.BEFORE: "the last test", Since.BEST_BEFORE: "the highest of the last test", Since.NEW: "new oil"}
 
 
 def _each(texts: Iterable[str]) -> list[str]:

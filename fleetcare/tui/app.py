@@ -27,6 +27,18 @@ def _engines() -> "Screen[None]":
     return EnginesScreen()
 
 
+def _findings() -> "Screen[None]":
+    from fleetcare.tui.screens.findings import FindingsScreen  # loaded when the view is first opened
+
+    return FindingsScreen()
+
+
+def _rules() -> "Screen[None]":
+    from fleetcare.tui.screens.rules import RulesScreen  # loaded when the view is first opened
+
+    return RulesScreen()
+
+
 _SHARED = {action.method.partition("(")[0] for action in ACTIONS if action.place == EVERYWHERE}
 
 
@@ -36,7 +48,12 @@ class FleetApp(App[None]):
     CSS_PATH = Path(__file__).with_name("fleetcare.tcss")
     TITLE = "fleetcare"
     BINDINGS = bindings(EVERYWHERE)
-    MODES: ClassVar[dict[str, "str | Callable[[], Screen[None]]"]] = {"due": DueScreen, "engines": _engines}
+    MODES: ClassVar[dict[str, "str | Callable[[], Screen[None]]"]] = {
+        "due": DueScreen,
+        "engines": _engines,
+        "findings": _findings,
+        "rules": _rules,
+    }
     DEFAULT_MODE = "due"
     VERTICAL_BREAKPOINTS = [(0, "-low"), (15, "-high")]  # noqa: RUF012 - an instance variable to the base class
 

@@ -16,7 +16,7 @@ if TYPE_CHECKING:
     from fleetcare.context import Context
     from fleetcare.tui.app import FleetApp
 
-VIEWS = (("due", "1 Due"), ("engines", "2 Engines"))
+VIEWS = (("due", "1 Due"), ("engines", "2 Engines"), ("findings", "3 Findings"), ("rules", "4 Rules"))
 _WEEKDAYS = ("Mon", "Tue", "Wed", "Thu", "Fri", "Sat", "Sun")
 _MOST_LINES = 3
 

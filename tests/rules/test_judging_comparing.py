@@ -107,6 +107,25 @@ def test_a_change_reads_the_same_whatever_the_units_and_a_dry_value_is_like_one_
     assert one_signal(FALL, about).measured == -20
 
 
+RISE = a_rule(
+    id="rise",
+    kinds=("compression",),
+    quantity="pressure",
+    shape=Change(Since.BEST_BEFORE, By.SHARE),
+    unit="%",
+    high=Limits(beyond("15")),
+)
+
+
+@pytest.mark.parametrize(("now", "is_told"), [("25", False), ("28.75", False), ("28.76", True)])
+def test_a_point_is_higher_than_before_only_beyond_what_a_sound_one_showed_then(now: str, is_told: bool) -> None:
+    then = a_sheet(
+        value("pressure", "17", "bar", "1"), value("pressure", "25", "bar", "2"), kind="compression", days=30
+    )
+    about = facts(_tested(now, 0, unit="bar"), earlier=(then,))  # type: ignore[arg-type]
+    assert told([RISE], about) == ({("rise", "1"): "alert"} if is_told else {})
+
+
 NEW = a_rule(
     id="new",
     quantity="kv100",

@@ -6,9 +6,9 @@ from pathlib import Path
 import pytest
 
 from fleetcare.context import Context
-from fleetcare.tui.finding import FindLine
 from fleetcare.tui.screens.engines import EnginesScreen
 from fleetcare.tui.screens.entry import EntryScreen
+from fleetcare.tui.searching import FindLine
 from tests.tui.conftest import Opened, line_with, press, seen, settle_down, type_in
 from tests.tui.entry import said, type_line
 from tests.tui.forms import stored

@@ -33,14 +33,16 @@ def against_sheet(
     if len(peers) < _LEAST_POINTS:
         raise CannotTell("one point alone cannot be compared with others", one.point)
     unit = rule.unit if shape.by is By.DIFFERENCE else peers[0].unit
-    best = _best([other.within(unit) for other in peers], shape.reference)
+    best = best_of([other.within(unit) for other in peers], shape.reference)
     others = tuple(other.evidence for other in peers if other is not one)
     return _compared(rule, shape.by, one, (one.within(unit), best), unit, (shape.reference.value, others))
 
 
 def change(rule: Rule, shape: Change, one: Measured, values: Sequence[Measured], facts: MeasuredFacts) -> Figure:
-    """Compare a value with the same point before, or with new oil."""
+    """Compare a value with the same point before, with the highest of all points then, or with new oil."""
     then = _new(rule, facts) if shape.since is Since.NEW else before(rule.quantity, one, facts)
+    if shape.since is Since.BEST_BEFORE:
+        then = _highest_with(then, rule.quantity, facts)
     unit = rule.unit if shape.by is By.DIFFERENCE else then.unit
     label = "new oil" if shape.since is Since.NEW else f"on {then.evidence.on.isoformat()}"
     return _compared(rule, shape.by, one, (one.within(unit), then.within(unit)), unit, (label, (then.evidence,)))
@@ -56,6 +58,13 @@ def before(quantity: str, one: Measured, facts: MeasuredFacts) -> Measured:
     raise CannotTell("no earlier sheet with the same gauge has this value", one.point)
 
 
+def _highest_with(one: Measured, quantity: str, facts: MeasuredFacts) -> Measured:
+    """Give the highest value of the same phase on the sheet a value stands on: what a sound point showed then."""
+    sheet = next(sheet for sheet in facts.earlier if sheet.entry == one.evidence.sheet)
+    peers = [other for other in values_of(sheet, quantity) if alike(other.phase) is alike(one.phase)]
+    return max(peers, key=lambda other: other.within(one.unit).high)
+
+
 def _new(rule: Rule, facts: MeasuredFacts) -> Measured:
     fresh = fresh_of(facts.sheet, facts.fresh, rule.quantity)
     if fresh is None:
@@ -63,7 +72,8 @@ def _new(rule: Rule, facts: MeasuredFacts) -> Measured:
     return fresh
 
 
-def _best(spans: list[Span], reference: Best) -> Span:
+def best_of(spans: Sequence[Span], reference: Best) -> Span:
+    """Give the highest, the lowest or the mean of some spans, at least one."""
     if reference is Best.HIGHEST:
         return Span(max(span.low for span in spans), max(span.high for span in spans))
     if reference is Best.LOWEST:

@@ -70,6 +70,8 @@ class Screened:
                 return not any(one.is_out for one in facts.lash.get(facts.sheet.entry, ()))
             case AgainstSheet():
                 return len(seen) < 2 or self._all_within(_compared(seen, shape))
+            case Change(Since.BEST_BEFORE):
+                return not facts.earlier
             case Change(Since.BEFORE):
                 return not facts.earlier or self._all_within(_changed(seen, shape, facts, rule))
             case Change(Since.NEW):

@@ -2,6 +2,7 @@
 
 from fleetcare.tui.forms.adding import ENGINE, MACHINE, SCHEDULE, TASK
 from fleetcare.tui.forms.editing import EDIT, PERSON_NAME, SITE_NAME, TASK_EDIT, TASK_END
+from fleetcare.tui.forms.findings import ACCEPT, FOLLOW_UP
 from fleetcare.tui.forms.measure import MEASURES
 from fleetcare.tui.forms.meters import READING, RESTORE_READING, SWAP, VOID_READING
 from fleetcare.tui.forms.standing import FACTOR, LAY_UP, MOVE, RETURN, STAND_DOWN, WITHDRAW
@@ -14,6 +15,8 @@ FORMS = {
         CORRECT,
         VOID,
         DEFER,
+        ACCEPT,
+        FOLLOW_UP,
         *MEASURES,
         READING,
         SWAP,

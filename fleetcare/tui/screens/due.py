@@ -10,9 +10,9 @@ from textual.widget import Widget
 from fleetcare.errors import FleetError
 from fleetcare.operations.due_words import Group, notes, say_dial, say_due, say_likely, say_remaining
 from fleetcare.operations.review import Facet, Order, Review, ReviewLine, Wanted, arrange, review
-from fleetcare.tui.searching import SearchingScreen
 from fleetcare.tui.frame import TopBar, say_day
 from fleetcare.tui.looks import MARKS, tone_of
+from fleetcare.tui.searching import SearchingScreen
 from fleetcare.tui.widgets.columns import Cell, Column, Section
 from fleetcare.tui.widgets.detail import Counts, Detail
 from fleetcare.tui.widgets.long_list import LongList

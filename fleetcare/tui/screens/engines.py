@@ -6,10 +6,10 @@ from typing import TYPE_CHECKING
 from textual.widget import Widget
 
 from fleetcare.errors import FleetError
-from fleetcare.tui.searching import SearchingScreen
 from fleetcare.tui.frame import TopBar, say_day
 from fleetcare.tui.looks import MARKS, tone_of
 from fleetcare.tui.screens.due import NO_MATCH
+from fleetcare.tui.searching import SearchingScreen
 from fleetcare.tui.widgets.columns import Cell, Column, Section
 from fleetcare.tui.widgets.long_list import LongList
 

@@ -1,25 +1,34 @@
 """The page of an engine or machine: plate, meters, lines, history and trends, to read."""
 
-from collections.abc import Iterable, Mapping
+from collections.abc import Iterable
 from functools import partial
 from typing import TYPE_CHECKING
 
 from textual.containers import Vertical
-from textual.content import Content
 from textual.widget import Widget
 
 from fleetcare.domain.cautions import GENERAL
 from fleetcare.domain.engines import Status, status_on
-from fleetcare.domain.printable import clean
 from fleetcare.tui.frame import TopBar, say_day
-from fleetcare.tui.screens.due import COLUMNS, in_words
-from fleetcare.tui.widgets.columns import Cell, Column, Section
+from fleetcare.tui.screens.due import in_words
+from fleetcare.tui.screens.findings import in_words as finding_in_words
+from fleetcare.tui.screens.findings import sections_of
+from fleetcare.tui.screens.item_parts import (
+    FINDINGS,
+    HISTORY,
+    LINES,
+    PARTS,
+    READINGS,
+    TRENDS,
+    PartsBar,
+    mend_sheet,
+    plot_of,
+)
+from fleetcare.tui.widgets.columns import Section
 from fleetcare.tui.widgets.detail import Detail
 from fleetcare.tui.widgets.long_list import LongList
-from fleetcare.tui.widgets.plot import Line, Plot, PlotView
-from fleetcare.tui.widgets.plot import say_day as say_along
+from fleetcare.tui.widgets.plot import PlotView
 from fleetcare.tui.widgets.prose import Block, Prose
-from fleetcare.tui.widgets.text import columns_of, fit
 from fleetcare.tui.widgets.trend import TrendPart
 from fleetcare.tui.writing import WritingScreen
 
@@ -27,10 +36,8 @@ if TYPE_CHECKING:
     from datetime import date
 
     from sqlalchemy import Connection
-    from sqlalchemy.orm import Session
 
-    from fleetcare.operations.entering import Entered
-    from fleetcare.operations.life_plot import LifeCurve
+    from fleetcare.operations.finding_rows import FindingRecord
     from fleetcare.operations.page import FullPage
     from fleetcare.operations.review import ReviewLine
     from fleetcare.operations.show import HistoryEntry, ReadingLine
@@ -44,54 +51,6 @@ _STANDING = {
 }
 
 _MOST_METERS = 4  # lines; with more of them one scrolls
-PARTS = ("plate", "meters", "lines", "history", "lash")
-_TRENDS = ("lash",)
-
-LINES = tuple(column for column in COLUMNS if column.title not in {"ENGINE", "SITE"})
-READINGS: tuple[Column["ReadingLine"], ...] = (
-    Column("READING", lambda line: str(line.number), 7, 8, to_right=True),
-    Column("ON", lambda line: line.on.isoformat(), 10, 10),
-    Column("SHOWN", lambda line: line.shown, 10, 16, to_right=True),
-    Column("REMARK", lambda line: line.remark, 10, 70),
-)
-HISTORY: tuple[Column["HistoryEntry"], ...] = (
-    Column("ENTRY", lambda entry: str(entry.number), 5, 7, to_right=True),
-    Column("ON", lambda entry: entry.on.isoformat(), 10, 10),
-    Column("KIND", lambda entry: entry.kind, 10, 10, drop=3),
-    Column("WHAT", lambda entry: entry.what, 14, 60),
-    Column("FIGURES", lambda entry: entry.figures, 24, 24, to_right=True),
-    Column("BY", lambda entry: entry.by, 5, 12, drop=1),
-    Column("REMARK", lambda entry: Cell(entry.remark, "quiet"), 12, 50, drop=2),
-)
-
-
-class PartsBar(Widget):
-    """Whose page it is and whether it may run, and the parts of the page, the one in front marked."""
-
-    def __init__(self) -> None:
-        super().__init__()
-        self.tag, self.status, self.rest, self.part = "", "", "", PARTS[0]
-
-    def tell(self, tag: str, status: str, rest: str, part: str) -> None:
-        """Show other words or another part."""
-        self.tag, self.status, self.rest, self.part = tag, status, rest, part
-        self.refresh()
-
-    def render(self) -> Content:
-        """Draw them, what was typed by people literally."""
-        title = [f" {clean(self.tag)}  ", self.status and f"{self.status}  "]
-        room = max(self.size.width - sum(map(columns_of, title)), 0)
-        words = Content.assemble(
-            (title[0], "bold"), (title[1], "bold $error"), fit(self.rest, room) if room else "", "\n "
-        )
-        marked = {part: "bold reverse" if part == self.part else "bold" for part in PARTS}
-        return Content.assemble(
-            words,
-            *(
-                Content.from_markup(f"[{style} @click=screen.part('{part}')] {part.capitalize()} [/]")
-                for part, style in marked.items()
-            ),
-        )
 
 
 class ItemScreen(WritingScreen):
@@ -114,6 +73,7 @@ class ItemScreen(WritingScreen):
             Vertical(Prose(), PlotView(), LongList(READINGS, lambda line: line.number), id="meters"),
             Vertical(LongList(LINES, lambda line: line.key), Detail(), id="lines"),
             Vertical(LongList(HISTORY, lambda entry: entry.number), Detail(), id="history"),
+            Vertical(LongList(FINDINGS, lambda row: row.id), Detail(), id="findings"),
             TrendPart("POINT", "lash"),
         )
         for part in with_parts:
@@ -141,6 +101,7 @@ class ItemScreen(WritingScreen):
         self.query_one("#meters LongList", LongList).show([Section("", page.readings)], "No readings yet.")
         self.query_one("#lines LongList", LongList).show([Section("", found.lines)], "No tasks yet.")
         self.query_one("#history LongList", LongList).show([Section("", page.history)], "Nothing was logged yet.")
+        self.query_one("#findings LongList", LongList).show(sections_of(found.findings), "Nothing was found so far.")
         self.query_one("#lash", TrendPart).show(found.lash)
         self._plot()
         self._title()
@@ -155,6 +116,9 @@ class ItemScreen(WritingScreen):
             first = " ".join(f"entry {entry.number}, {entry.on.isoformat()}, {entry.kind} {entry.by}".split())
             rest = "; ".join(word for word in (entry.what, entry.figures, entry.remark) if word)
             self.query_one("#history Detail", Detail).tell((first, "strong"), (rest, ""))
+        finding: FindingRecord | None = self.query_one("#findings LongList", LongList).current
+        if finding is not None:
+            self.query_one("#findings Detail", Detail).tell(*finding_in_words(finding))
 
     def on_long_list_opened(self) -> None:
         """Open the working of a line with the mouse."""
@@ -165,7 +129,7 @@ class ItemScreen(WritingScreen):
         if part == "meters" == self.part:
             self.meter += 1
             self._plot()
-        if part in _TRENDS and part == self.part:
+        if part in TRENDS and part == self.part:
             self.query_one(f"#{part}", TrendPart).step()
         self.part = part
         for one in PARTS:
@@ -182,6 +146,9 @@ class ItemScreen(WritingScreen):
         from fleetcare.tui.forms.base import Subject
 
         line: ReviewLine | None = self.query_one("#lines LongList", LongList).current
+        finding: FindingRecord | None = self.query_one("#findings LongList", LongList).current
+        if finding is not None and self.part == "findings":
+            return Subject(self.tag, finding.id)
         return Subject(self.tag, line.row.task if line is not None and self.part == "lines" else "")
 
     def action_entry(self, form: str) -> None:
@@ -214,6 +181,13 @@ class ItemScreen(WritingScreen):
         else:
             self.notice.say("Turn to the meters (m) and put the cursor on a reading.")
 
+    def action_answer(self, form: str) -> None:
+        """Answer the finding under the cursor."""
+        if self.part == "findings" and self.query_one("#findings LongList", LongList).current is not None:
+            self.action_write(form)
+        else:
+            self.notice.say("Turn to the findings (f) and put the cursor on one.")
+
     def action_sheet(self) -> None:
         """Open the sheet of the entry under the cursor of the history, to read or to mend."""
         entry: HistoryEntry | None = self.query_one("#history LongList", LongList).current
@@ -230,7 +204,7 @@ class ItemScreen(WritingScreen):
 
         whose = self.page.item.facts.item.name if self.page is not None else ""
         about = SheetFor(self.tag, entry.on, entry.tasks, f"entry {entry.number}  {whose}", entry.number)
-        enter = partial(_mend_sheet, entry.number, self.context.today())
+        enter = partial(mend_sheet, entry.number, self.context.today())
         self.app.push_screen(SheetScreen(SHEETS[entry.sheet], about, enter), self._written)
 
     def action_sums(self) -> None:
@@ -240,10 +214,14 @@ class ItemScreen(WritingScreen):
         self.app.push_screen(SumsScreen(self.tag))
 
     def action_working(self) -> None:
-        """Show how the line under the cursor comes about."""
+        """Show how the line or the finding under the cursor comes about."""
+        from fleetcare.tui.screens.findings import FindingScreen
         from fleetcare.tui.screens.working import WorkingScreen
 
         line = self.query_one("#lines LongList", LongList).current
+        finding = self.query_one("#findings LongList", LongList).current
+        if self.part == "findings" and finding is not None:
+            self.app.push_screen(FindingScreen(finding))
         if self.part == "lines" and line is not None:
             self.app.push_screen(WorkingScreen(line.row.engine, line.row.task))
 
@@ -260,33 +238,3 @@ class ItemScreen(WritingScreen):
         curves = self.page.curves if self.page is not None else ()
         plot = plot_of(curves[self.meter % len(curves)], self.day) if curves else None
         self.query_one("#meters PlotView", PlotView).show(plot)
-
-
-def _mend_sheet(entry: int, today: "date", session: "Session", came: "Mapping[str, object]") -> "Entered":
-    """Correct the sheet of an entry."""
-    from fleetcare.drafts.work import CorrectionDraft
-    from fleetcare.operations.entering import enter_correction
-
-    given = {name: value for name, value in came.items() if value is not None}
-    if given.pop("leave_open", False):
-        given["part_done"] = True
-    return enter_correction(session, CorrectionDraft.model_validate({"entry": entry, **given}), today)
-
-
-def plot_of(curve: "LifeCurve", today: "date") -> Plot:
-    """Draw a life total as read in full, what is likely dotted, the range thinly, and what falls due across."""
-    read = [(day.toordinal(), total) for day, total in curve.read]
-    lines = [Line(read, 1, "strong")]
-    if curve.ahead:
-        start = read[-1]
-        late = [(day, total) for total, _, _, day in curve.ahead if day is not None]
-        horizon = max(likely for _, _, likely, _ in curve.ahead)
-        lines += [
-            Line([start, *((likely.toordinal(), total) for total, _, likely, _ in curve.ahead)], 2),
-            Line([start, *((early.toordinal(), total) for total, early, _, _ in curve.ahead)], 5, "quiet"),
-            Line([start, *((day.toordinal(), total) for day, total in late if day <= horizon)], 5, "quiet"),
-        ]
-    said = "likely dotted, its range thin" if curve.ahead else f"no forecast: {curve.why_not}"
-    levels = [(total, task) for total, task in curve.marks]
-    legend = f"{curve.kind} of life: read solid, {said}"
-    return Plot(lines, levels, legend, curve.unit, say_along, today.toordinal())
