@@ -81,7 +81,7 @@ def _check_allowed(line: DueLine) -> None:
 def _check_day(line: DueLine, until: date, today: date) -> None:
     if until < today:
         raise Refused(f"{until} is past", f"give a day from {today} on")
-    point = _own(line, Kind.CALENDAR)
+    point = _called_for(line, Kind.CALENDAR)
     if isinstance(point, date) and until <= point:
         raise Refused(f"{line.task.name} is not due before {point}", "give a later day")
 
@@ -94,7 +94,7 @@ def _add_figure(
     Refuses one the task does not count or that lies before its point.
     """
     meter = pick_meter(find_meters(session.connection(), item.id, facts.on), end, item.tag)
-    own = _own(line, meter.kind)
+    own = _called_for(line, meter.kind)
     if not isinstance(own, Decimal):
         raise Refused(f"{line.task.name} does not count {meter.kind}", "give a day, or a figure of a kind it counts")
     counter = facts.counters[meter.kind]
@@ -129,11 +129,15 @@ def _add_cap(session: "Session", row: Deferral, facts: ItemFacts, line: DueLine)
     look = outlooks(facts, is_future=False).get(kind)
     assert row.until_on is not None
     likely = look.history.likely_value(row.until_on) if look is not None and look.history is not None else None
-    own = _own(line, kind)
+    own = _called_for(line, kind)
     if likely is not None and isinstance(own, Decimal) and likely > own:
         value = Decimal(str(round(likely, 1)))
         session.add(DeferralFigure(deferral_id=row.id, kind=kind, role="cap", value=value, unit=BASE_UNIT[kind]))
 
 
-def _own(line: DueLine, kind: Kind) -> Point | None:
-    return next((trigger.own for trigger in line.triggers if trigger.kind is kind), None)
+def _called_for(line: DueLine, kind: Kind) -> Point | None:
+    """Give the point a trigger calls for its work at before any deferral: its own, or the one it is pulled forward to."""
+    found = next((trigger for trigger in line.triggers if trigger.kind is kind), None)
+    if found is None:
+        return None
+    return found.pull.at if found.pull is not None else found.own

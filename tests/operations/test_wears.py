@@ -8,6 +8,7 @@ import pytest
 from fleetcare.context import Context
 from fleetcare.drafts.reading_in import read_draft
 from fleetcare.drafts.work import DeferralDraft, LogDraft
+from fleetcare.errors import Refused
 from fleetcare.operations.deferrals import defer
 from fleetcare.operations.due import DueRow, due_rows, watch_moves
 from fleetcare.operations.find import find_item
@@ -98,12 +99,34 @@ def test_a_deferral_holds_against_sheets_up_to_its_day_and_a_later_one_pulls_aga
     ctx: Context, on: str, holds: bool
 ) -> None:
     closing(ctx)
-    with ctx.write() as session:
-        given = {"tag": "P-01", "task": "Lash", "until": ["2100"], "why": "parts", "by": "Fenn", "on": on}
-        defer(session, read_draft(DeferralDraft, given))
+    put_off(ctx, "2100", on)
     assert is_pulled(ctx) is not holds
     assert (lash(ctx).next_due_at == 2100) is holds
     assert lash(ctx).reason.endswith("parts")
+
+
+def put_off(ctx: Context, until: str, on: str = "2026-05-01") -> None:
+    with ctx.write() as session:
+        given = {"tag": "P-01", "task": "Lash", "until": [until], "why": "parts", "by": "Fenn", "on": on}
+        defer(session, read_draft(DeferralDraft, given))
+
+
+def test_a_pulled_line_can_be_put_off_to_before_its_own_point_but_not_to_before_the_pulled_one(ctx: Context) -> None:
+    closing(ctx)
+    with pytest.raises(Refused, match="1600 does not lie after the due point of 16"):
+        put_off(ctx, "1600")
+    put_off(ctx, "1700")
+    row = lash(ctx)
+    assert (row.next_due_at, row.own_due_at, row.reason) == (Decimal(1700), Decimal(2000), "parts")
+
+
+def test_a_pulled_line_put_off_to_a_day_is_capped_by_what_the_meter_likely_shows_then(ctx: Context) -> None:
+    closing(ctx)
+    put_off(ctx, "2026-08-01")
+    row = lash(ctx)
+    assert row.next_due_at is not None
+    assert 1610 < row.next_due_at < 1650  # 250 h in half a year: 125 h in three months
+    assert row.next_due_on == date(2026, 8, 1)
 
 
 def test_the_page_the_working_and_the_due_list_tell_the_same_projection(ctx: Context) -> None:
