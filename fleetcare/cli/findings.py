@@ -8,7 +8,6 @@ from fleetcare.cli import output
 from fleetcare.cli.parser import Commands
 from fleetcare.cli.shop import context_of, label_with, null, options_of, say_entered, say_progress
 from fleetcare.domain.cautions import GENERAL
-from fleetcare.domain.quantities import plain
 
 if TYPE_CHECKING:
     from fleetcare.operations.finding_rows import FindingRecord
@@ -80,8 +79,10 @@ def _table(rows: "Sequence[FindingRecord]") -> str:
 
 
 def _block(row: "FindingRecord") -> list[str]:
+    from fleetcare.operations.finding_rows import say_figures
+
     lines = [
-        ("measured", _figures(row)),
+        ("measured", say_figures(row)),
         ("explanation", row.explanation),
         ("working", row.working),
         ("evidence", row.evidence),
@@ -95,16 +96,6 @@ def _block(row: "FindingRecord") -> list[str]:
     ]
     head = f"{row.id}  {row.engine}, {row.subject}: {row.cause} ({row.severity}, {row.state})"
     return [output.clean(head), *(f"  {label:<11}  {output.clean(text)}" for label, text in lines if text)]
-
-
-def _figures(row: "FindingRecord") -> str:
-    """Say the figure, its limit and by how much it passed that, as the columns have them."""
-    if row.measured is None or row.limit is None or row.margin is None:
-        return ""
-    measured, limit, margin = (
-        f"{plain(figure)} {row.unit}".rstrip() for figure in (row.measured, row.limit, row.margin)
-    )
-    return f"{measured}, limit {limit}, margin {margin}"
 
 
 _RENDER = {"table": _table, "csv": _csv, "json": _json}

@@ -14,6 +14,7 @@ from fleetcare.rules.finding_record import (
     FINDING_COLUMNS,
     FindingRecord,
     finding_record,
+    say_figures,
     urgency,
     withdrawn_record,
 )
@@ -31,6 +32,7 @@ __all__ = [
     "findings_csv",
     "found_findings",
     "rows_of",
+    "say_figures",
 ]
 
 

@@ -4,7 +4,7 @@ from dataclasses import dataclass, fields
 from datetime import date
 from decimal import Decimal
 
-from fleetcare.rules.explain_finding import say_subject
+from fleetcare.rules.explain_finding import say_figure, say_subject
 from fleetcare.rules.finding_life import Answer, FindingState, Lived
 
 _STATES = list(FindingState)
@@ -95,6 +95,14 @@ def withdrawn_record(answer: Answer, engine: str) -> FindingRecord:
         caution="",
         due_by=None,
     )
+
+
+def say_figures(record: FindingRecord) -> str:
+    """Say the figure, its limit and by how much it passed that: "70.4 %, limit 75 %, margin -4.6 %"; empty for a pattern."""
+    if record.measured is None or record.limit is None or record.margin is None:
+        return ""
+    measured, limit, margin = (say_figure(one, record.unit) for one in (record.measured, record.limit, record.margin))
+    return f"{measured}, limit {limit}, margin {margin}"
 
 
 def urgency(record: FindingRecord) -> tuple[object, ...]:

@@ -50,7 +50,7 @@ def sheets(dice: Random, cylinders: int) -> Iterator[tuple[str, int, list[Value]
     points = [str(number) for number in range(1, cylinders + 1)]
     for number in range(8):
         next_sheet()
-        oil = [(name, "", "", near(*pair), "ppm") for name, pair in _OIL.items()]
+        oil: list[Value] = [(name, "", "", near(*pair), "ppm") for name, pair in _OIL.items()]
         oil += [("hours_on_oil", "", "", near(200, 240), "h"), ("water", "", "", near(0.05, 0.4, 2), "%")]
         oil += [("fuel", "", "", near(0.5, 5), "%"), ("soot", "", "", near(1, 5), "%")]
         oil += [("kv100", "", "", near(14.5, 11), "mm2/s"), ("tbn", "", "", near(8, 3), "mg KOH/g")]
@@ -58,14 +58,15 @@ def sheets(dice: Random, cylinders: int) -> Iterator[tuple[str, int, list[Value]
     for number in range(4):
         next_sheet()
         lash = [(one + side, *pair) for one in points for side, pair in (("I", (0.25, 0.15)), ("E", (0.45, 0.35)))]
-        yield "lash", 50 + 250 * number, [("lash", one, "found", near(*pair, 2), "mm") for one, *pair in lash]
+        gaps: list[Value] = [("lash", one, "found", near(usual, odd, 2), "mm") for one, usual, odd in lash]
+        yield "lash", 50 + 250 * number, gaps
         next_sheet()
         yield "compression", 51 + 250 * number, [("pressure", one, "dry", near(2700, 1900), "kPa") for one in points]
         next_sheet()
-        run = [("minutes", "", "", near(40, 20), "min"), ("load", "", "", near(45, 20), "%")]
+        run: list[Value] = [("minutes", "", "", near(40, 20), "min"), ("load", "", "", near(45, 20), "%")]
         yield "run", 20 + 90 * number, [*run, ("purpose", "", "", "test", "")]
         next_sheet()
-        spot = [("oil_pressure", "", "", near(250, 90), "kPa"), ("coolant", "", "", near(85, 105), "°C")]
+        spot: list[Value] = [("oil_pressure", "", "", near(250, 90), "kPa"), ("coolant", "", "", near(85, 105), "°C")]
         yield "spot", 10 + 60 * number, spot
     for number in range(2):
         next_sheet()

@@ -17,7 +17,8 @@ from fleetcare.errors import Refused
 from fleetcare.operations import judged, judged_touched
 from fleetcare.operations.finding_rows import finding_rows
 from fleetcare.operations.judged import finding_lives_on, judge_anew
-from fleetcare.operations.judged_rows import kept_rows, sheet_owners
+from fleetcare.operations.judged_rows import keep, kept_rows, sheet_owners
+from fleetcare.operations.measured import EngineSheets
 from fleetcare.operations.rows import fetch
 from fleetcare.operations.shop_book import shop_texts
 from fleetcare.operations.upkeep import check
@@ -116,7 +117,7 @@ def counted(monkeypatch: pytest.MonkeyPatch) -> Iterator[list[int]]:
     """The engines judged inside."""
     judging, done = judged.judge_lives, list[int]()
 
-    def count(found: judged.EngineSheets, *more: object) -> object:
+    def count(found: EngineSheets, *more: object) -> object:
         done.append(found.item_id)
         return judging(found, *more)  # type: ignore[arg-type]
 
@@ -184,22 +185,22 @@ def test_only_engines_that_a_write_touched_are_judged_again(yard: Context, monke
 @pytest.mark.parametrize("drop", ["delete from judged_engine", "delete from judged_engine where item_id % 2 = 0"])
 def test_rows_may_be_dropped_at_any_time(yard: Context, drop: str) -> None:
     assert_holds(yard)
-    with closing(sqlite3.connect(yard.path)) as connection, connection:
-        connection.execute(drop)
+    with closing(sqlite3.connect(yard.path)) as file, file:
+        file.execute(drop)
     assert check(yard).problems == ()
     assert_holds(yard)
     assert stale(yard) == []
 
 
 def test_rows_of_another_program_are_made_anew(yard: Context) -> None:
-    with closing(sqlite3.connect(yard.path)) as connection, connection:
-        connection.execute("update judged_engine set book = 'older', content = 'in another form'")
+    with closing(sqlite3.connect(yard.path)) as file, file:
+        file.execute("update judged_engine set book = 'older', content = 'in another form'")
     assert_holds(yard)
 
 
 def test_a_file_that_cannot_be_written_is_read_all_the_same(yard: Context) -> None:
-    with closing(sqlite3.connect(yard.path)) as connection, connection:
-        connection.execute("delete from judged_engine")
+    with closing(sqlite3.connect(yard.path)) as file, file:
+        file.execute("delete from judged_engine")
     with closing(sqlite3.connect(yard.path)) as other:
         other.execute("begin immediate")
         with yard.read() as connection:
@@ -214,17 +215,15 @@ def test_a_row_never_takes_the_place_of_one_that_holds_longer(yard: Context) -> 
     with yard.read() as connection:
         rows = list(kept_rows(connection, sheet_owners(connection)).values())
     with yard.write() as session:
-        judged.keep(session.connection(), [row.at(row.seq - 1)._replace(content="[]") for row in rows])
+        keep(session.connection(), [row.at(row.seq - 1)._replace(content="[]") for row in rows])
     with yard.read() as connection:
         assert list(kept_rows(connection, sheet_owners(connection)).values()) == rows
 
 
 def test_rules_that_no_longer_fit_the_program_hinder_no_writing_and_are_said_to_whoever_asks(yard: Context) -> None:
-    with closing(sqlite3.connect(yard.path)) as connection, connection:
-        connection.execute(
-            "insert into person (uid, recorded_at, name, name_key) values ('p', '2026-01-01', 'Old', 'old')"
-        )
-        connection.execute(
+    with closing(sqlite3.connect(yard.path)) as file, file:
+        file.execute("insert into person (uid, recorded_at, name, name_key) values ('p', '2026-01-01', 'Old', 'old')")
+        file.execute(
             "insert into shop_rules (uid, recorded_at, name, text, is_dropped, from_on, why, person_id)"
             " select 'r', '2026-01-01', 'shop', '[[rule]]', 0, '2026-01-01', 'x', id from person where uid = 'p'"
         )

@@ -89,8 +89,8 @@ def test_a_later_sheet_that_finds_it_in_clears_it_and_the_next_one_out_begins_an
 
 def test_its_row_is_that_of_the_newest_sheet_up_to_the_day() -> None:
     lives = iron("120", "220")
-    assert (on_day(lives, 1).row.measured, on_day(lives, 1).row.severity) == (120, "alert")
-    assert (on_day(lives, 2).row.measured, on_day(lives, 2).row.severity) == (220, "alarm")
+    assert (on_day(lives, 1).row.measured, on_day(lives, 1).row.severity) == (Decimal(120), "alert")
+    assert (on_day(lives, 2).row.measured, on_day(lives, 2).row.severity) == (Decimal(220), "alarm")
 
 
 def test_a_finding_whose_values_went_to_another_is_joined_to_that() -> None:
