@@ -162,10 +162,23 @@ def test_the_trends_of_an_engine_no_task_measures_by_hours_say_so(ctx: Context) 
     assert rows[-1].ahead is None
 
 
-def test_the_trends_of_a_line_that_is_unset_or_done_since_without_a_sheet_say_so(ctx: Context) -> None:
+def test_the_trends_of_a_line_that_is_unset_say_so(ctx: Context) -> None:
     take(yard_with_valves(ctx), *FOUND_IN, when="cold")
+    assert "Not projected: Lash is unset." in said_of_first_point(ctx)
+
+
+def said_of_first_point(ctx: Context) -> str:
     with ctx.read() as connection:
-        assert "Not projected: Lash is unset." in full_page(connection, "P-01", TODAY).lash.rows[0].said
+        return full_page(connection, "P-01", TODAY).lash.rows[0].said
+
+
+def test_the_trends_of_work_done_since_without_a_sheet_say_so(ctx: Context) -> None:
+    engine(ctx, "P-01", meter=["hours"], cylinders=2, **LASH)
+    reading(ctx, "P-01", "2026-04-01", "1400")
+    task(ctx, "P-01", "Gap", every=["500h"], work="lash")
+    take(ctx, *FOUND_IN, on="2026-04-01", when="cold")
+    log(ctx, "2026-05-01", "Gap", at=["1500h"])
+    assert "Not projected: Gap was done since without a sheet." in said_of_first_point(ctx)
 
 
 def test_facts_of_an_engine_hold_a_wear_for_each_point(ctx: Context) -> None:
