@@ -18,6 +18,7 @@ from fleetcare.operations.items import fit_engine
 from fleetcare.operations.listing import pausing_tasks
 from fleetcare.operations.log import Logged, record_work, refuse_future
 from fleetcare.operations.readings import item_of_reading, record_reading, restore_reading, void_reading
+from fleetcare.operations.sheet_report import report_logged
 from fleetcare.operations.spells import change_status, set_factor
 from fleetcare.operations.stored_words import (
     logged_words,
@@ -73,6 +74,14 @@ def enter_measured(
     entered = enter_work(session, draft, today, explained)
     if draft.sheet is None:
         raise SheetWanted(f"what was measured on {draft.tag} is not written down yet", "fill in the sheet", kind)
+    return entered
+
+
+def note_findings(session: "Session", entered: Entered, today: date) -> Entered:
+    """Add to what was stored what the rules find on the sheet that came along, a sentence each."""
+    report = report_logged(session.connection(), entered.logged, today)
+    for one in report.findings if report is not None else ():
+        entered.notes.append(f"Found: {one.row.severity} {one.row.cause}, {one.row.subject}; 3 shows its working.")
     return entered
 
 

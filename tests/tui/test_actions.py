@@ -9,11 +9,13 @@ from fleetcare.tui.frame import FramedScreen
 from fleetcare.tui.screens.due import DueScreen
 from fleetcare.tui.screens.engines import EnginesScreen
 from fleetcare.tui.screens.entry import EntryScreen
+from fleetcare.tui.screens.findings import FindingScreen, FindingsScreen
 from fleetcare.tui.screens.form import FormScreen
 from fleetcare.tui.screens.item import ItemScreen
 from fleetcare.tui.screens.keys import KeysScreen
 from fleetcare.tui.screens.more import MoreScreen
 from fleetcare.tui.screens.narrow import NarrowScreen
+from fleetcare.tui.screens.rules import RuleScreen, RulesScreen
 from fleetcare.tui.screens.sheet import SheetScreen
 from fleetcare.tui.screens.sums import SumScreen, SumsScreen
 from fleetcare.tui.screens.tasks import TasksScreen
@@ -24,11 +26,15 @@ SCREENS = (
     DueScreen,
     EnginesScreen,
     EntryScreen,
+    FindingScreen,
+    FindingsScreen,
     FormScreen,
     ItemScreen,
     KeysScreen,
     MoreScreen,
     NarrowScreen,
+    RuleScreen,
+    RulesScreen,
     SheetScreen,
     SumScreen,
     SumsScreen,

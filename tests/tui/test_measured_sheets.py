@@ -44,6 +44,7 @@ async def test_twelve_values_of_compression_take_one_key_beyond_each(opened: Ope
         assert line_with(pilot, "found: alarm leaking valves at cylinder 3")
         await press(pilot, "ctrl+s")
         assert isinstance(pilot.app.screen, DueScreen)
+        assert "Found: alarm leaking valves, cylinder 3; 3 shows its working." in said(pilot)
     assert rows(bench, "select count(*), min(unit), max(unit) from sheet_value") == [(12, "bar", "bar")]
 
 

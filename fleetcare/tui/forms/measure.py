@@ -26,9 +26,9 @@ def _storing(kind: str) -> "Callable[[Session, Subject, MeasureDraft, date, Said
     """Give what stores a sheet of a kind."""
 
     def store(session: "Session", subject: Subject, draft: "MeasureDraft", today: date, said: Said) -> "Entered":
-        from fleetcare.operations.entering import enter_measured
+        from fleetcare.operations.entering import enter_measured, note_findings
 
-        return enter_measured(session, draft, kind, today, said.get("at"))
+        return note_findings(session, enter_measured(session, draft, kind, today, said.get("at")), today)
 
     return store
 

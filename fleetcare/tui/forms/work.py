@@ -41,9 +41,9 @@ def _log_draft() -> "type[Draft]":
 
 
 def _log(session: "Session", subject: Subject, draft: "LogDraft", today: date, said: Said) -> "Entered":
-    from fleetcare.operations.entering import enter_work
+    from fleetcare.operations.entering import enter_work, note_findings
 
-    return enter_work(session, draft, today, said.get("at"))
+    return note_findings(session, enter_work(session, draft, today, said.get("at")), today)
 
 
 def _log_start(facts: "FormFacts", subject: Subject, on: date) -> Mapping[str, str]:
