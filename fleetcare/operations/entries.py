@@ -1,4 +1,4 @@
-"""Chains of log entries: which entry corrects which."""
+"""Chains of log entries: which entry corrects which, and which sheets that leaves."""
 
 from typing import TYPE_CHECKING
 
@@ -6,6 +6,13 @@ from fleetcare.operations.rows import fetch
 
 if TYPE_CHECKING:
     from sqlalchemy import Connection
+
+
+SHEET_COUNTS = (
+    "not entry.is_void and not exists (select 1 from log_entry later where later.supersedes_id = entry.id)"
+    " and sheet.taken_on <= :on"
+)
+"""Of `sheet` and its `entry`: sheets up to a day whose entry was neither superseded nor voided."""
 
 
 def first_entries(connection: "Connection") -> dict[int, int]:

@@ -16,6 +16,7 @@ from fleetcare.db.chain import last_entry
 from fleetcare.domain.measured import MeasuredSheet
 from fleetcare.errors import Refused
 from fleetcare.operations.entries import first_entries, first_of
+from fleetcare.operations.families import Families
 from fleetcare.operations.judged_rows import KEEP, Kept, keep, kept_rows, sheet_owners
 from fleetcare.operations.judged_touched import touched
 from fleetcare.operations.lives_json import FORM, lives_of, lives_text
@@ -76,9 +77,9 @@ def judge_anew(
     """Judge every engine that was ever measured by its sheets up to a day, whatever is kept."""
     book, firsts = book_of(texts), first_entries(connection)
     lives: Lives = {}
-    owners = sheet_owners(connection)
+    owners, families = sheet_owners(connection), Families(connection, on)
     for ids in _batches(owners, progress):
-        for one in load_engine_sheets(connection, on, ids):
+        for one in load_engine_sheets(connection, on, ids, families=families):
             lives[one.item_id] = judge_lives(one, book, firsts)
     return lives
 
@@ -118,8 +119,9 @@ def _current(
     if any(row.seq < head for row in found.rows.values()):
         found.made += [row.at(head) for row in found.rows.values() if row.seq < head]
     firsts = first_entries(connection) if stale else {}
+    families = Families(connection, date.max)
     for some in _batches(stale, progress):
-        for one in load_engine_sheets(connection, date.max, some):
+        for one in load_engine_sheets(connection, date.max, some, families=families):
             row = _made(one, rows.get(one.item_id), texts, digest, firsts, head)
             found.rows[one.item_id] = row
             found.made.append(row)
@@ -147,7 +149,7 @@ def _facts_digest(found: EngineSheets, firsts: dict[int, int]) -> str:
     chains = [first_of(firsts, sheet.entry) for sheet in found.sheets]
     behind = found.background
     return _digest(
-        repr((found.engine, found.sheets, chains, behind.fresh, behind.pools)),
+        repr((found.engine, found.sheets, chains, behind.fresh, behind.family.mark)),
         repr((behind.lash, sorted(behind.holidays))),
     )
 

@@ -8,16 +8,21 @@ import json
 from collections.abc import Callable
 from typing import TYPE_CHECKING, Any
 
+from fleetcare.domain.measured import OIL
+from fleetcare.operations.families import Kin
 from fleetcare.operations.rows import fetch
 
 if TYPE_CHECKING:
     from sqlalchemy import Connection
 
-_OF_ITEM = frozenset({"engine", "lash_spec", "log_entry", "meter_fit", "sheet", "start_figure"})
+_OF_ITEM = frozenset({"lash_spec", "log_entry", "meter_fit", "start_figure"})
 """Rows that say whose they are in `item_id`."""
 
 _BY_METER = frozenset({"meter", "meter_fit", "reading", "reading_mark"})
 """Rows of a meter, which counts for whoever it is fitted to."""
+
+_OF_FAMILY = frozenset({"engine", "sheet", "sheet_value"})
+"""Rows that may touch engines like theirs: what is usual for these is told by the oil samples of all."""
 
 NEVER = frozenset(
     {
@@ -47,6 +52,7 @@ NEVER = frozenset(
 _EVERYBODY = 0
 _METERS = "select item_id from meter_fit where meter_id = :meter"
 _SHEET = "select item_id from sheet where id = :sheet"
+_HAS_OIL = f"select 1 from sheet where kind = '{OIL}' and {{}} = :number limit 1"
 _NEW_OIL = (
     "select 1 from sheet join sheet_value on sheet_value.sheet_id = sheet.id where sheet.entry_id = :entry"
     " and sheet_value.phase = 'new' limit 1"
@@ -57,28 +63,41 @@ _MARKED = "select meter_id from reading where id = :reading"
 def touched(connection: "Connection", since: int) -> Callable[[int, int], bool]:
     """Give a test of whether the engine of a number was touched after an entry of the ledger; none are before `since`."""
     newest: dict[int, int] = {}
+    kin = Kin(connection)
     rows = fetch(connection, "select seq, kind, payload from ledger where seq > :since order by seq", since=since)
     for seq, kind, payload in rows:
         if kind not in NEVER:
-            for item in _items(connection, kind, json.loads(payload)):
+            for item in _items(connection, kin, kind, json.loads(payload)):
                 newest[item] = seq
     return lambda item, seq: max(newest.get(item, 0), newest.get(_EVERYBODY, 0)) > seq
 
 
-def _items(connection: "Connection", kind: str, row: dict[str, Any]) -> set[int]:
+def _items(connection: "Connection", kin: Kin, kind: str, row: dict[str, Any]) -> set[int]:
     """Give the engines a row may touch."""
     if kind == "item":
         return {row["id"]}
-    if kind == "sheet_value":
-        is_new_oil = row["phase"] == "new"  # every engine with that grade may be held against it
-        return {_EVERYBODY} if is_new_oil else _of(connection, _SHEET, sheet=row["sheet_id"])
+    if kind in _OF_FAMILY:
+        return _of_family(connection, kin, kind, row)
     if kind == "log_entry" and row["supersedes_id"] is not None:
-        is_new_oil = bool(fetch(connection, _NEW_OIL, entry=row["supersedes_id"]))
-        return {_EVERYBODY} if is_new_oil else {row["item_id"]}
+        if fetch(connection, _NEW_OIL, entry=row["supersedes_id"]):
+            return {_EVERYBODY}
+        has_oil = fetch(connection, _HAS_OIL.format("entry_id"), number=row["supersedes_id"])
+        return {*kin.of(row["item_id"])} if has_oil else {row["item_id"]}
     items = {row["item_id"]} if kind in _OF_ITEM else set()
     if kind in _BY_METER:
         items |= _of(connection, _METERS, meter=_meter(connection, kind, row))
     return items if kind in _OF_ITEM | _BY_METER else {_EVERYBODY}
+
+
+def _of_family(connection: "Connection", kin: Kin, kind: str, row: dict[str, Any]) -> set[int]:
+    """Give the engines a nameplate, a sheet or a value may touch."""
+    if kind == "sheet":  # its values are stored along with it
+        return {*kin.of(row["item_id"])} if row["kind"] == OIL else {row["item_id"]}
+    if kind == "engine":  # nobody knows by now which family it left
+        has_oil = fetch(connection, _HAS_OIL.format("item_id"), number=row["item_id"])
+        return {_EVERYBODY} if has_oil else {row["item_id"]}
+    is_new_oil = row["phase"] == "new"  # every engine with that grade may be held against it
+    return {_EVERYBODY} if is_new_oil else _of(connection, _SHEET, sheet=row["sheet_id"])
 
 
 def _meter(connection: "Connection", kind: str, row: dict[str, Any]) -> int:

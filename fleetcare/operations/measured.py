@@ -8,10 +8,12 @@ from decimal import Decimal
 from typing import TYPE_CHECKING
 
 from fleetcare.domain.engines import Adjuster, Bridged, Layout, ValveTrain
-from fleetcare.domain.measured import LASH, MeasuredEngine, MeasuredSheet, SheetWord
+from fleetcare.domain.measured import LASH, OIL, MeasuredEngine, MeasuredSheet, SheetWord
 from fleetcare.domain.quantities import Kind
 from fleetcare.domain.sheet_kinds import GRADE, WORDS
 from fleetcare.domain.sheets import Judgement, LashSpec, Phase, Sheet, SheetValue, spec_on
+from fleetcare.operations.entries import SHEET_COUNTS
+from fleetcare.operations.families import Families, grade_key
 from fleetcare.operations.lash_specs import USUAL_VALVES, specs_of
 from fleetcare.operations.load import entry_lives, load_counters, own_readings
 from fleetcare.operations.rows import Row, day, fetch, figure, known_day
@@ -22,12 +24,6 @@ from fleetcare.rules.lash_points import banks, lash_points
 
 if TYPE_CHECKING:
     from sqlalchemy import Connection
-
-_COUNTS = (
-    "not entry.is_void and not exists (select 1 from log_entry later where later.supersedes_id = entry.id)"
-    " and sheet.taken_on <= :on"
-)
-"""Sheets up to a day whose entry was neither superseded nor voided."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -55,12 +51,18 @@ def measured_sheet(sheet: Sheet, engine_hours: Decimal | None = None) -> Measure
 
 
 def load_engine_sheets(
-    connection: "Connection", on: date, ids: Sequence[int] | None = None, newest: tuple[date, int] | None = None
+    connection: "Connection",
+    on: date,
+    ids: Sequence[int] | None = None,
+    newest: tuple[date, int] | None = None,
+    families: Families | None = None,
 ) -> list[EngineSheets]:
     """Load engines (all that have a sheet, or those of some ids) with their sheets, in the order of tags, seen on a day.
 
-    Sheets after `newest`, the day and the entry of one, are left out.
+    Sheets after `newest`, the day and the entry of one, are left out. Whoever loads many engines in parts hands the same
+    `families` of that day to each, so that no relative is loaded twice.
     """
+    families = families or Families(connection, on)
     plates = _load_plates(connection, ids)
     last = newest or (on, sys.maxsize)
     sheets = _load_sheets(connection, [row[0] for row in plates], on, last)
@@ -75,6 +77,7 @@ def load_engine_sheets(
         engine, train = _engine(row)
         background = Background(
             fresh=fresh.get(_grade(own, engine), ()),
+            family=families.of(row[0], max((sheet.on for sheet in own if sheet.kind == OIL), default=None)),
             lash=_judge_lash(own, train, specs.get(row[0], ()), conditions),
         )
         found.append(EngineSheets(row[0], engine, own, background))
@@ -132,7 +135,7 @@ def _load_sheets(
         connection,
         "select sheet.item_id, sheet.id, sheet.entry_id, sheet.kind, sheet.taken_on, sheet.conditions, sheet.gauge,"
         " sheet.received_on from sheet join log_entry entry on entry.id = sheet.entry_id"
-        f" where sheet.item_id in :ids and {_COUNTS} and (sheet.taken_on, sheet.entry_id) <= (:on, :entry)"
+        f" where sheet.item_id in :ids and {SHEET_COUNTS} and (sheet.taken_on, sheet.entry_id) <= (:on, :entry)"
         " order by sheet.taken_on, sheet.entry_id, sheet.id",
         ids=list(ids),
         on=last[0].isoformat(),
@@ -159,25 +162,20 @@ def _load_fresh(connection: "Connection", on: date) -> dict[str, tuple[SheetValu
         f" and word.quantity = '{GRADE}'), engine.oil_grade), fresh.quantity, fresh.value, fresh.unit, fresh.qualifier"
         " from sheet_value fresh join sheet on sheet.id = fresh.sheet_id"
         " join log_entry entry on entry.id = sheet.entry_id join engine on engine.item_id = sheet.item_id"
-        f" where fresh.phase = 'new' and {_COUNTS} order by sheet.taken_on, sheet.entry_id, fresh.id",
+        f" where fresh.phase = 'new' and {SHEET_COUNTS} order by sheet.taken_on, sheet.entry_id, fresh.id",
         on=on.isoformat(),
     )
     by_grade: dict[str, dict[str, SheetValue]] = {}
     for grade, quantity, value, unit, qualifier in rows:
         fresh = SheetValue(quantity, "", Phase.NEW, figure(value), None, None, unit, qualifier)
-        by_grade.setdefault(_key(grade), {})[quantity] = fresh
+        by_grade.setdefault(grade_key(grade), {})[quantity] = fresh
     return {grade: tuple(values.values()) for grade, values in by_grade.items() if grade}
 
 
 def _grade(sheets: Sequence[MeasuredSheet], engine: MeasuredEngine) -> str:
     """Give the grade in the engine: what its newest oil sheet that names one says, else its nameplate."""
     said = (word.text for sheet in reversed(sheets) for word in sheet.words if word.quantity == GRADE)
-    return _key(next(said, engine.oil_grade))
-
-
-def _key(grade: str) -> str:
-    """Give a grade as it compares: SAE 15W-40 and 15w40 are one."""
-    return grade.casefold().replace("sae", "").replace("-", "").replace(" ", "")
+    return grade_key(next(said, engine.oil_grade))
 
 
 def _judge_lash(

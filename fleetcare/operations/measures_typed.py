@@ -10,13 +10,14 @@ from dataclasses import dataclass, replace
 from datetime import date
 from typing import TYPE_CHECKING
 
-from fleetcare.domain.measured import COMPRESSION, LEAKDOWN, RUN, SPOT
+from fleetcare.domain.measured import COMPRESSION, LEAKDOWN, OIL, RUN, SPOT
 from fleetcare.domain.measures import QUANTITIES, read_unit
 from fleetcare.domain.quantities import plain
 from fleetcare.domain.sheet_kinds import At, Column, SheetKind, WordColumn
 from fleetcare.domain.sheets import CellKey, Phase, Sheet, SheetValue, Verdict
 from fleetcare.drafts.sheets import SheetIn, SheetRow
 from fleetcare.errors import FleetError, Refusals, Refused
+from fleetcare.operations.families import Families
 from fleetcare.operations.find import FoundItem
 from fleetcare.operations.findings import EngineFinding, book_in_force, engine_findings, judge_sheets
 from fleetcare.operations.measured import EngineSheets, load_engine_sheets, measured_sheet
@@ -26,6 +27,7 @@ from fleetcare.operations.sheets_load import load_sheets
 from fleetcare.operations.sheets_values import SaidDoubt
 from fleetcare.rules.explain_measured import MeasuredRow as MeasuredRow
 from fleetcare.rules.explain_measured import measured_rows
+from fleetcare.rules.judge_engine import Background
 from fleetcare.rules.judging.applies import rules_for
 from fleetcare.rules.sheet_complete import why_incomplete
 from fleetcare.rules.sheet_doubts import doubt_measure, say_measure_doubt
@@ -92,11 +94,18 @@ def open_measures(
     values = [value for sheet in before for value in sheet.values]
     return OpenMeasures(
         form=form,
-        found=replace(found, sheets=kept),
+        found=replace(found, sheets=kept, background=_beside(connection, found, kind, on)),
         last={key_of(value): text_of(value) for value in values},
         units={value.quantity: value.unit for value in values if value.unit},
         stored=stored,
     )
+
+
+def _beside(connection: "Connection", found: EngineSheets, kind: str, on: date) -> Background:
+    """Give what is known beside the sheet filled in, its family up to the day of it."""
+    if kind != OIL:
+        return found.background
+    return replace(found.background, family=Families(connection, on).of(found.item_id, on))
 
 
 def key_of(value: SheetValue) -> CellKey:

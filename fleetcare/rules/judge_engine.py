@@ -9,14 +9,14 @@ from dataclasses import dataclass, field, replace
 from datetime import date
 
 from fleetcare.domain.findings import Finding
-from fleetcare.domain.measured import NO_POOLS, MeasuredEngine, MeasuredSheet, Pools
+from fleetcare.domain.measured import MeasuredEngine, MeasuredSheet
 from fleetcare.domain.rule_book import Pattern, RuleBook
 from fleetcare.domain.sheets import Judgement, SheetValue
 from fleetcare.rules.findings import merge
 from fleetcare.rules.judging.applies import rules_for
 from fleetcare.rules.judging.facts import MeasuredFacts
 from fleetcare.rules.judging.judge import JudgedSheet, judge, judge_sheet
-from fleetcare.rules.judging.pools import own_pools
+from fleetcare.rules.judging.pools import NO_FAMILY, Family, own_pools, pools_for
 
 
 @dataclass(frozen=True, slots=True)
@@ -24,7 +24,7 @@ class Background:
     """What is known beside the sheets of an engine; see `MeasuredFacts`. Its own pool is told by the sheets themselves."""
 
     fresh: tuple[SheetValue, ...] = ()
-    pools: Pools = NO_POOLS
+    family: Family = NO_FAMILY
     lash: Mapping[int, tuple[Judgement, ...]] = field(default_factory=dict)
     holidays: frozenset[date] = frozenset()
 
@@ -44,7 +44,7 @@ def judge_engine(
     by_kind: dict[str, list[MeasuredSheet]] = {}
     for sheet in sorted(sheets, key=lambda one: (one.on, one.entry)):
         by_kind.setdefault(sheet.kind, []).append(sheet)
-    facts = [_facts(kept, engine, background) for kept in by_kind.values()]
+    facts = [facts_of(kept, engine, background) for kept in by_kind.values()]
     rules = rules_for(book, engine)
     single = [rule for rule in rules if not isinstance(rule.shape, Pattern)]
     alone = {one.sheet.kind: judge(single, one) for one in facts} if len(facts) > 1 else {}
@@ -57,7 +57,7 @@ def judge_engine(
     return JudgedEngine(merge(engine.tag, signals), judged)
 
 
-def _facts(sheets: Sequence[MeasuredSheet], engine: MeasuredEngine, background: Background) -> MeasuredFacts:
+def facts_of(sheets: Sequence[MeasuredSheet], engine: MeasuredEngine, background: Background) -> MeasuredFacts:
     """Give what the newest of some sheets of a kind, oldest first, is judged by; its own pool is that of those before."""
     *_, own = own_pools(sheets)
     return MeasuredFacts(
@@ -65,7 +65,7 @@ def _facts(sheets: Sequence[MeasuredSheet], engine: MeasuredEngine, background: 
         sheet=sheets[-1],
         earlier=tuple(sheets[:-1]),
         fresh=background.fresh,
-        pools=replace(background.pools, own=own),
+        pools=pools_for(sheets[-1], own, background.family),
         lash=background.lash,
         holidays=background.holidays,
     )

@@ -19,7 +19,7 @@ from fleetcare.rules.judge_engine import Background
 from fleetcare.rules.judging.facts import MeasuredFacts
 from fleetcare.rules.judging.judge import tell
 from fleetcare.rules.judging.patterns import match_patterns, may_match
-from fleetcare.rules.judging.pools import own_pools
+from fleetcare.rules.judging.pools import own_pools, pools_for
 from fleetcare.rules.judging.screen import Screened, screened
 from fleetcare.rules.judging.values import HELD, LEAK, PRESSURE, SUPPLY, WET_GAIN
 from fleetcare.rules.judging.words import says
@@ -83,7 +83,7 @@ def judge_history(
             sheet=sheet,
             earlier=_earlier(walk.facts.get(sheet.kind)),
             fresh=background.fresh,
-            pools=replace(background.pools, own=pool),
+            pools=pools_for(sheet, pool, background.family),
             lash=background.lash,
             holidays=background.holidays,
         )

@@ -137,7 +137,7 @@ def test_after_every_kind_of_write_what_is_read_is_what_judging_anew_gives(yard:
 
 
 def test_every_table_is_known_to_touch_an_engine_or_never_to() -> None:
-    touching = judged_touched._OF_ITEM | judged_touched._BY_METER | {"item", "sheet_value"}
+    touching = judged_touched._OF_ITEM | judged_touched._BY_METER | judged_touched._OF_FAMILY | {"item"}
     assert not touching & judged_touched.NEVER
     everybody = {"setting"}
     assert set(metadata.tables) == touching | judged_touched.NEVER | everybody | {"ledger", *DERIVED}

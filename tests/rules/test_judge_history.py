@@ -3,7 +3,7 @@
 from datetime import date
 from decimal import Decimal
 
-from fleetcare.domain.measured import NO_POOLS, MeasuredSheet, Pools
+from fleetcare.domain.measured import MeasuredSheet
 from fleetcare.domain.rule_book import Bounds, Method, Pool, Rule, Statistical
 from fleetcare.rulebook.rules import rule_book
 from fleetcare.rules.judge_engine import Background, judge_engine
@@ -131,8 +131,7 @@ def test_each_sample_is_held_against_those_before_it_alone() -> None:
     usual = a_rule(shape=Statistical(Pool.OWN, Method.ROBUST, 3), high=type(IRON.high)(beyond("3")))
     figures = ("10", "11", "12", "50", "10")
     sheets = tuple(oil(50 - 10 * place, Fe=text) for place, text in enumerate(figures))
-    family = Background(pools=Pools(family=NO_POOLS.family))
-    history = judge_history(sheets, ENGINE, (usual,), family)
+    history = judge_history(sheets, ENGINE, (usual,), Background())
     assert [bool(standing.findings) for standing in history] == [False, False, False, True, False]
     assert history[0].sheet.on < ON
     assert isinstance(IRON.shape, Bounds)

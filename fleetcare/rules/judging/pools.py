@@ -1,14 +1,59 @@
-"""What an engine's own earlier oil samples say is usual: plain figures only, each in the unit of its quantity."""
+"""What earlier oil samples say is usual, an engine's own and those of engines like it: plain figures, in their own units."""
 
-from collections.abc import Iterable, Iterator, Mapping
+from collections.abc import Iterable, Iterator, Mapping, Sequence
+from dataclasses import dataclass
+from datetime import date
 from decimal import Decimal
+from itertools import takewhile
+from typing import NamedTuple
 
-from fleetcare.domain.measured import OIL, MeasuredSheet
+from fleetcare.domain.measured import OIL, MeasuredSheet, Pools
 from fleetcare.domain.measures import QUANTITIES, can_convert, exactly
 from fleetcare.domain.sheets import Phase
 from fleetcare.rules.judging.spans import decimal
 
 Pool = Mapping[str, tuple[Decimal, ...]]
+
+MOST_OF_FAMILY = 200
+"""Samples of relatives, the newest: enough for the limits, few enough that they tell of the oil and the work of today."""
+
+
+class Sample(NamedTuple):
+    """The plain figures of an oil sample, by quantity, in the unit of the quantity: of which engine, taken when."""
+
+    engine: int
+    on: date
+    figures: Mapping[str, Decimal]
+
+
+@dataclass(frozen=True, slots=True)
+class Family:
+    """The oil samples of a family of engines, oldest first, as its member `own` sees those of the others.
+
+    `mark` is another one wherever the samples are others.
+    """
+
+    samples: Sequence[Sample] = ()
+    own: int = 0
+    mark: str = ""
+
+    def before(self, on: date) -> Pool:
+        """Give the figures of the newest samples of the others before a day, by quantity."""
+        earlier = takewhile(lambda sample: sample.on < on, self.samples)
+        others = [sample.figures for sample in earlier if sample.engine != self.own][-MOST_OF_FAMILY:]
+        pool: dict[str, list[Decimal]] = {}
+        for figures in others:
+            for quantity, figure in figures.items():
+                pool.setdefault(quantity, []).append(figure)
+        return {quantity: tuple(figures) for quantity, figures in pool.items()}
+
+
+NO_FAMILY = Family()
+
+
+def pools_for(sheet: MeasuredSheet, own: Pool, family: Family) -> Pools:
+    """Give what a sheet is held against: its engine's own samples before it, and those of its family, for oil alone."""
+    return Pools(own, family.before(sheet.on) if sheet.kind == OIL else {})
 
 
 def own_pools(sheets: Iterable[MeasuredSheet]) -> Iterator[Pool]:
@@ -22,13 +67,17 @@ def own_pools(sheets: Iterable[MeasuredSheet]) -> Iterator[Pool]:
                 pool[quantity] = (*pool.get(quantity, ()), figure)
 
 
+def plain_figure(quantity: str, value: Decimal | None, unit: str) -> Decimal | None:
+    """Give a figure in the unit of its quantity, None where it does not convert, or there is none."""
+    into = QUANTITIES[quantity].unit
+    if value is None or unit == into:
+        return value
+    return decimal(exactly(value, unit, into)) if can_convert(unit, into) else None
+
+
 def _figures(sheet: MeasuredSheet) -> Iterator[tuple[str, Decimal]]:
     for value in sheet.values:
-        into = QUANTITIES[value.quantity].unit
         is_plain = not value.qualifier and value.phase is Phase.NONE
-        if not is_plain or value.value is None:
-            continue
-        if value.unit == into:
-            yield value.quantity, value.value
-        elif can_convert(value.unit, into):
-            yield value.quantity, decimal(exactly(value.value, value.unit, into))
+        figure = plain_figure(value.quantity, value.value, value.unit) if is_plain else None
+        if figure is not None:
+            yield value.quantity, figure

@@ -4,14 +4,16 @@ A glance takes figures as floats and keeps well clear of every limit; whatever i
 it never decides anything: the signals of a sheet are the same with it and without.
 """
 
-from collections.abc import Sequence
+from collections.abc import Iterable, Sequence
 from dataclasses import dataclass
+from decimal import Decimal
 from fractions import Fraction
 from functools import lru_cache
+from itertools import islice
 from typing import NamedTuple
 
 from fleetcare.domain.measured import MeasuredSheet
-from fleetcare.domain.measures import can_convert, exactly
+from fleetcare.domain.measures import QUANTITIES, can_convert, exactly
 from fleetcare.domain.rule_book import (
     AgainstSheet,
     Basis,
@@ -20,6 +22,7 @@ from fleetcare.domain.rule_book import (
     By,
     Change,
     Limits,
+    Method,
     Pool,
     Rate,
     Rule,
@@ -80,11 +83,30 @@ class Screened:
                 return not _has_hours(facts.sheet, shape)
             case Statistical():
                 pool = facts.pools.own if shape.pool is Pool.OWN else facts.pools.family
-                return len(pool.get(rule.quantity, ())) < shape.least_samples
+                samples = pool.get(rule.quantity, ())
+                return len(samples) < shape.least_samples or _is_usual(_in_unit(seen, rule.unit), samples, shape, rule)
         return False
 
     def _all_within(self, figures: Sequence[tuple[float, float]] | None) -> bool:
         return figures is not None and all(high > self.above and low < self.below for low, high in figures)
+
+
+def _is_usual(
+    figures: Sequence[tuple[float, float]] | None, samples: Sequence[Decimal], shape: Statistical, rule: Rule
+) -> bool:
+    """Whether more samples than lie above any percentile of a rule reach every figure, so that none is beyond it."""
+    percents = _limits(rule.high)
+    if shape.method is not Method.PERCENTILE or rule.low or not percents or not figures:
+        return False
+    if rule.unit != QUANTITIES[rule.quantity].unit:
+        return False
+    enough = len(samples) - int(min(percents) / 100 * (len(samples) + 1) - _CLEARLY) + 1
+    return all(_reach(samples, high, enough) for _, high in figures)
+
+
+def _reach(samples: Iterable[Decimal], figure: float, enough: int) -> bool:
+    """Whether enough samples reach a figure."""
+    return len(list(islice((True for sample in samples if sample >= figure), enough))) == enough
 
 
 def screened(rule: Rule) -> Screened:
