@@ -74,11 +74,11 @@ def _json(rows: "Sequence[FindingRecord]") -> str:
 
 def _table(rows: "Sequence[FindingRecord]") -> str:
     """Give each finding as a block of its own: a head line, then what it rests on, line by line."""
-    blocks = ["\n".join(_block(row)) for row in rows]
+    blocks = [_block(row) for row in rows]
     return "\n\n".join(blocks or ["No findings."]) + f"\n\n{GENERAL}\n"
 
 
-def _block(row: "FindingRecord") -> list[str]:
+def _block(row: "FindingRecord") -> str:
     from fleetcare.operations.finding_rows import say_figures
 
     lines = [
@@ -95,7 +95,7 @@ def _block(row: "FindingRecord") -> list[str]:
         ("caution", row.caution.removesuffix(GENERAL).rstrip()),
     ]
     head = f"{row.id}  {row.engine}, {row.subject}: {row.cause} ({row.severity}, {row.state})"
-    return [output.clean(head), *(f"  {label:<11}  {output.clean(text)}" for label, text in lines if text)]
+    return f"{output.clean(head)}\n{output.labelled([line for line in lines if line[1]], indent='  ')}"
 
 
 _RENDER = {"table": _table, "csv": _csv, "json": _json}

@@ -80,6 +80,22 @@ def table(headers: Sequence[str], rows: Iterable[Sequence[Any]], width: int | No
     return "\n".join(line.rstrip() for line in lines)
 
 
+def labelled(labels: Iterable[tuple[str, str]], indent: str = "", width: int | None = None) -> str:
+    """Give texts with a label in front of each, one under the other; too long ones go on under their own beginning.
+
+    `width` is that of the terminal by default; where stdout is no terminal nothing is wrapped.
+    """
+    shown = [(label, clean(text)) for label, text in labels]
+    widest = max((_columns(label) for label, _ in shown), default=0)
+    hang = indent + " " * (widest + len(_GAP))
+    room = max((_terminal_width() if width is None else width) - len(hang), 2 * _NARROWEST)
+    lines = []
+    for label, text in shown:
+        first, *rest = [text] if _columns(text) <= room else textwrap.wrap(text, room)
+        lines += [f"{indent}{label:<{widest}}{_GAP}{first}", *(f"{hang}{line}" for line in rest)]
+    return "\n".join(line.rstrip() for line in lines)
+
+
 def json_text(value: Any) -> str:
     """Give one JSON value, figures unrounded (whole Decimals as integers), dates as ISO text, ending in a newline."""
     text = json.dumps(value, ensure_ascii=False, allow_nan=False, indent=2, default=_json_value)

@@ -105,5 +105,4 @@ def _counted(row: "RuleRow") -> str:
 
 def _whole(row: "RuleRow") -> str:
     labels = [(name.replace("_", " "), text) for name, text in asdict(row).items() if text]
-    wide = max(len(label) for label, _ in labels)
-    return "\n".join([*(f"{label:<{wide}}  {output.clean(text)}" for label, text in labels), "", GENERAL])
+    return f"{output.labelled(labels)}\n\n{GENERAL}"

@@ -162,3 +162,10 @@ def test_an_out_file_that_is_a_folder_is_refused(tmp_path: Path) -> None:
 def test_a_device_is_written_to_and_not_replaced() -> None:
     output.deliver("x", os.devnull)
     assert not Path(os.devnull).is_file()
+
+
+def test_labelled_texts_stand_under_each_other_and_go_on_under_their_own_beginning() -> None:
+    told = output.labelled([("a", "one two three four five"), ("longer", "x\ny")], indent="  ", width=32)
+    assert told == "  a       one two three four\n          five\n  longer  x\\ny"
+    assert output.labelled([("a", "one two three")]) == "a  one two three"
+    assert output.labelled([]) == ""
