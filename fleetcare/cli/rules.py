@@ -17,6 +17,9 @@ if TYPE_CHECKING:
     from fleetcare.operations.shop_rules import Rejudged
 
 
+_FEW = 8  # tags that still fit on a line
+
+
 def add_commands(commands: Commands) -> None:
     """Add `rules`."""
     rules = commands.add_parser("rules", help="the rules of measurement: limits, source, which engines each judges")
@@ -92,15 +95,20 @@ def _count(number: int, what: str) -> str:
 
 
 def _table(rows: "Sequence[RuleRow]") -> str:
-    table = output.table(
-        ("rule", "state", "sheets", "judges", "limits", "engines"),
-        [[row.id, row.state, row.kinds, row.judges, row.limits, _counted(row)] for row in rows],
-    )
-    return f"{table}\n\n{GENERAL}"
+    """Give each rule as a block: what it judges, its limits, for which engines, and where they are from."""
+    return "\n\n".join([*map(_block, rows), GENERAL])
 
 
-def _counted(row: "RuleRow") -> str:
-    return str(len(row.engines.split(", "))) if row.engines else ""
+def _block(row: "RuleRow") -> str:
+    lines = [("limits", row.limits), ("engines", _judged(row)), ("because", row.because), ("source", row.source)]
+    head = f"{row.id}  {row.kinds}: {row.judges} ({row.state}, {row.origin})"
+    return f"{output.clean(head)}\n{output.labelled([line for line in lines if line[1]], indent='  ')}"
+
+
+def _judged(row: "RuleRow") -> str:
+    """Name the engines a rule judges, or say how many they are where that would be a long list."""
+    tags = row.engines.split(", ") if row.engines else []
+    return row.engines if 0 < len(tags) <= _FEW else f"{len(tags)} engines" if tags else "none"
 
 
 def _whole(row: "RuleRow") -> str:

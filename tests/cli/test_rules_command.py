@@ -3,6 +3,7 @@
 import json
 from collections.abc import Callable
 from pathlib import Path
+from typing import Any
 
 import pytest
 
@@ -56,20 +57,28 @@ def use(yard: Runner, name: str) -> str:
     return ran.out
 
 
-def rules(yard: Runner) -> dict[str, dict[str, str]]:
+def rules(yard: Runner) -> dict[str, dict[str, Any]]:
     """Every rule by id."""
     return {row["id"]: row for row in json.loads(yard("rules", "--json").out)}
 
 
-def test_every_rule_is_listed_with_its_limits_and_how_many_engines_it_judges(yard: Runner) -> None:
-    ran = yard("rules")
-    (line,) = [line for line in ran.out.splitlines() if line.startswith("spot-coolant ")]
-    assert line.split("  ")[0] == "spot-coolant"
-    assert "in force" in line
-    assert "alert above 100 °C, alarm above 110 °C" in line
-    assert line.endswith("  2")
-    (preset,) = [line for line in ran.out.splitlines() if line.startswith("compression-s10 ")]
-    assert "preset, not chosen" in preset
+def test_every_rule_is_listed_with_its_limits_its_source_and_the_engines_it_judges(yard: Runner) -> None:
+    blocks = yard("rules").out.split("\n\n")
+    assert (
+        "spot-coolant  spot, run: coolant temperature (in force, shipped)\n"
+        "  limits   alert above 100 °C, alarm above 110 °C\n"
+        "  engines  G-01, P-01\n"
+        "  source   common practice; the maker's figure comes first"
+    ) in blocks
+    (preset,) = [block for block in blocks if block.startswith("compression-s10  ")]
+    assert "(preset, not chosen, shipped)\n" in preset
+    assert "  engines  none\n" in preset
+    assert len(blocks) == len(rules(yard)) + 1
+
+
+def test_many_engines_are_counted(yard: Runner, monkeypatch: pytest.MonkeyPatch) -> None:
+    monkeypatch.setattr("fleetcare.cli.rules._FEW", 1)
+    assert "  engines  2 engines\n" in yard("rules").out
 
 
 def test_one_rule_is_shown_whole_whatever_its_case(yard: Runner) -> None:
@@ -127,7 +136,8 @@ def test_a_rule_switched_off_takes_its_findings_along_and_an_answered_one_is_sti
         f"Rules lax in force; 1 engine judged anew.\nWent: {HOT}  P-01, the engine: hot engine (alert, accepted)\n"
     )
     row = rules(yard)["spot-coolant"]
-    assert (row["state"], row["because"], row["engines"]) == ("switched off", "no gauge can be trusted", None)
+    assert (row["state"], row["because"]) == ("switched off", "no gauge can be trusted")
+    assert row["engines"] is None
     (gone,) = json.loads(yard("findings", "--format", "json").out)
     assert (gone["id"], gone["state"]) == (HOT, "withdrawn by rules")
     assert gone["because"] == "it was answered by Fenn on 2026-05-01: known"
