@@ -167,7 +167,7 @@ def _newest_day(connection: "Connection") -> date:
     """Give the newest day anything judging looks at is dated: before it, less was known than what is kept rests on."""
     rows = fetch(
         connection,
-        'select max(coalesce((select max(taken_on) from sheet), ""), coalesce((select max("on") from reading), ""))',
+        "select max(coalesce((select max(taken_on) from sheet), ''), coalesce((select max(\"on\") from reading), ''))",
     )
     return known_day(rows[0][0]) if rows[0][0] else date.min
 
