@@ -22,6 +22,7 @@ from tempfile import TemporaryDirectory
 
 from fleetcare.context import Context
 from fleetcare.demo.build import build
+from fleetcare.operations.families import Families
 from fleetcare.operations.judged import judge_anew
 from fleetcare.operations.judged_rows import sheet_owners
 from fleetcare.operations.measured import load_engine_sheets
@@ -112,9 +113,9 @@ def _stored(value: float | str) -> tuple[str | None, str]:
 def load(context: Context) -> None:
     """Load all sheets as facts, in the same batches re-judging takes."""
     with context.read() as connection:
-        owners = sheet_owners(connection)
+        owners, families = sheet_owners(connection), Families(connection, ON)
         for begin in range(0, len(owners), _AT_ONCE):
-            load_engine_sheets(connection, ON, owners[begin : begin + _AT_ONCE])
+            load_engine_sheets(connection, ON, owners[begin : begin + _AT_ONCE], families=families)
 
 
 def rejudge(context: Context) -> None:
