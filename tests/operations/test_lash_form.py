@@ -7,10 +7,11 @@ import pytest
 
 from fleetcare.context import Context
 from fleetcare.domain.engines import Bridged, Layout, Side
-from fleetcare.domain.sheets import Phase
+from fleetcare.domain.sheets import CellKey, Phase
 from fleetcare.operations.find import find_item
+from fleetcare.operations.sheets_judge import JudgedRow
 from fleetcare.operations.sheets_load import LashForm, open_form
-from fleetcare.operations.sheets_typed import CellKey, JudgedRow, read_typed
+from fleetcare.operations.sheets_typed import read_typed
 from tests.operations.importing import engine
 from tests.operations.sheet_yard import FOUND_IN, LASH, take, yard_with_valves
 
