@@ -28,7 +28,7 @@ def say_report(report: "SheetReport") -> None:
     told = ", ".join(filter(None, taken))
     output.say(f"{report.title} of {report.tag} on {sheet.on}{f', {told}' if told else ''}.")
     if lash is not None:
-        _say_lash(lash)
+        _say_lash(lash, report.notes)
     else:
         _say_measures(report)
     for finding in report.findings:
@@ -37,10 +37,10 @@ def say_report(report: "SheetReport") -> None:
         output.say(f"Caution: {caution}")
 
 
-def _say_lash(judged: "JudgedSheet") -> None:
+def _say_lash(judged: "JudgedSheet", notes: Sequence[str]) -> None:
     output.say(f"Limits: {judged.limits}.")
     output.say(lash_table(judged))
-    for note in judged.notes():
+    for note in (*judged.notes(), *notes):
         output.say(f"Note: {note}.")
     output.say(f"{_say_counts([row.verdict for row in judged.rows])}{_say_out(judged)}.")
     if judged.defect():

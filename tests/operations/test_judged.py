@@ -12,15 +12,19 @@ from sqlalchemy import text
 
 from fleetcare.context import Context
 from fleetcare.db.chain import DERIVED
-from fleetcare.db.tables import metadata
+from fleetcare.db.tables import ShopRules, metadata
 from fleetcare.errors import Refused
 from fleetcare.operations import judged, judged_touched
+from fleetcare.operations.find import find_item
 from fleetcare.operations.finding_rows import finding_rows
 from fleetcare.operations.judged import finding_lives_on, judge_anew
 from fleetcare.operations.judged_rows import keep, kept_rows, sheet_owners
 from fleetcare.operations.measured import EngineSheets
+from fleetcare.operations.names import person_id
 from fleetcare.operations.rows import fetch
+from fleetcare.operations.sheet_report import last_report
 from fleetcare.operations.shop_book import shop_texts
+from fleetcare.operations.shop_rules import try_rules
 from fleetcare.operations.upkeep import check
 from tests.cli.conftest import set_up
 from tests.operations.importing import TODAY
@@ -221,15 +225,24 @@ def test_a_row_never_takes_the_place_of_one_that_holds_longer(yard: Context) -> 
 
 
 def test_rules_that_no_longer_fit_the_program_hinder_no_writing_and_are_said_to_whoever_asks(yard: Context) -> None:
-    with closing(sqlite3.connect(yard.path)) as file, file:
-        file.execute("insert into person (uid, recorded_at, name, name_key) values ('p', '2026-01-01', 'Old', 'old')")
-        file.execute(
-            "insert into shop_rules (uid, recorded_at, name, text, is_dropped, from_on, why, person_id)"
-            " select 'r', '2026-01-01', 'shop', '[[rule]]', 0, '2026-01-01', 'x', id from person where uid = 'p'"
+    with yard.write() as session:
+        by = person_id(session, "Old")
+        session.add(
+            ShopRules(name="shop", text="[[rule]]", from_on=date(2026, 1, 1), why="then it did", person_id=by or 0)
         )
     set_up(yard.path, "measure compression P-01 fine.csv --on 2026-04-01")
     with yard.read() as connection, pytest.raises(Refused, match="shop, rule 1"):
         finding_lives_on(connection, TODAY)
+    with yard.read() as connection:
+        report = last_report(connection, find_item(connection, "P-01"), TODAY, "compression")
+        assert report is not None
+        assert report.notes[0].startswith(
+            "judged by the shipped rules alone, the shop's own do not fit them: shop, rule 1"
+        )
+        rejudged = try_rules(connection, Path("shop.toml"), TODAY)
+        assert rejudged.notes[0].startswith("the rules before did not fit this program, so nothing went: shop, rule 1")
+    set_up(yard.path, "rules --use shop.toml --why mended --by Fenn")
+    assert_holds(yard)
 
 
 def test_a_copy_of_the_file_brings_what_is_kept_along(
