@@ -76,6 +76,17 @@ def demo(tmp_path: Path) -> Context:
 
 
 @pytest.fixture
+def found(bench: Context, tmp_path: Path) -> Context:
+    """The bench with a cylinder of B-6 low, and a good compression of B-1."""
+    for tag, values in (("B-6", ["25", "25", "17", "25", "24", "25"]), ("B-1", ["9"])):
+        lines = [f"pressure,{number},dry,{value},bar" for number, value in enumerate(values, 1)]
+        sheet = tmp_path / f"{tag}.csv"
+        sheet.write_text("\n".join(["quantity,point,phase,value,unit", *lines]))
+        type_in(bench.path, "measure", "compression", tag, str(sheet), "--on", "2026-04-20", "--by", "Fenn")
+    return bench
+
+
+@pytest.fixture
 def db(made_yard: Path, tmp_path: Path) -> Path:
     """The small yard, of the test's own."""
     return Path(shutil.copy(made_yard, tmp_path / "yard.db"))

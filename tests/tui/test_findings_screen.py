@@ -12,18 +12,6 @@ from tests.tui.conftest import Opened, line_with, press, seen, type_in
 from tests.tui.sheets import said
 
 LARGE = (120, 40)
-LOW_THREE = ["25", "25", "17", "25", "24", "25"]
-
-
-@pytest.fixture
-def found(bench: Context, tmp_path: Path) -> Context:
-    """The bench with a cylinder of B-6 low, and a good compression of B-1."""
-    for tag, values in (("B-6", LOW_THREE), ("B-1", ["9"])):
-        lines = [f"pressure,{number},dry,{value},bar" for number, value in enumerate(values, 1)]
-        sheet = tmp_path / f"{tag}.csv"
-        sheet.write_text("\n".join(["quantity,point,phase,value,unit", *lines]))
-        type_in(bench.path, "measure", "compression", tag, str(sheet), "--on", "2026-04-20", "--by", "Fenn")
-    return bench
 
 
 async def test_a_finding_shows_whose_what_and_how_far(opened: Opened, found: Context) -> None:

@@ -102,6 +102,11 @@ SCREENS |= {
     "oil": _measured("o", *_OIL),
     "oil-large": _measured("o", *_OIL, size=LARGE),
 }
+SCREENS |= {
+    "findings": Picture(SMALL, ("3",), yard="found"),
+    "finding": Picture(SMALL, ("3", "enter"), yard="found"),
+    "rules": Picture(SMALL, ("4", "down"), yard="found"),
+}
 
 
 @pytest.mark.parametrize("name", SCREENS)
