@@ -1,10 +1,11 @@
 """What earlier oil samples say is usual, an engine's own and those of engines like it: plain figures, in their own units."""
 
+from bisect import bisect_left
 from collections.abc import Iterable, Iterator, Mapping, Sequence
 from dataclasses import dataclass
 from datetime import date
 from decimal import Decimal
-from itertools import takewhile
+from itertools import islice
 from typing import NamedTuple
 
 from fleetcare.domain.measured import OIL, MeasuredSheet, Pools
@@ -39,13 +40,34 @@ class Family:
 
     def before(self, on: date) -> Pool:
         """Give the figures of the newest samples of the others before a day, by quantity."""
-        earlier = takewhile(lambda sample: sample.on < on, self.samples)
-        others = [sample.figures for sample in earlier if sample.engine != self.own][-MOST_OF_FAMILY:]
-        pool: dict[str, list[Decimal]] = {}
-        for figures in others:
-            for quantity, figure in figures.items():
-                pool.setdefault(quantity, []).append(figure)
-        return {quantity: tuple(figures) for quantity, figures in pool.items()}
+        earlier = bisect_left(self.samples, on, key=lambda sample: sample.on)
+        others = (
+            sample.figures
+            for sample in map(self.samples.__getitem__, range(earlier - 1, -1, -1))
+            if sample.engine != self.own
+        )
+        return _Figures([*islice(others, MOST_OF_FAMILY)][::-1])
+
+
+class _Figures(Pool):
+    """The figures of some samples by quantity, put together when a quantity is asked for: few rules ask for few of them."""
+
+    def __init__(self, samples: Sequence[Mapping[str, Decimal]]) -> None:
+        self._samples = samples
+        self._asked: dict[str, tuple[Decimal, ...]] = {}
+
+    def __getitem__(self, quantity: str) -> tuple[Decimal, ...]:
+        if quantity not in self._asked:
+            self._asked[quantity] = tuple(figures[quantity] for figures in self._samples if quantity in figures)
+        if not self._asked[quantity]:
+            raise KeyError(quantity)
+        return self._asked[quantity]
+
+    def __iter__(self) -> Iterator[str]:
+        return iter(dict.fromkeys(quantity for figures in self._samples for quantity in figures))
+
+    def __len__(self) -> int:
+        return sum(1 for _ in self)
 
 
 NO_FAMILY = Family()
