@@ -30,6 +30,8 @@ class TrendRow:
     `verdict` is that of the `last` value, empty where there is none; `said` is all that is worth saying of it.
     `segments` are the values to draw, cut at every adjustment; `limits` those in force, each with its word, and
     `setting` what it is set to, with its word. `left_out` is how many values are not drawn, `ahead` is what is projected.
+    `bounds` are values only known to lie below, `fresh` what new oil had at each filling; no line leads through either.
+    `rate` is per 100 h; `unit` and `places` stand in the place of those of all where a row has its own.
     """
 
     name: str
@@ -44,6 +46,11 @@ class TrendRow:
     setting: tuple[float, str] | None = None
     left_out: int = 0
     ahead: Ahead | None = None
+    bounds: tuple[Dot, ...] = ()
+    fresh: tuple[Dot, ...] = ()
+    rate: str = ""
+    unit: str = ""
+    places: int = 0
 
 
 @dataclass(frozen=True, slots=True)
@@ -51,7 +58,8 @@ class Trends:
     """All subjects of one kind of sheet on one engine. What is drawn is in `unit`, with so many `places`.
 
     Along lie hours of life where `counts_hours`, else days (`date.toordinal`), up to `until`. Without rows `why_none`
-    says why, and what to do.
+    says why, and what to do. `is_adjusted` says that it is set now and then, as lash is.
+    With `begins` hours on the oil lie along, fill after fill, each from where it begins.
     """
 
     rows: tuple[TrendRow, ...] = ()
@@ -60,3 +68,5 @@ class Trends:
     counts_hours: bool = False
     until: float = 0
     why_none: str = ""
+    is_adjusted: bool = True
+    begins: tuple[float, ...] = ()

@@ -100,6 +100,8 @@ ACTIONS = (
     Action("item", "a", "answer('accept')", "accept", "live with the finding under the cursor", in_foot=False),
     Action("item", "y", "answer('follow-up')", "follow-up", "have something done about it", in_foot=False),
     Action("item", "g", "part('lash')", "lash", "show the gap at each valve over time; again for the next point"),
+    Action("item", "k", "part('compression')", "compression", "show each cylinder over time; again for the next"),
+    Action("item", "e", "part('oil')", "oil", "show what its oil samples said over time; again for the next"),
     Action("item", "w", "write('log')", "log", "log work done on it"),
     Action("item", "r", "write('reading')", "reading", "write down what its meter shows"),
     Action("item", "o", "write('defer')", "defer", "put off the line under the cursor", in_foot=False),

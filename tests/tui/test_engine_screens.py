@@ -68,8 +68,9 @@ async def test_history_keeps_what_was_corrected_readable(opened: Opened) -> None
 async def test_parts_are_a_letter_or_an_arrow_away(opened: Opened) -> None:
     async with opened("e") as pilot:
         for key, words in (
-            ("l", "DIAL"), ("h", "FIGURES"), ("left", "DIAL"), ("right", "FIGURES"), ("right", "is not known"),
-            ("right", "tag"), ("m", "SHOWN"), ("g", "is not known"),
+            ("l", "DIAL"), ("h", "FIGURES"), ("left", "DIAL"), ("right", "FIGURES"), ("right", "was found"),
+            ("right", "is not known"), ("right", "No compression"), ("right", "No oil sample"), ("right", "tag"),
+            ("m", "SHOWN"), ("g", "is not known"), ("k", "No compression"), ("e", "No oil sample"),
         ):  # fmt: skip
             await press(pilot, key)
             assert [line for line in seen(pilot) if words in line], key

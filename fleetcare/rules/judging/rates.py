@@ -5,7 +5,7 @@ rules/oil_rates.py, since the change that of rules/oil.py; with both, make-up ca
 known nothing is taken off, as the sources print absolute figures. Bounds such as "<1" tell no rate.
 
 Not across an oil change: the oil is another where its hours went down, or where it ran less than the engine did between
-the two. What top-up is large is common practice: a tenth of the sump.
+the two. Of a change at least the hours on the oil before are missing then, of inexact hours few: half of them decides. What top-up is large is common practice: a tenth of the sump.
 """
 
 from collections.abc import Sequence
@@ -53,7 +53,7 @@ def _of_oil(rule: Rule, shape: Rate, one: Measured, facts: MeasuredFacts) -> Fig
     then = before(rule.quantity, one, facts)
     sheet = _sheet_of(then, facts)
     now_at, then_at = _given(facts.sheet, HOURS_ON_OIL), _given(sheet, HOURS_ON_OIL)
-    if now_at < then_at or _ran_longer(facts.sheet, sheet, now_at - then_at):
+    if is_other_fill((sheet, then_at), (facts.sheet, now_at)):
         raise CannotTell("the oil was changed in between", one.point)
     now, was = _plain(one, rule.unit), _plain(then, rule.unit)
     first, second = (
@@ -115,11 +115,15 @@ def _sheet_of(then: Measured, facts: MeasuredFacts) -> MeasuredSheet:
     return next(sheet for sheet in facts.earlier if sheet.entry == then.evidence.sheet)
 
 
-def _ran_longer(now: MeasuredSheet, then: MeasuredSheet, on_oil: Decimal) -> bool:
-    """Whether the engine ran longer between two samples than the oil did."""
-    if now.engine_hours is None or then.engine_hours is None:
+def is_other_fill(then: tuple[MeasuredSheet, Decimal], now: tuple[MeasuredSheet, Decimal]) -> bool:
+    """Whether the oil was changed between two samples, each with the hours on its oil."""
+    (first, first_on_oil), (second, second_on_oil) = then, now
+    on_oil = second_on_oil - first_on_oil
+    if on_oil < 0:
+        return True
+    if first.engine_hours is None or second.engine_hours is None:
         return False
-    return now.engine_hours - then.engine_hours > on_oil
+    return second.engine_hours - first.engine_hours - on_oil > first_on_oil / 2
 
 
 def _top_up(sheet: MeasuredSheet, *, is_needed: bool) -> Decimal:

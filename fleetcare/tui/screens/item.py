@@ -75,6 +75,8 @@ class ItemScreen(WritingScreen):
             Vertical(LongList(HISTORY, lambda entry: entry.number), Detail(), id="history"),
             Vertical(LongList(FINDINGS, lambda row: row.id), Detail(), id="findings"),
             TrendPart("POINT", "lash"),
+            TrendPart("CYLINDER", "compression"),
+            TrendPart("OIL", "oil", has_rate=True),
         )
         for part in with_parts:
             part.display = part.id == self.part
@@ -102,7 +104,8 @@ class ItemScreen(WritingScreen):
         self.query_one("#lines LongList", LongList).show([Section("", found.lines)], "No tasks yet.")
         self.query_one("#history LongList", LongList).show([Section("", page.history)], "Nothing was logged yet.")
         self.query_one("#findings LongList", LongList).show(sections_of(found.findings), "Nothing was found so far.")
-        self.query_one("#lash", TrendPart).show(found.lash)
+        for part, trends in zip(TRENDS, (found.lash, found.measured.compression, found.measured.oil), strict=True):
+            self.query_one(f"#{part}", TrendPart).show(trends)
         self._plot()
         self._title()
 

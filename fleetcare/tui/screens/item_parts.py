@@ -23,8 +23,8 @@ if TYPE_CHECKING:
     from fleetcare.operations.life_plot import LifeCurve
     from fleetcare.operations.show import HistoryEntry, ReadingLine
 
-PARTS = ("plate", "meters", "lines", "history", "findings", "lash")
-TRENDS = ("lash",)
+PARTS = ("plate", "meters", "lines", "history", "findings", "lash", "compression", "oil")
+TRENDS = ("lash", "compression", "oil")
 """The parts that draw what was measured over time."""
 
 LINES = tuple(column for column in COLUMNS if column.title not in {"ENGINE", "SITE"})
@@ -66,10 +66,14 @@ class PartsBar(Widget):
             (title[0], "bold"), (title[1], "bold $error"), fit(self.rest, room) if room else "", "\n "
         )
         marked = {part: "bold reverse" if part == self.part else "bold" for part in PARTS}
+        has_room = sum(len(part) + 2 for part in PARTS) <= self.size.width
+        beside = " " if has_room else ""
         return Content.assemble(
             words,
             *(
-                Content.from_markup(f"[{style} @click=screen.part('{part}')] {part.capitalize()} [/]")
+                Content.from_markup(
+                    f"[{style} @click=screen.part('{part}')]{beside}{part.capitalize()}{beside}[/]{'' if has_room else ' '}"
+                )
                 for part, style in marked.items()
             ),
         )

@@ -1,0 +1,291 @@
+"""What compression and oil did over time: per cylinder, element or property every value in order, and its lines.
+
+Inputs are the sheets of one kind, oldest first. Figures are converted exactly into the unit of the newest one. Compression
+lies over the hours of life, drawn over days where nothing counts hours. Oil lies over the hours on the oil, begun anew at
+each oil change (reference: hours on oil, not life, as oil laboratories do), drawn fill after fill.
+
+Values of one gauge or laboratory, and of one fill of oil, make a line with a level of its own; another gauge is no trend.
+The slope is common to the lines (`rules/trends`). Not fitted is a bound ("<1", ND), a value of which it is not known where
+it lies, and oil that is not brought to what it would show without top-up: by the mass balance of `rules/oil`, which holds
+for what adds up in the oil or is used up in it; viscosity, pH and flash point do not mix so. Where fresh oil is not known
+metals and dirt count from 0, as the sources print absolute figures.
+"""
+
+from collections.abc import Hashable, Iterable, Mapping, Sequence
+from dataclasses import dataclass, replace
+from decimal import Decimal
+from enum import StrEnum
+from itertools import pairwise
+from statistics import median
+from typing import NamedTuple
+
+from fleetcare.domain.measured import OIL, MeasuredSheet
+from fleetcare.domain.measures import can_convert
+from fleetcare.domain.sheets import SheetValue
+from fleetcare.domain.trends import Point, Segment
+from fleetcare.rules.judging.facts import CannotTell
+from fleetcare.rules.judging.rates import is_other_fill
+from fleetcare.rules.judging.spans import decimal
+from fleetcare.rules.judging.values import HOURS_ON_OIL, TOP_UP, Measured, fresh_of, judged_phases, single, values_of
+from fleetcare.rules.oil import MOST_HOURS, TRUSTED_MAKE_UP, make_up_factor
+
+CONTAMINANTS = ("water", "fuel", "glycol", "soot", "insolubles", "Si", "Na", "K")
+PROPERTIES = ("kv100", "kv40", "tbn", "tan", "ph", "oxidation", "nitration", "flash_point")
+METALS = ("Fe", "Cr", "Al", "Cu", "Pb", "Sn", "Ni", "Ag", "V", "Ti", "Mn")
+ADDITIVES = ("B", "Mo", "Mg", "Ca", "Zn", "P", "Ba", "S")
+OIL_ORDER = (*CONTAMINANTS, *PROPERTIES, *METALS, *ADDITIVES)
+"""All a laboratory reports, in the order it is shown in."""
+
+_FROM_NOTHING = frozenset({*CONTAMINANTS, *METALS})
+_MIX_OTHERWISE = frozenset({"kv100", "kv40", "ph", "flash_point"})
+
+
+class Aside(StrEnum):
+    """Why a value is not fitted."""
+
+    BOUND = "a bound"
+    NO_HOURS = "no hours"
+    NO_HOURS_ON_OIL = "no hours on the oil"
+    NO_TOP_UP = "top-up not stated"
+    NO_SUMP = "sump not known"
+    NO_FRESH = "new oil not known"
+    TOPPED_UP = "topped up"
+
+
+class Break(StrEnum):
+    """Why a value has none before it on its line."""
+
+    FIRST = "first"
+    OTHER_GAUGE = "other gauge"
+    OTHER_FILL = "other fill"
+
+
+class Fill(NamedTuple):
+    """A fill of oil: the entry of its first sample, and the hours seen on the fills before it."""
+
+    first: int
+    begins: Decimal
+
+
+@dataclass(frozen=True, slots=True)
+class PastMeasure:
+    """A value with its sheet. `at` is where it is drawn, None where that is not known; `figure` is in the unit of the past.
+
+    Where an oil is drawn is its fill's beginning, which is the sum of the hours seen on the fills before, and its own hours.
+
+    A bound stands at its high end. `x` and `y` are where it is fitted and as what, None where `aside` says why it is not.
+    Values of one `line` can be compared: those of a gauge, or of a laboratory and a fill.
+    """
+
+    sheet: MeasuredSheet
+    measured: Measured
+    at: Decimal | None
+    figure: Decimal
+    line: tuple[Hashable, ...]
+    x: Decimal | None = None
+    y: Decimal | None = None
+    aside: Aside | None = None
+
+    @property
+    def is_bound(self) -> bool:
+        """Whether it is only known to lie below its figure."""
+        return self.measured.evidence.value.startswith(("<", "ND"))
+
+
+@dataclass(frozen=True, slots=True)
+class MeasuredPast:
+    """All values of a quantity at a point, oldest first, at least one. `fresh` is what new oil has, None where not known."""
+
+    quantity: str
+    point: str
+    unit: str
+    values: tuple[PastMeasure, ...]
+    fresh: Decimal | None = None
+
+    @property
+    def last(self) -> PastMeasure:
+        """The newest value."""
+        return self.values[-1]
+
+    @property
+    def lines(self) -> tuple[tuple[PastMeasure, ...], ...]:
+        """The values line by line, that of the newest last."""
+        lines: dict[tuple[Hashable, ...], list[PastMeasure]] = {}
+        for value in self.values:
+            lines[value.line] = [*lines.pop(value.line, []), value]
+        return tuple(tuple(line) for line in lines.values())
+
+    @property
+    def segments(self) -> tuple[Segment, ...]:
+        """What is fitted, line by line, that of the newest value last."""
+        return tuple(
+            Segment(tuple(Point(one.x, one.y) for one in line if one.x is not None and one.y is not None))
+            for line in self.lines
+        )
+
+    @property
+    def before(self) -> PastMeasure | Break:
+        """The value before the newest on its line, or why there is none."""
+        *_, line = self.lines
+        if len(line) > 1:
+            return line[-2]
+        if len(self.values) == 1:
+            return Break.FIRST
+        return Break.OTHER_GAUGE if self.values[-2].sheet.gauge != self.last.sheet.gauge else Break.OTHER_FILL
+
+    @property
+    def usual_gap(self) -> Decimal | None:
+        """The median x between two values of a line, None where no line has two."""
+        xs = [sorted(point.x for point in segment.points) for segment in self.segments]
+        gaps = [after - before for line in xs for before, after in pairwise(line)]
+        return median(gaps) if gaps else None
+
+
+def compression_pasts(
+    sheets: Sequence[MeasuredSheet], banks: Iterable[Iterable[int]], *, counts_hours: bool
+) -> list[MeasuredPast]:
+    """Give the past of each cylinder that was measured dry, as the engine stands; those not on the nameplate come last."""
+    known = [str(cylinder) for bank in banks for cylinder in bank]
+    seen = dict.fromkeys(one.point for sheet in sheets for one in values_of(sheet, "pressure"))
+    pasts = [_past(sheets, "pressure", point) for point in dict.fromkeys([*known, *seen])]
+    return [
+        replace(past, values=tuple(_over_life(one, counts_hours) for one in past.values))
+        for past in pasts
+        if past is not None
+    ]
+
+
+def oil_pasts(sheets: Sequence[MeasuredSheet], sump: Decimal | None, fresh: Sequence[SheetValue]) -> list[MeasuredPast]:
+    """Give the past of each thing a laboratory ever reported; `sump` is in L, `fresh` what new oil of the grade has."""
+    fills = fills_of(sheets)
+    pasts = []
+    for quantity in OIL_ORDER:
+        past = _past(sheets, quantity, "")
+        if past is not None:
+            new = fresh_of(past.last.sheet, fresh, quantity)
+            is_known = new is not None and new.span.is_known and can_convert(new.unit, past.unit)
+            past = replace(past, fresh=_figure(new, past.unit) if is_known and new is not None else None)
+            pasts.append(replace(past, values=tuple(_over_fill(one, past, fills, sump) for one in past.values)))
+    return pasts
+
+
+def hours_on_oil(sheet: MeasuredSheet) -> Decimal | None:
+    """Give the hours a sample's oil had run, None where the sheet states none that can be right."""
+    hours = _stated(sheet, HOURS_ON_OIL, "h")
+    return hours if hours is not None and 0 < hours <= MOST_HOURS else None
+
+
+def top_up(sheet: MeasuredSheet) -> Decimal | None:
+    """Give the litres topped up since the oil change, None where the sheet does not state them."""
+    return _stated(sheet, TOP_UP, "L")
+
+
+def start_ppm(past: MeasuredPast) -> Decimal | None:
+    """Give what the oil began with: as new oil has it, else none of what only comes in use; None where not known."""
+    return Decimal(0) if past.fresh is None and past.quantity in _FROM_NOTHING else past.fresh
+
+
+def mixes(past: MeasuredPast) -> bool:
+    """Whether the mass balance of topped-up oil holds for it."""
+    return past.quantity not in _MIX_OTHERWISE
+
+
+def _past(sheets: Sequence[MeasuredSheet], quantity: str, point: str) -> MeasuredPast | None:
+    """Give every value of a quantity at a point; those in a unit of another kind than the newest are left out."""
+    found = [
+        (sheet, one)
+        for sheet in sheets
+        for one in judged_phases(values_of(sheet, quantity), (), ())
+        if one.point == point
+    ]
+    if not found:
+        return None
+    unit = found[-1][1].unit
+    values = [
+        PastMeasure(sheet, one, None, _figure(one, unit), (sheet.gauge,))
+        for sheet, one in found
+        if can_convert(one.unit, unit)
+    ]
+    return MeasuredPast(quantity, point, unit, tuple(values))
+
+
+def _figure(one: Measured, unit: str) -> Decimal:
+    return decimal(one.within(unit).high)
+
+
+def _over_life(one: PastMeasure, counts_hours: bool) -> PastMeasure:
+    hours = one.sheet.engine_hours
+    one = replace(one, at=hours if counts_hours else Decimal(one.sheet.on.toordinal()))
+    aside = Aside.BOUND if one.is_bound else Aside.NO_HOURS if hours is None else None
+    return replace(one, aside=aside) if aside else replace(one, x=hours, y=one.figure)
+
+
+def _over_fill(one: PastMeasure, past: MeasuredPast, fills: Mapping[int, Fill], sump: Decimal | None) -> PastMeasure:
+    fill, hours, read = fills.get(one.sheet.entry), hours_on_oil(one.sheet), one.figure
+    one = replace(one, line=(one.sheet.gauge, fill.first if fill else ("alone", one.sheet.entry)))
+    if fill is not None and hours is not None:
+        one = replace(one, at=fill.begins + hours)
+    if one.is_bound or hours is None:
+        return replace(one, aside=Aside.BOUND if one.is_bound else Aside.NO_HOURS_ON_OIL)
+    added, start = top_up(one.sheet), start_ppm(past)
+    if added is None:
+        return replace(one, aside=Aside.NO_TOP_UP)
+    if added and not mixes(past):
+        return replace(one, aside=Aside.TOPPED_UP)
+    if added and not sump:
+        return replace(one, aside=Aside.NO_SUMP)
+    if added and start is None:
+        return replace(one, aside=Aside.NO_FRESH)
+    if added and start is not None and sump:
+        if added > TRUSTED_MAKE_UP * sump:
+            return replace(one, aside=Aside.TOPPED_UP)
+        read = start + (read - start) * make_up_factor(added / sump)
+    return replace(one, x=hours, y=read)
+
+
+def fills_of(sheets: Iterable[MeasuredSheet]) -> dict[int, Fill]:
+    """Tell the fills of oil samples apart, by entry; samples whose hours nobody stated are left out."""
+    fills: dict[int, Fill] = {}
+    then: tuple[MeasuredSheet, Decimal] | None = None
+    for sheet in sheets:
+        hours = hours_on_oil(sheet)
+        if hours is None:
+            continue
+        if then is None:
+            fill = Fill(sheet.entry, Decimal(0))
+        elif is_other_fill(then, (sheet, hours)):
+            fill = Fill(sheet.entry, fill.begins + then[1])
+        fills[sheet.entry] = fill
+        then = sheet, hours
+    return fills
+
+
+def seen_until(sheets: Sequence[MeasuredSheet], life: Decimal | None) -> Decimal:
+    """Give where the oil stands by now, fill after fill: its newest sample, and what the engine ran since; 0 without any.
+
+    `life` is the life total of the engine now, h, None where not known.
+    """
+    fills = fills_of(sheets)
+    known = [sheet for sheet in sheets if sheet.entry in fills]
+    if not known:
+        return Decimal(0)
+    return fills[known[-1].entry].begins + (hours_on_oil(known[-1]) or 0) + run_since(known[-1], life)
+
+
+def run_since(sheet: MeasuredSheet, life: Decimal | None) -> Decimal:
+    """Give the hours an engine ran since a sheet, 0 where that is not known."""
+    then = sheet.engine_hours
+    return max(life - then, Decimal(0)) if life is not None and then is not None else Decimal(0)
+
+
+def _stated(sheet: MeasuredSheet, quantity: str, unit: str) -> Decimal | None:
+    one = single(sheet, quantity)
+    try:
+        return decimal(one.within(unit).low) if one is not None and one.span.is_known else None
+    except CannotTell:
+        return None
+
+
+def is_oil(past: MeasuredPast) -> bool:
+    """Whether it was found in the oil."""
+    return past.last.sheet.kind == OIL
