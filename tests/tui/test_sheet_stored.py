@@ -141,3 +141,12 @@ async def test_what_lies_half_typed_is_said_at_the_next_start(opened: Opened, be
         assert line_with(pilot, "Half typed and kept:", "log B-1", "sheet lash B-1")
         await press(pilot, "escape")
         assert "Half typed" not in said(pilot)
+
+
+async def test_what_is_no_cell_of_a_half_typed_sheet_is_passed_over(opened: Opened, bench: Context) -> None:
+    async with opened(size=SMALL, context=bench) as pilot:
+        screen = await sheet_of(pilot, SINGLE)
+        await press(pilot, "escape")
+        screen.fleet_app.drafts.keep(screen.key, {"lash|1I|found": "25", "lash|1E|later": "3", "nothing": "4"})
+        screen = await sheet_of_open_form(pilot)
+        assert screen.texts == {CellKey("lash", "1I", Phase.FOUND): "25"}

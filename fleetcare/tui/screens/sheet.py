@@ -14,7 +14,7 @@ from fleetcare.tui.drafts_kept import DraftKey
 from fleetcare.tui.filling import KEEP_AFTER
 from fleetcare.tui.forms.base import Answer
 from fleetcare.tui.frame import TopBar, say_day
-from fleetcare.tui.sheets.base import OpenSheet, ReadSheet, SheetFor, SheetKind
+from fleetcare.tui.sheets.base import OpenSheet, ReadSheet, SheetFor, SheetKind, say_of_cell
 from fleetcare.tui.storing import StoringScreen
 from fleetcare.tui.widgets.detail import Detail
 from fleetcare.tui.widgets.form_head import FormTitle
@@ -53,6 +53,7 @@ class SheetScreen(StoringScreen):
         self._sure: frozenset[CellKey] = frozenset()
         self._said: dict[str, Mapping[str, bool]] = {}
         self._asked: CellKey | str = ""
+        self._meant: Mapping[str, str] = {}  # by the key that answers so
         self._is_storing, self._is_done = False, False
         self._timer: Timer | None = None
 
@@ -88,7 +89,7 @@ class SheetScreen(StoringScreen):
         except Refused as error:
             self.notice.say(*error.lines(), is_wrong=True)
             return
-        self.texts.update({_key_of(name): text for name, text in kept.items()})
+        self.texts.update({key: text for name, text in kept.items() if (key := _key_of(name)) is not None})
         if kept:
             self.notice.say(_LEFT)
 
@@ -198,7 +199,8 @@ class SheetScreen(StoringScreen):
             return False
         self.grid.go(key)
         self._asked = key
-        meant = [Answer(letter, f"it is {text}") for letter, text in zip(_MEANT_KEYS, slip.meant, strict=False)]
+        self._meant = dict(zip(_MEANT_KEYS, slip.meant, strict=False))
+        meant = [Answer(letter, f"it is {text}") for letter, text in self._meant.items()]
         self.query_one(Question).ask(slip.words, [*meant, *([_RIGHT] if slip.can_be_right else [])])
         return True
 
@@ -217,8 +219,8 @@ class SheetScreen(StoringScreen):
         if answer == _RIGHT:
             self._sure |= {key}
             self._judge()
-        elif answer.words.startswith("it is ") and self.read_sheet is not None:
-            self.texts[key] = answer.words.removeprefix("it is ")
+        elif answer.key in self._meant:
+            self.texts[key] = self._meant[answer.key]
             self.cell_typed()
         else:
             return
@@ -236,7 +238,7 @@ class SheetScreen(StoringScreen):
         self._said.clear()
         error = message.error
         first = error.errors[0] if isinstance(error, Refusals) else error
-        self.notice.say("; ".join(first.lines()), is_wrong=True)
+        self.notice.say(say_of_cell(first), is_wrong=True)
         number = getattr(first, "number", None)
         if isinstance(number, int) and self._opened is not None:
             self.grid.go(self._opened.order[number])
@@ -274,6 +276,9 @@ def _name_of(key: CellKey) -> str:
     return "|".join(key)
 
 
-def _key_of(name: str) -> CellKey:
-    quantity, point, phase = name.split("|")
-    return CellKey(quantity, point, Phase(phase))
+def _key_of(name: str) -> CellKey | None:
+    """Read the name a cell was kept under; None for what is no cell."""
+    parts = name.split("|")
+    if len(parts) != len(CellKey._fields) or parts[-1] not in set(Phase):
+        return None
+    return CellKey(parts[0], parts[1], Phase(parts[2]))

@@ -7,6 +7,7 @@ from datetime import date
 from typing import TYPE_CHECKING
 
 from fleetcare.domain.sheets import CellKey
+from fleetcare.errors import FleetError
 from fleetcare.tui.forms.base import Answer
 from fleetcare.tui.sheets.layout import Blocks, Shown
 
@@ -110,3 +111,9 @@ class SheetKind:
     name: str
     title: str
     open: "Callable[[Connection, SheetFor], OpenSheet]"
+
+
+def say_of_cell(error: FleetError) -> str:
+    """Say what is wrong with a cell without its place in a file, which it has none of on a screen."""
+    detail = error.detail.partition(": ")[2] if hasattr(error, "number") else error.detail
+    return f"{detail}; {error.remedy}"

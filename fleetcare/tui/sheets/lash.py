@@ -21,7 +21,7 @@ from fleetcare.operations.sheets_typed import (
     typed_of,
 )
 from fleetcare.tui.forms.base import Answer
-from fleetcare.tui.sheets.base import Ask, OpenSheet, ReadSheet, SheetFor, SheetKind, Slip, Texts
+from fleetcare.tui.sheets.base import Ask, OpenSheet, ReadSheet, SheetFor, SheetKind, Slip, Texts, say_of_cell
 from fleetcare.tui.sheets.layout import Flow, Matrix, MatrixRow, Shown
 
 if TYPE_CHECKING:
@@ -126,7 +126,7 @@ class ReadLash(ReadSheet):
 
     def wrong(self) -> Mapping[CellKey, str]:
         """Give the cells that are no values, and why."""
-        wrong = {key: "; ".join(error.lines()) for key, error in self._typed.wrong.items()}
+        wrong = {key: say_of_cell(error) for key, error in self._typed.wrong.items()}
         for key, word in self._unread.items():
             wrong[key] = (
                 f"{word!r} is not known here; write {' or '.join(dict.fromkeys(filter(None, _WORDS[key].values())))}, or leave it empty"

@@ -25,7 +25,7 @@ from fleetcare.operations.measures_typed import (
     unit_of,
 )
 from fleetcare.tui.forms.base import Answer
-from fleetcare.tui.sheets.base import Ask, OpenSheet, ReadSheet, SheetFor, SheetKind, Slip, Texts
+from fleetcare.tui.sheets.base import Ask, OpenSheet, ReadSheet, SheetFor, SheetKind, Slip, Texts, say_of_cell
 from fleetcare.tui.sheets.layout import Flow, Listing, Matrix, MatrixRow, Shown
 
 if TYPE_CHECKING:
@@ -138,7 +138,7 @@ class ReadMeasured(ReadSheet):
 
     def wrong(self) -> Mapping[CellKey, str]:
         """Give the cells that are no values, and why."""
-        wrong = {key: _said(error) for key, error in self._typed.wrong.items()}
+        wrong = {key: say_of_cell(error) for key, error in self._typed.wrong.items()}
         return wrong | ({RECEIVED: self._no_day} if self._no_day else {})
 
     def slips(self) -> Mapping[CellKey, Slip]:
@@ -267,12 +267,6 @@ def _mark(row: "MeasuredRow") -> str:
     if row.measured is None or row.limit is None:
         return "!"
     return "<" if row.measured < row.limit else ">"
-
-
-def _said(error: object) -> str:
-    """Say what is wrong with a cell without its place in a file."""
-    detail, remedy = getattr(error, "detail", ""), getattr(error, "remedy", "")
-    return f"{detail.partition(': ')[2] or detail}; {remedy}"
 
 
 def _read_day(text: str) -> tuple[date | None, str]:
