@@ -180,7 +180,8 @@ def _say_ahead(past: MeasuredPast, levels: Sequence[Level], projection: Projecti
     if projection is not None:
         shown = replace(projection, limit=Decimal(_shown(projection.limit, past.unit)))
         said = say_ahead(shown, past.unit, "h")
-        return f"{said}; hours on the oil" if is_oil(past) and projection.trend is not None else said
+        is_told = projection.likely is not None or projection.not_before is not None
+        return f"{said} on the oil" if is_oil(past) and is_told else said
     aside = past.last.aside
     return f"not projected: {_WHY_NOT[aside] if aside is not None else 'no rule has a limit for it'}"
 

@@ -49,7 +49,7 @@ def test_what_is_said_begins_with_the_value_and_what_is_ahead() -> None:
     assert said.startswith(
         "Iron, 37 ppm on 2026-04-11, 200 h on the oil: in, iron up to 100 ppm. Rises 170 ppm in 1000 h; "
     )
-    assert "100 ppm not before about 350 h; hours on the oil. Since the oil change +18.5 ppm per 100 h, top-up" in said
+    assert "100 ppm not before about 350 h on the oil. Since the oil change +18.5 ppm per 100 h, top-up" in said
     assert said.endswith("Limits: high alert 100 ppm, high alarm 200 ppm (iron).")
 
 
@@ -60,7 +60,7 @@ def test_a_limit_that_is_reached_is_drawn_ahead_on_the_fill_it_belongs_to() -> N
     assert told.ahead is not None
     assert (told.ahead.start.x, told.ahead.limit) == (320, 40)
     assert round(told.ahead.likely - 120, 1) == 215.1  # (40 - 3) / 0.172, reference
-    assert "likely 215 h; hours on the oil" in told.said
+    assert "likely 215 h on the oil" in told.said
 
 
 def test_new_oil_is_drawn_where_each_fill_begins_as_far_as_it_is_known() -> None:

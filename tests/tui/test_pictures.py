@@ -11,7 +11,9 @@ from typing import NamedTuple
 
 import pytest
 
+from fleetcare.context import Context
 from tests.tui.conftest import Opened, seen
+from tests.tui.wear_yard import wear
 
 PICTURES = Path(__file__).with_name("pictures")
 SMALL, LARGE = (80, 24), (120, 40)
@@ -86,6 +88,12 @@ SCREENS |= {
     "trend-closing-large": Picture(LARGE, _CLOSING, yard="demo"),
 }
 
+_WORN = ("2", "slash", *"ps-1", "enter", "enter")
+SCREENS |= {
+    "trend-compression": Picture(SMALL, (*_WORN, *"kkk"), {"NO_COLOR": "1"}, "worn"),
+    "trend-oil": Picture(SMALL, (*_WORN, *"eeeeeeee"), yard="worn"),
+}
+
 
 def _measured(key: str, *texts: str, size: tuple[int, int] = SMALL) -> Picture:
     """Give the picture of a sheet the rule book judges, of the inline six of the bench, with values in it."""
@@ -107,6 +115,13 @@ SCREENS |= {
     "finding": Picture(SMALL, ("3", "enter"), yard="found"),
     "rules": Picture(SMALL, ("4", "down"), yard="found"),
 }
+
+
+@pytest.fixture
+def worn(ctx: Context, db: Path) -> Context:
+    """The small yard, PS-1 of which was tested and sampled for two years."""
+    wear(db)
+    return ctx
 
 
 @pytest.mark.parametrize("name", SCREENS)
