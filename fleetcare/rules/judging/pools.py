@@ -63,6 +63,10 @@ class _Figures(Pool):
             raise KeyError(quantity)
         return self._asked[quantity]
 
+    def newest_first(self, quantity: str) -> Iterator[Decimal]:
+        """Give the figures of a quantity one by one, the newest first."""
+        return (figures[quantity] for figures in reversed(self._samples) if quantity in figures)
+
     def __iter__(self) -> Iterator[str]:
         return iter(dict.fromkeys(quantity for figures in self._samples for quantity in figures))
 
@@ -71,6 +75,11 @@ class _Figures(Pool):
 
 
 NO_FAMILY = Family()
+
+
+def newest_first(pool: Pool, quantity: str) -> Iterator[Decimal]:
+    """Give the figures of a quantity one by one, the newest first: whoever needs only some of them need not wait for all."""
+    return pool.newest_first(quantity) if isinstance(pool, _Figures) else reversed(pool.get(quantity, ()))
 
 
 def pools_for(sheet: MeasuredSheet, own: Pool, family: Family) -> Pools:

@@ -31,6 +31,8 @@ from fleetcare.domain.rule_book import (
 )
 from fleetcare.domain.sheets import Phase
 from fleetcare.rules.judging.facts import MeasuredFacts
+from fleetcare.rules.judging.pools import MOST_OF_FAMILY, newest_first
+from fleetcare.rules.judging.pools import Pool as Samples
 from fleetcare.rules.judging.values import HELD, HOURS_ON_OIL, LEAK, TOP_UP, WET_GAIN, alike, fresh_of
 from fleetcare.rules.judging.words import says
 
@@ -83,25 +85,26 @@ class Screened:
                 return not _has_hours(facts.sheet, shape)
             case Statistical():
                 pool = facts.pools.own if shape.pool is Pool.OWN else facts.pools.family
-                samples = pool.get(rule.quantity, ())
-                return len(samples) < shape.least_samples or _is_usual(_in_unit(seen, rule.unit), samples, shape, rule)
+                if _is_usual(_in_unit(seen, rule.unit), pool, shape, rule):
+                    return True
+                return len(pool.get(rule.quantity, ())) < shape.least_samples
         return False
 
     def _all_within(self, figures: Sequence[tuple[float, float]] | None) -> bool:
         return figures is not None and all(high > self.above and low < self.below for low, high in figures)
 
 
-def _is_usual(
-    figures: Sequence[tuple[float, float]] | None, samples: Sequence[Decimal], shape: Statistical, rule: Rule
-) -> bool:
-    """Whether more samples than lie above any percentile of a rule reach every figure, so that none is beyond it."""
+def _is_usual(figures: Sequence[tuple[float, float]] | None, pool: Samples, shape: Statistical, rule: Rule) -> bool:
+    """Whether more samples than can lie above any percentile of a rule reach every figure, so that none is beyond it."""
     percents = _limits(rule.high)
     if shape.method is not Method.PERCENTILE or rule.low or not percents or not figures:
         return False
     if rule.unit != QUANTITIES[rule.quantity].unit:
         return False
-    enough = len(samples) - int(min(percents) / 100 * (len(samples) + 1) - _CLEARLY) + 1
-    return all(_reach(samples, high, enough) for _, high in figures)
+    # As many as of the largest pool there is: of a smaller one no more lie above.
+    most = MOST_OF_FAMILY if shape.pool is Pool.FAMILY else len(pool.get(rule.quantity, ()))
+    enough = most - int(min(percents) / 100 * (most + 1) - _CLEARLY) + 2
+    return all(_reach(newest_first(pool, rule.quantity), high, enough) for _, high in figures)
 
 
 def _reach(samples: Iterable[Decimal], figure: float, enough: int) -> bool:
