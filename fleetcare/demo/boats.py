@@ -1,6 +1,7 @@
 """The boats of the demo fleet: weed cutters that work from May to September, and the survey launch."""
 
 from fleetcare.demo.items import Ago, Item, Kept, Meter, Shown, Told
+from fleetcare.demo.measured import Measured, Tested
 from fleetcare.demo.plans import Counted, Dated, Each, FromNew
 from fleetcare.demo.plates import BOAT, OUTBOARD
 from fleetcare.demo.steps import Verb
@@ -31,6 +32,7 @@ BOATS = (
         1118,
         {**BOAT, "name": "Port main", "sump": "9", "machine": "WB-1", "position": "port"},
         (Meter("hours", "h", 2260, weed_boat, seed="WB-1"),),
+        measured=Measured(tested=(Tested(41, "spot", ("oil_pressure,,,330", "coolant,,,79")),)),
         tasks=(
             Kept({**OIL, "every": ["200h", "12mo"]}, Counted(200, 60)),
             Kept(_GEAR_OIL, Dated(12, -25)),

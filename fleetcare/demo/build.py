@@ -8,13 +8,14 @@ from tempfile import TemporaryDirectory
 from typing import TYPE_CHECKING
 
 from fleetcare.db.session import copy, writing
-from fleetcare.demo.enter import enter
+from fleetcare.demo.enter import enter, sheet_draft
 from fleetcare.demo.history import history
 from fleetcare.demo.steps import Step, Verb
 from fleetcare.demo.yard_of import yard_of
 from fleetcare.exchange.csv_out import csv_text, write_new
 from fleetcare.operations.imports import read_import, store_import
 from fleetcare.operations.judged import refresh
+from fleetcare.operations.measure import measure_many
 from fleetcare.operations.upkeep import refuse_taken
 
 if TYPE_CHECKING:
@@ -70,6 +71,9 @@ def _enter(session: "Session", steps: Iterable[Step], stamps: Stamps, folder: Pa
         stamps.day = day
         if verb in _CARDS:
             _import(session, verb, same, day, folder)
+            continue
+        if verb is Verb.SHEET:
+            measure_many(session, [sheet_draft(step) for step in same], day)
             continue
         for step in same:
             number = enter(session, step, stored)

@@ -7,21 +7,27 @@ from typing import TYPE_CHECKING
 from fleetcare.demo.steps import Step, Verb
 from fleetcare.domain.engines import Status
 from fleetcare.drafts.fields import parse_kind
+from fleetcare.drafts.findings import AnswerDraft, RulesDraft
 from fleetcare.drafts.items import EngineDraft, MachineDraft
 from fleetcare.drafts.reading_in import read_draft
 from fleetcare.drafts.schedules import StartDraft
 from fleetcare.drafts.tasks import TaskDraft
 from fleetcare.drafts.work import CorrectionDraft, DeferralDraft, LogDraft, ReadingDraft
+from fleetcare.operations.answer import enter_answer
 from fleetcare.operations.correct import correct_entry
 from fleetcare.operations.deferrals import defer
 from fleetcare.operations.find import find_engine, find_item
+from fleetcare.operations.finding_rows import found_findings
 from fleetcare.operations.items import add_item, fit_engine
+from fleetcare.operations.judged import refresh
 from fleetcare.operations.log import record_work
 from fleetcare.operations.readings import record_reading, void_reading
 from fleetcare.operations.schedules import apply_schedule
 from fleetcare.operations.settings import change_setting
+from fleetcare.operations.shop_rules import Rejudged, store_rules
 from fleetcare.operations.spells import change_status, set_factor
 from fleetcare.operations.tasks import add_task, edit_task
+from fleetcare.rulebook.rules import read_shop_text
 from fleetcare.rulebook.schedules import find_schedule
 
 if TYPE_CHECKING:
@@ -36,8 +42,21 @@ def enter(session: "Session", step: Step, stored: Stored) -> int | None:
     return _VERBS[step.verb](session, step, stored)
 
 
+def sheet_draft(step: Step) -> LogDraft:
+    """Give the sheet of a step as typed; sheets of one day are stored together."""
+    return read_draft(LogDraft, {"tag": step.tag, "on": step.on, **step.values})
+
+
 def _setting(session: "Session", step: Step, stored: Stored) -> None:
     change_setting(session, str(step.values["name"]), str(step.values["value"]))
+
+
+def _rules(session: "Session", step: Step, stored: Stored) -> None:
+    """Put rules of the shop in force, as nothing is measured yet without judging anything."""
+    name, text = str(step.values["name"]), str(step.values["text"])
+    read_shop_text(text, name)
+    said = {"why": step.values["why"], "by": step.values["by"], "on": step.on}
+    store_rules(session, Rejudged(name, text, (), (), ()), read_draft(RulesDraft, said))
 
 
 def _machine(session: "Session", step: Step, stored: Stored) -> None:
@@ -102,8 +121,21 @@ def _void_reading(session: "Session", step: Step, stored: Stored) -> None:
     void_reading(session, stored[step.about], str(step.values["why"]), step.on)
 
 
+def _answer(session: "Session", step: Step, stored: Stored) -> None:
+    """Answer the finding of a cause on an engine."""
+    refresh(session.connection())
+    values = {name: value for name, value in step.values.items() if name != "cause"}
+    (finding,) = (
+        found.lived.life.id
+        for found in found_findings(session.connection(), step.on)
+        if (found.tag, found.lived.life.cause) == (step.tag, step.values["cause"])
+    )
+    enter_answer(session, read_draft(AnswerDraft, {"finding": finding, "on": step.on, **values}), step.entered)
+
+
 _VERBS: Mapping[Verb, Callable[["Session", Step, Stored], int | None]] = {
     Verb.SETTING: _setting,
+    Verb.RULES: _rules,
     Verb.MACHINE: _machine,
     Verb.ENGINE: _engine,
     Verb.SCHEDULE: _schedule,
@@ -118,4 +150,5 @@ _VERBS: Mapping[Verb, Callable[["Session", Step, Stored], int | None]] = {
     Verb.CORRECT: _correct,
     Verb.DEFER: _defer,
     Verb.VOID_READING: _void_reading,
+    Verb.ANSWER: _answer,
 }

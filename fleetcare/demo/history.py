@@ -6,7 +6,9 @@ from datetime import date, timedelta
 from fleetcare.demo.fleet import ITEMS, SHOP
 from fleetcare.demo.items import Ago, Item, Shown
 from fleetcare.demo.lash import gauged_steps
+from fleetcare.demo.measured import sheets_of
 from fleetcare.demo.odd import odd_readings
+from fleetcare.demo.rules import NAME, TEXT, WHY
 from fleetcare.demo.steps import Step, Verb, in_order
 from fleetcare.demo.yard import CHANGEOVER, Yard
 
@@ -21,9 +23,12 @@ def history(anchor: date, items: Sequence[Item] = ITEMS, changeover: int = CHANG
     """
     yard = Yard(anchor, items, changeover)
     steps = [Step(yard.changeover, yard.changeover, Verb.SETTING, values={"name": "shop-name", "value": SHOP})]
+    if items is ITEMS:
+        own = {"name": NAME, "text": TEXT, "why": WHY, "by": "Harbin"}
+        steps.append(Step(yard.changeover, yard.changeover, Verb.RULES, values=own))
     for item in items:
         work = [*_work(yard, item), *gauged_steps(yard, item, _mechanic(item))]
-        steps += [*_arrival(yard, item), *work, *_told(yard, item), *_rounds(yard, item, work)]
+        steps += [*_arrival(yard, item), *work, *_told(yard, item), *_rounds(yard, item, work), *_measured(yard, item)]
     return in_order(steps)
 
 
@@ -57,6 +62,13 @@ def _work(yard: Yard, item: Item) -> Iterator[Step]:
             values = {"task": [kept.name], "at": [dial] if dial else [], "by": by, "note": note}
             yield _dated(yard, day, (Verb.CARD_WORK, Verb.LOG), item.tag, values)
             note = ""
+
+
+def _measured(yard: Yard, item: Item) -> Iterator[Step]:
+    """Measure in passing; sheets from before the changeover came with it, from paper."""
+    for taken in sheets_of(yard, item):
+        values = {"sheet": taken.sheet, "kind": taken.kind, "by": _mechanic(item), **taken.values}
+        yield Step(taken.on, max(taken.on, yard.changeover), Verb.SHEET, item.tag, values)
 
 
 def _mechanic(item: Item) -> str:

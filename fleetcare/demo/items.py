@@ -6,6 +6,7 @@ Days are days before the anchor day, a negative number after it.
 from collections.abc import Mapping
 from dataclasses import dataclass, field
 
+from fleetcare.demo.measured import Measured
 from fleetcare.demo.plans import Each, Never, Plan
 from fleetcare.demo.steps import Verb
 from fleetcare.demo.use import Rhythm
@@ -84,7 +85,8 @@ class Told:
 class Item:
     """An engine or machine: its tag, the days since the register has it, what its plate says, and its history.
 
-    `schedule` names a shipped schedule and what its tasks count from; `gauged` is how its valve lash was gauged.
+    `schedule` names a shipped schedule and what its tasks count from; `gauged` is how its valve lash was gauged,
+    `measured` what else was measured on it.
     """
 
     tag: str
@@ -95,6 +97,7 @@ class Item:
     told: tuple[Told, ...] = ()
     schedule: tuple[str, object] | None = None
     gauged: Gauged | None = None
+    measured: Measured | None = None
     as_new: bool = False
     is_engine: bool = True
 

@@ -9,6 +9,7 @@ from fleetcare.demo.items import Item
 from fleetcare.demo.steps import Step, Verb
 from fleetcare.demo.wear import Gauged, Occasion, sheets
 from fleetcare.demo.yard import Yard
+from fleetcare.domain.measured import LASH
 
 _APART = timedelta(days=40)
 _IN_PASSING = "Valve lash gauged in passing"
@@ -32,10 +33,11 @@ def gauged_steps(yard: Yard, item: Item, by: str) -> Iterator[Step]:
     note = next((kept.note for kept in item.tasks if kept.name == item.gauged.task), "")
     taken = sheets(item.tag, {key: str(value) for key, value in item.plate.items()}, item.gauged, occasions)
     for (on, dial), occasion, sheet in zip(times, occasions, taken, strict=True):
-        values = {"sheet": sheet, "when": "hot" if occasion.is_hot else item.plate["lash_when"], "by": by}
+        values = {"sheet": sheet, "kind": LASH, "when": "hot" if occasion.is_hot else item.plate["lash_when"], "by": by}
         values |= {"task": [item.gauged.task], "at": [dial] if dial else []} if occasion.is_job else {}
         values |= {"note": (note if occasion.is_newest_job else "") if occasion.is_job else _IN_PASSING}
-        yield Step(on, max(on, yard.changeover), Verb.LOG, item.tag, values)
+        verb = Verb.LOG if occasion.is_job else Verb.SHEET
+        yield Step(on, max(on, yard.changeover), verb, item.tag, values)
 
 
 def _times(yard: Yard, item: Item, gauged: Gauged) -> Iterator[_Time]:

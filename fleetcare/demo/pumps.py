@@ -3,6 +3,8 @@
 from collections.abc import Mapping
 
 from fleetcare.demo.items import Ago, Item, Kept, Meter, Shown, Told
+from fleetcare.demo.measured import Measured, Tested, compression
+from fleetcare.demo.oil import Sampled
 from fleetcare.demo.plans import Counted, Dated, Each, FromNew, OnGrid
 from fleetcare.demo.plates import BIG_PUMP, PUMP, SLOW_PUMP
 from fleetcare.demo.steps import Verb
@@ -47,6 +49,14 @@ _NORTH_SLUICE = (
         1120,
         {**PUMP, "name": "Pump diesel", "machine": "PH-1", "position": "bay 1"},
         (Meter("hours", "h", 3210, winter_pump, replaced=100),),
+        measured=Measured(
+            Sampled(is_first=True),
+            (
+                compression(700, "2610 2590 2640 2600 2620 2580"),
+                compression(330, "2590 2580 2620 2570 2600 2560"),
+                compression(25, "2570 2560 2600 2560 2580 2540"),
+            ),
+        ),
         tasks=(
             Kept(
                 {**OIL, "every": ["250h", "12mo"], "ahead": ["25h", "30d"]},
@@ -71,6 +81,8 @@ _NORTH_SLUICE = (
         1120,
         {**PUMP, "name": "Pump diesel", "machine": "PH-1", "position": "bay 2"},
         (Meter("hours", "h", 0, winter_pump, unread=1),),
+        # An injector that dribbles: fuel thins the oil.
+        measured=Measured(Sampled(rises={"kv100": ("-1.9",)}, found={"fuel": ("4.4",)})),
         tasks=(
             Kept({"name": "250 h service", "every": ["250h"], **_SERVICE, "part": ["Oil filter:1"]}, OnGrid(250, 500)),
             Kept(
@@ -97,6 +109,14 @@ _CRAKE_DROVE = (
         1116,
         {**PUMP, "name": "Pump diesel", "machine": "PH-2", "position": "east"},
         (Meter("hours", "h", 5140, winter_pump),),
+        measured=Measured(
+            Sampled(),
+            (
+                compression(560, "2580 2600 2570 2560 2590 2600"),
+                compression(300, "2570 2590 2560 2330 2580 2590"),
+                compression(29, "2550 2580 2550 1760 2560 2570", {4: "1830"}),
+            ),
+        ),
         tasks=(
             Kept({**OIL, "every": ["300h"]}, Counted(250, 14)),
             Kept({**FUEL_FILTER, "every": ["500h"], "grace": ["25h"]}, Counted(500, -9)),
@@ -128,6 +148,7 @@ _CRAKE_DROVE = (
         {**PUMP, "name": "Pump diesel", "machine": "PH-2", "position": "west"},
         (Meter("hours", "h", 7725, winter_pump, unread=3),),
         schedule=("pump-diesel", Ago(290)),
+        measured=Measured(Sampled(), (Tested(75, "spot", ("oil_pressure,,,340", "coolant,,,82")),)),
         tasks=(
             Kept("Oil and filter", Counted(250, 95)),
             Kept("Air cleaner", Counted(250, 95)),
@@ -148,6 +169,7 @@ _OUTFALL_AND_OLD = (
         1108,
         {**PUMP, "name": "Relief pump diesel", "site": "Ousel Outfall"},
         (Meter("hours", "h", 1875, winter_pump, unread=130),),
+        measured=Measured(Sampled()),
         tasks=(
             Kept({**OIL, "every": ["250h", "12mo"]}, Dated(12, -20)),
             Kept({"name": "Breather", "every": ["6mo"], "pause_while_laid_up": True, "work": "filter"}, Dated(6, -40)),
@@ -182,6 +204,8 @@ _HERN_CORNER = (
             Meter("hours", "h", 18204, winter_pump, unread=2),
             Meter("fuel", "L", 402310, scaled(winter_pump, 38, unit=10), unread=2, seed="PS-07", digits="7.0"),
         ),
+        # Bearings that wear, of an engine with 18,000 h.
+        measured=Measured(Sampled(rises={"Pb": ("14", "26"), "Sn": ("12", "15"), "Cu": ("22", "36")})),
         tasks=(
             Kept({**OIL, "every": ["500h", "12mo"]}, Counted(500, 130), note="filter cut open: no metal"),
             Kept(
@@ -226,6 +250,12 @@ _WITHY_LODE = (
         1110,
         {**PUMP, "name": "Pump diesel", "site": "Sallow Bank"},
         (Meter("hours", "h", 4890, winter_pump, unread=5, idle=(180, 60)),),
+        # Coolant finds its way into the oil.
+        measured=Measured(
+            Sampled(
+                rises={"Na": ("52", "120"), "K": ("25", "75"), "Cu": ("18", "28")}, found={"water": ("0.15", "0.35")}
+            )
+        ),
         tasks=(
             Kept({**OIL, "every": ["250h"]}, Counted(250, 60)),
             Kept(
@@ -244,6 +274,7 @@ _WITHY_LODE = (
         420,
         {**PUMP, "name": "Pump diesel, second-hand", "site": "Sallow Bank", "adjuster": "hydraulic"},
         (Meter("hours", "h", 0, winter_pump, unread=5, digits="5.1"),),
+        measured=Measured(Sampled()),
         tasks=(
             Kept({**OIL, "every": ["250h"], "first": ["50h"]}, FromNew(50, 250)),
             Kept({"name": "Retighten cylinder head", "every": ["50h"], "once": True, "labour": "2h"}, FromNew(50, 0)),

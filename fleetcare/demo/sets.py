@@ -1,11 +1,12 @@
 """The standby sets of the demo fleet: run when the mains fails and once a month besides."""
 
 from fleetcare.demo.items import Ago, Item, Kept, Meter, Shown, Told
+from fleetcare.demo.measured import Measured, Ran
 from fleetcare.demo.plans import Counted, Dated, Each
 from fleetcare.demo.plates import GAS_SET, SET, V_SET
 from fleetcare.demo.steps import Verb
 from fleetcare.demo.tasks import BATTERIES, BELTS, COOLANT, EXERCISE, OIL, WEEKLY
-from fleetcare.demo.use import now_and_then, self_test, standby
+from fleetcare.demo.use import now_and_then, proved, self_test, standby
 from fleetcare.demo.wear import Gauged
 
 _LOAD_TEST = {
@@ -25,6 +26,8 @@ SETS = (
         {**SET, "name": "Standby set of the workshop", "site": "Board Yard", "rated_kw": "64", "sump": "14"},
         (Meter("hours", "h", 412, standby, unread=2, exercise=Each(1)),),
         schedule=("zzzz-2d-4", Ago(349)),
+        # Run each month without enough to do.
+        measured=Measured(ran=Ran(8, 35, "15")),
         tasks=(
             Kept("Oil and filter (ZZZZ)", Dated(12, 16)),
             Kept("Air cleaner (ZZZZ)", Dated(12, 140)),
@@ -32,12 +35,26 @@ SETS = (
             Kept(EXERCISE, Each(1)),
             Kept(WEEKLY, Each(0, most=8)),
         ),
+        told=(
+            Told(
+                0,
+                Verb.ANSWER,
+                {
+                    "cause": "run below its load",
+                    "accept": True,
+                    "why": "the workshop draws no more; a load bank is hired for the yearly run",
+                    "by": "Harbin",
+                },
+            ),
+        ),
     ),
     Item(
         "SB-02",
         1105,
         {**SET, "name": "Standby set of the outfall gates", "site": "Ousel Outfall", "rated_kw": "48", "sump": "12"},
         (Meter("hours", "h", 0, standby, digits="4.1", exercise=Each(1, skipped=2), turned=80),),
+        # Stopped early the last time.
+        measured=Measured(ran=Ran(6, 35, "21", last=20)),
         tasks=(
             Kept({**OIL, "every": ["300h", "12mo"]}, Dated(12, 75)),
             Kept(EXERCISE, Each(1, skipped=2)),
@@ -67,8 +84,10 @@ SETS = (
         "SB-04",
         1100,
         {**V_SET, "name": "Standby set of the pump control", "site": "North Sluice"},
-        (Meter("hours", "h", 689, standby, unread=6, exercise=Each(1)),),
+        (Meter("hours", "h", 689, proved, unread=6, exercise=Each(1)),),
         schedule=("emergency-exercise", "unset"),
+        # Proved for weeks at the beginning of each year.
+        measured=Measured(ran=Ran(4, 42, "120", is_proved=True)),
         tasks=(
             Kept(
                 {**OIL, "every": ["250h", "12mo"], "anchor": "on-grid", "grid_origin": [Ago(1100 - 40)]}, Dated(12, 120)
@@ -106,6 +125,7 @@ SETS = (
         1096,
         {**SET, "name": "Standby set of the sluice gates", "site": "Withy Lode", "rated_kw": "32", "sump": "9"},
         (Meter("hours", "h", 1190, standby, unread=20, exercise=Each(1, most=5, missed=3)),),
+        measured=Measured(ran=Ran(4, 34, "13")),
         tasks=(
             Kept({**OIL, "every": ["12mo"], "anchor": "on-grid", "grid_origin": [Ago(1000)]}, Dated(12, 95)),
             Kept({**BELTS, "every": ["12mo"], "window": "21d"}, Dated(12, 60)),

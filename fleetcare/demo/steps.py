@@ -10,6 +10,7 @@ class Verb(StrEnum):
     """What was entered. On one day things happen in this order."""
 
     SETTING = "setting"
+    RULES = "rules"
     MACHINE = "machine"
     ENGINE = "engine"
     SCHEDULE = "schedule"
@@ -17,6 +18,7 @@ class Verb(StrEnum):
     CARD_READING = "card reading"
     CARD_WORK = "card work"
     ROUND = "round"
+    SHEET = "sheet"
     READING = "reading"
     FIT = "fit"
     STATUS = "status"
@@ -26,6 +28,7 @@ class Verb(StrEnum):
     CORRECT = "correct"
     DEFER = "defer"
     VOID_READING = "void-reading"
+    ANSWER = "answer"
 
 
 @dataclass(frozen=True, slots=True)
@@ -46,7 +49,7 @@ class Step:
 
 
 _ORDER = {verb: place for place, verb in enumerate(Verb)}
-_FIRST = {verb for verb in Verb if _ORDER[verb] <= _ORDER[Verb.ROUND]}
+_FIRST = {verb for verb in Verb if _ORDER[verb] <= _ORDER[Verb.SHEET]}
 
 
 def in_order(steps: Iterable[Step]) -> list[Step]:

@@ -10,7 +10,11 @@ from random import Random
 Rhythm = Callable[[date, Random], int]
 """Gives what a meter gains on a day, in tenths of its unit."""
 
-_SATURDAY = 5
+_THURSDAY, _SATURDAY = 3, 5
+_PROVED_UNTIL = 63
+"""Days of a year: nine Thursdays are among them."""
+
+PROVING_TENTHS = 100
 
 
 class Curve:
@@ -87,6 +91,11 @@ def together(*rhythms: Rhythm) -> Rhythm:
     return lambda day, random: sum(rhythm(day, random) for rhythm in rhythms)
 
 
+def is_proving(day: date) -> bool:
+    """Whether a set that is proved on a load bank each year runs on it that day, ten hours."""
+    return day.weekday() == _THURSDAY and day.timetuple().tm_yday <= _PROVED_UNTIL
+
+
 _WINTER, _FIELD_WORK, _WEED = (11, 12, 1, 2, 3), range(4, 11), range(5, 10)
 
 winter_pump = seasonal(_WINTER, steady(30, 90, 0.6, every_day=True), once_a_week(2, 5))
@@ -94,6 +103,9 @@ winter_pump = seasonal(_WINTER, steady(30, 90, 0.6, every_day=True), once_a_week
 
 standby = steady(15, 80, 0.007, every_day=True)
 """Runs when the mains fails, two or three times a year; its exercise runs are entered one by one."""
+
+proved = together(standby, lambda day, random: PROVING_TENTHS if is_proving(day) else 0)
+"""Runs as `standby`, and on a load bank at the beginning of each year."""
 
 self_test = together(once_a_week(0, 10), scaled(steady(10, 39, 0.02, every_day=True), 1, unit=10))
 """Starts by itself each Monday, and when the mains fails."""

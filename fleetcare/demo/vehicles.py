@@ -1,6 +1,8 @@
 """The lorries, vans and pick-up of the demo fleet. A lorry's odometer counts for the engine in it."""
 
 from fleetcare.demo.items import Ago, Item, Kept, Meter, Shown, Told
+from fleetcare.demo.measured import Measured, compression
+from fleetcare.demo.oil import Sampled
 from fleetcare.demo.plans import Counted, Dated, Each
 from fleetcare.demo.plates import LORRY, PETROL_VAN, VAN
 from fleetcare.demo.steps import Verb
@@ -28,6 +30,9 @@ _TIPPER = (
         1112,
         {**LORRY, "name": "Engine of the tipper", "machine": "LR-1"},
         (Meter("hours", "h", 1748, lorry_hours, seed="LR-1"),),
+        measured=Measured(
+            tested=(compression(420, "2820 2800 2830 2810 2790 2800"), compression(50, "2800 2780 2810 2790 2780 2790"))
+        ),
         tasks=(
             Kept(
                 {**OIL, "every": ["15000km"], "part": ["Oil filter:1", "Sump plug washer:1"]},
@@ -132,6 +137,8 @@ _FLATBED = (
         1108,
         {**LORRY, "name": "Engine of the flatbed", "machine": "LR-4"},
         schedule=("lorry-diesel", Ago(260)),
+        # Long drains: the base number is spent.
+        measured=Measured(Sampled(3, found={"tbn": ("6.8", "5.5", "4.2")}, is_first=True)),
         tasks=(Kept("Oil and filter", Counted(12400, 2600, of="LR-4")),),
         gauged=Gauged(every=6),
         told=(
@@ -170,10 +177,26 @@ _TANKER = (
         1108,
         {**LORRY, "name": "Engine of the tanker; drives the vacuum pump", "machine": "LR-5"},
         (Meter("hours", "h", 905, scaled(lorry_hours, 0.9), unread=4, seed="LR-5"),),
+        # The head gasket between cylinders 3 and 4.
+        measured=Measured(
+            tested=(compression(500, "2790 2800 2780 2810 2800 2790"), compression(18, "2780 2790 1890 1930 2790 2780"))
+        ),
         tasks=(
             Kept({**OIL, "every": ["500h", "15000km", "12mo"]}, Counted(500, 36)),
             Kept({**FUEL_FILTER, "every": ["1000h"]}, Counted(1000, 420)),
             Kept({**LASH, "every": ["2000h"]}),
+        ),
+        told=(
+            Told(
+                0,
+                Verb.ANSWER,
+                {
+                    "cause": "head gasket between two cylinders",
+                    "follow_up": True,
+                    "why": "leak-down first, then the head comes off",
+                    "by": "Harbin",
+                },
+            ),
         ),
     ),
 )

@@ -118,9 +118,37 @@ def fresh_sheet(session: "Session", item: FoundItem, typed: SheetOptions, on: da
 
 def keep_sheet(session: "Session", entry: LogEntry, sheet: Sheet) -> Sheet:
     """Store a sheet with its entry, under a key that tells it again; give it with the entry's number."""
+    keep_sheets(session, [(entry, sheet)])
+    return replace(sheet, entry=entry.id)
+
+
+def keep_sheets(session: "Session", sheets: Sequence[tuple[LogEntry, Sheet]]) -> None:
+    """Store sheets, each with its entry as `keep_sheet` does, all of them in one go."""
+    rows = [_row(session, entry, sheet) for entry, sheet in sheets]
+    session.add_all(rows)
+    session.flush()
+    session.add_all(
+        ValueTable(
+            sheet_id=row.id,
+            quantity=value.quantity,
+            point=value.point,
+            phase=value.phase,
+            value=value.value,
+            low=value.low,
+            high=value.high,
+            unit=value.unit,
+            qualifier=value.qualifier,
+        )
+        for row, (_, sheet) in zip(rows, sheets, strict=True)
+        for value in sheet.values
+    )
+    session.flush()
+
+
+def _row(session: "Session", entry: LogEntry, sheet: Sheet) -> SheetTable:
     key = _key(entry.item_id, sheet)
     times = len(_rows_of(session, key))
-    row = SheetTable(
+    return SheetTable(
         item_id=entry.item_id,
         entry_id=entry.id,
         kind=sheet.kind,
@@ -131,24 +159,6 @@ def keep_sheet(session: "Session", entry: LogEntry, sheet: Sheet) -> Sheet:
         received_on=sheet.received_on,
         import_key=f"{key} {times + 1}" if times else key,
     )
-    session.add(row)
-    session.flush()
-    for value in sheet.values:
-        session.add(
-            ValueTable(
-                sheet_id=row.id,
-                quantity=value.quantity,
-                point=value.point,
-                phase=value.phase,
-                value=value.value,
-                low=value.low,
-                high=value.high,
-                unit=value.unit,
-                qualifier=value.qualifier,
-            )
-        )
-    session.flush()
-    return replace(sheet, entry=entry.id)
 
 
 def known_entry(session: "Session", item: FoundItem, sheet: Sheet) -> int | None:

@@ -47,13 +47,17 @@ class _Record:
     done: dict[int, list[tuple[int, date, Figure | None]]] = field(default_factory=dict)
 
 
+_NOTHING_DUE = {Verb.SHEET, Verb.ANSWER}
+"""Entries by which no line here comes or moves: sheets taken in passing, and what is decided about their findings."""
+
+
 def pure_facts(steps: Iterable[Step], on: date) -> list[ItemFacts]:
     """Give the facts of every item in some steps, seen on a day that none of them lies after."""
     records: dict[str, _Record] = {}
     for number, step in enumerate(steps, start=1):
         if step.verb in {Verb.ENGINE, Verb.MACHINE}:
             records[step.tag] = _arrived(number, step.values)
-        elif step.tag:
+        elif step.tag and step.verb not in _NOTHING_DUE:
             _VERBS[step.verb](records[step.tag], number, step)
     return [_facts(record, on) for record in records.values()]
 

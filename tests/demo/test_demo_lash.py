@@ -41,7 +41,7 @@ class Told(NamedTuple):
 
 def sheet_steps(tag: str, anchor: date) -> list[Step]:
     steps = history(anchor, [item for item in ITEMS if item.tag in {tag, "LR-1", "LR-4"}])
-    return sorted((s for s in steps if s.tag == tag and s.values.get("sheet")), key=lambda s: s.on)
+    return sorted((s for s in steps if s.tag == tag and s.values.get("kind") == "lash"), key=lambda s: s.on)
 
 
 def told(tag: str, anchor: date) -> list[Told]:

@@ -5,9 +5,8 @@ from decimal import Decimal
 
 import pytest
 
-from fleetcare.domain.findings import Severity
 from fleetcare.domain.measured import Pools
-from fleetcare.domain.rule_book import Limits, Method, Pool, Rule, Statistical
+from fleetcare.domain.rule_book import Limits, Method, Pool, Rule, Severity, Statistical
 from fleetcare.rules.judge_engine import Background
 from fleetcare.rules.judge_history import judge_history
 from fleetcare.rules.judging.judge import judge

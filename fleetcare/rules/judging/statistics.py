@@ -26,7 +26,8 @@ _NAMES = {
 def figure(rule: Rule, shape: Statistical, one: Measured, values: Sequence[Measured], facts: MeasuredFacts) -> Figure:
     """Give a value with the limits that the pool makes of the rule's."""
     pool = (facts.pools.own if shape.pool is Pool.OWN else facts.pools.family).get(rule.quantity, ())
-    samples = tuple(decimal(exactly(value, QUANTITIES[rule.quantity].unit, rule.unit)) for value in pool)
+    unit = QUANTITIES[rule.quantity].unit
+    samples = pool if unit == rule.unit else tuple(decimal(exactly(value, unit, rule.unit)) for value in pool)
     low, low_steps = _limits(shape, samples, rule.low, -1)
     high, high_steps = _limits(shape, samples, rule.high, 1)
     steps = (*one.steps, Step("samples", Decimal(len(samples))), *(high_steps or low_steps))
