@@ -12,6 +12,9 @@ from fleetcare.domain.engines import Side
 LASH = "lash"
 SHIM = "shim"
 
+NOT_DETECTED = "ND"
+"""The qualifier of a value below all that could be detected."""
+
 
 class Phase(StrEnum):
     """When a value was taken: before or after the work, in a dry or wet test, of fresh oil."""

@@ -18,9 +18,11 @@ from fleetcare.rules.explain_measured import MeasuredRow, measured_rows
 from fleetcare.rules.explain_measured_past import measured_row
 from fleetcare.rules.judge_engine import facts_of, judge_engine
 from fleetcare.rules.judging.applies import rules_for
+from fleetcare.rules.judging.facts import MeasuredFacts
 from fleetcare.rules.judging.levels import levels_of
 from fleetcare.rules.measured_ahead import ahead_of, rate_of
-from fleetcare.rules.measured_past import MeasuredPast, compression_pasts, fills_of, oil_pasts, seen_until
+from fleetcare.rules.measured_past import MeasuredPast, compression_pasts, oil_pasts
+from fleetcare.rules.oil_fills import fills_of, seen_until
 from fleetcare.rules.trend_row import TrendRow, Trends
 
 if TYPE_CHECKING:
@@ -94,29 +96,27 @@ def _compression(about: _About, item: FoundItem, on: date) -> Trends:
 
 def _oil(about: _About, item: FoundItem) -> Trends:
     sheets = about.sheets(OIL)
-    begins = [fill.begins for fill in dict.fromkeys(fills_of(sheets).values())]
+    begins = {fill.begins for fill in fills_of(sheets).values()}
     return Trends(
-        rows=_rows(oil_pasts(sheets, about.found.engine.sump, about.found.background.fresh), about, begins),
+        rows=_rows(oil_pasts(sheets, about.found.engine.sump, about.found.background.fresh), about),
         counts_hours=True,
         until=float(seen_until(sheets, about.life)),
         why_none=_why_none(item, OIL),
         is_adjusted=False,
-        begins=tuple(map(float, begins)),
+        begins=tuple(sorted(map(float, begins))),
     )
 
 
-def _rows(pasts: Sequence[MeasuredPast], about: _About, begins: Sequence[Decimal] = ()) -> tuple[TrendRow, ...]:
+def _rows(pasts: Sequence[MeasuredPast], about: _About) -> tuple[TrendRow, ...]:
     newest = {past.last.sheet.entry: past.last.sheet for past in pasts}
     judged = {entry: _judged(sheet, about) for entry, sheet in newest.items()}
-    return tuple(_row(past, judged[past.last.sheet.entry], about, begins) for past in pasts)
+    facts = {entry: _facts(sheet, about) for entry, sheet in newest.items()}
+    return tuple(_row(past, judged[past.last.sheet.entry], facts[past.last.sheet.entry], about) for past in pasts)
 
 
-def _row(
-    past: MeasuredPast, judged: Mapping[_Place, MeasuredRow], about: _About, begins: Sequence[Decimal]
-) -> TrendRow:
-    last, sheets = past.last, about.sheets(past.last.sheet.kind)
-    up_to = sheets[: sheets.index(last.sheet) + 1]
-    levels = levels_of(about.rules, last.measured, facts_of(up_to, about.found.engine, about.found.background))
+def _row(past: MeasuredPast, judged: Mapping[_Place, MeasuredRow], facts: MeasuredFacts, about: _About) -> TrendRow:
+    last = past.last
+    levels = levels_of(about.rules, last.measured, facts)
     return measured_row(
         past,
         judged.get((past.quantity, past.point, last.measured.phase)),
@@ -124,8 +124,13 @@ def _row(
         ahead_of(past, levels, life=about.life, interval=about.intervals.get(last.sheet.kind)),
         rate_of(past),
         counts_hours=about.life is not None,
-        begins=begins,
     )
+
+
+def _facts(sheet: MeasuredSheet, about: _About) -> MeasuredFacts:
+    """Give what a sheet is judged by alone, as when it was the newest of its kind."""
+    sheets = about.sheets(sheet.kind)
+    return facts_of(sheets[: sheets.index(sheet) + 1], about.found.engine, about.found.background)
 
 
 def _judged(sheet: MeasuredSheet, about: _About) -> dict[_Place, MeasuredRow]:

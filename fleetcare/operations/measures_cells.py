@@ -9,7 +9,7 @@ from typing import TYPE_CHECKING
 from fleetcare.domain.measured import MeasuredEngine
 from fleetcare.domain.numbers import parse_number
 from fleetcare.domain.sheet_kinds import ISO4406, KINDS, At, Column, SheetKind, WordColumn
-from fleetcare.domain.sheets import Phase
+from fleetcare.domain.sheets import NOT_DETECTED, Phase
 from fleetcare.errors import Misread, Refused
 from fleetcare.operations.find import FoundItem
 from fleetcare.operations.measured import load_measured_engine
@@ -21,7 +21,6 @@ if TYPE_CHECKING:
 MOST_CYLINDERS = 99
 """Where the nameplate does not say how many there are."""
 
-NOT_DETECTED = "ND"
 _GROUPED = re.compile(r"[+-]?[1-9][0-9]{0,2}(,[0-9]{3})+")
 _NOTHING = frozenset({"-", "--", "n/a", "na", "none", "nil", "neg", "negative", "trace"})
 _MOST_IN_A_WORD = 60

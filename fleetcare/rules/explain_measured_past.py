@@ -20,9 +20,10 @@ from fleetcare.rules.measured_past import (
     Break,
     MeasuredPast,
     PastMeasure,
-    hours_on_oil,
     is_oil,
+    new_oil,
 )
+from fleetcare.rules.oil_fills import hours_on_oil
 from fleetcare.rules.trend_row import Ahead, Dot, TrendRow
 
 PLACES: Mapping[str, int] = {
@@ -70,12 +71,8 @@ def measured_row(
     rate: PastRate | None = None,
     *,
     counts_hours: bool,
-    begins: Sequence[Decimal] = (),
 ) -> TrendRow:
-    """Flatten a past; `judged` is its newest value as judged on its sheet, None where that is not known.
-
-    `begins` is where each fill of oil begins.
-    """
+    """Flatten a past; `judged` is its newest value as judged on its sheet, None where that is not known."""
     last = past.last
     verdict = judged.verdict if judged is not None else Verdict.NOT_JUDGED
     drawn = [tuple(_dots(one for one in line if not one.is_bound)) for line in past.lines]
@@ -93,7 +90,7 @@ def measured_row(
         left_out=sum(one.at is None for one in past.values),
         ahead=_ahead(past, projection),
         bounds=tuple(_dots(one for one in past.values if one.is_bound)),
-        fresh=tuple(Dot(float(at), float(past.fresh)) for at in begins) if past.fresh is not None else (),
+        fresh=tuple(Dot(float(at), float(new)) for at, new in new_oil(past).items()),
         rate=_signed(rate.per_100h, past.unit) if rate is not None else "",
         unit=past.unit,
         places=PLACES.get(past.unit, 0),

@@ -10,7 +10,8 @@ from decimal import Decimal
 
 from fleetcare.domain.trends import End, Obstacle, Projection
 from fleetcare.rules.judging.levels import Level
-from fleetcare.rules.measured_past import MeasuredPast, hours_on_oil, is_oil, run_since, start_ppm
+from fleetcare.rules.measured_past import MeasuredPast, is_oil, start_of
+from fleetcare.rules.oil_fills import hours_on_oil, run_since
 from fleetcare.rules.projection import project_on
 
 _STILL_SAID = frozenset({Obstacle.TOO_FEW, Obstacle.PAST_LIMIT})
@@ -30,7 +31,7 @@ def rate_of(past: MeasuredPast) -> PastRate | None:
 
     Corrected it is that of `oil.wear_rate`: the value is brought to what it would be without top-up.
     """
-    hours, start, last = hours_on_oil(past.last.sheet), start_ppm(past), past.last
+    hours, start, last = hours_on_oil(past.last.sheet), start_of(past.last), past.last
     if not is_oil(past) or last.is_bound or hours is None or start is None:
         return None
     shown = last.figure if last.y is None else last.y

@@ -17,17 +17,15 @@ from decimal import Decimal
 from enum import StrEnum
 from itertools import pairwise
 from statistics import median
-from typing import NamedTuple
 
 from fleetcare.domain.measured import OIL, MeasuredSheet
 from fleetcare.domain.measures import can_convert
-from fleetcare.domain.sheets import SheetValue
+from fleetcare.domain.sheets import NOT_DETECTED, SheetValue
 from fleetcare.domain.trends import Point, Segment
-from fleetcare.rules.judging.facts import CannotTell
-from fleetcare.rules.judging.rates import is_other_fill
 from fleetcare.rules.judging.spans import decimal
-from fleetcare.rules.judging.values import HOURS_ON_OIL, TOP_UP, Measured, fresh_of, judged_phases, single, values_of
-from fleetcare.rules.oil import MOST_HOURS, TRUSTED_MAKE_UP, make_up_factor
+from fleetcare.rules.judging.values import Measured, fresh_of, judged_phases, values_of
+from fleetcare.rules.oil import TRUSTED_MAKE_UP, make_up_factor
+from fleetcare.rules.oil_fills import Fill, fills_of, hours_on_oil, top_up
 
 CONTAMINANTS = ("water", "fuel", "glycol", "soot", "insolubles", "Si", "Na", "K")
 PROPERTIES = ("kv100", "kv40", "tbn", "tan", "ph", "oxidation", "nitration", "flash_point")
@@ -60,18 +58,12 @@ class Break(StrEnum):
     OTHER_FILL = "other fill"
 
 
-class Fill(NamedTuple):
-    """A fill of oil: the entry of its first sample, and the hours seen on the fills before it."""
-
-    first: int
-    begins: Decimal
-
-
 @dataclass(frozen=True, slots=True)
 class PastMeasure:
     """A value with its sheet. `at` is where it is drawn, None where that is not known; `figure` is in the unit of the past.
 
     Where an oil is drawn is its fill's beginning, which is the sum of the hours seen on the fills before, and its own hours.
+    `fresh` is what new oil had of it by the sheet, else by its grade, None where not known.
 
     A bound stands at its high end. `x` and `y` are where it is fitted and as what, None where `aside` says why it is not.
     Values of one `line` can be compared: those of a gauge, or of a laboratory and a fill.
@@ -85,22 +77,22 @@ class PastMeasure:
     x: Decimal | None = None
     y: Decimal | None = None
     aside: Aside | None = None
+    fresh: Decimal | None = None
 
     @property
     def is_bound(self) -> bool:
-        """Whether it is only known to lie below its figure."""
-        return self.measured.evidence.value.startswith(("<", "ND"))
+        """Whether it is only known to lie at its figure at most."""
+        return not self.measured.span.is_known or self.measured.evidence.value == NOT_DETECTED
 
 
 @dataclass(frozen=True, slots=True)
 class MeasuredPast:
-    """All values of a quantity at a point, oldest first, at least one. `fresh` is what new oil has, None where not known."""
+    """All values of a quantity at a point, oldest first, at least one."""
 
     quantity: str
     point: str
     unit: str
     values: tuple[PastMeasure, ...]
-    fresh: Decimal | None = None
 
     @property
     def last(self) -> PastMeasure:
@@ -158,36 +150,26 @@ def compression_pasts(
 def oil_pasts(sheets: Sequence[MeasuredSheet], sump: Decimal | None, fresh: Sequence[SheetValue]) -> list[MeasuredPast]:
     """Give the past of each thing a laboratory ever reported; `sump` is in L, `fresh` what new oil of the grade has."""
     fills = fills_of(sheets)
-    pasts = []
-    for quantity in OIL_ORDER:
-        past = _past(sheets, quantity, "")
-        if past is not None:
-            new = fresh_of(past.last.sheet, fresh, quantity)
-            is_known = new is not None and new.span.is_known and can_convert(new.unit, past.unit)
-            past = replace(past, fresh=_figure(new, past.unit) if is_known and new is not None else None)
-            pasts.append(replace(past, values=tuple(_over_fill(one, past, fills, sump) for one in past.values)))
-    return pasts
+    pasts = [past for quantity in OIL_ORDER if (past := _past(sheets, quantity, "")) is not None]
+    return [
+        replace(past, values=tuple(_over_fill(_with_fresh(one, past, fresh), past, fills, sump) for one in past.values))
+        for past in pasts
+    ]
 
 
-def hours_on_oil(sheet: MeasuredSheet) -> Decimal | None:
-    """Give the hours a sample's oil had run, None where the sheet states none that can be right."""
-    hours = _stated(sheet, HOURS_ON_OIL, "h")
-    return hours if hours is not None and 0 < hours <= MOST_HOURS else None
-
-
-def top_up(sheet: MeasuredSheet) -> Decimal | None:
-    """Give the litres topped up since the oil change, None where the sheet does not state them."""
-    return _stated(sheet, TOP_UP, "L")
-
-
-def start_ppm(past: MeasuredPast) -> Decimal | None:
+def start_of(one: PastMeasure) -> Decimal | None:
     """Give what the oil began with: as new oil has it, else none of what only comes in use; None where not known."""
-    return Decimal(0) if past.fresh is None and past.quantity in _FROM_NOTHING else past.fresh
+    return Decimal(0) if one.fresh is None and one.measured.quantity in _FROM_NOTHING else one.fresh
 
 
-def mixes(past: MeasuredPast) -> bool:
-    """Whether the mass balance of topped-up oil holds for it."""
-    return past.quantity not in _MIX_OTHERWISE
+def new_oil(past: MeasuredPast) -> dict[Decimal, Decimal]:
+    """Give where each fill begins, as it is drawn, with what new oil had then, as far as both are known."""
+    marks: dict[Decimal, Decimal] = {}
+    for one in past.values:
+        hours = hours_on_oil(one.sheet)
+        if one.at is not None and hours is not None and one.fresh is not None:
+            marks.setdefault(one.at - hours, one.fresh)
+    return marks
 
 
 def _past(sheets: Sequence[MeasuredSheet], quantity: str, point: str) -> MeasuredPast | None:
@@ -220,6 +202,12 @@ def _over_life(one: PastMeasure, counts_hours: bool) -> PastMeasure:
     return replace(one, aside=aside) if aside else replace(one, x=hours, y=one.figure)
 
 
+def _with_fresh(one: PastMeasure, past: MeasuredPast, fresh: Sequence[SheetValue]) -> PastMeasure:
+    new = fresh_of(one.sheet, fresh, past.quantity)
+    is_known = new is not None and new.span.is_known and can_convert(new.unit, past.unit)
+    return replace(one, fresh=_figure(new, past.unit)) if new is not None and is_known else one
+
+
 def _over_fill(one: PastMeasure, past: MeasuredPast, fills: Mapping[int, Fill], sump: Decimal | None) -> PastMeasure:
     fill, hours, read = fills.get(one.sheet.entry), hours_on_oil(one.sheet), one.figure
     one = replace(one, line=(one.sheet.gauge, fill.first if fill else ("alone", one.sheet.entry)))
@@ -227,10 +215,10 @@ def _over_fill(one: PastMeasure, past: MeasuredPast, fills: Mapping[int, Fill], 
         one = replace(one, at=fill.begins + hours)
     if one.is_bound or hours is None:
         return replace(one, aside=Aside.BOUND if one.is_bound else Aside.NO_HOURS_ON_OIL)
-    added, start = top_up(one.sheet), start_ppm(past)
+    added, start = top_up(one.sheet), start_of(one)
     if added is None:
         return replace(one, aside=Aside.NO_TOP_UP)
-    if added and not mixes(past):
+    if added and past.quantity in _MIX_OTHERWISE:
         return replace(one, aside=Aside.TOPPED_UP)
     if added and not sump:
         return replace(one, aside=Aside.NO_SUMP)
@@ -241,49 +229,6 @@ def _over_fill(one: PastMeasure, past: MeasuredPast, fills: Mapping[int, Fill], 
             return replace(one, aside=Aside.TOPPED_UP)
         read = start + (read - start) * make_up_factor(added / sump)
     return replace(one, x=hours, y=read)
-
-
-def fills_of(sheets: Iterable[MeasuredSheet]) -> dict[int, Fill]:
-    """Tell the fills of oil samples apart, by entry; samples whose hours nobody stated are left out."""
-    fills: dict[int, Fill] = {}
-    then: tuple[MeasuredSheet, Decimal] | None = None
-    for sheet in sheets:
-        hours = hours_on_oil(sheet)
-        if hours is None:
-            continue
-        if then is None:
-            fill = Fill(sheet.entry, Decimal(0))
-        elif is_other_fill(then, (sheet, hours)):
-            fill = Fill(sheet.entry, fill.begins + then[1])
-        fills[sheet.entry] = fill
-        then = sheet, hours
-    return fills
-
-
-def seen_until(sheets: Sequence[MeasuredSheet], life: Decimal | None) -> Decimal:
-    """Give where the oil stands by now, fill after fill: its newest sample, and what the engine ran since; 0 without any.
-
-    `life` is the life total of the engine now, h, None where not known.
-    """
-    fills = fills_of(sheets)
-    known = [sheet for sheet in sheets if sheet.entry in fills]
-    if not known:
-        return Decimal(0)
-    return fills[known[-1].entry].begins + (hours_on_oil(known[-1]) or 0) + run_since(known[-1], life)
-
-
-def run_since(sheet: MeasuredSheet, life: Decimal | None) -> Decimal:
-    """Give the hours an engine ran since a sheet, 0 where that is not known."""
-    then = sheet.engine_hours
-    return max(life - then, Decimal(0)) if life is not None and then is not None else Decimal(0)
-
-
-def _stated(sheet: MeasuredSheet, quantity: str, unit: str) -> Decimal | None:
-    one = single(sheet, quantity)
-    try:
-        return decimal(one.within(unit).low) if one is not None and one.span.is_known else None
-    except CannotTell:
-        return None
 
 
 def is_oil(past: MeasuredPast) -> bool:

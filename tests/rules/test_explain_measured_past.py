@@ -10,7 +10,7 @@ from fleetcare.rules.explain_measured_past import measured_row, name_of
 from fleetcare.rules.judging.levels import Level
 from fleetcare.rules.measured_ahead import ahead_of, rate_of
 from fleetcare.rules.measured_past import MeasuredPast, compression_pasts
-from fleetcare.rules.trend_row import TrendRow
+from fleetcare.rules.trend_row import Dot, TrendRow
 from tests.rules.measured import a_rule, a_sheet, value
 from tests.rules.pasts import BANKS, a_test, cylinder, iron, oil, sampled
 
@@ -29,7 +29,7 @@ def row(
     life: str | None = None,
 ) -> TrendRow:
     told = ahead_of(past, levels, life=Decimal(life) if life else None, interval=None)
-    return measured_row(past, judged, levels, told, rate_of(past), counts_hours=counts_hours, begins=(Decimal(0),))
+    return measured_row(past, judged, levels, told, rate_of(past), counts_hours=counts_hours)
 
 
 def rising(*figures: str, **more: str) -> MeasuredPast:
@@ -63,11 +63,12 @@ def test_a_limit_that_is_reached_is_drawn_ahead_on_the_fill_it_belongs_to() -> N
     assert "likely 215 h on the oil" in told.said
 
 
-def test_new_oil_is_drawn_where_each_fill_begins_as_far_as_it_is_known() -> None:
-    past = rising("12", "19")
-    assert row(past).fresh == ()
-    (mark,) = row(replace(past, fresh=Decimal(3))).fresh
-    assert (mark.x, mark.y) == (0, 3)
+def test_new_oil_is_drawn_where_each_fill_begins_as_it_was_then() -> None:
+    new, other = (value("Fe", text, phase="new") for text in ("2", "3"))
+    samples = [sampled(9, "100", "9", new), sampled(8, "240", "20", new), sampled(0, "50", "6"), sampled(0, "", "6")]
+    assert row(iron(*samples[:2])).fresh == (Dot(0, 2),)
+    assert row(iron(*samples, fresh=(other,))).fresh == (Dot(0, 2), Dot(240, 3))
+    assert row(iron(*samples[2:])).fresh == ()
 
 
 def test_flagged_values_say_on_which_side() -> None:

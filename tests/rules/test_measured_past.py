@@ -10,8 +10,8 @@ from fleetcare.rules.measured_past import (
     Aside,
     Break,
     compression_pasts,
-    seen_until,
 )
+from fleetcare.rules.oil_fills import seen_until
 from tests.rules.measured import a_sheet, value
 from tests.rules.pasts import BANKS, a_test, cylinder, fitted, iron, oil, sampled
 
@@ -118,7 +118,7 @@ def test_topped_up_iron_is_brought_to_what_it_would_be_without() -> None:
     past = iron(sampled(0, "200", "33", added="1.2"), fresh=(value("Fe", "3", phase="new"),))
     assert past.last.y is not None
     assert round(past.last.y, 2) == Decimal("35.31")
-    assert past.fresh == 3
+    assert past.last.fresh == 3
 
 
 @pytest.mark.parametrize(
@@ -142,8 +142,8 @@ def test_what_cannot_be_corrected_for_a_top_up_is_not_fitted(
 
 
 def test_new_oil_known_only_as_a_bound_is_not_known() -> None:
-    assert iron(sampled(0, "100", "9"), fresh=(value("Fe", "<1", phase="new"),)).fresh is None
-    assert iron(sampled(0, "100", "9"), fresh=(value("Fe", "1", "kPa", phase="new"),)).fresh is None
+    assert iron(sampled(0, "100", "9"), fresh=(value("Fe", "<1", phase="new"),)).last.fresh is None
+    assert iron(sampled(0, "100", "9"), fresh=(value("Fe", "1", "kPa", phase="new"),)).last.fresh is None
 
 
 def test_the_oil_now_is_its_newest_sample_and_what_the_engine_ran_since() -> None:

@@ -1,0 +1,73 @@
+"""Oil samples told apart by the fill they were taken from, and the hours that lie between: what the sheets state of it."""
+
+from collections.abc import Iterable, Sequence
+from decimal import Decimal
+from typing import NamedTuple
+
+from fleetcare.domain.measured import MeasuredSheet
+from fleetcare.rules.judging.facts import CannotTell
+from fleetcare.rules.judging.rates import is_other_fill
+from fleetcare.rules.judging.spans import decimal
+from fleetcare.rules.judging.values import HOURS_ON_OIL, TOP_UP, single
+from fleetcare.rules.oil import MOST_HOURS
+
+
+class Fill(NamedTuple):
+    """A fill of oil: the entry of its first sample, and the hours seen on the fills before it."""
+
+    first: int
+    begins: Decimal
+
+
+def fills_of(sheets: Iterable[MeasuredSheet]) -> dict[int, Fill]:
+    """Tell the fills of oil samples apart, by entry; samples whose hours nobody stated are left out."""
+    fills: dict[int, Fill] = {}
+    then: tuple[MeasuredSheet, Decimal] | None = None
+    for sheet in sheets:
+        hours = hours_on_oil(sheet)
+        if hours is None:
+            continue
+        if then is None:
+            fill = Fill(sheet.entry, Decimal(0))
+        elif is_other_fill(then, (sheet, hours)):
+            fill = Fill(sheet.entry, fill.begins + then[1])
+        fills[sheet.entry] = fill
+        then = sheet, hours
+    return fills
+
+
+def seen_until(sheets: Sequence[MeasuredSheet], life: Decimal | None) -> Decimal:
+    """Give where the oil stands by now, fill after fill: its newest sample, and what the engine ran since; 0 without any.
+
+    `life` is the life total of the engine now, h, None where not known.
+    """
+    fills = fills_of(sheets)
+    known = [sheet for sheet in sheets if sheet.entry in fills]
+    if not known:
+        return Decimal(0)
+    return fills[known[-1].entry].begins + (hours_on_oil(known[-1]) or 0) + run_since(known[-1], life)
+
+
+def run_since(sheet: MeasuredSheet, life: Decimal | None) -> Decimal:
+    """Give the hours an engine ran since a sheet, 0 where that is not known."""
+    then = sheet.engine_hours
+    return max(life - then, Decimal(0)) if life is not None and then is not None else Decimal(0)
+
+
+def _stated(sheet: MeasuredSheet, quantity: str, unit: str) -> Decimal | None:
+    one = single(sheet, quantity)
+    try:
+        return decimal(one.within(unit).low) if one is not None and one.span.is_known else None
+    except CannotTell:
+        return None
+
+
+def hours_on_oil(sheet: MeasuredSheet) -> Decimal | None:
+    """Give the hours a sample's oil had run, None where the sheet states none that can be right."""
+    hours = _stated(sheet, HOURS_ON_OIL, "h")
+    return hours if hours is not None and 0 < hours <= MOST_HOURS else None
+
+
+def top_up(sheet: MeasuredSheet) -> Decimal | None:
+    """Give the litres topped up since the oil change, None where the sheet does not state them."""
+    return _stated(sheet, TOP_UP, "L")
