@@ -3,7 +3,6 @@
 from collections.abc import Mapping
 from dataclasses import dataclass
 from datetime import date
-from functools import cache
 from typing import TYPE_CHECKING
 
 from fleetcare.domain.findings import Finding
@@ -12,7 +11,6 @@ from fleetcare.operations.entries import first_entries
 from fleetcare.operations.finding_answers import load_answers
 from fleetcare.operations.judged import judge_lives
 from fleetcare.operations.measured import EngineSheets
-from fleetcare.rulebook.rules import rule_book
 from fleetcare.rules.explain_finding import FindingRow, finding_row
 from fleetcare.rules.finding_life import FindingState, Lived, live
 from fleetcare.rules.judge_engine import JudgedEngine, judge_engine
@@ -37,12 +35,6 @@ class EngineFinding:
     def sheets(self) -> frozenset[int]:
         """The entries of the sheets its evidence stands on."""
         return frozenset(value.sheet for value in self.finding.evidence)
-
-
-@cache
-def book_in_force() -> RuleBook:
-    """Give the rules that hold for the shop."""
-    return rule_book()
 
 
 def judge_sheets(found: EngineSheets, book: RuleBook) -> JudgedEngine:

@@ -13,18 +13,20 @@ from typing import TYPE_CHECKING
 from fleetcare.domain.measured import COMPRESSION, LEAKDOWN, OIL, RUN, SPOT
 from fleetcare.domain.measures import QUANTITIES, read_unit
 from fleetcare.domain.quantities import plain
+from fleetcare.domain.rule_book import RuleBook
 from fleetcare.domain.sheet_kinds import At, Column, SheetKind, WordColumn
 from fleetcare.domain.sheets import CellKey, Phase, Sheet, SheetValue, Verdict
 from fleetcare.drafts.sheets import SheetIn, SheetRow
 from fleetcare.errors import FleetError, Refusals, Refused
 from fleetcare.operations.families import Families
 from fleetcare.operations.find import FoundItem
-from fleetcare.operations.findings import EngineFinding, book_in_force, engine_findings, judge_sheets
+from fleetcare.operations.findings import EngineFinding, engine_findings, judge_sheets
 from fleetcare.operations.measured import EngineSheets, load_engine_sheets, measured_sheet
 from fleetcare.operations.measures_cells import MeasureForm, measure_form
 from fleetcare.operations.measures_read import read_measures
 from fleetcare.operations.sheets_load import load_sheets
 from fleetcare.operations.sheets_values import SaidDoubt
+from fleetcare.operations.shop_book import usable_book
 from fleetcare.rules.explain_measured import MeasuredRow as MeasuredRow
 from fleetcare.rules.explain_measured import measured_rows
 from fleetcare.rules.judge_engine import Background
@@ -45,10 +47,11 @@ _PARTS = re.compile(r"\s*(?P<figure>(?:<\s*)?[-+]?[0-9][0-9.,]*|nd)\s*(?P<unit>[
 
 @dataclass(frozen=True, slots=True)
 class OpenMeasures:
-    """What a sheet of an engine is filled in and judged by: its form, the sheets before it, and their units and values."""
+    """What a sheet of an engine is filled in and judged by: its form, the sheets before it with their units and values, the rules."""
 
     form: MeasureForm
     found: EngineSheets
+    book: RuleBook
     last: Mapping[CellKey, str]
     units: Mapping[str, str]
     stored: Sheet | None = None
@@ -95,6 +98,7 @@ def open_measures(
     return OpenMeasures(
         form=form,
         found=replace(found, sheets=kept, background=_beside(connection, found, kind, on)),
+        book=usable_book(connection, on)[0],
         last={key_of(value): text_of(value) for value in values},
         units={value.quantity: value.unit for value in values if value.unit},
         stored=stored,
@@ -189,8 +193,8 @@ def read_typed(
                 wrong.setdefault(order[number], error)
                 rows.pop(number, None)
     sheet = Sheet(NOT_YET, opened.form.kind.name, opened.form.on, values, gauge=gauge, received_on=received)
-    judged = judge_sheets(replace(opened.found, sheets=(*opened.found.sheets, measured_sheet(sheet))), book_in_force())
-    rules = rules_for(book_in_force(), opened.found.engine)
+    judged = judge_sheets(replace(opened.found, sheets=(*opened.found.sheets, measured_sheet(sheet))), opened.book)
+    rules = rules_for(opened.book, opened.found.engine)
     told = measured_rows(judged.sheets[NOT_YET], rules, opened.form.kind.quantities)
     doubts = {key_of(value): doubt for value in values if (doubt := _doubt(opened, value)) is not None}
     return TypedMeasures(

@@ -1,5 +1,7 @@
 """Sheets the rule book judges, on the screen: a key beyond each value, everything judged at each, led where it matters."""
 
+from pathlib import Path
+
 import pytest
 from textual.pilot import Pilot
 
@@ -10,7 +12,7 @@ from fleetcare.tui.forms.base import Subject
 from fleetcare.tui.screens.due import DueScreen
 from fleetcare.tui.screens.item import ItemScreen
 from fleetcare.tui.screens.sheet import SheetScreen
-from tests.tui.conftest import Opened, line_with, press, seen
+from tests.tui.conftest import Opened, line_with, press, seen, type_in
 from tests.tui.forms import form_with, stored
 from tests.tui.sheets import SMALL, enter_all, rows, said
 
@@ -155,3 +157,13 @@ async def test_the_sheet_of_an_entry_opens_with_what_it_holds(opened: Opened, be
         screen.grid.go(CellKey("pressure", "3", Phase.DRY))
         await press(pilot, *"23", "ctrl+s")
         assert "corrects entry 1" in said(pilot)
+
+
+async def test_a_sheet_is_judged_by_the_rules_of_the_shop(opened: Opened, bench: Context, tmp_path: Path) -> None:
+    own = tmp_path / "ours.toml"
+    own.write_text('[[rule]]\nid = "compression-r75"\nlow = { alarm = { beyond = 60 } }\nwhy = "old engines"\n')
+    type_in(bench.path, "rules", "--use", str(own), "--why", "old engines", "--by", "Harbin")
+    async with opened(size=SMALL, context=bench) as pilot:
+        await sheet_on(pilot, COMPRESSION)
+        await enter_all(pilot, "25bar", "25", "17", "25", "24", "25")
+        assert line_with(pilot, "nothing found so far")
