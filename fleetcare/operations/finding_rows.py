@@ -9,6 +9,7 @@ from fleetcare.operations.find import find_item
 from fleetcare.operations.finding_answers import load_answers
 from fleetcare.operations.judged import Lives, Progress, finding_lives_on
 from fleetcare.operations.rows import fetch
+from fleetcare.rules.explain_finding import say_figure
 from fleetcare.rules.finding_life import Answer, FindingState, Lived, live, withdrawn
 from fleetcare.rules.finding_record import (
     FINDING_COLUMNS,
@@ -32,6 +33,7 @@ __all__ = [
     "findings_csv",
     "found_findings",
     "rows_of",
+    "say_figure",
     "say_figures",
 ]
 

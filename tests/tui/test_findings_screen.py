@@ -24,7 +24,8 @@ async def test_a_finding_shows_whose_what_and_how_far(opened: Opened, found: Con
 async def test_a_finding_opens_with_its_working_and_its_source(opened: Opened, found: Context) -> None:
     async with opened("3", "enter", size=LARGE, context=found) as pilot:
         assert isinstance(pilot.app.screen, FindingScreen)
-        for label in ("measured", "limit", "by how much", "how worked out", "next step", "source", "caution"):
+        assert line_with(pilot, "68 %, limit 75 %, margin -7 %")
+        for label in ("how worked out", "measured values", "next step", "source", "caution"):
             assert [line for line in seen(pilot) if line.strip().startswith(label)], label
         await press(pilot, "escape")
         assert isinstance(pilot.app.screen, FindingsScreen)

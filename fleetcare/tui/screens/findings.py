@@ -5,7 +5,6 @@ from typing import TYPE_CHECKING
 
 from textual.widget import Widget
 
-from fleetcare.domain.quantities import plain
 from fleetcare.errors import FleetError
 from fleetcare.tui.forms.base import Subject
 from fleetcare.tui.frame import FramedScreen, TopBar, say_day
@@ -37,8 +36,10 @@ def _severity(row: "FindingRecord") -> Cell:
 
 
 def _figure(row: "FindingRecord") -> str:
-    """Say what was measured."""
-    return f"{plain(round(row.measured, 3))} {row.unit}".strip() if row.measured is not None else ""
+    """Say what was measured, as its words do."""
+    from fleetcare.operations.finding_rows import say_figure
+
+    return say_figure(row.measured, row.unit) if row.measured is not None else ""
 
 
 COLUMNS: tuple[Column["FindingRecord"], ...] = (
@@ -169,12 +170,12 @@ class FindingScreen(FramedScreen):
 
     def on_mount(self) -> None:
         """Fill it."""
+        from fleetcare.operations.finding_rows import say_figures
+
         row = self.row
         self.query_one(TopBar).tell(say_day(self.context.today()))
         figures = [
-            ("measured", _figure(row)),
-            ("limit", f"{plain(row.limit)} {row.unit}" if row.limit is not None else ""),
-            ("by how much", f"{plain(round(-row.margin, 4))} {row.unit} past it" if row.margin is not None else ""),
+            ("measured", say_figures(row)),
             ("since", row.since.isoformat()),
             ("state", row.state),
             ("because", row.because),
