@@ -22,7 +22,7 @@ from fleetcare.rules.judging.facts import MeasuredFacts
 from fleetcare.rules.judging.levels import levels_of
 from fleetcare.rules.measured_ahead import ahead_of, rate_of
 from fleetcare.rules.measured_past import MeasuredPast, compression_pasts, oil_pasts
-from fleetcare.rules.oil_fills import fills_of, seen_until
+from fleetcare.rules.oil_fills import Along, along_of, fills_of, seen_until
 from fleetcare.rules.trend_row import TrendRow, Trends
 
 if TYPE_CHECKING:
@@ -79,7 +79,7 @@ def measured_trends(
         life=latest.life if latest is not None else None,
         intervals=_intervals(lines),
     )
-    return MeasuredTrends(_compression(about, item, facts.on), _oil(about, item))
+    return MeasuredTrends(_compression(about, item, facts.on), _oil(about, item, facts.on))
 
 
 def _compression(about: _About, item: FoundItem, on: date) -> Trends:
@@ -88,23 +88,30 @@ def _compression(about: _About, item: FoundItem, on: date) -> Trends:
     return Trends(
         rows=_rows(pasts, about),
         counts_hours=counts_hours,
-        until=float(about.life) if about.life is not None else on.toordinal(),
+        until=_today(about, on),
         why_none=_why_none(item, COMPRESSION),
         is_adjusted=False,
     )
 
 
-def _oil(about: _About, item: FoundItem) -> Trends:
-    sheets = about.sheets(OIL)
-    begins = {fill.begins for fill in fills_of(sheets).values()}
+def _oil(about: _About, item: FoundItem, on: date) -> Trends:
+    sheets, found, counts_hours = about.sheets(OIL), about.found, about.life is not None
+    pasts = oil_pasts(sheets, found.engine.sump, found.background.fresh, counts_hours=counts_hours)
+    over_oil = along_of(sheets, counts_hours=counts_hours) is Along.OIL
+    begins = {fill.begins for fill in fills_of(sheets).values()} if over_oil else set()
     return Trends(
-        rows=_rows(oil_pasts(sheets, about.found.engine.sump, about.found.background.fresh), about),
-        counts_hours=True,
-        until=float(seen_until(sheets, about.life)),
+        rows=_rows(pasts, about),
+        counts_hours=over_oil or counts_hours,
+        until=float(seen_until(sheets, about.life)) if over_oil else _today(about, on),
         why_none=_why_none(item, OIL),
         is_adjusted=False,
         begins=tuple(sorted(map(float, begins))),
     )
+
+
+def _today(about: _About, on: date) -> float:
+    """Give how far along the hours of life, or days, it is by now."""
+    return float(about.life) if about.life is not None else on.toordinal()
 
 
 def _rows(pasts: Sequence[MeasuredPast], about: _About) -> tuple[TrendRow, ...]:

@@ -23,7 +23,7 @@ from fleetcare.rules.measured_past import (
     is_oil,
     new_oil,
 )
-from fleetcare.rules.oil_fills import hours_on_oil
+from fleetcare.rules.oil_fills import Along, hours_on_oil
 from fleetcare.rules.trend_row import Ahead, Dot, TrendRow
 
 PLACES: Mapping[str, int] = {
@@ -57,10 +57,6 @@ _WHY_NOT = {
     Aside.TOPPED_UP: "oil was topped up, which cannot be corrected for",
 }
 _BROKEN = {Break.FIRST: "", Break.OTHER_GAUGE: "another gauge", Break.OTHER_FILL: "another fill"}
-_NO_PLACE = {
-    True: "samples that do not state the hours on the oil",
-    False: "sheets before the first reading of the hours",
-}
 
 
 def measured_row(
@@ -159,7 +155,7 @@ def _said(
     if bounds:
         said.append(f"{bounds} below what could be detected, drawn at that and not fitted.")
     if any(one.at is None for one in past.values):
-        said.append(f"Not drawn: {_NO_PLACE[is_oil(past)]}.")
+        said.append("Not drawn: sheets before the first reading of the hours.")
     return said
 
 
@@ -191,13 +187,13 @@ def _say_levels(levels: Sequence[Level], unit: str) -> str:
 
 
 def _ahead(past: MeasuredPast, projection: Projection | None) -> Ahead | None:
-    """Give what is drawn beyond the newest value, from the line there; an oil's hours are brought to those of life."""
+    """Give what is drawn beyond the newest value, from the line there, over what it is drawn along."""
     last = past.last
-    if projection is None or projection.trend is None or projection.likely is None:
+    if projection is None or projection.likely is None or past.along is Along.DAYS or last.at is None:
         return None
+    assert projection.trend is not None
     assert projection.early is not None
     assert projection.late is not None
-    assert last.at is not None
     assert last.x is not None
     further = last.at - last.x
     return Ahead(

@@ -2,7 +2,8 @@
 
 Inputs are the sheets of one kind, oldest first. Figures are converted exactly into the unit of the newest one. Compression
 lies over the hours of life, drawn over days where nothing counts hours. Oil lies over the hours on the oil, begun anew at
-each oil change (reference: hours on oil, not life, as oil laboratories do), drawn fill after fill.
+each oil change, as laboratories count, drawn fill after fill; where any sample does not state them, it is drawn over the
+hours of life too.
 
 Values of one gauge or laboratory, and of one fill of oil, make a line with a level of its own; another gauge is no trend.
 The slope is common to the lines (`rules/trends`). Not fitted is a bound ("<1", ND), a value of which it is not known where
@@ -15,8 +16,6 @@ from collections.abc import Hashable, Iterable, Mapping, Sequence
 from dataclasses import dataclass, replace
 from decimal import Decimal
 from enum import StrEnum
-from itertools import pairwise
-from statistics import median
 
 from fleetcare.domain.measured import OIL, MeasuredSheet
 from fleetcare.domain.measures import can_convert
@@ -25,7 +24,8 @@ from fleetcare.domain.trends import Point, Segment
 from fleetcare.rules.judging.spans import decimal
 from fleetcare.rules.judging.values import Measured, fresh_of, judged_phases, values_of
 from fleetcare.rules.oil import TRUSTED_MAKE_UP, make_up_factor
-from fleetcare.rules.oil_fills import Fill, fills_of, hours_on_oil, top_up
+from fleetcare.rules.oil_fills import Along, Fill, along_of, fills_of, hours_on_oil, places_of, top_up
+from fleetcare.rules.trends import usual_gap
 
 CONTAMINANTS = ("water", "fuel", "glycol", "soot", "insolubles", "Si", "Na", "K")
 PROPERTIES = ("kv100", "kv40", "tbn", "tan", "ph", "oxidation", "nitration", "flash_point")
@@ -62,7 +62,6 @@ class Break(StrEnum):
 class PastMeasure:
     """A value with its sheet. `at` is where it is drawn, None where that is not known; `figure` is in the unit of the past.
 
-    Where an oil is drawn is its fill's beginning, which is the sum of the hours seen on the fills before, and its own hours.
     `fresh` is what new oil had of it by the sheet, else by its grade, None where not known.
 
     A bound stands at its high end. `x` and `y` are where it is fitted and as what, None where `aside` says why it is not.
@@ -87,11 +86,12 @@ class PastMeasure:
 
 @dataclass(frozen=True, slots=True)
 class MeasuredPast:
-    """All values of a quantity at a point, oldest first, at least one."""
+    """All values of a quantity at a point, oldest first, at least one, drawn `along` one thing."""
 
     quantity: str
     point: str
     unit: str
+    along: Along
     values: tuple[PastMeasure, ...]
 
     @property
@@ -128,9 +128,7 @@ class MeasuredPast:
     @property
     def usual_gap(self) -> Decimal | None:
         """The median x between two values of a line, None where no line has two."""
-        xs = [sorted(point.x for point in segment.points) for segment in self.segments]
-        gaps = [after - before for line in xs for before, after in pairwise(line)]
-        return median(gaps) if gaps else None
+        return usual_gap(self.segments)
 
 
 def compression_pasts(
@@ -139,18 +137,22 @@ def compression_pasts(
     """Give the past of each cylinder that was measured dry, as the engine stands; those not on the nameplate come last."""
     known = [str(cylinder) for bank in banks for cylinder in bank]
     seen = dict.fromkeys(one.point for sheet in sheets for one in values_of(sheet, "pressure"))
-    pasts = [_past(sheets, "pressure", point) for point in dict.fromkeys([*known, *seen])]
-    return [
-        replace(past, values=tuple(_over_life(one, counts_hours) for one in past.values))
-        for past in pasts
-        if past is not None
-    ]
+    along = Along.LIFE if counts_hours else Along.DAYS
+    pasts = [_past(sheets, "pressure", point, along) for point in dict.fromkeys([*known, *seen])]
+    return [replace(past, values=tuple(map(_over_life, past.values))) for past in pasts if past is not None]
 
 
-def oil_pasts(sheets: Sequence[MeasuredSheet], sump: Decimal | None, fresh: Sequence[SheetValue]) -> list[MeasuredPast]:
+def oil_pasts(
+    sheets: Sequence[MeasuredSheet],
+    sump: Decimal | None,
+    fresh: Sequence[SheetValue],
+    *,
+    counts_hours: bool = True,
+) -> list[MeasuredPast]:
     """Give the past of each thing a laboratory ever reported; `sump` is in L, `fresh` what new oil of the grade has."""
     fills = fills_of(sheets)
-    pasts = [past for quantity in OIL_ORDER if (past := _past(sheets, quantity, "")) is not None]
+    along = along_of(sheets, counts_hours=counts_hours)
+    pasts = [past for quantity in OIL_ORDER if (past := _past(sheets, quantity, "", along)) is not None]
     return [
         replace(past, values=tuple(_over_fill(_with_fresh(one, past, fresh), past, fills, sump) for one in past.values))
         for past in pasts
@@ -165,14 +167,14 @@ def start_of(one: PastMeasure) -> Decimal | None:
 def new_oil(past: MeasuredPast) -> dict[Decimal, Decimal]:
     """Give where each fill begins, as it is drawn, with what new oil had then, as far as both are known."""
     marks: dict[Decimal, Decimal] = {}
-    for one in past.values:
+    for one in past.values if past.along is not Along.DAYS else ():
         hours = hours_on_oil(one.sheet)
         if one.at is not None and hours is not None and one.fresh is not None:
             marks.setdefault(one.at - hours, one.fresh)
     return marks
 
 
-def _past(sheets: Sequence[MeasuredSheet], quantity: str, point: str) -> MeasuredPast | None:
+def _past(sheets: Sequence[MeasuredSheet], quantity: str, point: str, along: Along) -> MeasuredPast | None:
     """Give every value of a quantity at a point; those in a unit of another kind than the newest are left out."""
     found = [
         (sheet, one)
@@ -182,22 +184,21 @@ def _past(sheets: Sequence[MeasuredSheet], quantity: str, point: str) -> Measure
     ]
     if not found:
         return None
-    unit = found[-1][1].unit
+    unit, at = found[-1][1].unit, places_of(sheets, along)
     values = [
-        PastMeasure(sheet, one, None, _figure(one, unit), (sheet.gauge,))
+        PastMeasure(sheet, one, at.get(sheet.entry), _figure(one, unit), (sheet.gauge,))
         for sheet, one in found
         if can_convert(one.unit, unit)
     ]
-    return MeasuredPast(quantity, point, unit, tuple(values))
+    return MeasuredPast(quantity, point, unit, along, tuple(values))
 
 
 def _figure(one: Measured, unit: str) -> Decimal:
     return decimal(one.within(unit).high)
 
 
-def _over_life(one: PastMeasure, counts_hours: bool) -> PastMeasure:
+def _over_life(one: PastMeasure) -> PastMeasure:
     hours = one.sheet.engine_hours
-    one = replace(one, at=hours if counts_hours else Decimal(one.sheet.on.toordinal()))
     aside = Aside.BOUND if one.is_bound else Aside.NO_HOURS if hours is None else None
     return replace(one, aside=aside) if aside else replace(one, x=hours, y=one.figure)
 
@@ -211,8 +212,6 @@ def _with_fresh(one: PastMeasure, past: MeasuredPast, fresh: Sequence[SheetValue
 def _over_fill(one: PastMeasure, past: MeasuredPast, fills: Mapping[int, Fill], sump: Decimal | None) -> PastMeasure:
     fill, hours, read = fills.get(one.sheet.entry), hours_on_oil(one.sheet), one.figure
     one = replace(one, line=(one.sheet.gauge, fill.first if fill else ("alone", one.sheet.entry)))
-    if fill is not None and hours is not None:
-        one = replace(one, at=fill.begins + hours)
     if one.is_bound or hours is None:
         return replace(one, aside=Aside.BOUND if one.is_bound else Aside.NO_HOURS_ON_OIL)
     added, start = top_up(one.sheet), start_of(one)

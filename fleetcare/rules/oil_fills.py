@@ -2,6 +2,7 @@
 
 from collections.abc import Iterable, Sequence
 from decimal import Decimal
+from enum import Enum
 from typing import NamedTuple
 
 from fleetcare.domain.measured import MeasuredSheet
@@ -10,6 +11,14 @@ from fleetcare.rules.judging.rates import is_other_fill
 from fleetcare.rules.judging.spans import decimal
 from fleetcare.rules.judging.values import HOURS_ON_OIL, TOP_UP, single
 from fleetcare.rules.oil import MOST_HOURS
+
+
+class Along(Enum):
+    """What values are drawn along: the hours on the oil, fill after fill, the hours of life of the engine, or days."""
+
+    OIL = "oil"
+    LIFE = "life"
+    DAYS = "days"
 
 
 class Fill(NamedTuple):
@@ -34,6 +43,28 @@ def fills_of(sheets: Iterable[MeasuredSheet]) -> dict[int, Fill]:
         fills[sheet.entry] = fill
         then = sheet, hours
     return fills
+
+
+def along_of(sheets: Iterable[MeasuredSheet], *, counts_hours: bool) -> Along:
+    """Say what oil samples are drawn along: where any does not state its hours, what is known of all of them."""
+    if all(hours_on_oil(sheet) is not None for sheet in sheets):
+        return Along.OIL
+    return Along.LIFE if counts_hours else Along.DAYS
+
+
+def places_of(sheets: Sequence[MeasuredSheet], along: Along) -> dict[int, Decimal]:
+    """Give where each sheet is drawn, by entry; those of which it is not known are left out.
+
+    Along the oil it is where the fill begins, which is the sum of the hours seen on the fills before, and its own hours.
+    """
+    if along is Along.DAYS:
+        return {sheet.entry: Decimal(sheet.on.toordinal()) for sheet in sheets}
+    if along is Along.LIFE:
+        return {sheet.entry: sheet.engine_hours for sheet in sheets if sheet.engine_hours is not None}
+    fills = fills_of(sheets)
+    return {
+        sheet.entry: fills[sheet.entry].begins + hours for sheet in sheets if (hours := hours_on_oil(sheet)) is not None
+    }
 
 
 def seen_until(sheets: Sequence[MeasuredSheet], life: Decimal | None) -> Decimal:

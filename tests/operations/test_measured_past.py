@@ -6,7 +6,7 @@ from fleetcare.context import Context
 from fleetcare.operations.measured_past import MeasuredTrends
 from fleetcare.operations.page import full_page
 from fleetcare.rules.trend_row import TrendRow
-from tests.operations.importing import TODAY, correct, machine, task
+from tests.operations.importing import TODAY, correct, engine, machine, task
 from tests.operations.measure_yard import PRESSURES, take, yard_of_four
 
 HOURS = ("2026-04-01", "2026-04-11", "2026-04-21", "2026-05-01")
@@ -47,6 +47,22 @@ def test_oil_stands_over_its_own_hours_up_to_what_the_engine_ran_since(ctx: Cont
     found = trends(ctx).oil
     assert (found.counts_hours, found.until, found.begins) == (True, 350, (0,))
     assert [dot.x for dot in iron(ctx).segments[0]] == [50, 150, 250]
+
+
+def test_where_a_sample_does_not_state_its_hours_oil_stands_over_those_of_life(ctx: Context) -> None:
+    sampled(ctx, "12", "19")
+    take(ctx, "oil", "Fe,,,30,ppm", on="2026-04-21")
+    found = trends(ctx).oil
+    assert (found.counts_hours, found.until, found.begins) == (True, 1300, ())
+    assert [[dot.x for dot in segment] for segment in iron(ctx).segments] == [[1000, 1100], [1200]]
+
+
+def test_without_a_meter_oil_stands_over_days_where_a_sample_does_not_state_its_hours(ctx: Context) -> None:
+    engine(ctx, "P-01", cylinders=2)
+    take(ctx, "oil", "Fe,,,30,ppm", on="2026-04-21")
+    found = trends(ctx).oil
+    assert (found.counts_hours, found.until) == (False, TODAY.toordinal())
+    assert [dot.x for dot in iron(ctx).segments[0]] == [date(2026, 4, 21).toordinal()]
 
 
 def test_as_of_an_earlier_day_later_sheets_are_not_there_and_voided_ones_never(ctx: Context) -> None:

@@ -32,14 +32,19 @@ def cylinder(*sheets: MeasuredSheet, counts_hours: bool = True) -> MeasuredPast:
     return compression_pasts(sheets, BANKS, counts_hours=counts_hours)[0]
 
 
-def iron(*sheets: MeasuredSheet, sump: str | None = "8", fresh: tuple[SheetValue, ...] = ()) -> MeasuredPast:
+def iron(
+    *sheets: MeasuredSheet, sump: str | None = "8", fresh: tuple[SheetValue, ...] = (), counts_hours: bool = True
+) -> MeasuredPast:
     """The past of iron."""
-    return next(past for past in oil(*sheets, sump=sump, fresh=fresh) if past.quantity == "Fe")
+    pasts = oil(*sheets, sump=sump, fresh=fresh, counts_hours=counts_hours)
+    return next(past for past in pasts if past.quantity == "Fe")
 
 
-def oil(*sheets: MeasuredSheet, sump: str | None = "8", fresh: tuple[SheetValue, ...] = ()) -> list[MeasuredPast]:
+def oil(
+    *sheets: MeasuredSheet, sump: str | None = "8", fresh: tuple[SheetValue, ...] = (), counts_hours: bool = True
+) -> list[MeasuredPast]:
     """All that was found in the oil."""
-    return oil_pasts(sheets, Decimal(sump) if sump else None, fresh)
+    return oil_pasts(sheets, Decimal(sump) if sump else None, fresh, counts_hours=counts_hours)
 
 
 def fitted(past: MeasuredPast) -> list[list[tuple[str, str]]]:

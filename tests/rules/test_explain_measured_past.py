@@ -63,12 +63,23 @@ def test_a_limit_that_is_reached_is_drawn_ahead_on_the_fill_it_belongs_to() -> N
     assert "likely 215 h on the oil" in told.said
 
 
+def test_over_days_or_where_it_is_not_drawn_what_is_ahead_is_only_said() -> None:
+    samples = [sampled(9 - n, str(50 * n + 50), text) for n, text in enumerate(("12", "19", "30", "37"))]
+    for counts_hours in (True, False):
+        told = row(iron(sampled(20, "", "22"), *samples, counts_hours=counts_hours), NEAR)
+        assert "likely 215 h on the oil" in told.said
+        assert told.ahead is None
+
+
 def test_new_oil_is_drawn_where_each_fill_begins_as_it_was_then() -> None:
     new, other = (value("Fe", text, phase="new") for text in ("2", "3"))
-    samples = [sampled(9, "100", "9", new), sampled(8, "240", "20", new), sampled(0, "50", "6"), sampled(0, "", "6")]
+    samples = [sampled(9, "100", "9", new), sampled(8, "240", "20", new), sampled(0, "50", "6")]
     assert row(iron(*samples[:2])).fresh == (Dot(0, 2),)
     assert row(iron(*samples, fresh=(other,))).fresh == (Dot(0, 2), Dot(240, 3))
     assert row(iron(*samples[2:])).fresh == ()
+    over_life = sampled(9, "100", "9", new, life="1000"), sampled(0, "", "12", life="1200")
+    assert row(iron(*over_life)).fresh == (Dot(900, 2),)
+    assert row(iron(*over_life, counts_hours=False)).fresh == ()
 
 
 def test_flagged_values_say_on_which_side() -> None:
@@ -106,10 +117,10 @@ def test_another_fill_and_a_first_value_have_no_change() -> None:
 
 
 def test_samples_that_are_not_normalised_say_what_to_state() -> None:
-    untold = row(iron(sampled(9, "50", "12"), sampled(0, "", "14")), ALERT)
+    untold = row(iron(sampled(9, "50", "12", life="1000"), sampled(0, "", "14", life="1040")), ALERT)
     assert "Not projected: the sheet does not state the hours on the oil." in untold.said
-    assert untold.said.endswith("Not drawn: samples that do not state the hours on the oil.")
-    assert untold.left_out == 1
+    assert [[dot.x for dot in segment] for segment in untold.segments] == [[1000], [1040]]
+    assert untold.left_out == 0
     as_read = row(rising("12", "19", added=""), ALERT)
     assert "Not projected: the sheet does not state what was topped up, 0 where nothing was." in as_read.said
     assert "per 100 h, as read, top-up not counted in." in as_read.said

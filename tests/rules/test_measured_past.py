@@ -95,9 +95,16 @@ def test_another_laboratory_begins_a_line_in_the_same_fill() -> None:
     assert [one.at for one in past.values] == [100, 150]
 
 
-def test_a_sample_without_hours_on_the_oil_is_neither_drawn_nor_fitted() -> None:
+def test_where_a_sample_does_not_state_its_hours_all_are_drawn_over_life_or_days() -> None:
+    samples = [sampled(9, "100", "9", life="1000"), sampled(1, "", "12", life="1200"), sampled(0, "", "12")]
+    assert [one.at for one in iron(*samples).values] == [1000, 1200, None]
+    days = iron(*samples, counts_hours=False)
+    assert [one.at for one in days.values] == [one.sheet.on.toordinal() for one in days.values]
+
+
+def test_a_sample_without_hours_on_the_oil_is_not_fitted() -> None:
     past = iron(sampled(9, "100", "9"), sampled(8, "", "12"), sampled(0, "150", "14"))
-    assert (past.values[1].at, past.values[1].aside) == (None, Aside.NO_HOURS_ON_OIL)
+    assert past.values[1].aside is Aside.NO_HOURS_ON_OIL
     assert [segment for segment in fitted(past) if segment] == [[("100", "9"), ("150", "14")]]
     assert iron(sampled(0, "0", "12")).last.aside is Aside.NO_HOURS_ON_OIL
     twice = sampled(0, "100", "12", value("hours_on_oil", "110"))

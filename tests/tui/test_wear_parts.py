@@ -97,7 +97,7 @@ async def test_without_hours_on_the_oil_or_top_up_it_says_why_nothing_is_project
     async with opened(*TO_PS_1, "e") as pilot:
         assert line_with(pilot, "▌Fe iron", "37 ppm")
         assert "Not projected: the sheet does not state the hours on the oil." in page(seen(pilot))
-        assert not [line for line in seen(pilot) if "┤" in line]
+        assert line_with(pilot, "Fe iron over hours of life: ○ measured")
     sheet(db, "oil", "2026-04-21", "hours_on_oil,,,200,h", "Fe,,,37,ppm")
     async with opened(*TO_PS_1, "e") as pilot:
         assert "Not projected: the sheet does not state what was topped up, 0 where nothing was." in page(seen(pilot))
