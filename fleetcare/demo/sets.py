@@ -90,7 +90,7 @@ SETS = (
         measured=Measured(ran=Ran(4, 42, "120", is_proved=True)),
         tasks=(
             Kept(
-                {**OIL, "every": ["250h", "12mo"], "anchor": "on-grid", "grid_origin": [Ago(1100 - 40)]}, Dated(12, 120)
+                {**OIL, "every": ["250h", "12mo"], "anchor": "on-grid", "grid_origin": [Ago(1100 - 40)]}, Dated(12, 330)
             ),
             Kept(
                 {"name": "Bund and tank inspection", "once_each": "year", "insurer": True, "work": "inspection"},
