@@ -39,6 +39,7 @@ PLACES: Mapping[str, int] = {
 }
 """How many decimals stand at the side of a plot, by unit; none for the others."""
 
+_FEW_STEPS = 10
 _SHORT = {
     "kv40": "visc. 40 °C",
     "kv100": "visc. 100 °C",
@@ -89,7 +90,7 @@ def measured_row(
         fresh=tuple(Dot(float(at), float(new)) for at, new in new_oil(past).items()),
         rate=_signed(rate.per_100h, past.unit) if rate is not None else "",
         unit=past.unit,
-        places=PLACES.get(past.unit, 0),
+        places=_places_beside(past, levels),
     )
 
 
@@ -209,6 +210,13 @@ def _shown(value: Decimal, unit: str) -> str:
     """Write a figure as it is, or one that was worked out to one decimal more than is measured."""
     places = PLACES.get(unit, 0) + 1
     return plain(round(value, places))
+
+
+def _places_beside(past: MeasuredPast, levels: Sequence[Level]) -> int:
+    """Give the decimals at the side of a plot: one more where so little lies in sight that figures would be alike."""
+    figures = [one.figure for one in past.values] + [level.value for level in levels]
+    places = PLACES.get(past.unit, 0)
+    return places + (max(figures) - min(figures) < _FEW_STEPS * Decimal(10) ** -places)
 
 
 def _signed(figure: Decimal, unit: str) -> str:

@@ -150,6 +150,11 @@ def test_levels_worked_out_stand_to_one_decimal_more_than_is_measured() -> None:
     assert "22.06 bar not before about 6000 h." in told.said
 
 
+def test_where_little_lies_in_sight_a_decimal_more_stands_beside_the_plot() -> None:
+    assert row(rising("1", "4"), ALERT).places == 0
+    assert row(rising("1", "4")).places == 1
+
+
 def test_names_are_short_enough_for_the_list() -> None:
     sheet = a_sheet(*(value(one, "1") for one in ("kv100", "tbn", "fuel", "Mo", "water", "ph")))
     assert [name_of(past) for past in oil(sheet)] == [
