@@ -62,10 +62,9 @@ class Break(StrEnum):
 class PastMeasure:
     """A value with its sheet. `at` is where it is drawn, None where that is not known; `figure` is in the unit of the past.
 
-    `fresh` is what new oil had of it by the sheet, else by its grade, None where not known.
-
     A bound stands at its high end. `x` and `y` are where it is fitted and as what, None where `aside` says why it is not.
     Values of one `line` can be compared: those of a gauge, or of a laboratory and a fill.
+    `fresh` is what new oil had of it by the sheet, else by its grade, None where not known.
     """
 
     sheet: MeasuredSheet
@@ -166,12 +165,13 @@ def start_of(one: PastMeasure) -> Decimal | None:
 
 def new_oil(past: MeasuredPast) -> dict[Decimal, Decimal]:
     """Give where each fill begins, as it is drawn, with what new oil had then, as far as both are known."""
-    marks: dict[Decimal, Decimal] = {}
+    marks: dict[Hashable, tuple[Decimal, Decimal]] = {}
     for one in past.values if past.along is not Along.DAYS else ():
         hours = hours_on_oil(one.sheet)
         if one.at is not None and hours is not None and one.fresh is not None:
-            marks.setdefault(one.at - hours, one.fresh)
-    return marks
+            *_, fill = one.line
+            marks.setdefault(fill, (one.at - hours, one.fresh))
+    return dict(marks.values())
 
 
 def _past(sheets: Sequence[MeasuredSheet], quantity: str, point: str, along: Along) -> MeasuredPast | None:

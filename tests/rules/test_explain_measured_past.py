@@ -79,6 +79,8 @@ def test_new_oil_is_drawn_where_each_fill_begins_as_it_was_then() -> None:
     assert row(iron(*samples[2:])).fresh == ()
     over_life = sampled(9, "100", "9", new, life="1000"), sampled(0, "", "12", life="1200")
     assert row(iron(*over_life)).fresh == (Dot(900, 2),)
+    read_late = sampled(5, "150", "9", new, life="1052")
+    assert row(iron(over_life[0], read_late, over_life[1])).fresh == (Dot(900, 2),)
     assert row(iron(*over_life, counts_hours=False)).fresh == ()
 
 
