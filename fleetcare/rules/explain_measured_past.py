@@ -57,7 +57,12 @@ _WHY_NOT = {
     Aside.NO_FRESH: "oil was topped up, and what new oil has of it is not known",
     Aside.TOPPED_UP: "oil was topped up, which cannot be corrected for",
 }
-_BROKEN = {Break.FIRST: "", Break.OTHER_GAUGE: "another gauge", Break.OTHER_FILL: "another fill"}
+_BROKEN = {
+    Break.FIRST: "",
+    Break.OTHER_GAUGE: "another gauge",
+    Break.OTHER_FILL: "another fill",
+    Break.NO_HOURS_ON_OIL: "fill not known",
+}
 
 
 def measured_row(

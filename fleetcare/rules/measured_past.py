@@ -56,6 +56,7 @@ class Break(StrEnum):
     FIRST = "first"
     OTHER_GAUGE = "other gauge"
     OTHER_FILL = "other fill"
+    NO_HOURS_ON_OIL = "no hours on the oil"
 
 
 @dataclass(frozen=True, slots=True)
@@ -122,7 +123,9 @@ class MeasuredPast:
             return line[-2]
         if len(self.values) == 1:
             return Break.FIRST
-        return Break.OTHER_GAUGE if self.values[-2].sheet.gauge != self.last.sheet.gauge else Break.OTHER_FILL
+        if self.values[-2].sheet.gauge != self.last.sheet.gauge:
+            return Break.OTHER_GAUGE
+        return Break.OTHER_FILL if hours_on_oil(self.last.sheet) is not None else Break.NO_HOURS_ON_OIL
 
     @property
     def usual_gap(self) -> Decimal | None:

@@ -115,6 +115,7 @@ def test_another_gauge_is_told_and_drawn_as_a_line_of_its_own() -> None:
 
 def test_another_fill_and_a_first_value_have_no_change() -> None:
     assert row(iron(sampled(9, "200", "30"), sampled(0, "50", "8"))).change == "another fill"
+    assert row(iron(sampled(9, "200", "30"), sampled(0, "", "8"))).change == "fill not known"
     assert row(rising("12")).change == ""
 
 
