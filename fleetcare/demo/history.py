@@ -23,7 +23,7 @@ def history(anchor: date, items: Sequence[Item] = ITEMS, changeover: int = CHANG
     """
     yard = Yard(anchor, items, changeover)
     steps = [Step(yard.changeover, yard.changeover, Verb.SETTING, values={"name": "shop-name", "value": SHOP})]
-    if items is ITEMS:
+    if items is ITEMS:  # a yard that is made up has no rules of its own
         own = {"name": NAME, "text": TEXT, "why": WHY, "by": "Harbin"}
         steps.append(Step(yard.changeover, yard.changeover, Verb.RULES, values=own))
     for item in items:

@@ -52,6 +52,7 @@ _NORTH_SLUICE = (
         measured=Measured(
             Sampled(is_first=True),
             (
+                compression(1010, "2620 2610 2640 2610 2620 2600"),
                 compression(700, "2610 2590 2640 2600 2620 2580"),
                 compression(330, "2590 2580 2620 2570 2600 2560"),
                 compression(25, "2570 2560 2600 2560 2580 2540"),
@@ -112,6 +113,7 @@ _CRAKE_DROVE = (
         measured=Measured(
             Sampled(),
             (
+                compression(820, "2590 2600 2580 2570 2600 2600"),
                 compression(560, "2580 2600 2570 2560 2590 2600"),
                 compression(300, "2570 2590 2560 2330 2580 2590"),
                 compression(29, "2550 2580 2550 1760 2560 2570", {4: "1830"}),
