@@ -69,6 +69,9 @@ class CalendarTrigger:
 
 Trigger = CountedTrigger | CalendarTrigger
 
+DRAIN = "drain"
+"""The kind of work that changes the oil."""
+
 
 @dataclass(frozen=True, slots=True)
 class TaskVersion:
@@ -165,6 +168,10 @@ class Task:
     origin: Origin | None = None
     calls: tuple[Call, ...] = ()
     deferrals: tuple[Deferral, ...] = ()
+
+    def is_removed(self, day: date) -> bool:
+        """Whether it was removed by a day."""
+        return self.removed_on is not None and self.removed_on <= day
 
     def version_on(self, day: date) -> TaskVersion:
         """Give the version in force on a day; the first holds on every earlier day too."""

@@ -6,7 +6,7 @@ from datetime import date
 from decimal import Decimal
 
 from fleetcare.domain.quantities import Kind
-from fleetcare.domain.trends import End, Projection, Segment
+from fleetcare.domain.trends import End, Point, Projection, Segment
 
 
 @dataclass(frozen=True, slots=True)
@@ -14,7 +14,8 @@ class Wear:
     """What one subject, such as the lash point 3E, showed over the life totals of a kind, and its limits, in one unit.
 
     `work` is the kind of sheet it stands on, and so of the tasks that will measure it again. `segments` hold a value at
-    least, `limits` a limit at least; `measured_on` is the day of the newest value.
+    least, in order of time, `limits` a limit at least; `measured_on` is the day of the newest value, `received_on` the day
+    it was known, where a laboratory took until later.
     """
 
     work: str
@@ -24,6 +25,29 @@ class Wear:
     segments: tuple[Segment, ...]
     limits: Mapping[End, Decimal]
     measured_on: date
+    received_on: date | None = None
+
+    @property
+    def known_on(self) -> date:
+        """The day somebody could know the newest value."""
+        return self.received_on or self.measured_on
+
+    @property
+    def last(self) -> Point:
+        """The newest value."""
+        return max([one.points for one in self.segments if one.points][-1], key=lambda point: point.x)
+
+
+@dataclass(frozen=True, slots=True)
+class MeasuredWears:
+    """What the compression and oil sheets of an engine show.
+
+    `pulling` is what pulls checks forward. `sound_oil` is all that was fitted of an oil whose newest sample flags nothing,
+    with the nearest limits; none where it flags something.
+    """
+
+    pulling: tuple[Wear, ...] = ()
+    sound_oil: tuple[Wear, ...] = ()
 
 
 @dataclass(frozen=True, slots=True)

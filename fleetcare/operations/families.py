@@ -12,41 +12,12 @@ from typing import TYPE_CHECKING, NamedTuple
 
 from fleetcare.domain.measured import OIL
 from fleetcare.operations.entries import SHEET_COUNTS
+from fleetcare.operations.kin import Kin
 from fleetcare.operations.rows import fetch, figure, known_day
 from fleetcare.rules.judging.pools import NO_FAMILY, Family, Sample, plain_figure
 
 if TYPE_CHECKING:
     from sqlalchemy import Connection
-
-
-def grade_key(grade: str) -> str:
-    """Give a grade as it compares: SAE 15W-40 and 15w40 are one."""
-    return grade.casefold().replace("sae", "").replace("-", "").replace(" ", "")
-
-
-class Kin:
-    """Which engines are of one family, as their nameplates stand; read when first asked for."""
-
-    def __init__(self, connection: "Connection") -> None:
-        self._connection = connection
-        self._families: dict[int, tuple[int, ...]] | None = None
-
-    def of(self, item: int) -> tuple[int, ...]:
-        """Give all engines of the family of one, itself among them; itself alone where its nameplate says too little."""
-        if self._families is None:
-            self._families = self._read()
-        return self._families.get(item, (item,))
-
-    def _read(self) -> dict[int, tuple[int, ...]]:
-        alike: dict[tuple[str, int, Decimal, Decimal, str], list[int]] = {}
-        for item, fuel, cylinders, bore, stroke, grade in fetch(
-            self._connection,
-            "select item_id, fuel, cylinders, bore_mm, stroke_mm, oil_grade from engine where fuel <> ''"
-            " and cylinders is not null and bore_mm is not null and stroke_mm is not null order by item_id",
-        ):
-            key = (fuel.casefold(), cylinders, Decimal(bore), Decimal(stroke), grade_key(grade))
-            alike.setdefault(key, []).append(item)
-        return {item: tuple(items) for items in alike.values() for item in items}
 
 
 class _Loaded(NamedTuple):

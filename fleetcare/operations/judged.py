@@ -14,18 +14,20 @@ from typing import TYPE_CHECKING
 
 from fleetcare.db.chain import last_entry
 from fleetcare.domain.measured import MeasuredSheet
+from fleetcare.domain.wear import MeasuredWears
 from fleetcare.errors import Refused
 from fleetcare.operations.entries import first_entries, first_of
 from fleetcare.operations.families import Families
-from fleetcare.operations.judged_rows import KEEP, Kept, keep, kept_rows, sheet_owners
+from fleetcare.operations.judged_rows import Kept, keep, keep_later, kept_rows, newest_day, sheet_owners
 from fleetcare.operations.judged_touched import touched
 from fleetcare.operations.lives_json import FORM, lives_of, lives_text
 from fleetcare.operations.measured import EngineSheets, load_engine_sheets
-from fleetcare.operations.rows import fetch, known_day
-from fleetcare.operations.shop_book import ShopText, book_digest, book_of, shop_texts
+from fleetcare.operations.shop_book import ShopText, book_digest, book_in_force, book_of, shop_texts
+from fleetcare.operations.wears_json import WEARS_FORM, wears_of, wears_text
 from fleetcare.rules.finding_life import FindingLife, finding_lives
 from fleetcare.rules.judge_history import judge_history
 from fleetcare.rules.judging.applies import rules_for
+from fleetcare.rules.measured_wear import measured_wears
 
 if TYPE_CHECKING:
     from sqlalchemy import Connection
@@ -55,12 +57,11 @@ def finding_lives_on(connection: "Connection", on: date, progress: Progress | No
     What had to be judged anew is kept once the connection is closed, if the file can be written then.
     """
     texts, newest = shop_texts(connection, on), shop_texts(connection, date.max)
-    if texts != newest or on < _newest_day(connection):
+    if texts != newest or on < newest_day(connection):
         return judge_anew(connection, on, texts, progress)
     found = _current(connection, newest, sheet_owners(connection), progress)
-    if found.made:
-        connection.info[KEEP] = lambda other: keep(other, found.made)
-    return {item: lives_of(row.content) for item, row in found.rows.items()}
+    keep_later(connection, found.made)
+    return {item: lives_of(row.lives) for item, row in found.rows.items()}
 
 
 def judged_with(
@@ -68,7 +69,7 @@ def judged_with(
 ) -> tuple[Lives, tuple[Kept, ...]]:
     """Give the findings of every engine by the rules the shop would have with some texts, and the rows to keep of that."""
     found = _current(connection, texts, sheet_owners(connection), progress)
-    return {item: lives_of(row.content) for item, row in found.rows.items()}, tuple(found.made)
+    return {item: lives_of(row.lives) for item, row in found.rows.items()}, tuple(found.made)
 
 
 def judge_anew(
@@ -91,6 +92,19 @@ def judge_lives(found: EngineSheets, book: "RuleBook", firsts: dict[int, int]) -
     return finding_lives(standings, firsts)
 
 
+def wears_judged(connection: "Connection", ids: Sequence[int]) -> dict[int, MeasuredWears]:
+    """Give what the newest sheets of some engines show over their hours, judged anew where what is kept does not hold."""
+    found = _current(connection, shop_texts(connection, date.max), ids, None)
+    keep_later(connection, found.made)
+    return {item: wears_of(row.content.partition("\n")[0])[0] for item, row in found.rows.items()}
+
+
+def wears_anew(connection: "Connection", on: date, ids: Sequence[int]) -> dict[int, MeasuredWears]:
+    """Give what the sheets of some engines up to a day show over their hours, by the rules of that day."""
+    book = book_in_force(connection, on)
+    return {found.item_id: _wears(found, book) for found in load_engine_sheets(connection, on, ids)}
+
+
 def refresh(connection: "Connection", ids: Iterable[int] | None = None, progress: Progress | None = None) -> None:
     """Judge what needs it and keep it, in the transaction that is open: of some engines, or of all."""
     wanted = sheet_owners(connection) if ids is None else sorted(set(ids))
@@ -110,7 +124,7 @@ def _current(
     connection: "Connection", texts: tuple[ShopText, ...], ids: Sequence[int], progress: Progress | None
 ) -> _Found:
     """Give the rows of some engines, made anew where they do not hold."""
-    digest = _digest(FORM, book_digest(texts))
+    digest = _digest(FORM, WEARS_FORM, book_digest(texts))
     head = last_entry(connection).seq
     rows = {item: row for item, row in kept_rows(connection, ids).items() if row.book == digest}
     is_touched = touched(connection, min((row.seq for row in rows.values()), default=head))
@@ -140,8 +154,13 @@ def _made(
     facts = _facts_digest(found, firsts)
     if before is not None and before.facts == facts:
         return before.at(head)
-    lives = judge_lives(found, book_of(texts), firsts)
-    return Kept(found.item_id, head, digest, facts, lives_text(lives))
+    book = book_of(texts)
+    wears = wears_text(_wears(found, book), book_digest(texts))
+    return Kept(found.item_id, head, digest, facts, f"{wears}\n{lives_text(judge_lives(found, book, firsts))}")
+
+
+def _wears(found: EngineSheets, book: "RuleBook") -> MeasuredWears:
+    return measured_wears(found.sheets, found.engine, rules_for(book, found.engine), found.background)
 
 
 def _facts_digest(found: EngineSheets, firsts: dict[int, int]) -> str:
@@ -161,15 +180,6 @@ def _digest(*parts: str) -> str:
 def _in_order(sheets: Iterable[MeasuredSheet], firsts: dict[int, int]) -> list[MeasuredSheet]:
     """Order sheets by day, within a day by the entry they first came with."""
     return sorted(sheets, key=lambda sheet: (sheet.on, first_of(firsts, sheet.entry)))
-
-
-def _newest_day(connection: "Connection") -> date:
-    """Give the newest day anything judging looks at is dated: before it, less was known than what is kept rests on."""
-    rows = fetch(
-        connection,
-        "select max(coalesce((select max(taken_on) from sheet), ''), coalesce((select max(\"on\") from reading), ''))",
-    )
-    return known_day(rows[0][0]) if rows[0][0] else date.min
 
 
 def _batches(ids: Sequence[int], progress: Progress | None) -> Iterable[Sequence[int]]:

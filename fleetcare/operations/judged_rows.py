@@ -1,9 +1,10 @@
 """The rows of `judged_engine`, read and written with plain SQL: the ledger does not know them."""
 
-from collections.abc import Sequence
+from collections.abc import Callable, Sequence
+from datetime import date
 from typing import TYPE_CHECKING, Any, NamedTuple
 
-from fleetcare.operations.rows import fetch
+from fleetcare.operations.rows import fetch, known_day
 
 if TYPE_CHECKING:
     from sqlalchemy import Connection
@@ -13,13 +14,21 @@ KEEP = "derived"
 
 
 class Kept(NamedTuple):
-    """What the rules made of an engine: as of which entry of the ledger, by which rules, from which facts."""
+    """What the rules made of an engine: as of which entry of the ledger, by which rules, from which facts.
+
+    The first line of `content` is what its sheets show over its hours, so that it can be had without the rest.
+    """
 
     item_id: int
     seq: int
     book: str
     facts: str
     content: str
+
+    @property
+    def lives(self) -> str:
+        """What is kept of its findings."""
+        return self.content.partition("\n")[2]
 
     def at(self, seq: int) -> "Kept":
         """Give the row as it holds at a later entry of the ledger."""
@@ -51,6 +60,28 @@ def kept_rows(connection: "Connection", ids: Sequence[int]) -> dict[int, Kept]:
         ids=list(ids),
     )
     return {row[0]: Kept(*row) for row in rows}
+
+
+def newest_day(connection: "Connection") -> date:
+    """Give the newest day anything judging looks at is dated: before it, less was known than what is kept rests on."""
+    rows = fetch(
+        connection,
+        "select max(coalesce((select max(taken_on) from sheet), ''), coalesce((select max(\"on\") from reading), ''))",
+    )
+    return known_day(rows[0][0]) if rows[0][0] else date.min
+
+
+def keep_later(connection: "Connection", rows: Sequence[Kept]) -> None:
+    """Let rows be kept once a connection is closed, along with those that already wait for that."""
+    before: Callable[[Connection], None] | None = connection.info.get(KEEP)
+
+    def write(other: "Connection") -> None:
+        if before is not None:
+            before(other)
+        keep(other, rows)
+
+    if rows:
+        connection.info[KEEP] = write
 
 
 def keep(connection: "Connection", rows: Sequence[Kept]) -> None:

@@ -9,7 +9,7 @@ from collections.abc import Callable
 from typing import TYPE_CHECKING, Any
 
 from fleetcare.domain.measured import OIL
-from fleetcare.operations.families import Kin
+from fleetcare.operations.kin import Kin
 from fleetcare.operations.rows import fetch
 
 if TYPE_CHECKING:

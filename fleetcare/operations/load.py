@@ -10,6 +10,7 @@ from fleetcare.domain.engines import DutyFactor, Item, Status, StatusSpell
 from fleetcare.domain.log import Done
 from fleetcare.domain.meters import Counter, LifeFigure, Meter, MeterFit, Reading
 from fleetcare.domain.quantities import Kind, from_base, to_base
+from fleetcare.domain.wear import MeasuredWears
 from fleetcare.operations.entries import first_entries, first_of
 from fleetcare.operations.load_tasks import load_start_figures, load_tasks
 from fleetcare.operations.rows import Row, day, fetch, grouped, known_day
@@ -31,6 +32,7 @@ class Trial:
 
 
 _AS_STORED = Trial()
+_NOTHING_SHOWN = MeasuredWears()
 
 
 def item_facts(
@@ -54,9 +56,11 @@ def item_facts(
             start_life=starts.get(item.id, {}),
             stale_days=stale,
             on=on,
-            wears=wears.get(item.id, ()),
+            wears=shown.pulling,
+            sound_oil=shown.sound_oil,
         )
         for item in items
+        for shown in [wears.get(item.id, _NOTHING_SHOWN)]
     ]
 
 

@@ -13,7 +13,8 @@ from fleetcare.domain.quantities import Kind
 from fleetcare.domain.sheet_kinds import GRADE, WORDS
 from fleetcare.domain.sheets import Judgement, LashSpec, Phase, Sheet, SheetValue, spec_on
 from fleetcare.operations.entries import SHEET_COUNTS
-from fleetcare.operations.families import Families, grade_key
+from fleetcare.operations.families import Families
+from fleetcare.operations.kin import grade_key
 from fleetcare.operations.lash_specs import USUAL_VALVES, specs_of
 from fleetcare.operations.load import entry_lives, load_counters, own_readings
 from fleetcare.operations.rows import Row, day, fetch, figure, known_day

@@ -1,20 +1,21 @@
 """What was measured that can pull a check forward, of many engines at once."""
 
-from collections.abc import Mapping, Sequence
+from collections.abc import Collection, Mapping, Sequence
 from datetime import date
 from typing import TYPE_CHECKING
 
+from fleetcare.domain.measured import COMPRESSION, LASH, OIL
 from fleetcare.domain.quantities import Kind
-from fleetcare.domain.schedules import Task
+from fleetcare.domain.schedules import DRAIN, Task
+from fleetcare.domain.wear import MeasuredWears
 from fleetcare.operations.rows import fetch
 from fleetcare.rules.meters import CounterHistory
 
 if TYPE_CHECKING:
     from sqlalchemy import Connection
 
-    from fleetcare.domain.wear import Wear
-
-_LASH = "lash"
+_ABOUT: Mapping[str, Collection[str]] = {LASH: {LASH}, COMPRESSION: {COMPRESSION}, OIL: {OIL, DRAIN}}
+"""The sheets and kinds of work of the tasks each kind of sheet can say something about."""
 
 
 def load_wears(
@@ -22,30 +23,47 @@ def load_wears(
     on: date,
     tasks: Mapping[int, Sequence[Task]],
     counters: Mapping[int, Mapping[Kind, CounterHistory]],
-) -> "dict[int, tuple[Wear, ...]]":
-    """Load the lash points of the items that have a task to measure them again by hours, by item.
+) -> dict[int, MeasuredWears]:
+    """Load what the items show that have a sheet, and a task by hours that it says something about, by item.
 
-    What does the sums is imported only where there is such an item with a sheet.
+    What does the sums is imported only where there is such an item.
     """
-    asked = [item_id for item_id, own in tasks.items() if _counts_hours(counters.get(item_id, {})) and _asks(own, on)]
-    measured = fetch(
-        connection, "select distinct item_id from sheet where kind = 'lash' and item_id in :ids", ids=asked
-    )
-    if not measured:
-        return {}
-    from fleetcare.operations.lash_wears import load_lash_wears
+    asked = [
+        (item, kind)
+        for item, own in tasks.items()
+        if _counts_hours(counters.get(item, {}))
+        for kind, about in _ABOUT.items()
+        if _asks(own, on, about)
+    ]
+    ids = sorted({item for item, _ in asked})
+    measured = set(fetch(connection, "select distinct item_id, kind from sheet where item_id in :ids", ids=ids))
+    owners = {
+        kind: sorted({item for item, asking in asked if asking == kind and (item, kind) in measured}) for kind in _ABOUT
+    }
+    judged = sorted({*owners[COMPRESSION], *owners[OIL]})
+    wears: dict[int, MeasuredWears] = {}
+    if judged:
+        from fleetcare.operations.kept_wears import kept_wears
 
-    return load_lash_wears(connection, {row[0]: counters[row[0]] for row in measured}, on)
+        wears = kept_wears(connection, on, judged)
+    if owners[LASH]:
+        from fleetcare.operations.lash_wears import load_lash_wears
+
+        for item, lash in load_lash_wears(connection, {item: counters[item] for item in owners[LASH]}, on).items():
+            also = wears.get(item, MeasuredWears())
+            wears[item] = MeasuredWears((*lash, *also.pulling), also.sound_oil)
+    return wears
 
 
 def _counts_hours(counters: Mapping[Kind, CounterHistory]) -> bool:
     return Kind.HOURS in counters and bool(counters[Kind.HOURS].readings)
 
 
-def _asks(tasks: Sequence[Task], on: date) -> bool:
-    """Tell whether any task is about lash and counts hours."""
+def _asks(tasks: Sequence[Task], on: date, about: Collection[str]) -> bool:
+    """Tell whether any task is about some sheet or work and counts hours."""
     versions = [task.version_on(on) for task in tasks]
     return any(
-        _LASH in {version.needs_sheet, version.work} and any(one.kind is Kind.HOURS for one in version.counted)
+        (version.needs_sheet in about or version.work in about)
+        and any(one.kind is Kind.HOURS for one in version.counted)
         for version in versions
     )

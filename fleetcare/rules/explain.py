@@ -39,6 +39,10 @@ def explain(line: DueLine, facts: ItemFacts) -> list[Label]:
     if line.not_later_than is not None and line.version.not_later_than is not None:
         span = line.version.not_later_than
         labels.append(("not later than", f"{span} from last done = {line.not_later_than.isoformat()}"))
+    if facts.sound_oil:
+        from fleetcare.rules.explain_longer_drain import explain_longer  # not worth loading without
+
+        labels.extend(explain_longer(line, facts))
     labels.extend(_explain_deferral(line, facts))
     labels.extend(_explain_standing(line))
     return labels

@@ -17,7 +17,8 @@ def say_slope(trend: Trend, unit: str, over: str) -> str:
     if not gain:
         return "does not change"
     rounded = round(gain, _DIGITS - 1 - gain.adjusted())
-    return f"{'falls' if gain < 0 else 'rises'} {plain(abs(rounded))} {unit} in {_THOUSAND} {over}"
+    amount = f"{plain(abs(rounded))} {unit}".rstrip()
+    return f"{'falls' if gain < 0 else 'rises'} {amount} in {_THOUSAND} {over}"
 
 
 def say_reached(projection: Projection, unit: str, over: str, of: str = "") -> str:
@@ -27,7 +28,7 @@ def say_reached(projection: Projection, unit: str, over: str, of: str = "") -> s
     """
     assert projection.early is not None
     assert projection.late is not None
-    return f"reaches {projection.limit:f} {unit} by {_whole(projection.early)} to {_whole(projection.late, ROUND_CEILING)} {over}{of}"
+    return f"reaches {_limit(projection, unit)} by {_whole(projection.early)} to {_whole(projection.late, ROUND_CEILING)} {over}{of}"
 
 
 def say_ahead(projection: Projection, unit: str, over: str, of: str = "") -> str:
@@ -54,7 +55,7 @@ def say_obstacles(projections: Sequence[tuple[str, Projection]]) -> str:
 def _say_hindrance(hindrance: Hindrance, projection: Projection, unit: str, over: str) -> str:
     """Say one obstacle with its figures; those a projection of wear cannot meet by their name alone."""
     figure, bound = hindrance.figure or Decimal(0), hindrance.bound or Decimal(0)
-    limit = f"{projection.limit:f} {unit}"
+    limit = _limit(projection, unit)
     match hindrance.obstacle:
         case Obstacle.TOO_FAR:
             return f"{limit} not before about {_about(projection.not_before or figure)} {over}"
@@ -73,6 +74,10 @@ def _say_hindrance(hindrance: Hindrance, projection: Projection, unit: str, over
             return "does not change, nothing to project"
         case other:
             return f"not projected: {other}"
+
+
+def _limit(projection: Projection, unit: str) -> str:
+    return f"{projection.limit:f} {unit}".rstrip()
 
 
 def _whole(figure: Decimal, rounding: str = ROUND_FLOOR) -> str:

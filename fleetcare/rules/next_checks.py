@@ -39,5 +39,4 @@ def _pull(one: Foreseen) -> Pull | None:
     early = one.projection.early
     if early is None:
         return None
-    last = max(point.x for segment in one.wear.segments for point in segment.points)
-    return Pull(one.wear, one.projection, max(early.quantize(_TENTH, rounding=ROUND_FLOOR), last))
+    return Pull(one.wear, one.projection, max(early.quantize(_TENTH, rounding=ROUND_FLOOR), one.wear.last.x))

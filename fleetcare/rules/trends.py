@@ -12,6 +12,8 @@ the order of the values never counts.
 
 from collections.abc import Iterable, Sequence
 from decimal import Decimal, localcontext
+from itertools import pairwise
+from statistics import median
 from typing import NamedTuple
 
 from fleetcare.domain.trends import Check, Point, Segment, Trend
@@ -55,6 +57,13 @@ def watched(segments: Sequence[Segment]) -> Decimal:
     """The x watched: from the first to the last value of each segment, together."""
     filled = [[point.x for point in segment.points] for segment in segments if segment.points]
     return sum((max(xs) - min(xs) for xs in filled), Decimal(0))
+
+
+def usual_gap(segments: Iterable[Segment]) -> Decimal | None:
+    """The median x between two values of a segment that follow each other, None where no segment has two."""
+    xs = [sorted(point.x for point in segment.points) for segment in segments]
+    gaps = [after - before for line in xs for before, after in pairwise(line)]
+    return median(gaps) if gaps else None
 
 
 def fit_trend(segments: Sequence[Segment]) -> Trend | None:

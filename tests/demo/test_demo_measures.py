@@ -16,9 +16,10 @@ from fleetcare.demo.use import is_proving
 from fleetcare.domain.measured import SHEET_KINDS
 from fleetcare.drafts.sheets import SheetIn
 from fleetcare.operations.due import Filters, due_lines
-from fleetcare.operations.families import Families, Kin
+from fleetcare.operations.families import Families
 from fleetcare.operations.find import find_item
 from fleetcare.operations.finding_rows import finding_rows
+from fleetcare.operations.kin import Kin
 from fleetcare.operations.rows import fetch
 from fleetcare.rules.due.row import due_row
 from tests.demo.test_demo_fleet import ANCHOR, COMMITTED

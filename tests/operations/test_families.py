@@ -7,10 +7,11 @@ import pytest
 
 from fleetcare.context import Context
 from fleetcare.db.chain import last_entry
-from fleetcare.operations.families import Families, Kin
+from fleetcare.operations.families import Families
 from fleetcare.operations.find import find_item
 from fleetcare.operations.judged import finding_lives_on, judge_anew
 from fleetcare.operations.judged_touched import touched
+from fleetcare.operations.kin import Kin
 from fleetcare.operations.measured import load_engine_sheets
 from fleetcare.operations.measures_typed import open_measures
 from fleetcare.operations.shop_book import shop_texts

@@ -3,6 +3,7 @@
 The gap is the worked example of valve lash: measured to 4000 h, its early end at 0.25 mm is 5975.1 h.
 """
 
+from dataclasses import replace
 from decimal import Decimal
 
 import pytest
@@ -168,3 +169,63 @@ def test_the_forecast_is_that_of_the_pulled_point() -> None:
     assert found.forecast.likely is not None
     assert own.forecast.likely is not None
     assert day("2026-05-01") < found.forecast.likely < own.forecast.likely
+
+
+def drain(**changes: object) -> Task:
+    """An oil change every 2500 h, done at 4000 h, before the sample."""
+    given = {"number": 1, "name": "Oil", "work": "drain", "origin": last_done("2026-04-19", hours=4000)} | changes
+    return a_task(every("2500h"), **given)  # type: ignore[arg-type]
+
+
+def sampling(*triggers: Trigger, **changes: object) -> Task:
+    """A task that takes oil samples, every 2500 h unless said otherwise."""
+    given = {"number": 2, "name": "Sample", "needs_sheet": "oil", "origin": LAST} | changes
+    return a_task(*(triggers or (every("2500h"),)), **given)  # type: ignore[arg-type]
+
+
+def pulled_by_oil(*tasks: Task, **changes: object) -> dict[str, bool]:
+    """Which lines are pulled by an oil sample."""
+    given = {"on": "2026-05-01", "hours": 4000, "wears": (a_wear(work="oil"),)} | changes
+    found = lines(*tasks, **given)  # type: ignore[arg-type]
+    return {name: any(one.pull is not None for one in line.triggers) for name, line in found.items()}
+
+
+def test_an_oil_sample_pulls_the_next_sample_else_the_drain() -> None:
+    assert pulled_by_oil(drain(), sampling()) == {"Oil": False, "Sample": True}
+    assert pulled_by_oil(drain()) == {"Oil": True}
+    assert pulled_by_oil(drain(needs_sheet="oil")) == {"Oil": True}
+    assert pulled_by_oil(drain(work="filter")) == {"Oil": False}
+
+
+def test_a_sampling_task_without_hours_or_removed_leaves_the_pull_to_the_drain() -> None:
+    assert pulled_by_oil(drain(), sampling(every("3mo"))) == {"Oil": True, "Sample": False}
+    assert pulled_by_oil(drain(), sampling(removed_on=day("2026-04-01"))) == {"Oil": True}
+
+
+@pytest.mark.parametrize(("on", "is_pulled"), [("2026-04-19", True), ("2026-04-20", False), ("2026-04-25", False)])
+def test_an_oil_change_on_the_day_of_the_sample_or_later_ends_its_pull(on: str, is_pulled: bool) -> None:
+    changed = {1: [done(on, hours=4000)]}
+    assert pulled_by_oil(drain(origin=None), sampling(), done=changed)["Sample"] is is_pulled
+    assert pulled_by_oil(drain(origin=last_done(on, hours=4000)), sampling())["Sample"] is is_pulled
+
+
+def test_a_drain_is_pulled_though_its_interval_is_longer_than_the_oil_was_watched() -> None:
+    short = a_wear(("3700 3800 3900 4000", "40 60 81 100", None), low="0", high="150", work="oil")
+    assert pulled_by_oil(drain(), wears=(short,)) == {"Oil": True}
+
+
+def test_a_deferral_made_before_the_laboratory_answered_did_not_know_of_it() -> None:
+    wear = replace(a_wear(work="oil"), received_on=day("2026-04-28"))
+    for on, is_pulled in (("2026-04-27", True), ("2026-04-28", False)):
+        task = sampling(deferrals=(deferred(on),))
+        assert pulled_by_oil(task, wears=(wear,)) == {"Sample": is_pulled}
+
+
+def test_values_of_a_fill_before_do_not_say_where_the_oil_stands_now() -> None:
+    """The fill before, brought to the hours of this one, ran further than this one has by now."""
+    wear = a_wear(
+        ("3600 3900 4200", "40 100 161", None), ("3600 3700 3800", "40 61 80", None), low="0", high="85", work="oil"
+    )
+    (found,) = lines(drain(), on="2026-05-01", hours=3800, wears=(wear,)).values()
+    assert found.triggers[0].pull is not None
+    assert 3800 <= found.triggers[0].pull.at < 3830

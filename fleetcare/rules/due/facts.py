@@ -20,7 +20,8 @@ class ItemFacts:
     """One item with its tasks, work done per task id (current entries only), and counters, seen up to a day.
 
     `start_life` are the life totals at the start point, `stale_days` the setting that replaces
-    the engine's own reading rhythm, None for the rhythm. `wears` is what was measured that can pull a check forward.
+    the engine's own reading rhythm, None for the rhythm. `wears` is what was measured that can pull a check forward,
+    `sound_oil` what an oil that flags nothing shows (`MeasuredWears`).
     """
 
     item: Item
@@ -31,3 +32,4 @@ class ItemFacts:
     stale_days: int | None = None
     on: date = date.min
     wears: "tuple[Wear, ...]" = ()
+    sound_oil: "tuple[Wear, ...]" = ()

@@ -21,7 +21,7 @@ from fleetcare.rules.due.trigger_line import calendar_line, trigger_line
 def due_line(facts: ItemFacts, task: Task, outlooks: dict[Kind, Outlook]) -> DueLine | None:
     """Give a task's line on the day of the facts; None where it has none (done once, not called for, removed)."""
     version = task.version_on(facts.on)
-    if task.removed_on is not None and task.removed_on <= facts.on:
+    if task.is_removed(facts.on):
         return None
     replayed = replay(facts, task)
     call = _open_call(facts, task) if version.on_condition else None

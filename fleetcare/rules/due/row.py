@@ -7,6 +7,7 @@ from decimal import Decimal
 from fleetcare.domain.engines import Status
 from fleetcare.domain.lines import DueLine, Point, State, TriggerLine
 from fleetcare.domain.quantities import BASE_UNIT, Kind, from_base, plain
+from fleetcare.domain.schedules import DRAIN
 from fleetcare.rules.due.facts import ItemFacts
 from fleetcare.rules.due.states import deciding
 
@@ -96,13 +97,18 @@ def due_row(line: DueLine, facts: ItemFacts) -> DueRow:
 
 
 def _reason(line: DueLine, facts: ItemFacts) -> str:
-    """Say why a line is unset, else what pulls it forward and why it was deferred."""
+    """Say why a line is unset, else what pulls it forward or lets it wait, and why it was deferred."""
     pulls = [trigger.pull for trigger in line.triggers if trigger.pull is not None]
-    if not pulls:
-        return line.reason
-    from fleetcare.rules.explain_next_check import say_pull  # not worth loading where nothing is pulled
+    said = []
+    if pulls:
+        from fleetcare.rules.explain_next_check import say_pull  # not worth loading where nothing is pulled
 
-    return "; ".join([*(say_pull(pull, facts) for pull in pulls), *([line.reason] if line.reason else [])])
+        said = [say_pull(pull, facts) for pull in pulls]
+    elif facts.sound_oil and line.version.work == DRAIN:
+        from fleetcare.rules.explain_longer_drain import say_longer  # not worth loading for other lines
+
+        said = [say_longer(line, facts)]
+    return "; ".join(filter(None, [*said, line.reason]))
 
 
 def unit_of(facts: ItemFacts, kind: Kind) -> str:
