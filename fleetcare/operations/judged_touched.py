@@ -51,6 +51,15 @@ NEVER = frozenset(
 
 _EVERYBODY = 0
 _METERS = "select item_id from meter_fit where meter_id = :meter"
+_READ_AFRESH = (
+    "select item_id from meter_fit fit where meter_id = :meter and not exists (select 1 from reading known"
+    ' left join log_entry entry on entry.id = known.entry_id where known.meter_id = :meter and known."on" < :on'
+    " and known.\"on\" >= coalesce(fit.from_on, '') and coalesce(entry.is_void, 0) = 0"
+    ' and known."on" >= (select max(taken_on) from sheet where sheet.item_id = fit.item_id)'
+    " and not exists (select 1 from log_entry later where later.supersedes_id = known.entry_id)"
+    " and not exists (select 1 from reading_mark where reading_id = known.id))"
+)
+"""Whose sheets a new reading may tell the hours of: of nobody read between the newest sheet and it, as that tells them."""
 _SHEET = "select item_id from sheet where id = :sheet"
 _HAS_OIL = f"select 1 from sheet where kind = '{OIL}' and {{}} = :number limit 1"
 _NEW_OIL = (
@@ -84,6 +93,8 @@ def _items(connection: "Connection", kin: Kin, kind: str, row: dict[str, Any]) -
         has_oil = fetch(connection, _HAS_OIL.format("entry_id"), number=row["supersedes_id"])
         return {*kin.of(row["item_id"])} if has_oil else {row["item_id"]}
     items = {row["item_id"]} if kind in _OF_ITEM else set()
+    if kind == "reading":
+        return _of(connection, _READ_AFRESH, meter=row["meter_id"], on=row["on"])
     if kind in _BY_METER:
         items |= _of(connection, _METERS, meter=_meter(connection, kind, row))
     return items if kind in _OF_ITEM | _BY_METER else {_EVERYBODY}
@@ -107,5 +118,5 @@ def _meter(connection: "Connection", kind: str, row: dict[str, Any]) -> int:
     return number
 
 
-def _of(connection: "Connection", sql: str, **values: int) -> set[int]:
+def _of(connection: "Connection", sql: str, **values: int | str) -> set[int]:
     return {row[0] for row in fetch(connection, sql, **values)}

@@ -17,8 +17,9 @@ from fleetcare.errors import Refused
 from fleetcare.operations import judged, judged_touched
 from fleetcare.operations.find import find_item
 from fleetcare.operations.finding_rows import finding_rows
-from fleetcare.operations.judged import finding_lives_on, judge_anew
+from fleetcare.operations.judged import finding_lives_on, judge_anew, wears_anew
 from fleetcare.operations.judged_rows import keep, kept_rows, sheet_owners
+from fleetcare.operations.kept_wears import kept_wears
 from fleetcare.operations.measured import EngineSheets
 from fleetcare.operations.names import person_id
 from fleetcare.operations.rows import fetch
@@ -104,6 +105,8 @@ def assert_holds(ctx: Context, on: date = TODAY) -> None:
     """What is read is what judging everything anew gives, now and again once it is kept."""
     for _ in range(2):
         with ctx.read() as connection:
+            ids = sheet_owners(connection)
+            assert kept_wears(connection, on, ids) == wears_anew(connection, on, ids)
             assert finding_lives_on(connection, on) == judge_anew(connection, on, shop_texts(connection, on))
     assert check(ctx).problems == ()
 
@@ -175,6 +178,37 @@ def test_a_write_that_leaves_the_facts_as_they_were_judges_nobody(
         finding_lives_on(connection, TODAY)
     assert done == []
     assert stale(yard) == []
+
+
+def test_a_reading_after_one_taken_since_the_newest_sheet_touches_nobody_and_an_earlier_one_does(yard: Context) -> None:
+    set_up(yard.path, "measure oil P-01 more.csv --on 2026-04-02 --at 1200h")
+    assert_holds(yard)
+    set_up(yard.path, "reading P-01 1300 --on 2026-04-20")
+    assert touched_since_kept(yard) == []
+    set_up(yard.path, "reading P-01 1100 --on 2026-03-01")
+    assert touched_since_kept(yard) == ["P-01"]
+    assert_holds(yard)
+
+
+@pytest.mark.parametrize("undone", ["reading --void {} --why misread", "correct 5 --void --why wrong-engine"])
+def test_a_reading_that_no_longer_counts_tells_the_hours_of_no_sheet(yard: Context, undone: str) -> None:
+    set_up(yard.path, "log P-01 --repair Belt --on 2026-03-10 --at 1100h")
+    with yard.read() as connection:
+        number = fetch(connection, "select max(id) from reading")[0][0]
+    set_up(yard.path, undone.format(number))
+    assert_holds(yard)
+    set_up(yard.path, "reading P-01 1300 --on 2026-04-20")
+    assert touched_since_kept(yard) == ["P-01"]
+    assert_holds(yard)
+
+
+def touched_since_kept(ctx: Context) -> list[str]:
+    """The engines that the ledger touched since they were kept."""
+    with ctx.read() as connection:
+        rows = kept_rows(connection, sheet_owners(connection))
+        is_touched = judged_touched.touched(connection, min(row.seq for row in rows.values()))
+        items = [item for item, row in rows.items() if is_touched(item, row.seq)]
+        return [row[0] for row in fetch(connection, "select tag from item where id in :ids order by tag", ids=items)]
 
 
 def test_only_engines_that_a_write_touched_are_judged_again(yard: Context, monkeypatch: pytest.MonkeyPatch) -> None:
