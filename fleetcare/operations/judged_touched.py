@@ -87,14 +87,16 @@ def _items(connection: "Connection", kin: Kin, kind: str, row: dict[str, Any]) -
         return {row["id"]}
     if kind in _OF_FAMILY:
         return _of_family(connection, kin, kind, row)
-    if kind == "log_entry" and row["supersedes_id"] is not None:
+    if kind == "log_entry":
+        if row["supersedes_id"] is None:  # what is new with it are rows of their own
+            return set()
         if fetch(connection, _NEW_OIL, entry=row["supersedes_id"]):
             return {_EVERYBODY}
         has_oil = fetch(connection, _HAS_OIL.format("entry_id"), number=row["supersedes_id"])
         return {*kin.of(row["item_id"])} if has_oil else {row["item_id"]}
-    items = {row["item_id"]} if kind in _OF_ITEM else set()
     if kind == "reading":
         return _of(connection, _READ_AFRESH, meter=row["meter_id"], on=row["on"])
+    items = {row["item_id"]} if kind in _OF_ITEM else set()
     if kind in _BY_METER:
         items |= _of(connection, _METERS, meter=_meter(connection, kind, row))
     return items if kind in _OF_ITEM | _BY_METER else {_EVERYBODY}

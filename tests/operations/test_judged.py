@@ -180,10 +180,13 @@ def test_a_write_that_leaves_the_facts_as_they_were_judges_nobody(
     assert stale(yard) == []
 
 
-def test_a_reading_after_one_taken_since_the_newest_sheet_touches_nobody_and_an_earlier_one_does(yard: Context) -> None:
+def test_work_and_readings_after_one_taken_since_the_newest_sheet_touch_nobody_and_an_earlier_one_does(
+    yard: Context,
+) -> None:
     set_up(yard.path, "measure oil P-01 more.csv --on 2026-04-02 --at 1200h")
     assert_holds(yard)
     set_up(yard.path, "reading P-01 1300 --on 2026-04-20")
+    set_up(yard.path, "log P-01 --repair Belt --on 2026-04-25 --at 1310h")
     assert touched_since_kept(yard) == []
     set_up(yard.path, "reading P-01 1100 --on 2026-03-01")
     assert touched_since_kept(yard) == ["P-01"]
