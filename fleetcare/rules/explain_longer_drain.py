@@ -29,7 +29,7 @@ def explain_longer(line: DueLine, facts: ItemFacts) -> list[tuple[str, str]]:
             "longer drain",
             f"the newest sample flags nothing, and all that can be projected keeps inside its limits until"
             f" {_dial(advice, facts)}, {beyond} h beyond its own point (four times in five; looked at:"
-            f" {', '.join(advice.subjects)}; {advice.subject} ends it). Advice only: the line stays where it is until a"
+            f" {', '.join(advice.subjects)}; {advice.subject} may not beyond that). Advice only: the line stays where it is until a"
             f" supervisor puts it off, with a reason, to no later than there{never}. Ask the engine's manual first",
         )
     ]
