@@ -17,6 +17,7 @@ from fleetcare.domain.trends import End, Point, Segment
 from fleetcare.domain.wear import MeasuredWears, Wear
 from fleetcare.rules.explain_measured_past import PLACES, name_of
 from fleetcare.rules.judge_engine import Background, facts_of
+from fleetcare.rules.judging.facts import MeasuredFacts
 from fleetcare.rules.judging.judge import judge
 from fleetcare.rules.judging.levels import Level, levels_of
 from fleetcare.rules.measured_ahead import next_limits
@@ -68,10 +69,13 @@ def _with_levels(
     background: Background,
 ) -> Iterator[_Told]:
     """Give each past whose newest value is fitted, with the levels of that value on its own sheet."""
+    known: dict[int, MeasuredFacts] = {}  # most stand on one sheet
     for past in pasts:
+        sheet = past.last.sheet
         if past.last.x is not None:
-            up_to = sheets[: sheets.index(past.last.sheet) + 1]
-            yield past, levels_of(rules, past.last.measured, facts_of(up_to, engine, background))
+            if sheet.entry not in known:
+                known[sheet.entry] = facts_of(sheets[: sheets.index(sheet) + 1], engine, background)
+            yield past, levels_of(rules, past.last.measured, known[sheet.entry])
 
 
 def _alarms(levels: Iterable[Level]) -> tuple[Level, ...]:
