@@ -112,7 +112,8 @@ class Context:
             before = last_entry(session.connection()).seq
             yield session
             session.flush()
-            if measured := measured_since(session.connection(), before):
+            is_dry = not session.in_transaction()  # rolled back: of a new file not even the tables are left
+            if not is_dry and (measured := measured_since(session.connection(), before)):
                 from fleetcare.operations.judged import refresh_measured  # most writes measure nothing
 
                 refresh_measured(session.connection(), measured)
