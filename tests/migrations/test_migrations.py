@@ -21,8 +21,16 @@ from fleetcare.db.chain import entries
 from fleetcare.db.tables import Item, Site, metadata
 from fleetcare.errors import NoDatabase
 from fleetcare.operations import upkeep
+from tests.cli.conftest import set_up
 
 COMMITTED = Path(__file__).parents[2] / "demo_fleet.db"
+YARD = """
+engine add P-01 --site "North Sluice" --cylinders 1 --meter hours --in-service 2024-01-10 --start-at 0 --as-new
+task add P-01 "Oil and filter" --every 250h --every 12mo
+reading P-01 1250 --on 2026-05-01
+log P-01 "Oil and filter" --on 2026-04-20 --at 1234h --by Fenn
+defer P-01 "Oil and filter" --until 2027-05-01 --why "harvest first" --by Harbin
+"""
 NEXT = "20270101_next"
 REVISION = f"""
 import sqlalchemy as sa
@@ -216,8 +224,10 @@ def counted(path: Path) -> dict[str, int]:
 
 @pytest.fixture
 def of_the_first_tables(tmp_path: Path) -> Path:
-    """The demo fleet in the tables of the first revision."""
-    path = Path(shutil.copy(COMMITTED, tmp_path / "yard.db"))
+    """A small yard in the tables of the first revision: nobody had answered a finding then, or had rules of their own."""
+    sheet = tmp_path / "lash.csv"
+    sheet.write_text("quantity,point,phase,value,unit\nlash,1I,found,25,mm\nlash,1E,found,36,mm\n")
+    path = set_up(tmp_path / "yard.db", f"{YARD}\nmeasure lash P-01 {sheet} --on 2026-04-20 --by Fenn")
     with session.engine(path, foreign_keys=False).begin() as connection:
         command.downgrade(migrate.config(migrate.scripts_folder(), connection), "20261201_first_tables")
     return path

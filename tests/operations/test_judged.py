@@ -2,7 +2,7 @@
 
 import shutil
 import sqlite3
-from collections.abc import Callable, Iterator
+from collections.abc import Iterator
 from contextlib import closing, contextmanager
 from datetime import date
 from pathlib import Path
@@ -295,7 +295,6 @@ def test_a_copy_of_the_file_brings_what_is_kept_along(
 
 def test_judging_everybody_tells_how_far_it_has_come(yard: Context) -> None:
     told: list[tuple[int, int]] = []
-    progress: Callable[[int, int], None] = lambda done, of: told.append((done, of))  # noqa: E731  # shorter so
     with yard.read() as connection:
-        judge_anew(connection, TODAY, (), progress)
+        judge_anew(connection, TODAY, (), lambda done, of: told.append((done, of)))
     assert told == [(3, 3)]
