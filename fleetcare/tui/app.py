@@ -60,6 +60,7 @@ class FleetApp(App[None]):
     def __init__(self, context: "Context") -> None:
         # Without colour nothing but the terminal's own two is left; a theme of true colour would come out as greys.
         super().__init__(ansi_color=True if os.environ.get("NO_COLOR") else None)
+        self.animation_level = "none"  # nothing glides: what is typed next is aimed at where things stand
         self.context = context
         self.trouble: FleetError | None = None
         self.drafts = KeptDrafts(context.drafts_folder)

@@ -199,8 +199,8 @@ class FillingScreen(LoadingScreen):
             places.setdefault(place, []).append(self.form.in_own_words("; ".join(one.lines())))
         for place, texts in reversed(places.items()):
             if place in self.rows:
-                self.rows[place].editor.focus()
-                self.rows[place].say_wrong(" ! ".join(texts))  # after it, as this scrolls further than the cursor does
+                self.rows[place].editor.focus(scroll_visible=False)  # what is wrong is brought in sight with it
+                self.rows[place].say_wrong(" ! ".join(texts))
             else:
                 self.notice.say(*texts, is_wrong=True)
 

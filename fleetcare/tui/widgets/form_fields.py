@@ -128,6 +128,11 @@ class FieldRow(Horizontal):
         if text:  # it stands below the field, which may be the last line in sight
             self.call_after_refresh(self.scroll_visible, animate=False)
 
+    def on_resize(self) -> None:
+        """Keep what is wrong in sight once there is room for it."""
+        if self._error.display:
+            self.scroll_visible(animate=False)
+
     def mark(self, is_here: bool) -> None:
         """Mark the line the cursor is in, with or without colour."""
         self._label.update(Content(f"{_EDGE if is_here else ' '}{self.field.label}"))
