@@ -4,7 +4,7 @@ from collections.abc import Iterator
 from datetime import date
 from typing import Annotated, Literal, Self
 
-from pydantic import BeforeValidator, model_validator
+from pydantic import AfterValidator, BeforeValidator, model_validator
 
 from fleetcare.domain.quantities import Figure
 from fleetcare.drafts.fields import Text, parse_day_or_dial
@@ -81,3 +81,18 @@ class ApplyDraft(StartDraft):
     """A schedule by its name or file, and what its tasks count from."""
 
     name: Text
+
+
+def _toml(text: str) -> str:
+    if not text.lower().endswith(".toml"):
+        raise Misread(f"{text!r} does not end in .toml", "name a file such as our-pumps.toml")
+    return text
+
+
+class ScheduleOut(Draft):
+    """The tasks of an engine or machine to be written down as a schedule: its name, where its intervals come from, its file."""
+
+    tag: Text
+    name: Text
+    source: Text
+    file: Annotated[Text, AfterValidator(_toml)]

@@ -140,6 +140,7 @@ ACTIONS = (
     Action("tasks", "a", "write('task')", "add", "add a task"),
     Action("tasks", "v", "write('task-end')", "end", "end the task under the cursor; its history stays"),
     Action("tasks", "d", "write('schedule')", "schedule", "add all tasks of a ready-made schedule"),
+    Action("tasks", "o", "write('schedule-out')", "write out", "write its tasks down as a schedule of your own"),
     Action("tasks", "escape", "back", "back", "go back to where you came from"),
     Action("more", "escape,x", "back", "back", "go back to where you came from"),
     Action("form", "ctrl+s", "store", "store", "write it down"),

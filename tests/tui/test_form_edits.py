@@ -197,3 +197,31 @@ async def test_without_an_entry_or_a_reading_under_the_cursor_the_way_there_is_t
 async def test_a_task_form_without_a_task_tells_the_way(opened: Opened) -> None:
     async with opened("down", "e", "o") as pilot:
         assert "Put the cursor on a line of a task first" in said(seen(pilot))
+
+
+OURS = {"name": "Sluice pumps", "source": "shop rule 4", "file": "ours.toml"}
+
+
+async def test_the_tasks_of_an_engine_become_a_schedule_for_others(opened: Opened, db: Path) -> None:
+    async with opened(size=(100, 30)) as pilot:
+        await form_with(pilot, "schedule-out", Subject("PS-1"), OURS)
+        await press(pilot, "ctrl+s")
+        assert "3 tasks of PS-1 written to ours.toml" in said(seen(pilot))
+        await form_with(pilot, "schedule", Subject("SB-1"), {"name": "ours.toml", "counts_from": "start"})
+        await press(pilot, "ctrl+s")
+    every = "select count(*) from task t join item i on i.id = t.item_id where i.tag = 'SB-1' and t.name = '{}'"
+    assert [rows(db, every.format(name)) for name in ("Oil and filter", "Valve lash", "Coolant")] == [[(1,)]] * 3
+
+
+async def test_a_schedule_is_written_over_by_one_of_its_name_and_by_no_other(opened: Opened, tmp_path: Path) -> None:
+    async with opened(size=(100, 30)) as pilot:
+        await form_with(pilot, "schedule-out", Subject("PS-1"), OURS)
+        await press(pilot, "ctrl+s")
+        first = (tmp_path / "ours.toml").read_text(encoding="utf-8")
+        await form_with(pilot, "schedule-out", Subject("TR-2"), OURS)
+        await press(pilot, "ctrl+s")
+        assert (tmp_path / "ours.toml").read_text(encoding="utf-8") != first
+        await form_with(pilot, "schedule-out", Subject("PS-1"), {**OURS, "name": "Others"})
+        await press(pilot, "ctrl+s")
+        assert "ours.toml is a schedule of another name" in said(seen(pilot))
+    assert [path.name for path in tmp_path.glob("*.toml")] == ["ours.toml"]

@@ -163,6 +163,12 @@ _TASKS: Cases = {
         ("nonesuch", "'nonesuch'"),
         ("no.toml", "cannot read no.toml"),
     ],
+    ("schedule-out", "name"): [MISSING],
+    ("schedule-out", "source"): [MISSING],
+    ("schedule-out", "file"): [
+        MISSING,
+        ("ours.csv", "'ours.csv' does not end in .toml; name a file such as our-pumps.toml"),
+    ],
     ("schedule", "counts_from"): [
         ("maybe", "'maybe'"),
         ("start; unset", "“Count from” start stands alone"),
@@ -214,6 +220,7 @@ BESIDE = {
     "machine": {"tag": "PH-2"},
     "task": {"name": "Belts", "every": "500h"},
     "schedule": {"name": "emergency-exercise"},
+    "schedule-out": {"name": "Ours", "source": "shop rule 4", "file": "ours.toml"},
     "move": {"machine": "PH-1"},
     "factor": {"kind": "hours", "factor": "0.8", "why": "dust"},
     "site-name": {"known": "North Sluice", "name": "North Gate"},

@@ -14,7 +14,7 @@ if TYPE_CHECKING:
 
     from fleetcare.drafts.items import ItemDraft
     from fleetcare.drafts.reading_in import Draft
-    from fleetcare.drafts.schedules import ApplyDraft
+    from fleetcare.drafts.schedules import ApplyDraft, ScheduleOut
     from fleetcare.drafts.tasks import TaskDraft
     from fleetcare.operations.entering import Entered
     from fleetcare.operations.form_facts import FormFacts
@@ -72,6 +72,18 @@ def _preview(
 
     tasks, source = what_it_adds(connection, subject.tag, values["name"].strip())
     return f"WOULD ADD  {len(tasks)}", [*tasks, f"from {source}"]
+
+
+def _out_draft() -> "type[Draft]":
+    from fleetcare.drafts.schedules import ScheduleOut
+
+    return ScheduleOut
+
+
+def _write_out(session: "Session", subject: Subject, draft: "ScheduleOut", today: date, said: Said) -> "Entered":
+    from fleetcare.operations.schedules_out import write_schedule
+
+    return write_schedule(session.connection(), draft, today)
 
 
 def _nothing(facts: "FormFacts", subject: Subject, on: date) -> Mapping[str, str]:
@@ -134,4 +146,16 @@ SCHEDULE = Form(
     fixed=lambda subject, on: {},
     start=_nothing,
     preview=_preview,
+)
+SCHEDULE_OUT = Form(
+    "schedule-out",
+    "Write the tasks of {tag} down as a schedule of your own",
+    (
+        Field("name", "Name", "what it is called, such as Our sluice pumps"),
+        Field("source", "Source", "where its intervals come from, such as the maker's manual and its edition"),
+        Field("file", "File", "such as our-pumps.toml; one of the same name is written over"),
+    ),
+    _out_draft,
+    _write_out,
+    start=_nothing,
 )

@@ -1,6 +1,6 @@
 """Every form, by name."""
 
-from fleetcare.tui.forms.adding import ENGINE, MACHINE, SCHEDULE, TASK
+from fleetcare.tui.forms.adding import ENGINE, MACHINE, SCHEDULE, SCHEDULE_OUT, TASK
 from fleetcare.tui.forms.editing import EDIT, PERSON_NAME, SITE_NAME, TASK_EDIT, TASK_END
 from fleetcare.tui.forms.findings import ACCEPT, FOLLOW_UP
 from fleetcare.tui.forms.measure import MEASURES
@@ -35,6 +35,7 @@ FORMS = {
         TASK_EDIT,
         TASK_END,
         SCHEDULE,
+        SCHEDULE_OUT,
         SITE_NAME,
         PERSON_NAME,
     )
