@@ -17,7 +17,7 @@ LASH = (
     "The engine maker's manual comes before these limits and this order of setting.",
 )
 
-# Own words; TM 5-4210-230-14&P-1, GM and Ford service texts of 1992 to 2009 (ignition, fuel, remote starter, plug holes),
+# Own words; TM 5-4210-230-14&P-1, car makers' service texts of 1992 to 2009 (ignition, fuel, remote starter, plug holes),
 # 29 CFR 1910.147(d) (isolate and verify); oil that locks a diesel and hot
 # parts: common practice.
 COMPRESSION = (
@@ -28,7 +28,7 @@ COMPRESSION = (
     "The engine maker's manual comes before these limits and this way of testing.",
 )
 
-# Own words; FAA AC 43.13-1B 8-14 (test air turns the crank), Chrysler leak-down text (cap never opened hot).
+# Own words; FAA AC 43.13-1B 8-14 (test air turns the crank), a car maker's leak-down text of 2002 (cap never opened hot).
 LEAKDOWN = (
     "Test air turns the crank: piston exactly at TDC, crank held by a second person or out of its swing.",
     "No tools on the crank bolt; everybody clear of fan, propeller, belts and shafts before air goes in.",
@@ -37,7 +37,7 @@ LEAKDOWN = (
     "The engine maker's manual comes before these limits.",
 )
 
-# Own words; TM 10-4320-307-24 (exhaust gas), Dodge service text (rotating parts), makers' warnings on high-pressure fuel;
+# Own words; TM 10-4320-307-24 (exhaust gas), a car maker's service text (rotating parts), makers' warnings on high-pressure fuel;
 # hot parts, noise and stored load: common practice.
 RUN = (
     "Exhaust gas kills: run only where it is led away. Headache or dizziness: stop, and get everybody out.",

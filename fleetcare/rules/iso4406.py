@@ -2,7 +2,7 @@
 
 Counts are cumulative, so no number is above the one before it. ">=" stands before a number worked out from fewer than 20
 particles; a microscope count has no first number, "-" (ISO 4407). Scale 0 to 28, and ">28" for more than 2,500,000 in
-1 mL (table in a Schroeder filter handbook; constructionequipment.com "ISO-4406 basics"; ISO 4406:2021 scope).
+1 mL (tables in a filter handbook and a trade article on the code; ISO 4406:2021 scope).
 """
 
 import re
