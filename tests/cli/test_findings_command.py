@@ -63,8 +63,8 @@ def test_a_finding_is_printed_with_its_whole_working(yard: Runner) -> None:
         "  evidence     compression at cylinder 2 19 bar, dry on 2026-04-01",
         "  since        2026-04-01",
         "  rule         compression-r75",
-        "  source       lowest at least 75 % of highest: TM 5-4210-230-14&P-1 addendum 2; Land Rover 2012 and Ford 1992-2010"
-        " service texts",
+        "  source       lowest at least 75 % of highest: TM 5-4210-230-14&P-1 addendum 2; car makers' service texts of 2012"
+        " and of 1992 to 2010",
         "  next step    wet-test it with about 15 ml of oil (not much more in a diesel), check its lash first, then leak-down",
         "  caution      Ignition and fuel off before cranking; crank with a remote starter, not the key; stand clear of plug"
         " holes. No large quantities of oil into a diesel: it can lock.",
