@@ -1,5 +1,7 @@
 """The valve lash sheet on the screen: few keys, drawn as the engine stands, judged and asked about as it is typed."""
 
+from pathlib import Path
+
 import pytest
 
 from fleetcare.context import Context
@@ -8,7 +10,7 @@ from fleetcare.tui.forms.base import Subject
 from fleetcare.tui.screens.due import DueScreen
 from fleetcare.tui.screens.sheet import SheetScreen
 from tests.tui.conftest import Opened, line_with, press, seen, settle_down, type_in
-from tests.tui.forms import stored
+from tests.tui.forms import form_with, stored
 from tests.tui.sheets import SINGLE, SIX, SMALL, cell, enter_all, rows, said, sheet_of, values_of
 
 
@@ -193,3 +195,10 @@ async def test_the_cautions_of_the_job_stand_below_the_valves(opened: Opened, be
         assert line_with(pilot, "Shut the engine down and isolate it")
         await press(pilot, "pagedown")
         assert line_with(pilot, "The engine maker's manual comes before these limits")
+
+
+async def test_a_sheet_without_limits_says_where_they_are_given(opened: Opened, db: Path) -> None:
+    async with opened(size=SMALL) as pilot:
+        await form_with(pilot, "lash", Subject("PS-1"), {"at": "305"})
+        await press(pilot, "ctrl+s")
+        assert line_with(pilot, "no check range is known; on the engine, x and then e give it")

@@ -50,7 +50,8 @@ class OpenLash(OpenSheet):
         self.order = cells_of(form)
         self.blocks = (Flow((("Engine cold or hot", WHEN, 5), ("Unit", UNIT, 3), ("Gauge", GAUGE, 24))), *_banks(form))
         self.lasts = {key: last for key in self.order if (last := last_shown(form, key))}
-        self.limits = (read_typed(form, {}).judged.limits, *form.notes, _LEGEND)
+        nothing = "" if form.spec and form.spec.ranges else "; on the engine, x and then e give it"
+        self.limits = (f"{read_typed(form, {}).judged.limits}{nothing}", *form.notes, _LEGEND)
 
     def read(self, texts: Texts, sure: frozenset[CellKey]) -> "ReadLash":
         """Read and judge what is typed."""
