@@ -21,7 +21,10 @@ _PLAIN = {
     "--once-each": ("PERIOD", "once each calendar week, month, quarter or year"),
     "--window": ("DAYS", "days either side of the nominal date, such as 10d"),
     "--not-later-than": ("SPAN", "bound of --combine last, such as 5y"),
-    "--work": ("KIND", "drain, filter, lash, compression, inspection, ..."),
+    "--work": (
+        "KIND",
+        "drain (the engine's own oil and nothing else), coolant, gear-oil, fuel, filter, lash, inspection, ...",
+    ),
     "--needs-sheet": ("KIND", "closes only with a sheet: lash, compression, leakdown, run, spot or oil"),
     "--deferrable": ("yes|no", "may its due point be moved; no for once-each, else yes"),
     "--labour": ("HOURS", "working time, such as 1.5h"),

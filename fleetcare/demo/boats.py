@@ -10,7 +10,7 @@ from fleetcare.demo.use import now_and_then, scaled, weed_boat
 from fleetcare.demo.wear import Gauged
 
 _SLIPPING = {"name": "Slip, scrape and antifoul", "every": ["12mo"], "window": "15d", "labour": "16h"}
-_GEAR_OIL = {"name": "Reduction gear oil", "every": ["12mo"], "work": "drain", "caution": HOT_OIL}
+_GEAR_OIL = {"name": "Reduction gear oil", "every": ["12mo"], "work": "gear-oil", "caution": HOT_OIL}
 _IMPELLER = {"name": "Raw water impeller", "every": ["12mo"], "anchor": "from-due", "part": ["Impeller:1"]}
 
 BOATS = (

@@ -158,7 +158,7 @@ _DIGGERS = (
         ),
         tasks=(
             Kept({**OIL, "every": ["500h", "12mo"]}, Counted(500, 77)),
-            Kept({"name": "Axle oils", "every": ["1500h"], "work": "drain", "labour": "3h"}, Counted(1500, 610)),
+            Kept({"name": "Axle oils", "every": ["1500h"], "work": "gear-oil", "labour": "3h"}, Counted(1500, 610)),
             Kept(WEEKLY, Each(0, most=4)),
         ),
     ),

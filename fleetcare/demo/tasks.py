@@ -40,7 +40,7 @@ WEEKLY: Values = {"name": "Weekly check", "once_each": "week", "work": "inspecti
 GREASE: Values = {"name": "Chassis grease", "work": "lubrication", "labour": "1h"}
 HYDRAULIC_OIL: Values = {
     "name": "Hydraulic oil and filters",
-    "work": "drain",
+    "work": "hydraulic-oil",
     "labour": "3h",
     "caution": UNDER_PRESSURE,
 }

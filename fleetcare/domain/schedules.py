@@ -70,7 +70,7 @@ class CalendarTrigger:
 Trigger = CountedTrigger | CalendarTrigger
 
 DRAIN = "drain"
-"""The kind of work that changes the oil."""
+"""The kind of work that changes the oil of the engine; gear oil, coolant and whatever else is let out are other kinds."""
 
 
 @dataclass(frozen=True, slots=True)

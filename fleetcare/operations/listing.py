@@ -21,7 +21,7 @@ if TYPE_CHECKING:
     from sqlalchemy import Connection
 
 _MARKS = ("law", "insurer", "once", "on_condition", "pause_while_laid_up", "deferrable")
-_AGE_ALL_THE_SAME = re.compile(r"\b(oils?|coolants?|belts?|batter(y|ies)|drain)\b", re.IGNORECASE)
+_AGE_ALL_THE_SAME = re.compile(r"\b(oils?|coolants?|belts?|batter(y|ies)|drain(ed)?)\b", re.IGNORECASE)
 
 
 @dataclass(frozen=True, slots=True)

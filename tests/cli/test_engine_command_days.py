@@ -68,9 +68,14 @@ def test_a_status_that_holds_already_is_refused(pump: Runner, action: str, statu
 def test_laying_up_warns_of_what_ages_all_the_same(pump: Runner) -> None:
     pump("task", "add", "P-01", "Boiler cert", "--every", "12mo", "--pause-while-laid-up")
     pump("task", "add", "P-01", "Cooling", "--work", "coolant", "--every", "24mo", "--pause-while-laid-up")
+    pump("task", "add", "P-01", "Reverse gear", "--work", "gear-oil", "--every", "24mo", "--pause-while-laid-up")
+    pump("task", "add", "P-01", "Tank water drained", "--work", "fuel", "--every", "3mo", "--pause-while-laid-up")
     assert pump("engine", "lay-up", "P-01").out.splitlines() == [
         "P-01 is laid up from 2026-05-01.",
-        "Note: the calendar of Cooling pauses while laid up; oil, coolant, belts and batteries age all the same.",
+        *(
+            f"Note: the calendar of {name} pauses while laid up; oil, coolant, belts and batteries age all the same."
+            for name in ("Cooling", "Reverse gear", "Tank water drained")
+        ),
     ]
 
 

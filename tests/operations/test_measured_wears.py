@@ -14,12 +14,13 @@ from fleetcare.drafts.work import DeferralDraft
 from fleetcare.operations import judged
 from fleetcare.operations.deferrals import defer
 from fleetcare.operations.due import DueRow, due_rows
-from fleetcare.operations.find import find_item
+from fleetcare.operations.find import find_engine, find_item
+from fleetcare.operations.items import fit_engine
 from fleetcare.operations.kept_wears import kept_wears
 from fleetcare.operations.load import item_facts
 from fleetcare.operations.names import person_id
 from fleetcare.operations.show import task_working
-from tests.operations.importing import TODAY, engine, log, reading, task
+from tests.operations.importing import TODAY, engine, log, machine, reading, task
 from tests.operations.measure_yard import take
 
 DAYS = ("2025-09-01", "2025-12-01", "2026-01-01", "2026-02-01", "2026-03-01", "2026-04-01", "2026-05-01")
@@ -112,6 +113,17 @@ def test_an_oil_change_ends_the_pull_of_its_samples(ctx: Context) -> None:
     with_samples_due(ctx)
     log(ctx, "2026-05-01", "Oil", at=["1600h"])
     assert row(ctx, "Sample").next_due_at == 1900
+
+
+def test_a_drain_of_the_machine_it_is_fitted_in_is_not_the_oil_of_the_engine(ctx: Context) -> None:
+    with_samples_due(ctx)
+    machine(ctx, "PH-1")
+    with ctx.write() as session:
+        fit_engine(session, find_engine(session.connection(), "P-01"), "PH-1", date(2026, 4, 1))
+    task(ctx, "PH-1", "Gearbox", every=["12mo"], work="drain")
+    log(ctx, "2026-05-01", "Gearbox", tag="PH-1")
+    assert row(ctx, "Sample").reason.startswith("pulled forward: Fe iron")
+    assert row(ctx, "Gearbox").reason == ""
 
 
 def test_as_of_a_day_gone_by_only_sheets_up_to_it_pull(ctx: Context) -> None:

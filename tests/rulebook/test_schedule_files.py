@@ -4,12 +4,15 @@ from pathlib import Path
 
 import pytest
 
+from fleetcare.domain.schedules import DRAIN
 from fleetcare.drafts.schedules import read_tasks
 from fleetcare.errors import FleetError, Refused
 from fleetcare.rulebook.schedules import Schedule, find_schedule, is_file_name, shipped_schedules
 
 SHIPPED = shipped_schedules()
 COMMON = [schedule for schedule in SHIPPED if schedule.source == "common practice, verify against the manual"]
+
+README = Path(__file__).parents[2] / "README.md"
 
 HEAD = 'name = "Ditch pumps"\nsource = "workshop book"\nnote = "Check against the manual."\n'
 TASK = '[[task]]\nname = "Oil"\nevery = "250h"\n'
@@ -33,6 +36,31 @@ def test_a_shipped_schedule_says_that_it_is_a_default_to_be_checked(schedule: Sc
 @pytest.mark.parametrize("schedule", SHIPPED, ids=_name)
 def test_every_shipped_task_has_a_work_kind_a_caution_and_a_source(schedule: Schedule) -> None:
     assert [d.name for d in read_tasks(schedule) if not (d.work and d.caution and d.source)] == []
+
+
+@pytest.mark.parametrize("schedule", SHIPPED, ids=_name)
+def test_only_the_oil_of_an_engine_is_work_of_the_kind_that_an_oil_sample_ends_with(schedule: Schedule) -> None:
+    drained = [draft.name for draft in read_tasks(schedule) if draft.work == DRAIN]
+    assert all(name.split()[0] == "Oil" for name in drained)
+    assert schedule.is_for_engines or not drained
+
+
+def test_the_other_fluids_of_shipped_schedules_are_kinds_of_work_of_their_own() -> None:
+    kinds = {draft.name: draft.work for schedule in SHIPPED for draft in read_tasks(schedule)}
+    told = {
+        "Coolant change": "coolant",
+        "Gearbox and axle oil": "gear-oil",
+        "Reverse gear oil": "gear-oil",
+        "Tank water drained": "fuel",
+    }
+    assert {name: kinds[name] for name in told} == told
+    named = {name for name in kinds if any(word in name.lower() for word in ("oil", "coolant", "drain"))}
+    assert {name for name in named if kinds[name] != DRAIN} == {*told}
+
+
+def test_the_readme_names_every_kind_of_work_of_shipped_schedules() -> None:
+    kinds = {draft.work for schedule in SHIPPED for draft in read_tasks(schedule)}
+    assert [kind for kind in sorted(kinds) if f"`{kind}`" not in README.read_text(encoding="utf-8")] == []
 
 
 def test_general_schedules_cover_the_engines_of_a_mixed_yard_and_claim_no_more_than_common_practice() -> None:

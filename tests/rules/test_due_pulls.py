@@ -209,6 +209,12 @@ def test_an_oil_change_on_the_day_of_the_sample_or_later_ends_its_pull(on: str, 
     assert pulled_by_oil(drain(origin=last_done(on, hours=4000)), sampling())["Sample"] is is_pulled
 
 
+@pytest.mark.parametrize("work", ["gear-oil", "coolant", "hydraulic-oil", "fuel"])
+def test_another_fluid_changed_after_the_sample_leaves_the_oil_in_the_engine(work: str) -> None:
+    other = drain(number=3, name="Other", work=work, origin=last_done("2026-04-25", hours=4000))
+    assert pulled_by_oil(drain(), other) == {"Oil": True, "Other": False}
+
+
 def test_a_drain_is_pulled_though_its_interval_is_longer_than_the_oil_was_watched() -> None:
     short = a_wear(("3700 3800 3900 4000", "40 60 81 100", None), low="0", high="150", work="oil")
     assert pulled_by_oil(drain(), wears=(short,)) == {"Oil": True}

@@ -49,6 +49,11 @@ def until(task: Task | None = None, *wears: Wear, **more: object) -> int | None:
     return int(found.until) if found is not None else None
 
 
+@pytest.mark.parametrize("work", ["gear-oil", "coolant", "hydraulic-oil", "fuel"])
+def test_only_the_drain_of_the_engine_s_oil_is_advised(work: str) -> None:
+    assert until(drain(work=work)) is None
+
+
 def test_a_limit_far_off_lets_it_stay_as_far_ahead_as_it_was_watched() -> None:
     assert until() == 1700
 

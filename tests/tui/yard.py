@@ -21,7 +21,7 @@ task add SB-1 "Exercise run" --once-each month --grace 5d --law --work run --sou
 task add SB-1 "Day tank cleaning" --every 24mo --work cleaning --last-done 2025-06-01
 task add TR-1 "Hydraulic hoses" --every 24mo --work inspection --last-done 2024-03-13
 task add TR-1 "Air filter" --every 500h --work filter --last-done 4420h --last-done 2023-05-02
-task add TR-1 Gearbox --every 4000h --work drain
+task add TR-1 Gearbox --every 4000h --work gear-oil
 task add TR-2 "Oil and filter" --every 200h --work drain --last-done 940h --last-done 2026-01-05
 task add TR-2 "Air filter" --every 100h --work filter --last-done 1000h --last-done 2026-02-02
 reading PS-1 412 --on 2024-08-01

@@ -8,7 +8,7 @@ USUAL = (
     Field("ahead", "Near from", "how long before it counts as near; left empty a tenth of the interval", several=True),
     Field("grace", "Grace", "what it may run over, such as 10h", several=True),
     Field("last_done", "Last done", "the day, the dial figure, or both, such as 2026-01-15; 900h", several=True),
-    Field("work", "Kind of work", "such as drain, filter, lash, inspection", "work kinds"),
+    Field("work", "Kind of work", "drain (engine oil alone), coolant, gear-oil, filter, lash, ...", "work kinds"),
     Field("part", "Parts", "parts it takes, such as Oil filter:1", "parts", several=True),
     Field("labour", "Labour", "working time, such as 1.5h"),
     Field("caution", "Caution", "what can hurt"),
