@@ -23,9 +23,11 @@ _NARROWEST = 10  # a date
 
 
 def say(text: str) -> None:
-    """Print an answer, line by line, on stdout."""
+    """Print an answer, line by line, on stdout; on a terminal what is too long for it goes on below, a little further in."""
+    width = _terminal_width()
     for line in text.split("\n"):
-        _write(sys.stdout, clean(line) + "\n")
+        for part in _folded(clean(line), width):
+            _write(sys.stdout, part + "\n")
 
 
 def complain(*lines: str) -> None:
@@ -156,6 +158,14 @@ def _terminal_width() -> int:
     if sys.stdout is not None and sys.stdout.isatty():
         return shutil.get_terminal_size().columns
     return sys.maxsize
+
+
+def _folded(line: str, width: int) -> list[str]:
+    """Fold a line between words."""
+    if _columns(line) <= width:
+        return [line]
+    indent = line[: len(line) - len(line.lstrip())]
+    return textwrap.wrap(line, max(width, 2 * _NARROWEST), subsequent_indent=f"{indent}{_GAP}", break_on_hyphens=False)
 
 
 def _narrow(widths: list[int], available: int) -> None:

@@ -78,11 +78,12 @@ def _lash_sheet(judged: "JudgedSheet") -> dict[str, Any]:
 
 
 def _measured_sheet(report: "SheetReport") -> dict[str, Any]:
-    sheet = report.sheet
+    sheet, hours = report.sheet, report.engine_hours
     return {
         "lab_number": null(sheet.lab_number),
         "received_on": sheet.received_on,
-        "engine_hours": report.engine_hours,
+        "engine_hours": hours.value if hours else None,
+        "engine_hours_estimated": hours.approximate if hours else None,
         "words": [{"quantity": one.quantity, "point": one.point, "word": one.qualifier} for _, one in report.words],
         "is_complete": not report.incomplete,
         "incomplete": null(report.incomplete),

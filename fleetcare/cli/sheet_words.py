@@ -4,6 +4,7 @@ from collections.abc import Sequence
 from typing import TYPE_CHECKING
 
 from fleetcare.cli import output
+from fleetcare.domain.cautions import GENERAL
 from fleetcare.domain.quantities import plain, tenth
 
 if TYPE_CHECKING:
@@ -24,7 +25,8 @@ def say_report(report: "SheetReport") -> None:
     if sheet.received_on is not None:
         taken.append(f"received {sheet.received_on}")
     if lash is None and report.engine_hours is not None:
-        taken.append(f"{plain(tenth(report.engine_hours))} h of life")
+        mark = "~" if report.engine_hours.approximate else ""
+        taken.append(f"{mark}{plain(tenth(report.engine_hours.value))} h of life")
     told = ", ".join(filter(None, taken))
     output.say(f"{report.title} of {report.tag} on {sheet.on}{f', {told}' if told else ''}.")
     if lash is not None:
@@ -79,10 +81,7 @@ def _say_measures(report: "SheetReport") -> None:
 
 def measures_table(report: "SheetReport") -> str:
     """Give the values of any other sheet as a table; columns that would be empty are left out."""
-    cells = [
-        [row.title, row.point, row.phase, f"{row.value} {row.unit}".strip(), row.verdict, row.why, row.rule]
-        for row in report.rows
-    ]
+    cells = [[row.title, row.point, row.phase, row.figure, row.verdict, row.why, row.rule] for row in report.rows]
     return _filled(_HEADERS, cells)
 
 
@@ -98,11 +97,13 @@ def _say_counts(verdicts: Sequence[str]) -> str:
 
 
 def _say_finding(finding: "EngineFinding") -> None:
-    """Print a finding with its working, its source, and what to do next."""
+    """Print a finding with its working, its source, and what to do next; the caution of all work comes last, once."""
     row = finding.row
+    lines = [
+        *(("worked out", working) for working in row.working),
+        ("source", row.source),
+        ("next step", row.next_step),
+        ("caution", row.caution.removesuffix(GENERAL).rstrip()),
+    ]
     output.say(f"{row.severity.capitalize()} {finding.id}: {row.explanation}")
-    for working in row.working:
-        output.say(f"  worked out: {working}")
-    output.say(f"  source: {row.source}")
-    output.say(f"  next: {row.next_step}")
-    output.say(f"  caution: {row.caution}")
+    output.say(output.labelled([line for line in lines if line[1]], indent="  "))

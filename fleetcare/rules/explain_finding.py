@@ -61,7 +61,7 @@ def finding_row(finding: Finding) -> FindingRow:
         limit=figure.limit,
         margin=figure.margin,
         since=finding.since,
-        source=" / ".join(_each(signal.rule.source for signal in finding.signals)),
+        source=say_sources(signal.rule.source for signal in finding.signals),
         explanation=say_finding(finding),
         working=tuple(say_working(signal) for signal in finding.signals if signal.steps or signal.measured is not None),
         evidence=tuple(say_evidence(value) for value in finding.evidence),
@@ -83,6 +83,15 @@ def say_finding(finding: Finding) -> str:
     )
     parts = [lead, *figures, *(f"it would also fit {cause}" for cause in also), f"since {finding.since.isoformat()}"]
     return "; ".join(parts)
+
+
+def say_sources(sources: Iterable[str]) -> str:
+    """Give sources one after the other; what several say before their colon, or after it, is said once."""
+    told: dict[str, dict[str, None]] = {}
+    for source in sources:
+        origin, _, details = source.partition(": ")
+        told.setdefault(origin, {}).update(dict.fromkeys(filter(None, details.split("; "))))
+    return " / ".join(": ".join(filter(None, (origin, "; ".join(details)))) for origin, details in told.items())
 
 
 def say_signal(signal: Signal) -> str:

@@ -7,7 +7,7 @@ from decimal import Decimal
 from fleetcare.domain.findings import Evidence, NotJudged, Signal
 from fleetcare.domain.quantities import plain
 from fleetcare.domain.rule_book import Bounds, Pattern, Rule, Severity
-from fleetcare.domain.sheets import Phase, Verdict
+from fleetcare.domain.sheets import NOT_DETECTED, Phase, Verdict
 from fleetcare.rules.explain_finding import say_against, say_measured, say_unit
 from fleetcare.rules.judging.judge import JudgedSheet
 from fleetcare.rules.judging.values import title
@@ -45,6 +45,11 @@ class MeasuredRow:
     margin: Decimal | None = None
     limit_unit: str = ""
     source: str = ""
+
+    @property
+    def figure(self) -> str:
+        """The value with its unit; what was not detected has none."""
+        return self.value if self.value == NOT_DETECTED else f"{self.value} {self.unit}".strip()
 
 
 def measured_rows(judged: JudgedSheet, rules: Sequence[Rule], order: Sequence[str]) -> tuple[MeasuredRow, ...]:

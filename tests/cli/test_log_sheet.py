@@ -31,7 +31,7 @@ def test_logging_with_a_sheet_closes_the_task_and_prints_the_judgement(pump: Run
         "Valve lash of P-01 on 2026-05-01, cold, gauge F2.",
     ]
     assert "2E     left   0.38 mm        alarm    0.02 mm below 0.40 to 0.50 mm  turn the screw 25° looser" in out
-    assert out[-6:] == [*CAUTIONS, "P-01  Valve lash: 1000 h → 2200 h"]
+    assert out[-7:] == [*CAUTIONS, "P-01  Valve lash: 1000 h → 2200 h"]
 
 
 def test_a_bigger_job_closes_it_with_its_sheet(pump: Runner, lash: str) -> None:

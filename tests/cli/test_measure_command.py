@@ -8,6 +8,7 @@ from pathlib import Path
 
 import pytest
 
+from fleetcare.domain.cautions import GENERAL
 from tests.cli.conftest import Runner
 
 Opener = Callable[[str], Runner]
@@ -34,28 +35,28 @@ CAUTIONS = [
     "Caution: Turn the crank only in its normal direction and with the tool meant for it; hands clear of belts, fan and gears.",
     "Caution: Hot parts burn, hot oil too. Measure again when the locknut is tight: it can pull the setting.",
     "Caution: The engine maker's manual comes before these limits and this order of setting.",
+    f"Caution: {GENERAL}",
 ]
 _TIGHT = (
     "the gap is below its check range: seat recession, a worn valve face or a stretched stem; too small a gap loses"
     " compression and burns the valve"
 )
 _UNDER_A_FINDING = [
-    "  source: the engine's own check range; effects: TM 5-3820-245-14&P p. 169, TM 10-3930-644-14&P; repeated closing"
+    "  source      the engine's own check range; effects: TM 5-3820-245-14&P p. 169, TM 10-3930-644-14&P; repeated closing"
     " points at the seats: TM 5-3895-382-24, TM 5-3825-226-24; stem stretch: common practice",
-    "  next: set the valve; where it closes again soon, look for a failing seat: injector, air filter, overload",
-    "  caution: Engine isolated: battery off, key out, tag hung, fuel off. Turn the crank in its normal direction only,"
-    " hands clear of belts and fan. Limits and intervals are to be checked against the engine maker's manual, local codes"
-    " and law; work on engines is for competent, where required licensed, people.",
+    "  next step   set the valve; where it closes again soon, look for a failing seat: injector, air filter, overload",
+    "  caution     Engine isolated: battery off, key out, tag hung, fuel off. Turn the crank in its normal direction only,"
+    " hands clear of belts and fan.",
 ]
 FOUND = [
     f"Alarm 1-lash-tight-2E: closing valve at 2E: {_TIGHT}; valve lash at 2E 0.38 mm, 0.02 mm below the alarm limit of"
     " 0.4 mm; valve lash at 2E 0.36 mm, 0.04 mm below the alert limit of 0.4 mm; since 2026-05-01",
-    "  worked out: valve lash 0.38 mm (lash-tight) from check range from 0.4 mm, to 0.5 mm",
-    "  worked out: valve lash 0.36 mm (lash-tight) from check range from 0.4 mm, to 0.5 mm",
+    "  worked out  valve lash 0.38 mm (lash-tight) from check range from 0.4 mm, to 0.5 mm",
+    "  worked out  valve lash 0.36 mm (lash-tight) from check range from 0.4 mm, to 0.5 mm",
     *_UNDER_A_FINDING,
     f"Alert 1-lash-tight-2I: closing valve at 2I: {_TIGHT}; valve lash at 2I 0.17 mm, 0.03 mm below the alert limit of"
     " 0.2 mm; since 2026-05-01",
-    "  worked out: valve lash 0.17 mm (lash-tight) from check range from 0.2 mm, to 0.3 mm",
+    "  worked out  valve lash 0.17 mm (lash-tight) from check range from 0.2 mm, to 0.3 mm",
     *_UNDER_A_FINDING,
 ]
 JUDGED = [

@@ -2,13 +2,14 @@
 
 import io
 import json
+import re
 import sys
 from collections.abc import Callable
 from pathlib import Path
 
 import pytest
 
-from fleetcare.domain.cautions import OF_SHEETS
+from fleetcare.domain.cautions import GENERAL, OF_SHEETS
 from tests.cli.conftest import Runner
 from tests.cli.test_show_command import section
 
@@ -109,9 +110,15 @@ def test_a_compression_sheet_of_twelve_values_to_the_byte(pump: Runner, write: W
     assert said[0].startswith(
         "Alarm 1-pattern-valves-3: leaking valves at cylinder 3: the cylinder is low and oil does not raise it"
     )
-    told = [line.partition(":")[0] for line in said[1:]]
-    assert told[-8:] == ["  caution", *["Caution"] * len(OF_SHEETS["compression"]), "Note", "Kept as entry 1 of P-01."]
-    assert {"  worked out", "  source", "  next"} <= set(told)
+    told = [re.split(r":|  +(?=\w)", line.strip())[0] for line in said[1:]]
+    assert told[-9:] == [
+        "caution",
+        *["Caution"] * len(OF_SHEETS["compression"]),
+        "Caution",
+        "Note",
+        "Kept as entry 1 of P-01.",
+    ]
+    assert {"worked out", "source", "next step"} <= set(told)
     assert said[-2] == (
         "Note: Compression stays open; to close it with this sheet give fleetcare correct 1 --task Compression."
     )
@@ -135,6 +142,7 @@ def test_an_oil_sample_of_twenty_five_values_as_json(pump: Runner, write: Writer
         "lab_number": "4711",
         "received_on": "2026-04-20",
         "engine_hours": 1100,
+        "engine_hours_estimated": True,
         "words": [
             {"quantity": "grade", "point": "", "word": "SAE 15W-40"},
             {"quantity": "iso4406", "point": "", "word": "18/16/>=13"},
@@ -172,7 +180,15 @@ def test_an_oil_sample_of_twenty_five_values_as_json(pump: Runner, write: Writer
         "open",
         "2026-04-11",
     )
-    assert answer["cautions"] == list(OF_SHEETS["oil"])
+    assert answer["cautions"] == [*OF_SHEETS["oil"], GENERAL]
+
+
+def test_hours_worked_out_between_readings_and_values_not_detected_are_shown_as_such(
+    pump: Runner, write: Writer
+) -> None:
+    ran = pump("measure", "oil", "P-01", write("Na,,,ND,ppm"), "--on", "2026-04-11")
+    assert ran.out.startswith("Oil sample of P-01 on 2026-04-11, ~1100 h of life.\n")
+    assert "sodium  ND     in " in ran.out
 
 
 @pytest.mark.parametrize(

@@ -43,6 +43,26 @@ def test_an_answer_may_have_lines_but_talk_stays_one_line_each(capsys: pytest.Ca
     assert capsys.readouterr() == ("one\ntwo\\x1b\n", "three\\nfour\nfive\n")
 
 
+class _Terminal(io.StringIO):
+    def isatty(self) -> bool:
+        return True
+
+
+def test_on_a_terminal_a_long_answer_goes_on_below_between_words_and_a_little_further_in(
+    monkeypatch: pytest.MonkeyPatch,
+) -> None:
+    monkeypatch.setattr(sys, "stdout", terminal := _Terminal())
+    monkeypatch.setenv("COLUMNS", "30")
+    output.say("  Caution: hot oil burns, and used oil goes into a marked tank\nshort")
+    assert terminal.getvalue().split("\n") == [
+        "  Caution: hot oil burns, and",
+        "    used oil goes into a",
+        "    marked tank",
+        "short",
+        "",
+    ]
+
+
 def test_a_terminal_without_the_character_gets_an_escape(monkeypatch: pytest.MonkeyPatch) -> None:
     raw = io.BytesIO()
     monkeypatch.setattr(sys, "stdout", io.TextIOWrapper(raw, encoding="ascii"))

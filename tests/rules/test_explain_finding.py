@@ -33,6 +33,7 @@ from fleetcare.rules.explain_finding import (
     say_measured,
     say_next_step,
     say_signal,
+    say_sources,
     say_subject,
     say_unit,
     say_working,
@@ -55,6 +56,13 @@ def test_a_finding_is_said_with_its_figure_its_limit_and_since_when() -> None:
     assert say_finding(found(about, a_rule())) == (
         "iron wear: liners, shafts, gears; iron 120 ppm, 20 ppm above the alert limit of 100 ppm; since 2026-03-18"
     )
+
+
+def test_what_several_sources_say_alike_is_said_once() -> None:
+    told = say_sources(
+        ["a preset: over 20: a handbook; 50: a manual", "a law, 1 CFR 2", "a preset: over 30: a handbook; 50: a manual"]
+    )
+    assert told == "a preset: over 20: a handbook; 50: a manual; over 30: a handbook / a law, 1 CFR 2"
 
 
 def test_the_row_of_a_finding_has_the_figures_of_its_gravest_signal_and_every_source_once() -> None:
