@@ -4,7 +4,7 @@ from collections.abc import Mapping
 from dataclasses import dataclass, field
 from datetime import date
 from decimal import Decimal
-from typing import Any
+from typing import Any, NamedTuple
 
 from fleetcare.domain.sheets import SheetValue
 
@@ -27,12 +27,20 @@ class SheetWord:
     point: str = ""
 
 
+class TopUp(NamedTuple):
+    """Oil topped up by the log: at so many hours of life, so many litres."""
+
+    life: Decimal
+    litres: Decimal
+
+
 @dataclass(frozen=True, slots=True)
 class MeasuredSheet:
     """Measurements taken together on a day, known by the entry they came with; values as entered, in their own units.
 
     `gauge` is the gauge, tester or laboratory. `engine_hours` is the life total of the engine then. `received_on` is the
-    day results came, where they came later.
+    day results came, where they came later. `logged_top_up` are the litres the log has as topped up on the oil of a sample
+    that does not state them itself, None where it has none.
     """
 
     entry: int
@@ -43,6 +51,7 @@ class MeasuredSheet:
     gauge: str = ""
     engine_hours: Decimal | None = None
     received_on: date | None = None
+    logged_top_up: Decimal | None = None
     memo: dict[tuple[str, str], Any] = field(default_factory=dict, init=False, repr=False, compare=False)
     """What rules look up on this very sheet again and again, worked out once; no part of what was measured."""
 

@@ -15,7 +15,8 @@ class Wear:
 
     `work` is the kind of sheet it stands on, and so of the tasks that will measure it again. `segments` hold a value at
     least, in order of time, `limits` a limit at least; `measured_on` is the day of the newest value, `received_on` the day
-    it was known, where a laboratory took until later.
+    it was known, where a laboratory took until later. With `is_topped_up_by_log` only the log says what was topped up on
+    the oil of some value.
     """
 
     work: str
@@ -26,6 +27,7 @@ class Wear:
     limits: Mapping[End, Decimal]
     measured_on: date
     received_on: date | None = None
+    is_topped_up_by_log: bool = False
 
     @property
     def known_on(self) -> date:

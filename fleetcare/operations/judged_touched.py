@@ -62,6 +62,8 @@ _READ_AFRESH = (
 """Whose sheets a new reading may tell the hours of: of nobody read between the newest sheet and it, as that tells them."""
 _SHEET = "select item_id from sheet where id = :sheet"
 _HAS_OIL = f"select 1 from sheet where kind = '{OIL}' and {{}} = :number limit 1"
+_SAMPLED_SINCE = f"select item_id from sheet where item_id = :item and kind = '{OIL}' and taken_on >= :on limit 1"
+"""Whose samples a new top-up may stand in for."""
 _NEW_OIL = (
     "select 1 from sheet join sheet_value on sheet_value.sheet_id = sheet.id where sheet.entry_id = :entry"
     " and sheet_value.phase = 'new' limit 1"
@@ -88,8 +90,9 @@ def _items(connection: "Connection", kin: Kin, kind: str, row: dict[str, Any]) -
     if kind in _OF_FAMILY:
         return _of_family(connection, kin, kind, row)
     if kind == "log_entry":
-        if row["supersedes_id"] is None:  # what is new with it are rows of their own
-            return set()
+        if row["supersedes_id"] is None:  # what else is new with it are rows of their own
+            is_top_up = row["kind"] == "top-up"
+            return _of(connection, _SAMPLED_SINCE, item=row["item_id"], on=row["on"]) if is_top_up else set()
         if fetch(connection, _NEW_OIL, entry=row["supersedes_id"]):
             return {_EVERYBODY}
         has_oil = fetch(connection, _HAS_OIL.format("entry_id"), number=row["supersedes_id"])

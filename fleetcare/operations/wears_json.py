@@ -9,7 +9,7 @@ from fleetcare.domain.quantities import Kind
 from fleetcare.domain.trends import End, Point, Segment
 from fleetcare.domain.wear import MeasuredWears, Wear
 
-WEARS_FORM = "1"
+WEARS_FORM = "2"
 """Another one when what is written, or how it is worked out, becomes another."""
 
 
@@ -39,12 +39,12 @@ def _wear(wear: Wear) -> list[Any]:
     received = wear.received_on.isoformat() if wear.received_on else None
     return [
         *(wear.work, wear.subject, wear.kind.value, wear.unit, segments, limits),
-        *(wear.measured_on.isoformat(), received),
+        *(wear.measured_on.isoformat(), received, wear.is_topped_up_by_log),
     ]
 
 
 def _read_wear(cells: list[Any]) -> Wear:
-    work, subject, kind, unit, segments, limits, measured, received = cells
+    work, subject, kind, unit, segments, limits, measured, received, by_log = cells
     return Wear(
         work,
         subject,
@@ -60,4 +60,5 @@ def _read_wear(cells: list[Any]) -> Wear:
         {End(end): Decimal(limit) for end, limit in limits.items()},
         date.fromisoformat(measured),
         date.fromisoformat(received) if received else None,
+        by_log,
     )

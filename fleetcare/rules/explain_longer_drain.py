@@ -23,13 +23,14 @@ def explain_longer(line: DueLine, facts: ItemFacts) -> list[tuple[str, str]]:
     days = [str(t.own) for t in line.triggers if t.kind is Kind.CALENDAR and t.own is not None]
     if line.not_later_than is not None:
         days.append(line.not_later_than.isoformat())
+    by_log = ", topped up by the log" if any(wear.is_topped_up_by_log for wear in facts.sound_oil) else ""
     never = f", and never beyond {min(days)}" if days else ""
     return [
         (
             "longer drain",
             f"the newest sample flags nothing, and all that can be projected keeps inside its limits until"
             f" {_dial(advice, facts)}, {beyond} h beyond its own point (four times in five; looked at:"
-            f" {', '.join(advice.subjects)}; {advice.subject} may not beyond that). Advice only: the line stays where it is until a"
+            f" {', '.join(advice.subjects)}; {advice.subject} may not beyond that{by_log}). Advice only: the line stays where it is until a"
             f" supervisor puts it off, with a reason, to no later than there{never}. Ask the engine's manual first",
         )
     ]

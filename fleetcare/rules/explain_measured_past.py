@@ -52,7 +52,7 @@ _WHY_NOT = {
     Aside.BOUND: "the last value is only a bound",
     Aside.NO_HOURS: "the hours of life it was taken at are not known",
     Aside.NO_HOURS_ON_OIL: "the sheet does not state the hours on the oil",
-    Aside.NO_TOP_UP: "the sheet does not state what was topped up, 0 where nothing was",
+    Aside.NO_TOP_UP: "neither sheet nor log say what was topped up; write 0 on the sheet where nothing was",
     Aside.NO_SUMP: "oil was topped up, and the nameplate does not say what the sump holds",
     Aside.NO_FRESH: "oil was topped up, and what new oil has of it is not known",
     Aside.TOPPED_UP: "oil was topped up, which cannot be corrected for",
@@ -149,7 +149,9 @@ def _said(
     """Say all that is worth saying, what matters most first."""
     said = [f"{_headline(past, judged, counts_hours)}.", f"{_first_up(_say_ahead(past, levels, projection))}."]
     if rate is not None:
-        how = "top-up counted in" if rate.is_corrected else "as read, top-up not counted in"
+        by_log = past.last.sheet.logged_top_up
+        counted = "top-up" if by_log is None else f"the {plain(by_log)} L topped up by the log"
+        how = f"{counted} counted in" if rate.is_corrected else "as read, top-up not counted in"
         said.append(f"Since the oil change {_signed(rate.per_100h, past.unit)} {past.unit} per 100 h, {how}.")
     gauges = list(dict.fromkeys(one.sheet.gauge or "none named" for one in past.values))
     if len(gauges) > 1:

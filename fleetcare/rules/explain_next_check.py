@@ -52,9 +52,10 @@ def _say_sum(pull: "Pull", trigger: TriggerLine, facts: ItemFacts) -> str:
         else f"to be checked at the early end, {at}"
     )
     count = sum(len(segment.points) for segment in wear.segments)
+    by_log = ", topped up by the log" if wear.is_topped_up_by_log else ""
     return (
         f"{wear.subject} {say_ahead(pull.projection, wear.unit, over, of)} (four times in five; {count} values, the last of"
-        f" {wear.measured_on.isoformat()}); {when}: {_tenth(trigger.own - pull.at)} {over} before its own point"
+        f" {wear.measured_on.isoformat()}{by_log}); {when}: {_tenth(trigger.own - pull.at)} {over} before its own point"
     )
 
 

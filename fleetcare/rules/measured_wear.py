@@ -96,6 +96,7 @@ def _wears(past: MeasuredPast, levels: Iterable[Level]) -> Iterator[Wear]:
             limits=_inwards(limits, PLACES.get(past.unit, 0) + 1),
             measured_on=last.sheet.on,
             received_on=last.sheet.received_on,
+            is_topped_up_by_log=any(one.x is not None and one.sheet.logged_top_up is not None for one in past.values),
         )
 
 

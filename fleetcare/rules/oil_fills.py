@@ -1,11 +1,16 @@
-"""Oil samples told apart by the fill they were taken from, and the hours that lie between: what the sheets state of it."""
+"""Oil samples told apart by the fill they were taken from, the hours that lie between, and what was topped up meanwhile.
+
+All by what the sheets state; only top-ups are taken from the log where a sheet says nothing of them. A log without any
+since the oil was filled in says nothing either: never that there were none.
+"""
 
 from collections.abc import Iterable, Sequence
+from dataclasses import replace
 from decimal import Decimal
 from enum import Enum
 from typing import NamedTuple
 
-from fleetcare.domain.measured import MeasuredSheet
+from fleetcare.domain.measured import MeasuredSheet, TopUp
 from fleetcare.rules.judging.facts import CannotTell
 from fleetcare.rules.judging.rates import is_other_fill
 from fleetcare.rules.judging.spans import decimal
@@ -100,5 +105,18 @@ def hours_on_oil(sheet: MeasuredSheet) -> Decimal | None:
 
 
 def top_up(sheet: MeasuredSheet) -> Decimal | None:
-    """Give the litres topped up since the oil change, None where the sheet does not state them."""
-    return _stated(sheet, TOP_UP, "L")
+    """Give the litres topped up since the oil change, as the sheet states them, else by the log; None where neither does."""
+    return _stated(sheet, TOP_UP, "L") if sheet.logged_top_up is None else sheet.logged_top_up
+
+
+def with_logged(sheet: MeasuredSheet, top_ups: Iterable[TopUp]) -> MeasuredSheet:
+    """Give an oil sample that says nothing of top-ups with what the log of its engine has of its fill; any other as it is.
+
+    The oil was filled in at the hours of life then, less those on the oil; a top-up at just that figure belongs to the
+    fill before.
+    """
+    life, hours = sheet.engine_hours, hours_on_oil(sheet)
+    if life is None or hours is None or any(value.quantity == TOP_UP for value in sheet.values):
+        return sheet
+    litres = [one.litres for one in top_ups if life - hours < one.life <= life]
+    return replace(sheet, logged_top_up=sum(litres, Decimal(0))) if litres else sheet

@@ -20,6 +20,7 @@ from fleetcare.operations.kept_wears import kept_wears
 from fleetcare.operations.load import item_facts
 from fleetcare.operations.names import person_id
 from fleetcare.operations.show import task_working
+from fleetcare.operations.wears_json import WEARS_FORM
 from tests.operations.importing import TODAY, engine, log, machine, reading, task
 from tests.operations.measure_yard import take
 
@@ -171,7 +172,7 @@ def test_what_is_kept_is_read_without_judging_and_made_anew_where_it_does_not_ho
             file.execute(change)
         assert row(ctx, "Pressures") == before
         with closing(sqlite3.connect(ctx.path)) as file:
-            assert file.execute("select content like '__1 %' from judged_engine").fetchall() == [(1,)]
+            assert file.execute(f"select content like '__{WEARS_FORM} %' from judged_engine").fetchall() == [(1,)]
 
 
 @pytest.mark.parametrize("from_on", [date(2026, 4, 1), TODAY])

@@ -125,8 +125,13 @@ def test_samples_that_are_not_normalised_say_what_to_state() -> None:
     assert [[dot.x for dot in segment] for segment in untold.segments] == [[1000], [1040]]
     assert untold.left_out == 0
     as_read = row(rising("12", "19", added=""), ALERT)
-    assert "Not projected: the sheet does not state what was topped up, 0 where nothing was." in as_read.said
+    assert (
+        "Not projected: neither sheet nor log say what was topped up; write 0 on the sheet where nothing was."
+        in as_read.said
+    )
     assert "per 100 h, as read, top-up not counted in." in as_read.said
+    sheets = [replace(one.sheet, logged_top_up=Decimal("1.20")) for one in rising("12", "19", added="").values]
+    assert "per 100 h, the 1.2 L topped up by the log counted in." in row(iron(*sheets), ALERT).said
 
 
 def test_compression_stands_over_hours_of_life_or_days() -> None:

@@ -42,6 +42,13 @@ def test_the_working_says_which_point_how_fast_when_and_how_much_earlier() -> No
     )
 
 
+def test_what_only_the_log_says_was_topped_up_is_said_to_be_so() -> None:
+    by_log = replace(a_wear(), is_topped_up_by_log=True)
+    assert (
+        "11 values, the last of 2026-04-20, topped up by the log); to" in working(None, 4000, by_log)["pulled forward"]
+    )
+
+
 def test_after_a_new_meter_figures_are_said_to_be_of_life_and_what_the_dial_shows_there() -> None:
     old, new = Meter(1, Kind.HOURS, "h"), Meter(2, Kind.HOURS, "h")
     swap = day("2026-04-21")

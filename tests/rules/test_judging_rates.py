@@ -107,6 +107,21 @@ def test_wear_since_the_change_is_corrected_for_make_up_and_new_oil() -> None:
     assert [one.quantity for one in signal.used] == ["top_up", "Fe"]
 
 
+def test_a_top_up_the_sheet_does_not_state_is_that_of_the_log_and_said_to_be() -> None:
+    sheet = replace(oil("33", "200"), logged_top_up=Decimal("1.2"))
+    signal = one_signal(WEAR, facts(sheet, fresh=(value("Fe", "3", phase="new"),)))
+    assert round(signal.measured or 0, 2) == Decimal("16.15")
+    assert "topped up by the log" in [step.label for step in signal.steps]
+    assert [one.quantity for one in signal.used] == ["Fe"]
+
+
+def test_a_large_top_up_by_the_log_tells_no_trend_between_two_samples() -> None:
+    """A tenth of a sump of 8 L is 0.8 L."""
+    first = replace(oil("10", "40", days=9), logged_top_up=Decimal("0.1"))
+    assert judge([JOAP], facts(replace(oil("96", "60"), logged_top_up=Decimal("0.9")), earlier=(first,)))
+    assert "large top-up" in _why(JOAP, first, replace(oil("96", "60"), logged_top_up=Decimal("1.0")))
+
+
 def test_wear_as_read_needs_no_top_up_and_without_new_oil_nothing_is_taken_off() -> None:
     rule = a_rule(shape=Rate(Since.NEW, 100), high=Limits(beyond("16.4")))
     signal = one_signal(rule, facts(oil("33", "200")))

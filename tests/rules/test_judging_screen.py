@@ -150,6 +150,8 @@ def test_a_rate_since_the_change_is_clear_without_hours_or_without_the_make_up_i
     assert not clear(plain, iron, hours)
     assert clear(corrected, iron, hours)
     assert not clear(corrected, iron, hours, top_up)
+    by_log = facts(a_sheet(iron, hours, logged_top_up=Decimal(2)))
+    assert not screened(corrected).is_clear(by_log)
     assert not clear(a_rule(shape=Rate(Since.BEFORE, 10)), iron)
 
 

@@ -4,6 +4,7 @@ Worked: iron at 1100, 1200, 1300 and 1400 h is 10, 20, 31 and 40 ppm: 0.101 ppm/
 was watched for 300 h, so nothing is told beyond 1700 h; of a limit of 50 ppm, likely at 1495 h, the early end comes first.
 """
 
+from dataclasses import replace
 from decimal import Decimal
 
 import pytest
@@ -137,6 +138,8 @@ def test_the_row_says_it_in_short_and_the_working_on_what_it_rests_and_where_it_
     said = dict(explain(line, known))["longer drain"]
     assert "until 1700 h on the dial, 200 h beyond its own point (four times in five; looked at: Fe iron" in said
     assert "and never beyond 2027-01-01. Ask" in said
+    by_log = looked_at(drain(), replace(oil(), is_topped_up_by_log=True))
+    assert "Fe iron may not beyond that, topped up by the log). Advice" in dict(explain(*by_log))["longer drain"]
 
 
 def test_the_bound_of_a_task_is_named_and_one_without_is_not() -> None:

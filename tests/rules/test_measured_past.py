@@ -4,6 +4,7 @@ from decimal import Decimal
 
 import pytest
 
+from fleetcare.domain.measured import MeasuredSheet, TopUp
 from fleetcare.domain.sheet_kinds import KINDS, Column
 from fleetcare.rules.measured_past import (
     OIL_ORDER,
@@ -11,7 +12,7 @@ from fleetcare.rules.measured_past import (
     Break,
     compression_pasts,
 )
-from fleetcare.rules.oil_fills import seen_until
+from fleetcare.rules.oil_fills import seen_until, top_up, with_logged
 from tests.rules.measured import a_sheet, value
 from tests.rules.pasts import BANKS, a_test, cylinder, fitted, iron, oil, sampled
 
@@ -118,6 +119,35 @@ def test_a_sample_that_does_not_state_its_top_up_is_drawn_and_not_fitted() -> No
     assert iron(odd).last.aside is Aside.NO_TOP_UP
     no_litres = a_sheet(value("hours_on_oil", "100"), value("top_up", "1", "h"), value("Fe", "9"))
     assert iron(no_litres).last.aside is Aside.NO_TOP_UP
+
+
+def test_what_the_log_has_since_the_oil_was_filled_in_stands_in_for_a_top_up_not_stated() -> None:
+    """Filled in at 1200 h of life, sampled at 1400 h: what went in at 1200 h belongs to the oil before."""
+    top_ups = [
+        TopUp(Decimal(life), Decimal(litres)) for life, litres in ((1200, 9), (1250, 1), (1400, "0.2"), (1401, 7))
+    ]
+    told = with_logged(sampled(0, "200", "33", life="1400", added=""), top_ups)
+    assert (told.logged_top_up, top_up(told)) == (Decimal("1.2"), Decimal("1.2"))
+    past = iron(told, fresh=(value("Fe", "3", phase="new"),))
+    assert (past.last.aside, round(past.last.y or 0, 2)) == (None, Decimal("35.31"))  # as for 1.2 L stated, below
+
+
+@pytest.mark.parametrize(
+    "sheet",
+    [
+        sampled(0, "200", "33", life="1400", added="0"),
+        sampled(0, "200", "33", life="1400", added="<1"),
+        sampled(0, "200", "33", added=""),
+        sampled(0, "", "33", life="1400", added=""),
+        sampled(0, "100", "33", life="1400", added=""),
+        a_sheet(value("pressure", "26", point="1"), kind="compression", engine_hours=Decimal(1400)),
+    ],
+    ids=["stated", "stated badly", "life not known", "hours not known", "none logged since", "no sample"],
+)
+def test_the_log_says_nothing_of_any_other_sheet_and_a_silent_log_never_that_there_was_none(
+    sheet: MeasuredSheet,
+) -> None:
+    assert with_logged(sheet, [TopUp(Decimal(1250), Decimal(1))]) is sheet
 
 
 def test_topped_up_iron_is_brought_to_what_it_would_be_without() -> None:

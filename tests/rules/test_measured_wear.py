@@ -55,6 +55,15 @@ def test_a_cylinder_below_its_alert_moves_on_to_the_alarm() -> None:
     assert shown(a_test(1, "1200", "20", "27")).pulling[0].limits == {End.LOW: Decimal("16.2")}
 
 
+def test_where_only_the_log_says_what_was_topped_up_on_some_value_that_is_told() -> None:
+    first, second = iron("10", "20")
+    silent = replace(second, values=tuple(one for one in second.values if one.quantity != "top_up"))
+    assert [wear.is_topped_up_by_log for wear in shown(first, second).pulling] == [False]
+    assert [wear.is_topped_up_by_log for wear in shown(first, replace(silent, logged_top_up=Decimal(1))).pulling] == [
+        True
+    ]
+
+
 def test_hours_on_the_oil_are_brought_to_those_of_life_by_the_newest_sample_of_the_fill() -> None:
     (wear,) = shown(*iron("10", "20"), *iron("9", "18", since=1200)).pulling
     assert (wear.subject, wear.work, wear.unit) == ("Fe iron", "oil", "ppm")

@@ -100,7 +100,10 @@ async def test_without_hours_on_the_oil_or_top_up_it_says_why_nothing_is_project
         assert line_with(pilot, "Fe iron over hours of life: ○ measured")
     sheet(db, "oil", "2026-04-21", "hours_on_oil,,,200,h", "Fe,,,37,ppm")
     async with opened(*TO_PS_1, "e") as pilot:
-        assert "Not projected: the sheet does not state what was topped up, 0 where nothing was." in page(seen(pilot))
+        assert (
+            "Not projected: neither sheet nor log say what was topped up; write 0 on the sheet where nothing was."
+            in page(seen(pilot))
+        )
 
 
 async def test_one_test_is_drawn_and_asks_for_more(opened: Opened, db: Path) -> None:

@@ -103,11 +103,12 @@ def _make_up(
 ) -> tuple[tuple[Decimal, Decimal] | None, tuple[Step, ...], tuple[Evidence, ...]]:
     if not shape.is_corrected:
         return None, (), ()
-    litres, sump = _given(facts.sheet, TOP_UP), facts.engine.sump
+    litres, sump = _topped_up(facts.sheet), facts.engine.sump
     if sump is None:
         raise CannotTell("the litres of the sump are not known")
     added = single(facts.sheet, TOP_UP)
-    steps = (Step("topped up", litres, "L"), Step("sump", sump, "L"))
+    by_log = facts.sheet.logged_top_up is not None
+    steps = (Step("topped up by the log" if by_log else "topped up", litres, "L"), Step("sump", sump, "L"))
     return (litres, sump), steps, (added.evidence,) if added else ()
 
 
@@ -128,7 +129,13 @@ def is_other_fill(then: tuple[MeasuredSheet, Decimal], now: tuple[MeasuredSheet,
 
 def _top_up(sheet: MeasuredSheet, *, is_needed: bool) -> Decimal:
     """Give the litres topped up; a rate as read can do without, as it is only to warn of a large top-up."""
-    return _given(sheet, TOP_UP) if is_needed or single(sheet, TOP_UP) else Decimal(0)
+    is_known = single(sheet, TOP_UP) or sheet.logged_top_up is not None
+    return _topped_up(sheet) if is_needed or is_known else Decimal(0)
+
+
+def _topped_up(sheet: MeasuredSheet) -> Decimal:
+    """Give the litres topped up since the change, by the log where the sheet says nothing of them."""
+    return _given(sheet, TOP_UP) if sheet.logged_top_up is None else sheet.logged_top_up
 
 
 def _given(sheet: MeasuredSheet, quantity: str) -> Decimal:

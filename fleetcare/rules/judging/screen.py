@@ -212,5 +212,5 @@ def _against(pairs: Sequence[tuple[float, float]], by: By) -> list[tuple[float, 
 
 def _has_hours(sheet: MeasuredSheet, shape: Rate) -> bool:
     """Whether a rate since the change may be worked out at all: hours on the oil are known, and make-up where it counts."""
-    hours = _look(sheet, HOURS_ON_OIL)
-    return bool(hours) and (not shape.is_corrected or bool(_look(sheet, TOP_UP)))
+    has_make_up = bool(_look(sheet, TOP_UP)) or sheet.logged_top_up is not None
+    return bool(_look(sheet, HOURS_ON_OIL)) and (not shape.is_corrected or has_make_up)
