@@ -105,10 +105,14 @@ class Method(StrEnum):
 
 @dataclass(frozen=True, slots=True)
 class Bounds:
-    """A value held against low and high limits; for SPEC, which has none of its own, `end` says which end of the range."""
+    """A value held against low and high limits; for SPEC, which has none of its own, `end` says which end of the range.
+
+    `is_set` takes at both ends what was found out and left inside on the same sheet; a rule with an `end` leaves that out.
+    """
 
     basis: Basis = Basis.AS_MEASURED
     end: End | None = None
+    is_set: bool = False
 
 
 @dataclass(frozen=True, slots=True)
@@ -242,8 +246,8 @@ class Rule:
     `kinds` are the kinds of sheet, `quantity` what is judged (empty for a pattern), `phases` and `points` which values
     (empty: any but a wet test and fresh oil), `unit` that of the limits. `words` must be said on the sheet, `unless` must
     not. A rule with a `preset` is off but for engines the shop names for that preset; where one applies, rules without a
-    preset and of the same `choice` give way. `cause` groups findings. `business_days` dates the next step from the day
-    the results came.
+    preset and of the same `choice` give way. `cause` groups findings, point by point, or with `of_engine` all points of
+    the engine in one. `business_days` dates the next step from the day the results came.
     """
 
     id: str
@@ -261,6 +265,7 @@ class Rule:
     preset: str = ""
     choice: str = ""
     cause: str
+    of_engine: bool = False
     message: str
     source: str
     next_step: str

@@ -86,6 +86,7 @@ class RuleIn(Form):
     preset: Annotated[str, StringConstraints(pattern=r"^$|^[a-z0-9]+(-[a-z0-9]+)*$")] = ""
     choice: str = ""
     cause: Text
+    of_engine: bool = False
     message: Text
     source: Text
     next_step: Text
@@ -107,6 +108,8 @@ class RuleIn(Form):
     def _check_pattern(self) -> None:
         if self.quantity or self.low.fact or self.high.fact:
             raise ValueError("quantity and limits of a pattern stand in its conditions|move them there")
+        if self.of_engine:
+            raise ValueError("of_engine is not for a pattern|say where it holds with at")
         if not any(condition.flags for condition in self.condition):
             raise ValueError("no condition flags a value|ask one to be flagged, or let one call out its value")
 
@@ -136,7 +139,7 @@ class RuleIn(Form):
     def fact(self) -> Rule:
         """The rule as the rules see it."""
         plain = ("id", "kinds", "quantity", "unit", "phases", "points", "words", "unless", "preset", "choice")
-        texts = ("cause", "message", "source", "next_step", "caution", "business_days", "is_law")
+        texts = ("cause", "of_engine", "message", "source", "next_step", "caution", "business_days", "is_law")
         return Rule(
             **{name: getattr(self, name) for name in (*plain, *texts)},
             shape=self._shape(),

@@ -109,11 +109,12 @@ class BoundsIn(Form):
 
     basis: Basis = Basis.AS_MEASURED
     end: End | None = None
+    is_set: bool = False
 
     @model_validator(mode="after")
     def _check(self) -> Self:
-        if (self.basis is Basis.SPEC) is (self.end is None):
-            raise ValueError('end goes with basis "spec"|give both, or neither')
+        if (self.end is not None) + self.is_set != (self.basis is Basis.SPEC):
+            raise ValueError('end or is_set goes with basis "spec"|give one of them there, and neither elsewhere')
         return self
 
 

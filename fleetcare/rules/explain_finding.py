@@ -63,7 +63,11 @@ def finding_row(finding: Finding) -> FindingRow:
         since=finding.since,
         source=say_sources(signal.rule.source for signal in finding.signals),
         explanation=say_finding(finding),
-        working=tuple(say_working(signal) for signal in finding.signals if signal.steps or signal.measured is not None),
+        working=tuple(
+            say_working(signal, finding.subject)
+            for signal in finding.signals
+            if signal.steps or signal.measured is not None
+        ),
         evidence=tuple(say_evidence(value) for value in finding.evidence),
         next_step=say_next_step(finding),
         caution=" ".join((*_each(signal.rule.caution for signal in finding.signals), GENERAL)),
@@ -126,12 +130,16 @@ def say_measured(rule: Rule) -> str:
     return f"rise of {name}" if isinstance(shape, Rate) else name
 
 
-def say_working(signal: Signal) -> str:
-    """Say how a figure was worked out, number by number: "rise of iron 16 ppm per 100 h (its rule) from …"."""
+def say_working(signal: Signal, subject: str) -> str:
+    """Say how a figure was worked out, number by number: "rise of iron 16 ppm per 100 h (its rule) from …".
+
+    Where it was measured is said if that is not the subject of its finding.
+    """
     steps = ", ".join(say_step(step) for step in signal.steps)
     if signal.measured is None:
         return f"{signal.rule.cause} ({signal.rule.id}) from {steps}"
-    told = f"{_named(signal)} {say_figure(signal.measured, say_unit(signal.rule, signal.unit))}"
+    where = f" at {say_subject(signal.subject)}" if signal.subject != subject else ""
+    told = f"{_named(signal)}{where} {say_figure(signal.measured, say_unit(signal.rule, signal.unit))}"
     return f"{told} ({signal.rule.id}){f' from {steps}' if steps else ''}"
 
 

@@ -94,7 +94,8 @@ def say_judged(rule: Rule) -> str:
     if isinstance(shape, Statistical):
         told = f"{told} against {shape.least_samples} or more samples of the {shape.pool} pool"
     where = [*(f"at {point}" for point in rule.points), *(str(phase) for phase in rule.phases)]
-    return ", ".join([told, *where, *_words(rule)])
+    together = ["all points in one finding"] if rule.of_engine else []
+    return ", ".join([told, *where, *_words(rule), *together])
 
 
 def say_limits(rule: Rule) -> str:
@@ -103,7 +104,8 @@ def say_limits(rule: Rule) -> str:
     if isinstance(shape, Pattern):
         return f"{shape.severity} where it matches"
     if isinstance(shape, Bounds) and shape.basis is Basis.SPEC:
-        return f"the {shape.end} end of the engine's own check range"
+        found_and_left = "found out of the engine's own check range and left inside it"
+        return found_and_left if shape.is_set else f"the {shape.end} end of the engine's own check range"
     if isinstance(shape, Statistical):
         return ", ".join(_statistical(shape, rule))
     unit = say_unit(rule)

@@ -3,8 +3,8 @@
 Every flagged value is evidence of exactly one finding. Patterns choose first, the graver before the milder and the one
 that puts more together before the others: a pattern takes the values it flags, with all that is said of them, and
 names the cause. A pattern whose values all belong to another already speaks for that finding. What no pattern took goes
-by cause and subject, the cause being that of the gravest rule that flags the value, a law before a preset. So no finding
-is milder than the worst of its evidence, and nothing flagged is left out.
+by cause and subject, or by cause alone where the rule is `of_engine`, the cause being that of the gravest rule that flags
+the value, a law before a preset. So no finding is milder than the worst of its evidence, and nothing flagged is left out.
 """
 
 from collections import defaultdict
@@ -27,7 +27,7 @@ def merge(engine: str, signals: Iterable[Signal]) -> tuple[Finding, ...]:
         _claim(signal, owners, grouped)
     singles = [one for one in ranked if not isinstance(one.rule.shape, Pattern)]
     for signal in singles:
-        key = (signal.rule.cause, signal.subject)
+        key = (signal.rule.cause, "" if signal.rule.of_engine else signal.subject)
         grouped[owners.setdefault(signal.flagged[0], key)].append(signal)
     findings = [Finding(engine, key[1], tuple(group)) for key, group in grouped.items()]
     return tuple(sorted(findings, key=lambda one: (one.severity is not Severity.ALARM, one.cause, one.subject)))

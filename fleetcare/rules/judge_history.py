@@ -28,7 +28,7 @@ _SOURCES = {LEAK: (SUPPLY, HELD), WET_GAIN: (PRESSURE,)}
 """What is worked out of other values, and of which."""
 
 _ASIDE = (Phase.WET, Phase.NEW)
-_Said = tuple[str, str, End | None]  # rule, subject, end
+_Said = tuple[str, str, End | None, Phase]  # rule, subject, end, and whether it was found or left
 
 
 @dataclass(frozen=True, slots=True)
@@ -128,7 +128,7 @@ def _take_in(walk: _Walk, facts: MeasuredFacts, rules: _OfKind) -> None:
     """Let what a sheet tells replace what stood of the same rules and subjects, dated since when it stands."""
     kind = facts.sheet.kind
     before, now = walk.standing.get(kind, {}), {}
-    asked = {rule for rule, _, _ in before}
+    asked = {said[0] for said in before}
     measured = walk.quantities[kind]
     close = [
         one.rule
@@ -136,13 +136,13 @@ def _take_in(walk: _Walk, facts: MeasuredFacts, rules: _OfKind) -> None:
         if one.rule.quantity in measured and (one.rule.id in asked or not one.is_clear(facts))
     ]
     told = tell(close, facts)
+    began = {said[:3]: _began(signal) for said, signal in before.items()}
     for signal in told.signals:
         said = _said(signal)
-        since = before[said].since if said in before else signal.on
-        now[said] = replace(signal, since=since)
+        now[said] = replace(signal, since=began.get(said[:3], signal.on))
     walk.newest[kind] = tuple(now.values())
     if before or now:
-        flagged = {(rule, subject) for rule, subject, _ in now}
+        flagged = {said[:2] for said in now}
         within = {(rule.id, point) for rule, value in told.within for point in (value.point, "")}
         kept = {said: signal for said, signal in before.items() if said[:2] not in flagged | within}
         walk.standing[kind] = kept | now
@@ -188,7 +188,7 @@ def _matches(walk: _Walk, facts: MeasuredFacts, patterns: Iterable[tuple[Rule, P
 
 
 def _said(signal: Signal) -> _Said:
-    return signal.rule.id, signal.subject, signal.end
+    return signal.rule.id, signal.subject, signal.end, signal.flagged[0].phase
 
 
 def _began(signal: Signal) -> date:

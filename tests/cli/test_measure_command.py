@@ -54,10 +54,14 @@ FOUND = [
     "  worked out  valve lash 0.38 mm (lash-tight) from check range from 0.4 mm, to 0.5 mm",
     "  worked out  valve lash 0.36 mm (lash-tight) from check range from 0.4 mm, to 0.5 mm",
     *_UNDER_A_FINDING,
-    f"Alert 1-lash-tight-2I: closing valve at 2I: {_TIGHT}; valve lash at 2I 0.17 mm, 0.03 mm below the alert limit of"
-    " 0.2 mm; since 2026-05-01",
-    "  worked out  valve lash 0.17 mm (lash-tight) from check range from 0.2 mm, to 0.3 mm",
-    *_UNDER_A_FINDING,
+    "Alert 1-lash-set: valves found out and set: gaps found out of their check range were set and left inside it; valve"
+    " lash at 2I 0.17 mm, 0.03 mm below the alert limit of 0.2 mm; since 2026-05-01",
+    "  worked out  valve lash at 2I 0.17 mm (lash-set) from check range from 0.2 mm, to 0.3 mm, out by 0.03 mm, left 0.25 mm",
+    "  source      the engine's own check range; what has to be set again and again in a short time points to another part"
+    " that wears: TM 5-3825-226-24, TM 5-3805-260-24; that what was set is one finding of the engine: common practice",
+    "  next step   nothing is to be done today: the next lash check shows whether they hold; where one has to be set again"
+    " and again, look for the part that wears",
+    _UNDER_A_FINDING[-1],
 ]
 JUDGED = [
     "Valve lash of P-01 on 2026-05-01, cold, gauge F2.",
@@ -167,7 +171,7 @@ def test_json_is_one_object_of_sheet_judgements_and_findings(pump: Runner, lash:
     }
     assert [(one["id"], one["severity"], one["state"]) for one in answer["findings"]] == [
         ("1-lash-tight-2E", "alarm", "open"),
-        ("1-lash-tight-2I", "alert", "open"),
+        ("1-lash-set", "alert", "open"),
     ]
     assert [list(row.values())[:6] for row in answer["judged"]] == [
         ["lash", "1I", "found", 0.25, "mm", "in"],

@@ -34,7 +34,7 @@ TRUE = {
     "SB-02": Cause("run too short", ENGINE, is_alarm=False),
     "SB-04": Cause("yearly hours for testing nearly used up", ENGINE, is_alarm=False),
     "TR-2": Cause("low oil pressure", ENGINE, is_alarm=False),  # what it was stood down for
-    "MP-4": Cause("closing valve", "1E", is_alarm=False),  # a hundredth under its range, set since
+    "MP-4": Cause("valves found out and set", ENGINE, is_alarm=False),  # one, a hundredth under its range
 }
 
 HEALTHY = ("PS-01", "PS-04", "PS-06", "PS-10", "EX-2", "TH-1", "LE-1", "TR-3", "WB-1P", "SB-06")

@@ -7,7 +7,7 @@ import pytest
 
 from fleetcare.domain.engines import Side
 from fleetcare.domain.measured import SheetWord
-from fleetcare.domain.sheets import LashSpec
+from fleetcare.domain.sheets import LashSpec, SheetValue
 from fleetcare.rules.findings import merge
 from fleetcare.rules.judge_lash import judge_value
 from fleetcare.rules.judging.judge import judge
@@ -94,12 +94,24 @@ def test_a_closing_valve_and_a_low_cylinder_that_oil_does_not_raise_are_one_find
     point: str, wet: str, causes: set[tuple[str, str]]
 ) -> None:
     """TM 5-3820-245-14&P p. 169: too small a gap loses compression; TM 1-1500-204-23-1 step (e): lash first."""
-    gap = value("lash", "0.30", point=point, phase="found")
-    lash = a_sheet(gap, kind="lash", days=9)
+    assert _found_with_a_low_third(wet, value("lash", "0.30", point=point, phase="found")) == causes
+
+
+def test_a_gap_that_was_set_belongs_to_the_cylinder_it_left_low_and_the_others_to_what_was_set() -> None:
+    """As above; "valves found out and set" takes what no pattern does: common practice."""
+    gaps = [value("lash", text, point=point, phase=phase) for point in ("2I", "3E") for phase, text in _SET.items()]
+    assert _found_with_a_low_third("305", *gaps) == {("closing exhaust valve", "3"), ("valves found out and set", "")}
+
+
+_SET = {"found": "0.30", "left": "0.45"}
+
+
+def _found_with_a_low_third(wet: str, *gaps: SheetValue) -> set[tuple[str, str]]:
+    """Cause and subject of what is found with some gaps, and a third cylinder that is low and this much when oiled."""
+    lash = a_sheet(*gaps, kind="lash", days=9)
     spec = LashSpec(lash.on, "mm", "any", dict.fromkeys(Side, (Decimal("0.40"), Decimal("0.50"))))
-    judged = {lash.entry: (judge_value(gap, side_of(point), spec, ""),)}
+    judged = {lash.entry: tuple(judge_value(gap, side_of(gap.point), spec, "") for gap in gaps)}
     standing = judge(rules_named(), facts(lash, lash=judged))
     sheet = pressures("445", "440", "300", "435", "440", "438", wet={3: wet})
     signals = judge(rules_named(), facts(sheet, others=(lash,), standing=standing))
-    findings = merge("P-01", (*standing, *signals))
-    assert {(one.cause, one.subject) for one in findings} == causes
+    return {(one.cause, one.subject) for one in merge("P-01", (*standing, *signals))}

@@ -120,7 +120,12 @@ BAD = {
     ),
     "spec end": (
         OWN.replace("bounds = {}", 'bounds = { end = "low" }'),
-        'end goes with basis "spec"; give both, or neither',
+        'end or is_set goes with basis "spec"; give one of them there, and neither elsewhere',
+    ),
+    "set elsewhere": (OWN.replace("bounds = {}", "bounds = { is_set = true }"), 'end or is_set goes with basis "spec"'),
+    "both ends and set": (
+        OWN.replace("bounds = {}", 'bounds = { basis = "spec", end = "low", is_set = true }'),
+        'end or is_set goes with basis "spec"',
     ),
     "own condition": (
         OWN + '[[rule.condition]]\nquantities = "Fe"\nasks = "clear"\n',
@@ -183,6 +188,11 @@ BAD |= {
     "flags nothing": (
         PATTERN + 'quantities = "Fe"\nasks = "clear"\n',
         "no condition flags a value; ask one to be flagged",
+    ),
+    "a pattern of points": (
+        PATTERN.replace("pattern = {}", "pattern = {}\nof_engine = true")
+        + 'quantities = "Fe"\nasks = "flagged high"\n',
+        "of_engine is not for a pattern; say where it holds with at",
     ),
     "no word": (PATTERN + 'quantities = "heard"\nasks = "said"\n', "condition.0: words are missing; give those"),
     "asked of nothing": (PATTERN + 'quantities = "feet"\nasks = "flagged high"\n', "'feet' is measured on no sheet"),

@@ -98,6 +98,12 @@ def test_a_pattern_alone_has_no_figure_and_one_beside_it_says_what_else_would_fi
     )
 
 
+def test_the_working_says_where_it_was_measured_if_the_finding_is_of_more() -> None:
+    rule = a_rule(kinds=("compression",), quantity="pressure", unit="psi", cause="low", of_engine=True)
+    finding = found(facts(pressures("400", "90")), rule)
+    assert finding_row(finding).working == ("compression at cylinder 1 400 psi (iron)",)
+
+
 def test_a_cylinder_is_named_and_a_fall_is_below() -> None:
     rule = a_rule(
         id="r75",
@@ -114,7 +120,7 @@ def test_a_cylinder_is_named_and_a_fall_is_below() -> None:
     assert say_signal(finding.lead) == (
         "compression as a share of the highest at cylinder 2 70 %, 5 % below the alarm limit of 75 %"
     )
-    assert say_working(finding.lead) == (
+    assert say_working(finding.lead, "2") == (
         "compression as a share of the highest 70 % (r75) from compression 280 psi, highest 400 psi"
     )
 
@@ -166,7 +172,7 @@ def test_what_was_taken_off_for_new_oil_is_said_and_also_that_it_is_not_known() 
     rule = a_rule(shape=Bounds(Basis.LESS_NEW))
     sheet = a_sheet(value("Fe", "120"))
     bare = one_signal(rule, facts(sheet))
-    assert say_working(bare) == "iron (new oil not known, nothing taken off) 120 ppm (iron)"
+    assert say_working(bare, "") == "iron (new oil not known, nothing taken off) 120 ppm (iron)"
     known = one_signal(rule, facts(sheet, fresh=(value("Fe", "5", phase="new"),)))
     assert say_signal(known) == "iron above new oil 115 ppm, 15 ppm above the alert limit of 100 ppm"
 

@@ -47,6 +47,10 @@ NONE = Limits()
         (a_rule(shape=Rate(Since.NEW, 100)), "alert above 100 ppm per 100 h, alarm above 200 ppm per 100 h"),
         (a_rule(shape=Bounds(Basis.SPEC, End.LOW)), "the low end of the engine's own check range"),
         (
+            a_rule(shape=Bounds(Basis.SPEC, is_set=True)),
+            "found out of the engine's own check range and left inside it",
+        ),
+        (
             a_rule(shape=Statistical(Pool.OWN, Method.MEAN, 10), high=Limits(beyond("2"), beyond("3"))),
             "alert above the mean by more than 2 × s, alarm above the mean by more than 3 × s",
         ),

@@ -62,6 +62,13 @@ def test_values_of_one_cause_and_place_are_one_finding_and_of_two_places_two() -
     assert [(one.subject, one.engine) for one in cylinders] == [("2", "P-01"), ("3", "P-01")]
 
 
+def test_what_a_rule_of_the_engine_says_of_several_points_is_one_finding_of_the_engine() -> None:
+    signals = [says("set", "lash", "set", point=point) for point in ("1E", "2I")]
+    whole = [replace(one, rule=replace(one.rule, of_engine=True)) for one in signals]
+    (finding,) = merge("P-01", whole)
+    assert (finding.cause, finding.subject, [one.point for one in finding.evidence]) == ("set", "", ["1E", "2I"])
+
+
 def test_a_pattern_takes_the_values_it_flags_and_names_the_cause() -> None:
     found = put(
         says("a", "Na", "sodium", ALARM),

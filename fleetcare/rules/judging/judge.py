@@ -93,8 +93,8 @@ def _tell(rule: Rule, shape: SingleShape, facts: MeasuredFacts) -> Iterator[Sign
         yield NotJudged(rule, "", f"the sheet does not say {quantity.replace('_', ' ')}")
     if not says(facts.sheet, rule):
         return
-    if isinstance(shape, Bounds) and shape.end is not None:
-        yield from lash_signals(rule, shape.end, facts.lash.get(facts.sheet.entry, ()), facts.sheet)
+    if isinstance(shape, Bounds) and shape.basis is Basis.SPEC:
+        yield from lash_signals(rule, shape, facts.lash.get(facts.sheet.entry, ()), facts.sheet)
         return
     for point in contradictions(facts.sheet, rule.quantity, rule.phases):
         yield NotJudged(rule, point, "it was entered twice, with different values")
