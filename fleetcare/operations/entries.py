@@ -7,6 +7,8 @@ from fleetcare.operations.rows import fetch
 if TYPE_CHECKING:
     from sqlalchemy import Connection
 
+NOT_YET = 2**62
+"""Stands for the number an entry would get if it were stored: later than any."""
 
 SHEET_COUNTS = (
     "not entry.is_void and not exists (select 1 from log_entry later where later.supersedes_id = entry.id)"

@@ -23,6 +23,7 @@ from fleetcare.operations.against_past import (
     what_falls_off,
 )
 from fleetcare.operations.closing import closings, done_by, say_open
+from fleetcare.operations.entries import NOT_YET
 from fleetcare.operations.find import FoundItem, FoundMeter, find_item, find_meters, pick_meter
 from fleetcare.operations.load import Trial, item_facts
 from fleetcare.operations.sheets_closing import NONE_CAME, why_open
@@ -31,8 +32,6 @@ from fleetcare.rules.due.facts import ItemFacts
 
 if TYPE_CHECKING:
     from sqlalchemy import Connection
-
-_ENTRY = 2**62  # stands for the number the entry would get: after all there are
 
 
 @dataclass(slots=True)
@@ -91,7 +90,7 @@ class _Held:
     def readings(self, line: Understood) -> list[Reading]:
         """Give what would be stored of it: with work the entry's own reading, after one that explains it."""
         told = [self.reading] if line.readings() else []
-        own = replace(self.reading, rolled_over=False, entry_id=_ENTRY)
+        own = replace(self.reading, rolled_over=False, entry_id=NOT_YET)
         return [*told, own] if line.is_work else told
 
 
@@ -151,7 +150,7 @@ def _ask_for_sheets(facts: ItemFacts, line: Understood) -> Sequence[Question]:
 def _do_work(outcome: Outcome, line: Understood) -> None:
     """Let the tasks of a line be done, and with them what they cover, as the log does when it is stored."""
     facts = outcome.facts
-    done = done_by(facts, _ENTRY, line.on)
+    done = done_by(facts, NOT_YET, line.on)
     named = [task.id for task in _tasks_named(facts, line)]
     stored: list[Task] = []
     for one in closings(facts, done, named, NONE_CAME, "say what the dial showed"):

@@ -31,12 +31,13 @@ class Trial:
     suspects: frozenset[int] = frozenset()
 
 
-_AS_STORED = Trial()
+AS_STORED = Trial()
+"""Nothing but what is stored."""
 _NOTHING_SHOWN = MeasuredWears()
 
 
 def item_facts(
-    connection: "Connection", on: date, ids: Sequence[int] | None = None, trial: Trial = _AS_STORED
+    connection: "Connection", on: date, ids: Sequence[int] | None = None, trial: Trial = AS_STORED
 ) -> list[ItemFacts]:
     """Load items (all in use on `on`, or those of some ids) as the rules see them on a day."""
     items = load_items(connection, on, ids)
@@ -127,7 +128,7 @@ def _load_machines(connection: "Connection", ids: Sequence[int], on: date) -> di
 
 
 def load_counters(
-    connection: "Connection", ids: Sequence[int], on: date, trial: Trial = _AS_STORED
+    connection: "Connection", ids: Sequence[int], on: date, trial: Trial = AS_STORED
 ) -> dict[int, dict[Kind, CounterHistory]]:
     """Load what counts for each item, per kind, as life totals up to a day."""
     fits = fetch(

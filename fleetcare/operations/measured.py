@@ -9,6 +9,7 @@ from typing import TYPE_CHECKING
 
 from fleetcare.domain.engines import Adjuster, Bridged, Layout, ValveTrain
 from fleetcare.domain.measured import LASH, OIL, MeasuredEngine, MeasuredSheet, SheetWord
+from fleetcare.domain.meters import LifeFigure
 from fleetcare.domain.quantities import Kind
 from fleetcare.domain.sheet_kinds import GRADE, WORDS
 from fleetcare.domain.sheets import Judgement, LashSpec, Phase, Sheet, SheetValue, spec_on
@@ -16,7 +17,7 @@ from fleetcare.operations.entries import SHEET_COUNTS
 from fleetcare.operations.families import Families
 from fleetcare.operations.kin import grade_key
 from fleetcare.operations.lash_specs import USUAL_VALVES, specs_of
-from fleetcare.operations.load import entry_lives, load_counters, own_readings
+from fleetcare.operations.load import AS_STORED, Trial, entry_lives, load_counters, own_readings
 from fleetcare.operations.rows import Row, day, fetch, figure, known_day
 from fleetcare.operations.sheets_load import load_values
 from fleetcare.rules.judge_engine import Background
@@ -57,17 +58,18 @@ def load_engine_sheets(
     ids: Sequence[int] | None = None,
     newest: tuple[date, int] | None = None,
     families: Families | None = None,
+    trial: Trial = AS_STORED,
 ) -> list[EngineSheets]:
     """Load engines (all that have a sheet, or those of some ids) with their sheets, in the order of tags, seen on a day.
 
     Sheets after `newest`, the day and the entry of one, are left out. Whoever loads many engines in parts hands the same
-    `families` of that day to each, so that no relative is loaded twice.
+    `families` of that day to each, so that no relative is loaded twice. Readings of a `trial` are looked at as if stored.
     """
     families = families or Families(connection, on)
     plates = _load_plates(connection, ids)
     last = newest or (on, sys.maxsize)
-    sheets = _load_sheets(connection, [row[0] for row in plates], on, last)
-    fresh = _load_fresh(connection, last[0])
+    sheets = _load_sheets(connection, [row[0] for row in plates], on, last, trial)
+    fresh = load_fresh(connection, last[0])
     specs = specs_of(connection, [item for item, own in sheets.items() if any(one.kind == LASH for one, _ in own)])
     conditions = {one.entry: condition for own in sheets.values() for one, condition in own}
     found = []
@@ -77,7 +79,7 @@ def load_engine_sheets(
             continue
         engine, train = _engine(row)
         background = Background(
-            fresh=fresh.get(_grade(own, engine), ()),
+            fresh=fresh.get(grade_in(own, engine), ()),
             family=families.of(row[0], max((sheet.on for sheet in own if sheet.kind == OIL), default=None)),
             lash=_judge_lash(own, train, specs.get(row[0], ()), conditions),
         )
@@ -129,7 +131,7 @@ def _engine(row: Row) -> tuple[MeasuredEngine, ValveTrain | None]:
 
 
 def _load_sheets(
-    connection: "Connection", ids: Sequence[int], on: date, last: tuple[date, int]
+    connection: "Connection", ids: Sequence[int], on: date, last: tuple[date, int], trial: Trial
 ) -> dict[int, list[tuple[MeasuredSheet, str]]]:
     """Load the sheets of some engines up to the last, oldest first, each with its condition, by engine."""
     rows = fetch(
@@ -144,7 +146,7 @@ def _load_sheets(
     )
     values = load_values(connection, [row[1] for row in rows])
     owners = list(dict.fromkeys(row[0] for row in rows))
-    counters = load_counters(connection, owners, on)
+    counters = load_counters(connection, owners, on, trial)
     own = {item: own_readings(found) for item, found in counters.items()}
     sheets: dict[int, list[tuple[MeasuredSheet, str]]] = {}
     for item, sheet_id, entry, kind, taken_on, condition, gauge, received in rows:
@@ -155,7 +157,15 @@ def _load_sheets(
     return sheets
 
 
-def _load_fresh(connection: "Connection", on: date) -> dict[str, tuple[SheetValue, ...]]:
+def load_hours(
+    connection: "Connection", item_id: int, entry: int, on: date, today: date, trial: Trial = AS_STORED
+) -> LifeFigure | None:
+    """Load the life total (h) an engine had at an entry of a day, as its sheet is given it; None where nothing tells."""
+    counters = load_counters(connection, [item_id], today, trial).get(item_id, {})
+    return entry_lives(counters, own_readings(counters), entry, on).get(Kind.HOURS)
+
+
+def load_fresh(connection: "Connection", on: date) -> dict[str, tuple[SheetValue, ...]]:
     """Load what new oil has, by grade: of each quantity the newest reference, whichever engine's sheet it came with."""
     rows = fetch(
         connection,
@@ -173,7 +183,7 @@ def _load_fresh(connection: "Connection", on: date) -> dict[str, tuple[SheetValu
     return {grade: tuple(values.values()) for grade, values in by_grade.items() if grade}
 
 
-def _grade(sheets: Sequence[MeasuredSheet], engine: MeasuredEngine) -> str:
+def grade_in(sheets: Sequence[MeasuredSheet], engine: MeasuredEngine) -> str:
     """Give the grade in the engine: what its newest oil sheet that names one says, else its nameplate."""
     said = (word.text for sheet in reversed(sheets) for word in sheet.words if word.quantity == GRADE)
     return grade_key(next(said, engine.oil_grade))

@@ -6,39 +6,33 @@ the last sheet, else in the quantity's own.
 
 import re
 from collections.abc import Iterator, Mapping, Sequence
-from dataclasses import dataclass, replace
+from dataclasses import dataclass
 from datetime import date
 from typing import TYPE_CHECKING
 
-from fleetcare.domain.measured import COMPRESSION, LEAKDOWN, OIL, RUN, SPOT
+from fleetcare.domain.measured import COMPRESSION, LEAKDOWN, RUN, SPOT
 from fleetcare.domain.measures import QUANTITIES, read_unit
 from fleetcare.domain.quantities import plain
-from fleetcare.domain.rule_book import RuleBook
 from fleetcare.domain.sheet_kinds import At, Column, SheetKind, WordColumn
 from fleetcare.domain.sheets import CellKey, Phase, Sheet, SheetValue, Verdict
 from fleetcare.drafts.sheets import SheetIn, SheetRow
 from fleetcare.errors import FleetError, Refusals, Refused
-from fleetcare.operations.families import Families
+from fleetcare.operations.entries import NOT_YET
 from fleetcare.operations.find import FoundItem
-from fleetcare.operations.findings import EngineFinding, engine_findings, judge_sheets
-from fleetcare.operations.measured import EngineSheets, load_engine_sheets, measured_sheet
+from fleetcare.operations.findings import EngineFinding
 from fleetcare.operations.measures_cells import MeasureForm, measure_form
 from fleetcare.operations.measures_read import read_measures
+from fleetcare.operations.sheet_ahead import NEW_ENTRY, EntryAhead, SheetAhead, resting_on_it, sheet_ahead
 from fleetcare.operations.sheets_load import load_sheets
 from fleetcare.operations.sheets_values import SaidDoubt
-from fleetcare.operations.shop_book import usable_book
 from fleetcare.rules.explain_measured import MeasuredRow as MeasuredRow
 from fleetcare.rules.explain_measured import measured_rows
-from fleetcare.rules.judge_engine import Background
 from fleetcare.rules.judging.applies import rules_for
 from fleetcare.rules.sheet_complete import why_incomplete
 from fleetcare.rules.sheet_doubts import doubt_measure, say_measure_doubt
 
 if TYPE_CHECKING:
     from sqlalchemy import Connection
-
-NOT_YET = 2**62
-"""The entry of a sheet that has none yet: later than any."""
 
 _STAGED = ("supplemental", "36-month")  # purposes of a run in two stages (NFPA 110, 8.4.2.3)
 _STAGES = ("1", "2")
@@ -47,11 +41,10 @@ _PARTS = re.compile(r"\s*(?P<figure>(?:<\s*)?[-+]?[0-9][0-9.,]*|nd)\s*(?P<unit>[
 
 @dataclass(frozen=True, slots=True)
 class OpenMeasures:
-    """What a sheet of an engine is filled in and judged by: its form, the sheets before it with their units and values, the rules."""
+    """What a sheet of an engine is filled in and judged by: its form, all it is judged beside, units and values before it."""
 
     form: MeasureForm
-    found: EngineSheets
-    book: RuleBook
+    ahead: SheetAhead
     last: Mapping[CellKey, str]
     units: Mapping[str, str]
     stored: Sheet | None = None
@@ -77,9 +70,9 @@ class TypedMeasures:
 
 
 def open_measures(
-    connection: "Connection", item: FoundItem, kind: str, on: date, entry: int | None = None
+    connection: "Connection", item: FoundItem, kind: str, on: date, today: date, entry: EntryAhead = NEW_ENTRY
 ) -> OpenMeasures:
-    """Load what a sheet of an engine on a day is filled in by; with an entry what that one holds.
+    """Load what a sheet of an engine on a day is filled in by; of an entry stored already what that one holds.
 
     Refuses a machine, and one whose cylinders nobody stated where they are measured one by one.
     """
@@ -89,27 +82,17 @@ def open_measures(
             f"the number of cylinders of {item.tag} is not known",
             f"give it with fleetcare engine edit {item.tag} --cylinders N",
         )
-    (found,) = load_engine_sheets(connection, on, [item.id])
     sheets = load_sheets(connection, item.id, on, kind)
-    stored = next((sheet for sheet in sheets if sheet.entry == entry), None)
-    before = [sheet for sheet in sheets if entry is None or (sheet.on, sheet.entry) < (on, entry)]
-    kept = tuple(sheet for sheet in found.sheets if entry is None or (sheet.on, sheet.entry) < (on, entry))
+    stored = next((sheet for sheet in sheets if sheet.entry == entry.number), None)
+    before = [sheet for sheet in sheets if (sheet.on, sheet.entry) < (on, entry.number or NOT_YET)]
     values = [value for sheet in before for value in sheet.values]
     return OpenMeasures(
         form=form,
-        found=replace(found, sheets=kept, background=_beside(connection, found, kind, on)),
-        book=usable_book(connection, on)[0],
+        ahead=sheet_ahead(connection, item, kind, on, today, entry),
         last={key_of(value): text_of(value) for value in values},
         units={value.quantity: value.unit for value in values if value.unit},
         stored=stored,
     )
-
-
-def _beside(connection: "Connection", found: EngineSheets, kind: str, on: date) -> Background:
-    """Give what is known beside the sheet filled in, its family up to the day of it."""
-    if kind != OIL:
-        return found.background
-    return replace(found.background, family=Families(connection, on).of(found.item_id, on))
 
 
 def key_of(value: SheetValue) -> CellKey:
@@ -193,13 +176,13 @@ def read_typed(
                 wrong.setdefault(order[number], error)
                 rows.pop(number, None)
     sheet = Sheet(NOT_YET, opened.form.kind.name, opened.form.on, values, gauge=gauge, received_on=received)
-    judged = judge_sheets(replace(opened.found, sheets=(*opened.found.sheets, measured_sheet(sheet))), opened.book)
-    rules = rules_for(opened.book, opened.found.engine)
+    judged = opened.ahead.judge(sheet)
+    rules = rules_for(opened.ahead.book, opened.ahead.found.engine)
     told = measured_rows(judged.sheets[NOT_YET], rules, opened.form.kind.quantities)
     doubts = {key_of(value): doubt for value in values if (doubt := _doubt(opened, value)) is not None}
     return TypedMeasures(
         rows={CellKey(row.quantity, row.point, Phase(row.phase)): row for row in told},
-        findings=tuple(one for one in engine_findings(judged) if NOT_YET in one.sheets),
+        findings=resting_on_it(judged),
         wrong=wrong,
         doubts=doubts,
         why_open=why_incomplete(opened.form.kind.name, values, opened.form.engine),

@@ -6,14 +6,12 @@ from typing import TYPE_CHECKING
 
 from fleetcare.domain.cautions import GENERAL, OF_SHEETS
 from fleetcare.domain.meters import LifeFigure
-from fleetcare.domain.quantities import Kind
 from fleetcare.domain.sheet_kinds import KINDS, WordColumn
 from fleetcare.domain.sheets import LASH, Sheet, SheetValue
 from fleetcare.errors import Refused
 from fleetcare.operations.find import FoundItem
 from fleetcare.operations.findings import EngineFinding, engine_findings, judge_sheets, known_findings
-from fleetcare.operations.load import entry_lives, load_counters, own_readings
-from fleetcare.operations.measured import load_engine_sheets
+from fleetcare.operations.measured import load_engine_sheets, load_hours
 from fleetcare.operations.rows import fetch, known_day
 from fleetcare.operations.sheets_judge import JudgedSheet, judge_stored
 from fleetcare.operations.sheets_load import load_sheets
@@ -32,8 +30,8 @@ if TYPE_CHECKING:
 class SheetReport:
     """A sheet with what the rules say of it; a lash sheet has `lash` in the place of `rows`.
 
-    `findings` are those of the engine, as it stood with this sheet, that rest on a value of it. `engine_hours` are of life. `missing` are cylinders
-    without a value, `incomplete` is why it closes no work, empty where it does.
+    `findings` are those of the engine, as it stood with this sheet, that rest on a value of it. `engine_hours` are of life.
+    `missing` are cylinders without a value, `incomplete` is why it closes no work, empty where it does.
     """
 
     tag: str
@@ -83,7 +81,7 @@ def report_sheet(connection: "Connection", item: FoundItem, entry: int, on: date
     judged = judge_sheets(found, book)
     known = known_findings(connection, found, book, on)
     findings = tuple(one for one in engine_findings(judged, known) if entry in one.sheets)
-    hours = _hours(connection, item, sheet, on)
+    hours = load_hours(connection, item.id, entry, sheet.on, on)
     if sheet.kind == LASH:
         lash = judge_stored(connection, item, sheet)
         return SheetReport(item.tag, "Valve lash", sheet, hours, (), findings, notes=notes, lash=lash)
@@ -99,12 +97,6 @@ def report_sheet(connection: "Connection", item: FoundItem, entry: int, on: date
         incomplete=why_incomplete(sheet.kind, sheet.values, found.engine),
         notes=(*notes, *_unknown_cylinders(item.tag, sheet, found.engine.cylinders)),
     )
-
-
-def _hours(connection: "Connection", item: FoundItem, sheet: Sheet, on: date) -> LifeFigure | None:
-    counters = load_counters(connection, [item.id], on)
-    own = own_readings(counters.get(item.id, {}))
-    return entry_lives(counters.get(item.id, {}), own, sheet.entry, sheet.on).get(Kind.HOURS)
 
 
 def _stored(connection: "Connection", item: FoundItem, entry: int) -> Sheet:

@@ -29,6 +29,7 @@ class JudgedSheet:
     sheet: Sheet
     rows: tuple[JudgedRow, ...]
     stand: LashStand
+    judgements: tuple[Judgement, ...]
 
     @property
     def limits(self) -> str:
@@ -79,7 +80,7 @@ def judge(form: LashForm, sheet: Sheet) -> JudgedSheet:
     now = {one.value.point: one for one in judged if one.value.quantity == LASH}
     shims = _fitted(form, sheet)
     rows = tuple(_row(form, one, shims, is_now=now.get(one.value.point) is one) for one in judged)
-    return JudgedSheet(form, sheet, rows, stand_of(judged, form.points))
+    return JudgedSheet(form, sheet, rows, stand_of(judged, form.points), judged)
 
 
 def last_sheet(connection: "Connection", item: FoundItem, on: date) -> JudgedSheet | None:

@@ -8,6 +8,8 @@ from fleetcare.domain.quantities import plain
 from fleetcare.domain.sheets import LASH, SHIM, CellKey, Phase, Place, Sheet, SheetValue
 from fleetcare.drafts.sheets import SheetIn, SheetRow
 from fleetcare.errors import FleetError, Refused
+from fleetcare.operations.findings import EngineFinding
+from fleetcare.operations.sheet_ahead import SheetAhead, resting_on_it
 from fleetcare.operations.sheets_judge import JudgedRow, JudgedSheet, judge
 from fleetcare.operations.sheets_load import LashForm
 from fleetcare.operations.sheets_values import SaidDoubt, doubt_of, read_value
@@ -58,6 +60,11 @@ def read_typed(
     doubts = {key: found for key, value in values.items() if (found := doubt_of(form, value)) is not None}
     sheet = Sheet(0, LASH, form.on, tuple(values.values()), condition, gauge)
     return TypedSheet(judge(form, sheet), values, wrong, doubts)
+
+
+def findings_on(ahead: SheetAhead, typed: TypedSheet) -> tuple[EngineFinding, ...]:
+    """Give what the rules find by what is typed so far, gravest first, beside all else that was measured on the engine."""
+    return resting_on_it(ahead.judge(typed.judged.sheet, typed.judged.judgements))
 
 
 def cells_of(form: LashForm) -> tuple[CellKey, ...]:

@@ -98,7 +98,10 @@ def test_a_first_sample_is_held_against_the_family_while_it_is_typed(yard: Conte
     with yard.read() as connection:
         item = find_item(connection, "A-1")
         for kind, samples in (("oil", 1), ("spot", 0)):
-            assert len(open_measures(connection, item, kind, TODAY).found.background.family.samples) == samples
+            assert (
+                len(open_measures(connection, item, kind, TODAY, TODAY).ahead.found.background.family.samples)
+                == samples
+            )
 
 
 @pytest.mark.parametrize(

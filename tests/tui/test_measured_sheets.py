@@ -21,6 +21,20 @@ OIL_VALUES = (
     *("31", "2", "4", "6", "3", "1", "<1", "<1", "9", "5", "3", "2", "40"),
 )
 
+FALL = """
+[[rule]]
+id = "own-fall"
+kinds = "compression"
+quantity = "pressure"
+unit = "bar"
+rate = { since = "before", per = 100 }
+low = { alarm = { beyond = -5 } }
+cause = "falling compression"
+message = "rings or valves going"
+next_step = "test again"
+source = "shop rule 7"
+"""
+
 
 async def sheet_on(pilot: Pilot[None], kind: str, tag: str = "B-6") -> SheetScreen:
     """Open the sheet of a kind through its form."""
@@ -167,3 +181,23 @@ async def test_a_sheet_is_judged_by_the_rules_of_the_shop(opened: Opened, bench:
         await sheet_on(pilot, COMPRESSION)
         await enter_all(pilot, "25bar", "25", "17", "25", "24", "25")
         assert line_with(pilot, "nothing found so far")
+
+
+async def test_a_rate_is_judged_while_typing_by_the_figure_typed_before(
+    opened: Opened, bench: Context, tmp_path: Path
+) -> None:
+    own, before = tmp_path / "ours.toml", tmp_path / "before.csv"
+    own.write_text(FALL)
+    before.write_text(
+        "\n".join(["quantity,point,phase,value,unit", *(f"pressure,{n},dry,25,bar" for n in range(1, 7))])
+    )
+    type_in(bench.path, "rules", "--use", str(own), "--why", "old engines", "--by", "Harbin")
+    type_in(bench.path, "measure", "compression", "B-6", str(before), "--on", "2026-04-20", "--at", "995h")
+    async with opened(size=SMALL, context=bench) as pilot:
+        await sheet_on(pilot, COMPRESSION)
+        await enter_all(pilot, "24.5bar")
+        # By hand: 1000 h typed, 995 h then; -0.5 bar in 5 h is -10 bar per 100 h.
+        assert line_with(pilot, "found: alarm falling compression at cylinder 1")
+        await enter_all(pilot, "25", "25", "25", "25", "25")
+        await press(pilot, "ctrl+s")
+        assert "Found: alarm falling compression, cylinder 1; 3 shows its working." in said(pilot)

@@ -202,3 +202,15 @@ async def test_a_sheet_without_limits_says_where_they_are_given(opened: Opened, 
         await form_with(pilot, "lash", Subject("PS-1"), {"at": "305"})
         await press(pilot, "ctrl+s")
         assert line_with(pilot, "no check range is known; on the engine, x and then e give it")
+
+
+async def test_what_the_rules_find_on_a_lash_sheet_is_said_while_it_is_typed(opened: Opened, bench: Context) -> None:
+    async with opened(size=SMALL, context=bench) as pilot:
+        screen = await sheet_of(pilot, SINGLE)
+        await enter_all(pilot, "25", "")
+        assert "found: alert" not in said(pilot)
+        await press(pilot, *"36")
+        # B-1: exhaust 0.40 to 0.50 mm is in; 0.36 lies below it.
+        assert line_with(pilot, "Stop 1 of 1", "found: alert closing valve at 1E")
+        assert screen.read_sheet is not None
+        assert screen.read_sheet.below()[0].startswith("ALERT closing valve at 1E")

@@ -116,7 +116,14 @@ class FormScreen(FillingScreen, StoringScreen):
 
         self._draft = None
         taken_on = getattr(draft, "on", None) or self.context.today()
-        about = SheetFor(self.subject.tag, taken_on, wanted.task, self.facts.whose if self.facts else "")
+        about = SheetFor(
+            self.subject.tag,
+            taken_on,
+            wanted.task,
+            self.facts.whose if self.facts else "",
+            figures=getattr(draft, "at", ()),
+            explained=self._said.get("at", {}),
+        )
         self.app.push_screen(
             SheetScreen(SHEETS[wanted.kind], about, partial(self._record_with, draft)), self._filled_in
         )

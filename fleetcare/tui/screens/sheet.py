@@ -95,7 +95,7 @@ class SheetScreen(StoringScreen):
 
     def read(self, connection: "Connection", on: "date", *, is_future: bool) -> OpenSheet:
         """Load the empty sheet of the day it was taken."""
-        return self.kind.open(connection, self.about)
+        return self.kind.open(connection, self.about, on)
 
     def show(self, found: OpenSheet) -> None:
         """Draw it, with what is typed in it."""

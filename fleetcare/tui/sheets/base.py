@@ -2,7 +2,7 @@
 
 from abc import ABC, abstractmethod
 from collections.abc import Callable, Mapping, Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, field
 from datetime import date
 from typing import TYPE_CHECKING
 
@@ -14,6 +14,8 @@ from fleetcare.tui.sheets.layout import Blocks, Shown
 if TYPE_CHECKING:
     from sqlalchemy import Connection
 
+    from fleetcare.domain.quantities import Figure
+
 Texts = Mapping[CellKey, str]
 """What stands in the cells, as typed."""
 
@@ -22,7 +24,8 @@ Texts = Mapping[CellKey, str]
 class SheetFor:
     """What a sheet is taken for: an engine on a day, and the task it is to close, empty where it is only measured.
 
-    With an entry it is the sheet of that entry, to be mended.
+    With an entry it is the sheet of that entry, to be mended; else `figures` are what the dial showed, and `explained`
+    what was answered about those that break with their meter's past.
     """
 
     tag: str
@@ -30,6 +33,8 @@ class SheetFor:
     task: str = ""
     whose: str = ""
     entry: int | None = None
+    figures: "Sequence[Figure]" = ()
+    explained: Mapping[str, bool] = field(default_factory=dict)
 
 
 @dataclass(frozen=True, slots=True)
@@ -106,11 +111,11 @@ class OpenSheet(ABC):
 
 @dataclass(frozen=True, slots=True)
 class SheetKind:
-    """A kind of sheet: its name, its title on the screen, and what loads an empty one."""
+    """A kind of sheet: its name, its title on the screen, and what loads an empty one, seen on a day."""
 
     name: str
     title: str
-    open: "Callable[[Connection, SheetFor], OpenSheet]"
+    open: "Callable[[Connection, SheetFor, date], OpenSheet]"
 
 
 def say_of_cell(error: FleetError) -> str:

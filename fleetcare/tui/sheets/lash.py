@@ -1,16 +1,19 @@
 """The valve lash sheet on the screen."""
 
 from collections.abc import Iterator, Mapping, Sequence
+from datetime import date
 from itertools import groupby
 from typing import TYPE_CHECKING
 
 from fleetcare.domain.cautions import LASH as CAUTIONS
 from fleetcare.domain.sheets import LASH, SHIM, CellKey, LashPoint, Phase, Place, Verdict
 from fleetcare.operations.find import find_engine
+from fleetcare.operations.sheet_ahead import EntryAhead, SheetAhead, sheet_ahead
 from fleetcare.operations.sheets_judge import sheet_of_entry
 from fleetcare.operations.sheets_load import LashForm, open_form
 from fleetcare.operations.sheets_typed import (
     cells_of,
+    findings_on,
     is_wanted,
     last_shown,
     points_here,
@@ -22,6 +25,7 @@ from fleetcare.operations.sheets_typed import (
 )
 from fleetcare.tui.forms.base import Answer
 from fleetcare.tui.sheets.base import Ask, OpenSheet, ReadSheet, SheetFor, SheetKind, Slip, Texts, say_of_cell
+from fleetcare.tui.sheets.found import TONES, say_found, tell_found
 from fleetcare.tui.sheets.layout import Flow, Matrix, MatrixRow, Shown
 
 if TYPE_CHECKING:
@@ -38,15 +42,14 @@ _WORDS: Mapping[CellKey, Mapping[str, str]] = {
 }
 _PHASES = (Phase.FOUND, Phase.LEFT)
 _MARKS = {Place.IN: "·", Place.BELOW: "<", Place.ABOVE: ">", Place.UNDECIDED: "?"}
-_TONES = {Verdict.IN: "clear", Verdict.ALERT: "due", Verdict.ALARM: "overdue", Verdict.NOT_JUDGED: "quiet"}
 _LEGEND = "·  in    <  below    >  above    ?  slip, or not told    ____  at this stop"
 
 
 class OpenLash(OpenSheet):
     """An empty valve lash sheet."""
 
-    def __init__(self, form: LashForm, start: Texts) -> None:
-        self.form, self.start = form, start
+    def __init__(self, form: LashForm, ahead: SheetAhead, start: Texts) -> None:
+        self.form, self.ahead, self.start = form, ahead, start
         self.order = cells_of(form)
         self.blocks = (Flow((("Engine cold or hot", WHEN, 5), ("Unit", UNIT, 3), ("Gauge", GAUGE, 24))), *_banks(form))
         self.lasts = {key: last for key in self.order if (last := last_shown(form, key))}
@@ -69,6 +72,7 @@ class ReadLash(ReadSheet):
         self._gauge = texts.get(GAUGE, "").strip()
         cells = {key: text for key, text in texts.items() if key.quantity in {LASH, SHIM}}
         self._typed = read_typed(opened.form, cells, self._told[WHEN], self._gauge, self._told[UNIT] or None)
+        self._findings = findings_on(opened.ahead, self._typed)
 
     def shown(self) -> Mapping[CellKey, Shown]:
         """Give what the cells show."""
@@ -88,7 +92,7 @@ class ReadLash(ReadSheet):
 
     def _value(self, key: CellKey, row: "JudgedRow") -> Shown:
         mark = "?" if key in self.slips() else _MARKS[Place(row.place)] if row.place else " "
-        return Shown(row.value, mark, _TONES[Verdict(row.verdict)])
+        return Shown(row.value, mark, TONES[Verdict(row.verdict)])
 
     def about(self, key: CellKey) -> Sequence[tuple[str, str]]:
         """Give lines about a cell: where the crank stands for it, then what it holds."""
@@ -107,16 +111,18 @@ class ReadLash(ReadSheet):
         if key == GAUGE:
             return (("the feeler gauge used, such as its number", ""), ("Another gauge is not a trend.", "quiet"))
         row = self._typed.row(key)
-        tone = "wrong" if key in self._typed.wrong else _TONES[Verdict(row.verdict)] if row else ""
+        tone = "wrong" if key in self._typed.wrong else TONES[Verdict(row.verdict)] if row else ""
         what = f"{key.point} {'shim ' if key.quantity == SHIM else ''}{key.phase}"
+        found, found_tone = say_found(self._findings)
+        here = say_here(self._form, key)
         return (
-            (say_here(self._form, key), "quiet"),
+            (f"{here}; {found}", found_tone) if self._findings else (here, "quiet"),
             (f"{what}: {', '.join(say_cell(self._form, self._typed, key))}", tone),
         )
 
     def below(self) -> Sequence[str]:
-        """Give the cautions of the job."""
-        return CAUTIONS
+        """Give what the rules find, gravest first, and the cautions of the job."""
+        return (*tell_found(self._findings), *CAUTIONS)
 
     def here(self, key: CellKey) -> frozenset[CellKey]:
         """Give the cells that are filled in with the crank as it stands for one."""
@@ -173,15 +179,17 @@ class ReadLash(ReadSheet):
         return {**came, **said, **({"defect": self._typed.judged.defect()} if said.get("follow_up") else {})}
 
 
-def _open(connection: "Connection", about: SheetFor) -> OpenLash:
+def _open(connection: "Connection", about: SheetFor, today: date) -> OpenLash:
     engine = find_engine(connection, about.tag)
+    entry = EntryAhead(about.figures, about.explained, about.entry)
+    ahead = sheet_ahead(connection, engine, LASH, about.on, today, entry)
     if about.entry is None:
-        return OpenLash(open_form(connection, engine, about.on), {})
+        return OpenLash(open_form(connection, engine, about.on), ahead, {})
     stored = sheet_of_entry(connection, engine, about.entry)
     typed, unit = typed_of(stored.sheet)
     asked = stored.form.spec.unit if stored.form.spec else "mm"
     given = {WHEN: stored.sheet.condition, GAUGE: stored.sheet.gauge, UNIT: unit if unit != asked else ""}
-    return OpenLash(stored.form, {**typed, **{key: text for key, text in given.items() if text}})
+    return OpenLash(stored.form, ahead, {**typed, **{key: text for key, text in given.items() if text}})
 
 
 def _banks(form: LashForm) -> Iterator[Matrix]:

@@ -24,8 +24,10 @@ from fleetcare.operations.measures_typed import (
     typed_of,
     unit_of,
 )
+from fleetcare.operations.sheet_ahead import EntryAhead
 from fleetcare.tui.forms.base import Answer
 from fleetcare.tui.sheets.base import Ask, OpenSheet, ReadSheet, SheetFor, SheetKind, Slip, Texts, say_of_cell
+from fleetcare.tui.sheets.found import TONES, say_found, tell_found
 from fleetcare.tui.sheets.layout import Flow, Listing, Matrix, MatrixRow, Shown
 
 if TYPE_CHECKING:
@@ -45,7 +47,6 @@ _TELLS = {
 _PHASES = {"": "found", "new": "new"}
 _SHORT = {"hours_on_oil": "hours", "oil_temperature": "oil temp.", "insolubles": "insol.", "flash_point": "flash"}
 _FREE = 9  # columns for a word of one's own
-_TONES = {Verdict.IN: "clear", Verdict.ALERT: "due", Verdict.ALARM: "overdue", Verdict.NOT_JUDGED: "quiet"}
 _LEGEND = "·  in    <  below    >  above its limit    !  part of a pattern    ?  slip"
 
 
@@ -76,6 +77,7 @@ class ReadMeasured(ReadSheet):
         self._received, self._no_day = _read_day(self._aside[RECEIVED])
         cells = {key: text for key, text in texts.items() if key not in _WITH}
         self._typed = read_typed(self._opened, cells, self._aside[GAUGE], self._received)
+        self._found = say_found(self._typed.findings)
 
     def shown(self) -> Mapping[CellKey, Shown]:
         """Give what the cells show."""
@@ -84,31 +86,21 @@ class ReadMeasured(ReadSheet):
         return shown | {key: Shown(self._texts[key], "?", "wrong") for key in self.wrong()}
 
     def _value(self, key: CellKey, row: "MeasuredRow") -> Shown:
-        return Shown(row.value, "?" if key in self.slips() else _mark(row), _TONES[Verdict(row.verdict)])
+        return Shown(row.value, "?" if key in self.slips() else _mark(row), TONES[Verdict(row.verdict)])
 
     def about(self, key: CellKey) -> Sequence[tuple[str, str]]:
         """Give lines about a cell: what the rules find by now, then what it holds, or what belongs there."""
         wrong, row = self.wrong().get(key), self._typed.rows.get(key)
         if wrong:
-            return (self._found(), (f"{self._name(key)}: {wrong}", "wrong"))
+            return (self._found, (f"{self._name(key)}: {wrong}", "wrong"))
         if key in _TELLS:
-            return (self._found(), (f"{self._name(key)}: {_TELLS[key]}", ""))
+            return (self._found, (f"{self._name(key)}: {_TELLS[key]}", ""))
         last = self._opened.last.get(key)
         before = f"last {last}" if last else ""
         if row is None:
-            return (self._found(), (f"{self._name(key)}: {', '.join(filter(None, (self._asked(key), before)))}", ""))
-        told = f"{self._name(key)}: {row.value} {row.unit} {row.verdict}, {row.why}".replace("  ", " ")
-        return (self._found(), ("; ".join(filter(None, (told, before))), _TONES[Verdict(row.verdict)]))
-
-    def _found(self) -> tuple[str, str]:
-        """Name what the rules find by now, gravest first."""
-        found = self._typed.findings
-        if not found:
-            return ("nothing found so far", "quiet")
-        words = [
-            f"{one.row.severity} {one.row.cause}{f' at {one.row.subject}' * bool(one.finding.subject)}" for one in found
-        ]
-        return (f"found: {'; '.join(words)}", _TONES[Verdict(found[0].row.severity)])
+            return (self._found, (f"{self._name(key)}: {', '.join(filter(None, (self._asked(key), before)))}", ""))
+        told = f"{self._name(key)}: {row.figure} {row.verdict}, {row.why}"
+        return (self._found, ("; ".join(filter(None, (told, before))), TONES[Verdict(row.verdict)]))
 
     def _asked(self, key: CellKey) -> str:
         word = self._opened.form.kind.word_column(key.quantity)
@@ -126,11 +118,7 @@ class ReadMeasured(ReadSheet):
 
     def below(self) -> Sequence[str]:
         """Give what the rules find, gravest first, and the cautions of the job."""
-        found = [
-            f"{one.row.severity.upper()} {one.row.explanation}. Next: {one.row.next_step}."
-            for one in self._typed.findings
-        ]
-        return (*found, *([""] if found else []), *OF_SHEETS[self._opened.form.kind.name])
+        return (*tell_found(self._typed.findings), *OF_SHEETS[self._opened.form.kind.name])
 
     def here(self, key: CellKey) -> frozenset[CellKey]:
         """Give the cells one is led to."""
@@ -186,8 +174,9 @@ class ReadMeasured(ReadSheet):
         }
 
 
-def _open(kind: str, connection: "Connection", about: SheetFor) -> OpenMeasured:
-    return OpenMeasured(open_measures(connection, find_engine(connection, about.tag), kind, about.on, about.entry))
+def _open(kind: str, connection: "Connection", about: SheetFor, today: date) -> OpenMeasured:
+    entry = EntryAhead(about.figures, about.explained, about.entry)
+    return OpenMeasured(open_measures(connection, find_engine(connection, about.tag), kind, about.on, today, entry))
 
 
 def _start(opened: OpenMeasures) -> Texts:
