@@ -62,9 +62,11 @@ def say_moved(moves: "Iterable[Moved]") -> None:
 
 
 def say_entered(entered: "Entered") -> None:
-    """Print what was stored, the lines it moved, and what it is good to know now."""
-    for line in entered.sentences():
+    """Print what was stored, the lines it moved, and what it is good to know now; warn of what to beware of."""
+    for line in (*entered.said, *entered.moved, *entered.notes):
         output.say(line)
+    if entered.warnings:
+        output.complain(*entered.warnings)
 
 
 def today_of(given: argparse.Namespace) -> date:
@@ -81,4 +83,4 @@ def add_options(parser: argparse.ArgumentParser, options: Mapping[str, tuple[str
 def say_progress(done: int, of: int) -> None:
     """Say on stderr how far long work has come, where there is enough of it to wait for."""
     if of > _SOON_DONE:
-        output.complain(f"Judged {done} of {of} engines.")
+        output.complain(f"Judged {100 * done // of} % of what is to be judged.")

@@ -92,12 +92,24 @@ def _rejudge(
 ) -> Rejudged:
     after = tuple(sorted(after, key=lambda one: one.name))
     notes = _unknown_engines(connection, after)
+    behind = 0  # engines that had to be judged by the rules before, to tell what comes and goes
+
+    def by_the_rules_before(done: int, of: int) -> None:
+        nonlocal behind
+        behind = done
+        if progress is not None:
+            progress(done, 2 * of)
+
+    def by_the_new_rules(done: int, of: int) -> None:
+        if progress is not None:
+            progress(behind + done, behind + of)
+
     try:
-        had = _standing(connection, before, on, None)
+        had = _standing(connection, before, on, by_the_rules_before)
     except Refused as error:
         had = _Standing({}, ())
         notes = (*notes, f"the rules before did not fit this program, so nothing went: {error.lines()[0]}")
-    has = _standing(connection, after, on, progress)
+    has = _standing(connection, after, on, by_the_new_rules)
     came = tuple(row for key, row in has.rows.items() if key not in had.rows)
     went = tuple(row for key, row in had.rows.items() if key not in has.rows)
     return Rejudged(name, text, has.kept, came, went, notes)
@@ -111,7 +123,7 @@ class _Standing:
     kept: tuple[Kept, ...]
 
 
-def _standing(connection: "Connection", texts: tuple[ShopText, ...], on: date, progress: Progress | None) -> _Standing:
+def _standing(connection: "Connection", texts: tuple[ShopText, ...], on: date, progress: Progress) -> _Standing:
     lives, kept = judged_with(connection, texts, progress)
     rows = rows_of(connection, lives, on)
     standing = {(row.engine, row.cause, row.subject): row for row in rows if row.state not in _OVER}

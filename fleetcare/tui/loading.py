@@ -21,6 +21,10 @@ FOLLOW_EVERY = 1.0
 _SILENT = 0.5  # seconds of reading before it is worth a word
 
 
+class _Stopped(Exception):
+    """Nobody waits any more for what is being read."""
+
+
 class LoadingScreen(FramedScreen):
     """A screen filled by one read operation."""
 
@@ -30,6 +34,13 @@ class LoadingScreen(FramedScreen):
         def __init__(self, found: Any) -> None:
             super().__init__()
             self.found = found
+
+    class Progressed(Message):
+        """How far long work has come: so many engines of so many."""
+
+        def __init__(self, done: int, of: int) -> None:
+            super().__init__()
+            self.done, self.of = done, of
 
     class Failed(Message):
         """Why the operation found nothing."""
@@ -43,6 +54,7 @@ class LoadingScreen(FramedScreen):
         self._seen: Stamp | None = None
         self._worker: Worker[None] | None = None
         self._has_failed = False
+        self._is_stopped = False
 
     def on_mount(self) -> None:
         """Begin to look whether the file changed."""
@@ -66,12 +78,19 @@ class LoadingScreen(FramedScreen):
         """Fill the widgets with what was found."""
         raise NotImplementedError
 
+    def tell_progress(self, done: int, of: int) -> None:
+        """Say how far the reading has come; called in its thread. Ends it where nobody waits for it any more."""
+        if get_current_worker().is_cancelled:
+            raise _Stopped
+        self.post_message(self.Progressed(done, of))
+
     def fail(self, error: FleetError) -> None:
         """Say what is wrong; what was shown before stays."""
         self.notice.say(*error.lines(), is_wrong=True, is_about_reading=True)
 
     def load(self) -> None:
         """Read in a thread; a reading still under way is dropped."""
+        self._is_stopped = False
         self._seen = stamp(self.context)
         self._worker = self.run_worker(partial(self._run, self._seen), thread=True, exclusive=True, exit_on_error=False)
         self.set_timer(_SILENT, partial(self._still_reading, self._worker))
@@ -83,8 +102,27 @@ class LoadingScreen(FramedScreen):
             self.load()
 
     def on_screen_resume(self) -> None:
-        """Come back to what holds now; the first time, read."""
-        self.follow()
+        """Come back to what holds now; the first time, and where it was stopped, read."""
+        if self._is_stopped:
+            self.load()
+        else:
+            self.follow()
+
+    def action_stop(self) -> None:
+        """Stop a reading under way; else take away what was said."""
+        if self._worker is None or self._worker.is_finished:
+            self.action_hush()
+            return
+        self._is_stopped = True
+        self._worker.cancel()
+        self.notice.say("Stopped; nothing is changed by it. Leave this view and come back to begin again.")
+
+    def on_loading_screen_progressed(self, message: Progressed) -> None:
+        """Show how far long work has come."""
+        if not self._is_stopped:
+            self.notice.say(
+                f"Judging every sheet: {message.done} of {message.of} engines …, Esc stops", is_about_reading=True
+            )
 
     def on_loading_screen_loaded(self, message: Loaded) -> None:
         """Show what came."""
@@ -109,6 +147,8 @@ class LoadingScreen(FramedScreen):
         try:
             with context.read() as connection:
                 answer = self.Loaded(self.read(connection, seen.on, is_future=context.is_future))
+        except _Stopped:
+            return
         except FleetError as error:
             answer = self.Failed(error)
         if not worker.is_cancelled:

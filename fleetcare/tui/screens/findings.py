@@ -94,7 +94,7 @@ class FindingsScreen(SearchingScreen):
         """Load them."""
         from fleetcare.operations.finding_rows import finding_rows
 
-        return finding_rows(connection, on)
+        return finding_rows(connection, on, progress=self.tell_progress)
 
     def show(self, found: "list[FindingRecord]") -> None:
         """Show them, narrowed as before."""
