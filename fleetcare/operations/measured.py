@@ -20,9 +20,11 @@ from fleetcare.operations.lash_specs import USUAL_VALVES, specs_of
 from fleetcare.operations.load import AS_STORED, Trial, entry_lives, load_counters, own_readings
 from fleetcare.operations.rows import Row, day, fetch, figure, known_day
 from fleetcare.operations.sheets_load import load_values
+from fleetcare.operations.top_ups import load_top_ups
 from fleetcare.rules.judge_engine import Background
 from fleetcare.rules.judge_lash import judge_sheet
 from fleetcare.rules.lash_points import banks, lash_points
+from fleetcare.rules.oil_fills import top_up, with_logged
 
 if TYPE_CHECKING:
     from sqlalchemy import Connection
@@ -72,9 +74,11 @@ def load_engine_sheets(
     fresh = load_fresh(connection, last[0])
     specs = specs_of(connection, [item for item, own in sheets.items() if any(one.kind == LASH for one, _ in own)])
     conditions = {one.entry: condition for own in sheets.values() for one, condition in own}
+    silent = [item for item, own in sheets.items() if any(one.kind == OIL and top_up(one) is None for one, _ in own)]
+    top_ups = load_top_ups(connection, silent, last[0], on, trial)
     found = []
     for row in plates:
-        own = tuple(sheet for sheet, _ in sheets.get(row[0], ()))
+        own = tuple(with_logged(sheet, top_ups.get(row[0], ())) for sheet, _ in sheets.get(row[0], ()))
         if not own and ids is None:
             continue
         engine, train = _engine(row)

@@ -9,7 +9,7 @@ from dataclasses import dataclass, field, replace
 from datetime import date
 from typing import TYPE_CHECKING
 
-from fleetcare.domain.measured import OIL
+from fleetcare.domain.measured import OIL, TopUp
 from fleetcare.domain.meters import LifeFigure, Reading
 from fleetcare.domain.quantities import Figure
 from fleetcare.domain.rule_book import RuleBook
@@ -29,7 +29,9 @@ from fleetcare.operations.measured import (
     measured_sheet,
 )
 from fleetcare.operations.shop_book import usable_book
+from fleetcare.operations.top_ups import load_top_ups
 from fleetcare.rules.judge_engine import JudgedEngine
+from fleetcare.rules.oil_fills import with_logged
 
 if TYPE_CHECKING:
     from sqlalchemy import Connection
@@ -53,17 +55,22 @@ NEW_ENTRY = EntryAhead()
 
 @dataclass(frozen=True, slots=True)
 class SheetAhead:
-    """What a sheet of a day will be judged by: those before it, its hours (life total), the rules, new oil by grade."""
+    """What a sheet of a day will be judged by: those before it, its hours (life total), the rules, new oil by grade.
+
+    `top_ups` are those in the log up to its day.
+    """
 
     found: EngineSheets
     hours: LifeFigure | None
     book: RuleBook
     fresh: Mapping[str, tuple[SheetValue, ...]]
+    top_ups: Sequence[TopUp]
 
     def judge(self, sheet: Sheet, lash: tuple[Judgement, ...] = ()) -> JudgedEngine:
         """Judge the engine as if the sheet were stored; `lash` is how its gaps stand."""
         hours = self.hours.value if self.hours is not None else None
-        sheets = (*self.found.sheets, measured_sheet(replace(sheet, entry=NOT_YET), hours))
+        new = with_logged(measured_sheet(replace(sheet, entry=NOT_YET), hours), self.top_ups)
+        sheets = (*self.found.sheets, new)
         grade, behind = grade_in(sheets, self.found.engine), self.found.background
         told = [value for value in sheet.values if value.phase is Phase.NEW and grade]
         fresh = {value.quantity: value for value in (*self.fresh.get(grade, ()), *told)}
@@ -89,6 +96,7 @@ def sheet_ahead(
         hours=load_hours(connection, item.id, entry.number or NOT_YET, on, today, trial),
         book=usable_book(connection, today)[0],
         fresh=load_fresh(connection, on),
+        top_ups=load_top_ups(connection, [item.id], on, today, trial).get(item.id, ()),
     )
 
 

@@ -45,11 +45,14 @@ def falling(ctx: Context) -> Context:
     return ctx
 
 
-def samples(ctx: Context, iron: str = "20 40 61 80", tbn: str = "9.0 8.9 8.8 8.6") -> Context:
-    """Four samples of one fill, changed at 1200 h, without top-up."""
+def samples(
+    ctx: Context, iron: str = "20 40 61 80", tbn: str = "9.0 8.9 8.8 8.6", topped_up: str = "top_up,,,0,L"
+) -> Context:
+    """Four samples of one fill, changed at 1200 h, without top-up; an empty row states nothing of it."""
     days = zip(DAYS[3:], (100, 200, 300, 400), iron.split(), tbn.split(), strict=True)
     for on, hours, ppm, base in days:
-        rows = (f"hours_on_oil,,,{hours},h", "top_up,,,0,L", f"Fe,,,{ppm},ppm", f"tbn,,,{base},", "tbn,,new,9.2,")
+        stated = (f"hours_on_oil,,,{hours},h", topped_up, f"Fe,,,{ppm},ppm", f"tbn,,,{base},", "tbn,,new,9.2,")
+        rows = [row for row in stated if row]
         take(ctx, "oil", *rows, on=on, sure=True)
     return ctx
 

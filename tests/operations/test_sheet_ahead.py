@@ -24,7 +24,7 @@ from fleetcare.operations.sheet_report import SheetReport, report_sheet
 from fleetcare.operations.sheets_load import open_form
 from fleetcare.operations.sheets_typed import findings_on, read_typed
 from fleetcare.operations.shop_rules import store_rules, try_rules
-from tests.operations.importing import TODAY, reading
+from tests.operations.importing import TODAY, log, reading
 from tests.operations.measure_yard import SPOT, take, yard_of_four
 from tests.operations.sheet_yard import LASH, sheet
 
@@ -124,6 +124,19 @@ def test_what_is_said_while_typing_is_what_is_said_once_it_is_stored(
     assert [one.row for one in findings] == [one.row for one in report.findings]
     assert hours == report.engine_hours
     assert findings
+
+
+def test_a_top_up_of_the_log_stands_in_for_one_not_typed_as_it_does_once_it_is_stored(yard: Context) -> None:
+    """By hand: 15 ppm of copper in 110 h, 0.8 L into a sump of 8 L: 15 x 1.0508 / 1.1 = 14.33 ppm per 100 h."""
+    log(yard, "2026-04-15", top_up="0.8L")
+    rows = ["hours_on_oil,,,110,h", "grade,,,15W-40,", "Cu,,,15,ppm"]
+    told, findings, _ = typed(yard, "oil", rows, "2026-04-20", "1100")
+    report = take(yard, "oil", *rows, on="2026-04-20", at=["1100"]).report
+    assert told == told_of(report)
+    assert [one.row for one in findings] == [one.row for one in report.findings]
+    (copper,) = findings
+    assert round(copper.row.measured or 0, 2) == Decimal("14.33")
+    assert "topped up by the log 0.8 L" in copper.row.working[0]
 
 
 def falls(findings: Sequence[EngineFinding]) -> list[Decimal | None]:
