@@ -1,7 +1,7 @@
 """Measurement rules as data: a handful of fixed shapes, the limits, and where each rule applies and comes from.
 
-Every shape works out one signed figure in the unit of the rule; the limits of the rule, low and high, are held against
-that figure. There is no expression language: what the shapes cannot say is a new shape.
+Every shape (domain/rule_shapes.py) works out one signed figure in the unit of the rule; the limits of the rule, low and
+high, are held against that figure. There is no expression language: what the shapes cannot say is a new shape.
 """
 
 from collections.abc import Iterable, Mapping
@@ -9,6 +9,20 @@ from dataclasses import dataclass, field
 from decimal import Decimal
 from enum import StrEnum
 
+from fleetcare.domain.rule_shapes import AgainstSheet as AgainstSheet
+from fleetcare.domain.rule_shapes import Approach as Approach
+from fleetcare.domain.rule_shapes import Basis as Basis
+from fleetcare.domain.rule_shapes import Best as Best
+from fleetcare.domain.rule_shapes import Bounds as Bounds
+from fleetcare.domain.rule_shapes import By as By
+from fleetcare.domain.rule_shapes import Change as Change
+from fleetcare.domain.rule_shapes import Method as Method
+from fleetcare.domain.rule_shapes import Pool as Pool
+from fleetcare.domain.rule_shapes import Rate as Rate
+from fleetcare.domain.rule_shapes import Since as Since
+from fleetcare.domain.rule_shapes import SingleShape as SingleShape
+from fleetcare.domain.rule_shapes import Statistical as Statistical
+from fleetcare.domain.rule_shapes import ValueShape as ValueShape
 from fleetcare.domain.sheets import Phase
 from fleetcare.domain.trends import End as End
 
@@ -42,115 +56,6 @@ class Limits:
 
     def __bool__(self) -> bool:
         return self.alert is not None or self.alarm is not None
-
-
-class Basis(StrEnum):
-    """What of a value is held against bounds.
-
-    AS_MEASURED the value; LESS_NEW what it has above fresh oil, where that is known; NAMEPLATE percent of the rated kW;
-    YEAR the sum over the sheets of its calendar year; SPEC the value against the check range of the engine itself.
-    """
-
-    AS_MEASURED = "as measured"
-    LESS_NEW = "less new"
-    NAMEPLATE = "nameplate"
-    YEAR = "year"
-    SPEC = "spec"
-
-
-class By(StrEnum):
-    """How a figure is compared with another: percent of it, percent above it, or units above it; below is negative."""
-
-    RATIO = "ratio"
-    SHARE = "share"
-    DIFFERENCE = "difference"
-
-
-class Best(StrEnum):
-    """What of a sheet its values are compared with: the highest, the lowest or the mean of all points."""
-
-    HIGHEST = "highest"
-    LOWEST = "lowest"
-    MEAN = "mean"
-
-
-class Since(StrEnum):
-    """What a value is compared with: the last sheet with the same gauge, the highest of all points on that, or the new oil.
-
-    For a rate NEW is since the oil change.
-    """
-
-    BEFORE = "before"
-    BEST_BEFORE = "best before"
-    NEW = "new"
-
-
-class Pool(StrEnum):
-    """Whose samples say what is usual: the engine's own, or those of engines like it."""
-
-    OWN = "own"
-    FAMILY = "family"
-
-
-class Method(StrEnum):
-    """How samples become a limit; the limit of the rule is k or, for a percentile, the percentage.
-
-    MEAN mean + k s; ROBUST median + k 1.4826 MAD; PERCENTILE of the cumulative distribution (ASTM D7720 has both kinds).
-    """
-
-    MEAN = "mean"
-    ROBUST = "robust"
-    PERCENTILE = "percentile"
-
-
-@dataclass(frozen=True, slots=True)
-class Bounds:
-    """A value held against low and high limits; for SPEC, which has none of its own, `end` says which end of the range.
-
-    `is_set` takes at both ends what was found out and left inside on the same sheet; a rule with an `end` leaves that out.
-    """
-
-    basis: Basis = Basis.AS_MEASURED
-    end: End | None = None
-    is_set: bool = False
-
-
-@dataclass(frozen=True, slots=True)
-class AgainstSheet:
-    """Each point compared with the best or the mean of all points of its sheet."""
-
-    reference: Best
-    by: By
-
-
-@dataclass(frozen=True, slots=True)
-class Change:
-    """A value compared with the same point before, or with new oil."""
-
-    since: Since
-    by: By
-
-
-@dataclass(frozen=True, slots=True)
-class Rate:
-    """Change per `per` hours: between two samples of one fill, or since the oil change.
-
-    `is_corrected` takes make-up oil into account, since the change only; fewer than `least_hours` give no rate.
-    """
-
-    since: Since
-    per: int
-    is_corrected: bool = False
-    least_hours: Decimal = Decimal(0)
-
-
-@dataclass(frozen=True, slots=True)
-class Statistical:
-    """A value held against what `least_samples` or more samples of a pool say is usual."""
-
-    pool: Pool
-    method: Method
-    least_samples: int
 
 
 class Asks(StrEnum):
@@ -213,9 +118,6 @@ class Pattern:
     table: str = ""
     row: int = 0
 
-
-SingleShape = Bounds | AgainstSheet | Change | Rate | Statistical
-"""The shapes that work out a figure for each value."""
 
 Shape = SingleShape | Pattern
 

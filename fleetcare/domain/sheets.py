@@ -149,6 +149,7 @@ class Judgement:
 
     `limits` are its check range and `unit` theirs; `limit` is the end it breaks or is nearest to. `margin` is how far
     inside that it lies, below 0 outside, an interval by its worse end; `off_least` how far outside it lies at least.
+    `taken` is cold, hot or any, as the sheet says or else as its limits ask; `asked` is what those ask.
     """
 
     value: SheetValue
@@ -160,6 +161,8 @@ class Judgement:
     off_least: Decimal = Decimal(0)
     unit: str = ""
     unjudged: Unjudged | None = None
+    taken: str = ""
+    asked: str = ""
 
     @property
     def is_out(self) -> bool:

@@ -8,10 +8,12 @@ from typing import Annotated, Any, Self
 
 from pydantic import AfterValidator, BeforeValidator, Field, StringConstraints, model_validator
 
+from fleetcare.domain.measured import LASH
 from fleetcare.domain.measures import QUANTITIES, dimension
 from fleetcare.domain.rule_book import (
     AgainstSheet,
     AppliesTo,
+    Approach,
     Basis,
     Bounds,
     By,
@@ -29,6 +31,7 @@ from fleetcare.domain.sheets import Phase
 from fleetcare.rulebook.rule_pieces import (
     AgainstSheetIn,
     AppliesIn,
+    ApproachIn,
     BoundsIn,
     ChangeIn,
     ConditionIn,
@@ -52,6 +55,7 @@ SHAPES: dict[str, type[Any]] = {
     "change": Change,
     "rate": Rate,
     "statistical": Statistical,
+    "approach": Approach,
     "pattern": Pattern,
 }
 
@@ -74,6 +78,7 @@ class RuleIn(Form):
     change: ChangeIn | None = None
     rate: RateIn | None = None
     statistical: StatisticalIn | None = None
+    approach: ApproachIn | None = None
     pattern: PatternIn | None = None
     condition: tuple[ConditionIn, ...] = ()
     low: LimitsIn = LimitsIn()
@@ -118,6 +123,8 @@ class RuleIn(Form):
             raise ValueError("conditions belong to a pattern|leave them out")
         if not self.quantity:
             raise ValueError("quantity is missing|say what is measured")
+        if self.approach is not None and (self.quantity != LASH or self.unit != "h" or self.high.fact):
+            raise ValueError('approach tells hours of lash|give quantity = "lash", unit = "h", and limits in low alone')
         is_spec = self.bounds is not None and self.bounds.basis is Basis.SPEC
         if is_spec is bool(self.low.fact or self.high.fact):
             raise ValueError("limits: one is needed, but none with the check range of the engine|give low or high")
@@ -133,6 +140,8 @@ class RuleIn(Form):
         is_share = self.bounds is not None and self.bounds.basis is Basis.NAMEPLATE
         if is_percent or is_share:
             return self.unit == "%"
+        if self.approach is not None:
+            return True  # its unit is hours
         return dimension(self.unit) == dimension(QUANTITIES[self.quantity].unit)
 
     @property

@@ -149,6 +149,13 @@ class StatisticalIn(Form):
     least_samples: Annotated[int, Field(ge=3, le=10_000)]
 
 
+class ApproachIn(Form):
+    """The shape `approach`."""
+
+    end: End
+    least_change: Annotated[Decimal, Field(ge=0, le=1)] = Decimal(0)
+
+
 class ConditionIn(Form):
     """One condition of a pattern."""
 

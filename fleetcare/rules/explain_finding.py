@@ -11,7 +11,19 @@ from decimal import Decimal
 from fleetcare.domain.cautions import GENERAL
 from fleetcare.domain.findings import Evidence, Finding, Signal, Step
 from fleetcare.domain.quantities import plain
-from fleetcare.domain.rule_book import AgainstSheet, Basis, Bounds, By, Change, End, Pattern, Rate, Rule, Since
+from fleetcare.domain.rule_book import (
+    AgainstSheet,
+    Approach,
+    Basis,
+    Bounds,
+    By,
+    Change,
+    End,
+    Pattern,
+    Rate,
+    Rule,
+    Since,
+)
 from fleetcare.rules.judging.values import title
 
 _PLACES = ((10, 2), (1, 3), (0, 4))
@@ -125,6 +137,8 @@ def say_measured(rule: Rule) -> str:
         return f"{name}{_BASES.get(shape.basis, '')}"
     if isinstance(shape, AgainstSheet):
         return f"{name} {_COMPARED[shape.by]} the {shape.reference}{_OF_ALL.get(shape.reference, '')}"
+    if isinstance(shape, Approach):
+        return f"earliest hours of {name} to the {shape.end} end of its check range"
     if isinstance(shape, Change):
         return f"{name} {_COMPARED[shape.by]} {_BEFORE[shape.since]}"
     return f"rise of {name}" if isinstance(shape, Rate) else name

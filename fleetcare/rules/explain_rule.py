@@ -7,6 +7,7 @@ from enum import StrEnum
 from fleetcare.domain.quantities import plain
 from fleetcare.domain.rule_book import (
     AppliesTo,
+    Approach,
     Asks,
     Basis,
     Bounds,
@@ -93,6 +94,8 @@ def say_judged(rule: Rule) -> str:
     told = say_measured(rule)
     if isinstance(shape, Statistical):
         told = f"{told} against {shape.least_samples} or more samples of the {shape.pool} pool"
+    if isinstance(shape, Approach) and shape.least_change:
+        told = f"{told} where it moved by {plain(shape.least_change)} mm or more"
     where = [*(f"at {point}" for point in rule.points), *(str(phase) for phase in rule.phases)]
     together = ["all points in one finding"] if rule.of_engine else []
     return ", ".join([told, *where, *_words(rule), *together])

@@ -57,7 +57,7 @@ def judge_value(value: SheetValue, side: Side, spec: LashSpec | None, condition:
     why = why_unjudged(side, spec, condition)
     if spec is None or why is not None:
         return Judgement(value, Verdict.NOT_JUDGED, unjudged=why)
-    return _hold(value, spec.ranges[side], spec.unit)
+    return _hold(value, spec, side, condition)
 
 
 def why_unjudged(side: Side, spec: LashSpec | None, condition: str) -> Unjudged | None:
@@ -87,8 +87,8 @@ def stand_of(judged: Sequence[Judgement], points: Sequence[LashPoint]) -> LashSt
     )
 
 
-def _hold(value: SheetValue, limits: tuple[Decimal, Decimal], unit: str) -> Judgement:
-    (goes, stops), (least, most) = value.ends, limits
+def _hold(value: SheetValue, spec: LashSpec, side: Side, condition: str) -> Judgement:
+    (goes, stops), (least, most), unit = value.ends, spec.ranges[side], spec.unit
     if value.unit != unit:
         goes, stops, least, most = (
             figure * MM_PER[own]
@@ -107,6 +107,8 @@ def _hold(value: SheetValue, limits: tuple[Decimal, Decimal], unit: str) -> Judg
         off_least=standing.off_least,
         unit=unit,
         unjudged=Unjudged.UNDECIDED if standing.place is Place.UNDECIDED else None,
+        taken=condition or spec.condition,
+        asked=spec.condition,
     )
 
 

@@ -4,8 +4,10 @@ The true cause is stated here, not read off the program: exhaust 4 of PS-03 clos
 and at the last job on LE-1 the exhausts of cylinders 5 and 6 were set by the figure of the intakes.
 """
 
+import shutil
 from datetime import date, timedelta
 from decimal import Decimal
+from pathlib import Path
 from typing import NamedTuple
 
 import pytest
@@ -24,6 +26,7 @@ from fleetcare.operations.rows import fetch
 from fleetcare.rules.due.row import due_row
 from fleetcare.rules.trends import cut_at_adjustments, fit_trend
 from tests.demo.test_demo_fleet import ANCHOR, COMMITTED
+from tests.demo.true_causes import ahead
 
 CLOSING, CLOSING_POINT = "PS-03", "4E"
 BADLY_SET, BADLY_SET_POINTS = "LE-1", ("5E1", "5E2", "6E1", "6E2")
@@ -140,6 +143,22 @@ def test_every_kind_of_valve_train_has_a_past_of_its_lash(tag: str, points: int,
         pasts = load_lash_past(connection, item, item_facts(connection, ANCHOR, [item.id])[0])
     assert len(pasts) == points, what
     assert all(len(past.checks) >= 3 for past in pasts), what
+
+
+def test_the_gaps_said_to_come_to_their_limit_soon_lie_next_to_it_and_have_been_closing(
+    tmp_path: Path,
+) -> None:
+    """All exhausts of the fleet close (`fleetcare/demo/wear.py`), and some were found a hundredth or two above their range."""
+    path = tmp_path / "fleet.db"
+    shutil.copy(COMMITTED, path)
+    plates = {item.tag: item.plate for item in ITEMS}
+    found = ahead(path, ANCHOR)
+    assert {tag for tag, _ in found} == {"LE-1", "MP-4", "PS-01", "PS-07"}
+    for tag, point in found:
+        least = Decimal(str(plates[tag]["lash_exhaust"]).partition("-")[0])
+        gaps = [gap for sheet in told(tag, ANCHOR) for (name, _), gap in sheet.gaps.items() if name == point]
+        assert least <= gaps[-1] <= least + Decimal("0.02"), (tag, point)
+        assert min(gaps) <= max(gaps) - Decimal("0.02"), (tag, point)
 
 
 def test_shims_two_blades_a_hot_sheet_and_notes_in_passing_are_among_the_sheets() -> None:

@@ -7,6 +7,7 @@ from typing import NamedTuple
 from fleetcare.context import Context
 from fleetcare.operations.finding_rows import finding_rows
 from fleetcare.rules.finding_life import FindingState
+from fleetcare.rules.finding_record import FindingRecord
 
 ENGINE = "the engine"
 
@@ -21,7 +22,7 @@ class Cause(NamedTuple):
 
 TRUE = {
     "PS-02": Cause("leaking injector", ENGINE, is_alarm=False),  # fuel in the oil, and thin with it
-    "PS-03": Cause("leaking valves", "cylinder 4", is_alarm=True),  # its exhaust closes, see test_demo_lash
+    "PS-03": Cause("closing exhaust valve", "cylinder 4", is_alarm=True),  # its seat burns away, see test_demo_lash
     "PS-07": Cause("bearing wear", ENGINE, is_alarm=True),  # lead, tin and copper
     "PS-09": Cause("coolant in the oil", ENGINE, is_alarm=True),  # sodium, potassium, copper and water
     "EX-1": Cause("dirt", ENGINE, is_alarm=True),  # silicon to aluminium as in dust, and iron
@@ -43,14 +44,26 @@ HEALTHY = ("PS-01", "PS-04", "PS-06", "PS-10", "EX-2", "TH-1", "LE-1", "TR-3", "
 _OVER = {FindingState.CLEARED, FindingState.JOINED, FindingState.WITHDRAWN}
 
 
+_AHEAD = {"lash-closing", "lash-opening"}
+
+
 def standing(path: Path, day: date) -> dict[str, list[Cause]]:
-    """What stands on the engines of a file on a day, answered or not."""
-    with Context(str(path), day).read() as connection:
-        rows = [row for row in finding_rows(connection, day) if row.state not in _OVER]
+    """What stands on the engines of a file on a day, answered or not, but gaps inside their range that come to its end."""
+    rows = [row for row in _rows(path, day) if row.rule not in _AHEAD]
     return {
         tag: [Cause(row.cause, row.subject, row.severity == "alarm") for row in rows if row.engine == tag]
         for tag in {row.engine for row in rows}
     }
+
+
+def ahead(path: Path, day: date) -> list[tuple[str, str]]:
+    """The gaps of a file that come to an end of their range soon, as it says on a day: the engine and the point of each."""
+    return [(row.engine, row.subject) for row in _rows(path, day) if row.rule in _AHEAD]
+
+
+def _rows(path: Path, day: date) -> list[FindingRecord]:
+    with Context(str(path), day).read() as connection:
+        return [row for row in finding_rows(connection, day) if row.state not in _OVER]
 
 
 def has_proved(day: date) -> bool:

@@ -127,6 +127,10 @@ BAD = {
         OWN.replace("bounds = {}", 'bounds = { basis = "spec", end = "low", is_set = true }'),
         'end or is_set goes with basis "spec"',
     ),
+    "approach of no gap": (
+        OWN.replace("bounds = {}", 'approach = { end = "low" }'),
+        'approach tells hours of lash; give quantity = "lash", unit = "h", and limits in low alone',
+    ),
     "own condition": (
         OWN + '[[rule.condition]]\nquantities = "Fe"\nasks = "clear"\n',
         "conditions belong to a pattern; leave them out",

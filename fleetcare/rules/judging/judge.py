@@ -12,6 +12,7 @@ from typing import assert_never
 from fleetcare.domain.findings import Evidence, NotJudged, Signal
 from fleetcare.domain.rule_book import (
     AgainstSheet,
+    Approach,
     Basis,
     Bounds,
     Change,
@@ -20,10 +21,12 @@ from fleetcare.domain.rule_book import (
     Rule,
     SingleShape,
     Statistical,
+    ValueShape,
     worst,
 )
 from fleetcare.domain.sheets import Verdict
 from fleetcare.rules.judging import bounds, comparing, rates, statistics
+from fleetcare.rules.judging.approach import approach_signals
 from fleetcare.rules.judging.facts import CannotTell, Figure, MeasuredFacts
 from fleetcare.rules.judging.hold import hold
 from fleetcare.rules.judging.lash import lash_signals
@@ -96,6 +99,9 @@ def _tell(rule: Rule, shape: SingleShape, facts: MeasuredFacts) -> Iterator[Sign
     if isinstance(shape, Bounds) and shape.basis is Basis.SPEC:
         yield from lash_signals(rule, shape, facts.lash.get(facts.sheet.entry, ()), facts.sheet)
         return
+    if isinstance(shape, Approach):
+        yield from approach_signals(rule, shape, facts)
+        return
     for point in contradictions(facts.sheet, rule.quantity, rule.phases):
         yield NotJudged(rule, point, "it was entered twice, with different values")
     values = judged_phases(values_of(facts.sheet, rule.quantity), rule.phases, rule.points)
@@ -112,7 +118,7 @@ def _tell(rule: Rule, shape: SingleShape, facts: MeasuredFacts) -> Iterator[Sign
             yield hold(rule, figure, facts) or figure.flagged
 
 
-def _figure(rule: Rule, shape: SingleShape, one: Measured, values: Sequence[Measured], facts: MeasuredFacts) -> Figure:
+def _figure(rule: Rule, shape: ValueShape, one: Measured, values: Sequence[Measured], facts: MeasuredFacts) -> Figure:
     match shape:
         case Bounds():
             return bounds.figure(rule, shape, one, values, facts)

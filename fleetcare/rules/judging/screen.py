@@ -16,6 +16,7 @@ from fleetcare.domain.measured import MeasuredSheet
 from fleetcare.domain.measures import QUANTITIES, can_convert, exactly
 from fleetcare.domain.rule_book import (
     AgainstSheet,
+    Approach,
     Basis,
     Best,
     Bounds,
@@ -30,6 +31,7 @@ from fleetcare.domain.rule_book import (
     Statistical,
 )
 from fleetcare.domain.sheets import Phase
+from fleetcare.rules.judging.approach import is_far
 from fleetcare.rules.judging.facts import MeasuredFacts
 from fleetcare.rules.judging.pools import MOST_OF_FAMILY, newest_first
 from fleetcare.rules.judging.pools import Pool as Samples
@@ -83,6 +85,8 @@ class Screened:
                 return fresh_of(facts.sheet, facts.fresh, rule.quantity) is None
             case Rate(Since.NEW):
                 return not _has_hours(facts.sheet, shape)
+            case Approach():
+                return is_far(shape, facts)
             case Statistical():
                 pool = facts.pools.own if shape.pool is Pool.OWN else facts.pools.family
                 if _is_usual(_in_unit(seen, rule.unit), pool, shape, rule):
