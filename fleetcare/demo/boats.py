@@ -2,6 +2,7 @@
 
 from fleetcare.demo.items import Ago, Item, Kept, Meter, Shown, Told
 from fleetcare.demo.measured import Measured, Tested
+from fleetcare.demo.oil import Followed
 from fleetcare.demo.plans import Counted, Dated, Each, FromNew
 from fleetcare.demo.plates import BOAT, OUTBOARD
 from fleetcare.demo.steps import Verb
@@ -32,7 +33,11 @@ BOATS = (
         1118,
         {**BOAT, "name": "Port main", "sump": "9", "machine": "WB-1", "position": "port"},
         (Meter("hours", "h", 2260, weed_boat, seed="WB-1"),),
-        measured=Measured(tested=(Tested(41, "spot", ("oil_pressure,,,330", "coolant,,,79")),)),
+        # Gas oil with much sulphur was bunkered: it uses up the base number before the oil is due.
+        measured=Measured(
+            Followed(20, gains={"tbn": "-4.0"}, topped_up=(10, 65), is_stated=False),
+            (Tested(41, "spot", ("oil_pressure,,,330", "coolant,,,79")),),
+        ),
         tasks=(
             Kept({**OIL, "every": ["200h", "12mo"]}, Counted(200, 60)),
             Kept(_GEAR_OIL, Dated(12, -25)),

@@ -6,7 +6,7 @@ from datetime import date, timedelta
 from fleetcare.demo.fleet import ITEMS, SHOP
 from fleetcare.demo.items import Ago, Item, Shown
 from fleetcare.demo.lash import gauged_steps
-from fleetcare.demo.measured import sheets_of
+from fleetcare.demo.measured import sheets_of, topped_up_days
 from fleetcare.demo.odd import odd_readings
 from fleetcare.demo.rules import NAME, TEXT, WHY
 from fleetcare.demo.steps import Step, Verb, in_order
@@ -27,8 +27,10 @@ def history(anchor: date, items: Sequence[Item] = ITEMS, changeover: int = CHANG
         own = {"name": NAME, "text": TEXT, "why": WHY, "by": "Harbin"}
         steps.append(Step(yard.changeover, yard.changeover, Verb.RULES, values=own))
     for item in items:
+        measured = list(_measured(yard, item))
         work = [*_work(yard, item), *gauged_steps(yard, item, _mechanic(item))]
-        steps += [*_arrival(yard, item), *work, *_told(yard, item), *_rounds(yard, item, work), *_measured(yard, item)]
+        busy = [*work, *(step for step in measured if step.verb is Verb.LOG)]
+        steps += [*_arrival(yard, item), *work, *_told(yard, item), *_rounds(yard, item, busy), *measured]
     return in_order(steps)
 
 
@@ -54,8 +56,10 @@ def _arrival(yard: Yard, item: Item) -> Iterator[Step]:
 def _work(yard: Yard, item: Item) -> Iterator[Step]:
     """Log every job done, save those a sheet came of."""
     by = _mechanic(item)
+    gauged = item.gauged.task if item.gauged is not None else None
+    pressed = item.measured.pressed.task if item.measured is not None and item.measured.pressed is not None else None
     for kept in item.tasks:
-        if item.gauged is not None and kept.name == item.gauged.task:
+        if kept.name in {gauged, pressed}:
             continue
         note = kept.note
         for day, dial in kept.plan.work(yard, item.tag, kept.name):
@@ -65,10 +69,15 @@ def _work(yard: Yard, item: Item) -> Iterator[Step]:
 
 
 def _measured(yard: Yard, item: Item) -> Iterator[Step]:
-    """Measure in passing; sheets from before the changeover came with it, from paper."""
+    """Measure in passing or with a job, and top up; sheets from before the changeover came with it, from paper."""
+    by = _mechanic(item)
     for taken in sheets_of(yard, item):
-        values = {"sheet": taken.sheet, "kind": taken.kind, "by": _mechanic(item), **taken.values}
-        yield Step(taken.on, max(taken.on, yard.changeover), Verb.SHEET, item.tag, values)
+        values = {"sheet": taken.sheet, "kind": taken.kind, "by": by, **taken.values}
+        verb = Verb.LOG if "at" in taken.values else Verb.SHEET
+        yield Step(taken.on, max(taken.on, yard.changeover), verb, item.tag, values)
+    for on, litres in topped_up_days(yard, item):
+        values = {"top_up": litres, "at": [yard.dial(item.tag, on)], "by": by}
+        yield Step(on, max(on, yard.changeover), Verb.LOG, item.tag, values)
 
 
 def _mechanic(item: Item) -> str:

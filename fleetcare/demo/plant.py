@@ -2,7 +2,7 @@
 
 from fleetcare.demo.items import Ago, Item, Kept, Meter, Told
 from fleetcare.demo.measured import Measured, Tested
-from fleetcare.demo.oil import Sampled
+from fleetcare.demo.oil import Followed, Sampled
 from fleetcare.demo.plans import Counted, Dated, Each, FromNew
 from fleetcare.demo.plates import DIGGER, TRACTOR
 from fleetcare.demo.small import SMALL_ENGINES
@@ -81,11 +81,13 @@ _TRACTORS = (
         1114,
         {**TRACTOR, "name": "Tractor with side-arm mower", "rated_kw": "81", **_YARD},
         (Meter("hours", "h", 2655, tractor, unread=2, digits="5.1"),),
+        # A sound oil, changed by the book rather than by what it is like.
         measured=Measured(
+            Followed(50, fills=2, topped_up=(70, 160)),
             tested=(
                 Tested(182, "spot", ("oil_pressure,,,310", "coolant,,,84")),
                 Tested(44, "spot", ("oil_pressure,,,300", "coolant,,,86")),
-            )
+            ),
         ),
         tasks=(
             Kept({**OIL, "every": ["250h"]}, Counted(250, 19)),

@@ -7,6 +7,7 @@ Values = Mapping[str, object]
 HOT_OIL = "Hot oil: let it cool, wear gloves. Used oil harms skin and must not reach a drain."
 ROTATING = "Isolate and lock out the starter; keep clear of rotating parts."
 UNDER_PRESSURE = "Let the pressure off first; never feel for a leak by hand."
+_CRANKING = "Fuel off before cranking; crank from a switch at arm's length, clear of rotating parts."
 _HOT_COOLANT = "Never open the cap hot."
 _BATTERY = "Battery gas can explode: no flame, eye protection."
 
@@ -23,6 +24,13 @@ LASH: Values = {
     "needs_sheet": "lash",
     "labour": "3h",
     "caution": ROTATING,
+}
+COMPRESSION: Values = {
+    "name": "Compression test",
+    "work": "compression",
+    "needs_sheet": "compression",
+    "labour": "2h",
+    "caution": _CRANKING,
 }
 FUEL_FILTER: Values = {
     "name": "Fuel filter",

@@ -18,6 +18,7 @@ from fleetcare.operations.upkeep import check
 from tests.cli.conftest import Runner
 from tests.cli.conftest import fleetcare as fleetcare  # the fixture
 from tests.demo.features import ALL, missing, stand_of
+from tests.demo.true_ahead import PULLED, SOUND, advised_longer, called_early
 from tests.demo.true_causes import TRUE, has_proved, standing
 
 COMMITTED = Path(__file__).parents[2] / "demo_fleet.db"
@@ -116,6 +117,8 @@ def test_built_for_an_odd_day_the_demo_fleet_is_sound_and_shows_everything(ancho
         assert missing(stand_of(item_facts(connection, anchor)), ALL) == []
     expected = {tag: [cause] for tag, cause in TRUE.items() if tag != "SB-04" or has_proved(anchor)}
     assert standing(path, anchor) == expected
+    assert called_early(path, anchor) == {line: ahead.subject for line, ahead in PULLED.items()}
+    assert [*advised_longer(path, anchor)] == [SOUND]
 
 
 def test_months_later_the_demo_fleet_says_what_is_probably_due_from_meters_long_unread() -> None:
