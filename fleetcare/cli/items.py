@@ -17,7 +17,7 @@ _SHARED = {
 _NAMEPLATE = {
     "--machine": ("TAG", "machine it is fitted in"),
     "--position": ("TEXT", "where in the machine, such as port"),
-    "--duty": ("TEXT", "what it is used for, such as standby"),
+    "--duty": ("TEXT", "what it is used for, such as standby or marine propulsion; rules for marine engines go by it"),
     "--cylinders": ("N", "number of cylinders"),
     "--layout": ("LAYOUT", "inline, v, opposed or single"),
     "--numbering": ("HOW", "cylinders of a V: by-bank or alternating"),

@@ -24,6 +24,7 @@ from fleetcare.operations.top_ups import load_top_ups
 from fleetcare.rules.judge_engine import Background
 from fleetcare.rules.judge_lash import judge_sheet
 from fleetcare.rules.lash_points import banks, lash_points
+from fleetcare.rules.nameplate import says_marine
 from fleetcare.rules.oil_fills import top_up, with_logged
 
 if TYPE_CHECKING:
@@ -128,6 +129,7 @@ def _engine(row: Row) -> tuple[MeasuredEngine, ValveTrain | None]:
         banks=banks(train) if train else (),
         adjuster=adjuster,
         duty=duty,
+        is_marine=says_marine(duty),
         oil_grade=grade,
         sump=figure(sump),
         rated_kw=figure(rated),

@@ -1,4 +1,4 @@
-"""What a nameplate may say: only what cannot be true of any four-stroke engine is refused."""
+"""What a nameplate may say: only what cannot be true of any four-stroke engine is refused; and what its duty says."""
 
 import re
 from collections import Counter
@@ -15,6 +15,7 @@ UNIT_WORDS = {"mm": "mm", "in": "inches"}
 
 _ORDER = re.compile(r"[0-9]{1,3}(?:-[0-9]{1,3})*", re.ASCII)
 _RANGE = re.compile(r"\s*(\d*\.?\d+)\s*-\s*(\d*\.?\d+)\s*(mm|in)?\s*", re.ASCII)
+_MARINE = re.compile(r"(?<!non-)(?<!non )(?<!not )\b(marine|[a-z]*boat|ship|vessel)s?\b", re.IGNORECASE)
 _SETTING = re.compile(r"\s*(\d*\.?\d+)\s*(mm|in)?\s*", re.ASCII)
 
 
@@ -90,6 +91,11 @@ def parse_lash_setting(text: str) -> tuple[Decimal, LashUnit]:
     setting = Decimal(found[1])
     check_positive("lash", setting)
     return setting, "in" if found[2] == "in" else "mm"
+
+
+def says_marine(duty: str) -> bool | None:
+    """Say whether a duty in words is one at sea: marine, a boat, ship or vessel of some kind. None where it says nothing."""
+    return bool(_MARINE.search(duty)) if duty.strip() else None
 
 
 def _cylinders(numbers: list[int]) -> str:

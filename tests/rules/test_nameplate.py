@@ -12,6 +12,7 @@ from fleetcare.rules.nameplate import (
     check_positive,
     parse_lash_range,
     parse_lash_setting,
+    says_marine,
 )
 
 
@@ -39,6 +40,27 @@ def test_a_wrong_firing_order_is_refused_with_the_cylinders_named(order: str, cy
     with pytest.raises(Refused) as refused:
         check_firing_order(order, cylinders)
     assert refused.value.detail == f"firing order {order} {wrong}"
+
+
+@pytest.mark.parametrize(
+    ("duty", "is_marine"),
+    [
+        ("marine propulsion", True),
+        ("Marine emergency", True),
+        ("workboat", True),
+        ("ship's pump", True),
+        ("two vessels", True),
+        ("land drainage pump", False),
+        ("non-marine standby", False),
+        ("not marine", False),
+        ("shipyard crane", False),
+        ("submarine cable winch", False),
+        ("", None),
+        ("  ", None),
+    ],
+)
+def test_a_duty_says_that_it_is_marine_that_it_is_not_or_nothing(duty: str, is_marine: bool | None) -> None:
+    assert says_marine(duty) is is_marine
 
 
 @pytest.mark.parametrize("order", ["", "1-", "1,3,4,2", "1-x", "1--2", "-1", "1-²"])

@@ -17,7 +17,7 @@ CYLINDERS = Field("cylinders", "Cylinders", "how many")
 FIRING_ORDER = Field("firing_order", "Firing order", "such as 1-5-3-6-2-4")
 
 _ENGINE = (
-    Field("duty", "Duty", "what it is used for, such as standby", group="ENGINE"),
+    Field("duty", "Duty", "what it is used for, such as standby or marine propulsion", group="ENGINE"),
     FUEL,
     CYLINDERS,
     Field("layout", "Layout", "how its cylinders stand", choices=("inline", "v", "opposed", "single")),
