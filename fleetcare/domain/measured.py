@@ -41,6 +41,7 @@ class MeasuredSheet:
     `gauge` is the gauge, tester or laboratory. `engine_hours` is the life total of the engine then. `received_on` is the
     day results came, where they came later. `logged_top_up` are the litres the log has as topped up on the oil of a sample
     that does not state them itself, None where it has none.
+    `condition` is cold, hot or empty where nobody said.
     """
 
     entry: int
@@ -52,6 +53,7 @@ class MeasuredSheet:
     engine_hours: Decimal | None = None
     received_on: date | None = None
     logged_top_up: Decimal | None = None
+    condition: str = ""
     memo: dict[tuple[str, str], Any] = field(default_factory=dict, init=False, repr=False, compare=False)
     """What rules look up on this very sheet again and again, worked out once; no part of what was measured."""
 

@@ -42,7 +42,7 @@ class Wear:
 
 @dataclass(frozen=True, slots=True)
 class MeasuredWears:
-    """What the compression and oil sheets of an engine show.
+    """What the sheets of an engine show: of lash, compression and oil.
 
     `pulling` is what pulls checks forward. `sound_oil` is all that was fitted of an oil whose newest sample flags nothing,
     with the nearest limits; none where it flags something.

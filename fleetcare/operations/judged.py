@@ -27,6 +27,7 @@ from fleetcare.operations.wears_json import WEARS_FORM, wears_of, wears_text
 from fleetcare.rules.finding_life import FindingLife, finding_lives
 from fleetcare.rules.judge_history import judge_history
 from fleetcare.rules.judging.applies import rules_for
+from fleetcare.rules.lash_wear import lash_shown
 from fleetcare.rules.measured_wear import measured_wears
 
 if TYPE_CHECKING:
@@ -93,16 +94,27 @@ def judge_lives(found: EngineSheets, book: "RuleBook", firsts: dict[int, int]) -
 
 
 def wears_judged(connection: "Connection", ids: Sequence[int]) -> dict[int, MeasuredWears]:
-    """Give what the newest sheets of some engines show over their hours, judged anew where what is kept does not hold."""
-    found = _current(connection, shop_texts(connection, date.max), ids, None)
+    """Give what the newest sheets of some engines show over their hours, judged anew where what is kept does not hold.
+
+    Where the shop's rules no longer fit this program, none can be judged: only what their lash shows is given.
+    """
+    try:
+        found = _current(connection, shop_texts(connection, date.max), ids, None)
+    except Refused:
+        return wears_anew(connection, date.max, ids)
     keep_later(connection, found.made)
     return {item: wears_of(row.content.partition("\n")[0])[0] for item, row in found.rows.items()}
 
 
 def wears_anew(connection: "Connection", on: date, ids: Sequence[int]) -> dict[int, MeasuredWears]:
-    """Give what the sheets of some engines up to a day show over their hours, by the rules of that day."""
-    book = book_in_force(connection, on)
-    return {found.item_id: _wears(found, book) for found in load_engine_sheets(connection, on, ids)}
+    """Give what the sheets of some engines up to a day show over their hours, by the rules of that day.
+
+    Where those no longer fit this program, only what their lash shows is given, which asks no rule.
+    """
+    book = None
+    with suppress(Refused):
+        book = book_in_force(connection, on)
+    return {found.item_id: _wears(found, book, on) for found in load_engine_sheets(connection, on, ids)}
 
 
 def refresh(connection: "Connection", ids: Iterable[int] | None = None, progress: Progress | None = None) -> None:
@@ -155,12 +167,17 @@ def _made(
     if before is not None and before.facts == facts:
         return before.at(head)
     book = book_of(texts)
-    wears = wears_text(_wears(found, book), book_digest(texts))
+    wears = wears_text(_wears(found, book, date.max), book_digest(texts))
     return Kept(found.item_id, head, digest, facts, f"{wears}\n{lives_text(judge_lives(found, book, firsts))}")
 
 
-def _wears(found: EngineSheets, book: "RuleBook") -> MeasuredWears:
-    return measured_wears(found.sheets, found.engine, rules_for(book, found.engine), found.background)
+def _wears(found: EngineSheets, book: "RuleBook | None", on: date) -> MeasuredWears:
+    """Give what sheets up to a day show; without rules that of their lash alone."""
+    lash = tuple(lash_shown(found.sheets, found.engine, found.points, found.specs, on))
+    if book is None:
+        return MeasuredWears(lash)
+    told = measured_wears(found.sheets, found.engine, rules_for(book, found.engine), found.background)
+    return MeasuredWears((*lash, *told.pulling), told.sound_oil)
 
 
 def _facts_digest(found: EngineSheets, firsts: dict[int, int]) -> str:
@@ -168,8 +185,8 @@ def _facts_digest(found: EngineSheets, firsts: dict[int, int]) -> str:
     chains = [first_of(firsts, sheet.entry) for sheet in found.sheets]
     behind = found.background
     return _digest(
-        repr((found.engine, found.sheets, chains, behind.fresh, behind.family.mark)),
-        repr((behind.lash, sorted(behind.holidays))),
+        repr((found.engine, found.points, found.specs, found.sheets, chains)),
+        repr((behind.fresh, behind.family.mark, sorted(behind.holidays))),
     )
 
 

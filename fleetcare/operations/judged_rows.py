@@ -66,7 +66,8 @@ def newest_day(connection: "Connection") -> date:
     """Give the newest day anything judging looks at is dated: before it, less was known than what is kept rests on."""
     rows = fetch(
         connection,
-        "select max(coalesce((select max(taken_on) from sheet), ''), coalesce((select max(\"on\") from reading), ''))",
+        'select max(day) from (select max(taken_on) as day from sheet union all select max("on") from reading'
+        " union all select max(from_on) from lash_spec)",
     )
     return known_day(rows[0][0]) if rows[0][0] else date.min
 

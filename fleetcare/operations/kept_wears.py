@@ -1,16 +1,14 @@
-"""What compression and oil of engines show over their hours, from what is kept of judged engines.
+"""What the sheets of engines show over their hours, from what is kept of judged engines.
 
 Light to load, as every due list needs it: judging is loaded only for engines of which what is kept does not hold.
 """
 
 from collections.abc import Sequence
-from contextlib import suppress
 from datetime import date
 from typing import TYPE_CHECKING
 
 from fleetcare.db.chain import last_entry
 from fleetcare.domain.wear import MeasuredWears
-from fleetcare.errors import Refused
 from fleetcare.operations.judged_rows import newest_day
 from fleetcare.operations.judged_touched import touched
 from fleetcare.operations.rows import fetch
@@ -25,24 +23,21 @@ _FAR_BEHIND = 200
 
 
 def kept_wears(connection: "Connection", on: date, ids: Sequence[int]) -> dict[int, MeasuredWears]:
-    """Give them of some engines, as known on a day; what had to be worked out is kept as `finding_lives_on` says.
+    """Give it of some engines, as known on a day; what had to be worked out is kept as `finding_lives_on` says.
 
-    Where the shop's rules no longer fit this program, nothing is told of engines that would have to be judged.
+    Where the shop's rules no longer fit this program, only lash is told of engines that would have to be judged.
     """
     texts = shop_texts(connection, on)
     if texts != shop_texts(connection, date.max) or on < newest_day(connection):
         from fleetcare.operations.judged import wears_anew  # days gone by are rarely asked about
 
-        with suppress(Refused):
-            return wears_anew(connection, on, ids)
-        return {}
+        return wears_anew(connection, on, ids)
     found = _that_hold(connection, ids, book_digest(texts))
     wanting = [item for item in ids if item not in found]
     if wanting:
         from fleetcare.operations.judged import wears_judged  # takes longer to load than the due list
 
-        with suppress(Refused):
-            found |= wears_judged(connection, wanting)
+        found |= wears_judged(connection, wanting)
     return found
 
 

@@ -1,7 +1,7 @@
 """Sheets as the rules see them, of one engine or of many at once: facts out of rows, with plain SQL."""
 
 import sys
-from collections.abc import Mapping, Sequence
+from collections.abc import Sequence
 from dataclasses import dataclass, field
 from datetime import date
 from decimal import Decimal
@@ -12,7 +12,7 @@ from fleetcare.domain.measured import LASH, OIL, MeasuredEngine, MeasuredSheet, 
 from fleetcare.domain.meters import LifeFigure
 from fleetcare.domain.quantities import Kind
 from fleetcare.domain.sheet_kinds import GRADE, WORDS
-from fleetcare.domain.sheets import Judgement, LashSpec, Phase, Sheet, SheetValue, spec_on
+from fleetcare.domain.sheets import Judgement, LashPoint, LashSpec, Phase, Sheet, SheetValue, spec_on
 from fleetcare.operations.entries import SHEET_COUNTS
 from fleetcare.operations.families import Families
 from fleetcare.operations.kin import grade_key
@@ -33,12 +33,17 @@ if TYPE_CHECKING:
 
 @dataclass(frozen=True, slots=True)
 class EngineSheets:
-    """An engine as rules ask for it, with all its sheets up to a day, oldest first, and what is known beside them."""
+    """An engine as rules ask for it, with all its sheets up to a day, oldest first, and what is known beside them.
+
+    `points` are its lash points, none where the number of cylinders is not known, `specs` their limits in date order.
+    """
 
     item_id: int
     engine: MeasuredEngine
     sheets: tuple[MeasuredSheet, ...] = ()
     background: Background = field(default_factory=Background)
+    points: tuple[LashPoint, ...] = ()
+    specs: tuple[LashSpec, ...] = ()
 
 
 def measured_sheet(sheet: Sheet, engine_hours: Decimal | None = None) -> MeasuredSheet:
@@ -52,6 +57,7 @@ def measured_sheet(sheet: Sheet, engine_hours: Decimal | None = None) -> Measure
         gauge=sheet.gauge,
         engine_hours=engine_hours,
         received_on=sheet.received_on,
+        condition=sheet.condition,
     )
 
 
@@ -73,22 +79,22 @@ def load_engine_sheets(
     last = newest or (on, sys.maxsize)
     sheets = _load_sheets(connection, [row[0] for row in plates], on, last, trial)
     fresh = load_fresh(connection, last[0])
-    specs = specs_of(connection, [item for item, own in sheets.items() if any(one.kind == LASH for one, _ in own)])
-    conditions = {one.entry: condition for own in sheets.values() for one, condition in own}
-    silent = [item for item, own in sheets.items() if any(one.kind == OIL and top_up(one) is None for one, _ in own)]
+    specs = specs_of(connection, [item for item, own in sheets.items() if any(one.kind == LASH for one in own)])
+    silent = [item for item, own in sheets.items() if any(one.kind == OIL and top_up(one) is None for one in own)]
     top_ups = load_top_ups(connection, silent, last[0], on, trial)
     found = []
     for row in plates:
-        own = tuple(with_logged(sheet, top_ups.get(row[0], ())) for sheet, _ in sheets.get(row[0], ()))
+        own = tuple(with_logged(sheet, top_ups.get(row[0], ())) for sheet in sheets.get(row[0], ()))
         if not own and ids is None:
             continue
         engine, train = _engine(row)
+        points, limits = lash_points(train) if train else (), specs.get(row[0], ())
         background = Background(
             fresh=fresh.get(grade_in(own, engine), ()),
             family=families.of(row[0], max((sheet.on for sheet in own if sheet.kind == OIL), default=None)),
-            lash=_judge_lash(own, train, specs.get(row[0], ()), conditions),
+            lash=_judge_lash(own, points, limits),
         )
-        found.append(EngineSheets(row[0], engine, own, background))
+        found.append(EngineSheets(row[0], engine, own, background, points, limits))
     return found
 
 
@@ -138,8 +144,8 @@ def _engine(row: Row) -> tuple[MeasuredEngine, ValveTrain | None]:
 
 def _load_sheets(
     connection: "Connection", ids: Sequence[int], on: date, last: tuple[date, int], trial: Trial
-) -> dict[int, list[tuple[MeasuredSheet, str]]]:
-    """Load the sheets of some engines up to the last, oldest first, each with its condition, by engine."""
+) -> dict[int, list[MeasuredSheet]]:
+    """Load the sheets of some engines up to the last, oldest first, by engine."""
     rows = fetch(
         connection,
         "select sheet.item_id, sheet.id, sheet.entry_id, sheet.kind, sheet.taken_on, sheet.conditions, sheet.gauge,"
@@ -154,12 +160,12 @@ def _load_sheets(
     owners = list(dict.fromkeys(row[0] for row in rows))
     counters = load_counters(connection, owners, on, trial)
     own = {item: own_readings(found) for item, found in counters.items()}
-    sheets: dict[int, list[tuple[MeasuredSheet, str]]] = {}
+    sheets: dict[int, list[MeasuredSheet]] = {}
     for item, sheet_id, entry, kind, taken_on, condition, gauge, received in rows:
         taken = known_day(taken_on)
         life = entry_lives(counters.get(item, {}), own.get(item, {}), entry, taken).get(Kind.HOURS)
         sheet = Sheet(entry, kind, taken, values.get(sheet_id, ()), condition, gauge, received_on=day(received))
-        sheets.setdefault(item, []).append((measured_sheet(sheet, life.value if life else None), condition))
+        sheets.setdefault(item, []).append(measured_sheet(sheet, life.value if life else None))
     return sheets
 
 
@@ -196,15 +202,11 @@ def grade_in(sheets: Sequence[MeasuredSheet], engine: MeasuredEngine) -> str:
 
 
 def _judge_lash(
-    sheets: Sequence[MeasuredSheet],
-    train: ValveTrain | None,
-    specs: tuple[LashSpec, ...],
-    conditions: Mapping[int, str],
+    sheets: Sequence[MeasuredSheet], points: Sequence[LashPoint], specs: tuple[LashSpec, ...]
 ) -> dict[int, tuple[Judgement, ...]]:
     """Hold every lash sheet against the spec of its day, by entry."""
-    points = lash_points(train) if train else ()
     return {
-        one.entry: judge_sheet(one.values, points, spec_on(specs, one.on), conditions[one.entry])
+        one.entry: judge_sheet(one.values, points, spec_on(specs, one.on), one.condition)
         for one in sheets
         if one.kind == LASH
     }

@@ -37,22 +37,12 @@ def load_wears(
     ]
     ids = sorted({item for item, _ in asked})
     measured = set(fetch(connection, "select distinct item_id, kind from sheet where item_id in :ids", ids=ids))
-    owners = {
-        kind: sorted({item for item, asking in asked if asking == kind and (item, kind) in measured}) for kind in _ABOUT
-    }
-    judged = sorted({*owners[COMPRESSION], *owners[OIL]})
-    wears: dict[int, MeasuredWears] = {}
-    if judged:
-        from fleetcare.operations.kept_wears import kept_wears
+    owners = sorted({one[0] for one in asked if one in measured})
+    if not owners:
+        return {}
+    from fleetcare.operations.kept_wears import kept_wears
 
-        wears = kept_wears(connection, on, judged)
-    if owners[LASH]:
-        from fleetcare.operations.lash_wears import load_lash_wears
-
-        for item, lash in load_lash_wears(connection, {item: counters[item] for item in owners[LASH]}, on).items():
-            also = wears.get(item, MeasuredWears())
-            wears[item] = MeasuredWears((*lash, *also.pulling), also.sound_oil)
-    return wears
+    return kept_wears(connection, on, owners)
 
 
 def _counts_hours(counters: Mapping[Kind, CounterHistory]) -> bool:

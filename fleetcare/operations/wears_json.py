@@ -9,7 +9,7 @@ from fleetcare.domain.quantities import Kind
 from fleetcare.domain.trends import End, Point, Segment
 from fleetcare.domain.wear import MeasuredWears, Wear
 
-WEARS_FORM = "2"
+WEARS_FORM = "3"
 """Another one when what is written, or how it is worked out, becomes another."""
 
 

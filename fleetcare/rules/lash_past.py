@@ -17,6 +17,7 @@ from enum import StrEnum
 from itertools import groupby
 
 from fleetcare.domain.engines import Side
+from fleetcare.domain.measured import MeasuredSheet
 from fleetcare.domain.sheets import LASH, Judgement, LashPoint, LashSpec, Phase, Sheet, SheetValue, spec_on
 from fleetcare.domain.trends import Check
 from fleetcare.rules.judge_lash import ANY, judge_value, why_unjudged
@@ -107,7 +108,7 @@ def places_of(sheets: Sequence[Sheet], hours: CounterHistory | None) -> dict[int
 
 def lash_past(
     points: Sequence[LashPoint],
-    sheets: Sequence[Sheet],
+    sheets: Sequence[Sheet | MeasuredSheet],
     specs: tuple[LashSpec, ...],
     at: Mapping[int, Decimal],
     on: date,
@@ -136,7 +137,9 @@ def _checks(values: Sequence[PastValue]) -> Iterator[Check]:
             yield Check(at, gaps.get(Phase.FOUND), gaps.get(Phase.LEFT), is_set)
 
 
-def _read(sheet: Sheet, spec: LashSpec | None, newest: LashSpec | None, at: Decimal | None) -> list[PastValue]:
+def _read(
+    sheet: Sheet | MeasuredSheet, spec: LashSpec | None, newest: LashSpec | None, at: Decimal | None
+) -> list[PastValue]:
     """Give the gaps of a sheet, those found first."""
     values = []
     taken = sheet.condition or (spec.condition if spec is not None else ANY)

@@ -1,14 +1,30 @@
 """The lash points of an engine as what wears: each with the values that make its line and the check range it is to stay in."""
 
-from collections.abc import Iterable, Iterator
+from collections.abc import Iterable, Iterator, Sequence
+from datetime import date
 
+from fleetcare.domain.measured import MeasuredEngine, MeasuredSheet
 from fleetcare.domain.quantities import Kind
-from fleetcare.domain.sheets import LASH, LashSpec
+from fleetcare.domain.sheets import LASH, LashPoint, LashSpec, spec_on
 from fleetcare.domain.trends import End, Point, Segment
 from fleetcare.domain.wear import Wear
 from fleetcare.rules.lash import MM_PER
-from fleetcare.rules.lash_past import PointPast
+from fleetcare.rules.lash_past import PointPast, lash_past
 from fleetcare.rules.trends import cut_at_adjustments
+
+
+def lash_shown(
+    sheets: Sequence[MeasuredSheet],
+    engine: MeasuredEngine,
+    points: Sequence[LashPoint],
+    specs: tuple[LashSpec, ...],
+    on: date,
+) -> Iterator[Wear]:
+    """Give what an engine's sheets, oldest first, show of its lash up to a day; nothing where adjusters leave no gap."""
+    taken = [sheet for sheet in sheets if sheet.kind == LASH]
+    if taken and engine.adjuster != "hydraulic":
+        at = {sheet.entry: sheet.engine_hours for sheet in taken if sheet.engine_hours is not None}
+        yield from lash_wears(lash_past(points, taken, specs, at, on), spec_on(specs, on))
 
 
 def lash_wears(pasts: Iterable[PointPast], spec: LashSpec | None) -> Iterator[Wear]:

@@ -187,7 +187,7 @@ def test_rules_of_the_shop_that_no_longer_fit_pull_nothing_and_break_nothing(ctx
     assert row(ctx, "Pressures").next_due_at == 2000
     with ctx.read() as connection:
         item = find_item(connection, "P-01").id
-        assert bool(kept_wears(connection, date(2026, 4, 30), [item])) is (from_on == TODAY)
+        assert bool(kept_wears(connection, date(2026, 4, 30), [item])[item].pulling) is (from_on == TODAY)
 
 
 def test_facts_of_an_engine_hold_what_pulls_and_what_is_sound(ctx: Context) -> None:

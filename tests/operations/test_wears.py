@@ -16,6 +16,7 @@ from fleetcare.operations.load import item_facts
 from fleetcare.operations.measure import measure
 from fleetcare.operations.page import full_page
 from fleetcare.operations.show import task_working
+from tests.cli.conftest import set_up
 from tests.operations.importing import TODAY, correct, engine, log, reading, task
 from tests.operations.sheet_yard import FOUND_IN, LASH, do, sheet, take, yard_with_valves
 
@@ -147,8 +148,7 @@ def test_engines_without_a_gap_without_cylinders_or_without_hours_are_passed_ove
     closing(ctx)
     engine(ctx, "P-02", meter=["distance"], start_at=["100km"], in_service="2024-01-01", cylinders=2, **LASH)
     task(ctx, "P-02", "Lash", every=["1000km"], needs_sheet="lash")
-    with ctx.write() as session:
-        session.connection().exec_driver_sql("update engine set adjuster = 'hydraulic'")
+    set_up(ctx.path, "engine edit P-01 --adjuster hydraulic")
     assert not is_pulled(ctx)
 
 
