@@ -21,7 +21,7 @@ from fleetcare.domain.rule_book import (
     Since,
     Statistical,
 )
-from fleetcare.domain.sheets import Judgement, SheetValue, Verdict
+from fleetcare.domain.sheets import Judgement, Phase, SheetValue, Verdict
 from fleetcare.rules.judging.screen import screened
 from tests.rules.measured import a_rule, a_sheet, beyond, facts, value
 
@@ -168,3 +168,34 @@ def test_what_is_worked_out_of_other_values_is_looked_at() -> None:
     assert clear(leak, value("leak", "5", point="1"))
     assert not clear(leak, value("supply", "80", "psi", "1"), value("held", "79", "psi", "1"))
     assert not clear(a_rule(quantity="wet_gain", unit="%", high=HIGH))
+
+
+def test_a_rule_on_wet_values_or_on_new_oil_is_looked_at() -> None:
+    """A glance sees neither, so it cannot be certain of them."""
+    assert not clear(
+        a_rule(quantity="pressure", unit="kPa", phases=(Phase.WET,)), value("pressure", "5", "kPa", "1", "wet")
+    )
+    assert not clear(a_rule(phases=(Phase.NEW,)), value("Fe", "500", phase="new"))
+
+
+def test_points_are_compared_in_the_unit_of_the_rule_and_with_the_points_it_names() -> None:
+    """2 bar are 29 psi; 400 is 20 below the mean of 400 and 440, and above that of all three."""
+    spread = a_rule(
+        quantity="pressure",
+        unit="psi",
+        shape=AgainstSheet(Best.HIGHEST, By.DIFFERENCE),
+        low=Limits(beyond("-25")),
+        high=Limits(),
+    )
+    bar = [value("pressure", text, "bar", point) for point, text in (("1", "18"), ("2", "20"))]
+    assert not clear(spread, *bar)
+    named = a_rule(
+        quantity="exhaust",
+        unit="°C",
+        points=("1", "2"),
+        shape=AgainstSheet(Best.MEAN, By.DIFFERENCE),
+        low=Limits(beyond("-15")),
+        high=Limits(),
+    )
+    hot = [value("exhaust", text, "°C", point) for point, text in (("1", "400"), ("2", "440"), ("3", "340"))]
+    assert not clear(named, *hot)

@@ -65,9 +65,9 @@ class Screened:
         rule, shape = self.rule, self.rule.shape
         if (rule.words or rule.unless) and not says(facts.sheet, rule):
             return True
-        if _is_worked_out(facts.sheet, rule.quantity):
+        if _is_worked_out(facts.sheet, rule.quantity) or not {*rule.phases}.isdisjoint(_ASIDE):
             return False
-        seen = _look(facts.sheet, rule.quantity)
+        seen = [one for one in _look(facts.sheet, rule.quantity) if not rule.points or one.point in rule.points]
         match shape:
             case Bounds(Basis.AS_MEASURED | Basis.NAMEPLATE):
                 return self._all_within(_in_unit(seen, rule.unit))
@@ -76,7 +76,7 @@ class Screened:
             case Bounds(Basis.SPEC):
                 return not any(one.is_out for one in facts.lash.get(facts.sheet.entry, ()))
             case AgainstSheet():
-                return len(seen) < 2 or self._all_within(_compared(seen, shape))
+                return len(seen) < 2 or self._all_within(_compared(seen, shape, rule))
             case Change(Since.BEST_BEFORE):
                 return not facts.earlier
             case Change(Since.BEFORE):
@@ -173,10 +173,12 @@ def _line(unit: str, into: str) -> tuple[float, float] | None:
     return float(exactly(Fraction(1), unit, into) - zero), float(zero)
 
 
-def _compared(seen: Sequence[_Seen], shape: AgainstSheet) -> list[tuple[float, float]] | None:
+def _compared(seen: Sequence[_Seen], shape: AgainstSheet, rule: Rule) -> list[tuple[float, float]] | None:
     """Compare plain figures of one unit and phase with the best or the mean of all; None where they are not that."""
     first = seen[0]
     if any(one.low != one.high or one.unit != first.unit or one.phase is not first.phase for one in seen):
+        return None
+    if shape.by is By.DIFFERENCE and first.unit != rule.unit:
         return None
     figures = [one.low for one in seen]
     best = max(figures)
