@@ -11,8 +11,12 @@ def add_commands(commands: Commands) -> None:
     defer = commands.add_parser("defer", help="move one due point, with reason and name")
     defer.add_argument("tag", metavar="TAG")
     defer.add_argument("task", metavar="TASK")
-    defer.add_argument(
-        "--until", action="append", required=True, metavar="DATE|VALUE", help="a day, a dial figure, or both"
+    until = defer.add_mutually_exclusive_group(required=True)
+    until.add_argument("--until", action="append", metavar="DATE|VALUE", help="a day, a dial figure, or both")
+    until.add_argument(
+        "--as-advised",
+        action="store_true",
+        help="until the figure up to which a sound oil is advised to stay in; for supervisors",
     )
     defer.add_argument("--why", required=True, metavar="TEXT", help="reason")
     defer.add_argument("--by", required=True, metavar="NAME", help="who decides it")

@@ -4,7 +4,7 @@ from collections.abc import Sequence
 from datetime import date
 from typing import Annotated, Any, Self
 
-from pydantic import BeforeValidator, create_model, model_validator
+from pydantic import BeforeValidator, Field, ValidationInfo, create_model, field_validator, model_validator
 
 from fleetcare.domain.quantities import Figure, parse_dial
 from fleetcare.drafts.fields import Day, DaysOrDials, Dial, Dials, Hours, Litres, MeterKind, Note, Parts, Text, Texts
@@ -185,20 +185,32 @@ class CorrectionDraft(SheetOptions):
 
 
 class DeferralDraft(Draft):
-    """One due point to be moved: until a day, a dial figure, or the first of both."""
+    """One due point to be moved: until a day, a dial figure, or the first of both; or until the figure that is advised.
+
+    `until` beside `as_advised` is the figure somebody was told.
+    """
 
     tag: Text
     task: Text
-    until: DaysOrDials
+    as_advised: bool = False
+    until: DaysOrDials = Field((), validate_default=True)
     why: Text
     by: Text
     on: Day
 
-    @model_validator(mode="after")
-    def _check_ends(self) -> Self:
-        days = [end for end in self.until if isinstance(end, date)]
-        if not self.until or len(self.until) > 2 or len(days) > 1 or len(self.until) - len(days) > 1:
+    @field_validator("until")
+    @classmethod
+    def _check_ends(cls, until: tuple[date | Figure, ...], told: ValidationInfo) -> tuple[date | Figure, ...]:
+        days = [end for end in until if isinstance(end, date)]
+        if told.data.get("as_advised"):
+            if days or len(until) > 1:
+                raise Refused(
+                    "an advice ends at one dial figure", "leave it empty, or put the line off without the advice"
+                )
+        elif not until:
+            raise Misread("it is missing", "give a day, a dial figure or both")
+        if len(until) > 2 or len(days) > 1 or len(until) - len(days) > 1:
             raise Refused(
                 "a deferral ends on one day, at one dial figure, or at the first of both", "give --until once for each"
             )
-        return self
+        return until

@@ -8,10 +8,12 @@ from typing import TYPE_CHECKING
 from fleetcare.db.tables import Deferral, DeferralFigure
 from fleetcare.domain.lines import DueLine, Point, State
 from fleetcare.domain.quantities import BASE_UNIT, Amount, Figure, Kind, from_base, plain, to_base
+from fleetcare.domain.schedules import DRAIN
 from fleetcare.drafts.work import DeferralDraft
 from fleetcare.errors import Refused
 from fleetcare.operations.find import FoundItem, FoundMeter, find_item, find_meters, find_task, pick_meter
 from fleetcare.operations.load import item_facts
+from fleetcare.operations.longer_drains import say_beyond, take_advice
 from fleetcare.operations.names import person_id
 from fleetcare.rules.due.due_list import item_lines
 from fleetcare.rules.due.facts import ItemFacts
@@ -19,23 +21,27 @@ from fleetcare.rules.due.outlook import outlooks
 from fleetcare.rules.due.replay import replay
 
 if TYPE_CHECKING:
+    from sqlalchemy import Connection
     from sqlalchemy.orm import Session
 
 
 @dataclass(frozen=True, slots=True)
 class Deferred:
-    """What was deferred: the item, the task's name, and each end, figures with their unit."""
+    """What was deferred: the item, the task's name, each end, figures with their unit, why, and what to beware of."""
 
     item: FoundItem
     task: str
     until: tuple[str, ...]
+    why: str
+    beware: str = ""
 
 
 def defer(session: "Session", draft: DeferralDraft) -> Deferred:
-    """Store a deferral of the due point a task has now.
+    """Store a deferral of the due point a task has now; one as advised to the figure that is advised, as its reason says.
 
     Refuses work by law or insurer, work that is not deferrable, a line without a point, an end that
-    does not lie after the point or after today, and a figure the task does not count.
+    does not lie after the point or after today, and a figure the task does not count; an advice there is not, or is of
+    another figure than somebody was told, and whoever may not take it.
     """
     connection = session.connection()
     item = find_item(connection, draft.tag)
@@ -45,12 +51,13 @@ def defer(session: "Session", draft: DeferralDraft) -> Deferred:
     if line is None:
         raise Refused(f"{draft.task} of {item.tag} is not due to be done", "nothing needs to be deferred")
     _check_allowed(line)
+    until = _advised(connection, item, line, facts, draft) if draft.as_advised else draft.until
     row = Deferral(
         task_id=task_id,
         on=draft.on,
         counts_from_id=replay(facts, line.task).marks.from_entry,
-        until_on=next((end for end in draft.until if isinstance(end, date)), None),
-        why=draft.why,
+        until_on=next((end for end in until if isinstance(end, date)), None),
+        why=f"as advised: {draft.why}" if draft.as_advised else draft.why,
         person_id=person_id(session, draft.by) or 0,
     )
     if row.until_on is not None:
@@ -58,12 +65,31 @@ def defer(session: "Session", draft: DeferralDraft) -> Deferred:
     session.add(row)
     session.flush()
     ends = []
-    for end in draft.until:
+    for end in until:
         ends.append(_add_figure(session, row, item, facts, line, end) if isinstance(end, Figure) else end.isoformat())
     if row.until_on is not None and line.version.calendar is None and not line.version.on_condition:
         _add_cap(session, row, facts, line)
     session.flush()
-    return Deferred(item, line.task.name, tuple(ends))
+    beware = "" if draft.as_advised else _beware(connection, line, facts)
+    return Deferred(item, line.task.name, tuple(ends), row.why, beware)
+
+
+def _advised(
+    connection: "Connection", item: FoundItem, line: DueLine, facts: ItemFacts, draft: DeferralDraft
+) -> tuple[Figure]:
+    """Give the figure that is advised, where it is the one that was told."""
+    figure = take_advice(connection, item, line, facts, draft.by)
+    told = next((end.value for end in draft.until if isinstance(end, Figure)), figure.value)
+    if told != figure.value:
+        raise Refused(f"it is advised until {figure} by now, not until {plain(told)}", "leave --until empty")
+    return (figure,)
+
+
+def _beware(connection: "Connection", line: DueLine, facts: ItemFacts) -> str:
+    """Say until when an oil is known to be sound, where it is put off for longer."""
+    if line.version.work != DRAIN or not facts.sound_oil:
+        return ""
+    return say_beyond(line, facts, item_facts(connection, facts.on, [line.item.id])[0])
 
 
 def _check_allowed(line: DueLine) -> None:

@@ -37,7 +37,7 @@ if TYPE_CHECKING:
 
 @dataclass(slots=True)
 class Entered:
-    """What was stored, said; then the lines that moved, said; then what it is good to know now.
+    """What was stored, said; then the lines that moved, said; then what it is good to know now, and what to beware of.
 
     `logged` is what an entry stored, `waiting` the lines of a returned engine as they stood before its return.
     """
@@ -45,12 +45,13 @@ class Entered:
     said: list[str] = field(default_factory=list)
     moved: list[str] = field(default_factory=list)
     notes: list[str] = field(default_factory=list)
+    warnings: list[str] = field(default_factory=list)
     logged: Logged | None = None
     waiting: Sequence[DueRow] = ()
 
     def sentences(self) -> list[str]:
         """Give all that is said, in order."""
-        return [*self.said, *self.moved, *self.notes]
+        return [*self.said, *self.moved, *self.notes, *self.warnings]
 
 
 def enter_work(
@@ -144,8 +145,9 @@ def enter_deferral(session: "Session", draft: "DeferralDraft", today: date) -> E
     with watch_moves(session, draft.tag, today) as moves:
         deferred = defer(session, draft)
     until = " or ".join(deferred.until)
-    said = f"{deferred.task} of {deferred.item.tag} deferred until {until} by {draft.by}: {draft.why}"
-    return Entered([said], [*moved_words(moves.moved)])
+    said = f"{deferred.task} of {deferred.item.tag} deferred until {until} by {draft.by}: {deferred.why}"
+    warnings = [f"Beware: {deferred.beware}."] if deferred.beware else []
+    return Entered([said], [*moved_words(moves.moved)], warnings=warnings)
 
 
 def enter_status(session: "Session", draft: "StatusDraft", status: Status, today: date) -> Entered:

@@ -40,6 +40,16 @@ def _name(value: str) -> str:
     return " ".join(value.split())
 
 
+def _names(value: str) -> str:
+    """Read names between commas, each once whatever its case."""
+    names: dict[str, str] = {}
+    for name in filter(None, map(_name, value.split(","))):
+        names.setdefault(name.casefold(), name)
+    if not names:
+        raise Refused(f"no name stands in {value!r}", "give names with commas between")
+    return ", ".join(names.values())
+
+
 @dataclass(frozen=True, slots=True)
 class SettingSpec:
     """One setting: its name, what holds where none is stored, what it means, and how a value of it is read."""
@@ -58,6 +68,7 @@ SETTINGS = (
     SettingSpec("cap-starts", "200", "most starts a meter may gain in a day", _number("starts")),
     SettingSpec("stale-days", "", "days after which a reading is stale; empty: twice the engine's own rhythm", _days),
     SettingSpec("shop-name", "", "the shop's name, for what is printed", _name),
+    SettingSpec("supervisors", "", "who may take the advice to drain a sound oil later; names, commas between", _names),
 )
 
 
@@ -76,6 +87,11 @@ def stale_days(connection: "Connection") -> int | None:
     """Give the set age of a stale reading in days, None where each meter's own rhythm decides."""
     value = read_settings(connection)["stale-days"]
     return int(value) if value else None
+
+
+def supervisors(connection: "Connection") -> tuple[str, ...]:
+    """Give the names of the supervisors, none where the shop has not said."""
+    return tuple(filter(None, read_settings(connection)["supervisors"].split(", ")))
 
 
 def spec_of(name: str) -> SettingSpec:

@@ -9,6 +9,7 @@ well enough to be projected takes the advice away, and so does a law, an insurer
 from collections.abc import Iterable
 from dataclasses import dataclass
 from decimal import ROUND_FLOOR, Decimal
+from enum import StrEnum
 
 from fleetcare.domain.lines import DueLine, TriggerLine
 from fleetcare.domain.quantities import Kind
@@ -31,42 +32,87 @@ class LongerDrain:
     subjects: tuple[str, ...]
 
 
-def longer_drain(line: DueLine, facts: ItemFacts) -> LongerDrain | None:
-    """Give the advice for a line, None where there is none to give: only for one that its own point by hours decides."""
+class Bar(StrEnum):
+    """What keeps a longer drain from being advised."""
+
+    OTHER_WORK = "it is no change of an engine's oil"
+    LAW = "it is required by law"
+    INSURER = "it is required by the insurer"
+    FIXED = "it is not deferrable"
+    OTHER_POINT = "it is not its hours that decide when it is due"
+    PULLED = "what was sampled calls for it before its own point"
+    DEFERRED = "it is put off already"
+    NO_SAMPLE = "there is no oil sample that flags nothing"
+    CHANGED = "the oil that was sampled is not in the engine any more"
+    NOT_PROJECTED = "not everything in the oil can be projected"
+    SCATTERS = "a single value may lie outside its limits by then"
+    NOT_BEYOND = "it keeps inside its limits no further than its point and what the meter shows"
+
+
+@dataclass(frozen=True, slots=True)
+class NoAdvice:
+    """Why nothing is advised: by what, of which subject of the oil, foreseen how; `until` is where it still keeps inside."""
+
+    bar: Bar
+    of: Foreseen | None = None
+    until: Decimal | None = None
+
+
+def longer_drain(line: DueLine, facts: ItemFacts) -> LongerDrain | NoAdvice:
+    """Give the advice for a line, or why there is none: only for one that its own point by hours decides."""
+    return NoAdvice(Bar.DEFERRED) if line.deciding.deferred else sound_beyond(line, facts)
+
+
+def sound_beyond(line: DueLine, facts: ItemFacts) -> LongerDrain | NoAdvice:
+    """Tell how far beyond its own point an oil is sound, whatever the line is deferred to."""
     version, trigger = line.version, line.deciding
-    may = version.work == DRAIN and version.deferrable and not (version.law or version.insurer)
-    if not may or trigger.kind is not Kind.HOURS or trigger.pull is not None or trigger.deferred:
-        return None
+    bars = (
+        (version.work != DRAIN, Bar.OTHER_WORK),
+        (version.law, Bar.LAW),
+        (version.insurer, Bar.INSURER),
+        (not version.deferrable, Bar.FIXED),
+        (trigger.kind is not Kind.HOURS or trigger.next is None or trigger.now is None, Bar.OTHER_POINT),
+        (trigger.pull is not None, Bar.PULLED),
+        (not facts.sound_oil, Bar.NO_SAMPLE),
+    )
+    bar = next((bar for holds, bar in bars if holds), None)
+    if bar is not None:
+        return NoAdvice(bar)
     wears = [wear for wear in facts.sound_oil if is_in_the_engine(wear, facts)]
-    if not wears or trigger.next is None or trigger.now is None:
-        return None
+    if not wears:
+        return NoAdvice(Bar.CHANGED)
+    assert trigger.next is not None
+    assert trigger.now is not None
     return _advice(project_wears(wears, version, trigger.next, trigger.now), trigger)
 
 
-def _advice(foreseen: Iterable[Foreseen], trigger: TriggerLine) -> LongerDrain | None:
-    told = [(_inside_until(one), one.wear.subject) for one in foreseen]
-    known = [(until, subject) for until, subject in told if until is not None]
+def _advice(foreseen: Iterable[Foreseen], trigger: TriggerLine) -> LongerDrain | NoAdvice:
     assert isinstance(trigger.own, Decimal)
     assert isinstance(trigger.now, Decimal)
-    if len(known) < len(told):
-        return None
-    until, subject = min(known)
+    known = []
+    for one in foreseen:
+        until = _inside_until(one)
+        if isinstance(until, Bar):
+            return NoAdvice(until, one)
+        known.append((until, one))
+    until, nearest = min(known, key=lambda told: (told[0], told[1].wear.subject))
     until = until.quantize(Decimal(1), rounding=ROUND_FLOOR)
     if until <= max(trigger.own, trigger.now):
-        return None
-    return LongerDrain(until, subject, tuple(subject for _, subject in told))
+        return NoAdvice(Bar.NOT_BEYOND, nearest, until)
+    return LongerDrain(until, nearest.wear.subject, tuple(one.wear.subject for _, one in known))
 
 
-def _inside_until(one: Foreseen) -> Decimal | None:
-    """Give the x up to which a subject keeps inside its limits, None where that is not known."""
+def _inside_until(one: Foreseen) -> Decimal | Bar:
+    """Give the x up to which a subject keeps inside its limits, or why that is not known."""
     told, trend, last = one.projection, one.projection.trend, one.wear.last
     if trend is None or {hindrance.obstacle for hindrance in told.hindrances} - _STAYS:
-        return None
-    if told.early is not None or told.not_before is not None:
-        return told.early if told.early is not None else told.not_before
+        return Bar.NOT_PROJECTED
+    end = told.early if told.early is not None else told.not_before
+    if end is not None:
+        return end
     furthest = last.x + trend.span
     t = Decimal(t_quantile(float(told.coverage), trend.df))
-    return furthest if all(_is_inside(one, trend, x, t) for x in (last.x, furthest)) else None
+    return furthest if all(_is_inside(one, trend, x, t) for x in (last.x, furthest)) else Bar.SCATTERS
 
 
 def _is_inside(one: Foreseen, trend: Trend, x: Decimal, t: Decimal) -> bool:

@@ -118,7 +118,8 @@ class FillingScreen(LoadingScreen):
         self.query_one(FormTitle).tell(found.whose)
         self.query_one(FormHead).tell(*self.form.above(found))
         for row in self.rows.values():
-            row.allow(found.is_engine or not row.field.of_engines)
+            is_known = not row.field.fills or row.field.fills in found.typed
+            row.allow(is_known and (found.is_engine or not row.field.of_engines))
         if is_first:
             kept = {
                 name: self.fleet_app.shift.get(name, "") for name, row in self.rows.items() if row.field.kept_for_shift
@@ -137,7 +138,8 @@ class FillingScreen(LoadingScreen):
         self._typed(event.input)
 
     def on_yes_no_changed(self, event: YesNo.Changed) -> None:
-        """Keep what was said."""
+        """Keep what was said, and fill in what a yes fills."""
+        self._fill_other(event.by)
         self._typed(event.by)
 
     def on_text_field_taken(self) -> None:
@@ -238,6 +240,15 @@ class FillingScreen(LoadingScreen):
             rows = [row for row in self.rows.values() if row.display]
             empty = [row for row in rows if not row.value and not self.form.is_edit]
             (*empty, *rows)[0].editor.focus()
+
+    def _fill_other(self, editor: Widget) -> None:
+        """Put what is known into the field that a yes fills; a no takes it out again."""
+        for row in self.rows.values():
+            if row.editor is editor and row.field.fills and self.facts is not None:
+                other, known = self.rows[row.field.fills], self.facts.typed.get(row.field.fills, "")
+                if row.value == "yes" or other.value == known:
+                    other.fill(known if row.value == "yes" else "")
+                    self._touched.add(row.field.fills)
 
     def _typed(self, editor: Widget) -> None:
         self._touched |= {name for name, row in self.rows.items() if row.editor is editor}

@@ -28,6 +28,7 @@ def test_without_a_name_all_are_listed_with_value_default_and_meaning(setting: R
         ["cap-starts", "200", "200"],
         ["stale-days", "-", "-"],
         ["shop-name", "-", "-"],
+        ["supervisors", "-", "-"],
     ]
     assert rows[0].endswith("most hours a meter may gain in a day")
 

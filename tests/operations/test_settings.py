@@ -37,6 +37,7 @@ def test_without_anything_stored_the_defaults_hold(ctx: Context) -> None:
         "cap-starts": "200",
         "stale-days": "",
         "shop-name": "",
+        "supervisors": "",
     }
 
 
@@ -112,7 +113,7 @@ def test_what_cannot_be_a_value_is_refused_and_nothing_changes(
     [
         ("cap-hour", "did you mean cap-hours"),
         ("STALE", "did you mean stale-days?"),
-        ("[/b]", "choose one of cap-hours, cap-distance, cap-fuel, cap-starts, stale-days, shop-name"),
+        ("[/b]", "choose one of cap-hours, cap-distance, cap-fuel, cap-starts, stale-days, shop-name, supervisors"),
     ],
 )
 def test_an_unknown_name_is_answered_with_the_nearest(name: str, remedy: str) -> None:

@@ -18,7 +18,8 @@ from fleetcare.rules.due.due_list import item_lines
 from fleetcare.rules.due.facts import ItemFacts
 from fleetcare.rules.due.row import due_row
 from fleetcare.rules.explain import explain
-from fleetcare.rules.longer_drain import LongerDrain, longer_drain
+from fleetcare.rules.explain_longer_drain import say_no_advice
+from fleetcare.rules.longer_drain import Bar, LongerDrain, NoAdvice, longer_drain, sound_beyond
 from tests.builders import a_deferral, a_task, day, done, every, facts, last_done
 from tests.rules.wearing import segments
 
@@ -41,13 +42,20 @@ def looked_at(task: Task | None = None, *wears: Wear, hours: float = 1450, **mor
     return item_lines(known, recorded_only=True)[0], known
 
 
-def advice(task: Task | None = None, *wears: Wear, **more: object) -> LongerDrain | None:
+def advice(task: Task | None = None, *wears: Wear, **more: object) -> LongerDrain | NoAdvice:
     return longer_drain(*looked_at(task, *wears, **more))  # type: ignore[arg-type]
 
 
 def until(task: Task | None = None, *wears: Wear, **more: object) -> int | None:
     found = advice(task, *wears, **more)
-    return int(found.until) if found is not None else None
+    return int(found.until) if isinstance(found, LongerDrain) else None
+
+
+def why_none(task: Task | None = None, *wears: Wear, **more: object) -> str:
+    line, known = looked_at(task, *wears, **more)  # type: ignore[arg-type]
+    found = longer_drain(line, known)
+    assert isinstance(found, NoAdvice)
+    return say_no_advice(found, known)
 
 
 @pytest.mark.parametrize("work", ["gear-oil", "coolant", "hydraulic-oil", "fuel"])
@@ -61,7 +69,7 @@ def test_a_limit_far_off_lets_it_stay_as_far_ahead_as_it_was_watched() -> None:
 
 def test_a_limit_that_comes_before_that_ends_it_at_the_early_end() -> None:
     found = advice(drain("450h"), oil(high="50"), oil(subject="Cu copper", high="300"), hours=1400)
-    assert found is not None
+    assert isinstance(found, LongerDrain)
     assert 1450 < found.until < 1495
     assert (found.subject, found.subjects) == ("Fe iron", ("Fe iron", "Cu copper"))
 
@@ -89,23 +97,28 @@ def test_a_figure_not_watched_well_enough_takes_the_advice_away(other: Wear) -> 
 
 def test_nothing_is_advised_that_does_not_lie_beyond_the_own_point_and_today() -> None:
     assert until(drain("700h")) is None
+    assert due_row(*looked_at(drain("700h"))).reason == ""
     assert until(drain("699h")) == 1700
     assert until(None, hours=1600) == 1700
     assert until(drain("500h"), oil(hours="1350 1400 1450 1500"), hours=1650) is None
 
 
 @pytest.mark.parametrize(
-    "task",
+    ("task", "why"),
     [
-        drain(law=True, deferrable=False),
-        drain(law=True),
-        drain(insurer=True),
-        drain(deferrable=False),
-        drain(work="filter"),
-        drain("500h", every("4mo")),
-        drain(origin=None),
-        drain(deferrals=(a_deferral(hours=1600, on="2026-04-25"),)),
-        drain(origin=last_done("2026-04-20", hours=1000)),
+        (drain(law=True, deferrable=False), "it is required by law"),
+        (drain(law=True), "it is required by law"),
+        (drain(insurer=True), "it is required by the insurer"),
+        (drain(deferrable=False), "it is not deferrable"),
+        (drain(work="filter"), "it is no change of an engine's oil"),
+        (drain("500h", every("4mo")), "it is not its hours that decide when it is due"),
+        (drain(origin=None), "it is not its hours that decide when it is due"),
+        (drain(deferrals=(a_deferral(hours=1600, on="2026-04-25"),)), "it is put off already"),
+        (
+            drain(origin=last_done("2026-04-20", hours=1000)),
+            "the oil that was sampled is not in the engine any more",
+        ),
+        (drain("700h"), "Fe iron is only known to keep inside its limits until 1700 h on the dial"),
     ],
     ids=[
         "law",
@@ -117,15 +130,36 @@ def test_nothing_is_advised_that_does_not_lie_beyond_the_own_point_and_today() -
         "unset",
         "put off",
         "changed since",
+        "not beyond",
     ],
 )
-def test_no_advice_for(task: Task) -> None:
+def test_no_advice_for(task: Task, why: str) -> None:
     assert until(task) is None
+    assert why_none(task) == why
+
+
+def test_without_a_sound_sample_nothing_is_advised() -> None:
+    known = facts(drain(), on="2026-05-01", hours=1450)
+    found = longer_drain(item_lines(known, recorded_only=True)[0], known)
+    assert isinstance(found, NoAdvice)
+    assert say_no_advice(found, known) == "there is no oil sample that flags nothing"
+
+
+def test_what_takes_the_advice_away_is_named() -> None:
+    few, scattered = oil("10 20", "Cr", hours="1300 1400"), oil("5 9 4 8", "Cr", high="9")
+    assert why_none(None, oil(), few).startswith("not everything in the oil can be projected: Cr: no slope yet: 2 more")
+    assert why_none(None, oil(), scattered) == "a single value may lie outside its limits by then: Cr"
+
+
+def test_how_long_an_oil_is_sound_is_told_of_a_line_that_is_put_off_too() -> None:
+    found = sound_beyond(*looked_at(drain(deferrals=(a_deferral(hours=1600, on="2026-04-25"),))))
+    assert isinstance(found, LongerDrain)
+    assert found.until == 1700
 
 
 def test_no_advice_for_a_line_that_its_samples_pull_forward() -> None:
-    soon = oil(high="48")
-    assert until(drain("600h"), wears=(soon,)) is None
+    line, known = looked_at(drain("600h"), wears=(oil(high="48"),))
+    assert longer_drain(line, known) == NoAdvice(Bar.PULLED)
 
 
 def test_no_advice_once_the_oil_was_changed() -> None:

@@ -205,7 +205,7 @@ SAID_ELSEWHERE = {
 """Where something else must be given first, it is said beside that."""
 
 FREE = {
-    *("by", "note", "why", "repair", "defect", "position", "part_done", "out", "name", "site", "fuel"),
+    *("as_advised", "by", "note", "why", "repair", "defect", "position", "part_done", "out", "name", "site", "fuel"),
     *(field.name for field in (*USUAL, *RARER) if field.is_yes_no or field.name in {"work", "caution", "source"}),
 }
 """Fields in which nothing can be wrong: text of one's own, and a yes or no."""

@@ -53,7 +53,8 @@ class Field:
     `known` names what is suggested for it (see FormFacts.known), `choices` are all there are. A yes or no is one key.
     One that is `kept_for_shift` is filled in again on the next form. `several` values stand between semicolons. On a
     form about several engines or machines `tag` is whose field it is. `option` is what errors call it, where not by
-    its name. `group` is a heading above it; one `of_engines` is hidden for a machine.
+    its name. `group` is a heading above it; one `of_engines` is hidden for a machine. A yes to one that `fills` another
+    field puts there what is known for that; where nothing is, it is hidden.
     """
 
     name: str
@@ -68,6 +69,7 @@ class Field:
     option: str = ""
     group: str = ""
     of_engines: bool = False
+    fills: str = ""
 
     @property
     def called(self) -> str:

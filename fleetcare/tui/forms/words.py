@@ -20,6 +20,10 @@ _PHRASES = tuple(
         ),
         (rf"give them first: {_ITEM} edit (.+) --meter-digits \S+", r"give the digits of \1 first: x, then e"),
         (rf"mend its valves with {_ITEM} edit", "mend its valves: x, then e"),
+        (
+            "name (them|another): fleetcare setting supervisors .+",
+            r"name \1 on the command line, in the setting supervisors",
+        ),
         ("use fleetcare task edit", "change that one: x, then k"),
         (
             "end them with fleetcare task remove .+ NAME, or .+FILE.toml",

@@ -1,12 +1,13 @@
 """Forms on work: log it, correct an entry, take one back, put a due point off."""
 
-from collections.abc import Mapping
+from collections.abc import Mapping, Sequence
 from datetime import date
 from typing import TYPE_CHECKING
 
 from fleetcare.tui.forms.base import BY, METERS, NOTE, ON, WHY, Answer, Field, Form, Said, Subject
 
 if TYPE_CHECKING:
+    from sqlalchemy import Connection
     from sqlalchemy.orm import Session
 
     from fleetcare.drafts.entry_understood import Understood
@@ -124,11 +125,33 @@ VOID = Form(
     fixed=lambda subject, on: {"entry": subject.entry, "void": True},
     start=lambda facts, subject, on: {},
 )
+
+
+def _advice(connection: "Connection", subject: Subject, on: date) -> Mapping[str, str]:
+    """Give until when an oil is advised to stay in, and that in a sentence; nothing where there is no advice."""
+    from fleetcare.operations.longer_drains import find_advice
+
+    advice = find_advice(connection, subject.tag, subject.task, on)
+    return {"until": "".join(str(advice.until).split()), "advised": advice.said} if advice is not None else {}
+
+
+def _above_deferral(facts: "FormFacts") -> tuple[str, Sequence[str]]:
+    said = facts.typed.get("advised")
+    return ("Advised", (said,)) if said else ("", ())
+
+
 DEFER = Form(
     "defer",
     "Put off {task} of {tag}",
     (
         Field("until", "Until", "a day, a dial figure such as 1500h, or both with ; between", several=True),
+        Field(
+            "as_advised",
+            "As advised",
+            "yes: until the figure up to which the oil is known to be sound; for supervisors",
+            is_yes_no=True,
+            fills="until",
+        ),
         WHY,
         Field("by", "By", "who decides it", "people", kept_for_shift=True),
     ),
@@ -137,4 +160,6 @@ DEFER = Form(
     is_on_task=True,
     fixed=lambda subject, on: {"tag": subject.tag, "task": subject.task, "on": on},
     start=lambda facts, subject, on: {},
+    above=_above_deferral,
+    typed=_advice,
 )
