@@ -62,7 +62,8 @@ class MeasuredSheet:
 class MeasuredEngine:
     """What rules ask of an engine: empty, 0 or None where the nameplate does not say.
 
-    `banks` are its cylinders as they stand, row by row; `sump` is in L, `rated_kw` in kW.
+    `banks` are its cylinders as they stand, row by row; `sump` is in L, `rated_kw` in kW, `altitude` of its
+    site in m.
     """
 
     tag: str
@@ -74,6 +75,7 @@ class MeasuredEngine:
     oil_grade: str = ""
     sump: Decimal | None = None
     rated_kw: Decimal | None = None
+    altitude: Decimal | None = None
     is_marine: bool | None = None
 
 

@@ -15,6 +15,7 @@ from fleetcare.domain.rule_shapes import Basis as Basis
 from fleetcare.domain.rule_shapes import Best as Best
 from fleetcare.domain.rule_shapes import Bounds as Bounds
 from fleetcare.domain.rule_shapes import By as By
+from fleetcare.domain.rule_shapes import ByAltitude as ByAltitude
 from fleetcare.domain.rule_shapes import Change as Change
 from fleetcare.domain.rule_shapes import Method as Method
 from fleetcare.domain.rule_shapes import Pool as Pool

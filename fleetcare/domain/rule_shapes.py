@@ -117,6 +117,17 @@ class Statistical:
 
 
 @dataclass(frozen=True, slots=True)
+class ByAltitude:
+    """A value less the least for the altitude of the engine: of a table of altitudes in `unit`, rising, and what is least there.
+
+    Between two of them it is linear; beyond the table nothing is told.
+    """
+
+    unit: str
+    least: tuple[tuple[Decimal, Decimal], ...]
+
+
+@dataclass(frozen=True, slots=True)
 class Approach:
     """Hours until a gap inside the check range of the engine comes to one `end` of it, by the early end of its projection.
 
@@ -127,7 +138,7 @@ class Approach:
     least_change: Decimal = Decimal(0)
 
 
-ValueShape = Bounds | AgainstSheet | Change | Rate | Statistical
+ValueShape = Bounds | AgainstSheet | Change | Rate | Statistical | ByAltitude
 """The shapes that work out a figure for each value."""
 
 SingleShape = ValueShape | Approach

@@ -109,14 +109,14 @@ def _load_plates(connection: "Connection", ids: Sequence[int] | None) -> Sequenc
     return fetch(
         connection,
         "select item.id, item.tag, fuel, cylinders, layout, numbering, valves_per_cylinder, bridged, adjuster, duty,"
-        f" oil_grade, sump_l, rated_kw from engine join item on item.id = engine.item_id{chosen} order by item.tag, item.id",
+        f" oil_grade, sump_l, rated_kw, altitude_m from engine join item on item.id = engine.item_id{chosen} order by item.tag, item.id",
         **({} if ids is None else {"ids": list(ids)}),
     )
 
 
 def _engine(row: Row) -> tuple[MeasuredEngine, ValveTrain | None]:
     """Give an engine, and its valves where the number of cylinders is known."""
-    _, tag, fuel, cylinders, layout, numbering, valves, bridged, adjuster, duty, grade, sump, rated = row
+    _, tag, fuel, cylinders, layout, numbering, valves, bridged, adjuster, duty, grade, sump, rated, altitude = row
     train = None
     if cylinders is not None:
         train = ValveTrain(
@@ -139,6 +139,7 @@ def _engine(row: Row) -> tuple[MeasuredEngine, ValveTrain | None]:
         oil_grade=grade,
         sump=figure(sump),
         rated_kw=figure(rated),
+        altitude=figure(altitude),
     ), train
 
 

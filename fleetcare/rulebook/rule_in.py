@@ -17,6 +17,7 @@ from fleetcare.domain.rule_book import (
     Basis,
     Bounds,
     By,
+    ByAltitude,
     Change,
     End,
     Limits,
@@ -33,6 +34,7 @@ from fleetcare.rulebook.rule_pieces import (
     AppliesIn,
     ApproachIn,
     BoundsIn,
+    ByAltitudeIn,
     ChangeIn,
     ConditionIn,
     Form,
@@ -55,6 +57,7 @@ SHAPES: dict[str, type[Any]] = {
     "change": Change,
     "rate": Rate,
     "statistical": Statistical,
+    "by_altitude": ByAltitude,
     "approach": Approach,
     "pattern": Pattern,
 }
@@ -78,6 +81,7 @@ class RuleIn(Form):
     change: ChangeIn | None = None
     rate: RateIn | None = None
     statistical: StatisticalIn | None = None
+    by_altitude: ByAltitudeIn | None = None
     approach: ApproachIn | None = None
     pattern: PatternIn | None = None
     condition: tuple[ConditionIn, ...] = ()

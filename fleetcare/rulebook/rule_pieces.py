@@ -1,6 +1,7 @@
 """The pieces a measurement rule is written in, each held to its form; a fault says what is wrong and, behind a bar, how to mend it."""
 
 from decimal import Decimal
+from itertools import pairwise
 from typing import Annotated, Literal, Self
 
 from pydantic import BaseModel, BeforeValidator, ConfigDict, Field, StringConstraints, model_validator
@@ -25,6 +26,7 @@ from fleetcare.domain.rule_book import (
 )
 
 DERIVED = ("wet_gain",)
+_FEWEST_ROWS = 2
 
 
 def as_list(value: object) -> object:
@@ -147,6 +149,19 @@ class StatisticalIn(Form):
     pool: Pool
     method: Method
     least_samples: Annotated[int, Field(ge=3, le=10_000)]
+
+
+class ByAltitudeIn(Form):
+    """The shape `by_altitude`."""
+
+    unit: Literal["ft", "m"]
+    least: tuple[tuple[Decimal, Decimal], ...]
+
+    @model_validator(mode="after")
+    def _check(self) -> Self:
+        if len(self.least) < _FEWEST_ROWS or not all(one < other for (one, _), (other, _) in pairwise(self.least)):
+            raise ValueError("altitudes do not rise|write pairs of altitude and least, [[500, 515], [2500, 480]]")
+        return self
 
 
 class ApproachIn(Form):

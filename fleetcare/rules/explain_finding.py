@@ -17,6 +17,7 @@ from fleetcare.domain.rule_book import (
     Basis,
     Bounds,
     By,
+    ByAltitude,
     Change,
     End,
     Pattern,
@@ -137,6 +138,8 @@ def say_measured(rule: Rule) -> str:
         return f"{name}{_BASES.get(shape.basis, '')}"
     if isinstance(shape, AgainstSheet):
         return f"{name} {_COMPARED[shape.by]} the {shape.reference}{_OF_ALL.get(shape.reference, '')}"
+    if isinstance(shape, ByAltitude):
+        return f"{name} less its least for the altitude"
     if isinstance(shape, Approach):
         return f"earliest hours of {name} to the {shape.end} end of its check range"
     if isinstance(shape, Change):

@@ -11,6 +11,7 @@ from fleetcare.domain.rule_book import (
     Asks,
     Basis,
     Bounds,
+    ByAltitude,
     Condition,
     Limit,
     Limits,
@@ -94,6 +95,9 @@ def say_judged(rule: Rule) -> str:
     told = say_measured(rule)
     if isinstance(shape, Statistical):
         told = f"{told} against {shape.least_samples} or more samples of the {shape.pool} pool"
+    if isinstance(shape, ByAltitude):
+        rows = ", ".join(f"{plain(least)} {rule.unit} at {plain(at)} {shape.unit}" for at, least in shape.least)
+        told = f"{told}: {rows}, linear in between, nothing beyond"
     if isinstance(shape, Approach) and shape.least_change:
         told = f"{told} where it moved by {plain(shape.least_change)} mm or more"
     where = [*(f"at {point}" for point in rule.points), *(str(phase) for phase in rule.phases)]

@@ -87,13 +87,29 @@ def test_the_dial_figure_that_came_along_is_the_hours_of_the_engine(yard: Contex
 
 
 def test_the_nameplate_is_loaded_as_rules_ask_for_it(ctx: Context) -> None:
-    engine(ctx, "V-01", cylinders=6, layout="v", fuel="petrol", duty="standby", adjuster="hydraulic", sump="9.5")
+    engine(
+        ctx,
+        "V-01",
+        cylinders=6,
+        layout="v",
+        fuel="petrol",
+        duty="standby",
+        adjuster="hydraulic",
+        sump="9.5",
+        altitude="120",
+    )
     engine(ctx, "X-01")
     known, unknown = loaded(ctx, "V-01").engine, loaded(ctx, "X-01").engine
     assert (known.tag, known.cylinders, known.banks) == ("V-01", 6, ((1, 2, 3), (4, 5, 6)))
     assert (known.fuel, known.duty, known.adjuster, known.sump) == ("petrol", "standby", "hydraulic", Decimal("9.5"))
-    assert known.is_marine is False
-    assert (unknown.cylinders, unknown.banks, unknown.rated_kw, unknown.is_marine) == (0, (), None, None)
+    assert (known.altitude, known.is_marine) == (120, False)
+    assert (unknown.cylinders, unknown.banks, unknown.rated_kw, unknown.altitude, unknown.is_marine) == (
+        0,
+        (),
+        None,
+        None,
+        None,
+    )
 
 
 def test_sodium_alone_is_sea_water_where_the_duty_on_the_nameplate_is_a_marine_one(ctx: Context) -> None:

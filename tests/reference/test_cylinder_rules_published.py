@@ -10,10 +10,10 @@ from fleetcare.domain.measured import SheetWord
 from fleetcare.domain.sheets import LashSpec, SheetValue
 from fleetcare.rules.findings import merge
 from fleetcare.rules.judge_lash import judge_value
-from fleetcare.rules.judging.judge import judge
+from fleetcare.rules.judging.judge import judge, judge_sheet
 from fleetcare.rules.judging.values import values_of
 from fleetcare.rules.lash_points import side_of
-from tests.rules.measured import a_sheet, facts, pressures, rules_named, told, value
+from tests.rules.measured import ENGINE, a_sheet, facts, pressures, rules_named, told, value
 
 
 @pytest.mark.parametrize(
@@ -25,6 +25,42 @@ def test_the_published_compression_set_is_examined_by_its_own_rule_and_passes_by
     """TM 5-3895-359-14&P table 2: 445, 440, 405, 435 psi, spread 40; R75 0.910 and A20 405 > 345 pass."""
     rules = rules_named(*([preset] if preset else []))
     assert told(rules, facts(pressures("445", "440", "405", "435"))) == out
+
+
+@pytest.mark.parametrize(
+    ("feet", "least"),
+    [("500", "515"), ("2500", "480"), ("5000", "440"), ("7500", "410"), ("10000", "380"), ("3750", "460")],
+)
+def test_each_cylinder_reaches_the_published_least_for_its_altitude(feet: str, least: str) -> None:
+    """TM 5-3895-359-14&P table 1, at 600 rpm; half way between two rows half way, which is common practice."""
+    engine = replace(ENGINE, altitude=Decimal(feet) * Decimal("0.3048"))
+    rules = rules_named("compression-s25")
+    assert told(rules, facts(pressures(least, least), engine=engine)) == {}
+    low = f"{Decimal(least) - 1}"
+    assert told(rules, facts(pressures(least, low), engine=engine)) == {("compression-s25-least", "2"): "alarm"}
+
+
+def test_the_published_compression_set_is_examined_for_its_spread_although_all_exceed_the_least() -> None:
+    """TM 5-3895-359-14&P table 2: 445, 440, 405, 435 psi -> No. 3, here at 10,000 ft, where 380 are the least."""
+    engine = replace(ENGINE, altitude=Decimal(3048))
+    about = facts(pressures("445", "440", "405", "435"), engine=engine)
+    assert told(rules_named("compression-s25"), about) == {("compression-s25", "3"): "alarm"}
+
+
+@pytest.mark.parametrize(
+    ("altitude", "why"),
+    [
+        ("2", "the altitude of 6.6 ft lies beyond the table, which is from 500 to 10000 ft"),
+        ("3049", "the altitude of 10003.3 ft lies beyond the table, which is from 500 to 10000 ft"),
+        (None, "the nameplate has no altitude"),
+    ],
+)
+def test_the_published_least_is_told_neither_beyond_its_table_nor_where_the_altitude_is_not_known(
+    altitude: str | None, why: str
+) -> None:
+    engine = replace(ENGINE, altitude=Decimal(altitude) if altitude else None)
+    judged = judge_sheet(rules_named("compression-s25"), facts(pressures("100", "100"), engine=engine))
+    assert [one.why for one in judged.not_judged if one.rule.id == "compression-s25-least"] == [why]
 
 
 @pytest.mark.parametrize(

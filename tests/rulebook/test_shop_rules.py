@@ -131,6 +131,14 @@ BAD = {
         OWN.replace("bounds = {}", 'approach = { end = "low" }'),
         'approach tells hours of lash; give quantity = "lash", unit = "h", and limits in low alone',
     ),
+    "altitudes that fall": (
+        OWN.replace("bounds = {}", 'by_altitude = { unit = "ft", least = [[500, 515], [500, 480]] }'),
+        "by_altitude: altitudes do not rise; write pairs of altitude and least, [[500, 515], [2500, 480]]",
+    ),
+    "one altitude": (
+        OWN.replace("bounds = {}", 'by_altitude = { unit = "m", least = [[500, 515]] }'),
+        "by_altitude: altitudes do not rise",
+    ),
     "own condition": (
         OWN + '[[rule.condition]]\nquantities = "Fe"\nasks = "clear"\n',
         "conditions belong to a pattern; leave them out",

@@ -14,6 +14,7 @@ from fleetcare.domain.rule_book import (
     Best,
     Bounds,
     By,
+    ByAltitude,
     Change,
     Limit,
     Limits,
@@ -132,6 +133,9 @@ def facts_with(rule: Rule, figure: Decimal) -> MeasuredFacts:
     match rule.shape:
         case Bounds(Basis.YEAR) | Bounds(Basis.AS_MEASURED) | Bounds(Basis.LESS_NEW) | Bounds(Basis.NAMEPLATE):
             return facts(a_sheet(of(figure, rule.unit), **at))  # type: ignore[arg-type]
+        case ByAltitude(_, ((feet, least), *_)):
+            high_up = replace(ENGINE, altitude=feet * Decimal("0.3048"))
+            return facts(a_sheet(of(least + figure, rule.unit), **at), engine=high_up)  # type: ignore[arg-type]
         case AgainstSheet(reference, by):
             one, other = _pair(reference, by, figure)
             shown = rule.unit if by is By.DIFFERENCE else unit

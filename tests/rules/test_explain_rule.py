@@ -1,5 +1,7 @@
 """A measurement rule in words: what it judges, its limits, and for which engines it is."""
 
+from decimal import Decimal
+
 import pytest
 
 from fleetcare.domain.rule_book import (
@@ -10,6 +12,7 @@ from fleetcare.domain.rule_book import (
     Best,
     Bounds,
     By,
+    ByAltitude,
     Condition,
     End,
     Limits,
@@ -90,6 +93,15 @@ def test_limits_are_said_with_their_severity_side_and_unit(rule: Rule, said: str
 )
 def test_what_a_rule_judges_is_said(rule: Rule, said: str) -> None:
     assert say_judged(rule) == said
+
+
+def test_a_table_of_altitudes_is_said_row_by_row() -> None:
+    table = ByAltitude("ft", ((Decimal(500), Decimal(515)), (Decimal(2500), Decimal(480))))
+    rule = a_rule(shape=table, quantity="pressure", unit="psi", low=Limits(alarm=beyond("0")), high=NONE)
+    assert say_judged(rule) == (
+        "compression less its least for the altitude: 515 psi at 500 ft, 480 psi at 2500 ft, linear in between, nothing beyond"
+    )
+    assert say_limits(rule) == "alarm below 0 psi"
 
 
 def test_a_pattern_is_said_condition_by_condition() -> None:

@@ -12,6 +12,7 @@ from fleetcare.domain.rule_book import (
     Best,
     Bounds,
     By,
+    ByAltitude,
     Change,
     Limits,
     Method,
@@ -26,7 +27,7 @@ from fleetcare.domain.rule_book import (
 from fleetcare.rules.judging.facts import MeasuredFacts
 from fleetcare.rules.judging.levels import levels_of
 from fleetcare.rules.judging.values import values_of
-from tests.rules.measured import a_rule, a_sheet, beyond, facts, pressures, value
+from tests.rules.measured import ENGINE, a_rule, a_sheet, beyond, facts, pressures, value
 
 IRON = a_sheet(value("Fe", "40"))
 
@@ -97,6 +98,16 @@ def test_what_samples_say_is_usual_is_a_level_once_there_are_enough() -> None:
     usual = tuple(map(Decimal, ["22", "25", "19", "31", "28", "24", "27", "21", "26", "23"]))
     told = levels(facts(IRON, pools=Pools(own={"Fe": usual})), rule)
     assert round(told["high alert"], 2) == Decimal("31.73")
+
+
+def test_less_the_least_for_its_altitude_the_level_lies_at_that_least() -> None:
+    table = ByAltitude("m", ((Decimal(0), Decimal(500)), (Decimal(1000), Decimal(400))))
+    rule = a_rule(
+        shape=table, unit="psi", quantity="pressure", kinds=("compression",), low=Limits(beyond("0")), high=Limits()
+    )
+    high_up = replace(ENGINE, altitude=Decimal(250))
+    assert levels(facts(pressures("480"), engine=high_up), rule, quantity="pressure") == {"low alert": 475}
+    assert levels(facts(pressures("480")), rule, quantity="pressure") == {}
 
 
 @pytest.mark.parametrize("shape", [Change(Since.BEFORE, By.SHARE), Rate(Since.NEW, 100), Pattern(())])

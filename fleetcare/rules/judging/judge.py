@@ -15,6 +15,7 @@ from fleetcare.domain.rule_book import (
     Approach,
     Basis,
     Bounds,
+    ByAltitude,
     Change,
     Pattern,
     Rate,
@@ -25,7 +26,7 @@ from fleetcare.domain.rule_book import (
     worst,
 )
 from fleetcare.domain.sheets import Verdict
-from fleetcare.rules.judging import bounds, comparing, rates, statistics
+from fleetcare.rules.judging import altitude, bounds, comparing, rates, statistics
 from fleetcare.rules.judging.approach import approach_signals
 from fleetcare.rules.judging.facts import CannotTell, Figure, MeasuredFacts
 from fleetcare.rules.judging.hold import hold
@@ -122,6 +123,8 @@ def _figure(rule: Rule, shape: ValueShape, one: Measured, values: Sequence[Measu
     match shape:
         case Bounds():
             return bounds.figure(rule, shape, one, values, facts)
+        case ByAltitude():
+            return altitude.figure(rule, shape, one, facts)
         case AgainstSheet():
             return comparing.against_sheet(rule, shape, one, values, facts)
         case Change():

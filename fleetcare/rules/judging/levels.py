@@ -1,6 +1,6 @@
 """The limits of rules as levels of a value itself, in its own unit: what a value would have to pass to be flagged.
 
-A limit on the value is its level; less new oil, against new oil, against the best or the mean of its sheet, and from what
+A limit on the value is its level; less its least for the altitude, less new oil, against new oil, against the best or the mean of its sheet, and from what
 earlier samples say is usual, it is worked back: percent r of a reference R is R r / 100, percent s above it R (1 + s / 100),
 d units above it R + d. Limits on a change from sheet to sheet, on a rate or on a pattern are no level. Where several rules
 have one at the same end, the first to be passed counts; an alert that an alarm comes before is none.
@@ -17,6 +17,7 @@ from fleetcare.domain.rule_book import (
     Basis,
     Bounds,
     By,
+    ByAltitude,
     Change,
     End,
     Limits,
@@ -25,7 +26,7 @@ from fleetcare.domain.rule_book import (
     Since,
     Statistical,
 )
-from fleetcare.rules.judging import statistics
+from fleetcare.rules.judging import altitude, statistics
 from fleetcare.rules.judging.comparing import best_of
 from fleetcare.rules.judging.facts import CannotTell, MeasuredFacts
 from fleetcare.rules.judging.spans import Span, decimal
@@ -92,6 +93,8 @@ def _figures(rule: Rule, one: Measured, facts: MeasuredFacts) -> Iterator[tuple[
             fresh = fresh_of(facts.sheet, facts.fresh, rule.quantity)
             new = _plain(fresh.within(rule.unit)) if fresh else Fraction(0)
             yield from _shifted(low, high, rule.unit, one.unit, new)
+        case ByAltitude() as table:
+            yield from _shifted(low, high, rule.unit, one.unit, altitude.least_for(table, facts.engine))
         case AgainstSheet(reference, by):
             peers = judged_phases(values_of(facts.sheet, rule.quantity), rule.phases, rule.points)
             if len(peers) > 1:  # one alone cannot be compared
