@@ -102,7 +102,7 @@ def test_the_nameplate_is_loaded_as_rules_ask_for_it(ctx: Context) -> None:
     known, unknown = loaded(ctx, "V-01").engine, loaded(ctx, "X-01").engine
     assert (known.tag, known.cylinders, known.banks) == ("V-01", 6, ((1, 2, 3), (4, 5, 6)))
     assert (known.fuel, known.duty, known.adjuster, known.sump) == ("petrol", "standby", "hydraulic", Decimal("9.5"))
-    assert (known.altitude, known.is_marine) == (120, False)
+    assert (known.altitude, known.is_marine) == (Decimal(120), False)
     assert (unknown.cylinders, unknown.banks, unknown.rated_kw, unknown.altitude, unknown.is_marine) == (
         0,
         (),

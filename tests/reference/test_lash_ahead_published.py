@@ -39,7 +39,7 @@ def test_the_worked_example_comes_to_its_limit_at_the_early_end_of_the_range_of_
     numbers = {one.label: one.value for one in signal.steps}
     assert f"{numbers['slope']:.8f}" == "-0.04855274"
     assert f"{numbers['its standard error']:.9f}" == "0.001363028"
-    assert (numbers["values"], numbers["likely in"]) == (11, Decimal("2102.0"))
+    assert (numbers["values"], numbers["likely in"]) == (Decimal(11), Decimal("2102.0"))
     assert told("0.25", "1975") is None
 
 

@@ -92,10 +92,14 @@ def test_the_working_has_the_slope_with_its_error_the_values_and_the_likely_hour
         "likely in",
     ]
     assert [one.unit for one in signal.steps] == ["mm", "mm", "mm per 1000 h", "mm per 1000 h", "", "h"]
-    assert (signal.steps[0].value, signal.steps[1].value, signal.steps[4].value) == (Decimal("0.41"), Decimal("0.4"), 5)
+    assert (signal.steps[0].value, signal.steps[1].value, signal.steps[4].value) == (
+        Decimal("0.41"),
+        Decimal("0.4"),
+        Decimal(5),
+    )
     assert [one.value for one in signal.flagged] == ["0.41"]
     assert [one.value for one in signal.used] == ["0.47", "0.46", "0.43", "0.41"]
-    assert (str(signal.severity), signal.end, signal.limit) == ("alert", End.LOW, 500)
+    assert (str(signal.severity), signal.end, signal.limit) == ("alert", End.LOW, Decimal(500))
     assert say_signal(signal).startswith("earliest hours of valve lash to the low end of its check range at 1E ")
     # Sxy -149.2, Sxx 7,312,000 about 1840 h and 0.436 mm.
     assert "slope -0.0204 mm per 1000 h" in say_working(signal, "1E")
@@ -130,7 +134,7 @@ def test_a_setting_is_no_wear_and_what_was_left_is_the_gap_that_counts() -> None
     about = gauged((0, "0.46"), (1000, "0.44"), (2000, "0.42|0.46"), (3000, "0.44"), (4000, "0.42|0.41"))
     assert hours_told(about) == []  # 500 h, at 2 hundredths in 1000 h
     (signal,) = judge([replace(CLOSING, low=Limits(beyond("501")))], about)
-    assert (signal.measured, signal.flagged[0].phase) == (500, "left")
+    assert (signal.measured, str(signal.flagged[0].phase)) == (Decimal(500), "left")
     same = gauged(*STEADY[:3], (3250, "0.405|0.405"))
     assert [one.flagged[0].phase for one in judge([CLOSING], same)] == ["left"]
 
@@ -183,7 +187,7 @@ def test_what_moved_by_less_than_gauges_tell_does_not_move() -> None:
 def test_blades_around_the_limit_of_a_gap_that_closes_are_there_already() -> None:
     about = gauged(*STEADY, (3600, "0.37..0.41"))
     (signal,) = judge([CLOSING], about)
-    assert (signal.measured, [one.label for one in signal.steps][-1]) == (0, "values")
+    assert (signal.measured, [one.label for one in signal.steps][-1]) == (Decimal(0), "values")
 
 
 def test_a_gap_that_is_out_is_for_the_rule_on_its_range_and_takes_the_place_of_what_stood() -> None:
