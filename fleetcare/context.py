@@ -86,7 +86,7 @@ class Context:
 
         What was worked out on the way and can be worked out again is kept afterwards, if the file can be written then.
         """
-        from fleetcare.db.session import keep_derived, reading
+        from fleetcare.db.reading import keep_derived, reading
 
         with reading(self.path) as connection:
             yield connection

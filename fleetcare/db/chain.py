@@ -6,9 +6,10 @@ Plain SQL and no tables, so that a card or a label can carry the ledger's head w
 import hashlib
 import json
 from collections.abc import Iterable, Iterator, Mapping, Sequence
-from typing import Any, NamedTuple
+from typing import TYPE_CHECKING, Any, NamedTuple
 
-from sqlalchemy import Connection
+if TYPE_CHECKING:
+    from sqlalchemy import Connection
 
 GENESIS = "0" * 64  # what the first entry is sealed to
 
@@ -56,24 +57,24 @@ def seal(seq: int, kind: str, row_uid: str, payload_version: int, payload: str, 
     return hashlib.sha256(content.encode()).hexdigest()
 
 
-def entries(connection: Connection) -> Iterator[Entry]:
+def entries(connection: "Connection") -> Iterator[Entry]:
     """Give every entry of the ledger in order."""
-    for row in _driver(connection).execute(_ALL):
+    for row in driver_of(connection).execute(_ALL):
         yield Entry(*row)
 
 
-def last_entry(connection: Connection) -> Entry:
+def last_entry(connection: "Connection") -> Entry:
     """Give the newest entry of the ledger, START while it has none."""
-    row = _driver(connection).execute(_NEWEST).fetchone()
+    row = driver_of(connection).execute(_NEWEST).fetchone()
     return Entry(*row) if row else START
 
 
-def append(connection: Connection, added: Sequence[Entry]) -> None:
+def append(connection: "Connection", added: Sequence[Entry]) -> None:
     """Store entries that follow from the last one."""
-    _driver(connection).executemany(_APPEND, added)
+    driver_of(connection).executemany(_APPEND, added)
 
 
-def rows(connection: Connection, table: str, ids: Iterable[int] | None = None) -> Iterator[dict[str, Any]]:
+def rows(connection: "Connection", table: str, ids: Iterable[int] | None = None) -> Iterator[dict[str, Any]]:
     """Give the rows of a table in id order, all or those with the given ids, every value as the file holds it.
 
     No column types are applied: what is sealed is what is stored, even where somebody spoilt it.
@@ -81,14 +82,14 @@ def rows(connection: Connection, table: str, ids: Iterable[int] | None = None) -
     some, values = "", []
     if ids is not None:
         some, values = "WHERE id IN (SELECT value FROM json_each(?))", [canonical(list(ids))]
-    name = connection.dialect.identifier_preparer.quote_identifier(table)
-    found = _driver(connection).execute(f"SELECT * FROM {name} {some} ORDER BY id", values)
+    name = table.replace('"', '""')
+    found = driver_of(connection).execute(f'SELECT * FROM "{name}" {some} ORDER BY id', values)
     columns = [column for column, *_ in found.description]
     for row in found:
         yield dict(zip(columns, row, strict=True))
 
 
-def _driver(connection: Connection) -> Any:
+def driver_of(connection: "Connection") -> Any:
     """Give the driver's connection, in the transaction that is open: what lies between takes longer than the answer."""
     return connection.connection.driver_connection
 

@@ -5,12 +5,14 @@ Works on the file alone, whatever tables it has.
 
 import json
 from collections.abc import Iterator
+from typing import TYPE_CHECKING
 
-from sqlalchemy import Connection, text
-
-from fleetcare.db.chain import DERIVED, START, Entry, entries, last_entry, payload, rows
-from fleetcare.db.session import HEAD, revision
+from fleetcare.db.chain import DERIVED, START, Entry, driver_of, entries, last_entry, payload, rows
+from fleetcare.db.reading import HEAD, revision
 from fleetcare.errors import Misread
+
+if TYPE_CHECKING:
+    from sqlalchemy import Connection
 
 _SHORTEST = 8
 """Hex digits of a printed head that are enough to compare."""
@@ -19,7 +21,7 @@ Newest = dict[tuple[str, str], Entry]
 """For each row, by table and uid, its newest entry."""
 
 
-def check(connection: Connection, head: str | None = None) -> list[str]:
+def check(connection: "Connection", head: str | None = None) -> list[str]:
     """Give one sentence for everything that is wrong with a database; none if it is sound.
 
     `head` is SEQ:HASH as it was once printed, the hash whole or its first 8 digits or more; against it
@@ -35,17 +37,17 @@ def check(connection: Connection, head: str | None = None) -> list[str]:
     ]
 
 
-def _file(connection: Connection) -> Iterator[str]:
-    for (complaint,) in connection.execute(text("PRAGMA integrity_check")):
+def _file(connection: "Connection") -> Iterator[str]:
+    for (complaint,) in driver_of(connection).execute("PRAGMA integrity_check"):
         if complaint != "ok":
             yield f"the file is damaged: {complaint}"
-    for table, row_id, other, _ in connection.execute(text("PRAGMA foreign_key_check")):
+    for table, row_id, other, _ in driver_of(connection).execute("PRAGMA foreign_key_check"):
         yield f"{table} {row_id} refers to a row of {other} that is not there"
     if (found := revision(connection)) != HEAD:
         yield f"the tables are those of {found}, this program's are those of {HEAD}"
 
 
-def _chain(connection: Connection, newest: Newest) -> Iterator[str]:
+def _chain(connection: "Connection", newest: Newest) -> Iterator[str]:
     """Follow the chain from its start, filling `newest` on the way."""
     before = START
     for entry in entries(connection):
@@ -62,24 +64,24 @@ def _missing(first: int, last: int) -> str:
     return f"ledger entry {first} is missing" if first == last else f"ledger entries {first} to {last} are missing"
 
 
-def _printed(connection: Connection, seq: int, digits: str) -> Iterator[str]:
+def _printed(connection: "Connection", seq: int, digits: str) -> Iterator[str]:
     if not seq:
         return  # printed before anything was stored
-    found = connection.execute(text("SELECT hash FROM ledger WHERE seq = :seq"), {"seq": seq}).scalar_one_or_none()
+    found = driver_of(connection).execute("SELECT hash FROM ledger WHERE seq = :seq", {"seq": seq}).fetchone()
     if found is None:
         yield f"ledger entry {seq} was printed but is not there; the ledger ends at {last_entry(connection).seq}"
-    elif not found.startswith(digits):
+    elif not found[0].startswith(digits):
         yield f"ledger entry {seq} is not the one that was printed"
 
 
-def _rows(connection: Connection, newest: Newest) -> Iterator[str]:
+def _rows(connection: "Connection", newest: Newest) -> Iterator[str]:
     """Compare every row with its newest entry, using `newest` up."""
-    tables = text(
+    tables = (
         "SELECT name, EXISTS (SELECT 1 FROM pragma_table_info(sqlite_master.name) WHERE name = 'uid') "
         "FROM sqlite_master WHERE type = 'table' AND name NOT LIKE 'sqlite_%' "
         "AND name NOT IN ('ledger', 'alembic_version') ORDER BY name"
     )
-    for table, has_uid in connection.execute(tables).all():
+    for table, has_uid in driver_of(connection).execute(tables).fetchall():
         if table in DERIVED:
             continue
         if not has_uid:

@@ -9,7 +9,8 @@ from sqlalchemy import Connection, text
 
 import fleetcare
 from fleetcare.db.failures import newer
-from fleetcare.db.session import HEAD, copy, engine, require
+from fleetcare.db.reading import HEAD, copy, require
+from fleetcare.db.session import engine
 from fleetcare.errors import NoDatabase
 
 

@@ -7,7 +7,8 @@ from pathlib import Path
 from tempfile import TemporaryDirectory
 from typing import TYPE_CHECKING
 
-from fleetcare.db.session import copy, writing
+from fleetcare.db.reading import copy
+from fleetcare.db.session import writing
 from fleetcare.demo.enter import enter, sheet_draft
 from fleetcare.demo.history import history
 from fleetcare.demo.steps import Step, Verb

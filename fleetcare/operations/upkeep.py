@@ -25,7 +25,7 @@ def backup(context: "Context", out: Path | None = None) -> Path:
     Without `out` the copy lies beside the database, named after it and the day. Raises Refused where the
     file is there already, NoDatabase where either file cannot be used.
     """
-    from fleetcare.db.session import copy, require
+    from fleetcare.db.reading import copy, require
 
     require(context.path)
     out = out or _free_name(context)
@@ -45,17 +45,17 @@ def check(context: "Context", head: str | None = None) -> Soundness:
 
     The file is taken as it is: an older one is not upgraded. Raises Misread for an unreadable head.
     """
-    from fleetcare.db import session
     from fleetcare.db.chain import last_entry
     from fleetcare.db.check import check as problems
+    from fleetcare.db.reading import reading
 
-    with session.reading(context.path, as_is=True) as connection:
+    with reading(context.path, as_is=True) as connection:
         return Soundness(tuple(problems(connection, head)), last_entry(connection).head)
 
 
 def upgrade(context: "Context") -> Path | None:
     """Bring an older database up to this program, and give the copy made before; None if it is current."""
-    from fleetcare.db.session import current
+    from fleetcare.db.reading import current
 
     return current(context.path)
 

@@ -7,11 +7,11 @@ from pathlib import Path
 
 import pytest
 
-from fleetcare.db import migrate, session
+from fleetcare.db import migrate, reading
 from tests.cli.conftest import Ran, Runner
 
 NEXT = "20270101_next"
-REVISION = f'revision = "{NEXT}"\ndown_revision = "{session.HEAD}"\n\n\ndef upgrade() -> None:\n    pass\n'
+REVISION = f'revision = "{NEXT}"\ndown_revision = "{reading.HEAD}"\n\n\ndef upgrade() -> None:\n    pass\n'
 
 
 @pytest.fixture
@@ -134,7 +134,7 @@ def test_an_older_database_is_brought_up_after_a_copy_and_says_so(
     (scripts / "versions" / f"{NEXT}.py").write_text(REVISION)
     before = dumped(db)
     # The program as it will be once there is a second migration.
-    monkeypatch.setattr(session, "HEAD", NEXT)
+    monkeypatch.setattr(reading, "HEAD", NEXT)
     monkeypatch.setattr(migrate, "HEAD", NEXT)
     monkeypatch.setattr(migrate, "scripts_folder", lambda: scripts)
     copy = db.with_name(f"yard.db.before-{NEXT}.db")

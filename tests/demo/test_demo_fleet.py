@@ -8,7 +8,7 @@ from pathlib import Path
 import pytest
 
 from fleetcare.context import Context
-from fleetcare.db.session import HEAD
+from fleetcare.db.reading import HEAD
 from fleetcare.demo.build import build
 from fleetcare.domain.lines import State
 from fleetcare.operations.due import due_rows

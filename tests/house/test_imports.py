@@ -9,7 +9,7 @@ import pytest
 from tests.house.conftest import ROOT
 
 HEAVY = {"textual", "rich", "sqlmodel", "sqlalchemy", "alembic", "pydantic", "dateutil"}
-NOT_FOR_READING = {"textual", "rich", "sqlmodel", "alembic", "pydantic"}
+NOT_FOR_READING = {"textual", "rich", "sqlmodel", "sqlalchemy", "alembic", "pydantic"}
 
 PROBE = """
 import sys
@@ -37,7 +37,7 @@ def test_help_and_bench_sums_load_no_database_no_forms_and_no_screen(words: tupl
 
 
 @pytest.mark.parametrize("words", [("due", "--format", "csv"), ("engine", "list")], ids=" ".join)
-def test_reading_loads_no_tables_no_migrations_no_forms_and_no_screen(words: tuple[str, ...]) -> None:
+def test_reading_loads_no_tables_nor_their_library_no_migrations_no_forms_and_no_screen(words: tuple[str, ...]) -> None:
     assert not loaded_by("--db", str(ROOT / "demo_fleet.db"), *words) & NOT_FOR_READING
 
 

@@ -3,11 +3,11 @@
 from collections.abc import Callable
 
 import pytest
-from sqlalchemy import text
 
 from fleetcare.context import Context
 from fleetcare.db.tables import Site
 from fleetcare.errors import NoDatabase, Refused
+from fleetcare.operations.rows import fetch
 
 
 def add_site(context: Context, name: str = "North Sluice") -> None:
@@ -19,7 +19,7 @@ def add_site(context: Context, name: str = "North Sluice") -> None:
 def sites(context: Context) -> list[str]:
     """One small read."""
     with context.read() as connection:
-        return list(connection.execute(text("SELECT name FROM site ORDER BY id")).scalars())
+        return [row[0] for row in fetch(connection, "SELECT name FROM site ORDER BY id")]
 
 
 def add_a_refused_site(context: Context) -> None:

@@ -7,7 +7,7 @@ from pathlib import Path
 import pytest
 
 from fleetcare.context import Context
-from fleetcare.db import session as file
+from fleetcare.db import reading as file
 from fleetcare.errors import NoDatabase
 from fleetcare.operations import upkeep
 from tests.operations.small_use import BOTH, Use, add_site, complaint, sites

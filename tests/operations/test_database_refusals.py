@@ -12,7 +12,7 @@ import pytest
 from sqlalchemy.exc import IntegrityError
 
 from fleetcare.context import Context
-from fleetcare.db import session as file
+from fleetcare.db import reading as file
 from fleetcare.db.tables import Item
 from fleetcare.errors import NoDatabase
 from tests.operations.small_use import BOTH, Use, add_site, add_what_does_not_fit, complaint, sites

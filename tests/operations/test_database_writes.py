@@ -16,6 +16,7 @@ from fleetcare.context import Context
 from fleetcare.db import session as file
 from fleetcare.errors import NoDatabase, Refused
 from fleetcare.operations import upkeep
+from fleetcare.operations.rows import fetch
 from tests.operations.small_use import add_a_refused_site, add_site, sites
 
 
@@ -108,9 +109,8 @@ def waiting_writer(context: Context) -> Iterator[tuple[Connection, list[NoDataba
         except NoDatabase as error:
             failed.append(error)
 
-    def opened(driver: sqlite3.Connection, _: object) -> None:
-        if driver.execute("PRAGMA query_only").fetchone() == (0,):  # not the one that only looked what the file is
-            is_open.set()
+    def opened(*_: object) -> None:
+        is_open.set()
 
     writer = threading.Thread(target=write)
     with file.engine(context.path).begin() as holder:
@@ -138,9 +138,9 @@ def test_a_writer_that_waited_while_a_newer_program_upgraded_writes_nothing(ctx:
 
 def test_a_reader_sees_one_state_while_others_write(ctx: Context) -> None:
     with ctx.read() as connection:
-        assert connection.execute(text("SELECT count(*) FROM site")).scalar_one() == 0
+        assert fetch(connection, "SELECT count(*) FROM site") == [(0,)]
         with closing(sqlite3.connect(ctx.path, timeout=0)) as other:
             other.execute("INSERT INTO site VALUES (1, 'u', '2026-05-01', 'West', 'west')")
             with pytest.raises(sqlite3.OperationalError, match="locked"):
                 other.commit()
-        assert connection.execute(text("SELECT count(*) FROM site")).scalar_one() == 0
+        assert fetch(connection, "SELECT count(*) FROM site") == [(0,)]

@@ -8,7 +8,6 @@ from datetime import date
 from pathlib import Path
 
 import pytest
-from sqlalchemy import text
 
 from fleetcare.context import Context
 from fleetcare.db.chain import DERIVED
@@ -289,7 +288,7 @@ def test_a_copy_of_the_file_brings_what_is_kept_along(
     copy = Context(str(shutil.copy(yard.path, tmp_path / "copy.db")), TODAY)
     with counted(monkeypatch) as done, copy.read() as connection:
         assert any(finding_lives_on(connection, TODAY).values())
-        assert connection.execute(text("select count(*) from judged_engine")).scalar_one() == 3
+        assert fetch(connection, "select count(*) from judged_engine") == [(3,)]
     assert done == []
 
 

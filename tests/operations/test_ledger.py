@@ -9,7 +9,7 @@ from decimal import Decimal
 from pathlib import Path
 
 import pytest
-from sqlalchemy import insert, text, update
+from sqlalchemy import insert, update
 
 from fleetcare.context import Context
 from fleetcare.db.chain import Entry, entries, seal
@@ -17,6 +17,7 @@ from fleetcare.db.tables import Fitting, Item, Meter, Reading, Site
 from fleetcare.domain.quantities import Kind
 from fleetcare.errors import Misread
 from fleetcare.operations import upkeep
+from fleetcare.operations.rows import fetch
 from tests.conftest import NOW, counted_uids
 
 Tamper = Callable[[str], None]
@@ -143,7 +144,7 @@ def test_a_bulk_statement_that_would_pass_the_ledger_by_is_refused(yard: Context
 
 def test_a_reading_connection_cannot_write(yard: Context) -> None:
     with pytest.raises(Exception, match="may not be written"), yard.read() as connection:
-        connection.execute(text("UPDATE reading SET note = 'x'"))
+        fetch(connection, "UPDATE reading SET note = 'x'")
 
 
 def test_an_untouched_database_is_sound(yard: Context) -> None:
