@@ -78,8 +78,9 @@ class Condition:
     """One condition of a pattern, on any of `quantities`.
 
     WITHIN holds from `low` to `high`, a limit marked `beyond` being itself outside and one marked `reach` inside; `over`
-    divides by another quantity, `less_new` takes off fresh oil first; `calls_out` flags what lies within. `side` picks the
-    lash points of one side. `is_optional` holds where nothing was measured.
+    divides by another quantity, `less_new` takes off fresh oil first, `of_before` makes it percent of what the sample before
+    had, of one fill of oil; `calls_out` flags what lies within. `side` picks the lash points of one side. `is_optional` holds
+    where nothing was measured.
     """
 
     quantities: tuple[str, ...]
@@ -89,6 +90,7 @@ class Condition:
     unit: str = ""
     over: str = ""
     less_new: bool = False
+    of_before: bool = False
     calls_out: bool = False
     side: str = ""
     words: tuple[str, ...] = ()

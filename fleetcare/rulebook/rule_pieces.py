@@ -181,6 +181,7 @@ class ConditionIn(Form):
     unit: KnownUnit = ""
     over: Annotated[str, AfterValidator(lambda value: known(value) if value else value)] = ""
     less_new: bool = False
+    of_before: bool = False
     calls_out: bool = False
     side: Literal["", "intake", "exhaust"] = ""
     words: Annotated[tuple[Text, ...], BeforeValidator(as_list)] = ()
@@ -197,6 +198,8 @@ class ConditionIn(Form):
             raise ValueError('low and high go with asks "within"|give one of them there, and nowhere else')
         if self.asks is Asks.WITHIN and not self.over and not all(_fits(one, self.unit) for one in self.quantities):
             raise ValueError(f"unit {self.unit!r} does not fit {', '.join(self.quantities)}|write one that does")
+        if self.of_before and (self.asks is not Asks.WITHIN or self.unit != "%" or self.over or self.less_new):
+            raise ValueError('of_before goes with asks "within" and unit "%"|leave it, over and less_new out elsewhere')
         if self.calls_out and self.asks is not Asks.WITHIN:
             raise ValueError('calls_out goes with asks "within"|leave it out')
         return self

@@ -152,7 +152,7 @@ def _made(shape: Statistical, limit: Limit) -> str:
 def _condition(condition: Condition) -> str:
     name = " or ".join(title(quantity) for quantity in condition.quantities)
     over = f" over {title(condition.over)}" if condition.over else ""
-    new = " above new oil" if condition.less_new else ""
+    new = " above new oil" if condition.less_new else " of the sample before" if condition.of_before else ""
     side = f" of the {condition.side} side" if condition.side else ""
     optional = " or not measured" if condition.is_optional else ""
     return f"{name}{over}{new}{side} {_asked(condition)}{optional}"

@@ -207,6 +207,32 @@ def test_elements_that_rise_together_are_one_finding_of_one_cause(values: dict[s
     assert {one.quantity for one in finding.evidence} == set(values)
 
 
+@pytest.mark.parametrize(
+    ("now", "causes"),
+    [
+        ({"Fe": "20", "Cu": "6", "Al": "4"}, ["all wear metals fell"]),
+        ({"Fe": "21", "Cu": "6", "Al": "4"}, []),
+        ({"Fe": "20", "Cu": "6"}, []),
+    ],
+)
+def test_a_sudden_drop_of_all_metals_calls_for_a_second_sample(now: dict[str, str], causes: list[str]) -> None:
+    """JOAP Volume III (TM 38-301-3), TF30 page: resample and new baseline; these three, and half: common practice."""
+    before = {"Fe": "40", "Cu": "12", "Al": "8"}
+    sheets = [
+        a_sheet(
+            *(value(quantity, text) for quantity, text in metals.items()),
+            value("hours_on_oil", hours),
+            days=days,
+            engine_hours=Decimal(1000) + Decimal(hours),
+        )
+        for metals, hours, days in ((before, "100", 30), (now, "150", 0))
+    ]
+    signals = judge(rules_named(), facts(sheets[1], earlier=(sheets[0],)))
+    findings = merge("P-01", signals)
+    assert [one.cause for one in findings] == causes
+    assert {value.quantity for one in findings for value in one.evidence} == ({*now} if causes else set())
+
+
 def test_sodium_alone_in_a_marine_engine_is_sea_water() -> None:
     """TM 10-6640-233-10: Na with marine equipment."""
     boat = replace(ENGINE, is_marine=True)

@@ -221,6 +221,10 @@ BAD |= {
         PATTERN + 'quantities = "Fe"\nasks = "clear"\ncalls_out = true\n',
         'calls_out goes with asks "within"; leave it out',
     ),
+    "of before elsewhere": (
+        PATTERN + 'quantities = "Fe"\nasks = "within"\nof_before = true\nunit = "ppm"\nlow = { beyond = 3 }\n',
+        'of_before goes with asks "within" and unit "%"; leave it, over and less_new out elsewhere',
+    ),
     "over nothing": (
         PATTERN + 'quantities = "Fe"\nasks = "within"\nover = "x"\nlow = { beyond = 3 }\n',
         "over: 'x' is measured on no sheet",

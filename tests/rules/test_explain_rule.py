@@ -113,11 +113,13 @@ def test_a_pattern_is_said_condition_by_condition() -> None:
         Condition(("K",), Asks.WITHIN, low=reach("50"), unit="ppm"),
         Condition(("K",), Asks.WITHIN, high=beyond("90"), unit="ppm"),
         Condition(("heard",), Asks.SAID, words=("intake", "next")),
+        Condition(("Fe",), Asks.WITHIN, high=reach("50"), unit="%", of_before=True),
     )
     assert say_judged(a_rule(shape=Pattern(conditions, at=Where.NEIGHBOURS))) == (
         "a pattern on neighbours: sodium or potassium flagged high and aluminium not flagged high or not measured and valve"
         " lash of the exhaust side flagged low and silicon over aluminium above new oil above 2 and up to 5 and potassium"
-        " from 50 ppm and potassium below 90 ppm and heard said to be intake or next"
+        " from 50 ppm and potassium below 90 ppm and heard said to be intake or next and"
+        " iron of the sample before up to 50 %"
     )
     assert (
         say_judged(a_rule(shape=Pattern(conditions[:1]))) == "a pattern on the engine: sodium or potassium flagged high"

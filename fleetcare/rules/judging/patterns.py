@@ -14,8 +14,10 @@ from fleetcare.domain.findings import Evidence, Signal, Step
 from fleetcare.domain.measured import MeasuredSheet
 from fleetcare.domain.rule_book import Asks, Condition, End, Pattern, Rule, Where, worst
 from fleetcare.domain.sheets import Phase
+from fleetcare.rules.judging.comparing import before
 from fleetcare.rules.judging.facts import CannotTell, MeasuredFacts
 from fleetcare.rules.judging.hold import due_on
+from fleetcare.rules.judging.rates import check_same_fill
 from fleetcare.rules.judging.spans import Side, Span
 from fleetcare.rules.judging.values import Measured, cylinder_of, fresh_of, step, title, values_of
 from fleetcare.rules.judging.words import words_of
@@ -213,6 +215,8 @@ def _values(condition: Condition, cylinder: int | None, scene: _Scene) -> list[M
 
 def _span(condition: Condition, one: Measured, scene: _Scene) -> tuple[Span, tuple[Evidence, ...]]:
     """Work out what lies within: the value in the unit of the condition, less new oil, over another quantity."""
+    if condition.of_before:
+        return _of_before(condition, one, scene.facts)
     span, used = _above_new(condition, one, scene, condition.unit if not condition.over else one.unit)
     if not condition.over:
         return span, (*one.used, *used)
@@ -225,10 +229,22 @@ def _span(condition: Condition, one: Measured, scene: _Scene) -> tuple[Span, tup
     return span.over(other), (*one.used, *used, others[0].evidence, *seen)
 
 
+def _of_before(condition: Condition, one: Measured, facts: MeasuredFacts) -> tuple[Span, tuple[Evidence, ...]]:
+    """Give a value in percent of what the sample before had, where it would lie within of one of the same fill."""
+    then = before(one.quantity, one, facts)
+    if then.span.low <= 0:
+        raise CannotTell("there was none of it before")
+    span = one.within(then.unit).over(then.span).times(100)
+    if _lies_within(span, condition):
+        check_same_fill(one, facts)
+    return span, (*one.used, then.evidence)
+
+
 def _label(condition: Condition, one: Measured) -> str:
     """Name the number that lies within: "silicon to aluminium, both above new oil", "wet gain at 3"."""
     over = f" to {title(condition.over)}" if condition.over else ""
     above = f",{' both' if over else ''} above new oil" if condition.less_new else ""
+    over = ", of the sample before" if condition.of_before else over
     return f"{title(one.quantity)}{over}{above}{f' at {one.point}' if one.point else ''}"
 
 

@@ -21,7 +21,7 @@ from fleetcare.rules.judging.facts import CannotTell, Figure, MeasuredFacts
 from fleetcare.rules.judging.spans import decimal, known
 from fleetcare.rules.judging.values import HOURS_ON_OIL, TOP_UP, Measured, fresh_of, single, title
 from fleetcare.rules.oil import wear_rate
-from fleetcare.rules.oil_rates import OilSample, rate_between
+from fleetcare.rules.oil_rates import OilRate, OilSample, rate_between
 
 _LARGE_TOP_UP = Decimal("0.1")
 
@@ -51,31 +51,50 @@ def _of_engine(rule: Rule, shape: Rate, one: Measured, facts: MeasuredFacts) -> 
 
 def _of_oil(rule: Rule, shape: Rate, one: Measured, facts: MeasuredFacts) -> Figure:
     then = before(rule.quantity, one, facts)
-    sheet = _sheet_of(then, facts)
+    now, was = _plain(one, rule.unit), _plain(then, rule.unit)
+    rate = _rate(shape, rule.unit, (one, now), (then, was), facts)
+    if rate.hours < shape.least_hours:
+        raise CannotTell("too few hours in between", one.point)
+    steps = _steps(rule, now, then, was, rate.hours)
+    figure = rate.corrected if shape.is_corrected else rate.as_read
+    return Figure(one.point, known(figure), one.evidence, rule.low, rule.high, (then.evidence,), steps)
+
+
+def check_same_fill(one: Measured, facts: MeasuredFacts) -> None:
+    """Raise CannotTell where a value and that of the sample before do not compare: other oil, a large top-up, too close."""
+    then = before(one.quantity, one, facts)
+    pair = (one, _plain(one, one.unit)), (then, _plain(then, one.unit))
+    try:
+        _rate(Rate(Since.BEFORE, 10), one.unit, *pair, facts)
+    except Refused as error:
+        raise CannotTell(error.detail, one.point) from None
+
+
+def _rate(
+    shape: Rate, unit: str, now: tuple[Measured, Decimal], then: tuple[Measured, Decimal], facts: MeasuredFacts
+) -> OilRate:
+    """Give the rate between two samples of one fill, each value with its figure in a unit."""
+    (one, ppm_now), (before_it, ppm_then) = now, then
+    sheet = _sheet_of(before_it, facts)
     now_at, then_at = _given(facts.sheet, HOURS_ON_OIL), _given(sheet, HOURS_ON_OIL)
     if is_other_fill((sheet, then_at), (facts.sheet, now_at)):
         raise CannotTell("the oil was changed in between", one.point)
-    now, was = _plain(one, rule.unit), _plain(then, rule.unit)
     first, second = (
         OilSample(Decimal(0), at, ppm, _top_up(taken, is_needed=shape.is_corrected))
-        for at, ppm, taken in ((then_at, was, sheet), (now_at, now, facts.sheet))
+        for at, ppm, taken in ((then_at, ppm_then, sheet), (now_at, ppm_now, facts.sheet))
     )
-    fresh = fresh_of(facts.sheet, facts.fresh, rule.quantity)
+    fresh = fresh_of(facts.sheet, facts.fresh, one.quantity)
     rate = rate_between(
         first,
         second,
         per_hours=shape.per,
         most_make_up=_LARGE_TOP_UP,
         sump=facts.engine.sump,
-        fresh=_plain(fresh, rule.unit) if fresh else Decimal(0),
+        fresh=_plain(fresh, unit) if fresh else Decimal(0),
     )
     if isinstance(rate, Hindrance):
         raise CannotTell(rate.obstacle, one.point)
-    if rate.hours < shape.least_hours:
-        raise CannotTell("too few hours in between", one.point)
-    steps = _steps(rule, now, then, was, rate.hours)
-    figure = rate.corrected if shape.is_corrected else rate.as_read
-    return Figure(one.point, known(figure), one.evidence, rule.low, rule.high, (then.evidence,), steps)
+    return rate
 
 
 def _since_change(rule: Rule, shape: Rate, one: Measured, facts: MeasuredFacts) -> Figure:
