@@ -12,7 +12,7 @@ from collections.abc import Iterable
 from dataclasses import replace
 
 from fleetcare.domain.findings import Evidence, Finding, Signal
-from fleetcare.domain.rule_book import Asks, Pattern, Severity
+from fleetcare.domain.rule_book import Asks, Pattern, Severity, Where
 
 _Key = tuple[str, str]
 _PUT_TOGETHER = {Asks.FLAGGED_HIGH, Asks.FLAGGED_LOW, Asks.SAID}
@@ -57,12 +57,14 @@ def _claim(signal: Signal, owners: dict[Evidence, _Key], grouped: dict[_Key, lis
 def _rank(signal: Signal) -> tuple[object, ...]:
     """Order signals so that whatever leads comes first, however they were entered.
 
-    Of patterns those that put together what others say come before those that only hold values against limits.
+    Of patterns what is so at every cylinder comes first: all low are no row of gaskets. Then those that put together what
+    others say come before those that only hold values against limits.
     """
     shape = signal.rule.shape
     conditions = shape.conditions if isinstance(shape, Pattern) else ()
     return (
         signal.severity is not Severity.ALARM,
+        not (isinstance(shape, Pattern) and shape.at is Where.EVERY),
         -sum(condition.asks in _PUT_TOGETHER for condition in conditions),
         -len(conditions),
         -len(signal.flagged),

@@ -5,7 +5,7 @@ from datetime import date
 from itertools import permutations
 
 from fleetcare.domain.findings import Evidence, Finding, Signal
-from fleetcare.domain.rule_book import Asks, Condition, Pattern, Rule, Severity
+from fleetcare.domain.rule_book import Asks, Condition, Pattern, Rule, Severity, Where
 from fleetcare.domain.sheets import Phase
 from fleetcare.rules.findings import merge
 from tests.rules.measured import ON, a_rule
@@ -144,3 +144,12 @@ def test_a_finding_is_as_old_as_its_oldest_signal() -> None:
     (finding,) = merge("P-01", (old, says("b", "Fe", "iron", ALARM)))
     assert isinstance(finding, Finding)
     assert finding.since == date(2026, 1, 3)
+
+
+def test_what_is_so_at_every_cylinder_comes_before_what_is_so_at_some_of_them() -> None:
+    """All cylinders low are one wear, not a gasket between each two."""
+    gasket = fits("gasket", "a", "b", subject="1-2")
+    low = Pattern((Condition(("a",), Asks.FLAGGED_LOW),), at=Where.EVERY)
+    every = fits("all low", "a", "b", "c")
+    every = replace(every, rule=replace(every.rule, shape=low))
+    assert put(gasket, every) == [("all low", "alert", ["a", "b", "c"])]
