@@ -1,23 +1,40 @@
 """What every test is given: no home, one time zone, and a database made once by the migrations and copied."""
 
+import gc
 import itertools
 import os
 import shutil
 import time
-from collections.abc import Callable
+from collections.abc import Callable, Iterator
 from datetime import UTC, date, datetime
 from pathlib import Path
 
 import pytest
 
 from fleetcare.context import Context
+from fleetcare.db import reading
 
 TODAY = date(2026, 5, 1)
+AS_SHIPPED = reading.SYNCHRONOUS
 NOW = datetime(2026, 5, 1, 8, 30, tzinfo=UTC)
 
 # Child processes and this one keep the same time, away from UTC for half the year.
 os.environ["TZ"] = "Europe/London"
 time.tzset()
+
+
+def pytest_collection_finish() -> None:
+    """Leave what was loaded by now, thousands of tests among it, out of every later search for garbage."""
+    gc.collect()
+    gc.freeze()
+
+
+@pytest.fixture(scope="session", autouse=True)
+def no_power_cuts() -> Iterator[None]:
+    """Nothing waits for the disk, which is most of what a small write takes: no test outlives the machine it runs on."""
+    with pytest.MonkeyPatch.context() as patched:
+        patched.setattr(reading, "SYNCHRONOUS", "OFF")
+        yield
 
 
 @pytest.fixture(autouse=True)

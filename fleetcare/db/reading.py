@@ -23,6 +23,12 @@ HEAD = "20261202_findings"
 PATIENCE = 30.0
 """Seconds to wait for another program's write to end."""
 
+SYNCHRONOUS = "EXTRA"
+"""How a write is brought to the disk. In rollback-journal mode only EXTRA syncs the folder once the journal is gone.
+
+Without that a power cut can bring the journal back and undo what was acknowledged.
+"""
+
 _IMPATIENCE = 0.1
 """Seconds to wait to write what could as well be left unwritten."""
 
@@ -120,9 +126,7 @@ def connect(
     try:
         driver.execute(f"PRAGMA query_only = {query_only:d}")
         driver.execute(f"PRAGMA foreign_keys = {foreign_keys:d}")
-        # In rollback-journal mode only EXTRA syncs the folder once the journal is gone, without which
-        # a power cut can bring the journal back and undo what was acknowledged.
-        driver.execute("PRAGMA synchronous = EXTRA")
+        driver.execute(f"PRAGMA synchronous = {SYNCHRONOUS}")
     except sqlite3.Error:
         driver.close()
         raise

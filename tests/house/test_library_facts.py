@@ -13,8 +13,10 @@ from sqlalchemy import Engine, MetaData, create_engine, text
 from sqlalchemy.exc import IntegrityError, StatementError
 from sqlmodel import Field, Session, SQLModel
 
+from fleetcare.db import reading
 from fleetcare.db import session as file
 from fleetcare.db.columns import choice, exact
+from tests.conftest import AS_SHIPPED
 
 
 class Mark(StrEnum):
@@ -118,7 +120,8 @@ def test_the_switch_for_references_does_nothing_inside_a_transaction(db: Path) -
         assert connection.execute(text("PRAGMA foreign_keys")).scalar_one() == 1
 
 
-def test_an_acknowledged_commit_outlasts_a_power_cut(db: Path) -> None:
+def test_an_acknowledged_commit_outlasts_a_power_cut(db: Path, monkeypatch: pytest.MonkeyPatch) -> None:
+    monkeypatch.setattr(reading, "SYNCHRONOUS", AS_SHIPPED)
     with file.engine(db).connect() as connection:
         modes = [connection.execute(text(f"PRAGMA {name}")).scalar_one() for name in ("journal_mode", "synchronous")]
     assert modes == ["delete", 3]  # 3 is EXTRA: https://www.sqlite.org/pragma.html#pragma_synchronous
