@@ -136,13 +136,18 @@ class RuleIn(Form):
             check_limits(self._shape(), limits, end)
         if not is_spec and not self._unit_fits():
             raise ValueError(f"unit {self.unit!r} does not fit {self.quantity}|write one that does, % for a share")
+        if self._is_percent and dimension(QUANTITIES[self.quantity].unit) == "temperature":
+            raise ValueError('a percentage of a temperature is another in °F|compare by = "difference"')
+
+    @property
+    def _is_percent(self) -> bool:
+        compared = self.against_sheet or self.change
+        return compared is not None and compared.by is not By.DIFFERENCE
 
     def _unit_fits(self) -> bool:
         """Whether the limits are in a unit of what the shape works out: of a comparison percent, else of the quantity."""
-        compared = self.against_sheet or self.change
-        is_percent = compared is not None and compared.by is not By.DIFFERENCE
         is_share = self.bounds is not None and self.bounds.basis is Basis.NAMEPLATE
-        if is_percent or is_share:
+        if self._is_percent or is_share:
             return self.unit == "%"
         if self.approach is not None:
             return True  # its unit is hours

@@ -5,6 +5,7 @@ finite decimals in other units too. What is drawn says nothing of what is right:
 """
 
 from collections.abc import Mapping
+from dataclasses import replace
 from decimal import Decimal
 from functools import lru_cache
 from typing import TypeVar
@@ -84,7 +85,7 @@ def figures(draw: st.DrawFn, placed: str) -> Decimal:
 @st.composite
 def oil_sheets(draw: st.DrawFn, engine: MeasuredEngine, sick: str) -> MeasuredSheet:
     """An oil sample with some of what a laboratory reports, plain, as a bound or not detected; often of one trouble."""
-    trouble = draw(one_of(*_TROUBLES, "", "")).split()
+    trouble = draw(one_of(*_TROUBLES, "Fe Pb", "Fe Pb Al", "")).split()
     values = []
     for quantity in dict.fromkeys([*trouble, *draw(_SOME_OF_OIL)]):
         unit, placed = OIL[quantity]
@@ -92,12 +93,13 @@ def oil_sheets(draw: st.DrawFn, engine: MeasuredEngine, sick: str) -> MeasuredSh
         value = None if qualifier == "ND" else draw(figures(placed))
         values.append(SheetValue(quantity, "", Phase.NONE, value, None, None, unit, qualifier))
     if draw(st.integers(0, 3)):
-        values.append(figure("hours_on_oil", Decimal(draw(one_of(0, 5, 10, 40, 50, 60, 150, 250))), "h"))
+        values.append(figure("hours_on_oil", Decimal(draw(one_of(0, 5, 10, 40, 50, 60, 60, 60, 60, 150, 250))), "h"))
         values.append(figure("top_up", draw(st.integers(0, 3)) * _LITRES / 4, "L"))
     if draw(st.integers(0, 3)) == 0:
         values.append(figure("Si", Decimal(draw(one_of(3, 20))), "ppm", phase=Phase.NEW))
     words = draw(one_of((), (), ("repair", "sealant"), ("tbn_method", "hydrochloric"), ("grade", "30")))
-    return sheet_of("oil", values, *([SheetWord(*words)] if words else []))
+    sheet = sheet_of("oil", values, *([SheetWord(*words)] if words else []))
+    return replace(sheet, logged_top_up=draw(one_of(None, None, _LITRES)))
 
 
 _SHARES = one_of(100, 100, 100, 98, 90, 85, 80, 75, 74, 70, 60, 50, 0, -1)
@@ -209,9 +211,10 @@ def engines(draw: st.DrawFn) -> tuple[MeasuredEngine, ValveTrain | None]:
         banks=banks(train) if train else (),
         duty=draw(one_of("standby", "emergency", "standby", "")),
         oil_grade=draw(one_of("15W-40", "SAE 30", "")),
-        sump=draw(one_of(None, Decimal(8), Decimal(8))),
+        sump=draw(one_of(Decimal(8), Decimal(8), None)),
         rated_kw=draw(one_of(None, Decimal(500), Decimal(500))),
         is_marine=draw(one_of(None, True, False)),
+        altitude=draw(one_of(None, Decimal(300), Decimal("1524"), Decimal(4000))),
     ), train
 
 

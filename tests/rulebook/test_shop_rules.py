@@ -99,6 +99,13 @@ BAD = {
     "no quantity": (OWN.replace('quantity = "pressure"\n', ""), "quantity is missing; say what is measured"),
     "unit": (OWN.replace('"psi"', '"stone"'), "unit: 'stone' is no unit known here; use one of"),
     "other unit": (OWN.replace('"psi"', '"ppm"'), "unit 'ppm' does not fit pressure; write one that does"),
+    "percent of a temperature": (
+        OWN.replace('"compression"', '"spot"')
+        .replace('"pressure"', '"exhaust"')
+        .replace('"psi"', '"%"')
+        .replace("bounds = {}", 'against_sheet = { reference = "highest", by = "ratio" }'),
+        'a percentage of a temperature is another in °F; compare by = "difference"',
+    ),
     "no shape": (OWN.replace("bounds = {}\n", ""), "a rule has one shape, this has 0; give one of bounds,"),
     "two shapes": (OWN + 'change = { since = "new", by = "share" }\n', "a rule has one shape, this has 2"),
     "no limit": (OWN.replace("low = { alarm = { beyond = 350.5 } }\n", ""), "limits: one is needed"),
