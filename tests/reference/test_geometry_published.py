@@ -20,3 +20,8 @@ def test_displacement_agrees_with_the_published_figure(case: dict[str, str]) -> 
 def test_mean_piston_speed_agrees_with_the_encyclopaedia() -> None:
     """Article "Mean piston speed": 90 mm of stroke at 3000 rpm is 9 m/s."""
     assert mean_piston_speed(Decimal(90), Decimal(3000)) == 9
+
+
+def test_mean_piston_speed_agrees_with_the_textbook() -> None:
+    """Pulkrabek, Engineering Fundamentals of the ICE, example 2-1 (from memory, recomputed): 8.60 cm, 3600 rpm, 10.32 m/s."""
+    assert mean_piston_speed(Decimal("86.0"), Decimal(3600)) == Decimal("10.32")

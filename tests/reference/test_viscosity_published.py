@@ -2,10 +2,13 @@
 
 import csv
 from decimal import Decimal
+from math import log10
 from pathlib import Path
 
 import pytest
+from chemicals.viscosity import viscosity_index as index_elsewhere
 
+from fleetcare.errors import Refused
 from fleetcare.rules.d2270 import reference_oils
 from fleetcare.rules.j300 import GRADES, grade_oil
 from fleetcare.rules.viscosity import viscosity_index, walther
@@ -46,6 +49,48 @@ def test_the_index_agrees_with_an_independent_library(row: dict[str, str]) -> No
     """Computed with `chemicals` 1.5.2, viscosity_index, after ASTM D2270-10 (2016), for random oils."""
     index = viscosity_index(Decimal(row["kv40"]), Decimal(row["kv100"]))
     assert float(index.unrounded) == pytest.approx(float(row["unrounded"]), abs=2e-6)
+
+
+@pytest.mark.parametrize(
+    "kv100", ["2", "2.05", "3.33", "5.05", "8.86", "10.8", "14.5", "21.9", "69.9", "69.99", "70.5", "120"]
+)
+def test_the_index_is_that_of_an_independent_library_over_thick_and_thin_oils(kv100: str) -> None:
+    """`chemicals`, viscosity_index, after ASTM D2270-10 (2016); it takes m2/s. From far below 100 to far above."""
+    for times in ("2.2", "4", "7.3", "11", "18", "40"):
+        kv40 = Decimal(kv100) * Decimal(times)
+        theirs = index_elsewhere(float(kv40) * 1e-6, float(kv100) * 1e-6)
+        assert float(viscosity_index(kv40, Decimal(kv100)).unrounded) == pytest.approx(theirs, abs=2e-6, rel=1e-9)
+
+
+def test_below_2_there_is_no_index_here_nor_there() -> None:
+    """ASTM D2270 is defined from 2.0 mm2/s at 100 °C on."""
+    assert index_elsewhere(5e-6, 1.99e-6) is None
+    with pytest.raises(Refused, match="no viscosity index is defined"):
+        viscosity_index(Decimal(5), Decimal("1.99"))
+
+
+def test_the_oil_of_95_and_10_8_has_an_index_of_96_902() -> None:
+    """Worked by hand from Table 1 of ASTM D2270, and with `chemicals`: 96.902, reported as 97."""
+    index = viscosity_index(Decimal(95), Decimal("10.8"))
+    assert (f"{index.unrounded:.3f}", index.rounded) == ("96.902", 97)
+
+
+def test_the_quadratics_of_the_standard_give_the_same_index_within_a_third_of_a_point() -> None:
+    """ASTM D2270, Table X2.1 in place of Table 1: over engine oils the two differ by 0.34 at most, rounded by one."""
+    for tenths in range(35, 300, 7):
+        kv100 = Decimal(tenths) / 10
+        row = next(row for row in QUADRATICS if Decimal(row["from"]) <= kv100 <= Decimal(row["to"]))
+        a, b, c, d, e, f = (float(row[name]) for name in "abcdef")
+        y = float(kv100)
+        zero, hundred = a * y**2 + b * y + c, d * y**2 + e * y + f
+        for kv40 in (0.6 * hundred, 0.9 * hundred, hundred + 0.3 * (zero - hundred), zero):
+            if kv40 >= hundred:
+                expected = 100 * (zero - kv40) / (zero - hundred)
+            else:
+                expected = (10 ** ((log10(hundred) - log10(kv40)) / log10(y)) - 1) / 0.00715 + 100
+            index = viscosity_index(Decimal(kv40), kv100)
+            assert abs(float(index.unrounded) - expected) <= 0.34
+            assert abs(index.rounded - round(expected)) <= 1
 
 
 # Rows of ASTM D2270, Table 1: Y, L, H.
