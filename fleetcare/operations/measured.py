@@ -19,6 +19,7 @@ from fleetcare.operations.kin import grade_key
 from fleetcare.operations.lash_specs import USUAL_VALVES, specs_of
 from fleetcare.operations.load import AS_STORED, Trial, entry_lives, load_counters, own_readings
 from fleetcare.operations.rows import Row, day, fetch, figure, known_day
+from fleetcare.operations.settings import holidays
 from fleetcare.operations.sheets_load import load_values
 from fleetcare.operations.top_ups import load_top_ups
 from fleetcare.rules.judge_engine import Background
@@ -82,6 +83,7 @@ def load_engine_sheets(
     specs = specs_of(connection, [item for item, own in sheets.items() if any(one.kind == LASH for one in own)])
     silent = [item for item, own in sheets.items() if any(one.kind == OIL and top_up(one) is None for one in own)]
     top_ups = load_top_ups(connection, silent, last[0], on, trial)
+    free = holidays(connection)
     found = []
     for row in plates:
         own = tuple(with_logged(sheet, top_ups.get(row[0], ())) for sheet in sheets.get(row[0], ()))
@@ -93,6 +95,7 @@ def load_engine_sheets(
             fresh=fresh.get(grade_in(own, engine), ()),
             family=families.of(row[0], max((sheet.on for sheet in own if sheet.kind == OIL), default=None)),
             lash=_judge_lash(own, points, limits),
+            holidays=free,
         )
         found.append(EngineSheets(row[0], engine, own, background, points, limits))
     return found

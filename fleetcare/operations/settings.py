@@ -1,7 +1,8 @@
-"""The shop's settings: plausible gains a day, when a meter is stale, the shop's name."""
+"""The shop's settings: plausible gains a day, when a meter is stale, the shop's name, supervisors and holidays."""
 
 from collections.abc import Callable
 from dataclasses import dataclass
+from datetime import date
 from decimal import Decimal
 from difflib import get_close_matches
 from typing import TYPE_CHECKING
@@ -50,6 +51,17 @@ def _names(value: str) -> str:
     return ", ".join(names.values())
 
 
+def _dates(value: str) -> str:
+    """Read days between commas, each once and in order."""
+    try:
+        days = {date.fromisoformat(day.strip()) for day in value.split(",") if day.strip()}
+    except ValueError as error:
+        raise Misread(f"no list of days: {error}", "give days such as 2026-12-25, 2026-12-26") from None
+    if not days:
+        raise Refused(f"no day stands in {value!r}", "give days such as 2026-12-25, 2026-12-26")
+    return ", ".join(day.isoformat() for day in sorted(days))
+
+
 @dataclass(frozen=True, slots=True)
 class SettingSpec:
     """One setting: its name, what holds where none is stored, what it means, and how a value of it is read."""
@@ -69,6 +81,7 @@ SETTINGS = (
     SettingSpec("stale-days", "", "days after which a reading is stale; empty: twice the engine's own rhythm", _days),
     SettingSpec("shop-name", "", "the shop's name, for what is printed", _name),
     SettingSpec("supervisors", "", "who may take the advice to drain a sound oil later; names, commas between", _names),
+    SettingSpec("holidays", "", "days that are no business days, for dates by which a law wants work done", _dates),
 )
 
 
@@ -92,6 +105,11 @@ def stale_days(connection: "Connection") -> int | None:
 def supervisors(connection: "Connection") -> tuple[str, ...]:
     """Give the names of the supervisors, none where the shop has not said."""
     return tuple(filter(None, read_settings(connection)["supervisors"].split(", ")))
+
+
+def holidays(connection: "Connection") -> frozenset[date]:
+    """Give the days the shop says nobody works on, beside Saturdays and Sundays."""
+    return frozenset(map(date.fromisoformat, filter(None, read_settings(connection)["holidays"].split(", "))))
 
 
 def spec_of(name: str) -> SettingSpec:

@@ -180,6 +180,18 @@ def test_the_last_day_a_law_sets_is_that_of_the_follow_up(yard: Runner) -> None:
     assert ran.out.endswith("Its rule sets 2026-05-04 as the last day.\n")
 
 
+def test_a_holiday_of_the_shop_moves_the_last_day_of_what_was_found_already(yard: Runner) -> None:
+    Path("ci.toml").write_text('[[preset]]\nname = "zzzz-ci"\nengines = "G-01"\n')
+    Path("tbn.csv").write_text("quantity,point,phase,value,unit\ntbn,,,2.9,\ntbn,,new,10,\n")
+    yard("rules", "--use", "ci.toml", "--why", "40 CFR 63", "--by", "Fenn")
+    yard("measure", "oil", "G-01", "tbn.csv", "--on", "2026-04-20", "--received", "2026-04-30")
+    days = []
+    for free in ("", "2026-05-01", "2026-05-04, 2026-05-01, 2026-05-02"):
+        yard("setting", "holidays", free)
+        days += [row["due_by"] for row in json.loads(yard("findings", "--format", "json").out) if row["due_by"]]
+    assert days == ["2026-05-04", "2026-05-05", "2026-05-06"]
+
+
 def test_a_last_day_that_has_passed_is_said_and_the_follow_up_is_due_at_once(yard: Runner) -> None:
     Path("ci.toml").write_text('[[preset]]\nname = "zzzz-ci"\nengines = "G-01"\n')
     Path("tbn.csv").write_text("quantity,point,phase,value,unit\ntbn,,,2.9,\ntbn,,new,10,\n")
