@@ -72,7 +72,7 @@ class NotJudged:
 class Finding:
     """One cause on one engine. The first signal leads: it names the cause; all are evidence.
 
-    A finding is the same one from sheet to sheet while engine, cause and subject are the same.
+    A finding is the same one from sheet to sheet while engine, cause and subject are the same and a point it rests on is.
     """
 
     engine: str

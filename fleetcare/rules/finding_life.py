@@ -1,6 +1,7 @@
 """The life of findings: when each began, how it stood after every sheet, what people answered, and what became of it.
 
-A finding is the same one from sheet to sheet while cause and subject are the same; it is known by the sheet it began on.
+A finding is the same one from sheet to sheet while cause and subject are the same and a point it rests on is; it is known
+by the sheet it began on.
 It is cleared by the sheet that measured and judged its values again and no longer flags them, or is joined to another
 finding that has taken over its values. An acceptance holds for the severity it was given for, and a follow-up until a
 sheet taken after it was done flags the finding again. What is dated after the day asked about is not looked at.
@@ -120,7 +121,7 @@ def finding_lives(standings: Sequence[Standing], first_entries: Mapping[int, int
         entry = standing.sheet.entry
         at = At(standing.sheet.on, first_entries.get(entry, entry))
         now = {(finding.cause, finding.subject): finding for finding in standing.findings}
-        gone = [going.pop(key) for key in [*going] if key not in now]
+        gone = [going.pop(key) for key, (_, before) in [*going.items()] if not _is_same(before, now.get(key))]
         for key, finding in now.items():
             going[key] = (_go_on(going.get(key), finding, at, entry), finding)
         ended += [_ended(life, finding, at, going.values()) for life, finding in gone]
@@ -141,6 +142,13 @@ def withdrawn(lives: Iterable[FindingLife], answers: Iterable[Answer], on: date)
     begun = [life for life in lives if life.begun.on <= on]
     lost = [answer for answer in answers if answer.on <= on and not any(_is_of(answer, life, begun) for life in begun)]
     return tuple({answer.finding: answer for answer in sorted(lost, key=_in_order)}.values())
+
+
+def _is_same(before: Finding, now: Finding | None) -> bool:
+    """Whether a finding of a cause and subject is the one there was: valves set on one sheet are not those of the next."""
+    return now is not None and not {value.point for value in before.evidence}.isdisjoint(
+        value.point for value in now.evidence
+    )
 
 
 def _go_on(before: tuple[FindingLife, Finding] | None, finding: Finding, at: At, entry: int) -> FindingLife:

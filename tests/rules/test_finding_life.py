@@ -87,6 +87,26 @@ def test_a_later_sheet_that_finds_it_in_clears_it_and_the_next_one_out_begins_an
     assert on_day(lives, 1).state is FindingState.OPEN
 
 
+def test_a_cause_found_of_other_points_than_before_is_another_finding_that_wants_an_answer_of_its_own() -> None:
+    hot = a_rule(id="hot", kinds=("spot",), quantity="exhaust", unit="°C", cause="hot cylinders", of_engine=True)
+
+    def exhausts(number: int, *figures: str) -> MeasuredSheet:
+        values = [value("exhaust", text, point=str(place)) for place, text in enumerate(figures, start=1)]
+        return a_sheet(*values, kind="spot", days=-number, entry=number)
+
+    def begun(*sheets: MeasuredSheet) -> list[str]:
+        return [life.id for life in finding_lives(judge_history(sheets, ENGINE, (hot,), Background()), {})]
+
+    one, both, other = exhausts(1, "120", "90"), exhausts(2, "120", "120"), exhausts(3, "90", "120")
+    assert begun(one, both, other) == ["1-hot"]
+    assert begun(one, other) == ["1-hot", "3-hot"]
+    accepted = an_answer(finding="1-hot", cause="hot cylinders")
+    first, second = live(
+        finding_lives(judge_history((one, other), ENGINE, (hot,), Background()), {}), (accepted,), day(3)
+    )
+    assert (first.state, second.state) == (FindingState.CLEARED, FindingState.OPEN)
+
+
 def test_its_row_is_that_of_the_newest_sheet_up_to_the_day() -> None:
     lives = iron("120", "220")
     assert (on_day(lives, 1).row.measured, on_day(lives, 1).row.severity) == (Decimal(120), "alert")
