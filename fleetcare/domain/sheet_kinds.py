@@ -145,5 +145,8 @@ KINDS: Mapping[str, SheetKind] = {
 }
 """Every kind of sheet but the lash sheet, in the order in which a file is taken for one."""
 
+NEVER_WITHOUT = frozenset({"kv40", "kv100", "flash_point", "ph"})
+"""What every oil has: that nothing of it was detected can only mean that nobody looked."""
+
 WORDS = frozenset(column.quantity for kind in KINDS.values() for column in kind.word_columns)
 """What is said in words on some sheet: stored without a value, the word as its qualifier."""

@@ -8,12 +8,13 @@ from typing import TYPE_CHECKING
 
 from fleetcare.domain.measured import MeasuredEngine
 from fleetcare.domain.numbers import parse_number
-from fleetcare.domain.sheet_kinds import ISO4406, KINDS, At, Column, SheetKind, WordColumn
+from fleetcare.domain.sheet_kinds import ISO4406, KINDS, NEVER_WITHOUT, At, Column, SheetKind, WordColumn
 from fleetcare.domain.sheets import NOT_DETECTED, Phase
 from fleetcare.errors import Misread, Refused
 from fleetcare.operations.find import FoundItem
 from fleetcare.operations.measured import load_measured_engine
 from fleetcare.rules.iso4406 import read_code
+from fleetcare.rules.judging.values import title
 
 if TYPE_CHECKING:
     from sqlalchemy import Connection
@@ -90,6 +91,8 @@ def read_figure(column: Column, text: str) -> tuple[str, Decimal | None]:
         if not column.is_lab:
             raise Refused(f"{text!r} is for what a laboratory did not detect", "write the figure, or leave the row out")
         if typed.upper() == NOT_DETECTED:
+            if column.quantity in NEVER_WITHOUT:
+                raise Refused(f"no oil is without {title(column.quantity)}", "leave the row out where it was not told")
             return NOT_DETECTED, None
         bound = _number(typed[1:].strip())
         if bound <= 0:

@@ -54,6 +54,7 @@ LEFT_OUT = "leave the row out, or write ND for not detected"
         ("oil", "Fe,,,-,", [f"value: '-' is not a figure; {LEFT_OUT}"]),
         ("oil", "Fe,,,n/a,", [f"value: 'n/a' is not a figure; {LEFT_OUT}"]),
         ("oil", "Fe,,,<0,", ["value: '<0' is not a bound; write < and a figure above 0, or ND"]),
+        ("oil", "kv100,,,ND,", ["value: no oil is without viscosity at 100 °C; leave the row out where it was not told"]),
         ("oil", "Fe,,,<ND,", ["value: 'ND' is not a number; write digits, with a point for decimals"]),
         ("oil", "iso4406,,,18/16,", ["value: '18/16' is no ISO 4406 code; write three scale numbers as the lab has them, such as 18/16/13 or 14/12/>=7"]),
         ("oil", "iso4406,,,13/16/18,", ["value: 13/16/18 rises from 13 to 16, and counts of larger particles are part of those of smaller ones; check the order: 4, 6, then 14 um(c)"]),
