@@ -75,6 +75,10 @@ class Context:
         """Give the day everything is asked about: as-of, else the local day."""
         return self._as_of or self._local_day()
 
+    def unused_uid(self) -> str:
+        """Give a uid for what is about to be stored, so that it is known again if it is sent twice."""
+        return self._uids()
+
     @property
     def is_future(self) -> bool:
         """Whether the day asked about has not come yet."""

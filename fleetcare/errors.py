@@ -4,6 +4,7 @@ FleetError
   Refused        understood, but it may not be done         exit status 1
     Doubted      likely a slip, unless somebody is sure     exit status 1
     SheetWanted  not without a sheet of measurements        exit status 1
+    AlreadyStored  sent before, and stored then             exit status 1
     Refusals     several at once: an import, a form         exit status 1
   Misread        a value that cannot be read as its kind     exit status 2
   NoDatabase     the database cannot be opened or written   exit status 3
@@ -49,6 +50,14 @@ class SheetWanted(Refused):
     def __init__(self, detail: str, remedy: str, kind: str, task: str = "") -> None:
         super().__init__(detail, remedy)
         self.kind, self.task = kind, task
+
+
+class AlreadyStored(Refused):
+    """What was sent under a key was stored under it before, as an entry."""
+
+    def __init__(self, detail: str, remedy: str, import_key: str) -> None:
+        super().__init__(detail, remedy)
+        self.import_key = import_key
 
 
 class Refusals(Refused):

@@ -1,5 +1,6 @@
 """Chains of log entries: which entry corrects which, and which sheets that leaves."""
 
+from collections.abc import Iterable
 from typing import TYPE_CHECKING
 
 from fleetcare.operations.rows import fetch
@@ -15,6 +16,12 @@ SHEET_COUNTS = (
     " and sheet.taken_on <= :on"
 )
 """Of `sheet` and its `entry`: sheets up to a day whose entry was neither superseded nor voided."""
+
+
+def stored_under(connection: "Connection", keys: Iterable[str]) -> dict[str, int]:
+    """Give the entries stored under some import keys, by key."""
+    rows = fetch(connection, "select import_key, id from log_entry where import_key in :keys", keys=list(keys))
+    return {str(row[0]): int(row[1]) for row in rows}
 
 
 def first_entries(connection: "Connection") -> dict[int, int]:

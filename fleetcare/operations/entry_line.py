@@ -95,10 +95,11 @@ def read_back(connection: "Connection", text: str, on: date, vocabulary: Vocabul
     )
 
 
-def store_line(session: "Session", seen: ReadBack, on: date) -> "Entered":
-    """Store a line as it was read back, and give what came of it.
+def store_line(session: "Session", seen: ReadBack, on: date, import_key: str | None = None) -> "Entered":
+    """Store a line as it was read back, and give what came of it; work under a key that tells it again.
 
-    Refuses one with an open question, and one that says or does something else by now than when it was read back.
+    Refuses one with an open question, and one that says or does something else by now than when it was read back, and
+    work that was stored before under its key.
     """
     from fleetcare.drafts.reading_in import read_draft
     from fleetcare.drafts.work import LogDraft, ReadingDraft
@@ -111,7 +112,7 @@ def store_line(session: "Session", seen: ReadBack, on: date) -> "Entered":
         raise Refused(f"a question is open: {now.questions[0].asked}", "answer it, then store the line")
     entered = [enter_reading(session, read_draft(ReadingDraft, fields), on) for fields in now.line.readings()]
     if now.line.is_work:
-        entered.append(enter_work(session, read_draft(LogDraft, now.line.work()), on))
+        entered.append(enter_work(session, read_draft(LogDraft, {**now.line.work(), "import_key": import_key}), on))
     return Entered(
         [said for one in entered for said in one.said],
         [moved for one in entered for moved in one.moved],

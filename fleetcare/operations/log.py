@@ -12,8 +12,9 @@ from fleetcare.domain.quantities import Figure, plain
 from fleetcare.domain.schedules import Task
 from fleetcare.domain.sheets import Sheet
 from fleetcare.drafts.work import LogDraft
-from fleetcare.errors import Refused
+from fleetcare.errors import AlreadyStored, Refused
 from fleetcare.operations.closing import closings, done_by, say_open
+from fleetcare.operations.entries import stored_under
 from fleetcare.operations.find import FoundItem, find_item, find_meters, find_task, pick_meter
 from fleetcare.operations.follow_ups import on_condition, raise_follow_ups
 from fleetcare.operations.load import item_facts
@@ -57,8 +58,12 @@ class Logged:
 
 
 def record_work(session: "Session", draft: LogDraft, today: date) -> Logged:
-    """Store what was done on a day. Everything a draft says stands in one entry of each kind."""
+    """Store what was done on a day. Everything a draft says stands in one entry of each kind.
+
+    Refuses what was stored before under the import key of the draft.
+    """
     item = find_item(session.connection(), draft.tag)
+    _refuse_known(session, draft)
     refuse_future(draft.on, today)
     check_received(draft, draft.on, today)
     sheet = fresh_sheet(session, item, draft, draft.on)
@@ -87,6 +92,12 @@ def record_work(session: "Session", draft: LogDraft, today: date) -> Logged:
     session.flush()
     logged.note_still_open(facts, entry, came)
     return logged
+
+
+def _refuse_known(session: "Session", draft: LogDraft) -> None:
+    key = draft.import_key
+    if key is not None and (known := stored_under(session.connection(), [key])):
+        raise AlreadyStored(f"that is stored already, as entry {known[key]}", "correct that entry if it is wrong", key)
 
 
 def _store_entries(

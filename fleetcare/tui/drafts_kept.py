@@ -2,13 +2,17 @@
 
 import json
 import os
-from collections.abc import Mapping
+from collections.abc import Container, Mapping
 from contextlib import suppress
 from hashlib import sha256
 from pathlib import Path
 from typing import NamedTuple
 
 from fleetcare.errors import Refused
+
+
+IMPORT_KEY = "import_key"
+"""The name under which a draft keeps the key its entry is stored with, beside what is typed."""
 
 
 class DraftKey(NamedTuple):
@@ -63,19 +67,29 @@ class KeptDrafts:
             place = aside if aside.exists() else path
             raise Refused("what was half typed here cannot be read any more", f"it is in {place}") from error
 
-    def of(self, database: str) -> list[DraftKey]:
-        """Give what is kept for a database; a file that cannot be read is left to whoever opens its form."""
-        keys = []
+    def of(self, database: str) -> dict[DraftKey, str]:
+        """Give what is kept for a database, each with the import key of its entry, empty for one that has none.
+
+        A file that cannot be read is left to whoever opens its form.
+        """
+        keys = {}
         for path in sorted(self.folder.glob("*.json")):
-            with suppress(OSError, ValueError, KeyError, TypeError):  # said when its form is opened
+            with suppress(OSError, ValueError, KeyError, TypeError, AttributeError):  # said when its form is opened
                 kept = json.loads(path.read_text(encoding="utf-8"))
-                keys.append(DraftKey(str(kept["database"]), str(kept["form"]), str(kept["subject"])))
-        return [key for key in keys if key.database == database]
+                key = DraftKey(str(kept["database"]), str(kept["form"]), str(kept["subject"]))
+                keys[key] = str(kept["values"].get(IMPORT_KEY, ""))
+        return {key: import_key for key, import_key in keys.items() if key.database == database}
 
     def drop(self, key: DraftKey) -> None:
         """Keep nothing any more: it was stored or thrown away."""
         with suppress(OSError):  # a leftover is offered once more, and said to be one
             self._path(key).unlink(missing_ok=True)
+
+    def drop_stored(self, database: str, import_keys: Container[str]) -> None:
+        """Drop what is kept for a database under import keys that are stored."""
+        for key, import_key in self.of(database).items():
+            if import_key in import_keys:
+                self.drop(key)
 
     def _path(self, key: DraftKey) -> Path:
         return self.folder / f"{sha256(json.dumps(key).encode()).hexdigest()[:32]}.json"

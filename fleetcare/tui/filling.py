@@ -13,7 +13,7 @@ from textual.widget import Widget
 from textual.worker import get_current_worker
 
 from fleetcare.errors import FleetError, Refusals, Refused
-from fleetcare.tui.drafts_kept import DraftKey
+from fleetcare.tui.drafts_kept import IMPORT_KEY, DraftKey
 from fleetcare.tui.forms.base import METERS, Form, Preview, Subject
 from fleetcare.tui.frame import TopBar, say_day
 from fleetcare.tui.loading import LoadingScreen
@@ -58,6 +58,7 @@ class FillingScreen(LoadingScreen):
         self.rows = {field.name: FieldRow(field) for field in form.fields}
         self.facts: FormFacts | None = None
         self.start: dict[str, str] = {}
+        self.import_key = ""  # what an entry is told again by, kept with what is typed
         self.is_done = False
         self._touched: set[str] = set()
         self._timer: Timer | None = None
@@ -88,6 +89,7 @@ class FillingScreen(LoadingScreen):
         except Refused as error:
             self.notice.say(*error.lines(), is_wrong=True)
             return
+        self.import_key = kept.get(IMPORT_KEY, self.import_key)
         for name in kept.keys() & self.rows.keys():
             self.rows[name].fill(kept[name])
             self._touched.add(name)
@@ -264,7 +266,7 @@ class FillingScreen(LoadingScreen):
             return
         typed = {name: value for name, value in self.values.items() if name in self._touched}
         try:
-            self.fleet_app.drafts.keep(self.key, typed)
+            self.fleet_app.drafts.keep(self.key, {**typed, IMPORT_KEY: self.import_key})
         except Refused as error:
             self.notice.say(*error.lines(), is_wrong=True)
 

@@ -8,7 +8,7 @@ from textual.widget import Widget
 from textual.widgets import Static
 
 from fleetcare.errors import Refused
-from fleetcare.tui.drafts_kept import DraftKey
+from fleetcare.tui.drafts_kept import IMPORT_KEY, DraftKey
 from fleetcare.tui.filling import KEEP_AFTER, LEFT
 from fleetcare.tui.frame import KeyLine, Notice
 from fleetcare.tui.loading import LoadingScreen
@@ -29,7 +29,7 @@ class OneLineScreen(LoadingScreen):
         super().__init__()
         self.editor, self.said = TextField(), SaidLines()
         self._timer: Timer | None = None
-        self._kept = ""
+        self._kept = self.import_key = ""
 
     def compose(self) -> Iterator[Widget]:
         """The line, what is said of it, and its keys."""
@@ -53,8 +53,10 @@ class OneLineScreen(LoadingScreen):
     def on_mount(self) -> None:
         """Put in what was kept."""
         super().on_mount()
+        self.name_entry()
         try:
-            self._kept = self.fleet_app.drafts.find(self.key).get("text", "")
+            kept = self.fleet_app.drafts.find(self.key)
+            self._kept, self.import_key = kept.get("text", ""), kept.get(IMPORT_KEY, self.import_key)
         except Refused as error:
             self.notice.say(*error.lines(), is_wrong=True)
         if self._kept:
@@ -71,6 +73,10 @@ class OneLineScreen(LoadingScreen):
             self._timer = self.set_timer(KEEP_AFTER, self._keep)
         self.notice.say()
         self.typed()
+
+    def name_entry(self) -> None:
+        """Give what is typed next an import key of its own, so that it is stored once however often it is sent."""
+        self.import_key = f"line {self.context.unused_uid()}"
 
     def put(self, text: str) -> None:
         """Put another text in the line, and keep it."""
@@ -97,9 +103,10 @@ class OneLineScreen(LoadingScreen):
             return
         try:
             if text:
-                self.fleet_app.drafts.keep(self.key, {"text": text})
+                self.fleet_app.drafts.keep(self.key, {"text": text, IMPORT_KEY: self.import_key})
             else:
                 self.fleet_app.drafts.drop(self.key)
+                self.name_entry()
             self._kept = text
         except Refused as error:
             self.notice.say(*error.lines(), is_wrong=True)

@@ -6,7 +6,7 @@ from typing import TYPE_CHECKING
 
 from textual.message import Message
 
-from fleetcare.errors import FleetError
+from fleetcare.errors import AlreadyStored, FleetError
 from fleetcare.tui.loading import LoadingScreen
 
 if TYPE_CHECKING:
@@ -40,6 +40,9 @@ class StoringScreen(LoadingScreen):
         try:
             with self.context.write() as session:
                 entered = enter(session)
+        except AlreadyStored as error:  # the program ended between storing it and letting the draft go
+            self.fleet_app.drafts.drop_stored(str(self.context.path.absolute()), {error.import_key})
+            self.post_message(self.Stored([f"Nothing new: {'; '.join(error.lines())}."]))
         except FleetError as error:
             self.post_message(self.NotStored(error))
         else:

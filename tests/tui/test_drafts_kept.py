@@ -85,4 +85,4 @@ def test_what_is_kept_for_a_database_is_listed_and_damaged_files_are_passed_over
     drafts.keep(KEY, TYPED)
     drafts.keep(KEY._replace(database="/shop/other.db"), TYPED)
     (tmp_path / "x.json").write_text("[1]")
-    assert drafts.of("/shop/yard.db") == [KEY]
+    assert drafts.of("/shop/yard.db") == {KEY: ""}

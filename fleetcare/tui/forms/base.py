@@ -100,6 +100,7 @@ class Form:
     One `is_on_task` is about the task of its subject, any other about the whole engine or machine, or an entry.
     With `only_changes` a field left as it was is not sent, and one that was filled cannot be emptied. One that
     `is_edit` may empty the fields it `clears`, and sends fields that hold `together` all when one of them changed.
+    What is typed in one that `is_entry` goes under an import key, so that it is stored once however often it is sent.
     """
 
     name: str
@@ -116,6 +117,7 @@ class Form:
     typed: "Callable[[Connection, Subject, date], Mapping[str, str]]" = lambda connection, subject, on: {}
     preview: "Preview | None" = None
     is_edit: bool = False
+    is_entry: bool = False
     clears: frozenset[str] = frozenset()
     together: frozenset[str] = frozenset()
 

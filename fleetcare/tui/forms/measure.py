@@ -34,7 +34,7 @@ def _storing(kind: str) -> "Callable[[Session, Subject, MeasureDraft, date, Said
 
 
 MEASURES = tuple(
-    Form(kind, f"{title} of {{tag}}", (ON, AT, BY, NOTE), _draft, _storing(kind), answers=FIGURE_ANSWERS)
+    Form(kind, f"{title} of {{tag}}", (ON, AT, BY, NOTE), _draft, _storing(kind), answers=FIGURE_ANSWERS, is_entry=True)
     for kind, title in (
         (LASH, "Valve lash"),
         (COMPRESSION, "Compression"),

@@ -105,6 +105,7 @@ LOG = Form(
     _log,
     start=_log_start,
     answers=FIGURE_ANSWERS,
+    is_entry=True,
 )
 CORRECT = Form(
     "correct",

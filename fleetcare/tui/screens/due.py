@@ -1,10 +1,13 @@
 """Due: what each engine needs next, worst first, with what is only probable or unknown told apart."""
 
-from collections.abc import Iterable
+from collections.abc import Iterable, Mapping
+from contextlib import suppress
 from datetime import date
+from functools import partial
 from pathlib import Path
 from typing import TYPE_CHECKING
 
+from textual.message import Message
 from textual.widget import Widget
 
 from fleetcare.errors import FleetError
@@ -20,6 +23,7 @@ from fleetcare.tui.widgets.long_list import LongList
 if TYPE_CHECKING:
     from sqlalchemy import Connection
 
+    from fleetcare.tui.drafts_kept import DraftKey
     from fleetcare.tui.forms.base import Subject
 
 EMPTY = (
@@ -92,6 +96,13 @@ class DueScreen(SearchingScreen):
 
     place = "due"
 
+    class Kept(Message):
+        """What is half typed, with the import key of each, and the entries stored under those keys."""
+
+        def __init__(self, kept: "Mapping[DraftKey, str]", stored: "Mapping[str, int]") -> None:
+            super().__init__()
+            self.kept, self.stored = kept, stored
+
     def __init__(self) -> None:
         super().__init__()
         self.review: Review | None = None
@@ -106,12 +117,33 @@ class DueScreen(SearchingScreen):
         yield Detail()
 
     def on_mount(self) -> None:
-        """Say what lies half typed since last time."""
+        """Say what lies half typed since last time; what of it is stored all the same is looked for in a thread."""
         super().on_mount()
-        kept = self.fleet_app.drafts.of(str(self.context.path.absolute()))
-        if kept:
-            what = ", ".join(f"{key.form} {key.subject}".strip() for key in kept)
+        kept = self.fleet_app.drafts.of(self._database)
+        if any(kept.values()):
+            self.run_worker(partial(self._find_stored, kept), thread=True, group="kept", exit_on_error=False)
+        else:
+            self.on_due_screen_kept(self.Kept(kept, {}))
+
+    def on_due_screen_kept(self, message: Kept) -> None:
+        """Let go what was stored before the program ended, and say what is still half typed."""
+        self.fleet_app.drafts.drop_stored(self._database, message.stored)
+        half = [key for key, import_key in message.kept.items() if import_key not in message.stored]
+        if half:
+            what = ", ".join(f"{key.form} {key.subject}".strip() for key in half)
             self.notice.say(f"Half typed and kept: {what}. Open it again to go on, or Ctrl N there throws it away.")
+
+    @property
+    def _database(self) -> str:
+        return str(self.context.path.absolute())
+
+    def _find_stored(self, kept: "Mapping[DraftKey, str]") -> None:
+        from fleetcare.operations.entries import stored_under
+
+        stored: dict[str, int] = {}
+        with suppress(FleetError), self.context.read() as connection:  # said by the reading of the list
+            stored = stored_under(connection, filter(None, kept.values()))
+        self.post_message(self.Kept(kept, stored))
 
     def read(self, connection: "Connection", on: date, *, is_future: bool) -> Review:
         """Load the review."""

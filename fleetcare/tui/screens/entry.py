@@ -164,7 +164,7 @@ class EntryScreen(OneLineScreen, StoringScreen):  # the style sheet knows a scre
         """Store a line as it was read back. Runs in a thread: touches no widget."""
         from fleetcare.operations.entry_line import store_line
 
-        return store_line(session, back, on)
+        return store_line(session, back, on, self.import_key)
 
     def _show(self, back: "ReadBack", marked: int) -> None:
         """Show what was read back; only once it stands on the screen can it be stored."""
@@ -179,6 +179,7 @@ class EntryScreen(OneLineScreen, StoringScreen):  # the style sheet knows a scre
         """Say what was stored, take the line away, and let the screens below see what changed."""
         self._stored = stored_lines(sentences)
         self.notice.say()
+        self.name_entry()
         self.put(self.text.removeprefix(text).lstrip())
         for screen in self.app.screen_stack:
             if isinstance(screen, LoadingScreen):

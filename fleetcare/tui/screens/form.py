@@ -5,6 +5,7 @@ from functools import partial
 from typing import TYPE_CHECKING
 
 from fleetcare.errors import Doubted, FleetError, Refused, SheetWanted
+from fleetcare.tui.drafts_kept import IMPORT_KEY
 from fleetcare.tui.filling import FillingScreen
 from fleetcare.tui.forms.base import Answer, Form, Said, Subject
 from fleetcare.tui.sheets.base import SheetFor
@@ -29,6 +30,17 @@ class FormScreen(FillingScreen, StoringScreen):
         self._said: Said = {}
         self._doubted = ""
 
+    def on_mount(self) -> None:
+        """Fill in what was kept; an entry goes under the key it was kept with, else under a new one."""
+        super().on_mount()
+        self._name_entry()
+
+    def action_anew(self) -> None:
+        """Throw away what was typed and begin anew, with another entry."""
+        self.import_key = ""
+        self._name_entry()
+        super().action_anew()
+
     def action_back(self) -> None:
         """Leave; what is typed is kept. What is being stored just now is waited for."""
         if self._draft is None:
@@ -46,7 +58,7 @@ class FormScreen(FillingScreen, StoringScreen):
             return
         self.clear_wrong()
         fixed = self.form.fixed(self.subject, self.context.today())
-        draft, wrong = try_draft(self.form.draft(), {**fixed, **self._sent()})
+        draft, wrong = try_draft(self.form.draft(), {**fixed, **self._sent(), IMPORT_KEY: self.import_key})
         wrong = [*self._emptied(), *wrong]
         for name, error in reversed(wrong):  # the cursor ends in the first of them
             self.say_wrong(name or self.form.field_of(error, self.values), error)
@@ -88,6 +100,10 @@ class FormScreen(FillingScreen, StoringScreen):
         elif answer.leads_to:
             self._go_on(answer)
 
+    def _name_entry(self) -> None:
+        if self.form.is_entry and not self.import_key:
+            self.import_key = f"form {self.context.unused_uid()}"
+
     def _sent(self) -> dict[str, str]:
         """Give what goes into the draft: all that is typed, of a correction what was changed."""
         values = self.values.items()
@@ -123,6 +139,7 @@ class FormScreen(FillingScreen, StoringScreen):
             self.facts.whose if self.facts else "",
             figures=getattr(draft, "at", ()),
             explained=self._said.get("at", {}),
+            import_key=self.import_key,
         )
         self.app.push_screen(
             SheetScreen(SHEETS[wanted.kind], about, partial(self._record_with, draft)), self._filled_in

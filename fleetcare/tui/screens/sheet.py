@@ -10,7 +10,7 @@ from textual.widgets import Static
 from fleetcare.domain.printable import clean
 from fleetcare.domain.sheets import CellKey, Phase
 from fleetcare.errors import Refusals, Refused
-from fleetcare.tui.drafts_kept import DraftKey
+from fleetcare.tui.drafts_kept import IMPORT_KEY, DraftKey
 from fleetcare.tui.filling import KEEP_AFTER
 from fleetcare.tui.forms.base import Answer
 from fleetcare.tui.frame import TopBar, say_day
@@ -267,7 +267,7 @@ class SheetScreen(StoringScreen):
             if typed == {_name_of(key): text for key, text in start.items()}:
                 self.fleet_app.drafts.drop(self.key)
             else:
-                self.fleet_app.drafts.keep(self.key, typed)
+                self.fleet_app.drafts.keep(self.key, {**typed, IMPORT_KEY: self.about.import_key})
         except Refused as error:
             self.notice.say(*error.lines(), is_wrong=True)
 

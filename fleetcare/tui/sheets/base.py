@@ -25,7 +25,7 @@ class SheetFor:
     """What a sheet is taken for: an engine on a day, and the task it is to close, empty where it is only measured.
 
     With an entry it is the sheet of that entry, to be mended; else `figures` are what the dial showed, and `explained`
-    what was answered about those that break with their meter's past.
+    what was answered about those that break with their meter's past, `import_key` what its entry is told again by.
     """
 
     tag: str
@@ -35,6 +35,7 @@ class SheetFor:
     entry: int | None = None
     figures: "Sequence[Figure]" = ()
     explained: Mapping[str, bool] = field(default_factory=dict)
+    import_key: str = ""
 
 
 @dataclass(frozen=True, slots=True)
