@@ -147,3 +147,18 @@ def test_usual_timing_frees_a_valve_more_where_the_reference_says_so() -> None:
     assert more("1-2-4-5-3")[1] == ((5,), (4,))
     for order in ("1", "1-2-3", "1-3-4-2", "1-5-3-6-2-4"):
         assert set(more(order)) == {((), ())}
+
+
+@pytest.mark.parametrize(("first", "last", "valve"), [(395, 835, "exhaust"), (605, 1045, "intake")])
+def test_the_usual_windows_are_those_worked_by_hand_with_both_ends_in_them(first: int, last: int, valve: str) -> None:
+    """Usual timing 20/50/50/20 and 15 degrees to spare (common practice): exhaust 360 + 20 + 15 to 900 - 50 - 15,
+    intake 540 + 50 + 15 to 1080 - 20 - 15."""
+    is_free = USUAL_TIMING.frees_exhaust if valve == "exhaust" else USUAL_TIMING.frees_intake
+    free = [degree for degree in range(720) if is_free(Fraction(degree))]
+    assert free == sorted(degree % 720 for degree in range(first, last + 1))
+
+
+def test_setting_one_valve_as_the_other_of_its_cylinder_moves_is_inside_the_windows() -> None:
+    """Trade press: set the intake as the exhaust starts to open, the exhaust as the intake is nearly shut."""
+    assert USUAL_TIMING.frees_intake(Fraction(180) - Fraction(USUAL_TIMING.evo))
+    assert USUAL_TIMING.frees_exhaust(Fraction(540) + Fraction(USUAL_TIMING.ivc))
