@@ -13,7 +13,6 @@ from datetime import date
 from typing import TYPE_CHECKING
 
 from fleetcare.db.chain import last_entry
-from fleetcare.domain.measured import MeasuredSheet
 from fleetcare.domain.wear import MeasuredWears
 from fleetcare.errors import Refused
 from fleetcare.operations.entries import first_entries, first_of
@@ -25,7 +24,7 @@ from fleetcare.operations.measured import EngineSheets, load_engine_sheets
 from fleetcare.operations.shop_book import ShopText, book_digest, book_in_force, book_of, shop_texts
 from fleetcare.operations.wears_json import WEARS_FORM, wears_of, wears_text
 from fleetcare.rules.finding_life import FindingLife, finding_lives
-from fleetcare.rules.judge_history import judge_history
+from fleetcare.rules.judge_history import in_order, judge_history
 from fleetcare.rules.judging.applies import rules_for
 from fleetcare.rules.lash_wear import lash_shown
 from fleetcare.rules.measured_wear import measured_wears
@@ -88,7 +87,7 @@ def judge_anew(
 
 def judge_lives(found: EngineSheets, book: "RuleBook", firsts: dict[int, int]) -> tuple[FindingLife, ...]:
     """Judge an engine sheet by sheet, and give the life of each of its findings."""
-    sheets = _in_order(found.sheets, firsts)
+    sheets = in_order(found.sheets, firsts)
     standings = judge_history(sheets, found.engine, rules_for(book, found.engine), found.background)
     return finding_lives(standings, firsts)
 
@@ -192,11 +191,6 @@ def _facts_digest(found: EngineSheets, firsts: dict[int, int]) -> str:
 
 def _digest(*parts: str) -> str:
     return hashlib.sha256("\0".join(parts).encode()).hexdigest()
-
-
-def _in_order(sheets: Iterable[MeasuredSheet], firsts: dict[int, int]) -> list[MeasuredSheet]:
-    """Order sheets by day, within a day by the entry they first came with."""
-    return sorted(sheets, key=lambda sheet: (sheet.on, first_of(firsts, sheet.entry)))
 
 
 def _batches(ids: Sequence[int], progress: Progress | None) -> Iterable[Sequence[int]]:

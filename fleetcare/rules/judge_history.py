@@ -11,7 +11,7 @@ from dataclasses import dataclass, field, replace
 from datetime import date
 
 from fleetcare.domain.findings import Evidence, Finding, Signal
-from fleetcare.domain.measured import MeasuredEngine, MeasuredSheet
+from fleetcare.domain.measured import SHEET_KINDS, MeasuredEngine, MeasuredSheet
 from fleetcare.domain.rule_book import End, Pattern, Rule
 from fleetcare.domain.sheets import Phase
 from fleetcare.rules.findings import merge
@@ -68,13 +68,25 @@ class _Walk:
 _NO_RULES = _OfKind((), (), frozenset())
 
 
+def in_order(sheets: Iterable[MeasuredSheet], first_entries: Mapping[int, int]) -> list[MeasuredSheet]:
+    """Order sheets by day, within a day by kind, and those of one kind by the entry they first came with.
+
+    Which of the sheets of a day was typed first says nothing of an engine, unless they are of one kind.
+    """
+
+    def place(sheet: MeasuredSheet) -> tuple[date, int, int]:
+        return sheet.on, SHEET_KINDS.index(sheet.kind), first_entries.get(sheet.entry, sheet.entry)
+
+    return sorted(sheets, key=place)
+
+
 def judge_history(
     sheets: Sequence[MeasuredSheet],
     engine: MeasuredEngine,
     rules: Sequence[Rule],
     background: Background,
 ) -> tuple[Standing, ...]:
-    """Judge the sheets of an engine, oldest first, by the rules for it; its own pool is that of the samples before each."""
+    """Judge the sheets of an engine, as `in_order` has them, by the rules for it; its own pool is that of the samples before each."""
     by_kind = _by_kind(rules)
     walk, standings = _Walk(), []
     for sheet, pool in zip(sheets, own_pools(sheets), strict=True):

@@ -19,7 +19,7 @@ from fleetcare.domain.findings import Evidence, Finding
 from fleetcare.domain.measured import MeasuredSheet
 from fleetcare.domain.rule_book import Pattern
 from fleetcare.rules.finding_life import FindingState, finding_lives, live
-from fleetcare.rules.judge_history import Standing, judge_history
+from fleetcare.rules.judge_history import Standing, in_order, judge_history
 from fleetcare.rules.judging.judge import tell
 from fleetcare.rules.judging.screen import screened
 from tests.property.case import Case
@@ -30,7 +30,7 @@ from tests.property.scenes import facts_of, newest, one_by_one, single
 
 def standings_of(case: Case, sheets: Iterable[MeasuredSheet] | None = None) -> tuple[Standing, ...]:
     """What stood after each sheet."""
-    told = case.sheets if sheets is None else tuple(sheets)
+    told = in_order(case.sheets if sheets is None else sheets, {})
     return judge_history(told, case.engine, case.rules, case.background)
 
 
@@ -66,11 +66,10 @@ def test_after_every_sheet_each_value_is_evidence_of_at_most_one_finding(case: C
 @given(cases())
 def test_after_every_sheet_what_it_flags_is_evidence_of_exactly_one_open_finding_not_milder(case: Case) -> None:
     """What it flags is told by each rule asked by itself, beside the sheets of its kind before it."""
-    standings = standings_of(case)
-    for place, standing in enumerate(standings, start=1):
-        kind = standing.sheet.kind
-        known = [sheet for sheet in case.sheets[:place] if sheet.kind == kind]
-        for signal in one_by_one(case.rules, facts_of(case, known)):
+    standings, known = standings_of(case), dict[str, list[MeasuredSheet]]()
+    for standing in standings:
+        known.setdefault(standing.sheet.kind, []).append(standing.sheet)
+        for signal in one_by_one(case.rules, facts_of(case, known[standing.sheet.kind])):
             (value,) = signal.flagged
             assert owner(standing.findings, value).severity in {signal.severity, "alarm"}
     last = standings[-1]

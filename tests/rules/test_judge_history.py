@@ -1,5 +1,6 @@
 """What stands after each sheet of an engine: what a later sheet clears, and what it leaves standing."""
 
+from dataclasses import replace
 from datetime import date
 from decimal import Decimal
 
@@ -7,7 +8,7 @@ from fleetcare.domain.measured import MeasuredSheet
 from fleetcare.domain.rule_book import Bounds, Method, Pool, Rule, Statistical
 from fleetcare.rulebook.rules import rule_book
 from fleetcare.rules.judge_engine import Background, judge_engine
-from fleetcare.rules.judge_history import judge_history
+from fleetcare.rules.judge_history import in_order, judge_history
 from fleetcare.rules.judging.applies import rules_for
 from fleetcare.rules.judging.pools import own_pools
 from tests.rules.measured import ENGINE, ON, a_rule, a_sheet, beyond, value
@@ -135,3 +136,22 @@ def test_each_sample_is_held_against_those_before_it_alone() -> None:
     assert [bool(standing.findings) for standing in history] == [False, False, False, True, False]
     assert history[0].sheet.on < ON
     assert isinstance(IRON.shape, Bounds)
+
+
+def test_sheets_of_one_day_are_judged_kind_by_kind_whichever_was_typed_first() -> None:
+    """A cylinder heard and then found low is not another than one found low and then heard."""
+    low, heard = cylinders(0, "445", "300"), a_sheet(value("leak", "40", point="2"), kind="leakdown")
+    first, again = oil(0, Fe="5"), oil(0, Fe="6")
+    orders = [
+        [replace(sheet, entry=entry) for entry, sheet in enumerate(typed, start=1)]
+        for typed in ((first, again, low, heard, oil(9)), (oil(9), heard, low, first, again))
+    ]
+    for sheets in orders:
+        found = in_order(sheets, {})
+        assert [(sheet.on, sheet.kind) for sheet in found] == [
+            (oil(9).on, "oil"),
+            *((ON, kind) for kind in ("compression", "leakdown", "oil", "oil")),
+        ]
+        assert [str(sheet.values[0]) for sheet in found[3:]] == ["5", "6"]
+    corrected = {number: 6 - number for number in range(1, 6)}
+    assert [str(sheet.values[0]) for sheet in in_order(orders[0], corrected)[3:]] == ["6", "5"]
