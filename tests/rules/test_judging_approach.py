@@ -216,6 +216,7 @@ def test_values_of_limits_that_asked_hot_do_not_count_once_they_ask_cold() -> No
     first, second, *_ = about.earlier
     hot = replace(SPEC, condition="hot")
     before = {one.entry: tuple(judge_value(v, Side.EXHAUST, hot, "") for v in one.values) for one in (first, second)}
+    assert len(hours_told(about)) == 1
     changed = replace(about, lash={**about.lash, **before})
     assert [one.why for one in judge_sheet([CLOSING], changed).not_judged] == ["no projection: too few values"]
 

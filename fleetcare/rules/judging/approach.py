@@ -1,13 +1,13 @@
 """Hours until a gap that is inside its check range comes to one end of it, as far as its past tells.
 
-The gap is the one left, else the one found; of two blades around it the middle counts. Its past are the sheets up to its own, each value held against the limits of
-its day; what could not be judged then, or was taken hot where the limits now ask cold or the other way round, is left out
-(as rules/lash_past.py has it). One slope goes through all that lies between adjustments, over the hours of life, and the
-early end of the projection counts (rules/projection.py), rounded down to a tenth. The interval of inspections is the usual
-gap between the sheets.
+The gap is the one left, else the one found; of two blades around it the middle counts. Its past are the sheets up to its
+own, each value held against the limits of its day; what could not be judged then, or was taken hot where the limits now ask
+cold or the other way round, is left out (as rules/lash_past.py has it). One slope goes through all that lies between
+adjustments, over the hours of life, and the early end of the projection counts (rules/projection.py), rounded down to a
+tenth. The interval of inspections is the usual time between the sheets.
 
 Where too little is known, nothing is told; where the slope is not told apart from none, is less than gauges tell, leads
-away from the limit, or to it further ahead than was watched, the limit is not near. Everything is worked in mm, whatever was typed.
+away from the limit, or to it further ahead than was watched, the limit is not near. All is worked in mm, whatever was typed.
 """
 
 from collections.abc import Iterable, Iterator, Mapping, Sequence
@@ -31,8 +31,8 @@ from fleetcare.rules.trends import cut_at_adjustments, usual_gap
 _TENTH = Decimal("0.1")
 _UNTOLD = {Obstacle.TOO_FEW, Obstacle.NO_LEFT_VALUE, Obstacle.SHORT_SPAN, Obstacle.OLD_VALUE}
 _NO_GAP = {Unjudged.NO_SPEC, Unjudged.NO_RANGE, Unjudged.OTHER_CONDITION, Unjudged.NO_LIMIT_OF_ITS_OWN}
-_FEWEST_SHEETS = FEWEST_DF + 2  # each but one adds a degree of freedom at most, and the slope takes one
-_LEVEL = 1e-9  # mm per h: nobody runs an engine that long
+_FEWEST_SHEETS = FEWEST_DF + 2  # each adds one value more than segments at most, but the first, and the slope takes one
+_LEVEL = 1e-9  # mm per h: no engine runs long enough for that to tell
 
 
 @dataclass(frozen=True, slots=True)
@@ -75,7 +75,7 @@ def _figure(rule: Rule, shape: Approach, now: Judgement, facts: MeasuredFacts) -
         return None
     if at is None:
         raise CannotTell("the engine hours are not known", point)
-    past = past_of(now.value.point, now.asked, facts)
+    past = past_of(point, now.asked, facts)
     segments = cut_at_adjustments(one.check for one in past)
     limit = _limit(shape, now)
     told = project(segments, limit, shape.end, now=at, interval=usual_gap(segments) or Decimal(0))
@@ -88,7 +88,8 @@ def _figure(rule: Rule, shape: Approach, now: Judgement, facts: MeasuredFacts) -
             raise CannotTell(f"lash: {now.unjudged}", point)
         return None
     # Past the limit is here only the middle of two blades around it, of a gap that moves there.
-    hours = max((told.early or at) - at, Decimal(0)).quantize(_TENTH, rounding=ROUND_FLOOR)
+    early = at if told.early is None else told.early
+    hours = max(early - at, Decimal(0)).quantize(_TENTH, rounding=ROUND_FLOOR)
     flagged = evidence_of(facts.sheet, now.value)
     used = tuple(value for one in past for value in one.values if value != flagged)
     return Figure(point, known(hours), flagged, rule.low, rule.high, used, _steps(told, segments, at, now.unit))
@@ -131,15 +132,15 @@ def past_of(point: str, asked: str, facts: MeasuredFacts) -> list[Seen]:
 
 def _told(sheet: MeasuredSheet, asked: str, facts: MeasuredFacts) -> Mapping[str, Seen]:
     """Give what a sheet says of each gap, as far as that compares with what the limits now ask for: hot or cold."""
-    key = ("gaps", asked)
-    if key not in sheet.memo:
+    key, judged = ("gaps", asked), facts.lash.get(sheet.entry, ())
+    if key not in sheet.memo or sheet.memo[key][0] is not judged:
         by_point: dict[str, dict[Phase, Judgement]] = {}
-        for one in facts.lash.get(sheet.entry, ()):
+        for one in judged:
             if one.unjudged is not Unjudged.NO_LIMIT_OF_ITS_OWN:
                 by_point.setdefault(one.value.point, {})[one.value.phase] = one
         found = ((point, _seen(sheet, phases, asked)) for point, phases in by_point.items())
-        sheet.memo[key] = {point: seen for point, seen in found if seen is not None}
-    seen: Mapping[str, Seen] = sheet.memo[key]
+        sheet.memo[key] = judged, {point: seen for point, seen in found if seen is not None}
+    seen: Mapping[str, Seen] = sheet.memo[key][1]
     return seen
 
 
