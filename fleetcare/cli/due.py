@@ -12,6 +12,10 @@ from fleetcare.domain.cautions import GENERAL
 from fleetcare.domain.lines import State
 
 if TYPE_CHECKING:
+    from datetime import date
+
+    from sqlalchemy import Connection
+
     from fleetcare.operations.sheet_report import SheetReport
     from fleetcare.operations.show import ItemPage
     from fleetcare.rules.due.row import DueRow
@@ -53,13 +57,22 @@ def _due(given: argparse.Namespace) -> None:
     )
     with context.read() as connection:
         rows = due_rows(connection, context.today(), filters, is_future=context.is_future)
-    text = _RENDER[given.format](rows)
+        wanting = _wanting(connection, context.today()) if given.format == "table" else ""
+    text = f"{_RENDER[given.format](rows)}{wanting}"
     if given.format == "table" and given.out is None:
         output.say(text.rstrip("\n"))
     else:
         output.deliver(text, given.out)
         if given.out is not None:
             output.say(f"{len(rows)} {'line' if len(rows) == 1 else 'lines'} written to {given.out}")
+
+
+def _wanting(connection: "Connection", on: "date") -> str:
+    """Say which findings of the shop want an answer, in a closing line for people."""
+    from fleetcare.operations.open_findings import open_findings, say_open
+
+    said = say_open(open_findings(connection, on))
+    return f"\n{said}; see fleetcare findings --open.\n" if said else ""
 
 
 def _csv(rows: "Sequence[DueRow]") -> str:

@@ -8,6 +8,7 @@ from typing import TYPE_CHECKING, Any
 
 from fleetcare.operations.due import DueRow, due_lines
 from fleetcare.operations.due_words import Group, group_of
+from fleetcare.operations.open_findings import is_measured
 from fleetcare.operations.rows import fetch
 from fleetcare.operations.settings import read_settings
 from fleetcare.rules.due.row import due_row
@@ -63,12 +64,16 @@ class ReviewLine:
 
 @dataclass(frozen=True, slots=True)
 class Review:
-    """The due list of a day in its order; `items` counts engines and machines in use, those without lines too."""
+    """The due list of a day in its order; `items` counts engines and machines in use, those without lines too.
+
+    Where anything `is_measured` there may be findings.
+    """
 
     on: date
     shop: str
     items: int
     lines: tuple[ReviewLine, ...]
+    is_measured: bool
 
 
 @dataclass(frozen=True, slots=True)
@@ -115,7 +120,8 @@ def review(connection: "Connection", on: date, *, is_future: bool = False) -> Re
     for line, facts in due_lines(connection, on, is_future=is_future):
         row = due_row(line, facts)
         lines.append(ReviewLine(row, line.item.name, line.version.work, group_of(row)))
-    return Review(on, read_settings(connection)["shop-name"], in_use[0][0], tuple(lines))
+    shop = read_settings(connection)["shop-name"]
+    return Review(on, shop, in_use[0][0], tuple(lines), is_measured(connection))
 
 
 def arrange(lines: Iterable[ReviewLine], order: Order, on: date) -> list[Part]:

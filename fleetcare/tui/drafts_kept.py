@@ -10,7 +10,6 @@ from typing import NamedTuple
 
 from fleetcare.errors import Refused
 
-
 IMPORT_KEY = "import_key"
 """The name under which a draft keeps the key its entry is stored with, beside what is typed."""
 

@@ -234,3 +234,17 @@ def test_a_sheet_names_its_finding_as_the_list_does(yard: Runner) -> None:
 def test_findings_of_a_withdrawn_engine_are_left_out(yard: Runner) -> None:
     yard("engine", "withdraw", "P-01", "--why", "sold")
     assert states(yard) == {}
+
+
+def test_the_due_table_ends_with_the_findings_that_want_an_answer_and_files_do_not(yard: Runner) -> None:
+    assert (
+        yard("due").out.splitlines()[-1]
+        == "2 findings want an answer: 1 alarm, 1 alert; see fleetcare findings --open."
+    )
+    yard("answer", HOT, "--accept", "--why", "hill climb", "--by", "Fenn")
+    assert (
+        yard("due", "--site", "North Sluice").out.splitlines()[-1].startswith("1 finding wants an answer: 1 alarm; see")
+    )
+    yard("answer", LOW, "--follow-up", "--why", "rings", "--by", "Fenn")
+    assert yard("due").out.splitlines()[-1] == GENERAL
+    assert "finding" not in yard("due", "--format", "csv").out + yard("due", "--format", "json").out

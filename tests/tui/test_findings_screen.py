@@ -93,3 +93,18 @@ async def test_a_view_of_measurements_says_small_and_plainly_that_there_is_no_fi
 ) -> None:
     async with opened(view, size=(60, 18), context=Context(str(tmp_path / "none.db"))) as pilot:
         assert "none.db" in said(pilot)
+
+
+async def test_the_due_list_says_how_many_findings_want_an_answer(opened: Opened, found: Context) -> None:
+    async with opened(context=found) as pilot:
+        assert line_with(pilot, "!! 1 alarm", "to answer; 3 shows them")
+        await press(pilot, "3", "a", *"rings", "enter", *"Harbin", "ctrl+s", "1")
+        assert line_with(pilot, "no finding wants an answer")
+        await press(pilot, "slash", *"valve", "enter")
+        assert line_with(pilot, "no finding wants an answer")
+        assert line_with(pilot, 'only "valve": 5 of 5 lines, a shows all')
+
+
+async def test_where_nothing_was_measured_the_due_list_says_nothing_of_findings(opened: Opened, bench: Context) -> None:
+    async with opened(context=bench) as pilot:
+        assert "answer" not in said(pilot)

@@ -5,7 +5,8 @@ import json
 from decimal import Decimal
 from pathlib import Path
 
-from fleetcare.tui.screens.due import COLUMNS, DueScreen
+from fleetcare.tui.due_columns import COLUMNS
+from fleetcare.tui.screens.due import DueScreen
 from tests.tui.conftest import Opened, seen, type_in
 
 # Columns of the screen whose cells stand in the CSV and JSON as they are.

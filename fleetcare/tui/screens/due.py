@@ -9,15 +9,19 @@ from typing import TYPE_CHECKING
 
 from textual.message import Message
 from textual.widget import Widget
+from textual.worker import get_current_worker
 
 from fleetcare.errors import FleetError
-from fleetcare.operations.due_words import Group, notes, say_dial, say_due, say_likely, say_remaining
+from fleetcare.operations.due_words import Group
+from fleetcare.operations.open_findings import OpenFindings, open_findings
 from fleetcare.operations.review import Facet, Order, Review, ReviewLine, Wanted, arrange, review
+from fleetcare.tui.due_columns import COLUMNS, in_words
 from fleetcare.tui.frame import TopBar, say_day
-from fleetcare.tui.looks import MARKS, tone_of
+from fleetcare.tui.looks import tone_of
 from fleetcare.tui.searching import SearchingScreen
-from fleetcare.tui.widgets.columns import Cell, Column, Section
-from fleetcare.tui.widgets.detail import Counts, Detail
+from fleetcare.tui.widgets.columns import Section
+from fleetcare.tui.widgets.counts import Counts
+from fleetcare.tui.widgets.detail import Detail
 from fleetcare.tui.widgets.long_list import LongList
 
 if TYPE_CHECKING:
@@ -39,58 +43,6 @@ NO_LINES = (
 NO_MATCH = "No line is like that. The key a shows all again."
 
 
-def state_cell(line: ReviewLine) -> Cell:
-    """Say mark and state of a line; by estimate it is due with a ~ before."""
-    tone = tone_of(line.group)
-    word = line.row.estimated if tone == "probably" else line.row.state
-    return Cell(f"{MARKS[tone]:<2} {word}", tone)
-
-
-def _left(line: ReviewLine) -> Cell:
-    tone = tone_of(line.group)
-    return Cell(say_remaining(line.row), tone if tone in {"overdue", "due"} else "")
-
-
-def _dial(line: ReviewLine) -> str:
-    return say_dial(line.row)
-
-
-def _notes(line: ReviewLine) -> list[str]:
-    """Give the notes of a line, less the state, which stands in its own column here."""
-    return [note for note in notes(line.row) if note != line.row.state]
-
-
-def _note(line: ReviewLine) -> str:
-    return "; ".join(_notes(line))
-
-
-def _iso(day: date | None) -> str:
-    return day.isoformat() if day is not None else ""
-
-
-COLUMNS: tuple[Column[ReviewLine], ...] = (
-    Column("   STATE", state_cell, 10, 10),
-    Column("ENGINE", lambda line: Cell(line.row.engine, "strong"), 8, 16),
-    Column("TASK", lambda line: line.row.task, 16, 34),
-    Column("DIAL", _dial, 20, 20, to_right=True, drop=2),
-    Column("BY DAY", lambda line: _iso(line.row.next_due_on), 10, 10, to_right=True, drop=3),
-    Column("LEFT", _left, 16, 16, to_right=True),
-    Column("LIKELY", lambda line: _iso(line.row.likely_date), 10, 10, to_right=True, drop=4),
-    Column("SITE", lambda line: line.row.site, 12, 20, drop=5),
-    Column("NOTE", _note, 30, 200, drop=6),
-)
-
-
-def in_words(line: ReviewLine) -> tuple[tuple[str, str], ...]:
-    """Say a line in three lines of (text, tone): what, on whose engine, and when with all that bears on it."""
-    row = line.row
-    machine = f"in {row.machine}" if row.machine not in {"", row.engine} else ""
-    whose = ", ".join(word for word in (f"{line.name} {machine}".strip(), row.site) if word)
-    rest = "; ".join(word for word in (say_due(row), say_likely(row), *_notes(line)) if word)
-    lines = (f"{row.engine}  {row.task}", "strong"), (whose, "quiet"), (rest, "")
-    return tuple(line for line in lines if line[0])
-
-
 class DueScreen(SearchingScreen):
     """The due list."""
 
@@ -102,6 +54,13 @@ class DueScreen(SearchingScreen):
         def __init__(self, kept: "Mapping[DraftKey, str]", stored: "Mapping[str, int]") -> None:
             super().__init__()
             self.kept, self.stored = kept, stored
+
+    class Counted(Message):
+        """How many findings want an answer; None where that cannot be told."""
+
+        def __init__(self, found: OpenFindings | None) -> None:
+            super().__init__()
+            self.found = found
 
     def __init__(self) -> None:
         super().__init__()
@@ -153,7 +112,25 @@ class DueScreen(SearchingScreen):
         """Show the review, narrowed and arranged as before."""
         self.review = found
         self.query_one(TopBar).tell(say_day(found.on), found.shop)
+        self.query_one(Counts).expect_findings(found.is_measured)
         self.rearrange()
+        if found.is_measured:  # counted once the lines stand on the screen: the rules take longer to load than they do
+            self.call_after_refresh(self._count_findings, found.on)
+
+    def on_due_screen_counted(self, message: Counted) -> None:
+        """Say how many findings want an answer."""
+        self.query_one(Counts).tell_findings(message.found)
+
+    def _count_findings(self, on: date) -> None:
+        work = partial(self._run_count, on)
+        self.run_worker(work, thread=True, group="findings", exclusive=True, exit_on_error=False)
+
+    def _run_count(self, on: date) -> None:
+        worker = get_current_worker()
+        with suppress(FleetError), self.context.read() as connection:  # said by the reading of the list
+            found = open_findings(connection, on)
+            if not worker.is_cancelled:
+                self.post_message(self.Counted(found))
 
     def fail(self, error: FleetError) -> None:
         """Where there is no file yet, say how to begin beside what is wrong."""

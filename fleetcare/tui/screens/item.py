@@ -9,8 +9,8 @@ from textual.widget import Widget
 
 from fleetcare.domain.cautions import GENERAL
 from fleetcare.domain.engines import Status, status_on
+from fleetcare.tui.due_columns import in_words
 from fleetcare.tui.frame import TopBar, say_day
-from fleetcare.tui.screens.due import in_words
 from fleetcare.tui.screens.findings import in_words as finding_in_words
 from fleetcare.tui.screens.findings import sections_of
 from fleetcare.tui.screens.item_parts import (

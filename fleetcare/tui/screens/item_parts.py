@@ -6,7 +6,7 @@ from textual.content import Content
 from textual.widget import Widget
 
 from fleetcare.domain.printable import clean
-from fleetcare.tui.screens.due import COLUMNS
+from fleetcare.tui.due_columns import COLUMNS
 from fleetcare.tui.screens.findings import COLUMNS as FINDING_COLUMNS
 from fleetcare.tui.widgets.columns import Cell, Column
 from fleetcare.tui.widgets.plot import Line, Plot
