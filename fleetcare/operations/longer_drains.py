@@ -84,7 +84,8 @@ def _say(advice: LongerDrain, line: DueLine, facts: ItemFacts) -> str:
     looked = ", ".join(advice.subjects)
     days = bounds_of(line)
     bound = f"; it stays due by {days[0].isoformat()} whatever its hours" if days else ""
-    return f"oil sound until {say_dial(advice.until, facts)} (looked at: {looked}){bound}"
+    sound = f"oil sound until {say_dial(advice.until, facts)} (looked at: {looked}){bound}"
+    return f"{sound}; ask the engine's manual first"
 
 
 def _check_supervisor(connection: "Connection", by: str) -> None:

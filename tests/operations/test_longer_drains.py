@@ -85,7 +85,7 @@ def test_a_not_later_than_holds_too(ctx: Context) -> None:
     assert advice is not None
     assert advice.said == (
         "oil sound until 1900 h on the dial (looked at: base number, Fe iron);"
-        " it stays due by 2026-07-01 whatever its hours"
+        " it stays due by 2026-07-01 whatever its hours; ask the engine's manual first"
     )
     put_off(ctx)
     assert str(row(ctx, "Oil").next_due_on) == "2026-07-01"
