@@ -141,7 +141,7 @@ def say_measured(rule: Rule) -> str:
     if isinstance(shape, ByAltitude):
         return f"{name} less its least for the altitude"
     if isinstance(shape, Approach):
-        return f"earliest hours of {name} to the {shape.end} end of its check range"
+        return f"likely hours of {name} to the {shape.end} end of its check range"
     if isinstance(shape, Change):
         return f"{name} {_COMPARED[shape.by]} {_BEFORE[shape.since]}"
     return f"rise of {name}" if isinstance(shape, Rate) else name

@@ -31,26 +31,29 @@ def told(low: str, within: str, *sheets: Told) -> Signal | None:
     return next(iter(judge([rule], gauged(*(sheets or RESET_TWICE), spec=spec))), None)
 
 
-def test_the_worked_example_comes_to_its_limit_at_the_early_end_of_the_range_of_the_other_library() -> None:
+def test_the_worked_example_comes_to_its_limit_when_the_other_library_says_and_at_the_earliest_at_the_end_of_its_range() -> (
+    None
+):
     """0.25 mm at 6102.0 h, 80 % range from 5975.1 h; slope -0.0486 mm per 1000 h, its standard error 0.001363."""
-    signal = told("0.25", "2000")
+    signal = told("0.25", "2103")
     assert signal is not None
-    assert signal.measured == Decimal("1975.1")
+    assert signal.measured == Decimal("2101.9")  # 2101.98, as hours are rounded down to a tenth
     numbers = {one.label: one.value for one in signal.steps}
     assert f"{numbers['slope']:.8f}" == "-0.04855274"
     assert f"{numbers['its standard error']:.9f}" == "0.001363028"
-    assert (numbers["values"], numbers["likely in"]) == (Decimal(11), Decimal("2102.0"))
-    assert told("0.25", "1975") is None
+    assert (numbers["values"], numbers["at the earliest in"]) == (Decimal(11), Decimal("1975.1"))
+    assert told("0.25", "2101") is None
 
 
 def test_as_shipped_the_worked_example_is_no_finding_until_250_h_before() -> None:
     for rule in ("lash-closing", "lash-opening"):
         assert RULES[rule].low.alert == Limit(Decimal(250))
     assert told("0.25", "250") is None
-    # 0.036333 mm below their mean at 3500 h: b d 1.76406e-6, half 2.01487e-7, A 2.35366e-9, so early at 3500 + 663.9 h.
+    # 0.036333 mm below their mean at 3500 h: b d 1.76406e-6, half 2.01487e-7, A 2.35366e-9, so early at 3500 + 663.9 h,
+    # and likely at 3500 + 0.036333 / 0.0000485527 h.
     signal = told("0.34", "250")
     assert signal is not None
-    assert signal.measured == Decimal("163.9")
+    assert (signal.measured, signal.steps[-1].value) == (Decimal("248.3"), Decimal("163.9"))
 
 
 @pytest.mark.parametrize(

@@ -81,7 +81,7 @@ def test_a_gap_that_opens_is_for_the_other_end_alone() -> None:
     assert len(hours_told(about, OPENING)) == 1
 
 
-def test_the_working_has_the_slope_with_its_error_the_values_and_the_likely_hours() -> None:
+def test_the_working_has_the_slope_with_its_error_the_values_and_the_earliest_hours() -> None:
     signal = the_signal(gauged((0, "0.47"), (1000, "0.46"), (2000, "0.43"), (3000, "0.41"), (3200, "0.41")))
     assert [one.label for one in signal.steps] == [
         "gap",
@@ -89,7 +89,7 @@ def test_the_working_has_the_slope_with_its_error_the_values_and_the_likely_hour
         "slope",
         "its standard error",
         "values",
-        "likely in",
+        "at the earliest in",
     ]
     assert [one.unit for one in signal.steps] == ["mm", "mm", "mm per 1000 h", "mm per 1000 h", "", "h"]
     assert (signal.steps[0].value, signal.steps[1].value, signal.steps[4].value) == (
@@ -100,7 +100,7 @@ def test_the_working_has_the_slope_with_its_error_the_values_and_the_likely_hour
     assert [one.value for one in signal.flagged] == ["0.41"]
     assert [one.value for one in signal.used] == ["0.47", "0.46", "0.43", "0.41"]
     assert (str(signal.severity), signal.end, signal.limit) == ("alert", End.LOW, Decimal(500))
-    assert say_signal(signal).startswith("earliest hours of valve lash to the low end of its check range at 1E ")
+    assert say_signal(signal).startswith("likely hours of valve lash to the low end of its check range at 1E ")
     # Sxy -149.2, Sxx 7,312,000 about 1840 h and 0.436 mm.
     assert "slope -0.0204 mm per 1000 h" in say_working(signal, "1E")
 
@@ -270,7 +270,7 @@ def test_a_glance_sees_that_nothing_says_what_a_setting_left() -> None:
 
 
 def test_the_rule_reads_as_what_it_works_out_and_its_hours() -> None:
-    assert say_judged(CLOSING) == "earliest hours of valve lash to the low end of its check range"
+    assert say_judged(CLOSING) == "likely hours of valve lash to the low end of its check range"
     assert say_limits(CLOSING) == "alert below 500 h"
     least = replace(CLOSING, shape=Approach(End.LOW, Decimal("0.02")))
     assert say_judged(least).endswith(" check range where it moved by 0.02 mm or more")

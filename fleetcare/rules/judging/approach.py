@@ -3,8 +3,9 @@
 The gap is the one left, else the one found; of two blades around it the middle counts. Its past are the sheets up to its
 own, each value held against the limits of its day; what could not be judged then, or was taken hot where the limits now ask
 cold or the other way round, is left out (as rules/lash_past.py has it). One slope goes through all that lies between
-adjustments, over the hours of life, and the early end of the projection counts (rules/projection.py), rounded down to a
-tenth. The interval of inspections is the usual time between the sheets.
+adjustments, over the hours of life, and the likely hours of the projection count (rules/projection.py), rounded down to a
+tenth: the early end pulls checks forward, but would call out every valve that wears as it should. The interval of
+inspections is the usual time between the sheets.
 
 Where too little is known, nothing is told; where the slope is not told apart from none, is less than gauges tell, leads
 away from the limit, or to it further ahead than was watched, the limit is not near. All is worked in mm, whatever was typed.
@@ -88,8 +89,8 @@ def _figure(rule: Rule, shape: Approach, now: Judgement, facts: MeasuredFacts) -
             raise CannotTell(f"lash: {now.unjudged}", point)
         return None
     # Past the limit is here only the middle of two blades around it, of a gap that moves there.
-    early = at if told.early is None else told.early
-    hours = max(early - at, Decimal(0)).quantize(_TENTH, rounding=ROUND_FLOOR)
+    likely = at if told.likely is None else told.likely
+    hours = max(likely - at, Decimal(0)).quantize(_TENTH, rounding=ROUND_FLOOR)
     flagged = evidence_of(facts.sheet, now.value)
     used = tuple(value for one in past for value in one.values if value != flagged)
     return Figure(point, known(hours), flagged, rule.low, rule.high, used, _steps(told, segments, at, now.unit))
@@ -113,9 +114,9 @@ def _steps(told: Projection, segments: Sequence[Segment], at: Decimal, unit: str
         Step("its standard error", 1000 * told.trend.slope_error / a_unit, f"{unit} per 1000 h"),
         Step("values", Decimal(sum(len(segment.points) for segment in segments))),
     )
-    if told.likely is None:
+    if told.early is None:
         return steps
-    return (*steps, Step("likely in", max(told.likely - at, Decimal(0)).quantize(_TENTH), "h"))
+    return (*steps, Step("at the earliest in", max(told.early - at, Decimal(0)).quantize(_TENTH), "h"))
 
 
 def _limit(shape: Approach, now: Judgement) -> Decimal:
