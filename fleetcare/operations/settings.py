@@ -51,14 +51,21 @@ def _names(value: str) -> str:
     return ", ".join(names.values())
 
 
+_DAYS_REMEDY = "give days such as 2026-12-25, 2026-12-26"
+
+
+def _day(text: str) -> date:
+    try:
+        return date.fromisoformat(text)
+    except ValueError:
+        raise Misread(f"{text!r} is no day", _DAYS_REMEDY) from None
+
+
 def _dates(value: str) -> str:
     """Read days between commas, each once and in order."""
-    try:
-        days = {date.fromisoformat(day.strip()) for day in value.split(",") if day.strip()}
-    except ValueError as error:
-        raise Misread(f"no list of days: {error}", "give days such as 2026-12-25, 2026-12-26") from None
+    days = {_day(text) for text in map(_name, value.split(",")) if text}
     if not days:
-        raise Refused(f"no day stands in {value!r}", "give days such as 2026-12-25, 2026-12-26")
+        raise Refused(f"no day stands in {value!r}", _DAYS_REMEDY)
     return ", ".join(day.isoformat() for day in sorted(days))
 
 

@@ -59,7 +59,7 @@ def test_a_hostile_name_of_the_shop_is_shown_and_drives_nothing(setting: Runner)
         (("cap-hour",), 1, "there is no setting 'cap-hour'; did you mean cap-hours"),
         (("cap-hour", "3"), 1, "there is no setting 'cap-hour'; did you mean cap-hours"),
         (("cap-hours", "0"), 1, "cap-hours: it cannot be 0; give a number above 0"),
-        (("holidays", "Easter"), 2, "holidays: no list of days: "),
+        (("holidays", "Easter"), 2, "holidays: 'Easter' is no day; give days such as 2026-12-25, 2026-12-26"),
         (("holidays", ","), 1, "holidays: no day stands in ','; give days such as 2026-12-25, 2026-12-26"),
         (("cap-hours", "x"), 2, "cap-hours: 'x' is not a figure"),
         (("cap-hours", "3", "4"), 2, "unrecognized arguments: 4"),
