@@ -41,9 +41,10 @@ def try_rules(connection: "Connection", path: Path, on: date, progress: Progress
 
     Raises Refusals with everything that is wrong in the file.
     """
-    from fleetcare.rulebook.rules import read_rule_file
+    from fleetcare.rulebook.rules import read_rule_file, read_shop_text
 
     text = read_rule_file(path, path.name)
+    read_shop_text(text, path.name)  # what is wrong is said of the file, not of the name it is kept under
     texts = shop_texts(connection, on)
     if any((one.name, one.text) == (path.stem, text) for one in texts):
         raise Refused(f"{path.stem} is in force already, word for word", "change the file first")

@@ -4,9 +4,9 @@ Whatever is not in form is told together, each with the field and how to mend it
 shapes do not say cannot be said.
 """
 
-from typing import Annotated, Any, Self
+from typing import Annotated, Any, Literal, Self
 
-from pydantic import AfterValidator, BeforeValidator, Field, StringConstraints, model_validator
+from pydantic import AfterValidator, BeforeValidator, Field, model_validator
 
 from fleetcare.domain.measured import LASH
 from fleetcare.domain.measures import QUANTITIES, dimension
@@ -92,7 +92,7 @@ class RuleIn(Form):
     words: Words = Field(default_factory=dict)
     unless: Words = Field(default_factory=dict)
     applies: AppliesIn = AppliesIn()
-    preset: Annotated[str, StringConstraints(pattern=r"^$|^[a-z0-9]+(-[a-z0-9]+)*$")] = ""
+    preset: Literal[""] | Slug = ""
     choice: str = ""
     cause: Text
     of_engine: bool = False

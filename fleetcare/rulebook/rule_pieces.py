@@ -1,5 +1,6 @@
 """The pieces a measurement rule is written in, each held to its form; a fault says what is wrong and, behind a bar, how to mend it."""
 
+import re
 from decimal import Decimal
 from itertools import pairwise
 from typing import Annotated, Literal, Self
@@ -53,13 +54,19 @@ def _unit(value: str) -> str:
     return value
 
 
+def _slug(value: str) -> str:
+    if re.fullmatch(r"[a-z0-9]+(-[a-z0-9]+)*", value) is None:
+        raise ValueError(f"{value!r} is no name for it|write small letters and digits, with dashes between")
+    return value
+
+
 def _fits(quantity: str, unit: str) -> bool:
     return dimension(unit) == dimension("%" if quantity in DERIVED else QUANTITIES[quantity].unit)
 
 
 Kind = Annotated[str, AfterValidator(_kind)]
 Text = Annotated[str, StringConstraints(strip_whitespace=True, min_length=1)]
-Slug = Annotated[str, StringConstraints(pattern=r"^[a-z0-9]+(-[a-z0-9]+)*$")]
+Slug = Annotated[str, AfterValidator(_slug)]
 Texts = Annotated[tuple[Text, ...], BeforeValidator(as_list)]
 Words = dict[Text, Annotated[tuple[str, ...], BeforeValidator(as_list)]]
 Known = Annotated[Text, AfterValidator(known)]

@@ -61,21 +61,10 @@ def shop_rules(content: Mapping[str, Any], name: str) -> ShopRules:
 
 
 def rule_book(*shops: ShopRules) -> RuleBook:
-    """Put the shipped rules and those of a shop together; of several changes to one rule the last counts.
-
-    Raises Refused for a change that does not fit the rule it changes.
-    """
+    """Put the shipped rules and those of a shop together; of several changes to one rule the last counts."""
     changes = {change.id: change for shop in shops for change in shop.overrides}
     own = {rule.id: rule for shop in shops for rule in shop.rules}
-    wrong: list[Refused] = []
-    rules = []
-    for rule in shipped_rules():
-        change = changes.get(rule.id)
-        try:
-            rules.append(override(rule, change) if change else rule)
-        except ValueError as fault:
-            wrong.append(_fault(f"rule {rule.id!r}", str(fault)))
-    _refuse(wrong)
+    rules = [override(rule, changes[rule.id]) if rule.id in changes else rule for rule in shipped_rules()]
     chosen: dict[str, tuple[str, ...]] = {}
     for choice in (choice for shop in shops for choice in shop.chosen):
         chosen[choice.name] = tuple(dict.fromkeys((*chosen.get(choice.name, ()), *choice.engines)))
@@ -119,7 +108,7 @@ def _read_file(content: Mapping[str, Any], name: str, shipped: Mapping[str, Rule
     for where, raw in _tables(content, "rule", name, wrong):
         if raw.get("id") in shipped:
             change = _read(Override, raw, where, wrong)
-            overrides += [change] if change else []
+            overrides += [change] if change and _fits(change, shipped, where, wrong) else []
         else:
             rule = _read(RuleIn, {**_defaults(content, name), **raw}, where, wrong)
             rules += [rule.fact] if rule else []
@@ -132,6 +121,16 @@ def _read_file(content: Mapping[str, Any], name: str, shipped: Mapping[str, Rule
     _refuse(wrong)
     _check_unique([*rules, *overrides], name)
     return ShopRules(tuple(rules), tuple(overrides), tuple(chosen))
+
+
+def _fits(change: Override, shipped: Mapping[str, Rule], where: str, wrong: list[Refused]) -> bool:
+    """Whether the rule a change is for can be changed so."""
+    try:
+        override(shipped[change.id], change)
+    except ValueError as fault:
+        wrong.append(_fault(where, str(fault)))
+        return False
+    return True
 
 
 def _defaults(content: Mapping[str, Any], name: str) -> Mapping[str, Any]:

@@ -156,7 +156,7 @@ BAD = {
     ),
     "id": (
         OWN.replace('"p-01-least-compression"', '"P 01"'),
-        "rule 'P 01': id: 'P 01' does not fit; string should match",
+        "rule 'P 01': id: 'P 01' is no name for it; write small letters",
     ),
     "no id": (OWN.replace('id = "p-01-least-compression"\n', ""), "rule 1: id: it is missing; give it"),
     "twice": (OWN + OWN, "'p-01-least-compression' stands there twice; give each an id of its own"),
@@ -172,7 +172,7 @@ BAD = {
     ),
     "other side": (
         '[[rule]]\nid = "oil-fe"\nlow = { alert = { beyond = 1 } }\n',
-        "rule 'oil-fe': it has no low limits; change the side it has",
+        "shop.toml, rule 'oil-fe': it has no low limits; change the side it has",
     ),
     "crossing change": (
         '[[rule]]\nid = "oil-fe"\nhigh = { alarm = { beyond = 50 } }\n',
