@@ -14,10 +14,11 @@ if TYPE_CHECKING:
 
 @dataclass(frozen=True, slots=True)
 class OpenFindings:
-    """The findings of a day nobody has answered, by how grave they are."""
+    """The findings of a day nobody has answered, by how grave they are, and the engines that have an alarm among them."""
 
     alarms: int
     alerts: int
+    alarmed: frozenset[str] = frozenset()
 
 
 def is_measured(connection: "Connection") -> bool:
@@ -37,11 +38,11 @@ def open_findings(connection: "Connection", on: "date") -> OpenFindings | None:
     from fleetcare.rules.finding_life import FindingState
 
     try:
-        found = [one.lived for one in found_findings(connection, on) if one.lived.state is FindingState.OPEN]
+        found = [one for one in found_findings(connection, on) if one.lived.state is FindingState.OPEN]
     except Refused:
         return None
-    alarms = sum(lived.row.severity == Severity.ALARM for lived in found)
-    return OpenFindings(alarms, len(found) - alarms)
+    alarmed = [one.tag for one in found if one.lived.row.severity == Severity.ALARM]
+    return OpenFindings(len(alarmed), len(found) - len(alarmed), frozenset(alarmed))
 
 
 def say_open(found: OpenFindings | None) -> str:

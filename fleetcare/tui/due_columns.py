@@ -50,11 +50,16 @@ COLUMNS: tuple[Column[ReviewLine], ...] = (
 )
 
 
-def in_words(line: ReviewLine) -> tuple[tuple[str, str], ...]:
-    """Say a line in three lines of (text, tone): what, on whose engine, and when with all that bears on it."""
+def in_words(line: ReviewLine, *, has_alarm: bool = False) -> tuple[tuple[str, str], ...]:
+    """Say a line in three lines of (text, tone): what, on whose engine, and when with all that bears on it.
+
+    An engine that has an alarm nobody answered is said to.
+    """
     row = line.row
     machine = f"in {row.machine}" if row.machine not in {"", row.engine} else ""
     whose = ", ".join(word for word in (f"{line.name} {machine}".strip(), row.site) if word)
     rest = "; ".join(word for word in (say_due(row), say_likely(row), *_notes(line)) if word)
-    lines = (f"{row.engine}  {row.task}", "strong"), (whose, "quiet"), (rest, "")
+    if has_alarm:
+        whose = f"{whose}; !! an alarm of it is open".removeprefix("; ")
+    lines = (f"{row.engine}  {row.task}", "strong"), (whose, "overdue" if has_alarm else "quiet"), (rest, "")
     return tuple(line for line in lines if line[0])

@@ -137,6 +137,11 @@ def test_nobody_is_warned_where_the_hours_are_not_put_off_beyond_it(ctx: Context
     assert put_off(sound(ctx, "12mo"), *until).warnings == []
 
 
+def test_an_oil_that_is_not_known_to_be_sound_beyond_its_point_has_no_advice_to_go_beyond(ctx: Context) -> None:
+    drained(samples(yard(ctx), SOUND), "800h")
+    assert put_off(ctx, "2100").warnings == []
+
+
 def test_one_put_off_already_is_warned_of_again(ctx: Context) -> None:
     put_off(sound(ctx))
     assert put_off(ctx, "2000").warnings

@@ -26,8 +26,8 @@ def test_where_nothing_was_measured_there_is_none(ctx: Context) -> None:
 def test_alarms_and_alerts_are_counted_apart_as_of_a_day(ctx: Context) -> None:
     take(yard_of_four(ctx), "compression", *LOW, on="2026-04-20")
     take(ctx, "spot", "coolant,,,104,", on="2026-04-25")
-    assert count(ctx) == OpenFindings(1, 1)
-    assert count(ctx, date(2026, 4, 24)) == OpenFindings(1, 0)
+    assert count(ctx) == OpenFindings(1, 1, frozenset({"P-01"}))
+    assert count(ctx, date(2026, 4, 24)) == OpenFindings(1, 0, frozenset({"P-01"}))
 
 
 def test_rules_that_no_longer_fit_do_not_stop_whoever_asks_what_is_due(ctx: Context) -> None:

@@ -98,8 +98,12 @@ async def test_a_view_of_measurements_says_small_and_plainly_that_there_is_no_fi
 async def test_the_due_list_says_how_many_findings_want_an_answer(opened: Opened, found: Context) -> None:
     async with opened(context=found) as pilot:
         assert line_with(pilot, "!! 1 alarm", "to answer; 3 shows them")
+        while "B-6" not in line_with(pilot, "▌"):
+            await press(pilot, "down")
+        assert line_with(pilot, "Pump diesel, North Sluice; !! an alarm of it is open")
         await press(pilot, "3", "a", *"rings", "enter", *"Harbin", "ctrl+s", "1")
         assert line_with(pilot, "no finding wants an answer")
+        assert "an alarm of it" not in said(pilot)
         await press(pilot, "slash", *"valve", "enter")
         assert line_with(pilot, "no finding wants an answer")
         assert line_with(pilot, 'only "valve": 5 of 5 lines, a shows all')

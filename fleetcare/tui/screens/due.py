@@ -9,7 +9,6 @@ from typing import TYPE_CHECKING
 
 from textual.message import Message
 from textual.widget import Widget
-from textual.worker import get_current_worker
 
 from fleetcare.errors import FleetError
 from fleetcare.operations.due_words import Group
@@ -56,17 +55,18 @@ class DueScreen(SearchingScreen):
             self.kept, self.stored = kept, stored
 
     class Counted(Message):
-        """How many findings want an answer; None where that cannot be told."""
+        """How many findings want an answer, beside a review; None where that cannot be told."""
 
-        def __init__(self, found: OpenFindings | None) -> None:
+        def __init__(self, found: OpenFindings | None, beside: Review) -> None:
             super().__init__()
-            self.found = found
+            self.found, self.beside = found, beside
 
     def __init__(self) -> None:
         super().__init__()
         self.review: Review | None = None
         self.shown: tuple[ReviewLine, ...] = ()
         self.chosen: frozenset[tuple[Facet, str]] = frozenset()
+        self.alarmed: frozenset[str] = frozenset()
         self.turns = 0
 
     def body(self) -> Iterable[Widget]:
@@ -115,22 +115,22 @@ class DueScreen(SearchingScreen):
         self.query_one(Counts).expect_findings(found.is_measured)
         self.rearrange()
         if found.is_measured:  # counted once the lines stand on the screen: the rules take longer to load than they do
-            self.call_after_refresh(self._count_findings, found.on)
+            self.call_after_refresh(self._count_findings, found)
 
     def on_due_screen_counted(self, message: Counted) -> None:
-        """Say how many findings want an answer."""
+        """Say how many findings want an answer, and where the line under the cursor is of an engine with an alarm."""
+        if message.beside is not self.review:
+            return
         self.query_one(Counts).tell_findings(message.found)
+        self.alarmed = message.found.alarmed if message.found is not None else frozenset()
+        self.on_long_list_moved()
 
-    def _count_findings(self, on: date) -> None:
-        work = partial(self._run_count, on)
-        self.run_worker(work, thread=True, group="findings", exclusive=True, exit_on_error=False)
+    def _count_findings(self, beside: Review) -> None:
+        self.run_worker(partial(self._run_count, beside), thread=True, group="findings", exit_on_error=False)
 
-    def _run_count(self, on: date) -> None:
-        worker = get_current_worker()
+    def _run_count(self, beside: Review) -> None:
         with suppress(FleetError), self.context.read() as connection:  # said by the reading of the list
-            found = open_findings(connection, on)
-            if not worker.is_cancelled:
-                self.post_message(self.Counted(found))
+            self.post_message(self.Counted(open_findings(connection, beside.on), beside))
 
     def fail(self, error: FleetError) -> None:
         """Where there is no file yet, say how to begin beside what is wrong."""
@@ -173,7 +173,8 @@ class DueScreen(SearchingScreen):
     def on_long_list_moved(self) -> None:
         """Say the line under the cursor in words."""
         line = self.rows.current
-        self.query_one(Detail).tell(*(in_words(line) if line is not None else ()))
+        words = in_words(line, has_alarm=line.row.engine in self.alarmed) if line is not None else ()
+        self.query_one(Detail).tell(*words)
 
     def on_long_list_opened(self) -> None:
         """Open the working of a line."""
