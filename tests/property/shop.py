@@ -72,7 +72,10 @@ def _book(presets: tuple[str, ...], rules: list[dict[str, Any]]) -> RuleBook:
     return rule_book(shop_rules({"preset": chosen, "rule": rules}, "shop"))
 
 
-BOOKS = tuple(
+BOOKS: tuple[RuleBook, ...] = tuple(
     _book(presets, rules)
     for presets, rules in product(_PRESETS, ([], [*OWN, OWN_PATTERN], [*_TIGHTER, *OWN, OWN_PATTERN]))
 )
+
+STRICTER = tuple(zip(BOOKS[1::3], BOOKS[2::3], strict=True))
+"""Books of a shop, each beside the same with limits of rules of several shapes made tighter."""

@@ -17,7 +17,7 @@ from hypothesis import strategies as st
 
 from fleetcare.domain.findings import Evidence, Finding
 from fleetcare.domain.measured import MeasuredSheet
-from fleetcare.domain.rule_book import Pattern
+from fleetcare.domain.rule_book import Pattern, RuleBook
 from fleetcare.rules.finding_life import FindingState, finding_lives, live
 from fleetcare.rules.judge_history import Standing, in_order, judge_history
 from fleetcare.rules.judging.judge import tell
@@ -26,6 +26,7 @@ from tests.property.case import Case
 from tests.property.cases import cases
 from tests.property.other_units import in_other_units
 from tests.property.scenes import facts_of, newest, one_by_one, single
+from tests.property.shop import STRICTER
 
 
 def standings_of(case: Case, sheets: Iterable[MeasuredSheet] | None = None) -> tuple[Standing, ...]:
@@ -123,6 +124,18 @@ def test_the_order_in_which_sheets_are_typed_never_matters(case: Case, random: R
 def test_units_never_change_what_stands(case: Case, random: Random) -> None:
     here, there = standings_of(case), standings_of(in_other_units(case, random))
     assert [said(one.findings) for one in there] == [said(one.findings) for one in here]
+
+
+@given(cases(), st.sampled_from(STRICTER))
+def test_a_shop_that_makes_limits_tighter_loses_no_flagged_value(case: Case, books: tuple[RuleBook, RuleBook]) -> None:
+    lax, tight = (standings_of(replace(case, book=book)) for book in books)
+    for before, after in zip(lax, tight, strict=True):
+        entry = before.sheet.entry
+        was, now = (
+            {value for finding in one.findings for value in finding.evidence if value.sheet == entry}
+            for one in (before, after)
+        )
+        assert was <= now
 
 
 @given(cases())
