@@ -11,7 +11,7 @@ from typing import TYPE_CHECKING
 
 from fleetcare.domain.measured import OIL, TopUp
 from fleetcare.domain.meters import LifeFigure, Reading
-from fleetcare.domain.quantities import Figure
+from fleetcare.domain.quantities import Amount, Figure, to_base
 from fleetcare.domain.rule_book import RuleBook
 from fleetcare.domain.sheets import Judgement, Phase, Sheet, SheetValue
 from fleetcare.operations.against_past import NewReading, dial_of, hold_against_past, what_falls_off
@@ -39,13 +39,15 @@ if TYPE_CHECKING:
 
 @dataclass(frozen=True, slots=True)
 class EntryAhead:
-    """The entry a sheet will come with: its dial figures, and what explains those that break with their meter's past.
+    """The entry a sheet will come with: its dial figures, what explains those that break with their meter's past, and the
+    oil topped up along with it.
 
     With a `number` it is stored already, and its sheet is to be mended.
     """
 
     figures: Sequence[Figure] = ()
     explained: Mapping[str, bool] = field(default_factory=dict)
+    topped_up: Amount | None = None
     number: int | None = None
 
 
@@ -57,7 +59,7 @@ NEW_ENTRY = EntryAhead()
 class SheetAhead:
     """What a sheet of a day will be judged by: those before it, its hours (life total), the rules, new oil by grade.
 
-    `top_ups` are those in the log up to its day.
+    `top_ups` are those in the log up to its day, that of its own entry among them.
     """
 
     found: EngineSheets
@@ -90,13 +92,21 @@ def sheet_ahead(
     trial = _trial(connection, item, on, entry)
     (found,) = load_engine_sheets(connection, today, [item.id], newest=(on, entry.number or NOT_YET), trial=trial)
     kept = tuple(sheet for sheet in found.sheets if sheet.entry != entry.number)
+    hours = load_hours(connection, item.id, entry.number or NOT_YET, on, today, trial)
     family = Families(connection, today).of(item.id, on) if kind == OIL else found.background.family
     return SheetAhead(
         found=replace(found, sheets=kept, background=replace(found.background, family=family)),
-        hours=load_hours(connection, item.id, entry.number or NOT_YET, on, today, trial),
+        hours=hours,
         book=usable_book(connection, today)[0],
         fresh=load_fresh(connection, on),
-        top_ups=load_top_ups(connection, [item.id], on, today, trial).get(item.id, ()),
+        top_ups=[
+            *load_top_ups(connection, [item.id], on, today, trial).get(item.id, ()),
+            *(
+                [TopUp(hours.value, to_base(entry.topped_up.value, entry.topped_up.unit))]
+                if hours is not None and entry.topped_up
+                else []
+            ),
+        ],
     )
 
 

@@ -11,6 +11,7 @@ from fleetcare.context import Context
 from fleetcare.domain.meters import LifeFigure
 from fleetcare.domain.quantities import parse_dial
 from fleetcare.domain.sheets import CellKey, Phase
+from fleetcare.drafts.fields import parse_litres
 from fleetcare.drafts.findings import RulesDraft
 from fleetcare.drafts.reading_in import read_draft
 from fleetcare.drafts.work import MeasureDraft
@@ -24,8 +25,8 @@ from fleetcare.operations.sheet_report import SheetReport, report_sheet
 from fleetcare.operations.sheets_load import open_form
 from fleetcare.operations.sheets_typed import findings_on, read_typed
 from fleetcare.operations.shop_rules import store_rules, try_rules
-from tests.operations.importing import TODAY, log, reading
-from tests.operations.measure_yard import SPOT, take, yard_of_four
+from tests.operations.importing import TODAY, log
+from tests.operations.measure_yard import SPOT, do, take, yard_of_four
 from tests.operations.sheet_yard import LASH, sheet
 
 BEFORE = ("hours_on_oil,,,100,h", "top_up,,,0,L", "grade,,,15W-40,", "Fe,,,10,ppm", "Cu,,,4,ppm", "Fe,,new,1,ppm")
@@ -158,10 +159,30 @@ def test_without_a_figure_a_rate_is_judged_by_what_lies_between_readings(yard: C
 
 
 def test_a_figure_typed_tells_the_hours_of_sheets_before_it_too(yard: Context) -> None:
-    take(yard, "compression", *COMPRESSION, on="2026-05-01", at=["1310"])
-    reading(yard, "P-01", "2026-05-01", "1310")
-    (before,) = [one for one in ahead(yard, "oil", "2026-04-20").found.sheets if one.kind == "oil"]
-    assert before.engine_hours == Decimal(1090)
+    take(yard, "spot", *SPOT, on="2026-04-15")
+    told = [
+        one.engine_hours
+        for figures in ((), ("1110",))
+        for one in ahead(yard, "oil", "2026-04-20", *figures).found.sheets
+        if one.kind == "spot"
+    ]
+    # By hand: 1090 h on 10 April; to 1300 h on 1 May it is 10 h a day, to the 1110 h typed for 20 April 2 h a day.
+    assert told == [Decimal(1140), Decimal(1100)]
+
+
+def test_oil_topped_up_along_with_the_sample_counts_as_it_does_once_it_is_stored(yard: Context) -> None:
+    rows = ["hours_on_oil,,,110,h", "grade,,,15W-40,", "Cu,,,15,ppm"]
+    entry = EntryAhead((parse_dial("1100"),), topped_up=parse_litres("0.8L"))
+    with yard.read() as connection:
+        item = find_item(connection, "P-01")
+        opened = open_measures(connection, item, "oil", date(2026, 4, 20), TODAY, entry)
+    found = read_measures(opened, cells(rows)).findings
+    logged = do(yard, rows=tuple(rows), on="2026-04-20", at=["1100"], top_up="0.8L")
+    assert logged.sheet is not None
+    with yard.read() as connection:
+        stored = report_sheet(connection, item, logged.sheet.entry, TODAY)
+    assert [one.row for one in found] == [one.row for one in stored.findings]
+    assert "topped up by the log 0.8 L" in found[0].row.working[0]
 
 
 def test_a_figure_that_pushes_older_ones_aside_gives_the_hours_as_storing_it_does(yard: Context) -> None:

@@ -139,6 +139,7 @@ class FormScreen(FillingScreen, StoringScreen):
             self.facts.whose if self.facts else "",
             figures=getattr(draft, "at", ()),
             explained=self._said.get("at", {}),
+            topped_up=getattr(draft, "top_up", None),
             import_key=self.import_key,
         )
         self.app.push_screen(

@@ -14,7 +14,7 @@ from fleetcare.tui.sheets.layout import Blocks, Shown
 if TYPE_CHECKING:
     from sqlalchemy import Connection
 
-    from fleetcare.domain.quantities import Figure
+    from fleetcare.domain.quantities import Amount, Figure
 
 Texts = Mapping[CellKey, str]
 """What stands in the cells, as typed."""
@@ -25,7 +25,8 @@ class SheetFor:
     """What a sheet is taken for: an engine on a day, and the task it is to close, empty where it is only measured.
 
     With an entry it is the sheet of that entry, to be mended; else `figures` are what the dial showed, and `explained`
-    what was answered about those that break with their meter's past, `import_key` what its entry is told again by.
+    what was answered about those that break with their meter's past, `topped_up` the oil that goes with it, and
+    `import_key` what its entry is told again by.
     """
 
     tag: str
@@ -35,6 +36,7 @@ class SheetFor:
     entry: int | None = None
     figures: "Sequence[Figure]" = ()
     explained: Mapping[str, bool] = field(default_factory=dict)
+    topped_up: "Amount | None" = None
     import_key: str = ""
 
 

@@ -181,7 +181,7 @@ class ReadLash(ReadSheet):
 
 def _open(connection: "Connection", about: SheetFor, today: date) -> OpenLash:
     engine = find_engine(connection, about.tag)
-    entry = EntryAhead(about.figures, about.explained, about.entry)
+    entry = EntryAhead(about.figures, about.explained, about.topped_up, about.entry)
     ahead = sheet_ahead(connection, engine, LASH, about.on, today, entry)
     if about.entry is None:
         return OpenLash(open_form(connection, engine, about.on), ahead, {})

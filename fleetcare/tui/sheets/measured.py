@@ -175,7 +175,7 @@ class ReadMeasured(ReadSheet):
 
 
 def _open(kind: str, connection: "Connection", about: SheetFor, today: date) -> OpenMeasured:
-    entry = EntryAhead(about.figures, about.explained, about.entry)
+    entry = EntryAhead(about.figures, about.explained, about.topped_up, about.entry)
     return OpenMeasured(open_measures(connection, find_engine(connection, about.tag), kind, about.on, today, entry))
 
 
