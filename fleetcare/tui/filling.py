@@ -122,6 +122,8 @@ class FillingScreen(LoadingScreen):
         for row in self.rows.values():
             is_known = not row.field.fills or row.field.fills in found.typed
             row.allow(is_known and (found.is_engine or not row.field.of_engines))
+            if not is_known:  # a yes kept from when it was
+                row.fill("")
         if is_first:
             kept = {
                 name: self.fleet_app.shift.get(name, "") for name, row in self.rows.items() if row.field.kept_for_shift

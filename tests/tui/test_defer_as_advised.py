@@ -9,6 +9,7 @@ from fleetcare.tui.forms.base import Subject
 from fleetcare.tui.screens.due import DueScreen
 from fleetcare.tui.screens.form import FormScreen
 from tests.operations.importing import task
+from tests.operations.measure_yard import take
 from tests.operations.test_measured_wears import drained, row, samples, yard
 from tests.tui.conftest import Opened, line_with, press
 from tests.tui.forms import fill_in, form_with, stored
@@ -83,6 +84,16 @@ async def test_further_without_the_advice_is_warned_of(opened: Opened, sound: Co
         await form_with(pilot, "defer", OIL, {**TOLD, "until": "1950h"})
         await press(pilot, "ctrl+s")
         assert "Beware: the oil is only known to be sound until 1900 h on the dial" in said(pilot)
+
+
+async def test_a_yes_kept_half_typed_is_none_any_more_once_nothing_is_advised(opened: Opened, sound: Context) -> None:
+    async with opened(context=sound) as pilot:
+        await advised(pilot, TOLD)
+        await press(pilot, "escape")
+        take(sound, "oil", "hours_on_oil,,,400,h", "Fe,,,250,ppm", on="2026-05-01", sure=True)
+        form = await form_with(pilot, "defer", OIL, {})
+        assert (form.values["until"], form.values["as_advised"]) == ("1900h", "no")
+        assert "dvised" not in said(pilot)
 
 
 async def test_a_line_without_an_advice_does_not_ask(opened: Opened, sound: Context) -> None:
