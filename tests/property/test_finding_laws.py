@@ -45,7 +45,7 @@ def said(findings: Iterable[Finding]) -> list[tuple[object, ...]]:
     return sorted(
         (
             (one.cause, one.subject, one.severity, one.since, one.due_by or date.min),
-            tuple((value.on, value.quantity, value.point, value.phase) for value in one.evidence),
+            sorted((value.on, value.quantity, value.point, value.phase) for value in one.evidence),
         )
         for one in findings
     )

@@ -17,7 +17,7 @@ from hypothesis import strategies as st
 from fleetcare.domain.findings import Evidence, Finding
 from fleetcare.domain.measured import MeasuredSheet
 from fleetcare.domain.rule_book import Bounds, Condition, End, Limit, Limits, Method, Pattern, Rule, Statistical
-from fleetcare.domain.sheets import SheetValue, Verdict
+from fleetcare.domain.sheets import Phase, SheetValue, Verdict
 from fleetcare.rulebook.overrides import Override, override
 from fleetcare.rulebook.rules import shipped_rules
 from fleetcare.rules.findings import merge
@@ -41,7 +41,7 @@ def found(case: Case) -> tuple[Finding, ...]:
     return judge_engine(case.sheets, case.engine, case.book, case.background).findings
 
 
-def as_said(value: Evidence) -> tuple[object, ...]:
+def as_said(value: Evidence) -> tuple[date, str, str, Phase]:
     """A value by where it stands, whatever its unit and the number of its entry."""
     return value.on, value.quantity, value.point, value.phase
 
@@ -51,7 +51,7 @@ def told(findings: tuple[Finding, ...]) -> list[tuple[object, ...]]:
     return sorted(
         (
             (one.cause, one.subject, one.severity, one.since, one.due_by or date.min),
-            tuple(as_said(value) for value in one.evidence),
+            sorted(as_said(value) for value in one.evidence),
         )
         for one in findings
     )
