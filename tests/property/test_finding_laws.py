@@ -147,6 +147,7 @@ def test_a_finding_goes_only_when_its_values_were_measured_again_or_are_of_anoth
         again |= {("supply", point) for quantity, point in again if quantity == "held"}
         again |= {("held", point) for quantity, point in again if quantity == "leak"}
         again |= {("leak", point) for quantity, point in again if quantity == "held"}
+        again |= {(quantity, "") for quantity, _ in again}  # of the whole run, or engine, by its stages or cylinders
         for finding in before.findings:
             if (finding.cause, finding.subject) not in now:
                 assert all(one in owned or (one.quantity, one.point) in again for one in finding.evidence)
