@@ -76,6 +76,16 @@ def find_engine(connection: "Connection", tag: str) -> FoundItem:
     return item
 
 
+def engines_in_use(connection: "Connection", on: date) -> dict[int, str]:
+    """Give the tags of the engines in use on a day, by number."""
+    rows = fetch(
+        connection,
+        "select id, tag from item where is_engine and (withdrawn_on is null or withdrawn_on > :on) order by tag, id",
+        on=on.isoformat(),
+    )
+    return {row[0]: row[1] for row in rows}
+
+
 def find_machine(connection: "Connection", tag: str) -> FoundItem:
     """Find a machine by tag; refuses an engine."""
     item = find_item(connection, tag)

@@ -5,10 +5,9 @@ from datetime import date
 from typing import TYPE_CHECKING
 
 from fleetcare.exchange.csv_out import csv_text
-from fleetcare.operations.find import find_item
+from fleetcare.operations.find import engines_in_use, find_item
 from fleetcare.operations.finding_answers import load_answers
 from fleetcare.operations.judged import Lives, Progress, finding_lives_on
-from fleetcare.operations.rows import fetch
 from fleetcare.rules.explain_finding import say_figure
 from fleetcare.rules.finding_life import Answer, FindingState, Lived, live, withdrawn
 from fleetcare.rules.finding_record import (
@@ -68,7 +67,7 @@ def finding_rows(
 
 def rows_of(connection: "Connection", lives: Lives, on: date) -> list[FindingRecord]:
     """Give the findings of a day from their lives, those that want an answer first."""
-    tags, answers = _tags(connection, on), load_answers(connection)
+    tags, answers = engines_in_use(connection, on), load_answers(connection)
     rows = [finding_record(one.lived) for one in _found(tags, lives, answers, on)]
     rows += [
         withdrawn_record(answer, tag)
@@ -80,7 +79,7 @@ def rows_of(connection: "Connection", lives: Lives, on: date) -> list[FindingRec
 
 def found_findings(connection: "Connection", on: date) -> list[FoundFinding]:
     """Give the findings of a day as rules know them, of all engines in use."""
-    return _found(_tags(connection, on), finding_lives_on(connection, on), load_answers(connection), on)
+    return _found(engines_in_use(connection, on), finding_lives_on(connection, on), load_answers(connection), on)
 
 
 def findings_csv(rows: "Iterable[FindingRecord]") -> str:
@@ -94,13 +93,3 @@ def _found(tags: dict[int, str], lives: Lives, answers: dict[int, list[Answer]],
         for item, tag in tags.items()
         for lived in live(lives.get(item, ()), answers.get(item, ()), on)
     ]
-
-
-def _tags(connection: "Connection", on: date) -> dict[int, str]:
-    """Give the tags of the engines in use on a day, by number."""
-    rows = fetch(
-        connection,
-        "select id, tag from item where is_engine and (withdrawn_on is null or withdrawn_on > :on) order by tag, id",
-        on=on.isoformat(),
-    )
-    return {row[0]: row[1] for row in rows}

@@ -11,7 +11,8 @@ from fleetcare.operations.entries import first_entries
 from fleetcare.operations.finding_answers import load_answers
 from fleetcare.operations.judged import judge_lives
 from fleetcare.operations.measured import EngineSheets
-from fleetcare.rules.explain_finding import FindingRow, finding_row
+from fleetcare.rules.explain_finding import finding_row
+from fleetcare.rules.finding_row import FindingRow
 from fleetcare.rules.finding_life import FindingState, Lived, live
 from fleetcare.rules.judge_engine import JudgedEngine, judge_engine
 

@@ -19,10 +19,10 @@ from fleetcare.operations.entries import first_entries, first_of
 from fleetcare.operations.families import Families
 from fleetcare.operations.judged_rows import Kept, keep, keep_later, kept_rows, newest_day, sheet_owners
 from fleetcare.operations.judged_touched import touched
-from fleetcare.operations.lives_json import FORM, lives_of, lives_text
+from fleetcare.operations.lives_json import kept_under, lives_of, lives_text
 from fleetcare.operations.measured import EngineSheets, load_engine_sheets
 from fleetcare.operations.shop_book import ShopText, book_digest, book_in_force, book_of, shop_texts
-from fleetcare.operations.wears_json import WEARS_FORM, wears_of, wears_text
+from fleetcare.operations.wears_json import wears_of, wears_text
 from fleetcare.rules.finding_life import FindingLife, finding_lives
 from fleetcare.rules.judge_history import in_order, judge_history
 from fleetcare.rules.judging.applies import rules_for
@@ -135,7 +135,7 @@ def _current(
     connection: "Connection", texts: tuple[ShopText, ...], ids: Sequence[int], progress: Progress | None
 ) -> _Found:
     """Give the rows of some engines, made anew where they do not hold."""
-    digest = _digest(FORM, WEARS_FORM, book_digest(texts))
+    digest = kept_under(book_digest(texts))
     head = last_entry(connection).seq
     rows = {item: row for item, row in kept_rows(connection, ids).items() if row.book == digest}
     is_touched = touched(connection, min((row.seq for row in rows.values()), default=head))

@@ -1,16 +1,23 @@
 """Findings with their lives as JSON text and back, figures and days exact."""
 
+import hashlib
 import json
 from dataclasses import astuple, fields
 from datetime import date
 from decimal import Decimal
 from typing import Any
 
-from fleetcare.rules.explain_finding import FindingRow
+from fleetcare.operations.wears_json import WEARS_FORM
 from fleetcare.rules.finding_life import At, End, FindingLife, Stand
+from fleetcare.rules.finding_row import FindingRow
 
 FORM = ",".join(field.name for field in fields(FindingRow))
 """What a row is made of: text of another form is of another program."""
+
+
+def kept_under(book: str) -> str:
+    """Give what tells rows that hold by the rules of a digest from any others: those rules, and the form rows have."""
+    return hashlib.sha256("\0".join((FORM, WEARS_FORM, book)).encode()).hexdigest()
 
 
 def lives_text(lives: tuple[FindingLife, ...]) -> str:

@@ -1,15 +1,18 @@
 """How many findings want an answer: what a morning begins with, beside what is due."""
 
+from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
+from datetime import date
 from typing import TYPE_CHECKING
 
 from fleetcare.errors import Refused
+from fleetcare.operations.find import engines_in_use
 from fleetcare.operations.rows import fetch
 
 if TYPE_CHECKING:
-    from datetime import date
-
     from sqlalchemy import Connection
+
+    from fleetcare.rules.finding_life import FindingLife
 
 
 @dataclass(frozen=True, slots=True)
@@ -26,23 +29,42 @@ def is_measured(connection: "Connection") -> bool:
     return bool(fetch(connection, "select 1 from sheet limit 1"))
 
 
-def open_findings(connection: "Connection", on: "date") -> OpenFindings | None:
+def open_findings(connection: "Connection", on: date) -> OpenFindings | None:
     """Count the findings of a day that want an answer; None where the shop's rules do not let them be told.
 
-    What does the judging is loaded only where something was measured.
+    What reads and judges findings is loaded only as far as there is something to read, or to judge anew.
     """
     if not is_measured(connection):
         return OpenFindings(0, 0)
     from fleetcare.domain.rule_book import Severity
-    from fleetcare.operations.finding_rows import found_findings
-    from fleetcare.rules.finding_life import FindingState
+    from fleetcare.operations.finding_answers import load_answers
+    from fleetcare.rules.finding_life import FindingState, live
 
     try:
-        found = [one for one in found_findings(connection, on) if one.lived.state is FindingState.OPEN]
+        lives = _lives(connection, on)
     except Refused:
         return None
-    alarmed = [one.tag for one in found if one.lived.row.severity == Severity.ALARM]
+    answers = load_answers(connection)
+    found = [
+        (tag, lived.row.severity)
+        for item, tag in engines_in_use(connection, on).items()
+        for lived in live(lives.get(item, ()), answers.get(item, ()), on)
+        if lived.state is FindingState.OPEN
+    ]
+    alarmed = [tag for tag, severity in found if severity == Severity.ALARM]
     return OpenFindings(len(alarmed), len(found) - len(alarmed), frozenset(alarmed))
+
+
+def _lives(connection: "Connection", on: date) -> "Mapping[int, Sequence[FindingLife]]":
+    """Give the findings of all engines: what is kept where that holds, else judged anew."""
+    from fleetcare.operations.kept_lives import kept_lives
+
+    kept = kept_lives(connection, on)
+    if kept is not None:
+        return kept
+    from fleetcare.operations.judged import finding_lives_on  # takes longer to load than the due list
+
+    return finding_lives_on(connection, on)
 
 
 def say_open(found: OpenFindings | None) -> str:

@@ -4,8 +4,6 @@ screen shows this row, so that they cannot disagree.
 """
 
 from collections.abc import Iterable
-from dataclasses import dataclass
-from datetime import date
 from decimal import Decimal
 
 from fleetcare.domain.cautions import GENERAL
@@ -25,6 +23,7 @@ from fleetcare.domain.rule_book import (
     Rule,
     Since,
 )
+from fleetcare.rules.finding_row import FindingRow
 from fleetcare.rules.judging.values import title
 
 _PLACES = ((10, 2), (1, 3), (0, 4))
@@ -32,32 +31,6 @@ _PLACES = ((10, 2), (1, 3), (0, 4))
 
 _AS_TYPED = 3
 """A figure with no more decimals is shown whole: gauges and laboratories give no more."""
-
-
-@dataclass(frozen=True, slots=True)
-class FindingRow:
-    """A finding, flat. Figures are those of its gravest signal, in `unit`, and None where only a pattern speaks.
-
-    `explanation` says it in a sentence or two, `working` number by number, `evidence` value by value.
-    """
-
-    engine: str
-    rule: str
-    severity: str
-    cause: str
-    subject: str
-    measured: Decimal | None
-    unit: str
-    limit: Decimal | None
-    margin: Decimal | None
-    since: date
-    source: str
-    explanation: str
-    working: tuple[str, ...]
-    evidence: tuple[str, ...]
-    next_step: str
-    caution: str
-    due_by: date | None
 
 
 def finding_row(finding: Finding) -> FindingRow:

@@ -11,11 +11,14 @@ from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import dataclass
 from datetime import date
 from enum import StrEnum
+from typing import TYPE_CHECKING
 
 from fleetcare.domain.findings import Finding
 from fleetcare.domain.rule_book import Severity
-from fleetcare.rules.explain_finding import FindingRow, finding_row
-from fleetcare.rules.judge_history import Standing
+from fleetcare.rules.finding_row import FindingRow
+
+if TYPE_CHECKING:
+    from fleetcare.rules.judge_history import Standing
 
 _Key = tuple[str, str]  # cause and subject
 
@@ -110,7 +113,7 @@ class Lived:
     answer: Answer | None = None
 
 
-def finding_lives(standings: Sequence[Standing], first_entries: Mapping[int, int]) -> tuple[FindingLife, ...]:
+def finding_lives(standings: "Sequence[Standing]", first_entries: Mapping[int, int]) -> tuple[FindingLife, ...]:
     """Give the findings of an engine from what stood after each sheet, in the order they began.
 
     `first_entries` names the entry that another one corrects, so that a finding keeps its id when its sheet is put right.
@@ -155,6 +158,8 @@ def _go_on(before: tuple[FindingLife, Finding] | None, finding: Finding, at: At,
     """Let a finding go on, or begin."""
     if before is not None and before[1] == finding:
         return before[0]
+    from fleetcare.rules.explain_finding import finding_row  # its words are not worth loading where kept ones are read
+
     stand = Stand(at, finding_row(finding), any(value.sheet == entry for value in finding.evidence))
     if before is None:
         name = "-".join(part for part in (str(at.entry), finding.rule, finding.subject) if part)

@@ -1,5 +1,6 @@
 """What a quick command must not pay for. A child process looks, as the static contracts cannot tell late imports."""
 
+import shutil
 import subprocess
 import sys
 from pathlib import Path
@@ -39,6 +40,16 @@ def test_help_and_bench_sums_load_no_database_no_forms_and_no_screen(words: tupl
 @pytest.mark.parametrize("words", [("due", "--format", "csv"), ("engine", "list")], ids=" ".join)
 def test_reading_loads_no_tables_nor_their_library_no_migrations_no_forms_and_no_screen(words: tuple[str, ...]) -> None:
     assert not loaded_by("--db", str(ROOT / "demo_fleet.db"), *words) & NOT_FOR_READING
+
+
+def test_a_due_list_that_says_how_many_findings_want_an_answer_loads_nothing_that_judges(tmp_path: Path) -> None:
+    file = str(shutil.copy(ROOT / "demo_fleet.db", tmp_path / "yard.db"))
+    modules = PROBE.replace('name.partition(".")[0]', "name")
+    for words in (("findings",), ("due",)):  # the first keeps what has to be judged
+        command = [sys.executable, "-c", modules, "--db", file, "--as-of", "2026-05-01", *words]
+        ran = subprocess.run(command, capture_output=True, text=True, check=True)
+    assert "want an answer" in ran.stdout
+    assert not {name for name in ran.stderr.split() if name.startswith(("fleetcare.rules.judg", "pydantic"))}
 
 
 def test_writing_to_a_current_file_loads_no_migrations_and_no_screen(db: Path) -> None:
