@@ -12,6 +12,7 @@ from fleetcare.operations.rows import fetch
 if TYPE_CHECKING:
     from sqlalchemy import Connection
 
+    from fleetcare.operations.judged import Progress
     from fleetcare.rules.finding_life import FindingLife
 
 
@@ -29,10 +30,11 @@ def is_measured(connection: "Connection") -> bool:
     return bool(fetch(connection, "select 1 from sheet limit 1"))
 
 
-def open_findings(connection: "Connection", on: date) -> OpenFindings | None:
+def open_findings(connection: "Connection", on: date, progress: "Progress | None" = None) -> OpenFindings | None:
     """Count the findings of a day that want an answer; None where the shop's rules do not let them be told.
 
-    What reads and judges findings is loaded only as far as there is something to read, or to judge anew.
+    Where engines have to be judged anew `progress` is told. What reads and judges findings is loaded only as far as there
+    is something to read, or to judge anew.
     """
     if not is_measured(connection):
         return OpenFindings(0, 0)
@@ -41,7 +43,7 @@ def open_findings(connection: "Connection", on: date) -> OpenFindings | None:
     from fleetcare.rules.finding_life import FindingState, live
 
     try:
-        lives = _lives(connection, on)
+        lives = _lives(connection, on, progress)
     except Refused:
         return None
     answers = load_answers(connection)
@@ -55,7 +57,7 @@ def open_findings(connection: "Connection", on: date) -> OpenFindings | None:
     return OpenFindings(len(alarmed), len(found) - len(alarmed), frozenset(alarmed))
 
 
-def _lives(connection: "Connection", on: date) -> "Mapping[int, Sequence[FindingLife]]":
+def _lives(connection: "Connection", on: date, progress: "Progress | None") -> "Mapping[int, Sequence[FindingLife]]":
     """Give the findings of all engines: what is kept where that holds, else judged anew."""
     from fleetcare.operations.kept_lives import kept_lives
 
@@ -64,7 +66,7 @@ def _lives(connection: "Connection", on: date) -> "Mapping[int, Sequence[Finding
         return kept
     from fleetcare.operations.judged import finding_lives_on  # takes longer to load than the due list
 
-    return finding_lives_on(connection, on)
+    return finding_lives_on(connection, on, progress)
 
 
 def say_open(found: OpenFindings | None) -> str:

@@ -21,7 +21,7 @@ FOLLOW_EVERY = 1.0
 _SILENT = 0.5  # seconds of reading before it is worth a word
 
 
-class _Stopped(Exception):
+class Stopped(Exception):
     """Nobody waits any more for what is being read."""
 
 
@@ -81,7 +81,7 @@ class LoadingScreen(FramedScreen):
     def tell_progress(self, done: int, of: int) -> None:
         """Say how far the reading has come; called in its thread. Ends it where nobody waits for it any more."""
         if get_current_worker().is_cancelled:
-            raise _Stopped
+            raise Stopped
         self.post_message(self.Progressed(done, of))
 
     def fail(self, error: FleetError) -> None:
@@ -147,7 +147,7 @@ class LoadingScreen(FramedScreen):
         try:
             with context.read() as connection:
                 answer = self.Loaded(self.read(connection, seen.on, is_future=context.is_future))
-        except _Stopped:
+        except Stopped:
             return
         except FleetError as error:
             answer = self.Failed(error)

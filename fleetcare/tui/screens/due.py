@@ -9,6 +9,7 @@ from typing import TYPE_CHECKING
 
 from textual.message import Message
 from textual.widget import Widget
+from textual.worker import get_current_worker
 
 from fleetcare.errors import FleetError
 from fleetcare.operations.due_words import Group
@@ -16,6 +17,7 @@ from fleetcare.operations.open_findings import OpenFindings, open_findings
 from fleetcare.operations.review import Facet, Order, Review, ReviewLine, Wanted, arrange, review
 from fleetcare.tui.due_columns import COLUMNS, in_words
 from fleetcare.tui.frame import TopBar, say_day
+from fleetcare.tui.loading import Stopped
 from fleetcare.tui.looks import tone_of
 from fleetcare.tui.searching import SearchingScreen
 from fleetcare.tui.widgets.columns import Section
@@ -114,7 +116,7 @@ class DueScreen(SearchingScreen):
         self.query_one(TopBar).tell(say_day(found.on), found.shop)
         self.query_one(Counts).expect_findings(found.is_measured)
         self.rearrange()
-        if found.is_measured:  # counted once the lines stand on the screen: the rules take longer to load than they do
+        if found.is_measured:  # counted once the lines stand on the screen: it may mean to judge a yard anew
             self.call_after_refresh(self._count_findings, found)
 
     def on_due_screen_counted(self, message: Counted) -> None:
@@ -129,8 +131,15 @@ class DueScreen(SearchingScreen):
         self.run_worker(partial(self._run_count, beside), thread=True, group="findings", exit_on_error=False)
 
     def _run_count(self, beside: Review) -> None:
-        with suppress(FleetError), self.context.read() as connection:  # said by the reading of the list
-            self.post_message(self.Counted(open_findings(connection, beside.on), beside))
+        """Count in a thread; judging a whole yard anew ends where nobody waits for it any more."""
+        worker = get_current_worker()
+
+        def go_on(done: int, of: int) -> None:
+            if worker.is_cancelled or beside is not self.review:
+                raise Stopped
+
+        with suppress(FleetError, Stopped), self.context.read() as connection:  # said by the reading of the list
+            self.post_message(self.Counted(open_findings(connection, beside.on, go_on), beside))
 
     def fail(self, error: FleetError) -> None:
         """Where there is no file yet, say how to begin beside what is wrong."""
