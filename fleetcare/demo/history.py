@@ -29,7 +29,7 @@ def history(anchor: date, items: Sequence[Item] = ITEMS, changeover: int = CHANG
     for item in items:
         measured = list(_measured(yard, item))
         work = [*_work(yard, item), *gauged_steps(yard, item, _mechanic(item))]
-        busy = [*work, *(step for step in measured if step.verb is Verb.LOG)]
+        busy = [*work, *(step for step in measured if step.verb is not Verb.SHEET)]
         steps += [*_arrival(yard, item), *work, *_told(yard, item), *_rounds(yard, item, busy), *measured]
     return in_order(steps)
 
@@ -73,8 +73,11 @@ def _measured(yard: Yard, item: Item) -> Iterator[Step]:
     by = _mechanic(item)
     for taken in sheets_of(yard, item):
         values = {"sheet": taken.sheet, "kind": taken.kind, "by": by, **taken.values}
-        verb = Verb.LOG if "at" in taken.values else Verb.SHEET
+        verb = Verb.LOG if "task" in taken.values else Verb.SHEET
         yield Step(taken.on, max(taken.on, yard.changeover), verb, item.tag, values)
+        if taken.dial and taken.on not in yard.rounds():
+            read = {"value": taken.dial, "by": _READER}
+            yield _dated(yard, taken.on, (Verb.CARD_READING, Verb.ROUND), item.tag, read)
     for on, litres in topped_up_days(yard, item):
         values = {"top_up": litres, "at": [yard.dial(item.tag, on)], "by": by}
         yield Step(on, max(on, yard.changeover), Verb.LOG, item.tag, values)

@@ -66,12 +66,16 @@ class Measured:
 
 @dataclass(frozen=True, slots=True)
 class Taken:
-    """A sheet of a day, of a kind, with what it was taken with; one with a dial figure (`at`) is an entry of the log."""
+    """A sheet of a day, of a kind, with what it was taken with; one with a task is its entry of the log.
+
+    `dial` is what the meter showed, where that was written down for it.
+    """
 
     on: date
     kind: str
     sheet: SheetIn
     values: Mapping[str, object] = field(default_factory=dict)
+    dial: str = ""
 
 
 def compression(ago: int, pressures: str, wet: Mapping[int, str] | None = None) -> Tested:
@@ -114,7 +118,7 @@ def _fills(yard: "Yard", item: "Item", followed: Followed) -> Iterator[Taken]:
         ]
         reports = fill_samples(f"{item.tag} {begun:f}", followed, sump, [curve.at(day) - begun for day in days])
         for day, report in zip(days, reports, strict=True):
-            yield Taken(day, "oil", report, {"gauge": _LABORATORY, "at": [yard.dial(item.tag, day)]})
+            yield Taken(day, "oil", report, {"gauge": _LABORATORY}, yard.dial(item.tag, day))
 
 
 def topped_up_days(yard: "Yard", item: "Item") -> Iterator[tuple[date, str]]:
@@ -143,7 +147,9 @@ def _pressed(yard: "Yard", item: "Item", pressed: Pressed) -> Iterator[Taken]:
         rows = []
         for number, usual in enumerate(pressed.pressures, start=1):
             newest, fall = pressed.falling.get(number, (usual, 0))
-            read = min(Decimal(usual), newest + before * fall / 1000) + 10 * Random(f"{item.tag} {number} {on}").randint(-1, 1)
+            read = min(Decimal(usual), newest + before * fall / 1000) + 10 * Random(
+                f"{item.tag} {number} {on}"
+            ).randint(-1, 1)
             rows.append(f"pressure,{number},dry,{round(read / 10) * 10}")
         values = {"task": [pressed.task], "at": [dial], "gauge": "G1"}
         yield Taken(on, "compression", _sheet(tuple(rows)), values)
