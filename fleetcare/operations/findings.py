@@ -12,9 +12,10 @@ from fleetcare.operations.finding_answers import load_answers
 from fleetcare.operations.judged import judge_lives
 from fleetcare.operations.measured import EngineSheets
 from fleetcare.rules.explain_finding import finding_row
-from fleetcare.rules.finding_row import FindingRow
 from fleetcare.rules.finding_life import FindingState, Lived, live
+from fleetcare.rules.finding_row import FindingRow
 from fleetcare.rules.judge_engine import JudgedEngine, judge_engine
+from fleetcare.rules.judge_history import Judging
 
 if TYPE_CHECKING:
     from sqlalchemy import Connection
@@ -51,7 +52,7 @@ def engine_findings(judged: JudgedEngine, known: Mapping[Cause, Lived] | None = 
 def known_findings(connection: "Connection", found: EngineSheets, book: RuleBook, on: date) -> dict[Cause, Lived]:
     """Give the findings of an engine as its sheets and the answers up to a day left them, by cause and subject."""
     answers = load_answers(connection).get(found.item_id, ())
-    lived = live(judge_lives(found, book, first_entries(connection)), answers, on)
+    lived = live(judge_lives(found, Judging(book), first_entries(connection)), answers, on)
     return {(one.life.cause, one.life.subject): one for one in lived if one.life.end is None}
 
 

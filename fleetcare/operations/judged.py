@@ -10,6 +10,7 @@ from collections.abc import Callable, Iterable, Sequence
 from contextlib import suppress
 from dataclasses import dataclass, field
 from datetime import date
+from functools import lru_cache
 from typing import TYPE_CHECKING
 
 from fleetcare.db.chain import last_entry
@@ -24,7 +25,7 @@ from fleetcare.operations.measured import EngineSheets, load_engine_sheets
 from fleetcare.operations.shop_book import ShopText, book_digest, book_in_force, book_of, shop_texts
 from fleetcare.operations.wears_json import wears_of, wears_text
 from fleetcare.rules.finding_life import FindingLife, finding_lives
-from fleetcare.rules.judge_history import in_order, judge_history
+from fleetcare.rules.judge_history import Judging, in_order
 from fleetcare.rules.judging.applies import rules_for
 from fleetcare.rules.lash_wear import lash_shown
 from fleetcare.rules.measured_wear import measured_wears
@@ -76,20 +77,19 @@ def judge_anew(
     connection: "Connection", on: date, texts: tuple[ShopText, ...], progress: Progress | None = None
 ) -> Lives:
     """Judge every engine that was ever measured by its sheets up to a day, whatever is kept."""
-    book, firsts = book_of(texts), first_entries(connection)
+    judging, firsts = Judging(book_of(texts)), first_entries(connection)
     lives: Lives = {}
     owners, families = sheet_owners(connection), Families(connection, on)
     for ids in _batches(owners, progress):
         for one in load_engine_sheets(connection, on, ids, families=families):
-            lives[one.item_id] = judge_lives(one, book, firsts)
+            lives[one.item_id] = judge_lives(one, judging, firsts)
     return lives
 
 
-def judge_lives(found: EngineSheets, book: "RuleBook", firsts: dict[int, int]) -> tuple[FindingLife, ...]:
+def judge_lives(found: EngineSheets, judging: Judging, firsts: dict[int, int]) -> tuple[FindingLife, ...]:
     """Judge an engine sheet by sheet, and give the life of each of its findings."""
     sheets = in_order(found.sheets, firsts)
-    standings = judge_history(sheets, found.engine, rules_for(book, found.engine), found.background)
-    return finding_lives(standings, firsts)
+    return finding_lives(judging.judge_history(sheets, found.engine, found.background), firsts)
 
 
 def wears_judged(connection: "Connection", ids: Sequence[int]) -> dict[int, MeasuredWears]:
@@ -167,7 +167,14 @@ def _made(
         return before.at(head)
     book = book_of(texts)
     wears = wears_text(_wears(found, book, date.max), book_digest(texts))
-    return Kept(found.item_id, head, digest, facts, f"{wears}\n{lives_text(judge_lives(found, book, firsts))}")
+    return Kept(
+        found.item_id, head, digest, facts, f"{wears}\n{lives_text(judge_lives(found, _judging_by(texts), firsts))}"
+    )
+
+
+@lru_cache(maxsize=1)
+def _judging_by(texts: tuple[ShopText, ...]) -> Judging:
+    return Judging(book_of(texts))
 
 
 def _wears(found: EngineSheets, book: "RuleBook | None", on: date) -> MeasuredWears:

@@ -12,15 +12,16 @@ from datetime import date
 
 from fleetcare.domain.findings import Evidence, Finding, Signal
 from fleetcare.domain.measured import SHEET_KINDS, MeasuredEngine, MeasuredSheet
-from fleetcare.domain.rule_book import End, Pattern, Rule
+from fleetcare.domain.rule_book import End, Pattern, Rule, RuleBook
 from fleetcare.domain.sheets import Phase
 from fleetcare.rules.findings import merge
 from fleetcare.rules.judge_engine import Background
+from fleetcare.rules.judging.applies import rules_for
 from fleetcare.rules.judging.facts import MeasuredFacts
 from fleetcare.rules.judging.judge import tell
 from fleetcare.rules.judging.patterns import match_patterns, may_match
 from fleetcare.rules.judging.pools import own_pools, pools_for
-from fleetcare.rules.judging.screen import Screened, screened
+from fleetcare.rules.judging.screen import Screened, is_outside, screened
 from fleetcare.rules.judging.values import HELD, LEAK, PRESSURE, SUPPLY, WET_GAIN
 from fleetcare.rules.judging.words import says
 
@@ -80,6 +81,24 @@ def in_order(sheets: Iterable[MeasuredSheet], first_entries: Mapping[int, int]) 
     return sorted(sheets, key=place)
 
 
+class Judging:
+    """A book of rules made ready once for all engines that it is the same for."""
+
+    def __init__(self, book: RuleBook) -> None:
+        self._book = book
+        self._tells_engines_apart = any(rule.applies.engines for rule in book.rules) or any(book.chosen.values())
+        self._ready: dict[MeasuredEngine, Mapping[str, _OfKind]] = {}
+
+    def judge_history(
+        self, sheets: Sequence[MeasuredSheet], engine: MeasuredEngine, background: Background
+    ) -> tuple[Standing, ...]:
+        """Judge the sheets of an engine, as `in_order` has them, by the rules of the book that are for it."""
+        alike = engine if self._tells_engines_apart else replace(engine, tag="")
+        if alike not in self._ready:
+            self._ready[alike] = _by_kind(rules_for(self._book, engine))
+        return _judge_in_turn(sheets, engine, self._ready[alike], background)
+
+
 def judge_history(
     sheets: Sequence[MeasuredSheet],
     engine: MeasuredEngine,
@@ -87,8 +106,16 @@ def judge_history(
     background: Background,
 ) -> tuple[Standing, ...]:
     """Judge the sheets of an engine, as `in_order` has them, by the rules for it; its own pool is that of the samples before each."""
-    by_kind = _by_kind(rules)
+    return _judge_in_turn(sheets, engine, _by_kind(rules), background)
+
+
+def _judge_in_turn(
+    sheets: Sequence[MeasuredSheet], engine: MeasuredEngine, by_kind: Mapping[str, _OfKind], background: Background
+) -> tuple[Standing, ...]:
+    """Judge sheets as `judge_history` does, by rules that were sorted already, as they are for many engines alike."""
     walk, standings = _Walk(), []
+    stood: list[Signal] = []
+    findings: tuple[Finding, ...] = ()
     for sheet, pool in zip(sheets, own_pools(sheets), strict=True):
         facts = MeasuredFacts(
             engine=engine,
@@ -99,12 +126,14 @@ def judge_history(
             lash=background.lash,
             holidays=background.holidays,
         )
-        changed = walk.quantities.get(sheet.kind, frozenset()) | _quantities(sheet)
-        walk.facts[sheet.kind], walk.quantities[sheet.kind] = facts, _quantities(sheet)
+        before, walk.quantities[sheet.kind] = walk.quantities.get(sheet.kind, frozenset()), _quantities(sheet)
+        walk.facts[sheet.kind] = facts
         _take_in(walk, facts, by_kind.get(sheet.kind, _NO_RULES))
-        _match(walk, by_kind, sheet.kind, changed)
+        _match(walk, by_kind, sheet.kind, before | walk.quantities[sheet.kind])
         signals = [*(one for told in walk.standing.values() for one in told.values()), *walk.patterns.values()]
-        standings.append(Standing(sheet, merge(engine.tag, signals) if signals else ()))
+        if signals != stood:
+            stood, findings = signals, merge(engine.tag, signals)
+        standings.append(Standing(sheet, findings))
     return tuple(standings)
 
 
@@ -165,17 +194,20 @@ def _take_in(walk: _Walk, facts: MeasuredFacts, rules: _OfKind) -> None:
 
 def _match(walk: _Walk, rules: Mapping[str, _OfKind], kind: str, changed: frozenset[str]) -> None:
     """Match the patterns anew; one that no longer matches stands until a value of it is measured again."""
+    flagged = {(signal.rule.quantity, signal.end) for told in walk.newest.values() for signal in told}
+    measured = frozenset().union(*walk.quantities.values())
     for name, facts in walk.facts.items():
         known = rules.get(name, _NO_RULES)
         # Where the nameplate does not say which cylinders there are, any sheet may.
         if name == kind or known.looks_at & changed or not facts.engine.cylinders:
-            walk.matched[name] = _matches(walk, facts, known.patterns)
+            possible = [one for one in known.patterns if may_match(one[1], flagged, measured)]
+            walk.matched[name] = _matches(walk, facts, possible) if possible else []
     matched: dict[tuple[str, str], Signal] = {}
     for signal in (one for told in walk.matched.values() for one in told):
         said = (signal.rule.id, signal.subject)
         if said not in matched or matched[said].on < signal.on:
             matched[said] = signal
-    now = {said: replace(signal, since=_began(walk.patterns.get(said, signal))) for said, signal in matched.items()}
+    now = {said: _begun(signal, walk.patterns.get(said, signal)) for said, signal in matched.items()}
     for said, signal in walk.patterns.items():
         if said not in now and not any(_is_measured_again(walk, value) for value in signal.flagged):
             now[said] = signal
@@ -185,16 +217,15 @@ def _match(walk: _Walk, rules: Mapping[str, _OfKind], kind: str, changed: frozen
 def _matches(walk: _Walk, facts: MeasuredFacts, patterns: Iterable[tuple[Rule, Pattern]]) -> list[Signal]:
     """Match patterns as seen from the newest sheet of a kind."""
     kind = facts.sheet.kind
-    flagged = {(signal.rule.quantity, signal.end) for told in walk.newest.values() for signal in told}
-    measured = frozenset().union(*walk.quantities.values())
+    others = tuple(other.sheet for name, other in walk.facts.items() if name != kind)
+    sheets = (facts.sheet, *others)
     possible = [
         (rule, pattern)
         for rule, pattern in patterns
-        if may_match(pattern, flagged, measured) and says(facts.sheet, rule)
+        if says(facts.sheet, rule) and not any(is_outside(condition, sheets) for condition in pattern.conditions)
     ]
     if not possible:
         return []
-    others = tuple(other.sheet for name, other in walk.facts.items() if name != kind)
     standing = tuple(signal for name, told in walk.newest.items() if name != kind for signal in told)
     return match_patterns(possible, replace(facts, others=others, standing=standing), walk.newest[kind])
 
@@ -205,6 +236,12 @@ def _said(signal: Signal) -> _Said:
 
 def _began(signal: Signal) -> date:
     return signal.since or signal.on
+
+
+def _begun(signal: Signal, before: Signal) -> Signal:
+    """Date a signal since when it stands; the one before it where nothing else is new."""
+    dated = replace(signal, since=_began(before))
+    return before if dated == before else dated
 
 
 def _is_measured_again(walk: _Walk, value: Evidence) -> bool:

@@ -109,13 +109,13 @@ def top_up(sheet: MeasuredSheet) -> Decimal | None:
     return _stated(sheet, TOP_UP, "L") if sheet.logged_top_up is None else sheet.logged_top_up
 
 
-def with_logged(sheet: MeasuredSheet, top_ups: Iterable[TopUp]) -> MeasuredSheet:
+def with_logged(sheet: MeasuredSheet, top_ups: Sequence[TopUp]) -> MeasuredSheet:
     """Give an oil sample that says nothing of top-ups with what the log of its engine has of its fill; any other as it is.
 
     The oil was filled in at the hours of life then, less those on the oil; a top-up at just that figure belongs to the
     fill before.
     """
-    life, hours = sheet.engine_hours, hours_on_oil(sheet)
+    life, hours = sheet.engine_hours, hours_on_oil(sheet) if top_ups else None
     if life is None or hours is None or any(value.quantity == TOP_UP for value in sheet.values):
         return sheet
     litres = [one.litres for one in top_ups if life - hours < one.life <= life]

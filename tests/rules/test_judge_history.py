@@ -5,10 +5,10 @@ from datetime import date
 from decimal import Decimal
 
 from fleetcare.domain.measured import MeasuredSheet
-from fleetcare.domain.rule_book import Bounds, Method, Pool, Rule, Statistical
+from fleetcare.domain.rule_book import AppliesTo, Bounds, Method, Pool, Rule, RuleBook, Statistical
 from fleetcare.rulebook.rules import rule_book
 from fleetcare.rules.judge_engine import Background, judge_engine
-from fleetcare.rules.judge_history import in_order, judge_history
+from fleetcare.rules.judge_history import Judging, in_order, judge_history
 from fleetcare.rules.judging.applies import rules_for
 from fleetcare.rules.judging.pools import own_pools
 from tests.rules.measured import ENGINE, ON, a_rule, a_sheet, beyond, value
@@ -155,3 +155,19 @@ def test_sheets_of_one_day_are_judged_kind_by_kind_whichever_was_typed_first() -
         assert [str(sheet.values[0]) for sheet in found[3:]] == ["5", "6"]
     corrected = {number: 6 - number for number in range(1, 6)}
     assert [str(sheet.values[0]) for sheet in in_order(orders[0], corrected)[3:]] == ["6", "5"]
+
+
+def test_a_book_judges_engines_alike_and_apart_by_the_rules_for_each() -> None:
+    sheets, other = (oil(30, Fe="120", Cu="120"),), replace(ENGINE, tag="P-02")
+    for book in (RuleBook((IRON, COPPER)), RuleBook((IRON, replace(COPPER, applies=AppliesTo(engines=("P-02",)))))):
+        judging = Judging(book)
+        for engine in (ENGINE, other, ENGINE):
+            assert judging.judge_history(sheets, engine, Background()) == judge_history(
+                sheets, engine, rules_for(book, engine), Background()
+            )
+
+
+def test_a_pattern_on_values_far_from_it_matches_nothing_and_one_within_does() -> None:
+    coolant = tuple(rule for rule in SHIPPED if "coolant-" in rule.id)
+    assert causes(oil(0, K="120", Na="120"), rules=coolant) == [["coolant in the oil"]]
+    assert causes(oil(0, K="10", Na="10"), rules=coolant) == [[]]

@@ -1,5 +1,6 @@
 """A glance at a sheet: what it is certain of, and what it leaves to a closer look."""
 
+from dataclasses import replace
 from decimal import Decimal
 
 import pytest
@@ -7,11 +8,13 @@ import pytest
 from fleetcare.domain.measured import Pools
 from fleetcare.domain.rule_book import (
     AgainstSheet,
+    Asks,
     Basis,
     Best,
     Bounds,
     By,
     Change,
+    Condition,
     End,
     Limits,
     Method,
@@ -22,8 +25,8 @@ from fleetcare.domain.rule_book import (
     Statistical,
 )
 from fleetcare.domain.sheets import Judgement, Phase, SheetValue, Verdict
-from fleetcare.rules.judging.screen import screened
-from tests.rules.measured import a_rule, a_sheet, beyond, facts, value
+from fleetcare.rules.judging.screen import is_outside, screened
+from tests.rules.measured import a_rule, a_sheet, beyond, facts, reach, value
 
 HIGH = Limits(beyond("10"), beyond("20"))
 LOW = Limits(beyond("-10"), beyond("-20"))
@@ -129,6 +132,65 @@ def test_a_change_is_told_from_the_sheet_before_with_the_same_gauge(
         rule = a_rule(quantity="pressure", shape=Change(Since.BEFORE, by), unit="kPa", high=HIGH)
         assert clear(rule, now, earlier=(before,)) is is_clear
         assert clear(rule, now)
+
+
+HIGHEST = Change(Since.BEST_BEFORE, By.RATIO)
+
+
+@pytest.mark.parametrize(
+    ("now", "then", "is_clear"),
+    [
+        (("80", "100"), ("100", "90"), True),
+        (("69", "100"), ("100", "90"), False),
+        (("75", "100"), ("90", "110"), False),
+        (("80", "100"), ("100",), False),
+        (("80", "100"), (), False),
+        (("80", "100"), ("100", "<90"), False),
+    ],
+)
+def test_a_change_from_the_highest_before_is_told_where_every_point_has_a_plain_figure_then(
+    now: tuple[str, ...], then: tuple[str, ...], is_clear: bool
+) -> None:
+    """70 % of the highest: 80 of 100 is clear of it, 69 of 100 and 75 of 110 (68.2 %) are not."""
+    rule = a_rule(quantity="pressure", shape=HIGHEST, unit="%", low=Limits(beyond("70")), high=Limits())
+    sheet, before = (
+        a_sheet(*(value("pressure", text, "psi", str(number)) for number, text in enumerate(told, start=1)), days=days)
+        for told, days in ((now, 0), (then, 30))
+    )
+    assert screened(rule).is_clear(facts(sheet, earlier=(before,))) is is_clear
+    assert screened(rule).is_clear(facts(sheet))
+
+
+def test_a_point_that_was_entered_twice_before_is_looked_at() -> None:
+    rule = a_rule(quantity="pressure", shape=HIGHEST, unit="%", low=Limits(beyond("70")), high=Limits())
+    before = a_sheet(*(value("pressure", text, "psi", "1") for text in ("100", "101")), days=30)
+    assert not clear(rule, value("pressure", "100", "psi", "1"), earlier=(before,))
+
+
+BETWEEN = Condition(("Na", "K"), Asks.WITHIN, low=reach("50"), high=beyond("100"), unit="ppm")
+
+
+@pytest.mark.parametrize(
+    ("condition", "text", "unit", "outside"),
+    [
+        (BETWEEN, "49", "ppm", True),
+        (BETWEEN, "50", "ppm", False),
+        (BETWEEN, "100", "ppm", False),
+        (BETWEEN, "101", "ppm", True),
+        (BETWEEN, "<60", "ppm", True),
+        (BETWEEN, "0.02", "%", True),
+        (BETWEEN, "20", "psi", False),
+        (replace(BETWEEN, low=None), "101", "ppm", True),
+        (replace(BETWEEN, high=None), "49", "ppm", True),
+        (replace(BETWEEN, less_new=True), "49", "ppm", False),
+        (replace(BETWEEN, over="Al"), "49", "ppm", False),
+        (replace(BETWEEN, asks=Asks.CLEAR), "49", "ppm", False),
+        (replace(BETWEEN, quantities=("leak",)), "49", "ppm", False),
+        (replace(BETWEEN, quantities=("Cu",)), "49", "ppm", False),
+    ],
+)
+def test_a_condition_no_value_can_lie_within_is_told(condition: Condition, text: str, unit: str, outside: bool) -> None:
+    assert is_outside(condition, [a_sheet(value("Fe", "75")), a_sheet(value("Na", text, unit))]) is outside
 
 
 def test_a_difference_in_another_unit_than_the_rule_is_looked_at() -> None:

@@ -3,12 +3,14 @@
 from dataclasses import replace
 from decimal import Decimal
 
-from fleetcare.domain.engines import Side
+from fleetcare.domain.engines import Side, ValveTrain
+from fleetcare.domain.measured import MeasuredEngine, MeasuredSheet
 from fleetcare.domain.quantities import Kind
 from fleetcare.domain.sheets import LashSpec, Sheet, SheetValue
 from fleetcare.domain.trends import End
 from fleetcare.domain.wear import Wear
-from fleetcare.rules.lash_wear import lash_wears
+from fleetcare.rules.lash_points import lash_points
+from fleetcare.rules.lash_wear import lash_shown, lash_wears
 from tests.builders import day
 from tests.rules.test_lash_past import a_sheet, found, left, past_of
 
@@ -59,3 +61,15 @@ def test_nothing_wears_without_limits_without_a_range_of_its_side_or_without_a_v
 
 def test_a_point_the_engine_is_no_longer_said_to_have_does_not_wear() -> None:
     assert wears(a_sheet("2025-01-01", found("0.45", "9E")), point="9E") == []
+
+
+def test_sheets_of_an_engine_show_its_lash_where_their_hours_are_known_and_adjusters_leave_a_gap() -> None:
+    engine, points = MeasuredEngine("P-01", cylinders=1), lash_points(ValveTrain(1, 2))
+    lash = MeasuredSheet(1, "lash", day("2025-01-01"), (found("0.45"),), engine_hours=Decimal(100), condition="cold")
+    unknown = replace(lash, entry=2, on=day("2025-06-01"), engine_hours=None)
+    oil = MeasuredSheet(3, "oil", day("2025-06-01"), ())
+    on = day("2026-05-01")
+    (wear,) = lash_shown((lash, unknown, oil), engine, points, (MM,), on)
+    assert [(point.x, point.y) for point in wear.segments[0].points] == [(Decimal(100), Decimal("0.45"))]
+    hydraulic = replace(engine, adjuster="hydraulic")
+    assert [*lash_shown((lash,), hydraulic, points, (MM,), on), *lash_shown((oil,), engine, points, (MM,), on)] == []

@@ -17,11 +17,13 @@ from fleetcare.domain.measures import QUANTITIES, can_convert, exactly
 from fleetcare.domain.rule_book import (
     AgainstSheet,
     Approach,
+    Asks,
     Basis,
     Best,
     Bounds,
     By,
     Change,
+    Condition,
     Limits,
     Method,
     Pool,
@@ -35,10 +37,12 @@ from fleetcare.rules.judging.approach import is_far
 from fleetcare.rules.judging.facts import MeasuredFacts
 from fleetcare.rules.judging.pools import MOST_OF_FAMILY, newest_first
 from fleetcare.rules.judging.pools import Pool as Samples
-from fleetcare.rules.judging.values import HELD, HOURS_ON_OIL, LEAK, TOP_UP, WET_GAIN, alike, fresh_of
+from fleetcare.rules.judging.values import HELD, HOURS_ON_OIL, LEAK, TOP_UP, WET_GAIN, alike
 from fleetcare.rules.judging.words import says
 
 _ASIDE = (Phase.WET, Phase.NEW)
+_WORKED_OUT = frozenset({LEAK, WET_GAIN})
+_SEEN = ("seen", "")  # under which a sheet remembers what was looked at
 _CLEARLY = 1e-6  # of the limit: far more than floats are off, far less than anybody measures
 
 
@@ -54,21 +58,34 @@ class _Seen(NamedTuple):
 
 @dataclass(frozen=True, slots=True)
 class Screened:
-    """A rule with the figures between which nothing is flagged, exclusive."""
+    """A rule with the figures between which nothing is flagged, exclusive.
+
+    `percent` is the lowest percentile beyond which it flags a figure in its own unit, None for any other rule;
+    `is_aside` says that it judges wet values or new oil, which are not glanced at.
+    """
 
     rule: Rule
     above: float
     below: float
+    percent: float | None
+    is_aside: bool
 
     def is_clear(self, facts: MeasuredFacts) -> bool:
         """Whether the rule certainly flags nothing; False where only a closer look can tell."""
         rule, shape = self.rule, self.rule.shape
         if (rule.words or rule.unless) and not says(facts.sheet, rule):
             return True
-        if _is_worked_out(facts.sheet, rule.quantity) or not {*rule.phases}.isdisjoint(_ASIDE):
+        if self.is_aside or _is_worked_out(facts.sheet, rule.quantity):
             return False
         seen = [one for one in _look(facts.sheet, rule.quantity) if not rule.points or one.point in rule.points]
         match shape:
+            case Statistical(Pool.OWN):
+                own = facts.pools.own.get(rule.quantity, ())
+                return len(own) < shape.least_samples or self._is_usual(seen, facts.pools.own, len(own))
+            case Statistical():
+                family = facts.pools.family
+                is_usual = self._is_usual(seen, family, MOST_OF_FAMILY)
+                return is_usual or len(family.get(rule.quantity, ())) < shape.least_samples
             case Bounds(Basis.AS_MEASURED | Basis.NAMEPLATE):
                 return self._all_within(_in_unit(seen, rule.unit))
             case Bounds(Basis.LESS_NEW):
@@ -77,50 +94,62 @@ class Screened:
                 return not any(one.is_out for one in facts.lash.get(facts.sheet.entry, ()))
             case AgainstSheet():
                 return len(seen) < 2 or self._all_within(_compared(seen, shape, rule))
-            case Change(Since.BEST_BEFORE):
-                return not facts.earlier
-            case Change(Since.BEFORE):
+            case Change(Since.BEFORE | Since.BEST_BEFORE):
                 return not facts.earlier or self._all_within(_changed(seen, shape, facts, rule))
             case Change(Since.NEW):
-                return fresh_of(facts.sheet, facts.fresh, rule.quantity) is None
+                return not _may_have_new(facts, rule.quantity)
             case Rate(Since.NEW):
                 return not _has_hours(facts.sheet, shape)
             case Approach():
                 return is_far(shape, facts)
-            case Statistical():
-                pool = facts.pools.own if shape.pool is Pool.OWN else facts.pools.family
-                if _is_usual(_in_unit(seen, rule.unit), pool, shape, rule):
-                    return True
-                return len(pool.get(rule.quantity, ())) < shape.least_samples
         return False
 
     def _all_within(self, figures: Sequence[tuple[float, float]] | None) -> bool:
         return figures is not None and all(high > self.above and low < self.below for low, high in figures)
 
+    def _is_usual(self, seen: Sequence[_Seen], pool: Samples, most: int) -> bool:
+        """Whether more samples than can lie above the percentile reach every figure, so that none is beyond it.
 
-def _is_usual(figures: Sequence[tuple[float, float]] | None, pool: Samples, shape: Statistical, rule: Rule) -> bool:
-    """Whether more samples than can lie above any percentile of a rule reach every figure, so that none is beyond it."""
-    percents = _limits(rule.high)
-    if shape.method is not Method.PERCENTILE or rule.low or not percents or not figures:
+        `most` is how many samples there may be: of fewer no more lie above.
+        """
+        figures = _in_unit(seen, self.rule.unit) if self.percent is not None else None
+        if self.percent is None or not figures:
+            return False
+        enough = most - int(self.percent / 100 * (most + 1) - _CLEARLY) + 2
+        return all(_reach(newest_first(pool, self.rule.quantity), Decimal(high), enough) for _, high in figures)
+
+
+def is_outside(condition: Condition, sheets: Sequence[MeasuredSheet]) -> bool:
+    """Whether no value on some sheets can lie within what a condition of a pattern asks for, and one has to."""
+    if condition.asks is not Asks.WITHIN or condition.over or condition.less_new:
         return False
-    if rule.unit != QUANTITIES[rule.quantity].unit:
+    if not _WORKED_OUT.isdisjoint(condition.quantities):
         return False
-    # As many as of the largest pool there is: of a smaller one no more lie above.
-    most = MOST_OF_FAMILY if shape.pool is Pool.FAMILY else len(pool.get(rule.quantity, ()))
-    enough = most - int(min(percents) / 100 * (most + 1) - _CLEARLY) + 2
-    return all(_reach(newest_first(pool, rule.quantity), high, enough) for _, high in figures)
+    seen = [one for sheet in sheets for quantity in condition.quantities for one in _look(sheet, quantity)]
+    figures = _in_unit(seen, condition.unit)
+    low = float(condition.low.value) if condition.low else float("-inf")
+    high = float(condition.high.value) if condition.high else float("inf")
+    least, most = low - _clear_of(low), high + _clear_of(high)
+    return bool(figures) and all(one < least or other > most for one, other in figures or ())
 
 
-def _reach(samples: Iterable[Decimal], figure: float, enough: int) -> bool:
+def _reach(samples: Iterable[Decimal], figure: Decimal, enough: int) -> bool:
     """Whether enough samples reach a figure."""
-    return len(list(islice((True for sample in samples if sample >= figure), enough))) == enough
+    return next(islice(filter(figure.__le__, samples), enough - 1, None), None) is not None
 
 
 def screened(rule: Rule) -> Screened:
     """Give a rule ready to be glanced at."""
     low, high = _limits(rule.low), _limits(rule.high)
     most, least = max(low, default=float("-inf")), min(high, default=float("inf"))
-    return Screened(rule, most + _clear_of(most), least - _clear_of(least))
+    is_aside = not {*rule.phases}.isdisjoint(_ASIDE)
+    return Screened(rule, most + _clear_of(most), least - _clear_of(least), _percent_of(rule), is_aside)
+
+
+def _percent_of(rule: Rule) -> float | None:
+    shape, percents = rule.shape, _limits(rule.high)
+    is_percentile = isinstance(shape, Statistical) and shape.method is Method.PERCENTILE and not rule.low
+    return min(percents) if is_percentile and percents and rule.unit == QUANTITIES[rule.quantity].unit else None
 
 
 def _is_worked_out(sheet: MeasuredSheet, quantity: str) -> bool:
@@ -138,17 +167,22 @@ def _clear_of(limit: float) -> float:
 
 def _look(sheet: MeasuredSheet, quantity: str) -> list[_Seen]:
     """Give the values of a quantity that rules may judge; a point that was entered twice stands there twice."""
-    key = ("seen", "")
-    if key not in sheet.memo:
+    if _SEEN not in sheet.memo:
         seen: dict[str, list[_Seen]] = {}
         for value in sheet.values:
             if value.phase not in _ASIDE:
                 low, high = value.ends
                 one = _Seen(value.point, alike(value.phase), float(low), float(high), value.unit)
                 seen.setdefault(value.quantity, []).append(one)
-        sheet.memo[key] = seen
-    found: list[_Seen] = sheet.memo[key].get(quantity, [])
+        sheet.memo[_SEEN] = seen
+    found: list[_Seen] = sheet.memo[_SEEN].get(quantity, [])
     return found
+
+
+def _may_have_new(facts: MeasuredFacts, quantity: str) -> bool:
+    """Whether anything says what new oil has of a quantity."""
+    own = (value for value in facts.sheet.values if value.phase is Phase.NEW)
+    return any(value.quantity == quantity for value in (*own, *facts.fresh))
 
 
 def _in_unit(seen: Sequence[_Seen], unit: str) -> list[tuple[float, float]] | None:
@@ -190,17 +224,24 @@ def _compared(seen: Sequence[_Seen], shape: AgainstSheet, rule: Rule) -> list[tu
 def _changed(
     seen: Sequence[_Seen], shape: Change, facts: MeasuredFacts, rule: Rule
 ) -> list[tuple[float, float]] | None:
-    """Compare plain figures with the same points of the sheet before; None where that is not all there is to it."""
-    before = facts.earlier[-1]
-    if before.gauge != facts.sheet.gauge:
+    """Compare plain figures with the same points of the sheet before, or with the highest of all points there.
+
+    None where that is not all there is to it.
+    """
+    before, known = facts.earlier[-1], _look(facts.earlier[-1], rule.quantity)
+    then = {(one.point, one.phase): one for one in known}
+    if before.gauge != facts.sheet.gauge or not known or len(then) < len(known):
         return None
-    then = {(one.point, one.phase): one for one in _look(before, rule.quantity)}
+    if any(one.low != one.high or one.unit != known[0].unit for one in (*seen, *known)):
+        return None
     pairs = []
     for one in seen:
         was = then.get((one.point, one.phase))
-        if was is None or was.unit != one.unit or one.low != one.high or was.low != was.high or was.low <= 0:
+        if was is None or was.low <= 0:
             return None
-        pairs.append((one.low, was.low))
+        is_best = shape.since is Since.BEST_BEFORE
+        best = max(other.low for other in known if other.phase is one.phase) if is_best else was.low
+        pairs.append((one.low, best))
     if shape.by is By.DIFFERENCE and any(one.unit != rule.unit for one in seen):
         return None
     return _against(pairs, shape.by)

@@ -8,6 +8,7 @@ import re
 from collections.abc import Iterable, Sequence
 from dataclasses import dataclass, replace
 from fractions import Fraction
+from functools import lru_cache
 
 from fleetcare.domain.findings import Evidence, Step
 from fleetcare.domain.measured import MeasuredSheet
@@ -52,6 +53,7 @@ def cylinder_of(point: str) -> int | None:
     return int(found.group()) if found else None
 
 
+@lru_cache(maxsize=1024)
 def by_number(point: str) -> tuple[tuple[int, str], ...]:
     """Order points as the engine stands: 2 before 10, 3E before 3I."""
     return tuple((int(part), "") if part.isdigit() else (-1, part) for part in _NUMBERS.findall(point))
@@ -79,12 +81,12 @@ def values_of(sheet: MeasuredSheet, quantity: str) -> tuple[Measured, ...]:
 
 
 def _worked_out(sheet: MeasuredSheet, quantity: str) -> tuple[Measured, ...]:
+    if quantity == WET_GAIN:
+        return _in_order(_wet_gains(sheet))
     entered = _entered(sheet, quantity)
     if quantity == LEAK:
         return _in_order([*entered, *_leaks(sheet, {one.point for one in entered})])
-    if quantity == WET_GAIN:
-        return _in_order(_wet_gains(sheet))
-    return _in_order(entered)
+    return _in_order(entered) if entered else ()
 
 
 def contradictions(sheet: MeasuredSheet, quantity: str, phases: Sequence[Phase]) -> tuple[str, ...]:
@@ -157,7 +159,7 @@ def _grouped(sheet: MeasuredSheet, quantity: str) -> dict[tuple[str, Phase], lis
 
 def _by_quantity(sheet: MeasuredSheet) -> dict[str, dict[tuple[str, Phase], list[SheetValue]]]:
     found: dict[str, dict[tuple[str, Phase], list[SheetValue]]] = {}
-    for value in sorted(sheet.values, key=str):
+    for value in sheet.values:
         values = found.setdefault(value.quantity, {}).setdefault((value.point, value.phase), [])
         if value not in values:
             values.append(value)
@@ -165,7 +167,8 @@ def _by_quantity(sheet: MeasuredSheet) -> dict[str, dict[tuple[str, Phase], list
 
 
 def _entered(sheet: MeasuredSheet, quantity: str) -> list[Measured]:
-    return [read(sheet, values[0]) for values in _grouped(sheet, quantity).values() if len(values) == 1]
+    grouped = _grouped(sheet, quantity)
+    return [read(sheet, grouped[place][0]) for place in sorted(grouped) if len(grouped[place]) == 1]
 
 
 def _leaks(sheet: MeasuredSheet, known_points: set[str]) -> list[Measured]:

@@ -17,6 +17,8 @@ def words_of(sheet: MeasuredSheet, quantity: str, point: str = "") -> frozenset[
 
 def says(sheet: MeasuredSheet, rule: Rule) -> bool:
     """Whether a sheet says all a rule asks to be said, and nothing it must not."""
+    if not rule.words and not rule.unless:
+        return True
     return (
         not unsaid(sheet, rule)
         and all(
