@@ -85,14 +85,15 @@ def test_the_working_has_the_slope_with_its_error_the_values_and_the_earliest_ho
     signal = the_signal(gauged((0, "0.47"), (1000, "0.46"), (2000, "0.43"), (3000, "0.41"), (3200, "0.41")))
     assert [one.label for one in signal.steps] == [
         "gap",
+        "by the slope now",
         "limit",
         "slope",
         "its standard error",
         "values",
         "at the earliest in",
     ]
-    assert [one.unit for one in signal.steps] == ["mm", "mm", "mm per 1000 h", "mm per 1000 h", "", "h"]
-    assert (signal.steps[0].value, signal.steps[1].value, signal.steps[4].value) == (
+    assert [one.unit for one in signal.steps] == ["mm", "mm", "mm", "mm per 1000 h", "mm per 1000 h", "", "h"]
+    assert (signal.steps[0].value, signal.steps[2].value, signal.steps[5].value) == (
         Decimal("0.41"),
         Decimal("0.4"),
         Decimal(5),
@@ -103,6 +104,15 @@ def test_the_working_has_the_slope_with_its_error_the_values_and_the_earliest_ho
     assert say_signal(signal).startswith("likely hours of valve lash to the low end of its check range at 1E ")
     # Sxy -149.2, Sxx 7,312,000 about 1840 h and 0.436 mm.
     assert "slope -0.0204 mm per 1000 h" in say_working(signal, "1E")
+
+
+def test_the_hours_told_follow_from_where_the_slope_is_now_its_limit_and_itself() -> None:
+    signal = the_signal(gauged((0, "0.47"), (1000, "0.46"), (2000, "0.43"), (3000, "0.41"), (3200, "0.41")))
+    now, limit, slope = (one.value for one in signal.steps[1:4])
+    # 1360 h past the mean, the line is at 0.436 - 1360 x 149.2 / 7,312,000 = 0.40825 mm.
+    assert f"{now:.5f}" == "0.40825"
+    assert signal.measured is not None
+    assert abs((limit - now) / slope * 1000 - signal.measured) <= Decimal("0.1")
 
 
 def test_in_inches_the_working_is_in_inches_and_the_hours_are_the_same() -> None:
@@ -119,7 +129,8 @@ def test_in_inches_the_working_is_in_inches_and_the_hours_are_the_same() -> None
     )
     (signal,) = judge([replace(CLOSING, low=Limits(beyond("501")))], as_inches)
     assert signal.measured == 500
-    assert [(one.value, one.unit) for one in signal.steps[:3]] == [
+    assert [(one.value, one.unit) for one in signal.steps[:4]] == [
+        (Decimal("0.0164"), "in"),
         (Decimal("0.0164"), "in"),
         (Decimal("0.016"), "in"),
         (Decimal("-0.0008"), "in per 1000 h"),

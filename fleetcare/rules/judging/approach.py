@@ -103,12 +103,13 @@ def _moved(told: Projection) -> Decimal:
 
 
 def _steps(told: Projection, segments: Sequence[Segment], at: Decimal, unit: str) -> tuple[Step, ...]:
-    """Give the numbers of a projection in the unit of the limits."""
+    """Give the numbers of a projection in the unit of the limits: the hours are from where its line is now, not from the gap."""
     assert told.trend is not None
     a_unit = MM_PER[unit]
     last = max(segments[-1].points, key=lambda point: point.x)
     steps = (
         Step("gap", last.y / a_unit, unit),
+        Step("by the slope now", told.trend.value_at(at) / a_unit, unit),
         Step("limit", told.limit / a_unit, unit),
         Step("slope", 1000 * told.trend.slope / a_unit, f"{unit} per 1000 h"),
         Step("its standard error", 1000 * told.trend.slope_error / a_unit, f"{unit} per 1000 h"),
