@@ -155,7 +155,7 @@ def run_sheets(draw: st.DrawFn, engine: MeasuredEngine, sick: str) -> MeasuredSh
         load = Decimal(draw(one_of(10, 28, 29, 30, 50, 74, 75, 100)))
         unit, scale = draw(one_of(("%", 1), ("kW", 5), ("hp", 6), ("PS", 7)))
         values.append(figure("load", load * scale, unit, point))
-    purpose = draw(one_of("test", "test", "supplemental", "36-month", "other", "emergency", ""))
+    purpose = draw(one_of("test", "test", "test", "supplemental", "36-month", "test", "other", "emergency", ""))
     held = draw(one_of("", "", "yes", "no"))
     words = [SheetWord("purpose", purpose), SheetWord("exhaust_temperature_held", held)]
     return sheet_of("run", [*values, *draw(readings(engine))], *(word for word in words if word.text))
@@ -195,7 +195,7 @@ def lash_sheets(draw: st.DrawFn, engine: MeasuredEngine, sick: str) -> MeasuredS
 
 
 OF_CYLINDERS = (compression_sheets, lash_sheets, leak_sheets)
-KINDS = (oil_sheets, compression_sheets, leak_sheets, run_sheets, spot_sheets, lash_sheets)
+KINDS = (run_sheets, oil_sheets, spot_sheets, compression_sheets, run_sheets, leak_sheets, lash_sheets)
 
 
 @st.composite
