@@ -64,6 +64,11 @@ UNITS: Mapping[str, MeasureUnit] = {
 
 _SPELLED = {
     "mm²/s": "mm2/s",
+    "kg/cm2": "kgf/cm2",  # as gauges print it
+    "kg/cm²": "kgf/cm2",
+    "kgf/cm²": "kgf/cm2",
+    "psig": "psi",
+    "barg": "bar",
     "c": "°C",
     "f": "°F",
     "degc": "°C",

@@ -93,3 +93,18 @@ def test_a_figure_in_its_base_unit_is_the_same_whatever_unit_it_came_in() -> Non
     assert in_base(Decimal("0.010"), "in") == in_base(Decimal("0.254"), "mm")
     assert in_base(Decimal(212), "°F") == in_base(Decimal(100), "°C") == 100
     assert in_base(Decimal("4.9"), "") == Fraction("4.9")
+
+
+@pytest.mark.parametrize(
+    ("typed", "unit"),
+    [
+        ("kg/cm2", "kgf/cm2"),
+        ("kg/cm²", "kgf/cm2"),
+        ("KGF/CM²", "kgf/cm2"),
+        ("psig", "psi"),
+        ("barg", "bar"),
+        ("PSI", "psi"),
+    ],
+)
+def test_a_pressure_may_be_written_as_its_gauge_prints_it(typed: str, unit: str) -> None:
+    assert read_unit("pressure", typed) == unit
