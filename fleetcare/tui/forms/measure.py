@@ -34,7 +34,16 @@ def _storing(kind: str) -> "Callable[[Session, Subject, MeasureDraft, date, Said
 
 
 MEASURES = tuple(
-    Form(kind, f"{title} of {{tag}}", (ON, AT, BY, NOTE), _draft, _storing(kind), answers=FIGURE_ANSWERS, is_entry=True)
+    Form(
+        kind,
+        f"{title} of {{tag}}",
+        (ON, AT, BY, NOTE),
+        _draft,
+        _storing(kind),
+        above=lambda facts: ("First", ("when it was taken, at what figure and by whom; Ctrl S goes on to the sheet",)),
+        answers=FIGURE_ANSWERS,
+        is_entry=True,
+    )
     for kind, title in (
         (LASH, "Valve lash"),
         (COMPRESSION, "Compression"),
