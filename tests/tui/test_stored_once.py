@@ -90,6 +90,8 @@ async def test_a_sheet_and_the_work_it_closes_are_known_again_both(opened: Opene
         async with opened(size=SMALL, context=bench) as pilot:
             await sheet_of(pilot, SINGLE)
             await enter_all(pilot, "25", "", "45", "")
+            while len(drafts(bench)) < 2:  # a sheet is kept a moment after a key
+                await pilot.pause()
             await press(pilot, "ctrl+s")
             assert "Done: Valve lash." in said(pilot)
     assert len(drafts(bench)) == 2
