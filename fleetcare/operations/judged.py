@@ -18,7 +18,7 @@ from fleetcare.domain.wear import MeasuredWears
 from fleetcare.errors import Refused
 from fleetcare.operations.entries import first_entries, first_of
 from fleetcare.operations.families import Families
-from fleetcare.operations.judged_rows import Kept, keep, keep_later, kept_rows, newest_day, sheet_owners
+from fleetcare.operations.judged_rows import FAR_BEHIND, Kept, keep, keep_later, kept_rows, newest_day, sheet_owners
 from fleetcare.operations.judged_touched import touched
 from fleetcare.operations.lives_json import kept_under, lives_of, lives_text
 from fleetcare.operations.measured import EngineSheets, load_engine_sheets
@@ -141,8 +141,7 @@ def _current(
     is_touched = touched(connection, min((row.seq for row in rows.values()), default=head))
     found = _Found({item: row for item, row in rows.items() if not is_touched(item, row.seq)})
     stale = [item for item in ids if item not in found.rows]
-    if any(row.seq < head for row in found.rows.values()):
-        found.made += [row.at(head) for row in found.rows.values() if row.seq < head]
+    found.made += [row.at(head) for row in found.rows.values() if head - row.seq > FAR_BEHIND]
     firsts = first_entries(connection) if stale else {}
     families = Families(connection, date.max)
     for some in _batches(stale, progress):

@@ -12,6 +12,9 @@ if TYPE_CHECKING:
 KEEP = "derived"
 """Under which a connection holds what is to be written once it is closed; see `Context.read`."""
 
+FAR_BEHIND = 200
+"""Entries of the ledger that are looked through each time a row is read, rather than the row be written anew for them."""
+
 
 class Kept(NamedTuple):
     """What the rules made of an engine: as of which entry of the ledger, by which rules, from which facts.

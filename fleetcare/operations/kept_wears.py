@@ -9,7 +9,7 @@ from typing import TYPE_CHECKING
 
 from fleetcare.db.chain import last_entry
 from fleetcare.domain.wear import MeasuredWears
-from fleetcare.operations.judged_rows import newest_day
+from fleetcare.operations.judged_rows import FAR_BEHIND, newest_day
 from fleetcare.operations.judged_touched import touched
 from fleetcare.operations.rows import fetch
 from fleetcare.operations.shop_book import book_digest, shop_texts
@@ -17,9 +17,6 @@ from fleetcare.operations.wears_json import wears_of
 
 if TYPE_CHECKING:
     from sqlalchemy import Connection
-
-_FAR_BEHIND = 200
-"""Entries of the ledger that are looked through each time, rather than once and that be kept."""
 
 
 def kept_wears(connection: "Connection", on: date, ids: Sequence[int]) -> dict[int, MeasuredWears]:
@@ -50,6 +47,6 @@ def _that_hold(connection: "Connection", ids: Sequence[int], book: str) -> dict[
     )
     kept = {item: (seq, *wears_of(text)) for item, seq, text in rows}
     head = last_entry(connection).seq
-    near = {item: row for item, row in kept.items() if row[2] == book and head - row[0] <= _FAR_BEHIND}
+    near = {item: row for item, row in kept.items() if row[2] == book and head - row[0] <= FAR_BEHIND}
     is_touched = touched(connection, min((seq for seq, _, _ in near.values()), default=head))
     return {item: wears for item, (seq, wears, _) in near.items() if not is_touched(item, seq)}

@@ -1,5 +1,6 @@
 """The demo fleet: the committed file is what the command builds, and it stands up on any day it is built for."""
 
+import shutil
 import sqlite3
 from contextlib import closing
 from datetime import date
@@ -58,6 +59,25 @@ def test_the_committed_demo_fleet_is_row_for_row_what_the_command_builds(fleetca
     assert committed.keys() == rebuilt.keys()
     for table, rows in rebuilt.items():
         assert committed[table] == rows, f"{table} differs; remove the file and build it again: {COMMAND}"
+
+
+@pytest.mark.parametrize("day", [(), ("--as-of", "2026-05-01"), ("--as-of", "2026-04-01")])
+def test_whoever_only_reads_the_committed_demo_fleet_leaves_every_byte_of_it(
+    fleetcare: Runner, tmp_path: Path, day: tuple[str, ...]
+) -> None:
+    """All of it is judged by the rules of this program, and kept: nothing is left to be worked out and written."""
+    path = Path(shutil.copy(COMMITTED, tmp_path / "demo.db"))
+    before = path.read_bytes()
+    for words in (
+        ("due",),
+        ("due", "--format", "csv"),
+        ("findings",),
+        ("rules",),
+        ("show", "PS-01"),
+        ("engine", "list"),
+    ):
+        assert fleetcare("--db", str(path), *day, *words).status == 0
+        assert path.read_bytes() == before, f"{words} wrote into it; remove the file and build it again: {COMMAND}"
 
 
 def test_the_committed_demo_fleet_is_sound_and_at_the_newest_revision() -> None:

@@ -111,11 +111,18 @@ def assert_holds(ctx: Context, on: date = TODAY) -> None:
 
 
 def stale(ctx: Context) -> list[int]:
-    """The engines whose rows do not hold as of the newest entry of the ledger."""
+    """The engines whose rows are missing, or that the ledger touched since."""
     with ctx.read() as connection:
-        head = fetch(connection, "select max(seq) from ledger")[0][0]
-        rows = kept_rows(connection, sheet_owners(connection))
-        return [item for item in sheet_owners(connection) if item not in rows or rows[item].seq < head]
+        owners = sheet_owners(connection)
+        rows = kept_rows(connection, owners)
+        is_touched = judged_touched.touched(connection, 0)
+        return [item for item in owners if item not in rows or is_touched(item, rows[item].seq)]
+
+
+def kept_as_of(ctx: Context) -> set[int]:
+    """The entries of the ledger as of which rows are kept."""
+    with ctx.read() as connection:
+        return {row.seq for row in kept_rows(connection, sheet_owners(connection)).values()}
 
 
 @contextmanager
@@ -177,6 +184,20 @@ def test_a_write_that_leaves_the_facts_as_they_were_judges_nobody(
         finding_lives_on(connection, TODAY)
     assert done == []
     assert stale(yard) == []
+
+
+def test_rows_that_hold_are_not_written_anew_for_each_entry_and_are_for_many(
+    yard: Context, monkeypatch: pytest.MonkeyPatch
+) -> None:
+    assert_holds(yard)
+    before = kept_as_of(yard)
+    set_up(yard.path, "log P-04 --repair Belt --on 2026-04-20")
+    assert_holds(yard)
+    assert kept_as_of(yard) == before
+    monkeypatch.setattr(judged, "FAR_BEHIND", 0)
+    assert_holds(yard)
+    assert len(kept_as_of(yard)) == 1
+    assert min(kept_as_of(yard)) > max(before)
 
 
 def test_work_and_readings_after_one_taken_since_the_newest_sheet_touch_nobody_and_an_earlier_one_does(
