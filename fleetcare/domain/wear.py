@@ -16,7 +16,7 @@ class Wear:
     `work` is the kind of sheet it stands on, and so of the tasks that will measure it again. `segments` hold a value at
     least, in order of time, `limits` a limit at least; `measured_on` is the day of the newest value, `received_on` the day
     it was known, where a laboratory took until later. With `is_topped_up_by_log` only the log says what was topped up on
-    the oil of some value.
+    the oil of some value. Without `may_pull` it pulls no check forward, however long and lately it was watched.
     """
 
     work: str
@@ -28,6 +28,7 @@ class Wear:
     measured_on: date
     received_on: date | None = None
     is_topped_up_by_log: bool = False
+    may_pull: bool = True
 
     @property
     def known_on(self) -> date:

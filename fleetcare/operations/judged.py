@@ -29,6 +29,7 @@ from fleetcare.rules.judge_history import Judging, in_order
 from fleetcare.rules.judging.applies import rules_for
 from fleetcare.rules.lash_wear import lash_shown
 from fleetcare.rules.measured_wear import measured_wears
+from fleetcare.rules.next_checks import with_its_chance
 
 if TYPE_CHECKING:
     from sqlalchemy import Connection
@@ -178,11 +179,11 @@ def _judging_by(texts: tuple[ShopText, ...]) -> Judging:
 
 def _wears(found: EngineSheets, book: "RuleBook | None", on: date) -> MeasuredWears:
     """Give what sheets up to a day show; without rules that of their lash alone."""
-    lash = tuple(lash_shown(found.sheets, found.engine, found.points, found.specs, on))
+    lash = lash_shown(found.sheets, found.engine, found.points, found.specs, on)
     if book is None:
-        return MeasuredWears(lash)
+        return MeasuredWears(tuple(map(with_its_chance, lash)))
     told = measured_wears(found.sheets, found.engine, rules_for(book, found.engine), found.background)
-    return MeasuredWears((*lash, *told.pulling), told.sound_oil)
+    return MeasuredWears(tuple(map(with_its_chance, (*lash, *told.pulling))), told.sound_oil)
 
 
 def _facts_digest(found: EngineSheets, firsts: dict[int, int]) -> str:

@@ -9,7 +9,7 @@ from fleetcare.domain.quantities import Kind
 from fleetcare.domain.trends import End, Point, Segment
 from fleetcare.domain.wear import MeasuredWears, Wear
 
-WEARS_FORM = "3"
+WEARS_FORM = "4"
 """Another one when what is written, or how it is worked out, becomes another."""
 
 
@@ -39,12 +39,12 @@ def _wear(wear: Wear) -> list[Any]:
     received = wear.received_on.isoformat() if wear.received_on else None
     return [
         *(wear.work, wear.subject, wear.kind.value, wear.unit, segments, limits),
-        *(wear.measured_on.isoformat(), received, wear.is_topped_up_by_log),
+        *(wear.measured_on.isoformat(), received, wear.is_topped_up_by_log, wear.may_pull),
     ]
 
 
 def _read_wear(cells: list[Any]) -> Wear:
-    work, subject, kind, unit, segments, limits, measured, received, by_log = cells
+    work, subject, kind, unit, segments, limits, measured, received, by_log, may_pull = cells
     return Wear(
         work,
         subject,
@@ -61,4 +61,5 @@ def _read_wear(cells: list[Any]) -> Wear:
         date.fromisoformat(measured),
         date.fromisoformat(received) if received else None,
         by_log,
+        may_pull,
     )

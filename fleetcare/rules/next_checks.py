@@ -7,6 +7,7 @@ for the due rules to see.
 """
 
 from collections.abc import Iterable
+from dataclasses import replace
 from decimal import ROUND_FLOOR, Decimal
 from typing import NamedTuple
 
@@ -22,6 +23,15 @@ class Foreseen(NamedTuple):
 
     wear: Wear
     projection: Projection
+
+
+def with_its_chance(wear: Wear) -> Wear:
+    """Say of a subject whether it may pull a check at all: its trend comes to a limit that is not too far ahead.
+
+    When it was watched and for how long is left to whoever asks about a day, and can only speak against it.
+    """
+    told = project_on(wear.segments, wear.limits, now=wear.last.x, interval=Decimal(0))
+    return replace(wear, may_pull=told.early is not None)
 
 
 def foresee(wears: Iterable[Wear], now: Decimal, interval: Decimal) -> list[Foreseen]:

@@ -12,6 +12,7 @@ from fleetcare.domain.trends import End, Point, Segment
 from fleetcare.domain.wear import Wear
 from fleetcare.rules.due.due_list import item_lines
 from fleetcare.rules.due.facts import ItemFacts
+from fleetcare.rules.next_checks import with_its_chance
 from tests.property.strategies import item_facts
 
 
@@ -93,3 +94,11 @@ def test_the_order_of_what_was_measured_never_matters(known: ItemFacts) -> None:
     turned = replace(known, wears=known.wears[::-1])
     points = [[trigger.point for trigger in line.triggers] for _, line in both(known)]
     assert [[trigger.point for trigger in line.triggers] for _, line in both(turned)] == points
+
+
+@given(measured_items())
+def test_what_is_said_beforehand_not_to_pull_never_would_have(known: ItemFacts) -> None:
+    """Lines are the same, whether it was said or each projection is worked out."""
+    said = replace(known, wears=tuple(map(with_its_chance, known.wears)))
+    points = [[trigger.point for trigger in line.triggers] for _, line in both(known)]
+    assert [[trigger.point for trigger in line.triggers] for _, line in both(said)] == points

@@ -1,12 +1,13 @@
 """The next check a wearing measure asks for, and which of two limits it is projected to."""
 
+from dataclasses import replace
 from decimal import Decimal
 
 import pytest
 
 from fleetcare.domain.trends import End, Obstacle
 from fleetcare.domain.wear import Pull, Wear
-from fleetcare.rules.next_checks import foresee, next_check
+from fleetcare.rules.next_checks import foresee, next_check, with_its_chance
 from fleetcare.rules.projection import project_on
 from tests.rules.wearing import a_wear, segments
 
@@ -48,6 +49,24 @@ def test_an_early_end_ahead_of_the_last_value_is_not_reached() -> None:
 def test_what_is_not_projected_pulls_nothing() -> None:
     assert pull(a_wear(("0 500 1000 1500", ".40 .39 .41 .395", None))) is None
     assert pull() is None
+
+
+@pytest.mark.parametrize(
+    ("told", "may_pull"),
+    [
+        ((), True),
+        (("0 500 1000 1500", ".40 .39 .41 .395", None), False),
+        (("0 500 1000 1500", ".44 .43 .42 .41", None), False),
+        (("0 10 20 30", ".30 .29 .28 .27", None), True),
+        (("0 500", ".40 .30", None), False),
+    ],
+    ids=["the example", "no slope", "too far ahead", "watched for 30 h", "two values"],
+)
+def test_whether_a_subject_may_pull_is_told_by_its_values_alone(
+    told: tuple[str, str, str | None] | tuple[()], may_pull: bool
+) -> None:
+    wear = a_wear(*([told] if told else []))
+    assert with_its_chance(wear) == replace(wear, may_pull=may_pull)
 
 
 def ahead(values: str, **limits: str) -> End:

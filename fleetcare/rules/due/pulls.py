@@ -35,7 +35,7 @@ def pull_of(
     deferral: Deferral | None,
 ) -> "Pull | None":
     """Give the earliest pull on the trigger of a kind; `deferral` is the one in force on that trigger."""
-    wears = _wears_of(facts, version, kind, last_done_on)
+    wears = [wear for wear in _wears_of(facts, version, kind, last_done_on) if wear.may_pull]
     if deferral is not None:
         wears = [wear for wear in wears if wear.known_on > deferral.on]
     if not wears or point is None or now is None:
