@@ -4,7 +4,7 @@ Every shape (domain/rule_shapes.py) works out one signed figure in the unit of t
 high, are held against that figure. There is no expression language: what the shapes cannot say is a new shape.
 """
 
-from collections.abc import Iterable, Mapping
+from collections.abc import Mapping
 from dataclasses import dataclass, field
 from decimal import Decimal
 from enum import StrEnum
@@ -24,20 +24,10 @@ from fleetcare.domain.rule_shapes import Since as Since
 from fleetcare.domain.rule_shapes import SingleShape as SingleShape
 from fleetcare.domain.rule_shapes import Statistical as Statistical
 from fleetcare.domain.rule_shapes import ValueShape as ValueShape
+from fleetcare.domain.severity import Severity as Severity
+from fleetcare.domain.severity import worst as worst
 from fleetcare.domain.sheets import Phase
 from fleetcare.domain.trends import End as End
-
-
-class Severity(StrEnum):
-    """How much a value calls for (ISO 13372): alert, look closer; alarm, act."""
-
-    ALERT = "alert"
-    ALARM = "alarm"
-
-
-def worst(severities: Iterable[Severity]) -> Severity:
-    """Give the graver of some severities, at least one."""
-    return Severity.ALARM if Severity.ALARM in set(severities) else Severity.ALERT
 
 
 @dataclass(frozen=True, slots=True)

@@ -3,7 +3,7 @@
 from datetime import date
 from typing import TYPE_CHECKING
 
-from fleetcare.domain.rule_book import Severity
+from fleetcare.domain.severity import Severity
 from fleetcare.operations.entries import first_entries, first_of
 from fleetcare.operations.rows import day, fetch, known_day
 from fleetcare.rules.finding_life import Answer, AnswerKind, At

@@ -38,7 +38,7 @@ def open_findings(connection: "Connection", on: date, progress: "Progress | None
     """
     if not is_measured(connection):
         return OpenFindings(0, 0)
-    from fleetcare.domain.rule_book import Severity
+    from fleetcare.domain.severity import Severity
     from fleetcare.operations.finding_answers import load_answers
     from fleetcare.rules.finding_life import FindingState, live
 

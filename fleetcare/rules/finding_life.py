@@ -13,11 +13,11 @@ from datetime import date
 from enum import StrEnum
 from typing import TYPE_CHECKING
 
-from fleetcare.domain.findings import Finding
-from fleetcare.domain.rule_book import Severity
+from fleetcare.domain.severity import Severity
 from fleetcare.rules.finding_row import FindingRow
 
 if TYPE_CHECKING:
+    from fleetcare.domain.findings import Finding
     from fleetcare.rules.judge_history import Standing
 
 _Key = tuple[str, str]  # cause and subject
@@ -147,14 +147,14 @@ def withdrawn(lives: Iterable[FindingLife], answers: Iterable[Answer], on: date)
     return tuple({answer.finding: answer for answer in sorted(lost, key=_in_order)}.values())
 
 
-def _is_same(before: Finding, now: Finding | None) -> bool:
+def _is_same(before: "Finding", now: "Finding | None") -> bool:
     """Whether a finding of a cause and subject is the one there was: valves set on one sheet are not those of the next."""
     return now is not None and not {value.point for value in before.evidence}.isdisjoint(
         value.point for value in now.evidence
     )
 
 
-def _go_on(before: tuple[FindingLife, Finding] | None, finding: Finding, at: At, entry: int) -> FindingLife:
+def _go_on(before: "tuple[FindingLife, Finding] | None", finding: "Finding", at: At, entry: int) -> FindingLife:
     """Let a finding go on, or begin."""
     if before is not None and before[1] == finding:
         return before[0]
@@ -168,7 +168,7 @@ def _go_on(before: tuple[FindingLife, Finding] | None, finding: Finding, at: At,
     return FindingLife(life.id, life.cause, life.subject, (*life.stands, stand))
 
 
-def _ended(life: FindingLife, last: Finding, at: At, going: Iterable[tuple[FindingLife, Finding]]) -> FindingLife:
+def _ended(life: FindingLife, last: "Finding", at: At, going: "Iterable[tuple[FindingLife, Finding]]") -> FindingLife:
     """End a finding: joined to one that has a value of it now, else cleared."""
     values = set(last.evidence)
     joined = (other.id for other, finding in going if values & set(finding.evidence))
