@@ -43,7 +43,12 @@ def test_a_percentile_of_the_family_is_a_point_of_its_samples() -> None:
     rule = a_rule(shape=Statistical(Pool.FAMILY, Method.PERCENTILE, 50), high=Limits(beyond("95"), beyond("98")))
     pools = Pools(family={"Fe": tuple(Decimal(number) for number in range(1, 100))})
     signal = one_signal(rule, facts(a_sheet(value("Fe", "96")), pools=pools))
-    assert (signal.limit, len(signal.steps)) == (Decimal(95), 1)
+    assert signal.limit == Decimal(95)
+    assert [(step.label, step.value) for step in signal.steps] == [
+        ("samples", 99),
+        ("95 % of them up to", Decimal(95)),
+        ("98 % of them up to", Decimal(98)),
+    ]
 
 
 def test_too_few_samples_give_no_limit_and_samples_all_alike_neither() -> None:

@@ -10,6 +10,7 @@ from decimal import Decimal
 
 from fleetcare.domain.findings import Step
 from fleetcare.domain.measures import QUANTITIES, exactly
+from fleetcare.domain.quantities import plain
 from fleetcare.domain.rule_book import Limits, Method, Pool, Rule, Statistical
 from fleetcare.domain.trends import Hindrance
 from fleetcare.rules.judging.facts import CannotTell, Figure, MeasuredFacts
@@ -46,8 +47,9 @@ def _limits(
     first = next(iter(made.values()), None)
     centre, spread = (first.centre, first.spread) if first else (None, None)
     named, spoken = _NAMES.get(shape.method, ("", ""))
-    steps = (Step(named, centre), Step(spoken, spread)) if centre is not None and spread is not None else ()
-    return Limits(**figures), steps
+    if centre is not None and spread is not None:
+        return Limits(**figures), (Step(named, centre), Step(spoken, spread))
+    return Limits(**figures), tuple(Step(f"{plain(one.multiple)} % of them up to", one.value) for one in made.values())
 
 
 def _limit(shape: Statistical, samples: tuple[Decimal, ...], multiple: Decimal, sign: int) -> StatisticalLimit:
