@@ -76,6 +76,10 @@ def record_work(session: "Session", draft: LogDraft, today: date) -> Logged:
         session.add(LogPart(entry_id=entry.id, name=name, quantity=quantity))
     store_figures(session, item, entry, draft.at)
     facts = item_facts(session.connection(), today, [item.id])[0]
+    if facts.item.in_service_on is not None and entry.on < facts.item.in_service_on:
+        logged.notes.append(
+            f"{entry.on} is before {item.tag} came into service on {facts.item.in_service_on}: check the day"
+        )
     if sheet is not None:
         logged.sheet = keep_sheet(session, entry, sheet.sheet)
     came = came_along(sheet, sure=draft.sure)

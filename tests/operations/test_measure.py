@@ -275,3 +275,12 @@ def test_every_sheet_and_value_stands_in_the_ledger(yard: Context) -> None:
             connection, "select kind, count(*) from ledger where kind like 'sheet%' group by kind order by kind"
         )
     assert [tuple(row) for row in rows] == [("sheet", 1), ("sheet_value", 4)]
+
+
+def test_a_sheet_dated_before_the_engine_came_is_kept_with_a_word_about_its_day(ctx: Context) -> None:
+    yard = yard_with_valves(ctx, in_service="2024-01-10", start_at="0")
+    doubt = "2020-05-01 is before P-01 came into service on 2024-01-10: check the day"
+    first_day = take(yard, *FOUND_IN, on="2024-01-10")
+    early = take(yard, *FOUND_IN, on="2020-05-01")
+    assert (first_day.is_new, early.is_new) == (True, True)
+    assert (doubt in early.notes, any("came into service" in note for note in first_day.notes)) == (True, False)
