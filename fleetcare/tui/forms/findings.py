@@ -29,7 +29,7 @@ def _answer(session: "Session", subject: Subject, draft: "AnswerDraft", today: d
 
 ACCEPT = Form(
     "accept",
-    "Accept finding {task} of {tag}: live with it until it gets graver",
+    "Accept finding {task} of {tag}",
     (WHY, _DECIDES),
     _answer_draft,
     _answer,
