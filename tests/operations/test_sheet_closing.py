@@ -3,6 +3,7 @@
 import pytest
 
 from fleetcare.context import Context
+from fleetcare.operations.rows import fetch
 from fleetcare.operations.upkeep import check
 from tests.operations.importing import correct, entries, log, machine, task
 from tests.operations.sheet_yard import (
@@ -137,7 +138,7 @@ def test_a_sheet_taken_by_itself_closes_the_work_by_a_correction(yard: Context) 
     assert judged is not None
     assert (judged.sheet.entry, len(judged.sheet.values)) == (2, 4)
     with yard.read() as connection:
-        kinds = [row[0] for row in connection.exec_driver_sql("select kind from log_entry order by id")]
+        kinds = [row[0] for row in fetch(connection, "select kind from log_entry order by id")]
     assert kinds == ["other", "scheduled"]
     assert check(yard).problems == ()
 
