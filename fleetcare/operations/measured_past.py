@@ -145,7 +145,7 @@ def _judged(sheet: MeasuredSheet, about: _About) -> dict[_Place, MeasuredRow]:
     found = about.found
     then = [one for one in found.sheets if (one.on, one.entry) <= (sheet.on, sheet.entry)]
     judged = judge_engine(then, found.engine, about.book, found.background).sheets[sheet.entry]
-    rows = measured_rows(judged, about.rules, ())
+    rows = measured_rows(judged, ())
     return {(row.quantity, row.point, row.phase): row for row in rows}
 
 

@@ -27,7 +27,6 @@ from fleetcare.operations.sheets_load import load_sheets
 from fleetcare.operations.sheets_values import SaidDoubt
 from fleetcare.rules.explain_measured import MeasuredRow as MeasuredRow
 from fleetcare.rules.explain_measured import measured_rows
-from fleetcare.rules.judging.applies import rules_for
 from fleetcare.rules.sheet_complete import why_incomplete
 from fleetcare.rules.sheet_doubts import doubt_measure, say_measure_doubt
 
@@ -177,8 +176,7 @@ def read_typed(
                 rows.pop(number, None)
     sheet = Sheet(NOT_YET, opened.form.kind.name, opened.form.on, values, gauge=gauge, received_on=received)
     judged = opened.ahead.judge(sheet)
-    rules = rules_for(opened.ahead.book, opened.ahead.found.engine)
-    told = measured_rows(judged.sheets[NOT_YET], rules, opened.form.kind.quantities)
+    told = measured_rows(judged.sheets[NOT_YET], opened.form.kind.quantities)
     doubts = {key_of(value): doubt for value in values if (doubt := _doubt(opened, value)) is not None}
     return TypedMeasures(
         rows={CellKey(row.quantity, row.point, Phase(row.phase)): row for row in told},

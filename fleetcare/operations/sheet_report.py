@@ -17,7 +17,6 @@ from fleetcare.operations.sheets_judge import JudgedSheet, judge_stored
 from fleetcare.operations.sheets_load import load_sheets
 from fleetcare.operations.shop_book import usable_book
 from fleetcare.rules.explain_measured import MeasuredRow, measured_rows
-from fleetcare.rules.judging.applies import rules_for
 from fleetcare.rules.sheet_complete import missing_cylinders, why_incomplete
 
 if TYPE_CHECKING:
@@ -91,7 +90,7 @@ def report_sheet(connection: "Connection", item: FoundItem, entry: int, on: date
         title=kind.title,
         sheet=sheet,
         engine_hours=hours,
-        rows=measured_rows(judged.sheets[entry], rules_for(book, found.engine), kind.quantities),
+        rows=measured_rows(judged.sheets[entry], kind.quantities),
         findings=findings,
         missing=missing_cylinders(sheet.kind, sheet.values, found.engine),
         incomplete=why_incomplete(sheet.kind, sheet.values, found.engine),

@@ -52,16 +52,16 @@ class MeasuredRow:
         return self.value if self.value == NOT_DETECTED else f"{self.value} {self.unit}".strip()
 
 
-def measured_rows(judged: JudgedSheet, rules: Sequence[Rule], order: Sequence[str]) -> tuple[MeasuredRow, ...]:
+def measured_rows(judged: JudgedSheet, order: Sequence[str]) -> tuple[MeasuredRow, ...]:
     """Flatten the values of a judged sheet, quantities in an order, points as the engine stands."""
     places = {quantity: place for place, quantity in enumerate(order)}
     verdicts = sorted(judged.verdicts, key=lambda pair: places.get(pair[0].quantity, len(places)))
-    return tuple(_row(value, verdict, judged, rules) for value, verdict in verdicts)
+    return tuple(_row(value, verdict, judged) for value, verdict in verdicts)
 
 
-def _row(value: Evidence, verdict: Verdict, judged: JudgedSheet, rules: Sequence[Rule]) -> MeasuredRow:
+def _row(value: Evidence, verdict: Verdict, judged: JudgedSheet) -> MeasuredRow:
     signal = _gravest(signal for signal in judged.signals if value in signal.flagged)
-    rule = signal.rule if signal else _held_by(value, judged.not_judged, rules) if verdict is Verdict.IN else None
+    rule = signal.rule if signal else _held_by(value, judged) if verdict is Verdict.IN else None
     return MeasuredRow(
         quantity=value.quantity,
         title=title(value.quantity),
@@ -109,15 +109,9 @@ def say_limits(rule: Rule) -> str:
     return " ".join(part for part in (say_measured(rule), *ends, say_unit(rule)) if part)
 
 
-def _held_by(value: Evidence, silent: Sequence[NotJudged], rules: Sequence[Rule]) -> Rule | None:
-    """Give the first rule that held a value against limits, the plainest before those that compare; None for a pattern."""
-    judged_as = _JUDGED_AS.get(value.quantity, value.quantity)
-    left_out = {one.rule.id for one in silent if one.subject in {value.point, ""}}
-    held = [
-        rule
-        for rule in rules
-        if rule.quantity == judged_as and not isinstance(rule.shape, Pattern) and rule.id not in left_out
-    ]
+def _held_by(value: Evidence, judged: JudgedSheet) -> Rule | None:
+    """Give the first rule that held a value to be within its limits, the plainest before those that compare."""
+    held = [rule for rule, one in judged.within if one == value]
     return min(held, key=lambda rule: not isinstance(rule.shape, Bounds), default=None)
 
 

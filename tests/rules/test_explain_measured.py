@@ -11,13 +11,13 @@ from fleetcare.rulebook.rules import rule_book
 from fleetcare.rules.explain_measured import MeasuredRow, measured_rows, say_limits
 from fleetcare.rules.judging.applies import rules_for
 from fleetcare.rules.judging.judge import judge_sheet
-from tests.rules.measured import ENGINE, a_rule, a_sheet, beyond, facts, pressures, value
+from tests.rules.measured import ENGINE, a_rule, a_sheet, beyond, facts, pressures, rules_named, value
 
 
 def rows(sheet: MeasuredSheet, *rules: Rule) -> list[MeasuredRow]:
     """The rows of a sheet, by some rules or by the shipped ones."""
     known = rules or rules_for(rule_book(), ENGINE)
-    return list(measured_rows(judge_sheet(known, facts(sheet)), known, ("hours_on_oil", "Cu", "Fe", "pressure")))
+    return list(measured_rows(judge_sheet(known, facts(sheet)), ("hours_on_oil", "Cu", "Fe", "pressure")))
 
 
 def row(one: SheetValue, *rules: Rule, kind: str = "oil") -> MeasuredRow:
@@ -55,6 +55,13 @@ def test_a_value_in_another_unit_is_told_in_that_of_the_limit() -> None:
 def test_a_value_within_says_the_first_limits_that_held_it() -> None:
     found = row(value("Fe", "100"), a_rule())
     assert (found.verdict, found.why, found.rule, found.limit) == ("in", "iron up to 100 ppm", "iron", None)
+
+
+def test_a_value_within_is_held_by_no_rule_that_asks_for_what_the_sheet_does_not_say() -> None:
+    rules = {rule.id: rule for rule in rules_named()}
+    sheet = a_sheet(value("tbn", "5.25"), value("tbn", "10.5", phase="new"), words={"tbn_method": "perchloric"})
+    found = rows(sheet, rules["oil-tbn-hydrochloric"], rules["oil-tbn"])
+    assert [(one.verdict, one.rule) for one in found] == [("in", "oil-tbn"), ("not judged", "")]
 
 
 def test_a_value_no_rule_is_about_says_so() -> None:

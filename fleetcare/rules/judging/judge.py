@@ -38,11 +38,15 @@ from fleetcare.rules.judging.words import says, unsaid
 
 @dataclass(frozen=True, slots=True)
 class JudgedSheet:
-    """What rules make of a sheet: signals, why rules are silent, and a verdict for each value, as the engine stands."""
+    """What rules make of a sheet: signals, why rules are silent, and a verdict for each value, as the engine stands.
+
+    `within` has each rule that held a value to be within its limits, with the value.
+    """
 
     signals: tuple[Signal, ...]
     not_judged: tuple[NotJudged, ...]
     verdicts: tuple[tuple[Evidence, Verdict], ...]
+    within: tuple[tuple[Rule, Evidence], ...]
 
 
 @dataclass(frozen=True, slots=True)
@@ -72,7 +76,9 @@ def judge_sheet(rules: Iterable[Rule], facts: MeasuredFacts) -> JudgedSheet:
     patterns = [(rule, rule.shape) for rule in known if isinstance(rule.shape, Pattern) and says(facts.sheet, rule)]
     signals += match_patterns(patterns, facts, signals)
     within = {value for _, value in told.within}
-    return JudgedSheet(tuple(signals), tuple(dict.fromkeys(told.silent)), _verdicts(facts, signals, within))
+    return JudgedSheet(
+        tuple(signals), tuple(dict.fromkeys(told.silent)), _verdicts(facts, signals, within), told.within
+    )
 
 
 def tell(rules: Iterable[Rule], facts: MeasuredFacts) -> Told:
