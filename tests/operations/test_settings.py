@@ -38,6 +38,7 @@ def test_without_anything_stored_the_defaults_hold(ctx: Context) -> None:
         "stale-days": "",
         "shop-name": "",
         "supervisors": "",
+        "holidays": "",
     }
 
 
@@ -80,7 +81,7 @@ def test_without_set_stale_days_each_meter_has_its_own_rhythm(ctx: Context) -> N
 def test_an_empty_value_goes_back_to_the_default(ctx: Context, nothing: str) -> None:
     before = values(ctx)
     for spec in SETTINGS:
-        change(ctx, spec.name, "7")
+        change(ctx, spec.name, "2026-12-25" if spec.name == "holidays" else "7")
         change(ctx, spec.name, nothing)
     assert values(ctx) == before
 
