@@ -47,6 +47,7 @@ async def test_long_judging_says_how_far_it_has_come_and_then_what_it_found(open
         await pilot.app.push_screen(screen := LongReading())
         while not screen.told.is_set():
             await pilot.pause()
+        await pilot.pause()
         assert "Judging every sheet: 20 of 100 engines …, Esc stops" in said(pilot)
         screen.may_go_on.set()
         await pilot.app.workers.wait_for_complete()

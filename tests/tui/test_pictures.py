@@ -12,7 +12,7 @@ from typing import NamedTuple
 import pytest
 
 from fleetcare.context import Context
-from tests.tui.conftest import Opened, seen
+from tests.tui.conftest import Grown, Opened, seen
 from tests.tui.wear_yard import wear
 
 PICTURES = Path(__file__).with_name("pictures")
@@ -118,9 +118,9 @@ SCREENS |= {
 
 
 @pytest.fixture
-def worn(ctx: Context, db: Path) -> Context:
+def worn(ctx: Context, made_yard: Path, grown: Grown, db: Path) -> Context:
     """The small yard, PS-1 of which was tested and sampled for two years."""
-    wear(db)
+    grown(made_yard, wear, db)
     return ctx
 
 

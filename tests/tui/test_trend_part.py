@@ -4,7 +4,7 @@ from pathlib import Path
 
 import pytest
 
-from tests.tui.conftest import Opened, line_with, press, seen, type_in
+from tests.tui.conftest import Grown, Opened, line_with, press, seen, type_in
 
 TO_PS_1 = ("2", "slash", *"ps-1", "enter", "enter")
 LIMITS = ("--lash-intake", "0.20-0.30", "--lash-exhaust", "0.40-0.50", "--lash-set-exhaust", "0.45")
@@ -18,14 +18,18 @@ def sheet(db: Path, on: str, *rows: str, tag: str = "PS-1", when: str = "cold") 
 
 
 @pytest.fixture
-def closing(db: Path) -> Path:
+def closing(made_yard: Path, grown: Grown, db: Path) -> Path:
     """PS-1, whose exhaust 1 closed, was set, and closes again; exhaust 2 was only ever gauged hot, the rest never."""
+    return grown(made_yard, close, db)
+
+
+def close(db: Path) -> None:
+    """Let exhaust 1 of PS-1 close, from sheet to sheet."""
     type_in(db, "engine", "edit", "PS-1", *LIMITS, "--lash-when", "cold")
     sheet(db, "2024-08-01", "lash,1I,found,0.25,", "lash,1E,found,0.45,")
     sheet(db, "2025-05-20", "lash,1E,found,0.38,", "lash,1E,left,0.46,")
     sheet(db, "2026-04-30", "lash,1E,found,0.36,")
     sheet(db, "2026-04-30", "lash,2E,found,0.41,", when="hot")
-    return db
 
 
 async def test_the_list_says_last_value_where_it_lies_and_how_it_changed(opened: Opened, closing: Path) -> None:

@@ -4,7 +4,7 @@ from pathlib import Path
 
 import pytest
 
-from tests.tui.conftest import Opened, line_with, press, seen, type_in
+from tests.tui.conftest import Grown, Opened, line_with, press, seen, type_in
 from tests.tui.wear_yard import compressions, sample, sheet
 
 TO_PS_1 = ("2", "slash", *"ps-1", "enter", "enter")
@@ -16,23 +16,31 @@ def page(pilot_lines: list[str]) -> str:
 
 
 @pytest.fixture
-def falling(db: Path) -> Path:
+def falling(made_yard: Path, grown: Grown, db: Path) -> Path:
     """PS-1, whose cylinder 3 falls evenly while the others stand; first measured with another gauge."""
+    return grown(made_yard, fall, db)
+
+
+def fall(db: Path) -> None:
+    """Let cylinder 3 of PS-1 fall, from sheet to sheet."""
     sheet(db, "compression", "2024-08-01", *compressions("27.0", "27.1", "27.0", "27.2", "27.0", "27.1"), gauge="old")
     for on, third in (("2024-12-01", "25.4"), ("2025-05-20", "24.1"), ("2025-12-01", "22.8"), ("2026-04-30", "22.0")):
         sheet(db, "compression", on, *compressions("26.0", "26.1", third, "26.2", "26.0", "26.1"), gauge="C 2")
-    return db
 
 
 @pytest.fixture
-def sampled(db: Path) -> Path:
+def sampled(made_yard: Path, grown: Grown, db: Path) -> Path:
     """PS-1, four samples of one fill: iron comes evenly, silicon stays below what shows, the base number falls."""
+    return grown(made_yard, sample_four, db)
+
+
+def sample_four(db: Path) -> None:
+    """Sample the oil of PS-1 four times."""
     type_in(db, "engine", "edit", "PS-1", "--sump", "12")
     samples = (("2025-12-20", "12"), ("2026-02-01", "19"), ("2026-03-10", "30"), ("2026-04-20", "37"))
     for place, (on, iron) in enumerate(samples):
         rows = sample(str(50 * place + 50), iron, "Si,,,<5,ppm", "kv100,,,14.1,", f"tbn,,,{10 - place},", *FRESH)
         sheet(db, "oil", on, *rows, gauge="Lab A", at=f"{50 * place + 100}h")
-    return db
 
 
 async def test_the_list_says_how_each_cylinder_stands_and_the_one_under_the_cursor_is_drawn(
