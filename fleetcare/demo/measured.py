@@ -147,10 +147,9 @@ def _pressed(yard: "Yard", item: "Item", pressed: Pressed) -> Iterator[Taken]:
         rows = []
         for number, usual in enumerate(pressed.pressures, start=1):
             newest, fall = pressed.falling.get(number, (usual, 0))
-            read = min(Decimal(usual), newest + before * fall / 1000) + 10 * Random(
-                f"{item.tag} {number} {on}"
-            ).randint(-1, 1)
-            rows.append(f"pressure,{number},dry,{round(read / 10) * 10}")
+            tens = round(min(Decimal(usual), newest + before * fall / 1000) / 10)
+            tens += Random(f"{item.tag} {number} {on}").randint(-1, 1)
+            rows.append(f"pressure,{number},dry,{tens * 10}")
         values = {"task": [pressed.task], "at": [dial], "gauge": "G1"}
         yield Taken(on, "compression", _sheet(tuple(rows)), values)
 
