@@ -126,7 +126,8 @@ class Projection:
     """The x between which a measure comes to its limit, with the stated coverage, and the likely one; plan by `early`.
 
     `end` says on which side the limit lies; a value that touches it is not past it.
-    Without them `hindrances` say why; with TOO_FAR alone `not_before` is the x up to which the limit is not expected.
+    Without them `hindrances` say why; with TOO_FAR alone `not_before` is the x up to which the limit is not expected,
+    with SHORT_SPAN alone `likely_so_far` the likely x all the same: enough to look out for, too little to plan by.
     """
 
     limit: Decimal
@@ -138,3 +139,4 @@ class Projection:
     late: Decimal | None = None
     hindrances: tuple[Hindrance, ...] = ()
     not_before: Decimal | None = None
+    likely_so_far: Decimal | None = None

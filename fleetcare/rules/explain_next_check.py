@@ -7,7 +7,7 @@ from fleetcare.domain.lines import DueLine, TriggerLine
 from fleetcare.domain.quantities import BASE_UNIT, Kind, plain
 from fleetcare.rules.due.facts import ItemFacts
 from fleetcare.rules.due.pulls import foreseen_for
-from fleetcare.rules.explain_projection import say_ahead, say_obstacles, say_reached
+from fleetcare.rules.explain_projection import say_ahead, say_likely_so_far, say_obstacles, say_reached
 
 if TYPE_CHECKING:
     from fleetcare.domain.wear import Pull
@@ -32,9 +32,15 @@ def explain_next_check(line: DueLine, trigger: TriggerLine, facts: ItemFacts) ->
         for one in foreseen
         if one.projection.early is not None and one.wear.subject != pulling
     ]
+    so_far = [
+        f"{one.wear.subject} {say_likely_so_far(one.projection, one.wear.unit, over, of)}"
+        for one in foreseen
+        if one.projection.likely_so_far is not None
+    ]
     labels = [
         ("pulled forward", _say_sum(trigger.pull, trigger, facts) if trigger.pull is not None else ""),
         ("also reached", ", ".join(later)),
+        ("likely so far", f"{', '.join(so_far)}: moves no check yet" if so_far else ""),
         ("not projected", say_obstacles([(one.wear.subject, one.projection) for one in foreseen])),
     ]
     return [(label, text) for label, text in labels if text]

@@ -31,6 +31,13 @@ def say_reached(projection: Projection, unit: str, over: str, of: str = "") -> s
     return f"reaches {_limit(projection, unit)} by {_whole(projection.early)} to {_whole(projection.late, ROUND_CEILING)} {over}{of}"
 
 
+def say_likely_so_far(projection: Projection, unit: str, over: str, of: str = "") -> str:
+    """Say when a limit is likely reached where it was watched too shortly to plan by that: "0.12 mm by 503 h"."""
+    assert projection.likely_so_far is not None
+    at = _whole(projection.likely_so_far, ROUND_HALF_EVEN)
+    return f"{_limit(projection, unit)} by {at} {over}{of}"
+
+
 def say_ahead(projection: Projection, unit: str, over: str, of: str = "") -> str:
     """Say all a projection tells: slope, range and likely figure, or the slope where one is seen, and why no more."""
     trend, hindrances = projection.trend, projection.hindrances
@@ -63,7 +70,10 @@ def _say_hindrance(hindrance: Hindrance, projection: Projection, unit: str, over
             return f"no slope yet: {plain(bound - figure)} more {'value' if bound - figure == 1 else 'values'} needed"
         case Obstacle.SHORT_SPAN:
             watched, interval = f"{_whole(figure)} {over}", f"{plain(bound)} {over}"
-            return f"not projected: watched for {watched}, less than one inspection interval of {interval}"
+            too_short = f"watched for {watched}, less than one inspection interval of {interval}"
+            if projection.likely_so_far is None:
+                return f"not projected: {too_short}"
+            return f"likely {say_likely_so_far(projection, unit, over)}, but moves no check: {too_short}"
         case Obstacle.OLD_VALUE:
             return f"not projected: {_whole(figure)} {over} since the last value, more than two intervals"
         case Obstacle.NO_LEFT_VALUE:

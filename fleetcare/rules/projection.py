@@ -69,10 +69,12 @@ def _told(
         *_in_watching(segments, now, interval),
         *_in_slope(segments, trend, end, t),
     )
-    if hindrances or trend is None:
+    if {one.obstacle for one in hindrances} - {Obstacle.SHORT_SPAN} or trend is None:
         return replace(told, hindrances=hindrances)
     early, likely, late = _reached(trend, limit, t)
     furthest = _last(segments).x + trend.span
+    if hindrances:
+        return replace(told, hindrances=hindrances, likely_so_far=likely if likely <= furthest else None)
     if likely > furthest:
         too_far = Hindrance(Obstacle.TOO_FAR, likely, furthest)
         return replace(told, hindrances=(too_far,), not_before=min(early, furthest))

@@ -111,3 +111,11 @@ def test_an_unset_line_says_what_to_enter_and_nothing_of_a_pull() -> None:
 def test_a_pulled_line_shows_no_grace_after_its_point() -> None:
     said = explain(*looked_at(lash(grace=10)))
     assert any("0 h grace: clear" in text for _, text in said)
+
+
+def test_what_was_watched_too_shortly_to_pull_says_its_likely_figure_and_that_no_check_moves() -> None:
+    short = a_wear(("3000 3200 3400 3600", ".30 .29 .28 .27", None), subject="1E")
+    told = working(None, 3600, short)
+    assert told["likely so far"] == "1E 0.25 mm by 4000 h: moves no check yet"
+    assert told["not projected"] == "watched for less than one inspection interval: 1E"
+    assert "pulled forward" not in told

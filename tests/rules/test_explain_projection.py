@@ -69,6 +69,14 @@ def test_watched_too_shortly_or_too_long_ago_says_for_how_long() -> None:
     assert said(told, now=2501).endswith("not projected: 1001 h since the last value, more than two intervals")
 
 
+def test_watched_too_shortly_says_what_is_likely_no_further_ahead_than_that_and_that_no_check_moves() -> None:
+    # By hand: slope -0.12 / 2,500,000 h of .38 .36 .33 .31 about 750 h and 0.345 mm; 750 + 0.095 / 0.000048.
+    assert said(("0 500 1000 1500", ".38 .36 .33 .31", None), now=1500, interval=2000) == (
+        "falls 0.048 mm in 1000 h; likely 0.25 mm by 2729 h, but moves no check:"
+        " watched for 1500 h, less than one inspection interval of 2000 h"
+    )
+
+
 def test_an_adjustment_nobody_wrote_down_says_where() -> None:
     told = (("0 500 1000 1500", ".40 .38 .35 .33", None), ("2000 2500", ".40 .38", "1500"))
     assert said(*told, now=2500).endswith("not projected: not known what the adjustment at 1500 h left")

@@ -90,9 +90,10 @@ def test_the_working_has_the_slope_with_its_error_the_values_and_the_earliest_ho
         "slope",
         "its standard error",
         "values",
+        "watched for",
         "at the earliest in",
     ]
-    assert [one.unit for one in signal.steps] == ["mm", "mm", "mm", "mm per 1000 h", "mm per 1000 h", "", "h"]
+    assert [one.unit for one in signal.steps] == ["mm", "mm", "mm", "mm per 1000 h", "mm per 1000 h", "", "h", "h"]
     assert (signal.steps[0].value, signal.steps[2].value, signal.steps[5].value) == (
         Decimal("0.41"),
         Decimal("0.4"),
@@ -198,7 +199,7 @@ def test_what_moved_by_less_than_gauges_tell_does_not_move() -> None:
 def test_blades_around_the_limit_of_a_gap_that_closes_are_there_already() -> None:
     about = gauged(*STEADY, (3600, "0.37..0.41"))
     (signal,) = judge([CLOSING], about)
-    assert (signal.measured, [one.label for one in signal.steps][-1]) == (Decimal(0), "values")
+    assert (signal.measured, [one.label for one in signal.steps][-1]) == (Decimal(0), "watched for")
 
 
 def test_a_gap_that_is_out_is_for_the_rule_on_its_range_and_takes_the_place_of_what_stood() -> None:

@@ -96,6 +96,14 @@ def test_a_span_of_just_one_inspection_interval_is_enough() -> None:
     assert asked(a_segment(*WORN), interval="2001").hindrances == (short,)
 
 
+def test_watched_too_shortly_alone_still_tells_the_likely_figure_but_nothing_to_plan_by() -> None:
+    long_enough, too_short = (asked(a_segment(*WORN), interval=interval) for interval in ("2000", "2001"))
+    assert too_short.likely_so_far == long_enough.likely
+    assert (too_short.early, too_short.likely, too_short.late, long_enough.likely_so_far) == (None, None, None, None)
+    assert asked(a_segment(*WORN), interval="2001", limit="0.01").likely_so_far is None  # further than was watched
+    assert asked(a_segment(*WORN), interval="2001", limit="0.35").likely_so_far is None  # passed
+
+
 def test_a_last_value_two_inspection_intervals_old_is_not_too_old_yet() -> None:
     assert why_not(asked(a_segment(*WORN), now="3000")) == []
     old = Hindrance(Obstacle.OLD_VALUE, Decimal(1001), Decimal(1000))

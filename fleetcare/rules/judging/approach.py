@@ -5,7 +5,8 @@ own, each value held against the limits of its day; what could not be judged the
 cold or the other way round, is left out (as rules/lash_past.py has it). One slope goes through all that lies between
 adjustments, over the hours of life, and the likely hours of the projection count (rules/projection.py), rounded down to a
 tenth: the early end pulls checks forward, but would call out every valve that wears as it should. The interval of
-inspections is the usual time between the sheets.
+inspections is the usual time between the sheets: rules know no tasks. Where a task asks for it less often, the page of the
+engine tells the same likely hours, but no check moves by them until one interval of the task was watched.
 
 Where too little is known, nothing is told; where the slope is not told apart from none, is less than gauges tell, leads
 away from the limit, or to it further ahead than was watched, the limit is not near. All is worked in mm, whatever was typed.
@@ -114,6 +115,7 @@ def _steps(told: Projection, segments: Sequence[Segment], at: Decimal, unit: str
         Step("slope", 1000 * told.trend.slope / a_unit, f"{unit} per 1000 h"),
         Step("its standard error", 1000 * told.trend.slope_error / a_unit, f"{unit} per 1000 h"),
         Step("values", Decimal(sum(len(segment.points) for segment in segments))),
+        Step("watched for", told.trend.span, "h"),
     )
     if told.early is None:
         return steps
