@@ -28,7 +28,11 @@ def test_a_value_in_percent_of_the_sample_before_is_called_out_where_it_lies_wit
     (signal,) = fell(a_sample(0, "20", on_oil="200", life="1100"))
     assert [one.value for one in signal.flagged] == ["20"]
     assert "40" in {one.value for one in signal.used}
-    assert signal.steps == (Step("iron, of the sample before", Decimal(50), "%"),)
+    assert signal.steps == (
+        Step("iron", Decimal(20), "ppm"),
+        Step("iron before", Decimal(40), "ppm"),
+        Step("iron, of the sample before", Decimal(50), "%"),
+    )
     assert fell(a_sample(0, "20.4", on_oil="200", life="1100")) == []
 
 

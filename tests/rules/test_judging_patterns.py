@@ -5,7 +5,7 @@ from decimal import Decimal
 
 import pytest
 
-from fleetcare.domain.findings import Signal, Step
+from fleetcare.domain.findings import Signal
 from fleetcare.domain.measured import SheetWord
 from fleetcare.domain.rule_book import Asks, Condition, End, Limits, Pattern, Rule, Severity, Where
 from fleetcare.rules.judging.judge import judge, judge_sheet
@@ -128,7 +128,6 @@ def test_a_ratio_is_one_of_gains_over_new_oil() -> None:
     about = facts(a_sheet(value("Si", "75"), value("Al", "25")), fresh=fresh)
     (signal,) = matched(rules, about)  # 60 / 20
     assert {one.value for one in signal.used} == {"25", "15", "5"}
-    assert signal.steps == (Step("silicon to aluminium, both above new oil", Decimal(3)),)
     assert matched(rules, replace(about, fresh=(value("Al", "4", phase="new"), *fresh[:1]))) == []  # 60 / 21
 
 
@@ -170,9 +169,7 @@ def test_a_low_cylinder_that_oil_does_not_raise_is_told_by_its_wet_test(
 ) -> None:
     rule = pattern(IS_LOW, NOT_RAISED, kinds=("compression",), at=Where.CYLINDER)
     about = facts(pressures("400", "400", "200", "400", "400", "400", wet=wet))
-    signals = matched([LOW, rule], about)
-    assert [one.subject for one in signals] == subjects
-    assert all(one.steps == (Step("wet gain at 3", Decimal("9.5"), "%"),) for one in signals)
+    assert [one.subject for one in matched([LOW, rule], about)] == subjects
 
 
 def test_every_cylinder_must_be_low_for_all_to_be() -> None:

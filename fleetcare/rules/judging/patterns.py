@@ -14,12 +14,10 @@ from fleetcare.domain.findings import Evidence, Signal, Step
 from fleetcare.domain.measured import MeasuredSheet
 from fleetcare.domain.rule_book import Asks, Condition, End, Pattern, Rule, Where, worst
 from fleetcare.domain.sheets import Phase
-from fleetcare.rules.judging.comparing import before
 from fleetcare.rules.judging.facts import CannotTell, MeasuredFacts
 from fleetcare.rules.judging.hold import due_on
-from fleetcare.rules.judging.rates import check_same_fill
-from fleetcare.rules.judging.spans import Side, Span
-from fleetcare.rules.judging.values import Measured, cylinder_of, fresh_of, step, title, values_of
+from fleetcare.rules.judging.values import Measured, cylinder_of, values_of
+from fleetcare.rules.judging.within import lies_within, work_out
 from fleetcare.rules.judging.words import words_of
 from fleetcare.rules.lash_points import side_of
 
@@ -176,15 +174,15 @@ def _within(condition: Condition, cylinder: int | None, scene: _Scene) -> _Match
     values = _values(condition, cylinder, scene)
     if not values:
         return _Match() if condition.is_optional else None
+    others = _values(_only(condition.over), None, scene) if condition.over else []
     for one in values:
         try:
-            span, used = _span(condition, one, scene)
+            worked = work_out(condition, one, others, scene.facts)
         except CannotTell:
             continue
-        if _lies_within(span, condition):
-            steps = (step(_label(condition, one), span, condition.unit),)
+        if lies_within(worked.span, condition):
             flagged = (one.evidence,) if condition.calls_out else ()
-            return _Match(flagged, (one.evidence, *used), steps)
+            return _Match(flagged, (one.evidence, *worked.used), worked.steps)
     return None
 
 
@@ -213,58 +211,8 @@ def _values(condition: Condition, cylinder: int | None, scene: _Scene) -> list[M
     return next((values for values in found if values), [])
 
 
-def _span(condition: Condition, one: Measured, scene: _Scene) -> tuple[Span, tuple[Evidence, ...]]:
-    """Work out what lies within: the value in the unit of the condition, less new oil, over another quantity."""
-    if condition.of_before:
-        return _of_before(condition, one, scene.facts)
-    span, used = _above_new(condition, one, scene, condition.unit if not condition.over else one.unit)
-    if not condition.over:
-        return span, (*one.used, *used)
-    others = _values(_only(condition.over), None, scene)
-    if not others:
-        raise CannotTell("the other quantity was not measured")
-    other, seen = _above_new(condition, others[0], scene, one.unit)
-    if other.low <= 0:
-        raise CannotTell("there is none of the other quantity")
-    return span.over(other), (*one.used, *used, others[0].evidence, *seen)
-
-
-def _of_before(condition: Condition, one: Measured, facts: MeasuredFacts) -> tuple[Span, tuple[Evidence, ...]]:
-    """Give a value in percent of what the sample before had, where it would lie within of one of the same fill."""
-    then = before(one.quantity, one, facts)
-    if then.span.low <= 0:
-        raise CannotTell("there was none of it before")
-    span = one.within(then.unit).over(then.span).times(100)
-    if _lies_within(span, condition):
-        check_same_fill(one, facts)
-    return span, (*one.used, then.evidence)
-
-
-def _label(condition: Condition, one: Measured) -> str:
-    """Name the number that lies within: "silicon to aluminium, both above new oil", "wet gain at 3"."""
-    over = f" to {title(condition.over)}" if condition.over else ""
-    above = f",{' both' if over else ''} above new oil" if condition.less_new else ""
-    over = ", of the sample before" if condition.of_before else over
-    return f"{title(one.quantity)}{over}{above}{f' at {one.point}' if one.point else ''}"
-
-
-def _above_new(condition: Condition, one: Measured, scene: _Scene, unit: str) -> tuple[Span, tuple[Evidence, ...]]:
-    fresh = fresh_of(scene.facts.sheet, scene.facts.fresh, one.quantity) if condition.less_new else None
-    if fresh is None:
-        return one.within(unit), ()
-    return one.within(unit) - fresh.within(unit), (fresh.evidence,)
-
-
 def _only(quantity: str) -> Condition:
     return Condition((quantity,), Asks.WITHIN)
-
-
-def _lies_within(span: Span, condition: Condition) -> bool:
-    """Whether a span lies within for certain; a limit to be gone beyond is outside itself, one to be reached inside."""
-    low, high = condition.low, condition.high
-    above = low is None or span.past_high(low) is Side.PAST
-    below = high is None or span.past_low(high) is Side.PAST
-    return above and below
 
 
 def _is_at(point: str, quantity: str, side: str, cylinder: int | None) -> bool:
