@@ -1,11 +1,12 @@
 """Bounds: a value as measured, less new oil, as a share of the nameplate, over a year; and what a sheet says in words."""
 
 from dataclasses import replace
+from datetime import timedelta
 from decimal import Decimal
 
 import pytest
 
-from fleetcare.domain.measured import SheetWord
+from fleetcare.domain.measured import MeasuredSheet, SheetWord
 from fleetcare.domain.rule_book import Basis, Bounds, End, Limits
 from fleetcare.domain.sheets import Phase
 from fleetcare.rules.judging.deadlines import business_days_after
@@ -138,9 +139,28 @@ def test_a_year_counts_its_own_runs_of_the_purpose_asked_for() -> None:
     signal = one_signal(YEAR, facts(sheet, earlier=earlier))
     assert round(signal.measured or 0, 4) == Decimal("50.0167")
     assert [one.value for one in signal.used] == ["1", "1500", "1500"]
-    assert signal.steps[-1].value == 3
+    assert [(one.label, one.value, one.unit) for one in signal.steps] == [
+        ("runs in 2026", Decimal(3), ""),
+        (f"on {(ON - timedelta(days=20)).isoformat()}", Decimal(1500), "min"),
+        (f"on {(ON - timedelta(days=5)).isoformat()}", Decimal(1500), "min"),
+        ("this run", Decimal(1), "min"),
+    ]
     wrong_unit = a_sheet(value("minutes", "1", "kPa"), kind="run", words={"purpose": "other"})
     assert inputs_missing([YEAR], facts(wrong_unit))[0].why == "kPa cannot be compared in h"
+
+
+@pytest.mark.parametrize(("days", "listed"), [(6, 6), (7, 5)])
+def test_many_runs_of_a_year_are_told_as_one_sum_and_the_last_five_by_day(days: int, listed: int) -> None:
+    def ran(minutes: str, back: int) -> MeasuredSheet:
+        return a_sheet(value("minutes", minutes), kind="run", days=back, words={"purpose": "other"})
+
+    earlier = tuple(ran(str(500 + back), back) for back in range(days, 0, -1))
+    signal = one_signal(YEAR, facts(ran("600", 0), earlier=earlier))
+    (_, *runs, this) = signal.steps
+    assert sum(one.value for one in (*runs, this)) / 60 == signal.measured
+    assert [one.label for one in runs[-listed:]] == [f"on {one.on.isoformat()}" for one in earlier[-listed:]]
+    older = [f"{days - listed} from {earlier[0].on.isoformat()} to {earlier[days - listed - 1].on.isoformat()}"]
+    assert [one.label for one in runs[:-listed]] == (older if days > listed else [])
 
 
 def test_a_word_that_is_asked_for_must_be_said_and_one_that_bars_must_not() -> None:

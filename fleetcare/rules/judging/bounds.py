@@ -3,19 +3,22 @@
 Less new oil: elements that fresh oil may bring along (TM 38-301-4: its antifoam gives 3 to 7 ppm of silicon) count from
 the level of the fresh oil where that is known, else as measured, as the sources print them. A load in kW or hp counts as
 percent of the rated kW; one in percent is taken as it stands. A year's total sums the runs of the calendar year up to
-the sheet's own day whose words fit the rule.
+the sheet's own day whose words fit the rule; its working lists the last of them by day, and those before as one sum.
 """
 
-from collections.abc import Sequence
+from collections.abc import Iterable, Iterator, Sequence
 from decimal import Decimal
 
 from fleetcare.domain.findings import Step
+from fleetcare.domain.measured import MeasuredSheet
 from fleetcare.domain.measures import dimension
 from fleetcare.domain.rule_book import Basis, Bounds, Rule
 from fleetcare.rules.judging.facts import CannotTell, Figure, MeasuredFacts
-from fleetcare.rules.judging.spans import known
+from fleetcare.rules.judging.spans import Span, known
 from fleetcare.rules.judging.values import Measured, fresh_of, judged_phases, step, title, values_of
 from fleetcare.rules.judging.words import says
+
+_LISTED = 5  # earlier runs of a year told one by one
 
 
 def figure(rule: Rule, shape: Bounds, one: Measured, values: Sequence[Measured], facts: MeasuredFacts) -> Figure:
@@ -57,9 +60,26 @@ def _share_of_nameplate(rule: Rule, one: Measured, facts: MeasuredFacts) -> Figu
 
 def _total_of_year(rule: Rule, values: Sequence[Measured], facts: MeasuredFacts) -> Figure:
     runs = [sheet for sheet in facts.earlier if sheet.on.year == facts.sheet.on.year and says(sheet, rule)]
-    before = [one for sheet in runs for one in judged_phases(values_of(sheet, rule.quantity), rule.phases, rule.points)]
-    own = sum((one.within(rule.unit) for one in values), known(0))
-    total = sum((one.within(rule.unit) for one in before), own)
-    steps = (step("this run", own, rule.unit), Step(f"runs in {facts.sheet.on.year}", Decimal(len(runs) + 1)))
-    used = tuple(one.evidence for one in (*values[:-1], *before))
+    before = [judged_phases(values_of(sheet, rule.quantity), rule.phases, rule.points) for sheet in runs]
+    total = _sum([one for run in (*before, values) for one in run], rule.unit)
+    steps = (
+        Step(f"runs in {facts.sheet.on.year}", Decimal(len(runs) + 1)),
+        *_by_day(runs, before, values[-1].unit),
+        step("this run", _sum(values, values[-1].unit), values[-1].unit),
+    )
+    used = tuple(one.evidence for one in (*values[:-1], *(one for run in before for one in run)))
     return Figure("", total, values[-1].evidence, rule.low, rule.high, used, steps)
+
+
+def _by_day(runs: Sequence[MeasuredSheet], told: Sequence[Sequence[Measured]], unit: str) -> Iterator[Step]:
+    """Give what each earlier run of a year had, in a unit, oldest first; of many those before the last few as one sum."""
+    many = len(runs) - _LISTED if len(runs) > _LISTED + 1 else 0
+    if many:
+        label = f"{many} from {runs[0].on.isoformat()} to {runs[many - 1].on.isoformat()}"
+        yield step(label, _sum([one for run in told[:many] for one in run], unit), unit)
+    for sheet, run in zip(runs[many:], told[many:], strict=True):
+        yield step(f"on {sheet.on.isoformat()}", _sum(run, unit), unit)
+
+
+def _sum(values: Iterable[Measured], unit: str) -> Span:
+    return sum((one.within(unit) for one in values), known(0))
