@@ -9,10 +9,12 @@ from typing import TYPE_CHECKING
 from fleetcare.domain.meters import LifeFigure
 from fleetcare.domain.quantities import COUNTED, Kind, plain, tenth
 from fleetcare.operations.load import entry_lives, own_readings
-from fleetcare.operations.rows import Row, fetch, grouped, known_day
+from fleetcare.operations.rows import Row, fetch, figure, grouped, known_day
+from fleetcare.operations.sheets_load import load_values
 from fleetcare.rules.due.facts import ItemFacts
 from fleetcare.rules.due.row import unit_of
 from fleetcare.rules.explain import say_amount
+from fleetcare.rules.explain_run import RUN, say_run
 
 if TYPE_CHECKING:
     from sqlalchemy import Connection
@@ -59,14 +61,14 @@ def item_history(connection: "Connection", facts: ItemFacts) -> list[HistoryEntr
         id=facts.item.id,
         on=facts.on.isoformat(),
     )
-    told = _load_told(connection, [row[0] for row in entries])
+    told = _load_told(connection, facts.item.id, [row[0] for row in entries])
     own = own_readings(facts.counters)
     lives = {row[0]: entry_lives(facts.counters, own, row[0], known_day(row[1])) for row in entries}
     ordered = sorted(entries, key=lambda row: _place(row, lives[row[0]]), reverse=True)
     return [_entry(row, told[row[0]], _say_figures(row, told[row[0]], lives[row[0]], facts)) for row in ordered]
 
 
-def _load_told(connection: "Connection", numbers: Sequence[int]) -> dict[int, _Told]:
+def _load_told(connection: "Connection", item_id: int, numbers: Sequence[int]) -> dict[int, _Told]:
     tasks = fetch(
         connection,
         "select entry_id, task.name, part_done, covered_by_id from log_task join task on task.id = log_task.task_id"
@@ -81,12 +83,21 @@ def _load_told(connection: "Connection", numbers: Sequence[int]) -> dict[int, _T
     )
     sheets = fetch(
         connection,
-        "select entry_id, kind, conditions, gauge, (select count(*) from sheet_value where sheet_id = sheet.id)"
+        "select entry_id, kind, conditions, gauge, (select count(*) from sheet_value where sheet_id = sheet.id), id"
         " from sheet where entry_id in :ids order by id",
         ids=numbers,
     )
-    found = [grouped(rows) for rows in (tasks, figures, parts, sheets)]
+    told = [(*row, run) for row, run in zip(sheets, _say_runs(connection, item_id, sheets), strict=True)]
+    found = [grouped(rows) for rows in (tasks, figures, parts, told)]
     return {number: _Told(*(rows.get(number, []) for rows in found)) for number in numbers}
+
+
+def _say_runs(connection: "Connection", item_id: int, sheets: Sequence[Row]) -> list[str]:
+    """Say what each sheet has of a test run, nothing of those of other kinds."""
+    values = load_values(connection, [row[5] for row in sheets if row[1] == RUN])
+    rated = fetch(connection, "select rated_kw from engine where item_id = :id", id=item_id) if values else []
+    rated_kw = next((figure(row[0]) for row in rated), None)
+    return [say_run(values.get(row[5], ()), rated_kw) for row in sheets]
 
 
 def _place(row: Row, lives: Mapping[Kind, LifeFigure]) -> tuple[date, list[Decimal], int]:
@@ -137,10 +148,10 @@ def _entry(row: Row, told: _Told, figures: str) -> HistoryEntry:
     )
 
 
-def _say_sheet(kind: str, condition: str, gauge: str, values: int) -> str:
-    """Name a sheet that came with an entry: "lash sheet, 24 values, cold, gauge F2"."""
+def _say_sheet(kind: str, condition: str, gauge: str, values: int, _: int, run: str) -> str:
+    """Name a sheet that came with an entry: "lash sheet, 24 values, cold, gauge F2", "run sheet, 35 min at 30 %, test"."""
     count = f"{values} {'value' if values == 1 else 'values'}"
-    return _joined([f"{kind} sheet", count, condition, gauge and f"gauge {gauge}"], ", ")
+    return _joined([f"{kind} sheet", run or count, condition, gauge and f"gauge {gauge}"], ", ")
 
 
 def _say_chain(supersedes: int | None, is_void: bool, why: str, later: int | None, later_void: bool) -> str:

@@ -82,6 +82,13 @@ def test_the_log_names_the_sheet_of_an_entry(pump: Runner, lash: str, tmp_path: 
     ]
 
 
+def test_the_log_says_of_a_run_how_long_at_which_load_and_what_for(pump: Runner, tmp_path: Path) -> None:
+    run = write(tmp_path, "minutes,,,35,min", "load,,,40,%", "purpose,,,test,")
+    assert pump("measure", "run", "P-01", run).status == 0
+    (_, _, line) = section(pump("show", "P-01").out, "LOG")
+    assert " ".join(line.split()) == "1 2026-05-01 other run sheet, 35 min at 40 %, test"
+
+
 def test_a_lash_task_shows_its_last_sheet_point_by_point(pump: Runner, lash: str) -> None:
     assert "LAST SHEET" not in pump("show", "P-01", "Valve lash").out
     pump("log", "P-01", "Valve lash", "--sheet", lash, "--by", "Fenn", "--gauge", "F2")
