@@ -40,11 +40,13 @@ class Best(StrEnum):
 class Since(StrEnum):
     """What a value is compared with: the last sheet with the same gauge, the highest of all points on that, or the new oil.
 
-    For a rate NEW is since the oil change.
+    OWN_BEST is the best the same point ever had by the same gauge: the highest where a low limit is held, the lowest where
+    a high one is, so that a figure that fell and stayed there is as bad the next time. For a rate NEW is since the oil change.
     """
 
     BEFORE = "before"
     BEST_BEFORE = "best before"
+    OWN_BEST = "own best"
     NEW = "new"
 
 

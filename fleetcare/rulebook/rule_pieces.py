@@ -144,7 +144,7 @@ class ChangeIn(Form):
 class RateIn(Form):
     """The shape `rate`."""
 
-    since: Since
+    since: Literal[Since.BEFORE, Since.NEW]
     per: Literal[10, 100, 1000]
     is_corrected: bool = False
     least_hours: Annotated[Decimal, Field(ge=0)] = Decimal(0)

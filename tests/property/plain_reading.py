@@ -48,7 +48,7 @@ def is_readable(rule: Rule) -> bool:
         case AgainstSheet():
             return not rule.phases
         case Change(since, _):
-            return since in {Since.BEFORE, Since.NEW}
+            return since in {Since.BEFORE, Since.OWN_BEST, Since.NEW}
         case _:
             return False
 
@@ -117,13 +117,18 @@ def _changes(
         return _compared(shape.by, {value: (value.figure, new) for value in values})
     pairs = {}
     for value in values:
-        for sheet in reversed(facts.earlier):
-            then = [one for one in _read(sheet, rule, _unit(rule, facts.sheet)) if one[:2] == value[:2]]
-            if sheet.gauge == facts.sheet.gauge and then:
-                if then[0].is_bound:
-                    return None
-                pairs[value] = (value.figure, then[0].figure)
-                break
+        told = [
+            [one for one in _read(sheet, rule, _unit(rule, facts.sheet)) if one[:2] == value[:2]]
+            for sheet in facts.earlier
+            if sheet.gauge == facts.sheet.gauge
+        ]
+        past = [ones[0] for ones in told if ones]
+        past = past[-1:] if shape.since is Since.BEFORE else past
+        if any(one.is_bound for one in past):
+            return None
+        if past:
+            figures = [one.figure for one in past]
+            pairs[value] = (value.figure, max(figures) if rule.low else min(figures))
     return _compared(shape.by, pairs)
 
 

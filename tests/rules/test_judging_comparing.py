@@ -1,5 +1,6 @@
 """Values compared with the best of their sheet, with the sheet before, with new oil."""
 
+from dataclasses import replace
 from decimal import Decimal
 
 import pytest
@@ -105,6 +106,28 @@ def test_another_gauge_is_no_trend() -> None:
 def test_a_change_reads_the_same_whatever_the_units_and_a_dry_value_is_like_one_without_a_phase() -> None:
     about = facts(_tested("8", 0, unit="bar", phase="dry"), earlier=(_tested("1000", 30, unit="kPa"),))  # type: ignore[arg-type]
     assert one_signal(FALL, about).measured == -20
+
+
+BEST = replace(FALL, shape=Change(Since.OWN_BEST, By.SHARE))
+
+
+def test_a_figure_that_fell_and_stayed_there_is_told_again_and_so_is_one_that_fell_step_by_step() -> None:
+    stayed = facts(_tested("80", 0), earlier=(_tested("100", 60), _tested("80", 30)))  # type: ignore[arg-type]
+    assert told([FALL], stayed) == {}
+    assert told([BEST], stayed) == {("fall", "1"): "alert"}
+    stepped = facts(_tested("84", 0), earlier=(_tested("100", 60), _tested("92", 30)))  # type: ignore[arg-type]
+    signal = one_signal(BEST, stepped)
+    assert (signal.measured, [one.value for one in signal.used]) == (Decimal(-16), ["100"])
+
+
+def test_the_best_is_that_of_the_same_gauge_in_whatever_unit_and_the_lowest_where_a_high_limit_is_held() -> None:
+    earlier = (_tested("1200", 90, "G2", "kPa"), _tested("1000", 60, "G1", "kPa"), _tested("9", 30, "G1", "bar"))
+    signal = one_signal(BEST, facts(_tested("8", 0, "G1", "bar"), earlier=earlier))  # type: ignore[arg-type]
+    assert (signal.measured, [one.value for one in signal.used]) == (Decimal(-20), ["1000"])
+    risen = replace(BEST, low=Limits(), high=Limits(beyond("50")))
+    signal = one_signal(risen, facts(_tested("1.6", 0, "G1", "MPa"), earlier=earlier))  # type: ignore[arg-type]
+    assert [one.value for one in signal.used] == ["9"]
+    assert inputs_missing([BEST], facts(_tested("80", 0)))[0].why == "there is no earlier sheet"  # type: ignore[arg-type]
 
 
 RISE = a_rule(

@@ -156,6 +156,15 @@ def test_two_low_neighbours_of_a_bank_are_one_pattern_and_two_others_are_none() 
     assert matched([LOW, rule], facts(pressures("200", "400", "210", "400", "400", "400"))) == []
 
 
+def test_two_low_neighbours_stand_out_only_beside_a_cylinder_that_was_measured_and_is_sound() -> None:
+    rule = pattern(IS_LOW, kinds=("compression",), at=Where.NEIGHBOURS)
+    fallen = a_rule(
+        id="low", kinds=("compression",), quantity="pressure", unit="psi", low=Limits(beyond("300")), high=Limits()
+    )
+    assert [one.subject for one in matched([fallen, rule], facts(pressures("200", "210", "400")))] == ["1-2"]
+    assert matched([fallen, rule], facts(pressures("200", "210"))) == []
+
+
 def test_in_a_v_engine_the_next_in_the_bank_is_the_neighbour() -> None:
     engine = replace(ENGINE, cylinders=8, banks=((1, 3, 5, 7), (2, 4, 6, 8)))
     rule = pattern(IS_LOW, kinds=("compression",), at=Where.NEIGHBOURS)

@@ -5,7 +5,7 @@ the same point, from the newest earlier sheet with the same gauge; another gauge
 figure compared with, which must lie above 0.
 """
 
-from collections.abc import Sequence
+from collections.abc import Iterator, Sequence
 from fractions import Fraction
 
 from fleetcare.domain.findings import Evidence
@@ -39,10 +39,16 @@ def against_sheet(
 
 
 def change(rule: Rule, shape: Change, one: Measured, values: Sequence[Measured], facts: MeasuredFacts) -> Figure:
-    """Compare a value with the same point before, with the highest of all points then, or with new oil."""
-    then = _new(rule, facts) if shape.since is Since.NEW else before(rule.quantity, one, facts)
-    if shape.since is Since.BEST_BEFORE:
-        then = _highest_with(then, rule.quantity, facts)
+    """Compare a value with the same point before, with the best it ever had, the highest of all points then, or new oil."""
+    match shape.since:
+        case Since.NEW:
+            then = _new(rule, facts)
+        case Since.OWN_BEST:
+            then = _own_best(rule, one, facts)
+        case Since.BEST_BEFORE:
+            then = _highest_with(before(rule.quantity, one, facts), rule.quantity, facts)
+        case _:
+            then = before(rule.quantity, one, facts)
     unit = rule.unit if shape.by is By.DIFFERENCE else then.unit
     label = "new oil" if shape.since is Since.NEW else f"on {then.evidence.on.isoformat()}"
     return _compared(rule, shape.by, one, (one.within(unit), then.within(unit)), unit, (label, (then.evidence,)))
@@ -50,12 +56,25 @@ def change(rule: Rule, shape: Change, one: Measured, values: Sequence[Measured],
 
 def before(quantity: str, one: Measured, facts: MeasuredFacts) -> Measured:
     """Give the same point's value of the newest earlier sheet with the same gauge. Raises CannotTell where there is none."""
-    if not facts.earlier:
-        raise CannotTell("there is no earlier sheet", one.point)
+    then = next(_all_before(quantity, one, facts), None)
+    if then is None:
+        none = "no earlier sheet with the same gauge has this value" if facts.earlier else "there is no earlier sheet"
+        raise CannotTell(none, one.point)
+    return then
+
+
+def _own_best(rule: Rule, one: Measured, facts: MeasuredFacts) -> Measured:
+    """Give the best value of the same point by the same gauge, of equal ones the newest."""
+    newest = before(rule.quantity, one, facts)
+    best = max if rule.low else min
+    return best(_all_before(rule.quantity, one, facts), key=lambda then: then.within(newest.unit).high)
+
+
+def _all_before(quantity: str, one: Measured, facts: MeasuredFacts) -> Iterator[Measured]:
+    """Give the same point's values of the earlier sheets with the same gauge, newest first."""
     for sheet in reversed(facts.earlier):
         if sheet.gauge == facts.sheet.gauge and (then := same_place(values_of(sheet, quantity), one)):
-            return then
-    raise CannotTell("no earlier sheet with the same gauge has this value", one.point)
+            yield then
 
 
 def _highest_with(one: Measured, quantity: str, facts: MeasuredFacts) -> Measured:

@@ -1,7 +1,7 @@
 """What several values say together: every condition of a pattern must hold at one place.
 
-Places are the whole engine, one cylinder, two neighbours (next to each other in a bank, not in the firing order), or
-every cylinder. Conditions look at the signals of the sheet and at what stands of the newest sheets of other kinds, and at
+Places are the whole engine, one cylinder, two neighbours (next to each other in a bank, not in the firing order) beside
+which another was measured and is sound, or every cylinder. Conditions look at the signals of the sheet and at what stands of the newest sheets of other kinds, and at
 the values of all of them. What was not measured holds for no condition, unless that is optional.
 """
 
@@ -66,7 +66,7 @@ def match_patterns(
 def _matches(rule: Rule, pattern: Pattern, scene: _Scene) -> Iterator[Signal]:
     for subject, cylinders in _places(pattern.at, scene.facts):
         found = _hold_all(pattern.conditions, cylinders, scene)
-        if found is None:
+        if found is None or (pattern.at is Where.NEIGHBOURS and not _stand_out(pattern, cylinders, scene)):
             continue
         absorbed = [signal for signal in scene.signals if _absorbs(pattern, signal, cylinders)]
         flagged = {value for match in found for value in match.flagged}
@@ -83,6 +83,14 @@ def _matches(rule: Rule, pattern: Pattern, scene: _Scene) -> Iterator[Signal]:
             steps=tuple(dict.fromkeys(number for match in found for number in match.steps)),
             due_by=due_on(rule, scene.facts),
         )
+
+
+def _stand_out(pattern: Pattern, cylinders: Sequence[int | None], scene: _Scene) -> bool:
+    """Whether another cylinder was measured and is sound: where all that were measured are bad, no two of them stand out."""
+    asked = {name for one in pattern.conditions if one.asks in _FLAGGED for name in one.quantities}
+    measured = {cylinder_of(one.point) for sheet in scene.sheets for name in asked for one in values_of(sheet, name)}
+    bad = {cylinder_of(signal.subject) for signal in scene.signals if signal.rule.quantity in asked}
+    return bool(measured - bad - {*cylinders, None})
 
 
 def may_match(pattern: Pattern, flagged: Set[tuple[str, End | None]], measured: Set[str]) -> bool:

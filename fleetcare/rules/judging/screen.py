@@ -96,6 +96,8 @@ class Screened:
                 return len(seen) < 2 or self._all_within(_compared(seen, shape, rule))
             case Change(Since.BEFORE | Since.BEST_BEFORE):
                 return not facts.earlier or self._all_within(_changed(seen, shape, facts, rule))
+            case Change(Since.OWN_BEST):
+                return not facts.earlier or self._all_within(_fallen(seen, shape, facts, rule))
             case Change(Since.NEW):
                 return not _may_have_new(facts, rule.quantity)
             case Rate(Since.NEW):
@@ -244,6 +246,20 @@ def _changed(
         pairs.append((one.low, best))
     if shape.by is By.DIFFERENCE and any(one.unit != rule.unit for one in seen):
         return None
+    return _against(pairs, shape.by)
+
+
+def _fallen(seen: Sequence[_Seen], shape: Change, facts: MeasuredFacts, rule: Rule) -> list[tuple[float, float]] | None:
+    """Compare plain figures with the best of the same points; None where that is not all there is to it."""
+    past = [one for sheet in facts.earlier if sheet.gauge == facts.sheet.gauge for one in _look(sheet, rule.quantity)]
+    unit = rule.unit if shape.by is By.DIFFERENCE else next((one.unit for one in seen), "")
+    if any(one.low != one.high or one.low <= 0 or one.unit != unit for one in (*seen, *past)):
+        return None
+    best: dict[tuple[str, Phase], float] = {}
+    extreme = max if rule.low else min
+    for one in past:
+        best[one.point, one.phase] = extreme(one.low, best.get((one.point, one.phase), one.low))
+    pairs = [(one.low, best[one.point, one.phase]) for one in seen if (one.point, one.phase) in best]
     return _against(pairs, shape.by)
 
 
