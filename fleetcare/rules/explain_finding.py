@@ -188,7 +188,12 @@ def say_figure(value: Decimal, unit: str) -> str:
 _BASES = {Basis.LESS_NEW: " above new oil", Basis.NAMEPLATE: " of the nameplate", Basis.YEAR: " of the year"}
 _COMPARED = {By.RATIO: "as a share of", By.SHARE: "against", By.DIFFERENCE: "less"}
 _OF_ALL = {"mean": " of all"}
-_BEFORE = {Since.BEFORE: "the last test", Since.BEST_BEFORE: "the highest of the last test", Since.NEW: "new oil"}
+_BEFORE = {
+    Since.BEFORE: "the last test",
+    Since.BEST_BEFORE: "the highest of the last test",
+    Since.OWN_BEST: "its best test",
+    Since.NEW: "new oil",
+}
 
 
 def _each(texts: Iterable[str]) -> list[str]:
