@@ -290,19 +290,3 @@ def test_results_come_after_the_sample(pump: Runner, write: Writer) -> None:
     assert pump("log", "P-01", "--note", "x", "--lab-no", "7").err == (
         "--lab-no says how a sheet was taken; give the sheet with --sheet FILE as well\n"
     )
-
-
-@pytest.mark.parametrize(
-    ("kind", "parts"),
-    [
-        ("compression", ("pressure", "dry or wet", "kgf/cm2")),
-        ("leakdown", ("supply and held", "crankcase")),
-        ("run", ("purpose", "36-month")),
-        ("spot", ("cranking_volts",)),
-        ("oil", ("iso4406", "<1 or ND", "fresh oil", "%")),
-    ],
-)
-def test_help_says_how_a_sheet_is_written(pump: Runner, kind: str, parts: tuple[str, ...]) -> None:
-    said = " ".join(pump("measure", kind, "--help").out.split())
-    for part in (*parts, "quantity,point,phase,value,unit", "- for standard input"):
-        assert part in said
