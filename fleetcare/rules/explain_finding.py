@@ -3,6 +3,7 @@ since when, the source, what to do next, and the caution. The only prose of meas
 screen shows this row, so that they cannot disagree.
 """
 
+import re
 from collections.abc import Iterable
 from decimal import Decimal
 
@@ -63,8 +64,7 @@ def finding_row(finding: Finding) -> FindingRow:
 
 def say_finding(finding: Finding) -> str:
     """Say what a finding is: the cause and where, what leads there, each figure with its limit, and since when."""
-    where = f" at {say_subject(finding.subject)}" if finding.subject else ""
-    lead = f"{finding.cause}{where}: {finding.lead.rule.message}"
+    lead = f"{say_cause(finding.cause, finding.subject)}: {finding.lead.rule.message}"
     figures = _each(say_signal(signal) for signal in finding.signals if signal.measured is not None)
     also = _each(
         signal.rule.cause
@@ -161,6 +161,17 @@ def say_subject(subject: str) -> str:
     return f"cylinders {subject.replace('-', ' and ')}" if "-" in subject else f"cylinder {subject}"
 
 
+def say_cause(cause: str, subject: str) -> str:
+    """Say a cause and where; one that speaks of its cylinder, or of two, takes the numbers: "leaking cylinder 1"."""
+    if not subject:
+        return cause
+    place = say_subject(subject)
+    of_itself = _TWO_CYLINDERS if "-" in subject else _CYLINDER
+    if place.startswith("cylinder") and of_itself.search(cause):
+        return of_itself.sub(place, cause, count=1)
+    return f"{cause} at {place}"
+
+
 def say_unit(rule: Rule, unit: str = "") -> str:
     """Say the unit of a figure of a rule: that of its limits, of a rate with its hours."""
     own = unit or rule.unit
@@ -185,6 +196,7 @@ def say_figure(value: Decimal, unit: str) -> str:
     return f"{plain(shown)}{f' {unit}' if unit else ''}"
 
 
+_CYLINDER, _TWO_CYLINDERS = re.compile(r"\bcylinder\b"), re.compile(r"\b(two cylinders|cylinder)\b")
 _BASES = {Basis.LESS_NEW: " above new oil", Basis.NAMEPLATE: " of the nameplate", Basis.YEAR: " of the year"}
 _COMPARED = {By.RATIO: "as a share of", By.SHARE: "against", By.DIFFERENCE: "less"}
 _OF_ALL = {"mean": " of all"}

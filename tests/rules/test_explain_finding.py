@@ -28,6 +28,7 @@ from fleetcare.domain.rule_book import (
 )
 from fleetcare.rules.explain_finding import (
     finding_row,
+    say_cause,
     say_evidence,
     say_finding,
     say_measured,
@@ -102,6 +103,22 @@ def test_the_working_says_where_it_was_measured_if_the_finding_is_of_more() -> N
     rule = a_rule(kinds=("compression",), quantity="pressure", unit="psi", cause="low", of_engine=True)
     finding = found(facts(pressures("400", "90")), rule)
     assert finding_row(finding).working == ("compression at cylinder 1 400 psi (iron)",)
+
+
+@pytest.mark.parametrize(
+    ("cause", "subject", "said"),
+    [
+        ("leaking cylinder", "1", "leaking cylinder 1"),
+        ("cylinder out of line with the others", "3", "cylinder 3 out of line with the others"),
+        ("head gasket between two cylinders", "2-3", "head gasket between cylinders 2 and 3"),
+        ("head gasket between two cylinders", "2", "head gasket between two cylinders at cylinder 2"),
+        ("leaking valves", "1", "leaking valves at cylinder 1"),
+        ("cylinder too hot", "1E", "cylinder too hot at 1E"),
+        ("all cylinders low", "", "all cylinders low"),
+    ],
+)
+def test_a_cause_that_speaks_of_its_cylinder_takes_the_number(cause: str, subject: str, said: str) -> None:
+    assert say_cause(cause, subject) == said
 
 
 def test_a_cylinder_is_named_and_a_fall_is_below() -> None:
