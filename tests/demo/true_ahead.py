@@ -1,4 +1,4 @@
-"""What is really on its way in the demo fleet though nothing is found yet: stated here and not read off the program."""
+"""What is really on its way in the demo fleet though its limit is not reached yet: stated here and not read off the program."""
 
 from datetime import date
 from decimal import Decimal
