@@ -54,7 +54,7 @@ def explain_longer(line: DueLine, facts: ItemFacts) -> list[tuple[str, str]]:
             "longer drain",
             f"the newest sample flags nothing, and all that can be projected keeps inside its limits until"
             f" {say_dial(advice.until, facts)}, {beyond} h beyond its own point (four times in five; looked at:"
-            f" {', '.join(advice.subjects)}; {advice.subject} may not beyond that{by_log}). Advice only: the line stays"
+            f" {', '.join(advice.subjects)}; beyond that {advice.subject} may not{by_log}). Advice only: the line stays"
             f" where it is until a supervisor takes it, with a reason, to no later than there{never}. Ask the engine's"
             " manual first",
         )

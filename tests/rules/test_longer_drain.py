@@ -173,7 +173,7 @@ def test_the_row_says_it_in_short_and_the_working_on_what_it_rests_and_where_it_
     assert "until 1700 h on the dial, 200 h beyond its own point (four times in five; looked at: Fe iron" in said
     assert "and never beyond 2027-01-01. Ask" in said
     by_log = looked_at(drain(), replace(oil(), is_topped_up_by_log=True))
-    assert "Fe iron may not beyond that, topped up by the log). Advice" in dict(explain(*by_log))["longer drain"]
+    assert "beyond that Fe iron may not, topped up by the log). Advice" in dict(explain(*by_log))["longer drain"]
 
 
 def test_the_bound_of_a_task_is_named_and_one_without_is_not() -> None:
