@@ -6,6 +6,7 @@ from pathlib import Path
 from typing import TYPE_CHECKING, ClassVar
 
 from textual.app import App, SystemCommand
+from textual.events import Event, Key, Paste
 from textual.screen import Screen
 
 from fleetcare.errors import FleetError
@@ -14,6 +15,7 @@ from fleetcare.tui.drafts_kept import KeptDrafts
 from fleetcare.tui.frame import FramedScreen
 from fleetcare.tui.looks import BAY, OFFICE, SIXTEEN
 from fleetcare.tui.screens.due import DueScreen
+from fleetcare.tui.typed_ahead import TypedAhead
 
 if TYPE_CHECKING:
     from collections.abc import Callable
@@ -65,10 +67,18 @@ class FleetApp(App[None]):
         self.trouble: FleetError | None = None
         self.drafts = KeptDrafts(context.drafts_folder)
         self.shift: dict[str, str] = {}  # what is filled in again on the next form, until the screens are left
+        self.typed_ahead = TypedAhead(self, super().on_event)
         for theme in (BAY, OFFICE, SIXTEEN):
             self.register_theme(theme)
         few = self.console.color_system in {None, "standard", "windows"}
         self.theme = (SIXTEEN if few or self.no_color else BAY).name
+
+    async def on_event(self, event: Event) -> None:
+        """Deal with keys one by one, so that those typed ahead land where they were aimed at."""
+        if isinstance(event, (Key, Paste)) and not event.is_forwarded:
+            await self.typed_ahead.take(event)
+        else:
+            await super().on_event(event)
 
     def check_action(self, action: str, parameters: tuple[object, ...]) -> bool | None:
         """Let no letter do anything where letters are typed."""

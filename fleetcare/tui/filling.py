@@ -199,6 +199,7 @@ class FillingScreen(LoadingScreen):
 
     def say_wrong(self, name: str, error: FleetError) -> None:
         """Say an error beside the field of a name, else the one its words tell; one of no field at the foot."""
+        self.fleet_app.typed_ahead.forget()  # it was meant for what comes after the form
         places: dict[str, list[str]] = {}
         for one in error.errors if isinstance(error, Refusals) else (error,):
             place = name or self.form.field_of(one, self.values)

@@ -137,6 +137,11 @@ class FramedScreen(Screen[Any]):
         """Where something can be said."""
         return self.query_one(Notice)
 
+    @property
+    def holds_keys(self) -> bool:
+        """Whether what is typed now waits: the screen stores something, or has nothing yet to type it in."""
+        return False
+
     def action_hush(self) -> None:
         """Take away what was said."""
         self.notice.say()

@@ -30,6 +30,12 @@ class FormScreen(FillingScreen, StoringScreen):
         self._said: Said = {}
         self._doubted = ""
 
+    @property
+    def holds_keys(self) -> bool:
+        """What is typed waits for what its fields open with; while it is stored it is for the sheet that may follow."""
+        is_storing = self._draft is not None and not self.query_one(Question).display
+        return is_storing or (self.facts is None and not self._has_failed)
+
     def on_mount(self) -> None:
         """Fill in what was kept; an entry goes under the key it was kept with, else under a new one."""
         super().on_mount()
@@ -70,6 +76,7 @@ class FormScreen(FillingScreen, StoringScreen):
         self._leave(message.sentences)
 
     def _leave(self, sentences: Sequence[str]) -> None:
+        self.fleet_app.typed_ahead.forget()  # it was meant for a sheet that was not wanted
         self.finish()
         for name, row in self.rows.items():
             if row.field.kept_for_shift and row.value.strip():

@@ -66,6 +66,11 @@ class SheetScreen(StoringScreen):
         yield Question()
 
     @property
+    def holds_keys(self) -> bool:
+        """What is typed waits for cells, and while it is stored."""
+        return self._is_storing or (self._opened is None and not self._has_failed)
+
+    @property
     def grid(self) -> Grid:
         """The cells."""
         return self.query_one(Grid)
@@ -235,6 +240,7 @@ class SheetScreen(StoringScreen):
     def on_storing_screen_not_stored(self, message: StoringScreen.NotStored) -> None:
         """Say why, the cursor on the cell it is about."""
         self._is_storing = False
+        self.fleet_app.typed_ahead.forget()
         self._said.clear()
         error = message.error
         first = error.errors[0] if isinstance(error, Refusals) else error

@@ -1,7 +1,7 @@
 """A doubt said, and the answers to it, each one key."""
 
 from collections.abc import Sequence
-from typing import Any, ClassVar
+from typing import TYPE_CHECKING, Any, ClassVar, cast
 
 from textual import events
 from textual.binding import Binding, BindingType
@@ -11,6 +11,9 @@ from textual.widget import Widget
 
 from fleetcare.tui.forms.base import Answer
 from fleetcare.tui.widgets.text import fit, wrap
+
+if TYPE_CHECKING:
+    from fleetcare.tui.app import FleetApp
 
 CORRECT_IT = Answer("c", "correct it (Esc)")
 
@@ -33,7 +36,8 @@ class Question(Widget, can_focus=True):
         self._answers: Sequence[Answer] = ()
 
     def ask(self, doubt: str, answers: Sequence[Answer]) -> None:
-        """Say a doubt and take the keys."""
+        """Say a doubt and take the keys, those typed from now on: what was typed ahead is no answer to it."""
+        cast("FleetApp", self.app).typed_ahead.forget()
         self._doubt, self._answers = doubt, (*answers, CORRECT_IT)
         self.display = True
         self.refresh(layout=True)
