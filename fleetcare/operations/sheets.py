@@ -50,23 +50,24 @@ AnySheet = JudgedSheet | TakenSheet
 
 
 def take_sheet(
-    connection: "Connection", item: FoundItem, typed: SheetOptions, on: date, likely: frozenset[str] = frozenset()
+    connection: "Connection", item: FoundItem, typed: SheetOptions, on: date, was: Sheet | None = None
 ) -> AnySheet | None:
     """Read a typed sheet of an engine, and judge its lash by the spec in force on its day; None where none was typed.
 
-    Where nobody says its kind it may well be one of the `likely` ones. Nothing is stored. Raises Refusals with everything
-    that is wrong with it.
+    Where it takes the place of one that `was`, it is likely of that kind, and keeps what that was taken with where nothing
+    else is said. Nothing is stored. Raises Refusals with everything that is wrong with it.
     """
     if typed.sheet is None:
         return None
-    kind = typed.kind or _kind_of(connection, item, typed, typed.sheet, on, likely)
+    kind = typed.kind or _kind_of(connection, item, typed, typed.sheet, on, was.kind if was else "")
+    empty = replace(was, on=on, values=()) if was is not None and was.kind == kind else Sheet(0, kind, on, ())
     if kind == LASH:
         form = open_form(connection, item, on)
         values = read_values(form, typed.sheet, sure=typed.sure)
-        return judge(form, _restated(Sheet(0, LASH, on, values), typed))
+        return judge(form, _restated(replace(empty, values=values), typed))
     measures = measure_form(connection, item, kind, on)
     values = read_measures(measures, typed.sheet, sure=typed.sure)
-    return TakenSheet(measures, _restated(Sheet(0, kind, on, values), typed))
+    return TakenSheet(measures, _restated(replace(empty, values=values), typed))
 
 
 def check_received(typed: SheetOptions, on: date, today: date) -> None:
@@ -83,21 +84,22 @@ def check_received(typed: SheetOptions, on: date, today: date) -> None:
 
 
 def _restated(sheet: Sheet, typed: SheetOptions) -> Sheet:
-    """Give a sheet with what was said of it now; what was not said stays as it was."""
+    """Give a sheet with what was said of it now, if only that there is none; what was not said stays as it was."""
+    told = typed.model_fields_set
     return replace(
         sheet,
-        condition=typed.when or sheet.condition,
-        gauge=typed.gauge or sheet.gauge,
-        lab_number=typed.lab_no or sheet.lab_number,
-        received_on=typed.received or sheet.received_on,
+        condition=(typed.when or "") if "when" in told else sheet.condition,
+        gauge=(typed.gauge or "") if "gauge" in told else sheet.gauge,
+        lab_number=(typed.lab_no or "") if "lab_no" in told else sheet.lab_number,
+        received_on=typed.received if "received" in told else sheet.received_on,
     )
 
 
 def _kind_of(
-    connection: "Connection", item: FoundItem, typed: SheetOptions, sheet: SheetIn, on: date, likely: frozenset[str]
+    connection: "Connection", item: FoundItem, typed: SheetOptions, sheet: SheetIn, on: date, likely: str
 ) -> str:
     """Give the kind of a sheet: a likely one, or one a task of its entry needs, else that most of its rows belong to."""
-    wanted = likely | needed_sheets(connection, item, cast("tuple[str, ...]", getattr(typed, "task", ())), on)
+    wanted = {likely} | needed_sheets(connection, item, cast("tuple[str, ...]", getattr(typed, "task", ())), on)
     quantities = [row.cells.get("quantity", "").casefold() for row in sheet.rows]
     known = {LASH: {LASH, SHIM}} | {kind.name: {one.casefold() for one in kind.quantities} for kind in KINDS.values()}
     rows = {kind: sum(quantity in names for quantity in quantities) for kind, names in known.items()}
@@ -173,21 +175,21 @@ def known_entry(session: "Session", item: FoundItem, sheet: Sheet) -> int | None
 
 
 def carried_sheet(session: "Session", item: FoundItem, old: LogEntry, typed: SheetOptions, on: date) -> AnySheet | None:
-    """Give the sheet a correction leaves an entry with: the one typed, else its own with what was restated of it.
+    """Give the sheet a correction leaves an entry with: its own, with what was restated of its values and of how it was taken.
 
     Refuses to restate what a sheet was taken with where there is none.
     """
     connection = session.connection()
-    rows = session.scalars(select(SheetTable).where(col(SheetTable.entry_id) == old.id)).all()
-    restated = take_sheet(connection, item, typed, on, frozenset(row.kind for row in rows))
-    if restated is None and not rows and (typed.when or typed.gauge or typed.received or typed.lab_no):
-        raise Refused(f"entry {old.id} has no sheet", "give one with --sheet FILE")
-    if restated is not None or not rows:
-        return restated
-    (row,) = rows
+    row = session.scalars(select(SheetTable).where(col(SheetTable.entry_id) == old.id)).one_or_none()
+    if row is None:
+        if typed.sheet is None and (typed.when or typed.gauge or typed.received or typed.lab_no):
+            raise Refused(f"entry {old.id} has no sheet", "give one with --sheet FILE")
+        return take_sheet(connection, item, typed, on)
     values = load_values(connection, [row.id]).get(row.id, ())
-    stored = Sheet(0, row.kind, on, values, row.conditions, row.gauge, "", "", row.lab_number, row.received_on)
-    kept = _restated(stored, typed)
+    was = Sheet(0, row.kind, on, values, row.conditions, row.gauge, "", "", row.lab_number, row.received_on)
+    if typed.sheet is not None:
+        return take_sheet(connection, item, typed, on, was)
+    kept = _restated(was, typed)
     if kept.kind == LASH:
         return judge(lash_form(connection, item, on), kept)
     return TakenSheet(measure_form(connection, item, kept.kind, on), kept)

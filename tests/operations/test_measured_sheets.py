@@ -125,6 +125,23 @@ def test_a_correction_may_restate_the_values(yard: Context) -> None:
     assert (restated.entry, restated.kind, len(restated.values)) == (2, "compression", 2)
 
 
+def test_values_restated_stay_with_the_gauge_and_days_they_were_taken_with(yard: Context) -> None:
+    take(yard, "oil", gauge="Fen Lab", lab_no="4711", received="2026-04-28", on="2026-04-20")
+    correct(yard, 1, sheet=sheet("Fe,,,54,ppm"))
+    (found,) = loaded(yard).sheets
+    assert (found.entry, found.gauge, found.received_on) == (2, "Fen Lab", date(2026, 4, 28))
+    with yard.read() as connection:
+        kept = fetch(connection, "select lab_number from sheet order by id")
+    assert [number for (number,) in kept] == ["4711", "4711"]
+
+
+def test_values_restated_as_those_of_another_kind_keep_nothing_of_the_gauge(yard: Context) -> None:
+    take(yard, "compression", gauge="G1")
+    correct(yard, 1, sheet=sheet(*LEAKS), kind="leakdown")
+    (found,) = loaded(yard).sheets
+    assert (found.kind, found.gauge) == ("leakdown", "")
+
+
 def test_what_a_sheet_was_taken_with_cannot_be_restated_where_there_is_none(yard: Context) -> None:
     log(yard, "2026-05-01", note="looked at")
     assert refused(yard, lambda ctx: correct(ctx, 1, lab_no="7")) == [

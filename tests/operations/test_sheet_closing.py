@@ -180,6 +180,18 @@ def test_a_sheet_can_be_restated_and_both_stay_readable(yard: Context) -> None:
     assert not take(yard, *FOUND_IN).is_new  # that file was brought in, and corrected since
 
 
+def test_gaps_restated_are_those_of_the_same_gauge_and_of_an_engine_as_cold(yard: Context) -> None:
+    take(yard, *ONE_OUT, when="cold", gauge="F1")
+    correct(yard, 1, sheet=sheet(*FOUND_IN))
+    judged = newest(yard)
+    assert judged is not None
+    assert (judged.sheet.condition, judged.sheet.gauge) == ("cold", "F1")
+    correct(yard, 2, sheet=sheet(*FOUND_IN[:3]), when="hot", gauge="F2")
+    judged = newest(yard)
+    assert judged is not None
+    assert (judged.sheet.condition, judged.sheet.gauge) == ("hot", "F2")
+
+
 def test_a_restated_sheet_must_close_the_work_again(yard: Context) -> None:
     do(yard, "Lash")
     (line,) = refused(yard, lambda ctx: correct(ctx, 1, sheet=sheet(*HALF)))

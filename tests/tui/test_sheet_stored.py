@@ -8,6 +8,7 @@ from fleetcare.tui.forms.base import Subject
 from fleetcare.tui.screens.due import DueScreen
 from fleetcare.tui.screens.item import ItemScreen
 from fleetcare.tui.screens.sheet import SheetScreen
+from fleetcare.tui.sheets.measured import GAUGE
 from fleetcare.tui.writing import WritingScreen
 from tests.tui.conftest import Opened, line_with, press
 from tests.tui.forms import form_with
@@ -114,6 +115,28 @@ async def test_a_stored_sheet_is_opened_from_the_history_and_mended(opened: Open
     now = "select value from sheet_value v join sheet s on s.id = v.sheet_id where s.entry_id = 2 order by v.id"
     assert rows(bench, now) == [("0.25",), ("0.39",), ("0.45",)]
     assert rows(bench, "select count(*) from sheet_value where sheet_id = 1") == [(3,)]
+
+
+async def test_a_stored_sheet_keeps_its_gauge_until_that_is_emptied(opened: Opened, bench: Context) -> None:
+    async with opened(size=SMALL, context=bench) as pilot:
+        await form_with(pilot, "compression", Subject("B-1"), {"at": "1000", "by": "Fenn"})
+        await press(pilot, "ctrl+s")
+        screen = pilot.app.screen
+        assert isinstance(screen, SheetScreen)
+        screen.grid.go(GAUGE)
+        await press(pilot, "G", "1", "enter", *"2650", "ctrl+s")
+        for text in ("G1", ""):
+            pilot.app.push_screen(ItemScreen("B-1"))
+            await press(pilot, "h", "s")
+            screen = pilot.app.screen
+            assert isinstance(screen, SheetScreen)
+            screen.grid.go(CellKey("pressure", "1", Phase.DRY))
+            await press(pilot, *"2700")
+            if not text:
+                screen.grid.go(GAUGE)
+                await press(pilot, "delete")
+            await press(pilot, "ctrl+s", "escape")
+    assert rows(bench, "select gauge from sheet order by id") == [("G1",), ("G1",), ("",)]
 
 
 async def test_a_sheet_mended_to_close_nothing_leaves_its_task_open(opened: Opened, bench: Context) -> None:

@@ -80,14 +80,16 @@ class PartsBar(Widget):
 
 
 def mend_sheet(entry: int, today: "date", session: "Session", came: "Mapping[str, object]") -> "Entered":
-    """Correct the sheet of an entry."""
+    """Correct the sheet of an entry; what it was taken with is as it stands there now, emptied or not."""
     from fleetcare.drafts.work import CorrectionDraft
     from fleetcare.operations.entering import enter_correction
 
     given = {name: value for name, value in came.items() if value is not None}
     if given.pop("leave_open", False):
         given["part_done"] = True
-    return enter_correction(session, CorrectionDraft.model_validate({"entry": entry, **given}), today)
+    emptied = {name: None for name, value in came.items() if value is None}
+    draft = CorrectionDraft.model_validate({"entry": entry, **given}).model_copy(update=emptied)
+    return enter_correction(session, draft, today)
 
 
 def plot_of(curve: "LifeCurve", today: "date") -> Plot:
