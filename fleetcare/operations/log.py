@@ -62,7 +62,7 @@ def record_work(session: "Session", draft: LogDraft, today: date) -> Logged:
 
     Refuses what was stored before under the import key of the draft.
     """
-    item = find_item(session.connection(), draft.tag)
+    item = find_item(session.connection(), draft.tag, on=draft.on)
     _refuse_known(session, draft)
     refuse_future(draft.on, today)
     check_received(draft, draft.on, today)

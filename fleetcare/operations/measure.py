@@ -34,7 +34,7 @@ def measure(session: "Session", draft: LogDraft, today: date) -> Measured:
     """
     refuse_future(draft.on, today)
     check_received(draft, draft.on, today)
-    item = find_item(session.connection(), draft.tag)
+    item = find_item(session.connection(), draft.tag, on=draft.on)
     sheet = _taken(session, item, draft)
     known = known_entry(session, item, sheet)
     if known is not None:
