@@ -16,6 +16,7 @@ if TYPE_CHECKING:
 
     from sqlalchemy import Connection
 
+    from fleetcare.operations.due import Filters
     from fleetcare.operations.sheet_report import SheetReport
     from fleetcare.operations.show import ItemPage
     from fleetcare.rules.due.row import DueRow
@@ -57,7 +58,7 @@ def _due(given: argparse.Namespace) -> None:
     )
     with context.read() as connection:
         rows = due_rows(connection, context.today(), filters, is_future=context.is_future)
-        wanting = _wanting(connection, context.today()) if given.format == "table" else ""
+        wanting = _wanting(connection, context.today(), filters) if given.format == "table" else ""
     text = f"{_RENDER[given.format](rows)}{wanting}"
     if given.format == "table" and given.out is None:
         output.say(text.rstrip("\n"))
@@ -67,11 +68,12 @@ def _due(given: argparse.Namespace) -> None:
             output.say(f"{len(rows)} {'line' if len(rows) == 1 else 'lines'} written to {given.out}")
 
 
-def _wanting(connection: "Connection", on: "date") -> str:
-    """Say which findings of the shop want an answer, in a closing line for people."""
+def _wanting(connection: "Connection", on: "date", filters: "Filters") -> str:
+    """Say which findings of the shop, or of its one engine or site, want an answer, in a closing line for people."""
+    from fleetcare.operations.due import tags_within
     from fleetcare.operations.open_findings import open_findings, say_open
 
-    said = say_open(open_findings(connection, on))
+    said = say_open(open_findings(connection, on, tags=tags_within(connection, on, filters)))
     return f"\n{said}; see fleetcare findings --open.\n" if said else ""
 
 

@@ -81,6 +81,16 @@ def due_lines(
     return [(line, found[line.item.id]) for line in in_order(lines)]
 
 
+def tags_within(connection: "Connection", on: date, wanted: Filters) -> frozenset[str] | None:
+    """Give the tags of the one engine or the site the due list is narrowed to; None where it is that of the whole shop."""
+    if wanted.engine is not None:
+        return frozenset({find_item(connection, wanted.engine, on=on).tag})
+    if wanted.site is None:
+        return None
+    site = _known_site(connection, wanted.site)
+    return frozenset(facts.item.tag for facts in item_facts(connection, on) if facts.item.site.casefold() == site)
+
+
 @contextmanager
 def watch_moves(session: "Session", tag: str, on: date) -> Iterator[Moves]:
     """Compare the lines of an item, and of all that share its meters, before and after what is done inside."""

@@ -1,6 +1,6 @@
 """How many findings want an answer: what a morning begins with, beside what is due."""
 
-from collections.abc import Mapping, Sequence
+from collections.abc import Collection, Mapping, Sequence
 from dataclasses import dataclass
 from datetime import date
 from typing import TYPE_CHECKING
@@ -30,10 +30,12 @@ def is_measured(connection: "Connection") -> bool:
     return bool(fetch(connection, "select 1 from sheet limit 1"))
 
 
-def open_findings(connection: "Connection", on: date, progress: "Progress | None" = None) -> OpenFindings | None:
+def open_findings(
+    connection: "Connection", on: date, progress: "Progress | None" = None, tags: Collection[str] | None = None
+) -> OpenFindings | None:
     """Count the findings of a day that want an answer; None where the shop's rules do not let them be told.
 
-    Where engines have to be judged anew `progress` is told. What reads and judges findings is loaded only as far as there
+    With `tags` those of these engines alone. Where engines have to be judged anew `progress` is told. What reads and judges findings is loaded only as far as there
     is something to read, or to judge anew.
     """
     if not is_measured(connection):
@@ -51,7 +53,7 @@ def open_findings(connection: "Connection", on: date, progress: "Progress | None
         (tag, lived.row.severity)
         for item, tag in engines_in_use(connection, on).items()
         for lived in live(lives.get(item, ()), answers.get(item, ()), on)
-        if lived.state is FindingState.OPEN
+        if lived.state is FindingState.OPEN and (tags is None or tag in tags)
     ]
     alarmed = [tag for tag, severity in found if severity == Severity.ALARM]
     return OpenFindings(len(alarmed), len(found) - len(alarmed), frozenset(alarmed))

@@ -226,6 +226,15 @@ def test_a_wrong_answer_is_refused_in_one_line_and_changes_nothing(
     assert states(yard) == before
 
 
+def test_the_due_table_of_one_engine_or_site_ends_with_its_own_findings(yard: Runner) -> None:
+    yard("engine", "add", "Q-01", "--meter", "hours", "--site", "Moor Road")
+    ends = "2 findings want an answer: 1 alarm, 1 alert; see fleetcare findings --open."
+    assert yard("due", "--engine", "p-01").out.splitlines()[-1] == ends
+    assert yard("due", "--engine", "Q-01").out.splitlines()[-1] == GENERAL
+    assert yard("due", "--site", "north sluice").out.splitlines()[-1] == ends
+    assert yard("due", "--site", "Moor Road").out.splitlines()[-1] == GENERAL
+
+
 def test_a_sheet_names_its_finding_as_the_list_does(yard: Runner) -> None:
     told = json.loads(yard("measure", "spot", "P-01", "hotter.csv", "--on", "2026-04-20", "--json").out)
     assert [(one["id"], one["state"]) for one in told["findings"]] == [(HOT, "open")]
