@@ -4,12 +4,13 @@ from collections.abc import Iterable, Sequence
 from dataclasses import dataclass
 from decimal import Decimal
 
-from fleetcare.domain.findings import Evidence, NotJudged, Signal
+from fleetcare.domain.findings import Evidence, Signal
 from fleetcare.domain.quantities import plain
-from fleetcare.domain.rule_book import Bounds, Pattern, Rule, Severity
+from fleetcare.domain.rule_book import Bounds, Pattern, Rule, Severity, Statistical
 from fleetcare.domain.sheets import NOT_DETECTED, Phase, Verdict
-from fleetcare.rules.explain_finding import say_against, say_measured, say_unit
+from fleetcare.rules.explain_finding import say_against, say_figure, say_measured, say_unit
 from fleetcare.rules.judging.judge import JudgedSheet
+from fleetcare.rules.judging.spans import decimal
 from fleetcare.rules.judging.values import title
 
 _NO_RULE = "no rule is about it"
@@ -70,7 +71,7 @@ def _row(value: Evidence, verdict: Verdict, judged: JudgedSheet) -> MeasuredRow:
         value=value.value,
         unit=value.unit,
         verdict=verdict,
-        why=_why(value, signal, rule, judged.not_judged),
+        why=_why(value, signal, rule, judged),
         rule=rule.id if rule else "",
         measured=signal.measured if signal else None,
         limit=signal.limit if signal else None,
@@ -80,17 +81,17 @@ def _row(value: Evidence, verdict: Verdict, judged: JudgedSheet) -> MeasuredRow:
     )
 
 
-def _why(value: Evidence, signal: Signal | None, rule: Rule | None, silent: Sequence[NotJudged]) -> str:
+def _why(value: Evidence, signal: Signal | None, rule: Rule | None, judged: JudgedSheet) -> str:
     if signal is not None:
         return say_past(signal)
     if rule is not None:
-        return say_limits(rule)
+        return say_within(rule, value, judged)
     if value.phase in _ASIDE:
         return _ASIDE[value.phase]
     if value.quantity in _WORKED_WITH:
         return _WORKED_WITH[value.quantity]
     judged_as = _JUDGED_AS.get(value.quantity, value.quantity)
-    whys = (one.why for one in silent if one.rule.quantity == judged_as and one.subject in {value.point, ""})
+    whys = (one.why for one in judged.not_judged if one.rule.quantity == judged_as and one.subject in {value.point, ""})
     return "; ".join(dict.fromkeys(whys)) or _NO_RULE
 
 
@@ -102,11 +103,27 @@ def say_past(signal: Signal) -> str:
     return say_against(signal) if is_plain else f"{say_measured(signal.rule)} {say_against(signal)}"
 
 
+def say_within(rule: Rule, value: Evidence, judged: JudgedSheet) -> str:
+    """Say the limits a value lies within, and what was worked out of it: "compression as a share of the highest 96.3 %, from 75 %".
+
+    Limits of samples are their own, so no figure stands beside those of their rule.
+    """
+    span = judged.worked.get((rule.id, value))
+    is_plain = rule.shape == Bounds() and rule.quantity == value.quantity
+    if span is None or not span.is_known or is_plain or isinstance(rule.shape, Statistical):
+        return say_limits(rule)
+    return f"{say_measured(rule)} {say_figure(decimal(span.low), say_unit(rule))}, {_say_ends(rule)}"
+
+
 def say_limits(rule: Rule) -> str:
     """Say the first limits of a rule a value lies within: "iron up to 100 ppm", "oil pressure from 100 kPa"."""
+    return f"{say_measured(rule)} {_say_ends(rule)}"
+
+
+def _say_ends(rule: Rule) -> str:
     low, high = (end.alert or end.alarm for end in (rule.low, rule.high))
-    ends = (low and f"from {plain(low.value)}", high and f"up to {plain(high.value)}")
-    return " ".join(part for part in (say_measured(rule), *ends, say_unit(rule)) if part)
+    ends = (low and f"from {plain(low.value)}", high and f"up to {plain(high.value)}", say_unit(rule))
+    return " ".join(part for part in ends if part)
 
 
 def _held_by(value: Evidence, judged: JudgedSheet) -> Rule | None:

@@ -5,7 +5,7 @@ from decimal import Decimal
 import pytest
 
 from fleetcare.domain.measured import MeasuredSheet
-from fleetcare.domain.rule_book import Limits, Rule
+from fleetcare.domain.rule_book import Basis, Bounds, Limits, Rule
 from fleetcare.domain.sheets import SheetValue
 from fleetcare.rulebook.rules import rule_book
 from fleetcare.rules.explain_measured import MeasuredRow, measured_rows, say_limits
@@ -89,7 +89,16 @@ def test_what_is_compared_with_another_value_is_named() -> None:
     low = rows(pressures("400", "280"))[1]
     assert low.verdict == "alarm"
     assert low.why.startswith("compression as a share of the highest 70 %, 5 % below the alarm limit of 75 %")
-    assert rows(pressures("400", "390"))[0].why == "compression as a share of the highest from 75 %"
+    assert [one.why for one in rows(pressures("400", "390"))] == [
+        "compression as a share of the highest 100 %, from 75 %",
+        "compression as a share of the highest 97.5 %, from 75 %",
+    ]
+
+
+def test_what_a_bound_is_worked_out_to_has_no_figure_of_its_own() -> None:
+    above_new = a_rule(shape=Bounds(Basis.LESS_NEW))
+    assert row(value("Fe", "50"), above_new).why == "iron above new oil 50 ppm, up to 100 ppm"
+    assert row(value("Fe", "<50"), above_new).why == "iron above new oil up to 100 ppm"
 
 
 def test_the_leak_of_a_pair_stands_with_the_pressure_held() -> None:
@@ -98,7 +107,7 @@ def test_the_leak_of_a_pair_stands_with_the_pressure_held() -> None:
     assert (held.verdict, held.rule, held.measured, held.limit_unit) == ("alarm", "leakdown-bands", Decimal(30), "%")
     tight = (value("supply", "100", "psi", "1"), value("held", "95", "psi", "1"))
     held = next(one for one in rows(a_sheet(*tight, kind="leakdown")) if one.quantity == "held")
-    assert (held.verdict, held.why) == ("in", "leak-down up to 10 %")
+    assert (held.verdict, held.why) == ("in", "leak-down 5 %, up to 10 %")
 
 
 def test_a_value_only_a_pattern_flags_says_what_that_means() -> None:

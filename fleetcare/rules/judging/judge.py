@@ -4,7 +4,7 @@ The rules are those for the engine (`applies.rules_for`). A rule whose inputs ar
 of the values on the sheet, and their units, change nothing.
 """
 
-from collections.abc import Iterable, Iterator, Sequence
+from collections.abc import Iterable, Iterator, Mapping, Sequence
 from dataclasses import dataclass, replace
 from datetime import date
 from typing import assert_never
@@ -32,6 +32,7 @@ from fleetcare.rules.judging.facts import CannotTell, Figure, MeasuredFacts
 from fleetcare.rules.judging.hold import hold
 from fleetcare.rules.judging.lash import lash_signals
 from fleetcare.rules.judging.patterns import match_patterns
+from fleetcare.rules.judging.spans import Span
 from fleetcare.rules.judging.values import Measured, by_number, contradictions, evidence_of, judged_phases, values_of
 from fleetcare.rules.judging.words import says, unsaid
 
@@ -40,22 +41,28 @@ from fleetcare.rules.judging.words import says, unsaid
 class JudgedSheet:
     """What rules make of a sheet: signals, why rules are silent, and a verdict for each value, as the engine stands.
 
-    `within` has each rule that held a value to be within its limits, with the value.
+    `within` has each rule that held a value to be within its limits, with the value; `worked` what that rule, by its id,
+    worked out of it.
     """
 
     signals: tuple[Signal, ...]
     not_judged: tuple[NotJudged, ...]
     verdicts: tuple[tuple[Evidence, Verdict], ...]
     within: tuple[tuple[Rule, Evidence], ...]
+    worked: Mapping[tuple[str, Evidence], Span]
 
 
 @dataclass(frozen=True, slots=True)
 class Told:
-    """What single rules say of a sheet: signals, the values each holds to be within its limits, and why some are silent."""
+    """What single rules say of a sheet: signals, the values each holds to be within its limits, and why some are silent.
+
+    `worked` has the figure of a value within, by the id of its rule, where it was worked out.
+    """
 
     signals: tuple[Signal, ...]
     within: tuple[tuple[Rule, Evidence], ...]
     silent: tuple[NotJudged, ...]
+    worked: Mapping[tuple[str, Evidence], Span]
 
 
 def judge(rules: Iterable[Rule], facts: MeasuredFacts) -> tuple[Signal, ...]:
@@ -77,7 +84,11 @@ def judge_sheet(rules: Iterable[Rule], facts: MeasuredFacts) -> JudgedSheet:
     signals += match_patterns(patterns, facts, signals)
     within = {value for _, value in told.within}
     return JudgedSheet(
-        tuple(signals), tuple(dict.fromkeys(told.silent)), _verdicts(facts, signals, within), told.within
+        signals=tuple(signals),
+        not_judged=tuple(dict.fromkeys(told.silent)),
+        verdicts=_verdicts(facts, signals, within),
+        within=told.within,
+        worked=told.worked,
     )
 
 
@@ -86,19 +97,23 @@ def tell(rules: Iterable[Rule], facts: MeasuredFacts) -> Told:
     signals: list[Signal] = []
     within: list[tuple[Rule, Evidence]] = []
     silent: list[NotJudged] = []
+    worked: dict[tuple[str, Evidence], Span] = {}
     for rule, shape in [(rule, rule.shape) for rule in rules if not isinstance(rule.shape, Pattern)]:
         for told in _tell(rule, shape, facts):
             if isinstance(told, Signal):
                 signals.append(told)
             elif isinstance(told, NotJudged):
                 silent.append(told)
+            elif isinstance(told, Figure):
+                within.append((rule, told.flagged))
+                worked[rule.id, told.flagged] = told.span
             else:
                 within.append((rule, told))
-    return Told(tuple(signals), tuple(within), tuple(silent))
+    return Told(tuple(signals), tuple(within), tuple(silent), worked)
 
 
-def _tell(rule: Rule, shape: SingleShape, facts: MeasuredFacts) -> Iterator[Signal | NotJudged | Evidence]:
-    """Give for each value of a rule its signal, why there is none to tell, or the value itself where it is within."""
+def _tell(rule: Rule, shape: SingleShape, facts: MeasuredFacts) -> Iterator[Signal | NotJudged | Evidence | Figure]:
+    """Give for each value of a rule its signal, why there is none to tell, or what is within: its figure, of a gap the value."""
     for quantity in unsaid(facts.sheet, rule):
         yield NotJudged(rule, "", f"the sheet does not say {quantity.replace('_', ' ')}")
     if not says(facts.sheet, rule):
@@ -122,7 +137,7 @@ def _tell(rule: Rule, shape: SingleShape, facts: MeasuredFacts) -> Iterator[Sign
         except CannotTell as why:
             yield NotJudged(rule, why.subject, why.why)
         else:
-            yield hold(rule, figure, facts) or figure.flagged
+            yield hold(rule, figure, facts) or figure
 
 
 def _figure(rule: Rule, shape: ValueShape, one: Measured, values: Sequence[Measured], facts: MeasuredFacts) -> Figure:
