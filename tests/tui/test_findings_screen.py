@@ -87,6 +87,13 @@ async def test_every_rule_shows_its_limits_its_source_and_whom_it_judges(opened:
             assert [line for line in seen(pilot) if line.strip().startswith(label)], label
 
 
+async def test_limits_of_rules_keep_their_units_on_a_small_screen(opened: Opened, found: Context) -> None:
+    async with opened("4", context=found) as pilot:
+        assert line_with(pilot, "compression-r70f-least", "alarm below 690 kPa")
+        await press(pilot, "slash", *"compression-past", "enter")
+        assert line_with(pilot, "alert below -15 %, alarm below -25 %")
+
+
 @pytest.mark.parametrize("view", ["3", "4"])
 async def test_a_view_of_measurements_says_small_and_plainly_that_there_is_no_file(
     opened: Opened, tmp_path: Path, view: str

@@ -31,9 +31,9 @@ def _engines(row: "RuleRow") -> str:
 
 
 COLUMNS: tuple[Column["RuleRow"], ...] = (
-    Column("RULE", lambda row: Cell(row.id, "strong" if row.state == _IN_FORCE else "quiet"), 20, 34),
+    Column("RULE", lambda row: Cell(row.id, "strong" if row.state == _IN_FORCE else "quiet"), 22, 34),
     Column("JUDGES", lambda row: row.judges, 16, 40),
-    Column("LIMITS", lambda row: row.limits, 18, 44),
+    Column("LIMITS", lambda row: row.limits, 23, 44),
     Column("ENGINES", _engines, 7, 7, to_right=True, drop=1),
     Column("STATE", lambda row: "" if row.state == _IN_FORCE else row.state, 12, 20, drop=2),
 )
@@ -87,8 +87,8 @@ class RulesScreen(SearchingScreen):
         """Say what is under the cursor in words."""
         row: RuleRow | None = self.query_one(LongList).current
         if row is not None:
-            origin = "; ".join(part for part in (row.state, row.origin, row.because) if part)
-            self.query_one(Detail).tell((f"{row.id}: {row.cause}", "strong"), (origin, "quiet"), (row.source, ""))
+            told = "; ".join(part for part in (row.state, row.origin, row.because, row.limits) if part)
+            self.query_one(Detail).tell((f"{row.id}: {row.cause}", "strong"), (told, "quiet"), (row.source, ""))
 
     def on_long_list_opened(self) -> None:
         """Open a rule with the mouse."""
