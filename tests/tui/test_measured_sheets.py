@@ -12,6 +12,7 @@ from fleetcare.tui.forms.base import Subject
 from fleetcare.tui.screens.due import DueScreen
 from fleetcare.tui.screens.item import ItemScreen
 from fleetcare.tui.screens.sheet import SheetScreen
+from fleetcare.tui.widgets.question import Question
 from tests.tui.conftest import Opened, line_with, press, seen, type_in
 from tests.tui.forms import form_with, stored
 from tests.tui.sheets import SMALL, enter_all, rows, said
@@ -201,3 +202,16 @@ async def test_a_rate_is_judged_while_typing_by_the_figure_typed_before(
         await enter_all(pilot, "25", "25", "25", "25", "25")
         await press(pilot, "ctrl+s")
         assert "Found: alarm falling compression, cylinder 1; 3 shows its working." in said(pilot)
+
+
+async def test_a_question_goes_when_the_cell_it_is_about_changes(opened: Opened, bench: Context) -> None:
+    async with opened(size=SMALL, context=bench) as pilot:
+        screen = await sheet_on(pilot, COMPRESSION)
+        await press(pilot, *"26.5", "enter")
+        assert screen.query_one(Question).display
+        screen.grid.focus()  # as the mouse does
+        await press(pilot, *"27")
+        assert not screen.query_one(Question).display
+        assert screen.texts[CellKey("pressure", "1", Phase.DRY)] == "27"
+        await press(pilot, "enter", "m")
+        assert screen.texts[CellKey("pressure", "1", Phase.DRY)] == "27 bar"

@@ -116,8 +116,9 @@ class SheetScreen(StoringScreen):
             self.grid.go(next(empty, found.order[0]))
 
     def cell_typed(self) -> None:
-        """Judge what is typed, keep it soon, and forget what was answered about other values."""
+        """Judge what is typed, keep it soon, and forget what was answered, or is being asked, about other values."""
         self._said.clear()
+        self._asked, self.query_one(Question).display = "", False
         if self.grid.cursor in self._sure:
             self._sure -= {self.grid.cursor}
         self._judge()
