@@ -4,14 +4,10 @@ from decimal import Decimal
 from typing import TYPE_CHECKING
 
 from fleetcare.operations.rows import fetch
+from fleetcare.rules.j300 import grade_key
 
 if TYPE_CHECKING:
     from sqlalchemy import Connection
-
-
-def grade_key(grade: str) -> str:
-    """Give a grade as it compares: SAE 15W-40 and 15w40 are one."""
-    return grade.casefold().replace("sae", "").replace("-", "").replace(" ", "")
 
 
 class Kin:

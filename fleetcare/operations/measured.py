@@ -15,13 +15,13 @@ from fleetcare.domain.sheet_kinds import GRADE, WORDS
 from fleetcare.domain.sheets import Judgement, LashPoint, LashSpec, Phase, Sheet, SheetValue, spec_on
 from fleetcare.operations.entries import SHEET_COUNTS
 from fleetcare.operations.families import Families
-from fleetcare.operations.kin import grade_key
 from fleetcare.operations.lash_specs import USUAL_VALVES, specs_of
 from fleetcare.operations.load import AS_STORED, Trial, entry_lives, load_counters, own_readings
 from fleetcare.operations.rows import Row, day, fetch, figure, known_day
 from fleetcare.operations.settings import holidays
 from fleetcare.operations.sheets_load import load_values
 from fleetcare.operations.top_ups import load_top_ups
+from fleetcare.rules.j300 import grade_key
 from fleetcare.rules.judge_engine import Background
 from fleetcare.rules.judge_lash import judge_sheet
 from fleetcare.rules.lash_points import banks, lash_points
@@ -197,6 +197,18 @@ def load_fresh(connection: "Connection", on: date) -> dict[str, tuple[SheetValue
         fresh = SheetValue(quantity, "", Phase.NEW, figure(value), None, None, unit, qualifier)
         by_grade.setdefault(grade_key(grade), {})[quantity] = fresh
     return {grade: tuple(values.values()) for grade, values in by_grade.items() if grade}
+
+
+def load_grades(connection: "Connection", on: date) -> frozenset[str]:
+    """Load every grade the shop knows up to a day, as grades compare: of nameplates, and of oil sheets."""
+    rows = fetch(
+        connection,
+        "select oil_grade from engine union select qualifier from sheet_value word"
+        " join sheet on sheet.id = word.sheet_id join log_entry entry on entry.id = sheet.entry_id"
+        f" where word.quantity = '{GRADE}' and {SHEET_COUNTS}",
+        on=on.isoformat(),
+    )
+    return frozenset(grade_key(grade) for (grade,) in rows if grade)
 
 
 def grade_in(sheets: Sequence[MeasuredSheet], engine: MeasuredEngine) -> str:

@@ -6,15 +6,16 @@ from datetime import date
 from decimal import Decimal
 from typing import TYPE_CHECKING
 
-from fleetcare.domain.measured import MeasuredEngine
+from fleetcare.domain.measured import OIL, MeasuredEngine
 from fleetcare.domain.numbers import parse_number
-from fleetcare.domain.sheet_kinds import ISO4406, KINDS, NEVER_WITHOUT, At, Column, SheetKind, WordColumn
-from fleetcare.domain.sheets import NOT_DETECTED, Phase
+from fleetcare.domain.sheet_kinds import GRADE, ISO4406, KINDS, NEVER_WITHOUT, At, Column, SheetKind, WordColumn
+from fleetcare.domain.sheets import NOT_DETECTED, Phase, SheetValue
 from fleetcare.errors import Misread, Refused
 from fleetcare.operations.find import FoundItem
-from fleetcare.operations.measured import load_measured_engine
+from fleetcare.operations.measured import load_grades, load_measured_engine
 from fleetcare.rules.iso4406 import read_code
 from fleetcare.rules.judging.values import title
+from fleetcare.rules.sheet_doubts import MeasureDoubt, doubt_grade, doubt_measure
 
 if TYPE_CHECKING:
     from sqlalchemy import Connection
@@ -29,11 +30,16 @@ _MOST_IN_A_WORD = 60
 
 @dataclass(frozen=True, slots=True)
 class MeasureForm:
-    """What a sheet of a kind is read and judged by: the engine it was taken on, and the day."""
+    """What a sheet of a kind is read and judged by: the engine it was taken on, the day, and of oil the grades known."""
 
     kind: SheetKind
     engine: MeasuredEngine
     on: date
+    grades: frozenset[str] = frozenset()
+
+    def doubt(self, value: SheetValue) -> MeasureDoubt | None:
+        """Give the doubt about a value or a grade, None where there is none."""
+        return doubt_grade(value, self.grades) if value.quantity == GRADE else doubt_measure(value, self.engine)
 
 
 def measure_form(connection: "Connection", item: FoundItem, kind: str, on: date) -> MeasureForm:
@@ -41,7 +47,7 @@ def measure_form(connection: "Connection", item: FoundItem, kind: str, on: date)
     engine = load_measured_engine(connection, item.id)
     if engine is None:
         raise Refused(f"{item.tag} is a machine, and only engines are measured", "name one of its engines")
-    return MeasureForm(KINDS[kind], engine, on)
+    return MeasureForm(KINDS[kind], engine, on, load_grades(connection, on) if kind == OIL else frozenset())
 
 
 def read_column(kind: SheetKind, name: str) -> Column | WordColumn:

@@ -18,7 +18,7 @@ from fleetcare.operations.measures_cells import (
     read_point,
     read_word,
 )
-from fleetcare.rules.sheet_doubts import doubt_measure, say_measure_doubt
+from fleetcare.rules.sheet_doubts import say_measure_doubt
 
 
 def read_measures(form: MeasureForm, sheet: SheetIn, *, sure: bool) -> tuple[SheetValue, ...]:
@@ -38,7 +38,7 @@ def read_measures(form: MeasureForm, sheet: SheetIn, *, sure: bool) -> tuple[She
         if key in rows:
             faults.append(RowRefused(plain.number, "point", _say_twice(value, rows[key]), "keep one of them"))
         rows.setdefault(key, plain.number)
-        doubt = doubt_measure(value, form.engine)
+        doubt = form.doubt(value)
         if doubt is not None and not ((sure or plain.is_sure) and doubt.is_possible):
             remedy = "correct it, or give --sure if it is right" if doubt.is_possible else "correct it, or its unit"
             faults.append(RowRefused(plain.number, "value", say_measure_doubt(value, doubt), remedy))

@@ -28,7 +28,7 @@ from fleetcare.operations.sheets_values import SaidDoubt
 from fleetcare.rules.explain_measured import MeasuredRow as MeasuredRow
 from fleetcare.rules.explain_measured import measured_rows
 from fleetcare.rules.sheet_complete import why_incomplete
-from fleetcare.rules.sheet_doubts import doubt_measure, say_measure_doubt
+from fleetcare.rules.sheet_doubts import say_measure_doubt
 
 if TYPE_CHECKING:
     from sqlalchemy import Connection
@@ -210,7 +210,7 @@ def unit_of(opened: OpenMeasures, texts: Mapping[CellKey, str], key: CellKey) ->
 
 
 def _doubt(opened: OpenMeasures, value: SheetValue) -> SaidDoubt | None:
-    doubt = doubt_measure(value, opened.form.engine)
+    doubt = opened.form.doubt(value)
     if doubt is None:
         return None
     meant = tuple(f"{plain(figure)} {unit}".strip() for figure, unit in doubt.meant)

@@ -4,6 +4,7 @@ Table of J300 2015-01 (ASTM D445; D4683). It grades new oil: a used one is only 
 The bands of 8, 12, 16 and 20 overlap on purpose, so that without HTHS several grades may fit.
 """
 
+import re
 from dataclasses import dataclass
 from decimal import Decimal
 
@@ -47,6 +48,11 @@ GRADES = (
 )
 
 
+WINTER_GRADES = ("0W", "5W", "10W", "15W", "20W", "25W")
+_HOT = "|".join(one.name for one in GRADES)
+_WRITTEN = re.compile(rf"(?:{'|'.join(WINTER_GRADES).casefold()})(?:/?(?:{_HOT}))?|{_HOT}")
+
+
 @dataclass(frozen=True, slots=True)
 class Grading:
     """The grades that fit what is known, thin to thick, and the one that follows; None where none or several do.
@@ -57,6 +63,16 @@ class Grading:
     candidates: tuple[Grade, ...]
     grade: Grade | None
     needs_thin_winter: bool
+
+
+def grade_key(grade: str) -> str:
+    """Give a grade as it compares: SAE 15W-40 and 15w40 are one."""
+    return grade.casefold().replace("sae", "").replace("-", "").replace(" ", "")
+
+
+def is_grade(text: str) -> bool:
+    """Whether a text is a grade of J300 as people write it: 15W-40, SAE 15w40, 10W, SAE 30, 30."""
+    return _WRITTEN.fullmatch(grade_key(text)) is not None
 
 
 def grade_oil(kv100: Decimal, hths: Decimal | None = None) -> Grading:

@@ -6,7 +6,7 @@ A figure below what is usual is doubted only where something else was likely mea
 slip. The ranges are wide on purpose and no opinion on engines: common practice.
 """
 
-from collections.abc import Iterator, Mapping
+from collections.abc import Iterator, Mapping, Set
 from dataclasses import dataclass
 from decimal import Decimal
 from fractions import Fraction
@@ -15,6 +15,7 @@ from fleetcare.domain.measured import MeasuredEngine
 from fleetcare.domain.measures import ELEMENTS, QUANTITIES, dimension, exactly
 from fleetcare.domain.quantities import plain
 from fleetcare.domain.sheets import SheetValue
+from fleetcare.rules.j300 import grade_key, is_grade
 
 
 @dataclass(frozen=True, slots=True)
@@ -104,6 +105,13 @@ def doubt_measure(value: SheetValue, engine: MeasuredEngine) -> MeasureDoubt | N
     if is_possible and figure < sense.usual[0] and not meant:
         return None
     return MeasureDoubt(_why(sense, figure, is_possible=is_possible), meant, is_possible)
+
+
+def doubt_grade(value: SheetValue, known: Set[str]) -> MeasureDoubt | None:
+    """Give the doubt about a grade of oil that is none of SAE J300 and none of those known, as `j300.grade_key` has them."""
+    if is_grade(value.qualifier) or grade_key(value.qualifier) in known:
+        return None
+    return MeasureDoubt("it is no grade of SAE J300 such as 15W-40, nor one known here", (), is_possible=True)
 
 
 def say_measure_doubt(value: SheetValue, doubt: MeasureDoubt) -> str:

@@ -257,7 +257,9 @@ def test_what_is_wrong_is_one_line_a_cell_and_nothing_is_stored(pump: Runner, wr
 
 
 def test_words_from_outside_drive_no_terminal_and_no_line_of_ours(pump: Runner, write: Writer) -> None:
-    ran = pump("measure", "oil", "P-01", write("grade,,,[b]=cmd()[/b],", "Fe,,,45,"), "--lab-no", "7\n\x1b[2JKept")
+    ran = pump(
+        "measure", "oil", "P-01", write("grade,,,[b]=cmd()[/b],", "Fe,,,45,"), "--lab-no", "7\n\x1b[2JKept", "--sure"
+    )
     assert "Grade: [b]=cmd()[/b]." in ran.out
     assert ran.out.splitlines()[0] == "Oil sample of P-01 on 2026-05-01, report 7 \\x1b[2JKept, 1300 h of life."
     refused = pump("measure", "oil", "P-01", write("grade,,,\x1b[2J,"))

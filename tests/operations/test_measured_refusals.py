@@ -3,6 +3,10 @@
 import pytest
 
 from fleetcare.context import Context
+from fleetcare.domain.sheets import CellKey, Phase
+from fleetcare.operations.find import find_item
+from fleetcare.operations.measures_typed import open_measures, read_typed
+from tests.operations.importing import TODAY
 from tests.operations.measure_yard import OIL, PRESSURES, take, yard_of_four
 from tests.operations.sheet_yard import refused
 
@@ -118,3 +122,27 @@ def test_comma_and_point_are_alike_and_case_does_not_matter(yard: Context) -> No
         ("Fe", "new", "ND", "ppm"),
         ("kv100", "", "<14.5", "cSt"),
     ]
+
+
+def test_a_grade_nobody_knows_is_asked_about_once(yard: Context) -> None:
+    said = refused(yard, lambda ctx: take(ctx, "oil", "grade,,,bacon,", "Fe,,,45,"))
+    assert said == [
+        "row 2, column value: grade bacon: it is no grade of SAE J300 such as 15W-40, nor one known here;"
+        " correct it, or give --sure if it is right"
+    ]
+    take(yard, "oil", "grade,,,Fen 3,", "Fe,,,45,", sure=True)
+    assert take(yard, "oil", "grade,,,fen-3,", "Fe,,,46,").report.sheet
+
+
+def test_a_grade_of_a_nameplate_is_known(ctx: Context) -> None:
+    yard_of_four(ctx, oil_grade="Fen 3")
+    assert take(ctx, "oil", "grade,,,FEN-3,", "Fe,,,45,").report.sheet
+
+
+def test_a_grade_nobody_knows_is_asked_about_as_it_is_typed_too(yard: Context) -> None:
+    grade = CellKey("grade", "", Phase.NONE)
+    with yard.read() as connection:
+        opened = open_measures(connection, find_item(connection, "P-01"), "oil", TODAY, TODAY)
+    assert read_typed(opened, {grade: "SAE 30"}).doubts == {}
+    doubt = read_typed(opened, {grade: "bacon"}).doubts[grade]
+    assert (doubt.text.partition(":")[0], doubt.is_possible, doubt.meant) == ("grade bacon", True, ())

@@ -8,7 +8,7 @@ import pytest
 from fleetcare.domain.measures import QUANTITIES
 from fleetcare.domain.sheet_kinds import KINDS
 from fleetcare.domain.sheets import Phase, SheetValue
-from fleetcare.rules.sheet_doubts import SENSE, MeasureDoubt, doubt_measure, say_measure_doubt
+from fleetcare.rules.sheet_doubts import SENSE, MeasureDoubt, doubt_grade, doubt_measure, say_measure_doubt
 from tests.rules.measured import ENGINE
 
 
@@ -89,6 +89,28 @@ def test_without_a_nameplate_a_load_is_held_against_the_largest_engines() -> Non
 
 def test_nothing_detected_is_no_slip() -> None:
     assert doubt_measure(SheetValue("glycol", "", Phase.NONE, None, None, None, "ppm", "ND"), ENGINE) is None
+
+
+def a_grade(text: str) -> SheetValue:
+    """The grade of an oil, said in a word."""
+    return SheetValue("grade", "", Phase.NONE, None, None, None, "", text)
+
+
+@pytest.mark.parametrize(
+    "text", ["15W-40", "15w40", "SAE 15W-40", "SAE 10W/30", "sae 30", "30", "10W", "0W-8", "Fen oil 3", "fen OIL-3"]
+)
+def test_a_grade_of_j300_or_one_known_is_no_slip(text: str) -> None:
+    assert doubt_grade(a_grade(text), frozenset({"fenoil3"})) is None
+
+
+@pytest.mark.parametrize("text", ["bacon", "15W-4", "15W-400", "17W-40", "40W", "15", "15-40", "SAE", "Fen oil 4"])
+def test_any_other_grade_is_likely_a_slip_that_can_be_right(text: str) -> None:
+    doubt = doubt_grade(a_grade(text), frozenset({"fenoil3"}))
+    assert doubt is not None
+    assert doubt.is_possible
+    assert say_measure_doubt(a_grade(text), doubt) == (
+        f"grade {text}: it is no grade of SAE J300 such as 15W-40, nor one known here"
+    )
 
 
 def test_a_doubt_says_the_value_where_it_is_why_and_what_was_meant() -> None:
