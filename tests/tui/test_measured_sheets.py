@@ -215,3 +215,17 @@ async def test_a_question_goes_when_the_cell_it_is_about_changes(opened: Opened,
         assert screen.texts[CellKey("pressure", "1", Phase.DRY)] == "27"
         await press(pilot, "enter", "m")
         assert screen.texts[CellKey("pressure", "1", Phase.DRY)] == "27 bar"
+
+
+async def test_a_sheet_left_half_typed_opens_on_the_empty_cell_after_the_last_typed(
+    opened: Opened, bench: Context
+) -> None:
+    async with opened(size=SMALL, context=bench) as pilot:
+        screen = await sheet_on(pilot, OIL)
+        await enter_all(pilot, "240", "", "102", "14.1")
+        after = at(screen)
+        assert after[0] == "tbn"
+        await press(pilot, "escape", "ctrl+s")
+        reopened = pilot.app.screen
+        assert isinstance(reopened, SheetScreen)
+        assert at(reopened) == after

@@ -112,8 +112,7 @@ class SheetScreen(StoringScreen):
             self.texts.update(found.start)
         self._judge()
         if is_first:
-            empty = (key for key in found.order if not self.texts.get(key))
-            self.grid.go(next(empty, found.order[0]))
+            self.grid.go(self._to_fill_in(found.order[0]))
 
     def cell_typed(self) -> None:
         """Judge what is typed, keep it soon, and forget what was answered, or is being asked, about other values."""
@@ -262,6 +261,15 @@ class SheetScreen(StoringScreen):
         if self.read_sheet is not None and key is not None:
             self.query_one(Detail).tell(*self.read_sheet.about(key))
             self.grid.tell(self.read_sheet.shown(), self.read_sheet.here(key), self.read_sheet.below())
+
+    def _to_fill_in(self, first: CellKey) -> CellKey:
+        """Give the first empty cell one is led to after the last typed, else the first empty one, else the first."""
+        led, key = [first], self.read_sheet.next(first, 1) if self.read_sheet is not None else None
+        while key is not None and self.read_sheet is not None:
+            led.append(key)
+            key = self.read_sheet.next(key, 1)
+        last = max((place for place, one in enumerate(led) if self.texts.get(one)), default=-1)
+        return next((one for one in (*led[last + 1 :], *led) if not self.texts.get(one)), first)
 
     def _keep(self) -> None:
         """Keep what is typed."""
