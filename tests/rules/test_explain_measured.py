@@ -71,7 +71,10 @@ def test_a_value_no_rule_is_about_says_so() -> None:
 
 def test_a_bound_that_does_not_tell_says_why() -> None:
     found = row(value("Fe", "<150"), a_rule())
-    assert (found.verdict, found.why) == ("not judged", "<150 does not tell on which side of 100 it is")
+    assert (found.verdict, found.why) == (
+        "not judged",
+        "<150 does not tell on which side of the alert limit of 100 ppm it is; it keeps inside the alarm limit of 200 ppm",
+    )
 
 
 def test_fresh_oil_and_wet_tests_are_there_to_compare_with() -> None:

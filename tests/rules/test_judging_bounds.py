@@ -63,8 +63,17 @@ def test_a_low_limit_is_passed_downwards() -> None:
 def test_a_bound_is_never_above_a_limit_and_one_beyond_it_is_told_as_open() -> None:
     judged = judge_sheet([WATER], facts(a_sheet(value("water", "<0.2"))))
     assert judged.signals == ()
-    assert [one.why for one in judged.not_judged] == ["<0.2 does not tell on which side of 0.1 it is"]
+    assert [one.why for one in judged.not_judged] == [
+        "<0.2 does not tell on which side of the alert limit of 0.1 % it is; it keeps inside the alarm limit of 0.5 %"
+    ]
     assert [str(verdict) for _, verdict in judged.verdicts] == ["not judged"]
+
+
+def test_a_bound_beyond_both_limits_names_the_graver() -> None:
+    judged = judge_sheet([WATER], facts(a_sheet(value("water", "<0.7"))))
+    assert [one.why for one in judged.not_judged] == [
+        "<0.7 does not tell on which side of the alarm limit of 0.5 % it is"
+    ]
 
 
 def test_a_value_in_a_unit_of_something_else_is_not_judged() -> None:

@@ -15,7 +15,7 @@ from fleetcare.rules.judging.spans import Side, Span, decimal
 
 def hold(rule: Rule, figure: Figure, facts: MeasuredFacts) -> Signal | NotJudged | None:
     """Give the signal of a figure past a limit, why that is left open, or None for one within its limits."""
-    untold: Limit | None = None
+    untold: list[str] = []
     for severity in (Severity.ALARM, Severity.ALERT):
         for end, limits in ((End.LOW, figure.low), (End.HIGH, figure.high)):
             limit = _limit(limits, severity)
@@ -23,12 +23,19 @@ def hold(rule: Rule, figure: Figure, facts: MeasuredFacts) -> Signal | NotJudged
             if limit and side is Side.PAST:
                 return _signal(rule, figure, facts, (severity, end, limit))
             if limit and side is Side.UNTOLD:
-                untold = limit
-    if untold is None:
-        return None
-    return NotJudged(
-        rule, figure.subject, f"{figure.flagged.value} does not tell on which side of {untold.value:f} it is"
-    )
+                inside = limits.alarm if severity is Severity.ALERT and not untold else None
+                untold.append(_say_untold(rule, severity, limit, inside))
+    return NotJudged(rule, figure.subject, f"{figure.flagged.value} {untold[0]}") if untold else None
+
+
+def _say_untold(rule: Rule, severity: Severity, limit: Limit, inside: Limit | None) -> str:
+    """Say which limit a bound leaves open, and the graver one on its side that it surely keeps `inside` of."""
+    keeps = f"; it keeps inside the alarm limit of {_say(rule, inside)}" if inside else ""
+    return f"does not tell on which side of the {severity} limit of {_say(rule, limit)} it is{keeps}"
+
+
+def _say(rule: Rule, limit: Limit) -> str:
+    return f"{limit.value:f} {rule.unit}".rstrip()
 
 
 def due_on(rule: Rule, facts: MeasuredFacts) -> date | None:
