@@ -49,17 +49,18 @@ def measure_many(session: "Session", drafts: Sequence[LogDraft], today: date) ->
 
     What is refused is what `measure` refuses, and then nothing is stored; that a sheet came twice shows in stored ones alone.
     """
-    items = {tag: find_item(session.connection(), tag) for tag in dict.fromkeys(draft.tag for draft in drafts)}
+    asked = dict.fromkeys((draft.tag, draft.on) for draft in drafts)
+    items = {(tag, on): find_item(session.connection(), tag, on=on) for tag, on in asked}
     fresh: list[tuple[LogDraft, Sheet]] = []
     for draft in drafts:
         refuse_future(draft.on, today)
         check_received(draft, draft.on, today)
-        sheet = _taken(session, items[draft.tag], draft)
-        if known_entry(session, items[draft.tag], sheet) is None:
+        sheet = _taken(session, items[draft.tag, draft.on], draft)
+        if known_entry(session, items[draft.tag, draft.on], sheet) is None:
             fresh.append((draft, sheet))
     people = {name: person_id(session, name) for name in dict.fromkeys(draft.by for draft, _ in fresh)}
     entries = [
-        LogEntry(item_id=items[one.tag].id, on=one.on, kind="other", person_id=people[one.by], note=one.note)
+        LogEntry(item_id=items[one.tag, one.on].id, on=one.on, kind="other", person_id=people[one.by], note=one.note)
         for one, _ in fresh
     ]
     session.add_all(entries)
