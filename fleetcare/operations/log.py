@@ -57,12 +57,12 @@ class Logged:
         self.notes += say_still_open(facts, entry.id, entry.on, named, covered, sheets)
 
 
-def record_work(session: "Session", draft: LogDraft, today: date) -> Logged:
+def record_work(session: "Session", draft: LogDraft, today: date, item: FoundItem | None = None) -> Logged:
     """Store what was done on a day. Everything a draft says stands in one entry of each kind.
 
-    Refuses what was stored before under the import key of the draft.
+    It was done to the engine or machine in use under the tag of the draft, unless another `item` is given. Refuses what was stored before under the import key of the draft.
     """
-    item = find_item(session.connection(), draft.tag, on=draft.on)
+    item = item or find_item(session.connection(), draft.tag)
     _refuse_known(session, draft)
     refuse_future(draft.on, today)
     check_received(draft, draft.on, today)

@@ -30,7 +30,7 @@ class Measured:
 def measure(session: "Session", draft: LogDraft, today: date) -> Measured:
     """Store the sheet of a draft that names no task. The same values of the same day are stored once.
 
-    Raises Refused for a day to come, Refusals with everything that is wrong with the sheet.
+    It is of the engine that had the tag on its day: results may come after that was withdrawn. Raises Refused for a day to come, Refusals with everything that is wrong with the sheet.
     """
     refuse_future(draft.on, today)
     check_received(draft, draft.on, today)
@@ -39,7 +39,7 @@ def measure(session: "Session", draft: LogDraft, today: date) -> Measured:
     known = known_entry(session, item, sheet)
     if known is not None:
         return Measured(report_sheet(session.connection(), item, known, today), is_new=False)
-    logged = record_work(session, draft, today)
+    logged = record_work(session, draft, today, item)
     entry, _ = logged.entries[0]
     return Measured(report_sheet(session.connection(), item, entry, today), is_new=True, notes=tuple(logged.notes))
 
