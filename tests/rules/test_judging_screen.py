@@ -167,6 +167,39 @@ def test_a_point_that_was_entered_twice_before_is_looked_at() -> None:
     assert not clear(rule, value("pressure", "100", "psi", "1"), earlier=(before,))
 
 
+@pytest.mark.parametrize(
+    ("now", "then", "unit", "gauge", "is_clear"),
+    [
+        ("86", "100", "psi", "", True),
+        ("84", "100", "psi", "", False),
+        ("86", "103", "psi", "", False),
+        ("84", "100", "psi", "another", True),
+        ("84", "100", "kPa", "", False),
+        ("84", "<100", "psi", "", False),
+    ],
+)
+def test_a_fall_from_the_best_of_its_own_past_is_told_from_all_sheets_with_the_same_gauge(
+    now: str, then: str, unit: str, gauge: str, is_clear: bool
+) -> None:
+    """15 % below the best: 86 of 100 is clear of it, 84 of 100 and 86 of 103 (83.5 %) are not."""
+    best, last = (
+        a_sheet(value("pressure", text, one, "1"), value("pressure", "90", one, "2"), days=days, gauge=gauge)
+        for text, one, days in ((then, unit, 60), ("86", "psi", 30))
+    )
+    for by, limit, in_unit in ((By.SHARE, "-15", "%"), (By.DIFFERENCE, "-15", "psi")):
+        shape = Change(Since.OWN_BEST, by)
+        rule = a_rule(quantity="pressure", shape=shape, unit=in_unit, low=Limits(beyond(limit)), high=Limits())
+        assert clear(rule, value("pressure", now, "psi", "1"), earlier=(best, last)) is is_clear
+        assert clear(rule, value("pressure", now, "psi", "1"))
+
+
+def test_a_rise_from_the_best_of_its_own_past_is_told_from_the_lowest() -> None:
+    rule = a_rule(quantity="leak", shape=Change(Since.OWN_BEST, By.DIFFERENCE), unit="%", high=Limits(beyond("10")))
+    earlier = tuple(a_sheet(value("leak", text, "%", "1"), days=days) for text, days in (("5", 60), ("14", 30)))
+    assert clear(rule, value("leak", "14", "%", "1"), earlier=earlier)
+    assert not clear(rule, value("leak", "16", "%", "1"), earlier=earlier)
+
+
 BETWEEN = Condition(("Na", "K"), Asks.WITHIN, low=reach("50"), high=beyond("100"), unit="ppm")
 
 
