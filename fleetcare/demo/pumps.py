@@ -142,7 +142,7 @@ _CRAKE_DROVE = (
             ),
         ),
         # A seat that burns away: white smoke, an injector not yet tested, and a gap that closes.
-        gauged=Gauged("Valve lash", every=2, closing={"4E": 54}),
+        gauged=Gauged("Valve lash", every=2, closing={"4E": 51}),
     ),
     Item(
         "PS-06",

@@ -127,7 +127,7 @@ def _carry_over(
     tasks = [find_task(session.connection(), item, name) for name in draft.task] or [row.task_id for row in rows]
     was_part = any(row.part_done for row in rows)
     part_done = was_part if draft.part_done is None else draft.part_done
-    facts = item_facts(session.connection(), today, [item.id])[0]
+    facts = item_facts(session.connection(), today, [item.id], with_wears=False)[0]
     came = _carry_sheet(session, item, old, new, draft, logged)
     if not draft.sheet and not draft.task and not was_part:
         came = dict.fromkeys(came, "")  # its own sheet closed these tasks before

@@ -43,7 +43,7 @@ def store_log(session: "Session", rows: Sequence[Row[LogRow]], today: date, faul
 
 def _without_sheets(connection: "Connection", fresh: Sequence[Work], today: date) -> list[RowRefused]:
     """Refuse the work that closes only with a sheet, which no file of work brings."""
-    facts = item_facts(connection, today, sorted({work.item.id for work in fresh}))
+    facts = item_facts(connection, today, sorted({work.item.id for work in fresh}), with_wears=False)
     tasks = {task.id: task for each in facts for task in each.tasks}
     faults = []
     for work in fresh:
@@ -69,7 +69,9 @@ def _apply(
     for work in works:
         named.setdefault((work.item.id, work.on), []).append(work.task_id)
     entries = _insert(session, fresh)
-    facts = {each.item.id: each for each in item_facts(session.connection(), today, sorted({w.item.id for w in fresh}))}
+    touched = sorted({work.item.id for work in fresh})
+    known = item_facts(session.connection(), today, touched, with_wears=False)
+    facts = {each.item.id: each for each in known}
     for work, entry in zip(fresh, entries, strict=True):
         logged = Logged(work.item)
         try:

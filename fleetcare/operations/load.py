@@ -37,9 +37,17 @@ _NOTHING_SHOWN = MeasuredWears()
 
 
 def item_facts(
-    connection: "Connection", on: date, ids: Sequence[int] | None = None, trial: Trial = AS_STORED
+    connection: "Connection",
+    on: date,
+    ids: Sequence[int] | None = None,
+    trial: Trial = AS_STORED,
+    *,
+    with_wears: bool = True,
 ) -> list[ItemFacts]:
-    """Load items (all in use on `on`, or those of some ids) as the rules see them on a day."""
+    """Load items (all in use on `on`, or those of some ids) as the rules see them on a day.
+
+    What wears moves no own due point: to store work it is left out, which spares judging the item once more.
+    """
     items = load_items(connection, on, ids)
     found = [item.id for item in items]
     counters = load_counters(connection, found, on, trial)
@@ -47,7 +55,7 @@ def item_facts(
     done = _load_done(connection, found, on, counters)
     stale = stale_days(connection)
     starts = load_start_figures(connection, found)
-    wears = load_wears(connection, on, tasks, counters)
+    wears = load_wears(connection, on, tasks, counters) if with_wears else {}
     return [
         ItemFacts(
             item=item,

@@ -75,7 +75,7 @@ def record_work(session: "Session", draft: LogDraft, today: date, item: FoundIte
     for name, quantity in draft.part:
         session.add(LogPart(entry_id=entry.id, name=name, quantity=quantity))
     store_figures(session, item, entry, draft.at)
-    facts = item_facts(session.connection(), today, [item.id])[0]
+    facts = item_facts(session.connection(), today, [item.id], with_wears=False)[0]
     if facts.item.in_service_on is not None and entry.on < facts.item.in_service_on:
         logged.notes.append(
             f"{entry.on} is before {item.tag} came into service on {facts.item.in_service_on}: check the day"
