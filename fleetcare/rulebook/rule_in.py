@@ -134,7 +134,9 @@ class RuleIn(Form):
         if is_spec is bool(self.low.fact or self.high.fact):
             raise ValueError("limits: one is needed, but none with the check range of the engine|give low or high")
         if self.change is not None and self.change.since is Since.OWN_BEST and self.low.fact and self.high.fact:
-            raise ValueError("what is best is told by the side a limit is on|give low or high, the other in another rule")
+            raise ValueError(
+                "what is best is told by the side a limit is on|give low or high, the other in another rule"
+            )
         for end, limits in ((End.LOW, self.low.fact), (End.HIGH, self.high.fact)):
             check_limits(self._shape(), limits, end)
         if not is_spec and not self._unit_fits():
