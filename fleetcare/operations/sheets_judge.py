@@ -13,7 +13,8 @@ from fleetcare.operations.find import FoundItem
 from fleetcare.operations.sheets_load import LashForm, lash_form, load_sheets
 from fleetcare.rules.explain_lash import JudgedRow as JudgedRow
 from fleetcare.rules.explain_lash import judged_row, say_spec
-from fleetcare.rules.judge_lash import ANY, judge_sheet, stand_of
+from fleetcare.rules.judge_lash import judge_sheet, stand_of
+from fleetcare.rules.lash import ANY
 from fleetcare.rules.lash_mending import mend
 from fleetcare.rules.lash_points import side_of
 

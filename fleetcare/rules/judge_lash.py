@@ -28,10 +28,9 @@ from fleetcare.domain.sheets import (
     Unjudged,
     Verdict,
 )
-from fleetcare.rules.lash import MM_PER, Gap, judge
+from fleetcare.rules.lash import ANY, MM_PER, Gap, compare, judge
 from fleetcare.rules.lash_points import side_of
 
-ANY = "any"
 _PHASES = (Phase.FOUND, Phase.LEFT)
 
 
@@ -66,7 +65,7 @@ def why_unjudged(side: Side, spec: LashSpec | None, condition: str) -> Unjudged 
         return Unjudged.NO_SPEC
     if side not in spec.ranges:
         return Unjudged.NO_RANGE
-    if ANY not in {spec.condition, condition or ANY} and spec.condition != condition:
+    if not compare(spec.condition, condition or ANY):
         return Unjudged.OTHER_CONDITION
     return None
 

@@ -10,7 +10,7 @@ from dataclasses import dataclass
 from decimal import Decimal
 from typing import TYPE_CHECKING
 
-from fleetcare.domain.sheets import Place
+from fleetcare.domain.sheets import Place, SheetValue
 from fleetcare.errors import Misread, Refused
 
 if TYPE_CHECKING:
@@ -18,6 +18,9 @@ if TYPE_CHECKING:
 
 # NIST SP 811 (2008), Appendix B: 1 in = 25.4 mm exactly.
 MM_PER: Mapping[str, Decimal] = {"mm": Decimal(1), "in": Decimal("25.4")}
+
+ANY = "any"
+"""A gap that may be taken cold or hot."""
 
 _RANGE_MARK = ".."
 _DIGITS = re.compile(r"[0-9]{1,3}", re.ASCII)
@@ -49,6 +52,17 @@ class Standing:
     place: Place
     off_least: Decimal
     off_most: Decimal
+
+
+def ends_in_mm(value: SheetValue) -> tuple[Decimal, Decimal]:
+    """Give the least and the most a gap of a sheet can be, in mm."""
+    goes, stops = value.ends
+    return goes * MM_PER[value.unit], stops * MM_PER[value.unit]
+
+
+def compare(condition: str, other: str) -> bool:
+    """Whether gaps taken in two conditions, cold, hot or any, can be held beside each other."""
+    return ANY in {condition, other} or condition == other
 
 
 def read_gap(text: str, unit: "LashUnit") -> Gap:

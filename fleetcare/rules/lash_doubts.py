@@ -13,7 +13,7 @@ from decimal import Decimal
 
 from fleetcare.domain.quantities import plain
 from fleetcare.domain.sheets import Phase, SheetValue
-from fleetcare.rules.lash import MM_PER
+from fleetcare.rules.lash import MM_PER, ends_in_mm
 
 PUBLISHED_MM = (Decimal("0.10"), Decimal("0.762"))
 THINNEST_BLADE_MM = Decimal("0.02")
@@ -36,7 +36,7 @@ class Doubt:
 
 def doubt(value: SheetValue, limits: tuple[Decimal, Decimal] | None, unit: str) -> Doubt | None:
     """Give the doubt about a gap, None where there is none; `limits` are its check range in `unit`."""
-    goes, stops = (end * MM_PER[value.unit] for end in value.ends)
+    goes, stops = ends_in_mm(value)
     shown = (*limits, unit) if limits else (*PUBLISHED_MM, "mm")
     least, most = (end * MM_PER[shown[2]] for end in shown[:2])
     factor, whose = (_FAR_OUT, "its check range") if limits else (_FAR_OUT_OF_OTHERS, "what is known of other engines")

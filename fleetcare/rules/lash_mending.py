@@ -10,7 +10,7 @@ from decimal import Decimal
 from fleetcare.domain.engines import Adjuster, Side
 from fleetcare.domain.sheets import Judgement, LashSpec, Place
 from fleetcare.errors import Refused
-from fleetcare.rules.lash import MM_PER, Gap
+from fleetcare.rules.lash import MM_PER, Gap, ends_in_mm
 from fleetcare.rules.lash_setting import ScrewAt, ScrewTurn, ShimChoice, choose_shim, screw_turn
 
 
@@ -29,8 +29,7 @@ def mend(
     """Give what mends a gap outside its range, None where it is inside or too little is known; `fitted` in mm."""
     if spec is None or side not in spec.settings or judged.place not in {Place.BELOW, Place.ABOVE}:
         return None
-    goes, stops = (end * MM_PER[judged.value.unit] for end in judged.value.ends)
-    best = Gap(goes, stops).best
+    best = Gap(*ends_in_mm(judged.value)).best
     target = spec.settings[side] * MM_PER[spec.unit]
     try:
         if adjuster.kind == "screw" and adjuster.screw_pitch is not None:

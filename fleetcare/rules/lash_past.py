@@ -20,8 +20,8 @@ from fleetcare.domain.engines import Side
 from fleetcare.domain.measured import MeasuredSheet
 from fleetcare.domain.sheets import LASH, Judgement, LashPoint, LashSpec, Phase, Sheet, SheetValue, spec_on
 from fleetcare.domain.trends import Check
-from fleetcare.rules.judge_lash import ANY, judge_value, why_unjudged
-from fleetcare.rules.lash import MM_PER
+from fleetcare.rules.judge_lash import judge_value, why_unjudged
+from fleetcare.rules.lash import ANY, compare, ends_in_mm
 from fleetcare.rules.lash_points import side_of
 from fleetcare.rules.meters import CounterHistory
 
@@ -62,8 +62,7 @@ class PastValue:
     @property
     def ends(self) -> tuple[Decimal, Decimal]:
         """The least and the most it can be, mm."""
-        goes, stops = self.entered.ends
-        return goes * MM_PER[self.entered.unit], stops * MM_PER[self.entered.unit]
+        return ends_in_mm(self.entered)
 
     @property
     def gap(self) -> Decimal:
@@ -147,13 +146,13 @@ def _read(
     for value in sorted(sheet.values, key=lambda one: one.phase is Phase.LEFT):
         if value.quantity == LASH:
             why = why_unjudged(side_of(value.point), spec, sheet.condition)
-            aside = Aside.NOT_JUDGED if why is not None else _why_aside({taken, asked}, at)
+            aside = Aside.NOT_JUDGED if why is not None else _why_aside(taken, asked, at)
             values.append(PastValue(sheet.entry, sheet.on, at, sheet.condition, spec, value, aside))
     return values
 
 
-def _why_aside(conditions: set[str], at: Decimal | None) -> Aside | None:
-    if len(conditions) > 1 and ANY not in conditions:
+def _why_aside(taken: str, asked: str, at: Decimal | None) -> Aside | None:
+    if not compare(taken, asked):
         return Aside.OTHER_CONDITION
     return Aside.NO_HOURS if at is None else None
 

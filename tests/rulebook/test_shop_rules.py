@@ -109,6 +109,15 @@ BAD = {
     "no shape": (OWN.replace("bounds = {}\n", ""), "a rule has one shape, this has 0; give one of bounds,"),
     "two shapes": (OWN + 'change = { since = "new", by = "share" }\n', "a rule has one shape, this has 2"),
     "no limit": (OWN.replace("low = { alarm = { beyond = 350.5 } }\n", ""), "limits: one is needed"),
+    "best of both sides": (
+        OWN.replace('"psi"', '"%"').replace("bounds = {}", 'change = { since = "own best", by = "share" }')
+        + "high = { alarm = { beyond = 15 } }\n",
+        "what is best is told by the side a limit is on; give low or high",
+    ),
+    "rate since the best": (
+        OWN.replace("bounds = {}", 'rate = { since = "own best", per = 10 }'),
+        "rate.since: 'own best' does not fit; input should be",
+    ),
     "two figures": (
         OWN.replace("beyond = 350.5", "beyond = 350, reach = 351"),
         "low.alarm: it needs one figure; write { beyond = 25 }",

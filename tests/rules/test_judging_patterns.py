@@ -163,6 +163,8 @@ def test_two_low_neighbours_stand_out_only_beside_a_cylinder_that_was_measured_a
     )
     assert [one.subject for one in matched([fallen, rule], facts(pressures("200", "210", "400")))] == ["1-2"]
     assert matched([fallen, rule], facts(pressures("200", "210"))) == []
+    high = replace(fallen, id="high", low=Limits(), high=Limits(beyond("500")))
+    assert [one.subject for one in matched([fallen, high, rule], facts(pressures("200", "210", "600")))] == ["1-2"]
 
 
 def test_in_a_v_engine_the_next_in_the_bank_is_the_neighbour() -> None:

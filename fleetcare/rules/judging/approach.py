@@ -19,14 +19,13 @@ from decimal import ROUND_FLOOR, Decimal
 from fleetcare.domain.findings import Evidence, NotJudged, Signal, Step
 from fleetcare.domain.measured import MeasuredSheet
 from fleetcare.domain.rule_book import Approach, End, Rule
-from fleetcare.domain.sheets import Judgement, Phase, SheetValue, Unjudged, Verdict
+from fleetcare.domain.sheets import Judgement, Phase, Unjudged, Verdict
 from fleetcare.domain.trends import Check, Obstacle, Projection, Segment
-from fleetcare.rules.judge_lash import ANY
 from fleetcare.rules.judging.facts import CannotTell, Figure, MeasuredFacts
 from fleetcare.rules.judging.hold import hold
 from fleetcare.rules.judging.spans import known
 from fleetcare.rules.judging.values import evidence_of
-from fleetcare.rules.lash import MM_PER
+from fleetcare.rules.lash import MM_PER, compare, ends_in_mm
 from fleetcare.rules.projection import FEWEST_DF, project
 from fleetcare.rules.trends import cut_at_adjustments, usual_gap
 
@@ -153,24 +152,18 @@ def _seen(sheet: MeasuredSheet, phases: Mapping[Phase, Judgement], asked: str) -
     if sheet.engine_hours is None:
         return None
     found, left = phases.get(Phase.FOUND), phases.get(Phase.LEFT)
-    if found is not None and left is not None and _ends(found.value) == _ends(left.value):
+    if found is not None and left is not None and ends_in_mm(found.value) == ends_in_mm(left.value):
         left = None
     usable = [one for one in (found, left) if one is not None and _compares(one, asked)]
     if not usable and left is None:
         return None
-    gaps = {one.value.phase: sum(_ends(one.value), Decimal(0)) / 2 for one in usable}
+    gaps = {one.value.phase: sum(ends_in_mm(one.value), Decimal(0)) / 2 for one in usable}
     check = Check(sheet.engine_hours, gaps.get(Phase.FOUND), gaps.get(Phase.LEFT), is_adjusted=left is not None)
     return Seen(check, tuple(evidence_of(sheet, one.value) for one in usable))
 
 
 def _compares(one: Judgement, asked: str) -> bool:
-    return one.unjudged not in _NO_GAP and (ANY in {one.taken, asked} or one.taken == asked)
-
-
-def _ends(value: SheetValue) -> tuple[Decimal, Decimal]:
-    """Give the least and the most of a gap in mm."""
-    low, high = value.ends
-    return low * MM_PER[value.unit], high * MM_PER[value.unit]
+    return one.unjudged not in _NO_GAP and compare(one.taken, asked)
 
 
 def _is_far(shape: Approach, now: Judgement, facts: MeasuredFacts) -> bool:

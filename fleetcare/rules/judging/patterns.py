@@ -87,9 +87,11 @@ def _matches(rule: Rule, pattern: Pattern, scene: _Scene) -> Iterator[Signal]:
 
 def _stand_out(pattern: Pattern, cylinders: Sequence[int | None], scene: _Scene) -> bool:
     """Whether another cylinder was measured and is sound: where all that were measured are bad, no two of them stand out."""
-    asked = {name for one in pattern.conditions if one.asks in _FLAGGED for name in one.quantities}
-    measured = {cylinder_of(one.point) for sheet in scene.sheets for name in asked for one in values_of(sheet, name)}
-    bad = {cylinder_of(signal.subject) for signal in scene.signals if signal.rule.quantity in asked}
+    asked = {
+        (name, _FLAGGED[one.asks]) for one in pattern.conditions if one.asks in _FLAGGED for name in one.quantities
+    }
+    measured = {cylinder_of(one.point) for sheet in scene.sheets for name, _ in asked for one in values_of(sheet, name)}
+    bad = {cylinder_of(signal.subject) for signal in scene.signals if (signal.rule.quantity, signal.end) in asked}
     return bool(measured - bad - {*cylinders, None})
 
 
