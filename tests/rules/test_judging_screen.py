@@ -198,6 +198,8 @@ def test_a_rise_from_the_best_of_its_own_past_is_told_from_the_lowest() -> None:
     earlier = tuple(a_sheet(value("leak", text, "%", "1"), days=days) for text, days in (("5", 60), ("14", 30)))
     assert clear(rule, value("leak", "14", "%", "1"), earlier=earlier)
     assert not clear(rule, value("leak", "16", "%", "1"), earlier=earlier)
+    pair = a_sheet(value("supply", "80", "psi", "1"), value("held", "80", "psi", "1"), days=90)
+    assert not clear(rule, value("leak", "14", "%", "1"), earlier=(pair, *earlier))
 
 
 BETWEEN = Condition(("Na", "K"), Asks.WITHIN, low=reach("50"), high=beyond("100"), unit="ppm")

@@ -251,7 +251,10 @@ def _changed(
 
 def _fallen(seen: Sequence[_Seen], shape: Change, facts: MeasuredFacts, rule: Rule) -> list[tuple[float, float]] | None:
     """Compare plain figures with the best of the same points; None where that is not all there is to it."""
-    past = [one for sheet in facts.earlier if sheet.gauge == facts.sheet.gauge for one in _look(sheet, rule.quantity)]
+    sheets = [sheet for sheet in facts.earlier if sheet.gauge == facts.sheet.gauge]
+    if any(_is_worked_out(sheet, rule.quantity) for sheet in sheets):
+        return None
+    past = [one for sheet in sheets for one in _look(sheet, rule.quantity)]
     unit = rule.unit if shape.by is By.DIFFERENCE else next((one.unit for one in seen), "")
     if any(one.low != one.high or one.low <= 0 or one.unit != unit for one in (*seen, *past)):
         return None
